@@ -1,0 +1,95 @@
+"""What every part of a bench has: a name, faces, and the passages between them."""
+
+from __future__ import annotations
+
+from collections.abc import Mapping
+from dataclasses import dataclass, fields, replace
+from typing import Any, ClassVar
+
+from fastaxis.errors import ParameterError
+from fastaxis.laws import Law, Passage
+from fastaxis.loader import late
+from fastaxis.maths import Scalar, free_symbols
+
+__all__ = ["Element", "ThroughElement"]
+
+Passages = Mapping[tuple[str, str], Passage]
+
+
+@dataclass(frozen=True, kw_only=True)
+class Element:
+    """Base of all parts.
+
+    Parameters
+    ----------
+    name : how the part is called in the train, in ports ("pbs.reflected") and in changes ("hwp.fast");
+        left empty, the train gives one.
+    """
+
+    name: str = ""
+
+    stem: ClassVar[str] = "part"  # names are made of it: plate1, plate2
+    faces: ClassVar[tuple[str, ...]] = ()
+    entry: ClassVar[str | None] = None  # face met by default
+    exit: ClassVar[str | None] = None  # face left by default
+
+    @property
+    def label(self) -> str:
+        """The name in messages."""
+        return self.name or type(self).__name__
+
+    def forward(self, wavelength: Scalar) -> Passages:
+        """Passages (face in, face out) -> Passage, for light that meets the part as drawn."""
+        return {}
+
+    def passages(self, wavelength: Scalar) -> Passages:
+        """All passages at a wavelength [m], the ways back included."""
+        forward = dict(self.forward(wavelength))
+        backward = {(out, into): way.backward() for (into, out), way in forward.items()}
+        return backward | forward
+
+    def parameters(self) -> dict[str, Any]:
+        """The declared values, without the name."""
+        return {f.name: getattr(self, f.name) for f in fields(self) if f.name != "name"}
+
+    def changed(self, **changes: Any) -> Element:
+        """A copy with some parameters changed; the same checks apply."""
+        known = self.parameters()
+        if {"centre_x", "centre_y"} & changes.keys() and "centre" in known:
+            x, y = known["centre"]
+            changes["centre"] = (changes.pop("centre_x", x), changes.pop("centre_y", y))
+        for parameter in changes:
+            if parameter not in known and parameter != "name":
+                raise ParameterError(
+                    f"{type(self).__name__} has the parameters {', '.join(known) or '(none)'}",
+                    got=f"{self.label}: no parameter '{parameter}'",
+                    fix=f'"{self.label}.{next(iter(known), "name")}"',
+                )
+        return replace(self, **changes)
+
+    @property
+    def symbols(self) -> set[Any]:
+        """The letters among the parameters."""
+        return free_symbols(self.parameters().values())
+
+    def __str__(self) -> str:
+        return str(late("report.card", "card")(self))
+
+    def _repr_html_(self) -> str:
+        return str(late("report.card", "card_html")(self))
+
+
+@dataclass(frozen=True, kw_only=True)
+class ThroughElement(Element):
+    """A part with a front and a back; light goes through."""
+
+    faces: ClassVar[tuple[str, ...]] = ("front", "back")
+    entry: ClassVar[str | None] = "front"
+    exit: ClassVar[str | None] = "back"
+
+    def laws(self, wavelength: Scalar) -> tuple[Law, ...]:
+        """The laws from front to back, in the order the light meets them."""
+        raise NotImplementedError
+
+    def forward(self, wavelength: Scalar) -> Passages:
+        return {("front", "back"): Passage(self.laws(wavelength))}

@@ -1,0 +1,121 @@
+"""Uniform wave plates: any retardance, half and quarter wave."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+from math import pi
+from typing import Any, ClassVar
+
+from fastaxis.elements import checks
+from fastaxis.elements.base import Element, ThroughElement
+from fastaxis.errors import ParameterError
+from fastaxis.laws import Amplitude, AxisLaw
+from fastaxis.maths import Scalar
+
+__all__ = ["HalfWavePlate", "QuarterWavePlate", "Retarder"]
+
+
+@dataclass(frozen=True, kw_only=True)
+class Retarder(ThroughElement):
+    """A wave plate: the component across the fast axis falls behind by the retardance.
+
+    J = cos(d/2) - i sin(d/2) [[cos 2f, sin 2f], [sin 2f, -cos 2f]], with the fast axis at f.
+
+    Parameters
+    ----------
+    fast : angle of the fast axis [rad], counter-clockwise from x facing the source. Give this or ``slow``.
+    slow : angle of the slow axis [rad].
+    retardance : d [rad], at ``design`` if that is given, else at any wavelength.
+    transmission : share of the power that passes [0 .. 1].
+    design : wavelength [m] for which ``retardance`` holds. The plate is then dispersion-free: the whole path
+        difference, ``order`` waves included, goes as 1/wavelength.
+    order : whole waves on top of ``retardance`` (0 for a true zero-order plate).
+
+    Raises
+    ------
+    ParameterError : both or neither of ``fast`` and ``slow``; a bare angle in degrees; transmission above 1.
+
+    Notes
+    -----
+    Thin plate at normal incidence. R. C. Jones, J. Opt. Soc. Am. 31, 488 (1941).
+
+    Examples
+    --------
+    >>> from fastaxis.units import deg
+    >>> Retarder(fast=0*deg, retardance=90*deg, name="plate").fast_axis
+    0.0
+    """
+
+    fast: Scalar | None = None
+    slow: Scalar | None = None
+    retardance: Scalar = pi
+    transmission: Scalar = 1.0
+    design: Scalar | None = None
+    order: int = 0
+
+    stem: ClassVar[str] = "plate"
+
+    def __post_init__(self) -> None:
+        if (self.fast is None) == (self.slow is None):
+            raise ParameterError(
+                "a plate has its axis named once, as fast= or as slow=",
+                got=f"{self.label}: fast = {self.fast}, slow = {self.slow}",
+                fix="fast=22.5*deg",
+            )
+        for axis in ("fast", "slow"):
+            if getattr(self, axis) is not None:
+                object.__setattr__(self, axis, checks.angle(self.label, axis, getattr(self, axis)))
+        object.__setattr__(self, "retardance", checks.angle(self.label, "retardance", self.retardance))
+        checks.fraction(self.label, "transmission", self.transmission, fix="transmission=0.99")
+        if self.design is not None:
+            checks.wavelength(self.label, "design", self.design)
+        if self.order != int(self.order) or self.order < 0 or (self.order and self.design is None):
+            raise ParameterError(
+                "order counts whole waves at the design wavelength",
+                got=f"{self.label}: order = {self.order}, design = {self.design}",
+                fix="order=3, design=633*nm",
+            )
+
+    @property
+    def fast_axis(self) -> Scalar:
+        """Angle of the fast axis [rad], however it was declared."""
+        return self.slow - pi / 2 if self.fast is None else self.fast  # type: ignore[operator]  # one of both is set
+
+    def retardance_at(self, wavelength: Scalar) -> Scalar:
+        """Retardance [rad] at a wavelength [m], whole waves included."""
+        if self.design is None:
+            return self.retardance
+        return (self.retardance + 2 * pi * self.order) * (self.design / wavelength)
+
+    def laws(self, wavelength: Scalar) -> tuple[AxisLaw, ...]:
+        half = self.retardance_at(wavelength) / 2
+        along, across = Amplitude(self.transmission, -half), Amplitude(self.transmission, half)
+        return (AxisLaw(along, across, self.fast_axis),)
+
+    def changed(self, **changes: Any) -> Element:
+        # Naming one axis in a change un-names the other: the plate was turned, not declared twice.
+        if "fast" in changes and "slow" not in changes:
+            changes["slow"] = None
+        if "slow" in changes and "fast" not in changes:
+            changes["fast"] = None
+        return super().changed(**changes)
+
+
+@dataclass(frozen=True, kw_only=True)
+class HalfWavePlate(Retarder):
+    """A wave plate of half a wave: turns linear light from a to 2 fast - a and changes the hand of circular light.
+
+    Parameters as :class:`Retarder`; ``retardance`` may be a little off 180 deg.
+    """
+
+    retardance: Scalar = pi
+
+
+@dataclass(frozen=True, kw_only=True)
+class QuarterWavePlate(Retarder):
+    """A wave plate of a quarter wave: with its fast axis at +45 deg it makes H into R, at -45 deg into L.
+
+    Parameters as :class:`Retarder`; ``retardance`` may be a little off 90 deg.
+    """
+
+    retardance: Scalar = pi / 2
