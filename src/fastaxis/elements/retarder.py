@@ -6,7 +6,7 @@ from dataclasses import dataclass
 from math import pi
 from typing import Any, ClassVar
 
-from fastaxis.elements import checks
+from fastaxis import checks
 from fastaxis.elements.base import Element, ThroughElement
 from fastaxis.errors import ParameterError
 from fastaxis.laws import Amplitude, AxisLaw

@@ -1,4 +1,4 @@
-"""Checks of parameters, shared by all parts: each raises one sentence with rule, got and fix."""
+"""Checks of parameters, shared by parts, modes and states: each raises one sentence with rule, got and fix."""
 
 from __future__ import annotations
 
