@@ -1,0 +1,45 @@
+"""Errors and warnings carry rule, got and fix, and survive a process pool."""
+
+import pickle
+import warnings
+
+import pytest
+
+from fastaxis import errors
+
+ERRORS = [c for c in vars(errors).values() if isinstance(c, type) and issubclass(c, errors.FastaxisError)]
+WARNINGS = [c for c in vars(errors).values() if isinstance(c, type) and issubclass(c, errors.FastaxisWarning)]
+
+
+@pytest.mark.parametrize("kind", ERRORS + WARNINGS)
+def test_one_sentence_with_rule_got_and_fix(kind):
+    message = str(kind("q must be a multiple of 1/2.", got="qp: q = 0.3", fix="q=0.5"))
+    assert message == "qp: q = 0.3; q must be a multiple of 1/2 (fix: q=0.5)"
+
+
+@pytest.mark.parametrize("kind", ERRORS + WARNINGS)
+@pytest.mark.parametrize("left_out", ["rule", "got", "fix"])
+def test_no_part_can_be_left_out(kind, left_out):
+    parts = {"rule": "r", "got": "g", "fix": "f"}
+    del parts[left_out]
+    with pytest.raises(TypeError):
+        kind(**parts)
+
+
+@pytest.mark.parametrize("kind", ERRORS)
+def test_errors_cross_a_process_border(kind):
+    error = pickle.loads(pickle.dumps(kind("rule", got="got", fix="fix")))
+    assert type(error) is kind
+    assert (error.rule, error.got, error.fix) == ("rule", "got", "fix")
+
+
+def test_python_families_match():
+    assert issubclass(errors.ParameterError, ValueError)
+    assert issubclass(errors.SymbolError, TypeError)
+
+
+def test_warnings_can_be_made_errors():
+    with warnings.catch_warnings():
+        warnings.simplefilter("error", errors.FastaxisWarning)
+        with pytest.raises(errors.SlipWarning):
+            warnings.warn(errors.SlipWarning("r", got="g", fix="f"), stacklevel=1)
