@@ -1,1 +1,134 @@
-"""fastaxis."""
+"""fastaxis: declare an optical bench, predict every camera frame, derive the formula.
+
+>>> import fastaxis as fa
+>>> from fastaxis.units import nm, um, mm, mW, deg
+>>> train = fa.Train(wavelength=532*nm, name="first light")
+>>> _ = train.along(
+...     fa.Laser(waist=0.80*mm, power=5*mW, state=fa.H, name="laser"),
+...     fa.HalfWavePlate(fast=22.5*deg, name="hwp"),
+...     fa.Camera(pixel=20*um, shape=(256, 256), name="cam"),
+... )
+>>> shots = train.expose("cam", fa.SIX_STATES)
+>>> round(shots.power("D") / mW, 6)
+5.0
+
+Names load on first use, so importing the package stays light.
+"""
+
+from importlib import import_module
+from typing import TYPE_CHECKING, Any
+
+if TYPE_CHECKING:
+    from fastaxis.camera import (
+        SIX_STATES,
+        Exposure,
+        Setting,
+        four_frames,
+        no_analyzer,
+        plate_then_polarizer,
+        polarizer_at,
+        rotating_plate,
+    )
+    from fastaxis.conventions import View, stamp
+    from fastaxis.elements import (
+        Annulus,
+        Aperture,
+        BeamDump,
+        BeamSplitter,
+        Camera,
+        Detector,
+        FaradayRotator,
+        FreeSpace,
+        HalfWavePlate,
+        KnifeEdge,
+        Laser,
+        Lens,
+        Mask,
+        Mirror,
+        NeutralDensity,
+        Obstacle,
+        PatternedPolarizer,
+        PatternedRetarder,
+        PhaseShift,
+        PolarizingBeamSplitter,
+        Polarizer,
+        QPlate,
+        QuarterWavePlate,
+        RectangularAperture,
+        Retarder,
+        Rotator,
+        Slit,
+        SpiralPlate,
+        Wedge,
+    )
+    from fastaxis.errors import (
+        FastaxisError,
+        FastaxisWarning,
+        FileFormatError,
+        ParameterError,
+        SamplingError,
+        SamplingWarning,
+        SlipWarning,
+        SymbolError,
+        WiringError,
+        WiringWarning,
+    )
+    from fastaxis.light import (
+        UNPOLARIZED,
+        A,
+        Beam,
+        D,
+        FlatTop,
+        Gaussian,
+        H,
+        HermiteGauss,
+        L,
+        LaguerreGauss,
+        PlaneWave,
+        R,
+        SampledMode,
+        State,
+        Term,
+        V,
+        elliptical,
+        from_jones,
+        from_stokes,
+        helicity,
+        linear,
+        partially_polarized,
+    )
+    from fastaxis.maths import Pattern
+    from fastaxis.plan import Grid
+    from fastaxis.train import Train
+
+__version__ = "0.1.0"
+
+_HOMES = {
+    "camera": "SIX_STATES Exposure Setting four_frames no_analyzer plate_then_polarizer polarizer_at rotating_plate",
+    "conventions": "View stamp",
+    "elements": "Annulus Aperture BeamDump BeamSplitter Camera Detector FaradayRotator FreeSpace HalfWavePlate KnifeEdge "
+    "Laser Lens Mask Mirror NeutralDensity Obstacle PatternedPolarizer PatternedRetarder PhaseShift "
+    "PolarizingBeamSplitter Polarizer QPlate QuarterWavePlate RectangularAperture Retarder Rotator Slit SpiralPlate Wedge",
+    "errors": "FastaxisError FastaxisWarning FileFormatError ParameterError SamplingError SamplingWarning SlipWarning "
+    "SymbolError WiringError WiringWarning",
+    "light": "UNPOLARIZED A Beam D FlatTop Gaussian H HermiteGauss L LaguerreGauss PlaneWave R SampledMode State Term V "
+    "elliptical from_jones from_stokes helicity linear partially_polarized",
+    "maths": "Pattern",
+    "plan": "Grid",
+    "train": "Train",
+}
+_HOME = {name: home for home, names in _HOMES.items() for name in names.split()}
+
+__all__ = sorted([*_HOME, "__version__"])  # noqa: PLE0605 - built from the table above
+
+
+def __getattr__(name: str) -> Any:
+    if name not in _HOME:
+        raise AttributeError(f"module 'fastaxis' has no attribute {name!r}")
+    value = getattr(import_module(f"fastaxis.{_HOME[name]}"), name)
+    globals()[name] = value
+    return value
+
+
+def __dir__() -> list[str]:
+    return list(__all__)
