@@ -4,10 +4,10 @@ from __future__ import annotations
 
 import math
 
+from fastaxis import checks
 from fastaxis.camera.settings import Setting, plate_then_polarizer
-from fastaxis.elements import checks
 from fastaxis.errors import ParameterError
-from fastaxis.light import A, D, H, L, R, State, V
+from fastaxis.light.states import A, D, H, L, R, State, V
 from fastaxis.maths import Scalar
 
 __all__ = ["SIX_STATES", "four_frames", "rotating_plate"]
@@ -61,10 +61,12 @@ def rotating_plate(
     Examples
     --------
     >>> [setting.label for setting in rotating_plate(2)]
-    ['plate fast 0 deg, polarizer 0 deg', 'plate fast 90 deg, polarizer 0 deg']
+    ['plate fast 0°, polarizer 0°', 'plate fast 90°, polarizer 0°']
     """
     if isinstance(count, bool) or not isinstance(count, int) or count < 1:
-        raise ParameterError("count is a whole number of frames", got=f"rotating_plate: count = {count!r}", fix="count=16")
+        raise ParameterError(
+            "count is a whole number of frames", got=f"rotating_plate: count = {count!r}", fix="count=16"
+        )
     start, span = checks.angle("rotating_plate", "start", start), checks.angle("rotating_plate", "span", span)
     return tuple(
         plate_then_polarizer(fast=start + span * k / count, retardance=retardance, axis=axis, extinction=extinction)

@@ -10,10 +10,10 @@ from typing import TYPE_CHECKING, Any
 import numpy as np
 from numpy.typing import NDArray
 
-from fastaxis.elements import checks
+from fastaxis import checks
 from fastaxis.errors import ParameterError, SymbolError
 from fastaxis.laws import Amplitude, AxisLaw, CircularLaw, ScalarLaw
-from fastaxis.light import State
+from fastaxis.light.states import State
 from fastaxis.maths import NUMBERS, Scalar, free_symbols, is_symbolic
 
 if TYPE_CHECKING:
@@ -55,7 +55,7 @@ class Setting:
 
     Examples
     --------
-    >>> from fastaxis.light import R
+    >>> from fastaxis.light.states import R
     >>> Setting("R", state=R).weights
     array([0.5, 0. , 0. , 0.5])
     """
@@ -134,7 +134,7 @@ def _check_uniform(label: str, law: Law) -> None:
 
 def _matrix(law: AxisLaw | CircularLaw | ScalarLaw) -> NDArray[np.complex128]:
     if isinstance(law, ScalarLaw):
-        return np.eye(2) * law.transmission.value(NUMBERS)
+        return np.eye(2) * law.transmission.number()
     return np.array(law.linear(NUMBERS), complex)
 
 
@@ -167,9 +167,7 @@ def polarizer_at(
     >>> polarizer_at(0, extinction=100).weights
     array([0.505, 0.495, 0.   , 0.   ])
     """
-    return Setting(
-        label or f"polarizer {_degrees(axis)}", (_polarizer(axis, extinction, transmission),)
-    )
+    return Setting(label or f"polarizer {_degrees(axis)}", (_polarizer(axis, extinction, transmission),))
 
 
 def plate_then_polarizer(
@@ -238,7 +236,7 @@ def _extinction(value: Any) -> Scalar:
 
 
 def _degrees(angle: Scalar) -> str:
-    return str(angle) if is_symbolic(angle) else f"{math.degrees(angle):.6g} deg"
+    return str(angle) if is_symbolic(angle) else f"{math.degrees(angle):.6g}°"
 
 
 def as_setting(setting: Setting | State) -> Setting:
@@ -261,8 +259,8 @@ def as_setting(setting: Setting | State) -> Setting:
 
 def _state_label(state: State) -> str:
     if not is_symbolic(state.ellipticity) and state.ellipticity == 0:
-        return f"linear {_degrees(state.azimuth)}"
-    return f"elliptical {_degrees(state.azimuth)}, {_degrees(state.ellipticity)}"
+        return _degrees(state.azimuth)
+    return f"{_degrees(state.azimuth)}, {_degrees(state.ellipticity)}"
 
 
 def as_settings(settings: Setting | State | Iterable[Setting | State]) -> tuple[Setting, ...]:

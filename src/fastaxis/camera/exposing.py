@@ -1,0 +1,116 @@
+"""From a train to the pictures its camera takes."""
+
+from __future__ import annotations
+
+from dataclasses import fields as fields_of
+from dataclasses import replace
+from typing import TYPE_CHECKING, Any
+
+import numpy as np
+from numpy.typing import NDArray
+
+from fastaxis.camera.exposure import Exposure
+from fastaxis.camera.orientation import orientation
+from fastaxis.camera.settings import Setting, as_settings
+from fastaxis.errors import ParameterError
+from fastaxis.light.raster import Raster
+from fastaxis.light.states import State
+from fastaxis.loader import late
+
+if TYPE_CHECKING:
+    from collections.abc import Iterable, Sequence
+
+__all__ = ["expose", "merge_guards"]
+
+
+def expose(
+    train: Any,
+    target: str,
+    settings: Setting | State | Iterable[Setting | State],
+    *,
+    grid: Any = None,
+    engine: str = "auto",
+) -> Exposure:
+    """Take one frame for each analyzer setting, all on one scale.
+
+    The light is propagated once, whatever the number of settings: the camera plane is kept as four Stokes images,
+    W per pixel, light being collected over the whole square of a pixel. Mutually incoherent parts of the source
+    add there. A frame is then the weighted sum of the four images.
+
+    The camera's ``centre`` is the place of the middle of its sensor in the beam's plane [m]. Its ``orientation`` turns
+    or mirrors the picture *after* that; polarization keeps the beam's own axes, so that H and the analyzer angles
+    mean the same whichever way the camera is mounted. A detector gives frames of one pixel that hold all the power.
+
+    Parameters
+    ----------
+    train : the bench.
+    target : name of a Camera or Detector, as in "cam".
+    settings : states that pass (fa.SIX_STATES, fa.linear(30*deg)) or analyzers (fa.plate_then_polarizer(...)).
+    grid : sampling set by hand (fa.Grid); chosen by the plan if left out.
+    engine : "auto", or the name of an engine.
+
+    Raises
+    ------
+    ParameterError : no settings; a setting that is neither state nor analyzer; a target that takes no pictures.
+    """
+    analyzers = as_settings(settings)
+    plan = late("plan", "make_plan")(train, target, grid=grid, engine=engine)
+    sensor = _sensor(train, target)
+    fields = late("engines", "propagate")(plan)
+    if _is_camera(sensor):
+        stokes, x, y = _picture(fields, sensor)
+        pixel, mounted = float(sensor.pixel), sensor.orientation
+    else:
+        stokes, x, y = _all_power(fields), np.zeros(1), np.zeros(1)
+        pixel, mounted = None, "upright"
+    return Exposure(
+        stokes=stokes,
+        settings=analyzers,
+        x=x,
+        y=y,
+        pixel=pixel,
+        wavelength=float(plan.wavelength),
+        name=str(getattr(train, "name", "")),
+        target=target,
+        orientation=mounted,
+        guard=merge_guards([field.guard for field in fields]),
+        plan=str(plan),
+    )
+
+
+def _sensor(train: Any, target: str) -> Any:
+    sensor = train.elements.get(target.split(".", maxsplit=1)[0])
+    if sensor is None or "in" not in sensor.faces or not (_is_camera(sensor) or type(sensor).__name__ == "Detector"):
+        kind = "no such part" if sensor is None else type(sensor).__name__
+        raise ParameterError(
+            "pictures are taken by a Camera and powers by a Detector",
+            got=f"expose: target '{target}' ({kind})",
+            fix='train.join("pbs.reflected", fa.Camera(pixel=3.45*um, shape=(512, 512), name="cam2"))',
+        )
+    return sensor
+
+
+def _is_camera(sensor: Any) -> bool:
+    return hasattr(sensor, "pixel") and hasattr(sensor, "shape")
+
+
+def _picture(fields: Sequence[Any], camera: Any) -> tuple[NDArray[Any], NDArray[Any], NDArray[Any]]:
+    mounted = orientation(camera.orientation)
+    cx, cy = (float(c) for c in camera.centre)
+    seen = Raster(float(camera.pixel), mounted.scene_shape(camera.shape), (cx, cy))
+    stokes = sum(field.stokes_on(seen) for field in fields)
+    shown = Raster(float(camera.pixel), camera.shape, mounted.place(cx, cy))
+    return np.ascontiguousarray(mounted.apply(stokes)), shown.x, shown.y
+
+
+def _all_power(fields: Sequence[Any]) -> NDArray[Any]:
+    return np.asarray(sum(field.total_stokes for field in fields)).reshape(4, 1, 1)
+
+
+def merge_guards(guards: Sequence[Any]) -> Any:
+    """The worst of several sampling guards, figure by figure; None if there are none."""
+    known = [guard for guard in guards if guard is not None]
+    if not known:
+        return None
+    worst = {f.name: max(getattr(guard, f.name) for guard in known) for f in fields_of(known[0])}
+    return replace(known[0], **worst)

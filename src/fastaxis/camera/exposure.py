@@ -1,0 +1,185 @@
+"""An exposure: four Stokes images and the frames that each analyzer setting makes of them."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass, field, replace
+from typing import Any
+
+import numpy as np
+from numpy.typing import NDArray
+
+from fastaxis.camera.settings import Setting, as_setting, weight_matrix
+from fastaxis.conventions import View, stamp
+from fastaxis.errors import ParameterError
+from fastaxis.light.states import State
+from fastaxis.loader import late
+
+__all__ = ["Exposure", "Row"]
+
+_S3_FLIP = np.array([1.0, 1.0, 1.0, -1.0])
+
+
+@dataclass(frozen=True)
+class Row:
+    """One line of the table of an exposure.
+
+    Parameters
+    ----------
+    label : of the setting.
+    power : on the sensor [W].
+    peak : brightest pixel: irradiance [W/m^2], or power [W] for a detector.
+    lobes : bright lobes about the axis of the beam, 0 for a round picture.
+    angle : of a bright lobe [rad], counter-clockwise from x, in [0, 2 pi / lobes); nan for a round picture.
+    """
+
+    label: str
+    power: float
+    peak: float
+    lobes: int
+    angle: float
+
+
+@dataclass(frozen=True, kw_only=True, eq=False)
+class Exposure:
+    """What a camera or detector recorded; made by ``train.expose``.
+
+    Parameters
+    ----------
+    stokes : S0, S1, S2, S3 [W per pixel], shape (4, ny, nx), rows along +y; S3 in the naming of ``view``.
+    settings : the analyzer settings, in order.
+    x, y : centres of the columns and rows [m], counted from the axis of the beam in the camera's picture.
+    pixel : side of a pixel [m]; None for a detector.
+    wavelength : in vacuum [m].
+    name, target : of the train and of the camera.
+    orientation : how the camera is mounted.
+    view : the naming of R and L, and with it the sign of S3 and of the last weight.
+    guard : how well the sampling carried the light; None if not known.
+    plan : how it was computed, in words.
+    """
+
+    stokes: NDArray[np.float64] = field(repr=False)
+    settings: tuple[Setting, ...] = field(repr=False)
+    x: NDArray[np.float64] = field(repr=False)
+    y: NDArray[np.float64] = field(repr=False)
+    pixel: float | None
+    wavelength: float
+    name: str = ""
+    target: str = ""
+    orientation: str = "upright"
+    view: View = View.RECEIVER
+    guard: Any = field(default=None, repr=False)
+    plan: str = field(default="", repr=False)
+
+    @property
+    def stamp(self) -> str:
+        """The signs under which this was made, in one line."""
+        return stamp(self.view)
+
+    @property
+    def labels(self) -> tuple[str, ...]:
+        """Names of the settings, R and L as this view names them."""
+        return tuple(self.view.rename(setting.label) for setting in self.settings)
+
+    @property
+    def weights(self) -> NDArray[np.float64]:
+        """The instrument matrix (n, 4): frames = weights . stokes, S3 as this view names it."""
+        return weight_matrix(self.settings) * self._s3_signs
+
+    @property
+    def _s3_signs(self) -> NDArray[np.float64]:
+        return np.ones(4) if self.view is View.RECEIVER else _S3_FLIP
+
+    def __len__(self) -> int:
+        return len(self.settings)
+
+    @property
+    def frames(self) -> NDArray[np.float64]:
+        """All frames [W per pixel], shape (n, ny, nx); made anew at each call, ``frame(k)`` makes one at a time."""
+        return np.stack([self.frame(k) for k in range(len(self))])
+
+    def frame(self, which: int | str | Setting | State) -> NDArray[np.float64]:
+        """One frame [W per pixel], shape (ny, nx).
+
+        Parameters
+        ----------
+        which : label or index of a setting of this exposure; or any state or setting, exposed or not.
+
+        Raises
+        ------
+        ParameterError : no setting of this label or index.
+
+        Examples
+        --------
+        >>> from fastaxis.light.states import H, V
+        >>> shots = Exposure(stokes=np.array([3.0, 1.0, 0.0, 0.0]).reshape(4, 1, 1), settings=(as_setting(H),),
+        ...                  x=np.zeros(1), y=np.zeros(1), pixel=None, wavelength=532e-9)
+        >>> float(shots.frame("H")[0, 0]), float(shots.frame(V)[0, 0])
+        (2.0, 1.0)
+        """
+        weights = self._setting(which).weights * self._s3_signs
+        # A dark pixel of a physical field comes out a rounding below zero; power has no sign.
+        return np.maximum(np.tensordot(weights, self.stokes, axes=1), 0.0)
+
+    def power(self, which: int | str | Setting | State) -> float:
+        """Power on the sensor behind this setting [W]; ``which`` as in :meth:`frame`."""
+        return float(self.frame(which).sum())
+
+    @property
+    def total_power(self) -> float:
+        """Power on the sensor without an analyzer [W]."""
+        return float(self.stokes[0].sum())
+
+    def _setting(self, which: int | str | Setting | State) -> Setting:
+        if isinstance(which, str):
+            return self._labelled(which)
+        if isinstance(which, Setting | State):
+            return as_setting(which)
+        if isinstance(which, bool) or not hasattr(which, "__index__"):
+            raise ParameterError(
+                "a frame is asked for by label, index, state or setting",
+                got=f"{self.target}: frame {which!r}",
+                fix=f'shots.frame("{self.labels[0]}")',
+            )
+        if not -len(self) <= which < len(self):
+            raise ParameterError(
+                f"frames are counted from 0 to {len(self) - 1}",
+                got=f"{self.target}: frame {which}",
+                fix=f"shots.frame({len(self) - 1})",
+            )
+        return self.settings[which]
+
+    def _labelled(self, label: str) -> Setting:
+        found = [setting for setting, name in zip(self.settings, self.labels, strict=True) if name == label]
+        if not found:
+            shown = ", ".join(self.labels[:8]) + (" ..." if len(self) > 8 else "")
+            raise ParameterError(
+                f"the settings exposed are: {shown}",
+                got=f"{self.target}: no setting is called '{label}'",
+                fix=f'shots.frame("{self.labels[0]}")',
+            )
+        if any(not np.array_equal(other.weights, found[0].weights) for other in found[1:]):
+            raise ParameterError(
+                "a label asked for belongs to one setting: give each its own label=",
+                got=f"{self.target}: {len(found)} settings are called '{label}'",
+                fix=f"shots.frame({self.labels.index(label)})",
+            )
+        return found[0]
+
+    def in_view(self, view: View) -> Exposure:
+        """The same exposure under another naming of circular light.
+
+        R and L change places, S3 and the last weight change sign, all together; the frames stay as they are.
+        """
+        if view is self.view:
+            return self
+        return replace(self, view=view, stokes=self.stokes * _S3_FLIP[:, None, None])
+
+    def table(self) -> tuple[Row, ...]:
+        """Power, peak, lobes and the angle of a bright lobe for each setting, in order."""
+        return tuple(self._row(k) for k in range(len(self)))
+
+    def _row(self, k: int) -> Row:
+        frame = self.frame(k)
+        area = 1.0 if self.pixel is None else self.pixel**2
+        lobes = late("analysis.lobes", "lobes")(frame, x=self.x, y=self.y)
+        return Row(self.labels[k], float(frame.sum()), float(frame.max()) / area, lobes.count, lobes.angle)
