@@ -1,0 +1,70 @@
+"""The train as a directed graph of port states, and the part of it that light reaches."""
+
+from __future__ import annotations
+
+from collections.abc import Iterable
+from typing import Any, TypeAlias
+
+from fastaxis.maths import Scalar
+from fastaxis.train.ports import Elements, Way, in_faces, out_faces, split
+
+__all__ = ["Joints", "Node", "build", "first_loop", "is_source", "lit_nodes", "port_of"]
+
+Joints: TypeAlias = tuple[tuple[str, str], ...]
+Node: TypeAlias = tuple[str, str, Way]
+
+
+def is_source(element: object) -> bool:
+    """Whether a part sends out light of its own."""
+    return hasattr(element, "source")
+
+
+def port_of(node: Node) -> str:
+    """The port string of a node.
+
+    >>> port_of(("pbs", "reflected", "out"))
+    'pbs.reflected'
+    """
+    return f"{node[0]}.{node[1]}"
+
+
+def build(elements: Elements, joints: Joints, wavelength: Scalar) -> Any:
+    """A frozen networkx.DiGraph on nodes (part, face, "in" | "out").
+
+    Edges inside a part have ``kind="inside"`` and its ``passage``; edges between parts ``kind="join"``. A face that
+    light may cross both ways is two nodes, so a double pass through a plate is a path and not a loop.
+    """
+    import networkx as nx  # noqa: PLC0415  # a train that is only declared never needs it
+
+    graph: Any = nx.DiGraph()
+    for name, element in elements.items():
+        graph.add_nodes_from((name, face, "in") for face in in_faces(element, wavelength))
+        graph.add_nodes_from((name, face, "out") for face in out_faces(element, wavelength))
+        for (into, out), passage in element.passages(wavelength).items():
+            graph.add_edge((name, into, "in"), (name, out, "out"), kind="inside", passage=passage)
+    for out_port, in_port in joints:
+        graph.add_edge((*split(out_port), "out"), (*split(in_port), "in"), kind="join")
+    return nx.freeze(graph)
+
+
+def lit_nodes(graph: Any, sources: Iterable[Node]) -> set[Node]:
+    """All port states that light of these sources reaches."""
+    lit: set[Node] = set()
+    waiting = list(sources)
+    while waiting:
+        node = waiting.pop()
+        if node not in lit:
+            lit.add(node)
+            waiting.extend(graph.successors(node))
+    return lit
+
+
+def first_loop(graph: Any, lit: set[Node]) -> tuple[tuple[Node, Node], ...]:
+    """The joints of a closed loop of lit port states; empty when there is none."""
+    import networkx as nx  # noqa: PLC0415
+
+    try:
+        cycle = nx.find_cycle(graph.subgraph(lit))
+    except nx.NetworkXNoCycle:
+        return ()
+    return tuple((a, b) for a, b in cycle if graph.edges[a, b]["kind"] == "join")

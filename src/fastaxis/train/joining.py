@@ -1,0 +1,107 @@
+"""Rules for one joint between two ports, applied when it is made."""
+
+from __future__ import annotations
+
+from fastaxis.elements.base import Element
+from fastaxis.errors import WiringError
+from fastaxis.maths import Scalar
+from fastaxis.train.graph import Joints
+from fastaxis.train.ports import Elements, in_faces, out_faces, read_port, split
+from fastaxis.train.suggest import join_code
+
+__all__ = ["checked_joint"]
+
+
+def _default(element: Element, way: str) -> str:
+    return (element.exit if way == "out" else element.entry) or ""
+
+
+def _other_in_port(elements: Elements, joints: Joints, wavelength: Scalar, besides: str) -> str | None:
+    """A free default entry of another part, the last declared first."""
+    taken = {into for _, into in joints}
+    for name in reversed(list(elements)):
+        face = _default(elements[name], "in")
+        if name != besides and face in in_faces(elements[name], wavelength) and f"{name}.{face}" not in taken:
+            return f"{name}.{face}"
+    return None
+
+
+def _other_out_port(elements: Elements, joints: Joints, wavelength: Scalar, besides: str) -> str | None:
+    """A free out-port of another part, the last declared first; a part's default exit before its other faces."""
+    taken = {out for out, _ in joints}
+    for name in reversed(list(elements)):
+        faces = out_faces(elements[name], wavelength)
+        for face in sorted(faces, key=lambda f: (f != elements[name].exit, f == elements[name].entry)):
+            if name != besides and f"{name}.{face}" not in taken:
+                return f"{name}.{face}"
+    return None
+
+
+def _directed(
+    elements: Elements, joints: Joints, wavelength: Scalar, out: tuple[str, str], into: tuple[str, str]
+) -> tuple[str, str]:
+    """Both ports with their faces filled in, or a WiringError when light cannot leave here or enter there."""
+    out_name, into_name = out[0], into[0]
+    out_face = out[1] or _default(elements[out_name], "out")
+    in_face = into[1] or _default(elements[into_name], "in")
+    leaves = out_face in out_faces(elements[out_name], wavelength)
+    enters = in_face in in_faces(elements[into_name], wavelength)
+    if leaves and enters:
+        return f"{out_name}.{out_face}", f"{into_name}.{in_face}"
+    if leaves:
+        likely = _other_in_port(elements, joints, wavelength, out_name)
+        port, verb, fix = f"{into_name}.{in_face}", "enter", join_code(f"{out_name}.{out_face}", likely or "cam.in")
+    else:
+        likely = _other_out_port(elements, joints, wavelength, into_name)
+        port, verb, fix = f"{out_name}.{out_face}", "leave", join_code(likely or "laser.out", f"{into_name}.{in_face}")
+    swapped = _swapped(elements, wavelength, out, into)
+    raise WiringError(
+        f"light cannot {verb} there; join(out_port, in_port) names the port it leaves first",
+        got=f"{port.rstrip('.')} ({type(elements[split(port)[0]]).__name__})",
+        fix=swapped or fix,
+    )
+
+
+def _swapped(elements: Elements, wavelength: Scalar, out: tuple[str, str], into: tuple[str, str]) -> str | None:
+    """The joint taken the other way round, where light can go that way."""
+    first, last = elements[into[0]], elements[out[0]]
+    out_face, in_face = into[1] or _default(first, "out"), out[1] or _default(last, "in")
+    if out_face in out_faces(first, wavelength) and in_face in in_faces(last, wavelength):
+        return join_code(f"{into[0]}.{out_face}", f"{out[0]}.{in_face}")
+    return None
+
+
+def checked_joint(
+    elements: Elements, joints: Joints, wavelength: Scalar, out_port: str, in_port: str
+) -> tuple[str, str]:
+    """The joint with full port names, after every rule for a single joint was applied."""
+    out, into = read_port(elements, out_port), read_port(elements, in_port)
+    if out[0] == into[0]:
+        likely = _other_in_port(elements, joints, wavelength, out[0])
+        raise WiringError(
+            "a part cannot be joined to itself",
+            got=f"{out_port} -> {in_port}",
+            fix=join_code(out_port, likely) if likely else f'train.along("{out_port}", fa.BeamDump())',
+        )
+    full_out, full_in = _directed(elements, joints, wavelength, out, into)
+    _check_free(elements, joints, wavelength, full_out, full_in)
+    return full_out, full_in
+
+
+def _check_free(elements: Elements, joints: Joints, wavelength: Scalar, out_port: str, in_port: str) -> None:
+    """Each port carries one joint only."""
+    for other_out, other_in in joints:
+        if other_out == out_port:
+            likely = _other_out_port(elements, joints, wavelength, split(in_port)[0])
+            raise WiringError(
+                "light leaving a port goes to one place; a splitter makes two beams of one",
+                got=f"{out_port}: already joined to {other_in}",
+                fix=join_code(likely, in_port) if likely else 'train.add(fa.BeamSplitter(name="splitter"))',
+            )
+        if other_in == in_port:
+            likely = _other_in_port(elements, joints, wavelength, split(out_port)[0])
+            raise WiringError(
+                "a port is fed by one beam; a splitter brings two together",
+                got=f"{in_port}: already fed by {other_out}",
+                fix=join_code(out_port, likely) if likely else 'train.add(fa.BeamSplitter(name="combiner"))',
+            )

@@ -1,0 +1,57 @@
+"""A path of parts in the order the light meets them, taken apart into joints."""
+
+from __future__ import annotations
+
+from collections.abc import Iterable
+from itertools import pairwise
+
+from fastaxis.elements.base import Element
+from fastaxis.errors import WiringError
+from fastaxis.maths import Scalar
+from fastaxis.train.graph import Joints
+from fastaxis.train.joining import checked_joint
+from fastaxis.train.naming import with_name
+from fastaxis.train.ports import Elements, in_faces, out_faces, read_port
+
+__all__ = ["joined_along"]
+
+
+def joined_along(
+    elements: Elements, joints: Joints, wavelength: Scalar, items: Iterable[Element | str]
+) -> tuple[dict[str, Element], Joints]:
+    """Parts and joints with a path added; nothing is changed when any of it is refused."""
+    parts, stops = dict(elements), []
+    for item in items:
+        if isinstance(item, str):
+            read_port(parts, item)
+            stops.append(item)
+        else:
+            named = with_name(parts, item)
+            parts[named.name] = named
+            stops.append(named.name)
+    for index, (here, there) in enumerate(pairwise(stops)):
+        out_port = here if index == 0 else _way_out(parts, wavelength, here, stops[:index], stops[index + 1 :])
+        joints = (*joints, checked_joint(parts, joints, wavelength, out_port, there))
+    return parts, joints
+
+
+def _way_out(elements: Elements, wavelength: Scalar, port: str, before: list[str], after: list[str]) -> str:
+    """The port by which light leaves a part it entered in the middle of a path."""
+    name, face = read_port(elements, port)
+    element = elements[name]
+    if not face or face == element.entry:
+        return name
+    ways = [out for into, out in element.passages(wavelength) if into == face]
+    if len(ways) == 1:
+        return f"{name}.{ways[0]}"
+    raise WiringError(
+        "inside a path a part is entered and left by its default faces; a path by another port ends or starts there",
+        got=f"{port}: {len(ways)} ways on from this face",
+        fix=f"train.along({_quoted(*before, name)}); train.along({_quoted(port, *after)})"
+        if face in out_faces(element, wavelength) and element.entry in in_faces(element, wavelength)
+        else f"train.along({_quoted(*before, port)})",
+    )
+
+
+def _quoted(*ports: str) -> str:
+    return ", ".join(f'"{port}"' for port in ports)

@@ -1,0 +1,244 @@
+"""The train: parts, how they are joined, and the questions that can be asked of them."""
+
+from __future__ import annotations
+
+import warnings
+from collections.abc import Mapping
+from typing import Any, Self
+
+from fastaxis.checks import wavelength as checked_wavelength
+from fastaxis.elements.base import Element
+from fastaxis.loader import late
+from fastaxis.maths import Scalar
+from fastaxis.train import validate as checks
+from fastaxis.train.changes import changed_elements
+from fastaxis.train.graph import Joints, Node, build, is_source, lit_nodes, port_of
+from fastaxis.train.joining import checked_joint
+from fastaxis.train.letters import as_symbols, letters, substituted, substituted_element
+from fastaxis.train.naming import with_name
+from fastaxis.train.path import joined_along
+from fastaxis.train.routes import Route, find_route
+from fastaxis.train.suggest import open_out
+
+__all__ = ["Train"]
+
+
+class Train:
+    """Parts of a bench, joined by named ports.
+
+    Light leaves a port ("pbs.reflected") and enters another ("cam.in"). The train only wires; what happens to the
+    light is stated by its parts.
+
+    Parameters
+    ----------
+    wavelength : vacuum wavelength [m], 10 nm to 1 mm, or a symbol.
+    name : title in figures and listings.
+
+    Raises
+    ------
+    ParameterError : a wavelength whose unit is missing.
+    WiringError : from the methods, when light cannot go as asked; the message holds the likely connection.
+
+    Examples
+    --------
+    >>> from fastaxis.elements.retarder import HalfWavePlate
+    >>> from fastaxis.units import deg, nm
+    >>> train = Train(wavelength=532*nm, name="Low Quay").along(HalfWavePlate(fast=0*deg), HalfWavePlate(fast=9*deg))
+    >>> train.joints
+    (('plate1.back', 'plate2.front'),)
+    """
+
+    def __init__(self, *, wavelength: Scalar, name: str = "train") -> None:
+        self.wavelength: Scalar = checked_wavelength(name, "wavelength", wavelength)
+        self.name = name
+        self.elements: dict[str, Element] = {}
+        self.joints: Joints = ()
+        self._said: set[str] = set()
+        self._drawn: tuple[object, Any] | None = None
+
+    # -- declaring ------------------------------------------------------------------------------------------------
+
+    def along(self, *items: Element | str) -> Self:
+        """Add parts in the order the light meets them, each joined to the next, and return the train.
+
+        Parameters
+        ----------
+        items : new parts, or strings: the name of a part that is in the train already, or one of its ports. A path
+            may start from a port ("pbs.reflected") and end at one ("qwp.back"). Where no face is named, light
+            leaves by the part's default exit and enters by its default entry; a part entered by a named face in
+            the middle of a path is left by the only way out from there.
+        """
+        self.elements, self.joints = joined_along(self.elements, self.joints, self.wavelength, items)
+        return self
+
+    def add(self, element: Element) -> Self:
+        """Add a part without joining it, and return the train; without a name it gets one ("lens1")."""
+        named = with_name(self.elements, element)
+        self.elements = {**self.elements, named.name: named}
+        return self
+
+    def join(self, out_port: str, in_port: str) -> Self:
+        """Send the light that leaves one port into another, and return the train.
+
+        Parameters
+        ----------
+        out_port, in_port : "name.face", or "name" for the default face. ``join("mirror", "qwp.back")`` sends
+            the light from a mirror back through a plate it came through.
+        """
+        joint = checked_joint(self.elements, self.joints, self.wavelength, out_port, in_port)
+        self.joints = (*self.joints, joint)
+        return self
+
+    # -- changed copies -------------------------------------------------------------------------------------------
+
+    def copy(self) -> Self:
+        """A train of the same parts and joints that can be extended on its own."""
+        return self._with(dict(self.elements), self.wavelength)
+
+    def with_changes(self, changes: Mapping[str, Any]) -> Self:
+        """A copy with other values: {"hwp.fast": 3*deg, "wavelength": 633*nm}.
+
+        Parameters
+        ----------
+        changes : "name.parameter" -> new value; "wavelength" for the wavelength; "name.centre_x" for one half of
+            a centre. The checks of the part apply to the new value.
+        """
+        rest = {key: value for key, value in changes.items() if key != "wavelength"}
+        return self._with(changed_elements(self.elements, rest), changes.get("wavelength", self.wavelength))
+
+    def with_values(self, values: Mapping[Any, Any]) -> Self:
+        """A copy with numbers in place of letters, wherever they occur: parameters, states, modes, wavelength.
+
+        Parameters
+        ----------
+        values : {letter: number}, the letter as a symbol or by its name, the number in SI units.
+
+        Raises
+        ------
+        SymbolError : no such letter in the train.
+        """
+        by_symbol = as_symbols(self.symbols, values)
+        elements = {name: substituted_element(part, by_symbol) for name, part in self.elements.items()}
+        return self._with(elements, substituted(self.wavelength, by_symbol))
+
+    def _with(self, elements: dict[str, Element], wavelength: Scalar) -> Self:
+        copy = type(self)(wavelength=wavelength, name=self.name)
+        copy.elements, copy.joints = elements, self.joints
+        # A sweep makes hundreds of copies; a caution about the bench is worth saying once.
+        copy._said = set(self._said)  # noqa: SLF001
+        return copy
+
+    # -- wiring ---------------------------------------------------------------------------------------------------
+
+    @property
+    def symbols(self) -> set[Any]:
+        """All letters in the train."""
+        return letters((*self.elements.values(), self.wavelength))
+
+    @property
+    def graph(self) -> Any:
+        """The frozen networkx.DiGraph on port states (part, face, "in" | "out").
+
+        Edges inside a part have ``kind="inside"`` and a ``passage``; edges between parts have ``kind="join"``.
+        """
+        state = (tuple(self.elements.items()), self.joints, self.wavelength)
+        if self._drawn is None or not _same(self._drawn[0], state):
+            self._drawn = (state, build(self.elements, self.joints, self.wavelength))
+        return self._drawn[1]
+
+    @property
+    def sources(self) -> list[str]:
+        """Names of the parts that send out light."""
+        return [name for name, element in self.elements.items() if is_source(element)]
+
+    @property
+    def cameras(self) -> list[str]:
+        """Names of the cameras: parts with pixels that light does not leave."""
+        return [n for n, part in self.elements.items() if part.exit is None and hasattr(part, "pixel")]
+
+    def _lit(self) -> set[Node]:
+        return lit_nodes(self.graph, [(n, self.elements[n].exit or "out", "out") for n in self.sources])
+
+    @property
+    def lit(self) -> list[str]:
+        """Ports that light reaches, in either direction."""
+        lit = self._lit()
+        return list(dict.fromkeys(port_of(node) for node in self.graph if node in lit))
+
+    def open_ports(self) -> list[str]:
+        """Ports that light leaves towards nothing: where power leaves the bench."""
+        return [port_of(node) for node in open_out(self.graph, self._lit())]
+
+    def validate(self) -> None:
+        """Check the wiring as a whole.
+
+        Raises
+        ------
+        WiringError : no laser, an impossible joint, or a loop.
+
+        Warns
+        -----
+        WiringWarning : a camera that nothing feeds, a part that no light reaches.
+        FastaxisWarning : cautions of the parts at this wavelength. Each warning is given once.
+        """
+        self._warn(self._checked())
+
+    def _checked(self) -> set[Node]:
+        """The lit port states of a train without impossible joints or loops."""
+        checks.check_joints(self.elements, self.joints, self.wavelength)
+        checks.check_source(self.elements, self.name)
+        lit = self._lit()
+        checks.check_loops(self.graph, lit)
+        return lit
+
+    def _warn(self, lit: set[Node]) -> None:
+        for finding in checks.findings(self.elements, self.graph, lit, self.wavelength):
+            if str(finding) not in self._said:
+                self._said.add(str(finding))
+                warnings.warn(finding, stacklevel=4)
+
+    def route(self, target: str) -> Route:
+        """The light path to a camera, a detector, a dump or any port ("qp.back").
+
+        A part without a face stands for the light that leaves it (for a camera: that enters it).
+
+        Raises
+        ------
+        WiringError : no light gets there, or light by more than one path.
+        """
+        lit = self._checked()
+        route = find_route(self.elements, self.graph, lit, target)
+        self._warn(lit)
+        return route
+
+    def reflections(self, target: str) -> int:
+        """How often light is reflected on its way to a target; odd means it arrives mirrored."""
+        return self.route(target).reflections
+
+    # -- questions answered by other rooms ------------------------------------------------------------------------
+
+    def plan(self, target: str, *, grid: Any = None, engine: str = "auto") -> Any:
+        """How the light at a target will be worked out; ``print(train.plan("cam"))`` explains it."""
+        return late("plan", "make_plan")(self, target, grid=grid, engine=engine)
+
+    def field(self, target: str, *, grid: Any = None, engine: str = "auto") -> Any:
+        """The light at a target: a tuple of fields, one for each part of the source that does not interfere."""
+        return late("engines", "propagate")(self.plan(target, grid=grid, engine=engine))
+
+    def power(self, target: str, *, grid: Any = None, engine: str = "auto") -> float:
+        """Power [W] at a camera or leaving a port."""
+        return float(sum(part.power for part in self.field(target, grid=grid, engine=engine)))
+
+    def expose(self, target: str, settings: Any, *, grid: Any = None, engine: str = "auto") -> Any:
+        """Camera frames, one for each analyzer setting, on one common scale."""
+        return late("camera.exposing", "expose")(self, target, settings, grid=grid, engine=engine)
+
+    def derive(self, target: str, **options: Any) -> Any:
+        """The light at a target as a formula, with the letters of the train left as letters."""
+        return late("engines.symbolic", "derive")(self, target, **options)
+
+
+def _same(old: Any, new: Any) -> bool:
+    """Whether a drawn graph still holds: parts are compared as objects, as their values may be arrays."""
+    (old_parts, *old_rest), (new_parts, *new_rest) = old, new
+    return old_rest == new_rest and [(n, id(e)) for n, e in old_parts] == [(n, id(e)) for n, e in new_parts]
