@@ -5,7 +5,9 @@ from __future__ import annotations
 import math
 from typing import Any
 
-from fastaxis.errors import ParameterError
+import numpy as np
+
+from fastaxis.errors import FastaxisWarning, ParameterError, SlipWarning
 from fastaxis.maths import Pattern, Scalar, Value, is_symbolic
 
 __all__ = [
@@ -14,8 +16,12 @@ __all__ = [
     "fraction",
     "half_integer",
     "length",
+    "near_design",
     "number",
+    "pattern",
+    "usual",
     "wavelength",
+    "whole",
 ]
 
 LARGEST_ANGLE = 4 * math.pi  # two turns: a bare 22.5, 45 or 90 lies beyond
@@ -49,7 +55,8 @@ def angle(part: str, parameter: str, value: Value, *, patterned: bool = False) -
     value = number(part, parameter, value, fix=f"{parameter}=22.5*deg")
     if not is_symbolic(value) and abs(value) > LARGEST_ANGLE:
         raise ParameterError(
-            f"{parameter} is in radians and {value:g} rad is {value / (2 * math.pi):.1f} turns: write degrees as 45*deg",
+            f"{parameter} is in radians and {value:g} rad is {value / (2 * math.pi):.1f} turns:"
+            " write degrees as 45*deg",
             got=_got(part, parameter, value),
             fix=f"{parameter}={value:g}*deg",
         )
@@ -129,3 +136,88 @@ def centre(part: str, value: Any) -> tuple[Scalar, Scalar]:
         length(part, "centre x", x, least=-math.inf, most=1.0, zero=True, fix=fix),
         length(part, "centre y", y, least=-math.inf, most=1.0, zero=True, fix=fix),
     )
+
+
+def whole(part: str, parameter: str, value: Any, *, least: int | None = None) -> Scalar:
+    """A whole number, or a symbol."""
+    value = number(part, parameter, value, fix=f"{parameter}={1 if least is None else max(1, least)}")
+    if is_symbolic(value):
+        return value
+    if value != round(value) or (least is not None and value < least):
+        nearest = round(value) if least is None else max(round(value), least)
+        raise ParameterError(
+            f"{parameter} must be a whole number{'' if least is None else f', {least} or more'}",
+            got=_got(part, parameter, value),
+            fix=f"{parameter}={nearest}",
+        )
+    return int(value)
+
+
+def pattern(part: str, parameter: str, value: Any, pixel: Any, *, fix: str) -> Value:
+    """A number, a symbol, or what varies over the plate: a Pattern, a function f(x, y) or an array of cells."""
+    if isinstance(value, Pattern):
+        return value
+    if callable(value) and not is_symbolic(value):
+        return _function(part, parameter, value)
+    if hasattr(value, "shape") and value.shape != ():
+        return _cells(part, parameter, value, pixel)
+    return number(part, parameter, value, fix=fix)
+
+
+def _function(part: str, parameter: str, function: Any) -> Pattern:
+    """A function of the place, tried out on a small array so that a slip shows here and not in an engine."""
+    x = np.array([[-1e-4, 2e-4, 3e-4], [1e-4, 2e-4, -3e-4]])
+    try:
+        answer = np.asarray(function(x, 0.5 * x))
+        good = answer.shape == x.shape and answer.dtype.kind in "fiub"
+    except (TypeError, ValueError):
+        good = False
+    if not good:
+        raise ParameterError(
+            f"{parameter} as a function takes arrays x, y [m] and gives a real array of the same shape",
+            got=f"{part}: {parameter} is a function that does not",
+            fix=f"{parameter}=lambda x, y: np.arctan2(y, x) / 2",
+        )
+    return Pattern(function)
+
+
+def _cells(part: str, parameter: str, cells: Any, pixel: Any) -> Pattern:
+    """An array of cells with its pixel."""
+    if pixel is None:
+        raise ParameterError(
+            f"{parameter} as an array needs the side of its cells", got=f"{part}: pixel is not given", fix="pixel=8*um"
+        )
+    cells = np.asarray(cells)
+    if cells.ndim != 2 or cells.dtype.kind not in "fiub" or not np.isfinite(cells).all():
+        raise ParameterError(
+            f"{parameter} as an array is 2-D (ny, nx), real and finite",
+            got=f"{part}: {parameter} has shape {cells.shape} and type {cells.dtype}",
+            fix=f"{parameter}=np.zeros((64, 64)), pixel=8*um",
+        )
+    return Pattern(cells.astype(float), length(part, "pixel", pixel, most=0.01, fix="pixel=8*um"))
+
+
+def usual(part: str, parameter: str, value: Any, most: float, *, fix: str) -> list[FastaxisWarning]:
+    """A caution for a length that is possible but so large that its unit may be missing."""
+    if is_symbolic(value) or abs(value) <= most:
+        return []
+    return [
+        SlipWarning(
+            f"{parameter} is in metres and rarely beyond {most:g} m: its unit may be missing",
+            got=_got(part, parameter, value),
+            fix=fix,
+        )
+    ]
+
+
+def near_design(part: str, design: Scalar | None, wavelength: Scalar) -> list[FastaxisWarning]:
+    """A caution for a plate used more than a tenth away from the wavelength it was made for."""
+    if design is None or is_symbolic(design) or is_symbolic(wavelength) or abs(wavelength / design - 1) <= 0.1:
+        return []
+    return [
+        SlipWarning(
+            f"a plate made for {design * 1e9:.4g} nm is far off its nominal values at {wavelength * 1e9:.4g} nm",
+            got=f"{part}: design = {design:g}",
+            fix=f"design={wavelength * 1e9:.6g}*nm",
+        )
+    ]
