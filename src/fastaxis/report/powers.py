@@ -1,0 +1,40 @@
+"""Power against the analyzer setting, for a detector that collects all light."""
+
+from __future__ import annotations
+
+from matplotlib.figure import Figure
+
+from fastaxis.report.prefix import prefixed
+from fastaxis.report.shots import Shots, heading
+from fastaxis.report.style import LEFT, footer, new_figure, styled
+
+__all__ = ["draw_powers"]
+
+NAMED = 24  # so many names fit along the axis; of more, every n-th is written
+
+
+@styled
+def draw_powers(shots: Shots, *, title: str | None = None) -> Figure:
+    """One dot a setting, in order, from zero power up.
+
+    Parameters
+    ----------
+    shots : what ``train.expose`` returned.
+    title : above all; None for the names of train and detector.
+    """
+    powers = [float(shots.frame(k).sum()) for k in range(len(shots))]
+    factor, unit = prefixed(max(powers), "W")
+    figure = new_figure(7.2, 3.6)
+    axes = figure.subplots()
+    places = range(len(powers))
+    axes.plot(places, [power * factor for power in powers], color=LEFT, lw=0.8, marker="o", ms=3.5)
+    every = -(-len(powers) // NAMED)
+    long = max(len(label) for label in shots.labels) > 3
+    axes.set_xticks(places[::every], shots.labels[::every], rotation=60 if long else 0, ha="right" if long else "center",
+                    rotation_mode="anchor")  # fmt: skip
+    axes.set_ylim(bottom=0)
+    axes.set(xlabel="analyzer setting", ylabel=f"power [{unit}]")
+    axes.grid(axis="y", lw=0.4, alpha=0.5)
+    axes.set_title(heading(shots, title), size=10)
+    footer(figure, shots.view)
+    return figure

@@ -1,0 +1,60 @@
+"""Writing figures: vector PDF and PNG, whole or not at all."""
+
+from __future__ import annotations
+
+import os
+import tempfile
+from collections.abc import Iterable
+from pathlib import Path
+
+from matplotlib.figure import Figure
+
+from fastaxis.conventions import View, stamp
+from fastaxis.errors import FileFormatError
+
+__all__ = ["FORMATS", "save"]
+
+FORMATS = ("png", "pdf")
+
+
+def save(
+    figure: Figure, stem: str | Path, formats: Iterable[str] = FORMATS, *, view: View = View.RECEIVER
+) -> tuple[Path, ...]:
+    """Write ``stem.png`` and ``stem.pdf``; an interrupted write leaves the older file as it was.
+
+    Parameters
+    ----------
+    figure : what a function of this room returned.
+    stem : path without its ending; missing folders are made.
+    formats : of "png", "pdf".
+    view : whose naming of R and L the stamp in the file states.
+
+    Raises
+    ------
+    FileFormatError : another format is asked for.
+    """
+    wanted = tuple(formats)
+    for kind in wanted:
+        if kind not in FORMATS:
+            raise FileFormatError(f"figures are written as {' and '.join(FORMATS)}", got=f"{stem}: {kind}", fix='"pdf"')
+    return tuple(_write(figure, Path(f"{stem}.{kind}"), kind, view) for kind in wanted)
+
+
+def _write(figure: Figure, path: Path, kind: str, view: View) -> Path:
+    path.parent.mkdir(parents=True, exist_ok=True)
+    handle, unfinished = tempfile.mkstemp(dir=path.parent, prefix=f".{path.stem}-", suffix=f".{kind}")
+    os.close(handle)
+    try:
+        figure.savefig(unfinished, format=kind, metadata=_metadata(kind, view))
+        Path(unfinished).chmod(0o644)  # mkstemp makes files for the owner only
+        Path(unfinished).replace(path)
+    finally:
+        Path(unfinished).unlink(missing_ok=True)
+    return path
+
+
+def _metadata(kind: str, view: View) -> dict[str, str | None]:
+    if kind == "png":
+        return {"Software": "fastaxis", "Description": stamp(view)}
+    # Without a date the same bench writes the same bytes.
+    return {"Creator": "fastaxis", "Subject": stamp(view), "CreationDate": None}
