@@ -13,6 +13,7 @@ from fastaxis.maths import Pattern, Scalar, Value, is_symbolic
 __all__ = [
     "angle",
     "centre",
+    "extinction",
     "fraction",
     "half_integer",
     "length",
@@ -96,9 +97,22 @@ def wavelength(part: str, parameter: str, value: Any) -> Scalar:
     return value
 
 
+def _extremes(cells: Pattern) -> tuple[float, float]:
+    """Smallest and largest value of a pattern of cells."""
+    ends = [cells.scale * float(end) + cells.shift for end in (cells.source.min(), cells.source.max())]  # type: ignore[union-attr]
+    return min(ends), max(ends)
+
+
 def fraction(part: str, parameter: str, value: Value, *, fix: str, patterned: bool = False) -> Value:
     """A share of power between 0 and 1."""
     if patterned and isinstance(value, Pattern):
+        if not callable(value.source) and not 0 <= _extremes(value)[0] <= _extremes(value)[1] <= 1:
+            low, high = _extremes(value)
+            raise ParameterError(
+                f"{parameter} is a share of power and must lie between 0 and 1: a passive part has no gain",
+                got=f"{part}: {parameter} runs from {low:g} to {high:g}",
+                fix=fix,
+            )
         return value
     value = number(part, parameter, value, fix=fix)
     if not is_symbolic(value) and not 0 <= value <= 1:
@@ -221,3 +235,17 @@ def near_design(part: str, design: Scalar | None, wavelength: Scalar) -> list[Fa
             fix=f"design={wavelength * 1e9:.6g}*nm",
         )
     ]
+
+
+def extinction(part: str, value: Any) -> Scalar:
+    """A ratio T1/T2 of passed powers above 1; infinite for an ideal polarizer."""
+    if not is_symbolic(value) and value == math.inf:
+        return math.inf
+    value = number(part, "extinction", value, fix="extinction=1e5")
+    if not is_symbolic(value) and value <= 1:
+        raise ParameterError(
+            "extinction is the ratio T1/T2 of the powers passed along and across the axis, above 1",
+            got=_got(part, "extinction", value),
+            fix=f"extinction={1 / value:.6g}" if 0 < value < 1 else "extinction=1e5",
+        )
+    return value

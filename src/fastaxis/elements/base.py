@@ -4,9 +4,10 @@ from __future__ import annotations
 
 from collections.abc import Mapping
 from dataclasses import dataclass, fields, replace
+from difflib import get_close_matches
 from typing import Any, ClassVar
 
-from fastaxis.errors import ParameterError
+from fastaxis.errors import FastaxisWarning, ParameterError
 from fastaxis.laws import Law, Passage
 from fastaxis.loader import late
 from fastaxis.maths import Scalar, free_symbols
@@ -56,16 +57,26 @@ class Element:
         """A copy with some parameters changed; the same checks apply."""
         known = self.parameters()
         if {"centre_x", "centre_y"} & changes.keys() and "centre" in known:
-            x, y = known["centre"]
+            x, y = changes.get("centre", known["centre"])
             changes["centre"] = (changes.pop("centre_x", x), changes.pop("centre_y", y))
         for parameter in changes:
             if parameter not in known and parameter != "name":
+                likely = (*get_close_matches(parameter, known, 1), *known, "name")[0]
                 raise ParameterError(
                     f"{type(self).__name__} has the parameters {', '.join(known) or '(none)'}",
                     got=f"{self.label}: no parameter '{parameter}'",
-                    fix=f'"{self.label}.{next(iter(known), "name")}"',
+                    fix=f'"{self.label}.{likely}"',
                 )
         return replace(self, **changes)
+
+    def cautions(self, wavelength: Scalar) -> list[FastaxisWarning]:
+        """What is possible but looks like a slip at a wavelength [m]; the train shows these."""
+        return []
+
+    def _keep(self, **checked: Any) -> None:
+        """Put checked values into this frozen part, while it is being made."""
+        for parameter, value in checked.items():
+            object.__setattr__(self, parameter, value)
 
     @property
     def symbols(self) -> set[Any]:

@@ -8,7 +8,7 @@ from typing import Any, ClassVar
 
 from fastaxis import checks
 from fastaxis.elements.base import Element, ThroughElement
-from fastaxis.errors import ParameterError
+from fastaxis.errors import FastaxisWarning, ParameterError
 from fastaxis.laws import Amplitude, AxisLaw
 from fastaxis.maths import Scalar
 
@@ -64,12 +64,15 @@ class Retarder(ThroughElement):
             )
         for axis in ("fast", "slow"):
             if getattr(self, axis) is not None:
-                object.__setattr__(self, axis, checks.angle(self.label, axis, getattr(self, axis)))
-        object.__setattr__(self, "retardance", checks.angle(self.label, "retardance", self.retardance))
-        checks.fraction(self.label, "transmission", self.transmission, fix="transmission=0.99")
+                self._keep(**{axis: checks.angle(self.label, axis, getattr(self, axis))})
+        self._keep(
+            retardance=checks.angle(self.label, "retardance", self.retardance),
+            transmission=checks.fraction(self.label, "transmission", self.transmission, fix="transmission=0.99"),
+            order=checks.whole(self.label, "order", self.order, least=0),
+        )
         if self.design is not None:
-            checks.wavelength(self.label, "design", self.design)
-        if self.order != int(self.order) or self.order < 0 or (self.order and self.design is None):
+            self._keep(design=checks.wavelength(self.label, "design", self.design))
+        if self.order != 0 and self.design is None:
             raise ParameterError(
                 "order counts whole waves at the design wavelength",
                 got=f"{self.label}: order = {self.order}, design = {self.design}",
@@ -91,6 +94,9 @@ class Retarder(ThroughElement):
         half = self.retardance_at(wavelength) / 2
         along, across = Amplitude(self.transmission, -half), Amplitude(self.transmission, half)
         return (AxisLaw(along, across, self.fast_axis),)
+
+    def cautions(self, wavelength: Scalar) -> list[FastaxisWarning]:
+        return checks.near_design(self.label, self.design, wavelength)
 
     def changed(self, **changes: Any) -> Element:
         # Naming one axis in a change un-names the other: the plate was turned, not declared twice.
