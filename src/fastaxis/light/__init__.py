@@ -3,12 +3,16 @@
 from fastaxis.light.mixtures import UNPOLARIZED, StateMixture, partially_polarized
 from fastaxis.light.modes import FlatTop, Gaussian, HermiteGauss, LaguerreGauss, Mode, Moments, PlaneWave, SampledMode
 from fastaxis.light.raster import Raster
+from fastaxis.light.source import Component, Source, coherent_source, make_source
 from fastaxis.light.states import A, D, H, L, R, State, V, elliptical, from_jones, from_stokes, helicity, linear
 from fastaxis.light.stokes import degree_of_polarization, ellipse, stokes
+from fastaxis.light.terms import Beam, Term
 
 __all__ = [
     "UNPOLARIZED",
     "A",
+    "Beam",
+    "Component",
     "D",
     "FlatTop",
     "Gaussian",
@@ -22,9 +26,12 @@ __all__ = [
     "R",
     "Raster",
     "SampledMode",
+    "Source",
     "State",
     "StateMixture",
+    "Term",
     "V",
+    "coherent_source",
     "degree_of_polarization",
     "ellipse",
     "elliptical",
@@ -32,6 +39,7 @@ __all__ = [
     "from_stokes",
     "helicity",
     "linear",
+    "make_source",
     "partially_polarized",
     "stokes",
 ]

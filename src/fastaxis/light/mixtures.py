@@ -70,7 +70,8 @@ class StateMixture:
     @property
     def stokes(self) -> NDArray[np.float64]:
         """(1, S1, S2, S3), shape (4,): the weighted mean of the parts."""
-        return np.sum([float(weight) * state.stokes for weight, state in self.parts], axis=0)
+        weighted = [float(weight) * state.stokes for weight, state in self.parts]
+        return np.asarray(np.sum(weighted, axis=0))
 
     @property
     def degree(self) -> float:

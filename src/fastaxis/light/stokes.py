@@ -53,5 +53,6 @@ def degree_of_polarization(stokes: ArrayLike) -> Reals:
     0.5
     """
     s0, s1, s2, s3 = np.asarray(stokes, dtype=float)
-    polarized = np.sqrt(s1**2 + s2**2 + s3**2)
-    return np.divide(polarized, s0, out=np.zeros_like(polarized), where=s0 > 0)
+    polarized: Reals = np.sqrt(s1**2 + s2**2 + s3**2)
+    degree: Reals = np.divide(polarized, s0, out=np.zeros_like(polarized), where=s0 > 0)
+    return degree

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import math
+from collections.abc import Set as AbstractSet
 from dataclasses import dataclass
 from typing import Any, Protocol, runtime_checkable
 
@@ -13,7 +14,7 @@ from fastaxis import checks
 from fastaxis.errors import ParameterError, SymbolError
 from fastaxis.maths import Scalar, free_symbols, is_symbolic
 
-__all__ = ["Complexes", "Mode", "Moments", "order", "require_numbers", "waist", "waist_at"]
+__all__ = ["Complexes", "Mode", "Moments", "order", "places", "require_numbers", "waist", "waist_at"]
 
 Complexes = NDArray[np.complex128]
 
@@ -59,7 +60,7 @@ class Mode(Protocol):
         """Whether it has a hard edge."""
 
     @property
-    def symbols(self) -> set[Any]:
+    def symbols(self) -> AbstractSet[Any]:
         """The letters among the parameters."""
 
     def amplitude(self, x: ArrayLike, y: ArrayLike, wavelength: float) -> Complexes:
@@ -76,6 +77,11 @@ class Mode(Protocol):
 
     def overlap(self, other: Mode, wavelength: float) -> complex:
         """<self|other>, the integral of conj(self) other over the plane."""
+
+
+def places(x: ArrayLike, y: ArrayLike, centre: tuple[Any, Any]) -> tuple[NDArray[np.float64], NDArray[np.float64]]:
+    """Places (x, y) [m] as seen from a centre."""
+    return np.asarray(x, dtype=float) - float(centre[0]), np.asarray(y, dtype=float) - float(centre[1])
 
 
 def require_numbers(mode: Any) -> None:

@@ -13,7 +13,7 @@ from typing import TYPE_CHECKING, Any, ClassVar, Self
 import numpy as np
 from numpy.typing import ArrayLike, NDArray
 
-from fastaxis.light.modes.base import Complexes, Mode, Moments, require_numbers
+from fastaxis.light.modes.base import Complexes, Mode, Moments, places, require_numbers
 from fastaxis.maths import Scalar, free_symbols, is_symbolic
 
 if TYPE_CHECKING:
@@ -33,6 +33,11 @@ class GaussFamily(Record):
 
     infinite: ClassVar[bool] = False
     hard: ClassVar[bool] = False
+
+    @property
+    def charge(self) -> int | None:
+        """The l of a mode f(r) exp(i l phi) on the axis, else None."""
+        raise NotImplementedError
 
     @property
     def degree(self) -> int:
@@ -92,11 +97,11 @@ class GaussFamily(Record):
     def amplitude(self, x: ArrayLike, y: ArrayLike, wavelength: float) -> Complexes:
         """Complex amplitude [1/m] of unit power at the places (x, y) [m]."""
         require_numbers(self)
-        x, y = np.asarray(x, dtype=float) - self.centre[0], np.asarray(y, dtype=float) - self.centre[1]
+        dx, dy = places(x, y, self.centre)
         scale = math.sqrt(2) / self.width(wavelength)
-        envelope = np.exp(-self.q_inverse(wavelength) * (x * x + y * y))
+        envelope = np.exp(-self.q_inverse(wavelength) * (dx * dx + dy * dy))
         return np.asarray(
-            self.front_factor(wavelength) * self.polynomial(scale * x, scale * y) * envelope, dtype=complex
+            self.front_factor(wavelength) * self.polynomial(scale * dx, scale * dy) * envelope, dtype=np.complex128
         )
 
     def front_factor(self, wavelength: float) -> complex:

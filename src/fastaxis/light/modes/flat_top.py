@@ -11,7 +11,7 @@ from numpy.typing import ArrayLike
 
 from fastaxis import checks
 from fastaxis.errors import ParameterError
-from fastaxis.light.modes.base import Complexes, Mode, Moments, require_numbers, waist
+from fastaxis.light.modes.base import Complexes, Mode, Moments, places, require_numbers, waist
 from fastaxis.light.modes.quadrature import over_disc
 from fastaxis.maths import Scalar, free_symbols, is_symbolic
 
@@ -75,10 +75,9 @@ class FlatTop:
     def amplitude(self, x: ArrayLike, y: ArrayLike, wavelength: float) -> Complexes:
         """Amplitude [1/m] of unit power at the places (x, y) [m]; real."""
         require_numbers(self)
-        x, y = np.asarray(x, dtype=float) - self.centre[0], np.asarray(y, dtype=float) - self.centre[1]
-        s = np.hypot(x, y) / self.radius
-        shape = (s <= 1).astype(complex) if self.order is None else np.exp(-(s**self.order)).astype(complex)
-        return shape / math.sqrt(self._area)
+        s = np.hypot(*places(x, y, self.centre)) / self.radius
+        shape = s <= 1 if self.order is None else np.exp(-(s**self.order))
+        return np.asarray(shape / math.sqrt(self._area), dtype=np.complex128)
 
     def radial(self, r: ArrayLike, wavelength: float) -> Complexes:
         """f(r) [1/m]."""
@@ -119,7 +118,7 @@ class FlatTop:
             return self._with_flat_top(other, wavelength)
         if other.infinite or not hasattr(other, "centre"):
             return other.overlap(self, wavelength).conjugate()
-        return over_disc(self, other, self.centre, self.reach, wavelength)
+        return over_disc((self, other), wavelength, centre=self.centre, radius=self.reach)
 
     def _with_flat_top(self, other: FlatTop, wavelength: float) -> complex:
         require_numbers(other)
@@ -129,7 +128,7 @@ class FlatTop:
             return complex(shared / (math.pi * self.radius * other.radius))
         # Integrate where the hard edge is the border of the region, not inside it.
         region = other if other.hard else self
-        return over_disc(self, other, region.centre, region.reach, wavelength)
+        return over_disc((self, other), wavelength, centre=region.centre, radius=region.reach)
 
 
 def _shared_area(a: float, b: float, distance: float) -> float:

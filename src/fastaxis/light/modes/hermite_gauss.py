@@ -62,11 +62,11 @@ class HermiteGauss(GaussFamily):
 
     @property
     def degree(self) -> int:
-        return self.m + self.n
+        return int(self.m + self.n)
 
     @property
     def quality(self) -> int:
-        return 2 * max(self.m, self.n) + 1
+        return int(2 * max(self.m, self.n) + 1)
 
     def polynomial(self, u: Any, v: Any, *, conjugate: bool = False) -> Any:
         return math.sqrt(2 / math.pi) * _hermite(self.m, u) * _hermite(self.n, v)

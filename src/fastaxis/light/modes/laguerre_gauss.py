@@ -65,7 +65,7 @@ class LaguerreGauss(GaussFamily):
 
     @property
     def degree(self) -> int:
-        return 2 * self.p + abs(self.l)
+        return int(2 * self.p + abs(self.l))
 
     @property
     def quality(self) -> int:

@@ -18,30 +18,30 @@ NODES = (32, 64, 128, 256, 512, 1024)
 SETTLED = 1e-12  # of unit power: some hundred roundings of the sum
 
 
-def over_disc(one: Mode, other: Mode, centre: tuple[Any, Any], radius: float, wavelength: float) -> complex:
+def over_disc(pair: tuple[Mode, Mode], wavelength: float, *, centre: tuple[Any, Any], radius: float) -> complex:
     """<one|other> over a disc: Gauss-Legendre along the radius, equal steps around, doubled until it settles.
 
     Both rules converge geometrically for amplitudes that are smooth inside the disc.
     """
     last = complex(math.inf)
     for count in NODES:
-        this = _polar_sum(one, other, centre, radius, wavelength, count)
+        this = _polar_sum(pair, wavelength, count, centre=centre, radius=radius)
         if abs(this - last) < SETTLED:
             return this
         last = this
     raise SamplingError(
         f"the overlap of two modes must settle within {NODES[-1]} nodes: their phases differ by too many fringes",
-        got=f"{type(one).__name__} beside {type(other).__name__}: off by {abs(this - last) or SETTLED:.1e} still",
+        got=f"{type(pair[0]).__name__} beside {type(pair[1]).__name__}: off by {abs(this - last) or SETTLED:.1e} still",
         fix="waist_at=0*mm",
     )
 
 
 def _polar_sum(
-    one: Mode, other: Mode, centre: tuple[Any, Any], radius: float, wavelength: float, count: int
+    pair: tuple[Mode, Mode], wavelength: float, count: int, *, centre: tuple[Any, Any], radius: float
 ) -> complex:
     nodes, weights = np.polynomial.legendre.leggauss(count)
     r = radius * (nodes + 1) / 2
     angle = np.arange(count) * (2 * math.pi / count)
     x, y = centre[0] + np.outer(r, np.cos(angle)), centre[1] + np.outer(r, np.sin(angle))
-    product = one.amplitude(x, y, wavelength).conj() * other.amplitude(x, y, wavelength)
-    return complex(np.sum((weights * r) @ product) * (radius / 2) * (2 * math.pi / count))
+    bra, ket = (mode.amplitude(x, y, wavelength) for mode in pair)
+    return complex(np.sum((weights * r) @ (bra.conj() * ket)) * (radius / 2) * (2 * math.pi / count))

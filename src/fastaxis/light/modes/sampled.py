@@ -2,8 +2,8 @@
 
 from __future__ import annotations
 
-
 from dataclasses import dataclass
+from functools import cached_property
 from typing import Any, ClassVar
 
 import numpy as np
@@ -79,9 +79,17 @@ class SampledMode:
         """Complex amplitude [1/m] of unit power at the places (x, y) [m]; the same at every wavelength."""
         x, y = np.broadcast_arrays(np.asarray(x, dtype=float), np.asarray(y, dtype=float))
         rows, columns = self.raster.y, self.raster.x
-        real, imag = (RectBivariateSpline(rows, columns, part) for part in (self.array.real, self.array.imag))
+        real, imag = self._splines
         inside = (abs(x) <= -columns[0] + self.pixel / 2) & (abs(y) <= -rows[0] + self.pixel / 2)
         return np.where(inside, real(y, x, grid=False) + 1j * imag(y, x, grid=False), 0)
+
+    @cached_property
+    def _splines(self) -> tuple[RectBivariateSpline, RectBivariateSpline]:
+        rows, columns = self.raster.y, self.raster.x
+        return (
+            RectBivariateSpline(rows, columns, self.array.real),
+            RectBivariateSpline(rows, columns, self.array.imag),
+        )
 
     def radial(self, r: ArrayLike, wavelength: float) -> Complexes:
         """Refused: samples have no charge of their own."""
