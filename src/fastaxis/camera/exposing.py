@@ -10,8 +10,9 @@ import numpy as np
 from numpy.typing import NDArray
 
 from fastaxis.camera.exposure import Exposure
-from fastaxis.camera.orientation import orientation
 from fastaxis.camera.settings import Setting, as_settings
+from fastaxis.elements.camera import Camera
+from fastaxis.elements.detector import Detector
 from fastaxis.errors import ParameterError
 from fastaxis.light.raster import Raster
 from fastaxis.light.states import State
@@ -57,50 +58,51 @@ def expose(
     plan = late("plan", "make_plan")(train, target, grid=grid, engine=engine)
     sensor = _sensor(train, target)
     fields = late("engines", "propagate")(plan)
-    if _is_camera(sensor):
+    if isinstance(sensor, Camera):
         stokes, x, y = _picture(fields, sensor)
-        pixel, mounted = float(sensor.pixel), sensor.orientation
     else:
         stokes, x, y = _all_power(fields), np.zeros(1), np.zeros(1)
-        pixel, mounted = None, "upright"
     return Exposure(
         stokes=stokes,
         settings=analyzers,
         x=x,
         y=y,
-        pixel=pixel,
+        pixel=sensor.pixel if isinstance(sensor, Camera) else None,
         wavelength=float(plan.wavelength),
         name=str(getattr(train, "name", "")),
         target=target,
-        orientation=mounted,
+        orientation=getattr(sensor, "orientation", "upright"),
         guard=merge_guards([field.guard for field in fields]),
         plan=str(plan),
     )
 
 
-def _sensor(train: Any, target: str) -> Any:
+def _sensor(train: Any, target: str) -> Camera | Detector:
     sensor = train.elements.get(target.split(".", maxsplit=1)[0])
-    if sensor is None or "in" not in sensor.faces or not (_is_camera(sensor) or type(sensor).__name__ == "Detector"):
-        kind = "no such part" if sensor is None else type(sensor).__name__
-        raise ParameterError(
-            "pictures are taken by a Camera and powers by a Detector",
-            got=f"expose: target '{target}' ({kind})",
-            fix='train.join("pbs.reflected", fa.Camera(pixel=3.45*um, shape=(512, 512), name="cam2"))',
-        )
-    return sensor
+    if isinstance(sensor, Camera | Detector):
+        return sensor
+    raise ParameterError(
+        "pictures are taken by a Camera and powers by a Detector",
+        got=f"expose: target '{target}' ({'no such part' if sensor is None else type(sensor).__name__})",
+        fix='train.join("pbs.reflected", fa.Camera(pixel=3.45*um, shape=(512, 512), name="cam2"))',
+    )
 
 
-def _is_camera(sensor: Any) -> bool:
-    return hasattr(sensor, "pixel") and hasattr(sensor, "shape")
-
-
-def _picture(fields: Sequence[Any], camera: Any) -> tuple[NDArray[Any], NDArray[Any], NDArray[Any]]:
-    mounted = orientation(camera.orientation)
-    cx, cy = (float(c) for c in camera.centre)
-    seen = Raster(float(camera.pixel), mounted.scene_shape(camera.shape), (cx, cy))
+def _picture(fields: Sequence[Any], camera: Camera) -> tuple[NDArray[Any], NDArray[Any], NDArray[Any]]:
+    cx, cy = camera.centre
+    seen = Raster(camera.pixel, camera.seen, (float(cx), float(cy)))
     stokes = sum(field.stokes_on(seen) for field in fields)
-    shown = Raster(float(camera.pixel), camera.shape, mounted.place(cx, cy))
-    return np.ascontiguousarray(mounted.apply(stokes)), shown.x, shown.y
+    return np.ascontiguousarray(camera.oriented(stokes)), *_shown_axes(camera, seen)
+
+
+def _shown_axes(camera: Camera, seen: Raster) -> tuple[NDArray[Any], NDArray[Any]]:
+    """Column and row coordinates in the camera's picture, the axis of the beam being at (0, 0)."""
+    # A 2 x 2 picture of the value x + 2y tells which of the beam's axes runs along the columns, and which way.
+    probe = camera.oriented(np.array([[0, 1], [2, 3]]))
+    along_columns, along_rows = probe[0, 1] - probe[0, 0], probe[1, 0] - probe[0, 0]
+    return tuple(  # type: ignore[return-value]  # of two
+        np.sort(np.sign(step) * (seen.x if abs(step) == 1 else seen.y)) for step in (along_columns, along_rows)
+    )
 
 
 def _all_power(fields: Sequence[Any]) -> NDArray[Any]:

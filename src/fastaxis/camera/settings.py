@@ -132,7 +132,7 @@ def _check_uniform(label: str, law: Law) -> None:
         )
 
 
-def _matrix(law: AxisLaw | CircularLaw | ScalarLaw) -> NDArray[np.complex128]:
+def _matrix(law: AxisLaw | CircularLaw | ScalarLaw) -> NDArray[Any]:
     if isinstance(law, ScalarLaw):
         return np.eye(2) * law.transmission.number()
     return np.array(law.linear(NUMBERS), complex)
