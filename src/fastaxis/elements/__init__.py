@@ -6,6 +6,7 @@ from fastaxis.elements.beam_splitter import BeamSplitter
 from fastaxis.elements.camera import ORIENTATIONS, Camera
 from fastaxis.elements.detector import BeamDump, Detector
 from fastaxis.elements.free_space import FreeSpace
+from fastaxis.elements.laser import Laser
 from fastaxis.elements.lens import Lens
 from fastaxis.elements.mask import Mask
 from fastaxis.elements.mirror import Mirror
@@ -23,8 +24,8 @@ from fastaxis.elements.wedge import Wedge
 
 __all__ = [
     "ORIENTATIONS", "Annulus", "Aperture", "BeamDump", "BeamSplitter", "Camera", "Detector", "Element",
-    "FaradayRotator", "FreeSpace", "HalfWavePlate", "KnifeEdge", "Lens", "Mask", "Mirror", "NeutralDensity", "Obstacle",
-    "PatternedPolarizer", "PatternedRetarder", "PhaseShift", "Polarizer", "PolarizingBeamSplitter",
-    "QPlate", "QuarterWavePlate", "RectangularAperture", "Retarder", "Rotator", "Slit", "SpiralPlate", "ThroughElement",
-    "Wedge",
+    "FaradayRotator", "FreeSpace", "HalfWavePlate", "KnifeEdge", "Laser", "Lens", "Mask", "Mirror",
+    "NeutralDensity", "Obstacle", "PatternedPolarizer", "PatternedRetarder", "PhaseShift", "Polarizer",
+    "PolarizingBeamSplitter", "QPlate", "QuarterWavePlate", "RectangularAperture", "Retarder", "Rotator",
+    "Slit", "SpiralPlate", "ThroughElement", "Wedge",
 ]  # fmt: skip
