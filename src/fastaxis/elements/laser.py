@@ -82,8 +82,7 @@ class Laser(Element):
                 fix="mode=Gaussian(waist=0.8*mm, waist_at=200*mm)",
             )
         self._check_state()
-        if self.incoherent is not None:
-            self._keep(incoherent=tuple(self._part(part) for part in self.incoherent))
+        self._check_shape()
 
     def _check_one_way(self) -> None:
         given = [way for way in WAYS if getattr(self, way) is not None]
@@ -95,9 +94,11 @@ class Laser(Element):
             )
 
     def _check_state(self) -> None:
+        shaped = self.waist is not None or self.mode is not None
         if self.state is None:
+            self._keep(state=light.H if shaped else None)
             return
-        if self.waist is None and self.mode is None:
+        if not shaped:
             raise ParameterError(
                 "the terms of a beam have their states already",
                 got=f"{self.label}: state given beside {'beam' if self.beam else 'incoherent'}",
@@ -110,12 +111,28 @@ class Laser(Element):
                 fix="state=H",
             )
 
+    def _check_shape(self) -> None:
+        if self.mode is not None and not isinstance(self.mode, light.Mode):
+            raise ParameterError(
+                "mode is a transverse mode",
+                got=f"{self.label}: mode = {self.mode!r}",
+                fix="mode=LaguerreGauss(0, 1, 0.8*mm)",
+            )
+        if self.beam is not None and not isinstance(self.beam, light.Beam):
+            raise ParameterError(
+                "beam is a Beam of Terms",
+                got=f"{self.label}: beam = {self.beam!r}",
+                fix="beam=Beam((Term(1, Gaussian(0.8*mm), H),))",
+            )
+        if self.incoherent is not None:
+            self._keep(incoherent=tuple(self._part(part) for part in self.incoherent))
+
     def _part(self, part: Any) -> tuple[Any, ...]:
         """One incoherent part as (weight, beam, wavelength or None)."""
         try:
             weight, beam, *rest = part
             good = isinstance(beam, light.Beam) and len(rest) < 2
-        except TypeError:
+        except (TypeError, ValueError):
             good = False
         if not good:
             raise ParameterError(
@@ -136,12 +153,25 @@ class Laser(Element):
         if self.beam is not None:
             return light.Source((light.Component(1.0, self.beam, None),), self.power)
         mode = self.mode or light.Gaussian(waist=self.waist, waist_at=self.waist_at, centre=self.centre)
-        state = self.state or light.H
-        parts = state.parts if isinstance(state, light.StateMixture) else ((1.0, state),)
+        parts = self.state.parts if isinstance(self.state, light.StateMixture) else ((1.0, self.state),)
         components = tuple(
-            light.Component(weight, light.Beam((light.Term(1, mode, pure),)), None) for weight, pure in parts
+            light.Component(weight, light.Beam((light.Term(1, mode, pure),)), None)
+            for weight, pure in parts
+            if pure is not None
         )
         return light.Source(components, self.power)
+
+    def changed(self, **changes: Any) -> Element:
+        # A new shape takes the place of the old one, together with what only the old one could have.
+        chosen = [way for way in WAYS if changes.get(way) is not None]
+        if chosen:
+            dropped: dict[str, Any] = dict.fromkeys(WAYS)
+            if "waist" not in chosen:
+                dropped |= {"waist_at": 0.0, "centre": (0.0, 0.0)}
+            if not {"waist", "mode"} & set(chosen):
+                dropped["state"] = None
+            changes = dropped | changes
+        return super().changed(**changes)
 
     @property
     def symbols(self) -> set[Any]:

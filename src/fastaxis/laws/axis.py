@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from dataclasses import dataclass
+from math import pi
 from typing import Any
 
 from fastaxis.laws.amplitude import UNIT, Amplitude, at
@@ -11,7 +12,6 @@ from fastaxis.maths import Maths, Pattern, Scalar, Value
 __all__ = ["AxisLaw"]
 
 Matrix = tuple[tuple[Any, Any], tuple[Any, Any]]
-PI = 3.141592653589793
 
 
 @dataclass(frozen=True)
@@ -102,7 +102,7 @@ class AxisLaw:
         angle = self.angle.mirrored(axis) if isinstance(self.angle, Pattern) else self.angle
         angle = -angle
         if axis == "x" and self.order != 0:
-            angle = angle - self.order * PI
+            angle = angle + (-self.order * pi)  # a Pattern can be shifted by adding only
         x, y = self.centre
         return AxisLaw(
             self.along.mirrored(axis),

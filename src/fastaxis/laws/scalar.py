@@ -3,14 +3,13 @@
 from __future__ import annotations
 
 from dataclasses import dataclass, replace
+from math import pi
 
 from fastaxis.laws.amplitude import UNIT, Amplitude
 from fastaxis.laws.stops import Stop
 from fastaxis.maths import Scalar, Value
 
 __all__ = ["ScalarLaw"]
-
-PI = 3.141592653589793
 
 
 @dataclass(frozen=True)
@@ -64,7 +63,7 @@ class ScalarLaw:
         """
         transmission = self.transmission.mirrored(axis)
         if axis == "x" and self.charge != 0:
-            transmission = replace(transmission, phase=transmission.phase + self.charge * PI)
+            transmission = replace(transmission, phase=transmission.phase + self.charge * pi)
         (tx, ty), (x, y) = self.tilt, self.centre
         return ScalarLaw(
             transmission,
