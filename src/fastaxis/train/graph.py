@@ -16,7 +16,7 @@ Node: TypeAlias = tuple[str, str, Way]
 
 def is_source(element: object) -> bool:
     """Whether a part sends out light of its own."""
-    return hasattr(element, "source")
+    return hasattr(type(element), "source")
 
 
 def port_of(node: Node) -> str:

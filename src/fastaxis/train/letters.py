@@ -58,6 +58,8 @@ def substituted(value: Any, values: Mapping[Any, Any]) -> Any:
     if isinstance(value, tuple | list):
         return type(value)(substituted(item, values) for item in value)
     new = {f.name: substituted(getattr(value, f.name), values) for f in fields(value) if f.init}
+    if any(str(letter) in str(new.get("label", "")) for letter in values):
+        new["label"] = ""  # linear(alpha) is labelled by its letter, which is gone
     return replace(value, **new)
 
 

@@ -3,22 +3,28 @@
 from __future__ import annotations
 
 import warnings
-from collections.abc import Mapping
+from collections.abc import Iterable, Mapping
+from os import PathLike
+from pathlib import Path
 from typing import Any, Self
 
 from fastaxis.checks import wavelength as checked_wavelength
 from fastaxis.elements.base import Element
+from fastaxis.elements.camera import Camera
 from fastaxis.loader import late
 from fastaxis.maths import Scalar
 from fastaxis.train import validate as checks
 from fastaxis.train.changes import changed_elements
+from fastaxis.train.collected import state_of
 from fastaxis.train.graph import Joints, Node, build, is_source, lit_nodes, port_of
 from fastaxis.train.joining import checked_joint
 from fastaxis.train.letters import as_symbols, letters, substituted, substituted_element
+from fastaxis.train.listing import listing
 from fastaxis.train.naming import with_name
 from fastaxis.train.path import joined_along
 from fastaxis.train.routes import Route, find_route
 from fastaxis.train.suggest import open_out
+from fastaxis.train.text import read_text, write_text
 
 __all__ = ["Train"]
 
@@ -47,6 +53,11 @@ class Train:
     >>> train.joints
     (('plate1.back', 'plate2.front'),)
     """
+
+    def __str__(self) -> str:
+        return listing(self)
+
+    __repr__ = __str__
 
     def __init__(self, *, wavelength: Scalar, name: str = "train") -> None:
         self.wavelength: Scalar = checked_wavelength(name, "wavelength", wavelength)
@@ -107,7 +118,7 @@ class Train:
         return self._with(changed_elements(self.elements, rest), changes.get("wavelength", self.wavelength))
 
     def with_values(self, values: Mapping[Any, Any]) -> Self:
-        """A copy with numbers in place of letters, wherever they occur: parameters, states, modes, wavelength.
+        """A copy with numbers in place of letters, at any depth of parts, states and modes.
 
         Parameters
         ----------
@@ -120,6 +131,47 @@ class Train:
         by_symbol = as_symbols(self.symbols, values)
         elements = {name: substituted_element(part, by_symbol) for name, part in self.elements.items()}
         return self._with(elements, substituted(self.wavelength, by_symbol))
+
+    # -- text form ------------------------------------------------------------------------------------------------
+
+    def to_text(self) -> str:
+        """The train as versioned JSON text, numbers exact to the last bit.
+
+        Raises
+        ------
+        FileFormatError : a part holds a function; sample it to an array first.
+        """
+        return write_text(self.name, self.wavelength, self.elements, self.joints)
+
+    @classmethod
+    def from_text(cls, text: str, kinds: Iterable[type[Element]] = ()) -> Self:
+        """The train of a text form. Only parts and light of fastaxis are built, and formulas are never run.
+
+        Parameters
+        ----------
+        text : what :meth:`to_text` gave.
+        kinds : classes of parts of your own that the text may name.
+
+        Raises
+        ------
+        FileFormatError : no JSON, another version, an unknown kind, a missing or unknown field.
+        """
+        name, wavelength, parts, joints = read_text(text, kinds)
+        train = cls(wavelength=wavelength, name=name)
+        for part in parts:
+            train.add(part)
+        for out_port, in_port in joints:
+            train.join(out_port, in_port)
+        return train
+
+    def save(self, path: str | PathLike[str]) -> None:
+        """Write the text form to a file (UTF-8)."""
+        Path(path).write_text(self.to_text(), encoding="utf-8")
+
+    @classmethod
+    def load(cls, path: str | PathLike[str], kinds: Iterable[type[Element]] = ()) -> Self:
+        """The train of a file written by :meth:`save`."""
+        return cls.from_text(Path(path).read_text(encoding="utf-8"), kinds)
 
     def _with(self, elements: dict[str, Element], wavelength: Scalar) -> Self:
         copy = type(self)(wavelength=wavelength, name=self.name)
@@ -153,8 +205,8 @@ class Train:
 
     @property
     def cameras(self) -> list[str]:
-        """Names of the cameras: parts with pixels that light does not leave."""
-        return [n for n, part in self.elements.items() if part.exit is None and hasattr(part, "pixel")]
+        """Names of the cameras."""
+        return [name for name, element in self.elements.items() if isinstance(element, Camera)]
 
     def _lit(self) -> set[Node]:
         return lit_nodes(self.graph, [(n, self.elements[n].exit or "out", "out") for n in self.sources])
@@ -195,7 +247,7 @@ class Train:
         for finding in checks.findings(self.elements, self.graph, lit, self.wavelength):
             if str(finding) not in self._said:
                 self._said.add(str(finding))
-                warnings.warn(finding, stacklevel=4)
+                warnings.warn(finding, stacklevel=3)
 
     def route(self, target: str) -> Route:
         """The light path to a camera, a detector, a dump or any port ("qp.back").
@@ -227,7 +279,18 @@ class Train:
 
     def power(self, target: str, *, grid: Any = None, engine: str = "auto") -> float:
         """Power [W] at a camera or leaving a port."""
-        return float(sum(part.power for part in self.field(target, grid=grid, engine=engine)))
+        return float(sum(part.power for part in self._collected(target, grid, engine)))
+
+    def state(self, target: str, *, grid: Any = None, engine: str = "auto") -> Any:
+        """Polarization of all the light at a target together: a State, or a StateMixture where it is not pure.
+
+        A beam whose polarization varies from place to place is partly polarized in this sense.
+        """
+        return state_of(self._collected(target, grid, engine), target)
+
+    def _collected(self, target: str, grid: Any, engine: str) -> Any:
+        plan = late("plan", "make_plan")(self, target, grid=grid, engine=engine, power_only=True)
+        return late("engines", "propagate")(plan)
 
     def expose(self, target: str, settings: Any, *, grid: Any = None, engine: str = "auto") -> Any:
         """Camera frames, one for each analyzer setting, on one common scale."""

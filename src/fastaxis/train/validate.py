@@ -5,7 +5,9 @@ from __future__ import annotations
 from collections.abc import Iterator
 from typing import Any
 
-from fastaxis.errors import FastaxisWarning, SlipWarning, WiringError, WiringWarning
+from fastaxis.elements.base import Element
+from fastaxis.elements.detector import BeamDump
+from fastaxis.errors import FastaxisWarning, WiringError, WiringWarning
 from fastaxis.maths import Scalar
 from fastaxis.train.graph import Joints, Node, first_loop, is_source, port_of
 from fastaxis.train.joining import checked_joint
@@ -48,9 +50,8 @@ def check_loops(graph: Any, lit: set[Node]) -> None:
     )
 
 
-def _is_detecting(element: object) -> bool:
-    exits = getattr(element, "exit", None)
-    return exits is None and bool(getattr(element, "entry", None)) and type(element).__name__ != "BeamDump"
+def _is_detecting(element: Element) -> bool:
+    return element.exit is None and not isinstance(element, BeamDump)
 
 
 def _upstream(graph: Any, node: Node) -> set[str]:
@@ -85,17 +86,8 @@ def _upstream_of(graph: Any, name: str) -> set[str]:
     return set().union(*(_upstream(graph, node) for node in graph if node[0] == name))
 
 
-def _cautions(elements: Elements, wavelength: Scalar) -> Iterator[FastaxisWarning]:
-    for element in elements.values():
-        for caution in getattr(element, "cautions", lambda _: ())(wavelength):
-            yield caution if isinstance(caution, FastaxisWarning) else _slip(element.label, str(caution))
-
-
-def _slip(name: str, sentence: str) -> SlipWarning:
-    return SlipWarning(sentence, got=name, fix=f'train.elements["{name}"]')
-
-
 def findings(elements: Elements, graph: Any, lit: set[Node], wavelength: Scalar) -> Iterator[FastaxisWarning]:
     """What is possible but probably not meant."""
     yield from _dark_parts(elements, graph, lit)
-    yield from _cautions(elements, wavelength)
+    for element in elements.values():
+        yield from element.cautions(wavelength)
