@@ -1,0 +1,27 @@
+"""Engines apply the steps of a plan to light. Each knows the plan; none knows the parts or another engine."""
+
+from __future__ import annotations
+
+from importlib import import_module
+
+from fastaxis.engines.field import Guard, PlaneField
+from fastaxis.plan import Plan
+
+__all__ = ["Guard", "PlaneField", "propagate"]
+
+
+def propagate(plan: Plan) -> tuple[PlaneField, ...]:
+    """The light at the target of a plan: one field for each incoherent part of the source.
+
+    The engine's room is loaded on first use.
+
+    Warns
+    -----
+    SamplingWarning : light came near the edge of the window, or was cut off by a band limit.
+
+    Raises
+    ------
+    SamplingError : so much of it that the answer would be another beam.
+    """
+    engine = import_module(f"fastaxis.engines.{plan.engine}")
+    return tuple(engine.run(branch) for branch in plan.branches)

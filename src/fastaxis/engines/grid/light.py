@@ -1,0 +1,89 @@
+"""Sampled light: what the grid engine carries from step to step."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass, replace
+from typing import Any
+
+import numpy as np
+from numpy.typing import NDArray
+
+__all__ = ["GridLight", "axis", "curve", "multiply_separable"]
+
+
+@dataclass(frozen=True)
+class GridLight:
+    """Samples of a field whose mean phase curvature is kept apart.
+
+    The field is ``samples * exp(i k curvature r^2/2)``, times ``jones`` while it is uniformly polarized. Samples lie
+    at (i - (n - 1)/2) * pitch: symmetric about the axis, none on it, so that a reversal of x is exact.
+
+    Parameters
+    ----------
+    samples : (1, n, n) times a Jones vector, or (2, n, n) as (Ex, Ey) [sqrt(W)/m].
+    jones : (2,) of a uniformly polarized field, else None.
+    pitch : [m].
+    curvature : [1/m].
+    wavelength : [m].
+    periodic : whether a plane wave fills the window to its edge.
+    edge_power : largest share of the power met near the edge of the window.
+    discarded : share of the power removed by band limits.
+    """
+
+    samples: NDArray[np.complex128]
+    jones: NDArray[np.complex128] | None
+    pitch: float
+    curvature: float
+    wavelength: float
+    periodic: bool = False
+    edge_power: float = 0.0
+    discarded: float = 0.0
+
+    @property
+    def count(self) -> int:
+        """Samples along a side."""
+        return self.samples.shape[-1]
+
+    @property
+    def window(self) -> float:
+        """Side of the sampled square [m]."""
+        return self.count * self.pitch
+
+    @property
+    def x(self) -> NDArray[np.float64]:
+        """Places of the samples along x, and along y [m]."""
+        return axis(self.count, self.pitch)
+
+    @property
+    def power(self) -> float:
+        """Power in the window [W]."""
+        total = float(np.vdot(self.samples, self.samples).real) * self.pitch**2
+        return total if self.jones is None else total * float(np.vdot(self.jones, self.jones).real)
+
+    def components(self) -> NDArray[np.complex128]:
+        """(Ex, Ey) samples, curvature still apart."""
+        return self.samples if self.jones is None else self.jones[:, None, None] * self.samples
+
+    def referred(self, curvature: float) -> GridLight:
+        """The same field with another curvature kept apart; changes the samples in place."""
+        if curvature == self.curvature:
+            return self
+        chirp = curve(self.x, self.curvature - curvature, self.wavelength)
+        multiply_separable(self.samples, chirp)
+        return replace(self, curvature=curvature)
+
+
+def axis(count: int, pitch: float) -> NDArray[np.float64]:
+    """Half-pixel symmetric places."""
+    return (np.arange(count) - (count - 1) / 2) * pitch
+
+
+def curve(x: NDArray[np.float64], curvature: float, wavelength: float) -> NDArray[np.complex128]:
+    """exp(i k curvature x^2/2) along one axis; the plane's factor is the outer product."""
+    return np.exp(1j * np.pi * curvature / wavelength * x * x)
+
+
+def multiply_separable(samples: NDArray[np.complex128], factor: NDArray[Any]) -> None:
+    """Samples times factor(x) factor(y), in place; two passes over the samples and no plane of factors."""
+    samples *= factor[:, None]
+    samples *= factor[None, :]

@@ -1,0 +1,70 @@
+"""The uniform engine: a Jones vector, where no transverse structure is asked for."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+
+import numpy as np
+from numpy.typing import NDArray
+
+from fastaxis.engines.field import CLEAN, Guard
+from fastaxis.errors import ParameterError
+from fastaxis.light import Raster, stokes
+from fastaxis.plan import Branch, JonesStep
+
+__all__ = ["UniformField", "run"]
+
+
+@dataclass(frozen=True)
+class UniformField:
+    """Light of one polarization state all over the plane.
+
+    Parameters
+    ----------
+    wavelength : [m].
+    jones : (Ex, Ey) [sqrt(W)]; its squared length is the power.
+    area : [m^2] that a plane wave's power is counted on; None for a beam all of which is collected.
+    """
+
+    wavelength: float
+    jones: NDArray[np.complex128]
+    area: float | None = None
+    guard: Guard = CLEAN
+
+    @property
+    def power(self) -> float:
+        """Total power [W]; of a plane wave, the power on its area."""
+        return float(np.sum(abs(self.jones) ** 2))
+
+    def stokes_on(self, raster: Raster) -> NDArray[np.float64]:
+        """A plane wave puts its irradiance on every pixel; a collected beam is all in one pixel."""
+        if self.area is None and raster.shape != (1, 1):
+            raise ParameterError(
+                "where in the plane the light is was not followed: only its total power is known",
+                got=f"engine uniform: {raster.shape[0]} x {raster.shape[1]} pixels",
+                fix='engine="grid"',
+            )
+        share = 1.0 if self.area is None else raster.pitch**2 / self.area
+        return np.broadcast_to((share * stokes(self.jones))[:, None, None], (4, *raster.shape)).copy()
+
+    def at(self, x: NDArray[np.float64], y: NDArray[np.float64]) -> NDArray[np.complex128]:
+        """(Ex, Ey) [sqrt(W)/m] of a plane wave, the same everywhere."""
+        if self.area is None:
+            raise ParameterError(
+                "where in the plane the light is was not followed: only its total power is known",
+                got="engine uniform: field asked at a place",
+                fix='engine="grid"',
+            )
+        values = self.jones / np.sqrt(self.area)
+        return np.broadcast_to(values[:, None, None], (2, np.size(y), np.size(x))).copy()
+
+
+def run(branch: Branch) -> UniformField:
+    """The light of a branch whose parts are uniform; travel, flips and pure phases leave its Jones vector alone."""
+    terms, scale = branch.beam.terms, branch.beam.scale(branch.wavelength)
+    jones = sum(scale * term.number * term.state.jones for term in terms) * np.sqrt(branch.power)
+    for step in branch.steps:
+        if isinstance(step.law, JonesStep):
+            jones = np.array(step.law.matrix) @ jones
+    mode = terms[0].mode
+    return UniformField(branch.wavelength, jones, float(mode.area) if mode.infinite else None)

@@ -1,0 +1,65 @@
+"""Which engine answers, and why."""
+
+from __future__ import annotations
+
+from fastaxis.errors import ParameterError
+from fastaxis.laws import Flip, ScalarLaw, TravelLaw
+from fastaxis.light import Source
+from fastaxis.maths import Pattern
+from fastaxis.plan.steps import JonesStep, StepLaw, Steps
+
+__all__ = ["ENGINES", "choose"]
+
+ENGINES = ("uniform", "grid")
+
+
+def _keeps_power(law: StepLaw) -> bool:
+    """Whether a law changes neither power nor polarization from place to place, wherever the light goes."""
+    if isinstance(law, ScalarLaw):
+        return law.stop is None and not isinstance(law.transmission.power, Pattern)
+    return isinstance(law, JonesStep | TravelLaw | Flip)
+
+
+def _keeps_plane_wave(law: StepLaw) -> bool:
+    """Whether a plane wave along the axis stays one."""
+    if isinstance(law, TravelLaw):
+        return bool(law.a == 1 and law.c == 0)
+    return isinstance(law, JonesStep | Flip)
+
+
+def _uniform_reason(steps: Steps, source: Source, *, bucket: bool) -> str:
+    """Why no transverse structure need be followed; empty if it must."""
+    laws = [step.law for step in steps]
+    modes = [term.mode for part in source.components for term in part.beam.terms]
+    if all(mode.infinite for mode in modes):
+        return "a plane wave through uniform parts stays one" if all(map(_keeps_plane_wave, laws)) else ""
+    one_mode = all(len(part.beam.terms) == 1 for part in source.components)
+    if bucket and one_mode and all(map(_keeps_power, laws)):
+        return "all light is collected and nothing on the way depends on the place"
+    return ""
+
+
+def choose(steps: Steps, source: Source, *, bucket: bool, asked: str) -> tuple[str, str]:
+    """(engine, reason).
+
+    Parameters
+    ----------
+    bucket : whether only the total power and state at the target are asked for.
+    asked : "auto", or an engine by name.
+
+    Raises
+    ------
+    ParameterError : no such engine, or one that cannot answer this.
+    """
+    reason = _uniform_reason(steps, source, bucket=bucket)
+    if asked == "auto":
+        return ("uniform", reason) if reason else ("grid", "the light has a shape, or parts give it one")
+    if asked not in ENGINES:
+        raise ParameterError(f"the engines are {', '.join(ENGINES)}", got=f"engine = {asked!r}", fix='engine="auto"')
+    if asked == "uniform" and not reason:
+        raise ParameterError(
+            "the uniform engine follows no transverse structure, and this question has some",
+            got="engine = 'uniform'",
+            fix='engine="grid"',
+        )
+    return asked, "asked for"

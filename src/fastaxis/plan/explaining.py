@@ -1,0 +1,64 @@
+"""The words of ``print(plan)``."""
+
+from __future__ import annotations
+
+import math
+from collections.abc import Iterator
+from typing import TYPE_CHECKING
+
+from fastaxis.conventions import stamp
+from fastaxis.laws import AxisLaw, Flip, ScalarLaw, TravelLaw
+
+if TYPE_CHECKING:
+    from fastaxis.plan.plan import Branch, Plan
+    from fastaxis.plan.sampling import Plane
+    from fastaxis.plan.steps import StepLaw
+
+__all__ = ["explain"]
+
+
+def _said(law: StepLaw) -> str:
+    if isinstance(law, TravelLaw):
+        return f"ABCD ({law.a:.4g}, {law.b * 1e3:.4g} mm; {law.c:.4g}/m, {law.d:.4g}), path {law.path * 1e3:.4g} mm"
+    if isinstance(law, AxisLaw):
+        return f"axis law, q = {law.order:g}" if law.order else "patterned axis law"
+    if isinstance(law, ScalarLaw):
+        return "scalar law" + "".join(_pieces(law))
+    return f"{law.axis} reversed" if isinstance(law, Flip) else "uniform matrix"
+
+
+def _pieces(law: ScalarLaw) -> Iterator[str]:
+    if law.charge:
+        yield f", charge {law.charge:+g}"
+    if law.tilt != (0.0, 0.0):
+        yield f", tilt ({law.tilt[0] * 1e3:.4g}, {law.tilt[1] * 1e3:.4g}) mrad"
+    if law.stop is not None:
+        yield f", stop {type(law.stop).__name__}"
+
+
+def _sampled(plane: Plane) -> str:
+    text = f"window {plane.window * 1e3:.4g} mm, pitch {plane.pitch * 1e6:.4g} um"
+    if plane.hop is not None:
+        kernels = {"scaled": "scaled angular spectrum", "single": "single transform"}
+        text = f"{kernels[plane.hop.kernel]} -> {text}"
+    return text if math.isinf(plane.margin) else f"{text}, margin {plane.margin:.2g}"
+
+
+def _branch(branch: Branch) -> Iterator[str]:
+    yield f"  {branch.wavelength * 1e9:.6g} nm, {branch.power * 1e3:.6g} mW"
+    sampling = branch.sampling
+    if sampling is not None:
+        yield f"  {sampling.grid.samples} x {sampling.grid.samples} samples ({sampling.chosen})"
+        yield f"    0. source: {_sampled(sampling.planes[0])}"
+    for index, step in enumerate(branch.steps, start=1):
+        line = f"    {index}. {', '.join(step.names)}: {_said(step.law)}"
+        yield line if sampling is None else f"{line}; {_sampled(sampling.planes[index])}"
+
+
+def explain(plan: Plan) -> str:
+    """The plan as text: engine and why, what was fused, and the steps with their samples."""
+    lines = [f"plan for {plan.target}: engine {plan.engine}, because {plan.reason}"]
+    lines += [f"  {note}" for note in plan.notes]
+    for branch in plan.branches:
+        lines += _branch(branch)
+    return "\n".join([*lines, stamp()])

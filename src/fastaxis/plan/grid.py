@@ -1,0 +1,51 @@
+"""The grid a user may set by hand."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+
+from fastaxis.errors import ParameterError
+
+__all__ = ["Grid"]
+
+
+@dataclass(frozen=True)
+class Grid:
+    """Square samples at the plane of the source, in place of the automatic choice.
+
+    Parameters
+    ----------
+    samples : number along a side, even, 16 or more.
+    window : side of the sampled square [m].
+
+    Raises
+    ------
+    ParameterError : an odd or tiny number of samples; a window that is not a positive length.
+
+    Examples
+    --------
+    >>> Grid(samples=512, window=8e-3).pitch
+    1.5625e-05
+    """
+
+    samples: int
+    window: float
+
+    def __post_init__(self) -> None:
+        if self.samples != int(self.samples) or self.samples < 16 or self.samples % 2:
+            raise ParameterError(
+                "samples is an even number along a side, 16 or more",
+                got=f"Grid: samples = {self.samples}",
+                fix="fa.Grid(samples=1024, window=10*mm)",
+            )
+        if not 0 < self.window < 100:
+            raise ParameterError(
+                "window is the side of the sampled square in metres",
+                got=f"Grid: window = {self.window}",
+                fix="fa.Grid(samples=1024, window=10*mm)",
+            )
+
+    @property
+    def pitch(self) -> float:
+        """Distance of neighbouring samples [m]."""
+        return self.window / self.samples

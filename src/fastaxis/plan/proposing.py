@@ -1,0 +1,141 @@
+"""The automatic grid: the fewest samples and the window that hold the light at every plane of a train."""
+
+from __future__ import annotations
+
+import math
+import warnings
+from dataclasses import replace
+
+from fastaxis.errors import SamplingError, SamplingWarning
+from fastaxis.laws import ScalarLaw
+from fastaxis.plan.grid import Grid
+from fastaxis.plan.sampling import Sampling, follow
+from fastaxis.plan.spread import Spread, closed, reach
+from fastaxis.plan.steps import Steps
+
+__all__ = ["propose", "sampling_for"]
+
+# Lengths with small prime factors, for the transform; smooth beams start at the first, rough ones at 1024.
+LENGTHS = (256, 320, 384, 512, 640, 768, 1024, 1280, 1536, 2048, 3072, 4096)
+ROUGH_START = 1024
+# Margins are in units of a window that holds the beam to its last digit. At 0.55 of it a Gaussian field has fallen
+# to exp(-(3.3)^2) = 2e-5 at the edge; at 0.3, to 4 %: the answer would be a different beam.
+WARN, REFUSE = 0.55, 0.3
+# A rough beam's window holds three radii; one radius is where its edge itself lies.
+WARN_ROUGH, REFUSE_ROUGH = 0.45, 0.334
+
+
+def _planes(steps: Steps, spread: Spread, samples: int, window: float, wavelength: float) -> Sampling:
+    grid = Grid(samples, window)
+    return Sampling(grid, follow(steps, _bounded(steps, spread, window), grid, wavelength), _open(steps, spread))
+
+
+def _first_stop(steps: Steps) -> ScalarLaw | None:
+    return next((s.law for s in steps if isinstance(s.law, ScalarLaw) and s.law.stop is not None), None)
+
+
+def _open(steps: Steps, spread: Spread) -> bool:
+    """Whether a plane wave meets an edge that does not bound it."""
+    first = _first_stop(steps)
+    return spread.infinite and first is not None and first.stop is not None and not closed(first.stop)
+
+
+def _bounded(steps: Steps, spread: Spread, window: float) -> Spread:
+    """A plane wave that must be faded out is as wide as the faded window."""
+    if not _open(steps, spread):
+        return spread
+    return replace(spread, size=window / 6, rough=True)
+
+
+def _lengths(steps: Steps, spread: Spread) -> list[float]:
+    """Transverse lengths that occur: beam sizes, radii of stops, distances off the axis."""
+    found = [] if spread.infinite else [spread.half_window]
+    for step in steps:
+        law = step.law
+        if isinstance(law, ScalarLaw) and law.stop is not None:
+            found.append(reach(law.stop) + max(map(abs, law.centre)))
+    return [length for length in found if length > 0] or [1e-3]
+
+
+def _windows(steps: Steps, spread: Spread) -> list[float]:
+    """Windows to try, from twice the smallest length to 60 times the largest, 4 % apart."""
+    lengths = _lengths(steps, spread)
+    low, high = 2 * min(lengths), 60 * max(lengths)
+    count = math.ceil(math.log(high / low) / math.log(1.04))
+    return [low * (high / low) ** (i / count) for i in range(count + 1)]
+
+
+def _fits(sampling: Sampling, steps: Steps) -> float:
+    """The margin of a sampling; stops met must be held with three of their radii."""
+    margin = sampling.worst.margin
+    for plane, step in zip(sampling.planes[1:], steps, strict=False):
+        law = step.law
+        if isinstance(law, ScalarLaw) and law.stop is not None and plane.spread.rough:
+            needed = max(map(abs, law.centre)) + 3 * reach(law.stop)
+            margin = min(margin, plane.window / 2 / needed) if needed else margin
+    return margin
+
+
+def propose(steps: Steps, spread: Spread, wavelength: float, *, most: int = LENGTHS[-1]) -> Sampling:
+    """The fewest samples, and for them the best window, that hold the light at every plane."""
+    windows = _windows(steps, spread)
+    rough = spread.infinite or _planes(steps, spread, 256, windows[-1], wavelength).planes[-1].spread.rough
+    for samples in LENGTHS:
+        if (rough and samples < ROUGH_START) or samples > most:
+            continue
+        tried = [_planes(steps, spread, samples, window, wavelength) for window in windows]
+        margins = [_fits(sampling, steps) for sampling in tried]
+        if rough and max(margins) >= 1:
+            # Edges want fine pitch: the smallest window that holds everything.
+            return next(s for s, margin in zip(tried, margins, strict=True) if margin >= 1)
+        best = tried[margins.index(max(margins))]
+        if max(margins) >= 1:
+            return best
+    return best
+
+
+def sampling_for(steps: Steps, spread: Spread, wavelength: float, grid: Grid | None) -> Sampling:
+    """The sampling to use: as set by hand, or the automatic one; checked either way.
+
+    Raises
+    ------
+    SamplingError : the grid cannot carry the light; the message names one that can.
+
+    Warns
+    -----
+    SamplingWarning : the grid is tight; errors of about 1e-4 of the peak may show.
+    """
+    if grid is None:
+        sampling = propose(steps, spread, wavelength)
+    else:
+        sampling = replace(_planes(steps, spread, grid.samples, grid.window, wavelength), chosen="by hand")
+    worst = sampling.worst
+    rough = worst.spread.rough
+    if worst.margin >= (WARN_ROUGH if rough else WARN):
+        return sampling
+    message = _message(sampling, steps, spread, wavelength)
+    if worst.margin < (REFUSE_ROUGH if rough else REFUSE):
+        raise SamplingError(**message)
+    warnings.warn(SamplingWarning(**message), stacklevel=2)
+    return sampling
+
+
+def _message(sampling: Sampling, steps: Steps, spread: Spread, wavelength: float) -> dict[str, str]:
+    worst = sampling.worst
+    index = sampling.planes.index(worst)
+    where = "at the source" if index == 0 else f"after {', '.join(steps[index - 1].names)}"
+    if worst.window == 0:
+        return {
+            "rule": "a plane wave has no finite focus; a stop gives it one",
+            "got": f"plane wave {where}",
+            "fix": 'fa.Aperture(radius=2*mm, name="stop")',
+        }
+    if worst.room <= worst.band or worst.spread.rough:
+        got = f"window {worst.window * 1e3:.3g} mm {where}"
+        rule = f"the light there needs {2e3 * worst.spread.half_window:.3g} mm"
+    else:
+        needed = 1 / (2 * worst.spread.half_band(wavelength))
+        got, rule = f"pitch {worst.pitch * 1e6:.3g} um {where}", f"the light there needs {needed * 1e6:.3g} um"
+    better = propose(steps, spread, wavelength).grid
+    fix = f"grid=fa.Grid(samples={better.samples}, window={better.window:.4g})"
+    return {"rule": rule, "got": got, "fix": fix}

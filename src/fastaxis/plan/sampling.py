@@ -1,0 +1,136 @@
+"""Samples for the grid engine: how many, how wide, and which transform at each travel."""
+
+from __future__ import annotations
+
+import math
+from collections.abc import Iterator
+from dataclasses import dataclass
+
+from fastaxis.laws import TravelLaw
+from fastaxis.plan.grid import Grid
+from fastaxis.plan.spread import Spread
+from fastaxis.plan.steps import Steps
+
+__all__ = ["Hop", "Plane", "Sampling", "follow"]
+
+
+@dataclass(frozen=True)
+class Hop:
+    """How one ABCD section is computed.
+
+    Parameters
+    ----------
+    kernel : "scaled" (angular spectrum, then magnified) or "single" (one transform of the chirped field).
+    curvature : reference curvature [1/m] the samples are referred to before the hop.
+    """
+
+    kernel: str
+    curvature: float
+
+
+@dataclass(frozen=True)
+class Plane:
+    """The samples and the beam after a step (the first one: at the source).
+
+    Parameters
+    ----------
+    samples, window : number along a side and side [m].
+    spread : second moments of the beam.
+    room : half window over the half window the beam needs; 1 or more is enough.
+    band : highest frequency of the samples over the highest of the beam; 1 or more is enough.
+    hop : how the light came here, if it travelled.
+    """
+
+    samples: int
+    window: float
+    spread: Spread
+    room: float
+    band: float
+    hop: Hop | None = None
+
+    @property
+    def pitch(self) -> float:
+        """Distance of neighbouring samples [m]."""
+        return self.window / self.samples
+
+    @property
+    def margin(self) -> float:
+        """The smaller of room and band; for light with slow tails only room can be asked for."""
+        return self.room if self.spread.rough else min(self.room, self.band)
+
+
+def _plane(samples: int, window: float, spread: Spread, wavelength: float, hop: Hop | None = None) -> Plane:
+    needed, steepest = spread.half_window, spread.half_band(wavelength)
+    room = window / 2 / needed if needed else math.inf
+    band = samples / (2 * window) / steepest if steepest and window else math.inf
+    return Plane(samples, window, spread, room, band, hop)
+
+
+@dataclass(frozen=True)
+class Sampling:
+    """The samples at the source and at every step.
+
+    Parameters
+    ----------
+    grid : at the source.
+    planes : after each step; ``planes[0]`` is the source itself.
+    taper : whether a plane wave fades out smoothly at the window's edge, where an open stop does not bound it.
+    chosen : "automatic" or "by hand".
+    """
+
+    grid: Grid
+    planes: tuple[Plane, ...]
+    taper: bool = False
+    chosen: str = "automatic"
+
+    @property
+    def worst(self) -> Plane:
+        """The plane with the least margin."""
+        return min(self.planes, key=lambda plane: plane.margin)
+
+    def hop(self, index: int) -> Hop | None:
+        """How step ``index`` travels."""
+        return self.planes[index + 1].hop
+
+
+def _hops(here: Plane, travel: TravelLaw, wavelength: float) -> Iterator[Plane]:
+    """The plane after a travel, by each kernel that can be used.
+
+    Scaled: the window is magnified by A' = A + B curvature. Single: its side becomes wavelength |B| / pitch.
+    """
+    spread = here.spread
+    near = travel.a + travel.b * spread.curvature
+    after = spread.through(travel)
+    if near != 0:
+        hop = Hop("scaled", spread.curvature)
+        yield _plane(here.samples, abs(near) * here.window, after, wavelength, hop)
+    if travel.b != 0 and not spread.infinite:
+        hop = Hop("single", spread.curvature)
+        yield _plane(here.samples, wavelength * abs(travel.b) / here.pitch, after, wavelength, hop)
+
+
+def _best(planes: list[Plane]) -> Plane:
+    """The better kernel: the larger margin, and for light with slow tails the larger window.
+
+    The larger window is the critical sampling rule (D. G. Voelz and M. C. Roggemann, Appl. Opt. 48, 6132 (2009)):
+    up to pitch = wavelength B / window the transfer function is sampled well enough, beyond it the chirp is.
+    """
+    if planes[0].spread.rough:
+        return max(planes, key=lambda plane: plane.window)
+    return max(planes, key=lambda plane: plane.margin)
+
+
+def follow(steps: Steps, spread: Spread, grid: Grid, wavelength: float) -> tuple[Plane, ...]:
+    """The planes a grid at the source leads to, one for the source and one after each step."""
+    planes = [_plane(grid.samples, grid.window, spread, wavelength)]
+    for step in steps:
+        here = planes[-1]
+        if isinstance(step.law, TravelLaw):
+            ahead = list(_hops(here, step.law, wavelength))
+            if not ahead:  # a plane wave at its own focus: no grid holds a point
+                planes.append(Plane(here.samples, 0.0, here.spread, 0.0, 0.0))
+                break
+            planes.append(_best(ahead))
+        else:
+            planes.append(_plane(here.samples, here.window, here.spread.past(step.law, wavelength), wavelength))
+    return tuple(planes)

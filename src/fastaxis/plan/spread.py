@@ -1,0 +1,163 @@
+"""How wide a beam is and how fast it spreads, followed through the steps by second moments."""
+
+from __future__ import annotations
+
+import math
+from dataclasses import dataclass, replace
+
+from fastaxis.laws import Annulus, AxisLaw, Disc, Flip, Rectangle, ScalarLaw, Stop, Strip, TravelLaw
+from fastaxis.light import Beam
+from fastaxis.maths import Pattern
+from fastaxis.plan.steps import JonesStep, StepLaw
+
+__all__ = ["Spread", "closed", "of_beam", "reach"]
+
+SMOOTH_RADII = 6.0  # exp(-6^2) = 2e-16: a Gaussian field has fallen below its own rounding
+ROUGH_RADII = 3.0  # for edges, whose light falls off by a power law and not beyond some radius
+
+
+@dataclass(frozen=True)
+class Spread:
+    """Second moments of a beam on its worse axis, in the terms a sampled field needs.
+
+    Parameters
+    ----------
+    size : rms half-width [m]; w/2 for a Gaussian. Infinite for a plane wave that met no stop.
+    curvature : 1/R [1/m] of the mean phase front, cov(x, angle)/var(x).
+    angle : rms angle [rad] left when that curvature is taken out; M^2 wavelength/(4 pi size).
+    offset, slope : where the beam's middle is (x, y) [m] and where it heads [rad].
+    rough : whether an edge, a mask or a singularity has left tails that fall off slowly.
+    """
+
+    size: float
+    curvature: float
+    angle: float
+    offset: tuple[float, float] = (0.0, 0.0)
+    slope: tuple[float, float] = (0.0, 0.0)
+    rough: bool = False
+
+    @property
+    def infinite(self) -> bool:
+        return math.isinf(self.size)
+
+    @property
+    def radii(self) -> float:
+        """How many beam radii (2 rms) a window half must hold."""
+        return ROUGH_RADII if self.rough else SMOOTH_RADII
+
+    @property
+    def half_window(self) -> float:
+        """Half side of the window that holds the beam [m]; 0 where a plane wave asks for none."""
+        return 0.0 if self.infinite else max(map(abs, self.offset)) + self.radii * 2 * self.size
+
+    def half_band(self, wavelength: float) -> float:
+        """Highest spatial frequency [1/m] with the mean curvature taken out."""
+        leaning = max(abs(t - self.curvature * x) for x, t in zip(self.offset, self.slope, strict=True))
+        return (leaning + self.radii * 2 * self.angle) / wavelength
+
+    def through(self, travel: TravelLaw) -> Spread:
+        """After an ABCD section."""
+        a, b, c, d = travel.a, travel.b, travel.c, travel.d
+        near, far = a + b * self.curvature, c + d * self.curvature
+        offset = tuple(a * x + b * t for x, t in zip(self.offset, self.slope, strict=True))
+        slope = tuple(c * x + d * t for x, t in zip(self.offset, self.slope, strict=True))
+        if self.infinite:
+            return replace(self, curvature=far / near if near else 0.0, offset=offset, slope=slope)
+        x2 = (near * self.size) ** 2 + (b * self.angle) ** 2
+        xt = near * far * self.size**2 + b * d * self.angle**2
+        size = math.sqrt(x2)
+        return replace(
+            self, size=size, curvature=xt / x2, angle=self.size * self.angle / size, offset=offset, slope=slope
+        )
+
+    def past(self, law: StepLaw, wavelength: float) -> Spread:
+        """After any law."""
+        if isinstance(law, TravelLaw):
+            return self.through(law)
+        if isinstance(law, Flip):
+            sign = (-1, 1) if law.axis == "x" else (1, -1)
+            return replace(
+                self,
+                offset=tuple(s * x for s, x in zip(sign, self.offset, strict=True)),
+                slope=tuple(s * t for s, t in zip(sign, self.slope, strict=True)),
+            )
+        if isinstance(law, AxisLaw):
+            spread = self if law.order == 0 else self.twisted(2 * law.order, wavelength)
+            return spread if law.uniform or law.order != 0 else replace(spread, rough=True)
+        if isinstance(law, ScalarLaw):
+            return self._past_scalar(law, wavelength)
+        return self
+
+    def _past_scalar(self, law: ScalarLaw, wavelength: float) -> Spread:
+        spread = self if law.charge == 0 else self.twisted(law.charge, wavelength)
+        if any(isinstance(v, Pattern) for v in law.transmission.values):
+            spread = replace(spread, rough=True)
+        slope = tuple(s + t for s, t in zip(spread.slope, law.tilt, strict=True))
+        spread = replace(spread, slope=slope)
+        return spread if law.stop is None else spread.clipped(law.stop, law.centre, wavelength)
+
+    def twisted(self, charge: float, wavelength: float) -> Spread:
+        """After a phase of this many turns about the axis, which leaves tails of the far field.
+
+        Its mean square angle (charge wavelength/2 pi)^2 <1/r^2>/2 grows with the logarithm of the finest step kept;
+        the value with <1/r^2> = 4/(2 size)^2, a ring of half the beam radius, is used.
+        """
+        if self.infinite:
+            return replace(self, rough=True)
+        added = abs(charge) * wavelength / (2 * math.pi * math.sqrt(2) * self.size)
+        return replace(self, angle=math.hypot(self.angle, added), rough=True)
+
+    def clipped(self, stop: Stop, centre: tuple[float, float], wavelength: float) -> Spread:
+        """After a stop; unchanged if the beam is well inside it."""
+        radius, (cx, cy) = reach(stop), centre
+        if not closed(stop):
+            return replace(self, rough=True)
+        apart = max(abs(self.offset[0] - cx), abs(self.offset[1] - cy))
+        if not self.infinite and self.radii * 2 * self.size + apart < radius:
+            return self
+        size = min(self.size, radius / 2)
+        offset = (cx, cy) if self.infinite or radius < self.size else self.offset
+        return Spread(
+            size, self.curvature, max(self.angle, wavelength / (2 * math.pi * size)), offset, self.slope, True
+        )
+
+
+def reach(stop: Stop) -> float:
+    """Radius [m] of the circle that holds the edges of a stop; 0 for a straight edge."""
+    if isinstance(stop, Disc):
+        return stop.radius
+    if isinstance(stop, Annulus):
+        return stop.outer
+    if isinstance(stop, Rectangle):
+        return max(stop.width, stop.height) / 2
+    return stop.width / 2 if isinstance(stop, Strip) else 0.0
+
+
+def closed(stop: Stop) -> bool:
+    """Whether the clear area is bounded on all sides."""
+    return isinstance(stop, Annulus | Rectangle) or (isinstance(stop, Disc) and not stop.opaque)
+
+
+def of_beam(beam: Beam, wavelength: float) -> Spread:
+    """The spread of the light at the source: the widest and steepest of its modes."""
+    spreads = [_of_mode(term.mode, wavelength) for term in beam.terms]
+    widest = max(spreads, key=lambda spread: spread.size)
+    # Modes of one beam may be focused differently: what the widest one's curvature leaves of the others counts as angle.
+    angle = max(math.hypot(s.angle, (s.curvature - widest.curvature) * s.size) if s.size < math.inf else 0.0
+                for s in spreads)  # fmt: skip
+    far = max(spreads, key=lambda spread: max(map(abs, spread.offset)))
+    return replace(widest, angle=angle, offset=far.offset, rough=any(s.rough for s in spreads))
+
+
+def _of_mode(mode: object, wavelength: float) -> Spread:
+    if mode.infinite:  # type: ignore[attr-defined]
+        return Spread(math.inf, 0.0, 0.0)
+    moments = mode.moments(wavelength)  # type: ignore[attr-defined]
+    size, curvature = math.sqrt(moments.x2), mode.curvature(wavelength)  # type: ignore[attr-defined]
+    centre = tuple(map(float, getattr(mode, "centre", (0.0, 0.0))))
+    least = wavelength / (2 * math.pi * size)
+    if math.isinf(moments.t2):
+        return Spread(size, curvature, least, centre, rough=True)
+    # Never below the diffraction limit, which rounding of a difference of large moments could reach.
+    angle = math.sqrt(max(moments.t2 - (moments.xt / size) ** 2, (least / 2) ** 2))
+    return Spread(size, curvature, angle, centre, rough=mode.hard)  # type: ignore[attr-defined]
