@@ -1,0 +1,108 @@
+"""What stands under a part in a drawing: its setting in lab units, a few words."""
+
+from __future__ import annotations
+
+import math
+from collections.abc import Callable
+from fractions import Fraction
+from typing import Any
+
+from fastaxis.maths import Pattern, is_symbolic
+from fastaxis.report.prefix import readable
+
+__all__ = ["detail", "in_degrees", "in_lab_units"]
+
+
+def in_degrees(angle: Any) -> str:
+    """An angle as it is set on a mount; letters stay letters.
+
+    >>> import math
+    >>> in_degrees(math.pi / 8)
+    '22.5°'
+    """
+    if isinstance(angle, Pattern):
+        return "patterned"
+    return str(angle) if is_symbolic(angle) else f"{math.degrees(angle):.4g}°"
+
+
+def in_lab_units(length: Any) -> str:
+    """A length in m, mm, µm or nm without trailing zeros.
+
+    >>> in_lab_units(0.5), in_lab_units(3.45e-6)
+    ('500 mm', '3.45 µm')
+    """
+    if is_symbolic(length):
+        return str(length)
+    shown = readable(length, "m", digits=4)
+    number, unit = shown.split(" ")
+    return f"{float(number):g} {unit}"
+
+
+def _plain(value: Any) -> str:
+    return str(value) if is_symbolic(value) else str(Fraction(value).limit_denominator(100))
+
+
+def _share(value: Any) -> str:
+    return "patterned" if isinstance(value, Pattern) else str(value) if is_symbolic(value) else f"{value:.3g}"
+
+
+WORDS: dict[str, tuple[str, Callable[[Any], str]]] = {
+    "fast": ("fast", in_degrees),
+    "slow": ("slow", in_degrees),
+    "axis": ("axis", in_degrees),
+    "q": ("q", _plain),
+    "offset": ("offset", in_degrees),
+    "focal": ("f", in_lab_units),
+    "distance": ("", in_lab_units),
+    "charge": ("charge", _plain),
+    "radius": ("radius", in_lab_units),
+    "inner": ("inner", in_lab_units),
+    "outer": ("outer", in_lab_units),
+    "width": ("width", in_lab_units),
+    "height": ("height", in_lab_units),
+    "angle": ("turn", in_degrees),
+    "phase": ("phase", in_degrees),
+    "reflectance": ("R", _share),
+    "Tp": ("Tp", _share),
+    "Rs": ("Rs", _share),
+    "density": ("density", _share),
+    "pixel": ("pixel", in_lab_units),
+    "retardance": ("δ", in_degrees),
+    "power": ("", lambda power: str(power) if is_symbolic(power) else readable(power, "W")),
+    "waist": ("w", in_lab_units),
+    "state": ("", lambda state: str(getattr(state, "label", ""))),
+    "centre": ("at", lambda place: ", ".join(in_lab_units(x) for x in place)),
+}
+NOT_SHOWN = {  # what goes without saying: an ordinary half- or quarter-wave plate, a part on the axis
+    ("HalfWavePlate", "retardance"): math.pi,
+    ("QuarterWavePlate", "retardance"): math.pi / 2,
+    ("QPlate", "retardance"): math.pi,
+    ("Mirror", "Rs"): 1.0,
+    ("PolarizingBeamSplitter", "Rs"): 1.0,
+    ("PolarizingBeamSplitter", "Tp"): 1.0,
+}
+
+
+def detail(element: Any, *, most: int = 3) -> str:
+    """The main settings of a part, one a line.
+
+    >>> from fastaxis.elements.retarder import HalfWavePlate, Retarder
+    >>> detail(HalfWavePlate(fast=0.5)), detail(Retarder(slow=0, retardance=1.5))
+    ('fast 28.65°', 'slow 0°\\nδ 85.94°')
+    """
+    lines = []
+    for parameter, (word, shown) in WORDS.items():
+        value = getattr(element, parameter, None) if parameter in element.parameters() else None
+        if value is None or _goes_without_saying(element, parameter, value):
+            continue
+        lines.append(f"{word} {shown(value)}".strip())
+    return "\n".join([line for line in lines if line][:most])
+
+
+def _goes_without_saying(element: Any, parameter: str, value: Any) -> bool:
+    if parameter == "centre":
+        return not any(is_symbolic(x) or x != 0 for x in value)
+    if isinstance(value, Pattern) or is_symbolic(value):
+        return False
+    usual = NOT_SHOWN.get((type(element).__name__, parameter))
+    return usual is not None and math.isclose(value, usual)
