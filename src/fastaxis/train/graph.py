@@ -8,7 +8,7 @@ from typing import Any, TypeAlias
 from fastaxis.maths import Scalar
 from fastaxis.train.ports import Elements, Way, in_faces, out_faces, split
 
-__all__ = ["Joints", "Node", "build", "first_loop", "is_source", "lit_nodes", "port_of"]
+__all__ = ["Joints", "Node", "build", "first_loop", "is_source", "lit_nodes", "port_of", "source_nodes"]
 
 Joints: TypeAlias = tuple[tuple[str, str], ...]
 Node: TypeAlias = tuple[str, str, Way]
@@ -45,6 +45,11 @@ def build(elements: Elements, joints: Joints, wavelength: Scalar) -> Any:
     for out_port, in_port in joints:
         graph.add_edge((*split(out_port), "out"), (*split(in_port), "in"), kind="join")
     return nx.freeze(graph)
+
+
+def source_nodes(elements: Elements) -> list[Node]:
+    """The port states at which light begins."""
+    return [(name, element.exit or "out", "out") for name, element in elements.items() if is_source(element)]
 
 
 def lit_nodes(graph: Any, sources: Iterable[Node]) -> set[Node]:

@@ -5,9 +5,9 @@ from __future__ import annotations
 from fastaxis.elements.base import Element
 from fastaxis.errors import WiringError
 from fastaxis.maths import Scalar
-from fastaxis.train.graph import Joints
+from fastaxis.train.graph import Joints, build, lit_nodes, port_of, source_nodes
 from fastaxis.train.ports import Elements, in_faces, out_faces, read_port, split
-from fastaxis.train.suggest import join_code
+from fastaxis.train.suggest import join_code, nearest, open_out
 
 __all__ = ["checked_joint"]
 
@@ -27,14 +27,13 @@ def _other_in_port(elements: Elements, joints: Joints, wavelength: Scalar, besid
 
 
 def _other_out_port(elements: Elements, joints: Joints, wavelength: Scalar, besides: str) -> str | None:
-    """A free out-port of another part, the last declared first; a part's default exit before its other faces."""
-    taken = {out for out, _ in joints}
-    for name in reversed(list(elements)):
-        faces = out_faces(elements[name], wavelength)
-        for face in sorted(faces, key=lambda f: (f != elements[name].exit, f == elements[name].entry)):
-            if name != besides and f"{name}.{face}" not in taken:
-                return f"{name}.{face}"
-    return None
+    """The free out-port nearest to a part, one with light before one without."""
+    graph = build(elements, joints, wavelength)
+    free = open_out(graph, set(graph))
+    exits = [node for node in free if elements[node[0]].exit == node[1]]
+    lit = open_out(graph, lit_nodes(graph, source_nodes(elements)))
+    found = nearest(elements, lit, besides) or nearest(elements, exits or free, besides)
+    return port_of(found) if found else None
 
 
 def _directed(
@@ -54,7 +53,7 @@ def _directed(
     else:
         likely = _other_out_port(elements, joints, wavelength, into_name)
         port, verb, fix = f"{out_name}.{out_face}", "leave", join_code(likely or "laser.out", f"{into_name}.{in_face}")
-    swapped = _swapped(elements, wavelength, out, into)
+    swapped = _swapped(elements, joints, wavelength, out, into)
     raise WiringError(
         f"light cannot {verb} there; join(out_port, in_port) names the port it leaves first",
         got=f"{port.rstrip('.')} ({type(elements[split(port)[0]]).__name__})",
@@ -62,13 +61,16 @@ def _directed(
     )
 
 
-def _swapped(elements: Elements, wavelength: Scalar, out: tuple[str, str], into: tuple[str, str]) -> str | None:
-    """The joint taken the other way round, where light can go that way."""
+def _swapped(
+    elements: Elements, joints: Joints, wavelength: Scalar, out: tuple[str, str], into: tuple[str, str]
+) -> str | None:
+    """The joint taken the other way round, where light can go that way and both ports are free."""
     first, last = elements[into[0]], elements[out[0]]
     out_face, in_face = into[1] or _default(first, "out"), out[1] or _default(last, "in")
-    if out_face in out_faces(first, wavelength) and in_face in in_faces(last, wavelength):
-        return join_code(f"{into[0]}.{out_face}", f"{out[0]}.{in_face}")
-    return None
+    out_port, in_port = f"{into[0]}.{out_face}", f"{out[0]}.{in_face}"
+    taken = any(out_port == left or in_port == entered for left, entered in joints)
+    possible = out_face in out_faces(first, wavelength) and in_face in in_faces(last, wavelength)
+    return join_code(out_port, in_port) if possible and not taken else None
 
 
 def checked_joint(

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import re
 from collections.abc import Mapping
 from dataclasses import fields, is_dataclass, replace
 from typing import Any
@@ -58,7 +59,7 @@ def substituted(value: Any, values: Mapping[Any, Any]) -> Any:
     if isinstance(value, tuple | list):
         return type(value)(substituted(item, values) for item in value)
     new = {f.name: substituted(getattr(value, f.name), values) for f in fields(value) if f.init}
-    if any(str(letter) in str(new.get("label", "")) for letter in values):
+    if {str(letter) for letter in values} & set(re.findall(r"\w+", str(new.get("label", "")))):
         new["label"] = ""  # linear(alpha) is labelled by its letter, which is gone
     return replace(value, **new)
 

@@ -5,7 +5,7 @@ from __future__ import annotations
 from collections.abc import Iterator
 from typing import TYPE_CHECKING, Any
 
-from fastaxis.train.graph import Node, port_of
+from fastaxis.train.graph import Node, port_of, source_nodes
 from fastaxis.train.lab_values import lab_length, lab_parameters
 
 if TYPE_CHECKING:
@@ -52,13 +52,14 @@ def listing(train: Train) -> str:
     count = len(train.elements)
     lines = [f"{train.name}: {lab_length(train.wavelength)}, {count} part{'s' if count != 1 else ''}"]
     graph, seen = train.graph, set[Node]()
-    waiting: list[Node] = [(name, train.elements[name].exit or "out", "out") for name in train.sources]
+    waiting = source_nodes(train.elements)
     while waiting:
         start = waiting.pop(0)
         if start in seen:
             continue
         rows, branches = _rows(train, graph, start, seen)
-        lines += [f"from {port_of(start)}", *_table(rows)]
+        if len(rows) > 1 or start[0] in train.sources:  # a bare splitter port is listed among the open ports
+            lines += [f"from {port_of(start)}", *_table(rows)]
         waiting = branches + waiting
     told = {node[0] for node in seen}
     dark = [_row(train, name, "") for name in train.elements if name not in told]

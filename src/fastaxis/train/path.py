@@ -11,7 +11,7 @@ from fastaxis.maths import Scalar
 from fastaxis.train.graph import Joints
 from fastaxis.train.joining import checked_joint
 from fastaxis.train.naming import with_name
-from fastaxis.train.ports import Elements, in_faces, out_faces, read_port
+from fastaxis.train.ports import Elements, read_port
 
 __all__ = ["joined_along"]
 
@@ -30,13 +30,14 @@ def joined_along(
             parts[named.name] = named
             stops.append(named.name)
     for index, (here, there) in enumerate(pairwise(stops)):
-        out_port = here if index == 0 else _way_out(parts, wavelength, here, stops[:index], stops[index + 1 :])
+        out_port = here if index == 0 else _way_out(parts, joints, wavelength, stops, index)
         joints = (*joints, checked_joint(parts, joints, wavelength, out_port, there))
     return parts, joints
 
 
-def _way_out(elements: Elements, wavelength: Scalar, port: str, before: list[str], after: list[str]) -> str:
+def _way_out(elements: Elements, joints: Joints, wavelength: Scalar, stops: list[str], index: int) -> str:
     """The port by which light leaves a part it entered in the middle of a path."""
+    before, port, after = stops[:index], stops[index], stops[index + 1 :]
     name, face = read_port(elements, port)
     element = elements[name]
     if not face or face == element.entry:
@@ -44,12 +45,13 @@ def _way_out(elements: Elements, wavelength: Scalar, port: str, before: list[str
     ways = [out for into, out in element.passages(wavelength) if into == face]
     if len(ways) == 1:
         return f"{name}.{ways[0]}"
+    fed = {in_port for _, in_port in joints}
+    by_default = element.entry and f"{name}.{element.entry}" not in fed
+    two = f"train.along({_quoted(*before, name)}); train.along({_quoted(port, *after)})"
     raise WiringError(
         "inside a path a part is entered and left by its default faces; a path by another port ends or starts there",
         got=f"{port}: {len(ways)} ways on from this face",
-        fix=f"train.along({_quoted(*before, name)}); train.along({_quoted(port, *after)})"
-        if face in out_faces(element, wavelength) and element.entry in in_faces(element, wavelength)
-        else f"train.along({_quoted(*before, port)})",
+        fix=two if by_default else f"train.along({_quoted(*before, port)})",
     )
 
 

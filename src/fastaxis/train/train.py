@@ -16,7 +16,7 @@ from fastaxis.maths import Scalar
 from fastaxis.train import validate as checks
 from fastaxis.train.changes import changed_elements
 from fastaxis.train.collected import state_of
-from fastaxis.train.graph import Joints, Node, build, is_source, lit_nodes, port_of
+from fastaxis.train.graph import Joints, Node, build, is_source, lit_nodes, port_of, source_nodes
 from fastaxis.train.joining import checked_joint
 from fastaxis.train.letters import as_symbols, letters, substituted, substituted_element
 from fastaxis.train.listing import listing
@@ -209,7 +209,7 @@ class Train:
         return [name for name, element in self.elements.items() if isinstance(element, Camera)]
 
     def _lit(self) -> set[Node]:
-        return lit_nodes(self.graph, [(n, self.elements[n].exit or "out", "out") for n in self.sources])
+        return lit_nodes(self.graph, source_nodes(self.elements))
 
     @property
     def lit(self) -> list[str]:
