@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from dataclasses import dataclass
-from math import pi
+from math import cos, pi
 from typing import ClassVar
 
 from fastaxis import checks
@@ -75,10 +75,7 @@ class QPlate(ThroughElement):
 
     def unconverted(self, wavelength: float) -> float:
         """Share of the transmitted power that keeps its hand and its charge, cos^2(d/2); numbers only."""
-        along, across = (
-            amplitude.number() for amplitude in (self.laws(wavelength)[0].along, self.laws(wavelength)[0].across)
-        )
-        return abs(along + across) ** 2 / (2 * (abs(along) ** 2 + abs(across) ** 2))
+        return cos(self.retardance_at(wavelength) / 2) ** 2
 
     def laws(self, wavelength: Scalar) -> tuple[AxisLaw, ...]:
         half = self.retardance_at(wavelength) / 2
