@@ -21,19 +21,28 @@ SETTLED = 1e-12  # of unit power: some hundred roundings of the sum
 def over_disc(pair: tuple[Mode, Mode], wavelength: float, *, centre: tuple[Any, Any], radius: float) -> complex:
     """<one|other> over a disc: Gauss-Legendre along the radius, equal steps around, doubled until it settles.
 
-    Both rules converge geometrically for amplitudes that are smooth inside the disc.
+    Both rules converge geometrically for amplitudes that are smooth inside the disc. The first rule already sees
+    the finest detail, or two blind sums would agree on nothing.
     """
     last = complex(math.inf)
-    for count in NODES:
+    # A hard edge is the border of the disc and has no detail inside.
+    least = 4 * radius / min(_finest(mode, wavelength) for mode in pair if not mode.hard)
+    for count in (nodes for nodes in NODES if nodes >= least):
         this = _polar_sum(pair, wavelength, count, centre=centre, radius=radius)
         if abs(this - last) < SETTLED:
             return this
         last = this
     raise SamplingError(
-        f"the overlap of two modes must settle within {NODES[-1]} nodes: their phases differ by too many fringes",
-        got=f"{type(pair[0]).__name__} beside {type(pair[1]).__name__}: off by {abs(this - last) or SETTLED:.1e} still",
-        fix="waist_at=0*mm",
+        f"the overlap of two modes must settle within {NODES[-1]} nodes: one is too fine, or has too many fringes, for "
+        "the other; light without a fixed phase needs no overlap",
+        got=" beside ".join(type(mode).__name__ for mode in pair),
+        fix="make_source(((0.5, FlatTop(radius=1*mm)), (0.5, Gaussian(waist=0.8*mm))), H, power=5*mW)",
     )
+
+
+def _finest(mode: Mode, wavelength: float) -> float:
+    """Finest detail [m] of an amplitude: wavelength over 2 pi times its spread of angles."""
+    return wavelength / (2 * math.pi * math.sqrt(mode.moments(wavelength).t2))
 
 
 def _polar_sum(

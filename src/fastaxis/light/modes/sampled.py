@@ -4,16 +4,18 @@ from __future__ import annotations
 
 from dataclasses import dataclass
 from functools import cached_property
-from typing import Any, ClassVar
+from typing import TYPE_CHECKING, Any, ClassVar
 
 import numpy as np
 from numpy.typing import ArrayLike
-from scipy.interpolate import RectBivariateSpline
 
 from fastaxis import checks
 from fastaxis.errors import ParameterError
 from fastaxis.light.modes.base import Complexes, Mode, Moments
 from fastaxis.light.raster import Raster
+
+if TYPE_CHECKING:
+    from scipy.interpolate import RectBivariateSpline
 
 __all__ = ["SampledMode"]
 
@@ -50,7 +52,7 @@ class SampledMode:
     symbols: ClassVar[frozenset[Any]] = frozenset()
 
     def __post_init__(self) -> None:
-        fix = "array=numpy.exp(-(x**2 + y**2)/(1*mm)**2)"
+        fix = "array=numpy.ones((8, 8))"
         try:
             array = np.array(self.array, dtype=complex)
         except (TypeError, ValueError):
@@ -85,6 +87,9 @@ class SampledMode:
 
     @cached_property
     def _splines(self) -> tuple[RectBivariateSpline, RectBivariateSpline]:
+        # It takes a quarter of a second to load, and no other mode needs it.
+        from scipy.interpolate import RectBivariateSpline  # noqa: PLC0415
+
         rows, columns = self.raster.y, self.raster.x
         return (
             RectBivariateSpline(rows, columns, self.array.real),
@@ -94,7 +99,9 @@ class SampledMode:
     def radial(self, r: ArrayLike, wavelength: float) -> Complexes:
         """Refused: samples have no charge of their own."""
         raise ParameterError(
-            "a sampled mode has no radial form: ask for its amplitude", got="SampledMode: radial", fix="amplitude(x, y)"
+            "a sampled mode has no radial form: ask for its amplitude",
+            got="SampledMode: radial",
+            fix="mode.amplitude(0.1*mm, 0*mm, 532*nm)",
         )
 
     def curvature(self, wavelength: float) -> float:
