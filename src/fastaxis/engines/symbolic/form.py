@@ -1,0 +1,228 @@
+"""The light at a port as a formula."""
+
+from __future__ import annotations
+
+from collections.abc import Sequence
+from dataclasses import dataclass
+from functools import cached_property
+from typing import Any
+
+import sympy as sp
+
+from fastaxis.engines.symbolic.analyzers import behind
+from fastaxis.engines.symbolic.expressions import middle, split_key, written
+from fastaxis.engines.symbolic.field import Field, Pair
+from fastaxis.engines.symbolic.presentations import compact, exponential, harmonics, series
+from fastaxis.engines.symbolic.ring import Poly
+from fastaxis.engines.symbolic.showing import Shown
+from fastaxis.errors import SymbolError
+from fastaxis.light import Beam
+
+__all__ = ["Form", "Part"]
+
+
+@dataclass(frozen=True)
+class Part:
+    """One incoherent part of the light: its share of the power, its beam, and the field it arrives as."""
+
+    weight: Any
+    beam: Beam
+    field: Field
+
+
+@dataclass(frozen=True, eq=False)
+class Form(Shown):
+    """The light at a port, exact, as Jones vector, Stokes parameters and frames.
+
+    All quantities are relative to ``envelope``: where the light is one mode, its function of r is kept apart, the
+    field is envelope * jones [sqrt(W)/m] and a frame in W/m^2 is |envelope|^2 * frame. Where modes differ between
+    polarizations the envelope is sqrt(power) and the modes are in the Jones vector.
+
+    Parameters
+    ----------
+    train, target : what was asked.
+    parts : mutually incoherent parts.
+    source_power : of the laser [W].
+    letters : the user's letters.
+    """
+
+    train: Any
+    target: str
+    parts: tuple[Part, ...]
+    source_power: Any
+    letters: frozenset[Any]
+
+    # --- the exact data ---------------------------------------------------------------------------------------------
+    @cached_property
+    def _factored(self) -> bool:
+        """Whether all the light has one and the same function of the plane."""
+        return len({tuple(wave for wave, _ in part.field.pieces) for part in self.parts}) == 1 and all(
+            len(part.field.pieces) == 1 for part in self.parts
+        )
+
+    @cached_property
+    def pairs(self) -> tuple[tuple[Poly, Pair], ...]:
+        """((weight, (E_L, E_R)), ...) in the ring, relative to the envelope; powers add."""
+        maths = self.parts[0].field.place.maths
+        found = []
+        for part in self.parts:
+            pair = part.field.pieces[0][1] if self._factored else part.field.whole
+            weight = maths.number(part.weight) * maths.ring.rational(part.field.scale)
+            found.append((weight, pair))
+        return tuple(found)
+
+    @property
+    def envelope(self) -> Any:
+        """The common factor of the field [sqrt(W)/m]; long quantities in it are named in ``meanings``."""
+        root = sp.sqrt(_plain(self.source_power))
+        if not self._factored:
+            return root
+        wave, _ = self.parts[0].field.pieces[0]
+        return root * written(wave.poly(self.parts[0].field.place))
+
+    @property
+    def meanings(self) -> dict[Any, Any]:
+        """What the names in the form stand for (beam radius, Gouy phase ...)."""
+        for part in self.parts:
+            for wave, _ in part.field.pieces:
+                wave.poly(part.field.place)
+        return dict(self.parts[0].field.place.letters.meanings)
+
+    # --- quantities -------------------------------------------------------------------------------------------------
+    def jones(self, basis: str = "linear", *, global_phase: bool = False, way: str = "compact") -> Any:
+        """The Jones vector as a sympy column: (Ex, Ey), or (E_L, E_R) with ``basis="circular"``.
+
+        Without ``global_phase`` a phase that is the same for both components and everywhere in the plane is dropped.
+
+        Raises
+        ------
+        SymbolError : the light is a mixture and has no Jones vector.
+        """
+        pair = self._only_pair()
+        if not global_phase:
+            pair = _without_common_phase(pair)
+        if basis == "linear":
+            left, right = pair
+            ring, i = left.ring, self._maths.number(1j)
+            root = ring.surd(self.parts[0].field.scale / 2)
+            pair = ((left + right) * root, (left - right) * root * i)
+        elif basis == "circular":
+            root = self._maths.ring.surd(self.parts[0].field.scale)
+            pair = (pair[0] * root, pair[1] * root)
+        else:
+            raise SymbolError(
+                "a Jones vector is written in one of two bases", got=f'basis="{basis}"', fix='basis="circular"'
+            )
+        return sp.Matrix([self._present(poly, way) for poly in pair])
+
+    def stokes_polys(self) -> tuple[Poly, ...]:
+        """(S0, S1, S2, S3) in the ring, relative to |envelope|^2; S3 = I_R - I_L."""
+        zero, i = self._maths.ring.zero, self._maths.number(1j)
+        total = [zero] * 4
+        for weight, (left, right) in self.pairs:
+            power_left, power_right, cross = left.abs2(), right.abs2(), left.conj() * right
+            # S1 + i S2 = 2 conj(E_L) E_R.
+            for n, part in enumerate(
+                (
+                    power_left + power_right,
+                    cross + cross.conj(),
+                    (cross.conj() - cross) * i,
+                    power_right - power_left,
+                )
+            ):
+                total[n] = total[n] + part * weight
+        return tuple(total)
+
+    @property
+    def stokes(self) -> Any:
+        """(S0, S1, S2, S3) as a sympy column, relative to |envelope|^2."""
+        return sp.Matrix([self._present(poly, "compact") for poly in self.stokes_polys()])
+
+    def frame_poly(self, setting: Any) -> Poly:
+        """The frame of a setting in the ring, relative to |envelope|^2."""
+        total = self._maths.ring.zero
+        for weight, pair in self.pairs:
+            scale, amplitudes = behind(setting, pair, self._maths)
+            for amplitude in amplitudes:
+                total = total + amplitude.abs2() * weight * self._maths.ring.rational(scale)
+        return total
+
+    def frame(self, setting: Any, way: str = "compact", **options: Any) -> Any:
+        """The frame behind an analyzer, relative to |envelope|^2.
+
+        Parameters
+        ----------
+        setting : angle of a linear analyzer [rad] (a letter or a number), a State, or a camera setting.
+        way : "compact", "exponential", "harmonics" (give ``angle``) or "series" (give ``small`` and ``order``).
+        """
+        return self._present(self.frame_poly(setting), way, **options)
+
+    @property
+    def power(self) -> Any:
+        """Power at the port [W]."""
+        from fastaxis.engines.symbolic.totals import total_power  # noqa: PLC0415  # it is made of forms
+
+        return total_power(self)
+
+    @property
+    def irradiance(self) -> Any:
+        """All light, no analyzer [W/m^2]."""
+        size = sp.Abs(self.envelope) ** 2 if self._factored else _plain(self.source_power)
+        return size * self.stokes[0]
+
+    # --- comparisons ------------------------------------------------------------------------------------------------
+    def equals(self, other: Form) -> bool:
+        """Whether another form of the same letters has the same Stokes parameters, decided exactly."""
+        ring = self._maths.ring
+        return all(one == ring.adopted(two) for one, two in zip(self.stokes_polys(), other.stokes_polys(), strict=True))
+
+    # --- helpers ----------------------------------------------------------------------------------------------------
+    @property
+    def _maths(self) -> Any:
+        return self.parts[0].field.place.maths
+
+    def _only_pair(self) -> Pair:
+        if len(self.pairs) != 1:
+            raise SymbolError(
+                "a mixture has no Jones vector, only Stokes parameters",
+                got=f"{self.target}: light of {len(self.pairs)} incoherent parts",
+                fix="form.stokes",
+            )
+        return self.pairs[0][1]
+
+    def _present(self, poly: Poly, way: str, **options: Any) -> Any:
+        ways = {"compact": compact, "exponential": exponential, "harmonics": harmonics, "series": series}
+        if way not in ways:
+            raise SymbolError(f"forms are written {', '.join(ways)}", got=f'way="{way}"', fix='way="compact"')
+        return ways[way](poly, **options)
+
+    def harmonics(self, setting: Any, angle: Any) -> dict[Any, tuple[Any, Any]]:
+        """The frame as a Fourier sum in an angle: {n: (cosine coefficient, sine coefficient)}."""
+        return harmonics(self.frame_poly(setting), angle)
+
+    def series(self, setting: Any, small: Sequence[Any], order: int = 2) -> Any:
+        """The frame to a total order in small symbols."""
+        return series(self.frame_poly(setting), small, order)
+
+
+def _without_common_phase(pair: Pair) -> Pair:
+    """Both components without the phase they share all over the plane."""
+    polys = [poly for poly in pair if poly]
+    if not polys:
+        return pair
+    ring = polys[0].ring
+    _, exponents = ring.exponents(middle(polys))
+    plane = {"r", "phi"}
+    common = {
+        place: value
+        for place, value in exponents.items()
+        if not plane & {str(s) for s in ring.generators[place].expression.free_symbols}
+    }
+    root = split_key(ring, min(polys[0].terms))[2]
+    key = ring.pack(root, common)
+    left, right = (Poly.made(ring, {k - key: v for k, v in poly.terms.items()}, poly.den) for poly in pair)
+    return left, right
+
+
+def _plain(value: Any) -> Any:
+    return sp.nsimplify(value, rational=True) if isinstance(value, float) else sp.sympify(value)

@@ -1,0 +1,120 @@
+"""sympy expressions read into the ring: powers of amplitudes, cosines, exponentials."""
+
+from __future__ import annotations
+
+from fractions import Fraction
+from typing import Any
+
+import sympy as sp
+
+from fastaxis.engines.symbolic.ring.angles import linear
+from fastaxis.engines.symbolic.ring.numerals import exact, pi_multiple
+from fastaxis.engines.symbolic.ring.poly import Poly
+from fastaxis.engines.symbolic.ring.ring import REAL, Ring
+
+__all__ = ["read", "root_of"]
+
+
+def root_of(ring: Ring, power: Any) -> Poly:
+    """The non-negative square root of a non-negative expression."""
+    return _raised(ring, sp.factor(_rationalized(power)), Fraction(1, 2))
+
+
+def read(ring: Ring, expression: Any) -> Poly:
+    """An expression as a polynomial; what is neither sum, product, cosine nor exponential is a real generator.
+
+    >>> x = sp.Symbol("x")
+    >>> ring = Ring()
+    >>> read(ring, 2 * sp.cos(x) ** 2) == read(ring, 1 + sp.cos(2 * x))
+    True
+    """
+    return _read(ring, _rationalized(sp.sympify(expression)))
+
+
+def _read(ring: Ring, e: Any) -> Poly:
+    if isinstance(e, sp.Rational):
+        return ring.rational(Fraction(int(e.p), int(e.q)))
+    if e == sp.I:
+        return ring.root_of_unity(Fraction(1, 4))
+    if isinstance(e, sp.Add):
+        total = ring.zero
+        for part in e.args:
+            total = total + _read(ring, part)
+        return total
+    if isinstance(e, sp.Mul):
+        product = ring.rational(1)
+        for part in e.args:
+            product = product * _read(ring, part)
+        return product
+    if isinstance(e, sp.cos | sp.sin):
+        return _cosine(ring, e)
+    if isinstance(e, sp.exp):
+        return _exponential(ring, e)
+    if isinstance(e, sp.Pow) and isinstance(e.exp, sp.Rational):
+        return _power(ring, e)
+    return ring.amplitude(e)
+
+
+def _cosine(ring: Ring, e: Any) -> Poly:
+    turns, generators = linear(e.args[0])
+    phasor = ring.phasor(dict(generators), turns)
+    if isinstance(e, sp.cos):
+        return (phasor + phasor.conj()) * ring.rational(Fraction(1, 2))
+    return (phasor.conj() - phasor) * ring.root_of_unity(Fraction(1, 4)) * ring.rational(Fraction(1, 2))
+
+
+def _exponential(ring: Ring, e: Any) -> Poly:
+    """exp(real + i angle), the real exponent being one generator."""
+    real, imag = [], []
+    for part in sp.Add.make_args(sp.expand(e.args[0])):
+        (imag if part.has(sp.I) else real).append(part)
+    turns, generators = linear(sp.expand(-sp.I * sp.Add(*imag)))
+    phasor = ring.phasor(dict(generators), turns)
+    return phasor * ring.amplitude(sp.exp(sp.Add(*real))) if real else phasor
+
+
+def _power(ring: Ring, e: Any) -> Poly:
+    exponent = Fraction(int(e.exp.p), int(e.exp.q))
+    if exponent.denominator == 1 and exponent > 0:
+        return _read(ring, e.base).power(int(exponent))
+    return _raised(ring, sp.factor(e.base), exponent)
+
+
+def _raised(ring: Ring, base: Any, exponent: Fraction) -> Poly:
+    """A non-negative expression to a multiple of 1/2."""
+    if isinstance(base, sp.Mul):
+        product = ring.rational(1)
+        for part in base.args:
+            product = product * _raised(ring, part, exponent)
+        return product
+    if isinstance(base, sp.Pow) and isinstance(base.exp, sp.Rational):
+        return _raised(ring, base.base, exponent * Fraction(int(base.exp.p), int(base.exp.q)))
+    if isinstance(base, sp.Rational):
+        return _rational_power(ring, Fraction(int(base.p), int(base.q)), exponent)
+    whole = _read(ring, base)
+    if exponent.denominator == 1 and (exponent > 0 or len(whole) == 1):
+        return whole.power(int(exponent))
+    if isinstance(base, sp.Add):
+        ring.sum_root(base, whole)
+    return ring.poly({ring.key(REAL, base, exponent): 1})
+
+
+def _rational_power(ring: Ring, value: Fraction, exponent: Fraction) -> Poly:
+    if exponent.denominator == 1:
+        return ring.rational(value ** int(exponent))
+    root = ring.surd(value if exponent > 0 else 1 / value)
+    return root.power(abs(exponent.numerator))
+
+
+def _rationalized(e: Any) -> Any:
+    """Floats replaced by the exact numbers they stand for."""
+    floats = e.atoms(sp.Float)
+    return e.xreplace({f: _exact_number(float(f)) for f in floats}) if floats else e
+
+
+def _exact_number(value: float) -> Any:
+    share = pi_multiple(value) if value else None
+    if share is not None:
+        return sp.Rational(share.numerator, share.denominator) * sp.pi
+    number = exact(value)
+    return sp.Rational(number.numerator, number.denominator)
