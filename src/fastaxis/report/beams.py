@@ -7,7 +7,7 @@ from typing import Any
 
 from matplotlib.axes import Axes
 
-from fastaxis.report.layout import Layout, Link, Place, Stub
+from fastaxis.report.layout import Layout, Place, Stub
 from fastaxis.report.prefix import readable
 from fastaxis.report.style import SOFT, WARN
 from fastaxis.report.walk import is_space
@@ -53,7 +53,9 @@ def _draw_link(axes: Axes, here: Place, there: Place, *, lane: float) -> None:
     ux, uy = _unit(here, there)
     # Each beam keeps to its own right, so the two of a double pass lie side by side.
     x, y = lane * uy, -lane * ux
-    axes.plot([here.x + x, there.x + x], [here.y + y, there.y + y], color=BEAM, lw=1.3, zorder=1, solid_capstyle="round")
+    axes.plot(
+        [here.x + x, there.x + x], [here.y + y, there.y + y], color=BEAM, lw=1.3, zorder=1, solid_capstyle="round"
+    )
     tip = 0.56
     at = (here.x + tip * (there.x - here.x) + x, here.y + tip * (there.y - here.y) + y)
     _arrow_head(axes, at, (ux, uy))
@@ -61,7 +63,9 @@ def _draw_link(axes: Axes, here: Place, there: Place, *, lane: float) -> None:
 
 def _arrow_head(axes: Axes, at: tuple[float, float], way: tuple[float, float], colour: str = BEAM) -> None:
     start = (at[0] - 0.02 * way[0], at[1] - 0.02 * way[1])
-    axes.annotate("", at, start, arrowprops={"arrowstyle": "-|>", "color": colour, "lw": 0, "mutation_scale": 9}, zorder=2)
+    axes.annotate(
+        "", at, start, arrowprops={"arrowstyle": "-|>", "color": colour, "lw": 0, "mutation_scale": 9}, zorder=2
+    )
 
 
 def _draw_wrapped(axes: Axes, here: Place, there: Place) -> None:
@@ -70,7 +74,9 @@ def _draw_wrapped(axes: Axes, here: Place, there: Place) -> None:
     ys = [here.y, here.y, between, between, there.y, there.y]
     axes.plot(xs, ys, color=BEAM, lw=1.0, ls=(0, (4, 2)), zorder=1)
     _arrow_head(axes, ((end + start) / 2, between), (-1.0, 0.0))
-    axes.text((end + start) / 2, between + 0.05, "goes on in the next row", size=5.5, color=SOFT, ha="center", va="bottom")
+    axes.text(
+        (end + start) / 2, between + 0.05, "goes on in the next row", size=5.5, color=SOFT, ha="center", va="bottom"
+    )
 
 
 def _write_port(axes: Axes, plan: Layout, train: Any, port: str) -> None:

@@ -86,5 +86,3 @@ def _draw_part(axes: Axes, train: Any, plan: Layout, name: str, element: Any) ->
     elif element.exit is None and element.entry and type(element).__name__ != "BeamDump":
         lines = f"{lines}\n{reflections_in_words(train, name)}".strip()
     write_label(axes, plan, name, lines)
-
-

@@ -87,8 +87,11 @@ def detail(element: Any, *, most: int = 3) -> str:
     """The main settings of a part, one a line.
 
     >>> from fastaxis.elements.retarder import HalfWavePlate, Retarder
-    >>> detail(HalfWavePlate(fast=0.5)), detail(Retarder(slow=0, retardance=1.5))
-    ('fast 28.65°', 'slow 0°\\nδ 85.94°')
+    >>> print(detail(Retarder(slow=0, retardance=1.5)))
+    slow 0°
+    δ 85.94°
+    >>> print(detail(HalfWavePlate(fast=0.5)))
+    fast 28.65°
     """
     lines = []
     for parameter, (word, shown) in WORDS.items():

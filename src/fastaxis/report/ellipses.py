@@ -119,7 +119,12 @@ def draw_ellipses(shots: Shots, *, title: str | None = None, across: int = 17, d
     _draw_glyphs(axes, glyphs(crop, stokes, across=across, dark=dark))
     axes.set(xlabel="x [mm]", ylabel="y [mm]")
     axes.legend(
-        handles=_legend(shots.view), loc="lower center", bbox_to_anchor=(0.5, 1.0), ncols=3, handlelength=1.4, columnspacing=1.2
+        handles=_legend(shots.view),
+        loc="lower center",
+        bbox_to_anchor=(0.5, 1.0),
+        ncols=3,
+        handlelength=1.4,
+        columnspacing=1.2,
     )
     figure.suptitle(heading(shots, title), size=10)
     footer(figure, shots.view, note=f"No ellipse where S0 is below {dark:.0%} of its peak. Seen facing the source.")

@@ -116,7 +116,10 @@ def _arranged(train: Any, choices: tuple[int, ...]) -> Layout:
 
 def _cost(layout: Layout) -> float:
     """Beams through parts count most, then beams across beams, then the size of the paper."""
-    ends = [(layout.places[a.out_port.partition(".")[0]], layout.places[a.in_port.partition(".")[0]]) for a in layout.links]
+    at = {
+        port: layout.places[port.partition(".")[0]] for link in layout.links for port in (link.out_port, link.in_port)
+    }
+    ends = [(at[link.out_port], at[link.in_port]) for link in layout.links]
     struck = sum(_strikes(here, there, part) for here, there in ends for part in layout.places.values())
     crossed = sum(_cross(one, other) for one, other in combinations(ends, 2))
     left, right, bottom, top = layout.bounds
@@ -151,7 +154,7 @@ def _follow(layout: Layout, train: Any, graph: Any, out: Node) -> None:
         if entering is None:
             layout.stubs.append(Stub(port(leaving), heading))
             continue
-        wrapped = entering[0] not in layout.places and _set_down(layout, train, graph, leaving, entering, heading)
+        wrapped = entering[0] not in layout.places and _set_down(layout, train, leaving, entering)
         layout.links.append(Link(port(leaving), port(entering), wrapped))
         if entering not in seen:
             seen.add(entering)
@@ -194,12 +197,12 @@ def _turn(layout: Layout, graph: Any, leaving: Node, heading: Vector, came_from:
     return sides[layout.choices[layout.turns - 1] if layout.turns <= len(layout.choices) else 0]
 
 
-def _set_down(layout: Layout, train: Any, graph: Any, leaving: Node, entering: Node, heading: Vector) -> bool:
+def _set_down(layout: Layout, train: Any, leaving: Node, entering: Node) -> bool:
     """Give a part the first free place ahead; True if that is at the start of a new row."""
-    before, name = layout.places[leaving[0]], entering[0]
+    before, name, heading = layout.places[leaving[0]], entering[0], layout.exits[leaving[:2]]
     pair = (train.elements[leaving[0]], train.elements[name])
     gap = sum(step(element, upright=not heading[0]) for element in pair) / 2
-    if heading == RIGHT and before.x + gap > WIDE and _may_wrap(layout, graph, entering, before.y):
+    if heading == RIGHT and before.x + gap > WIDE and _may_wrap(layout, train.graph, entering, before.y):
         layout.places[name] = Place(0.0, before.y - ROW)
         return True
     while not layout.free(before.x + heading[0] * gap, before.y + heading[1] * gap):
@@ -211,7 +214,8 @@ def _set_down(layout: Layout, train: Any, graph: Any, leaving: Node, entering: N
 def _may_wrap(layout: Layout, graph: Any, entering: Node, row: float) -> bool:
     """Only a drawing that is one straight line so far, and stays one, is broken into rows."""
     folded = any(place.reflects for place in layout.places.values())
-    return not folded and not layout.stubs and min(p.y for p in layout.places.values()) >= row and _straight(graph, entering)
+    lowest = min(place.y for place in layout.places.values())
+    return not folded and not layout.stubs and lowest >= row and _straight(graph, entering)
 
 
 def _straight(graph: Any, entering: Node) -> bool:

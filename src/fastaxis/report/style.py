@@ -15,8 +15,10 @@ from numpy.typing import NDArray
 
 from fastaxis.conventions import View, stamp
 
-__all__ = ["DARK", "INK", "LEFT", "LINEAR", "PAPER", "RIGHT", "WARN", "footer", "light_map", "new_figure", "outer_labels",
-           "azimuth_map", "pale_map", "signed_map", "styled"]  # fmt: skip
+__all__ = [
+    "DARK", "INK", "LEFT", "LINEAR", "PAPER", "RIGHT", "SOFT", "WARN", "azimuth_map", "footer", "light_map",
+    "new_figure", "outer_labels", "pale_map", "signed_map", "styled",
+]  # fmt: skip
 
 INK, SOFT, PAPER = "#20262e", "#6b7480", "#ffffff"
 DARK = "#d5d8dc"  # where there is too little light to say anything
@@ -70,9 +72,7 @@ def styled(draw: Callable[P, Figure]) -> Callable[P, Figure]:
 
 
 def _colours(name: str, anchors: tuple[str, ...]) -> Colormap:
-    made = LinearSegmentedColormap.from_list(name, anchors, N=512)
-    made.set_bad(DARK)
-    return made
+    return LinearSegmentedColormap.from_list(name, anchors, N=512).with_extremes(bad=DARK)
 
 
 @cache

@@ -64,7 +64,8 @@ def _rotator() -> list[Patch]:
 
 def _lens() -> list[Patch]:
     bulge, top = 0.13, 0.31
-    points = [(0, -top), (bulge, -top / 2), (bulge, top / 2), (0, top), (-bulge, top / 2), (-bulge, -top / 2), (0, -top)]
+    right = [(0, -top), (bulge, -top / 2), (bulge, top / 2), (0, top)]
+    points = right + [(-x, -y) for x, y in right[1:]]
     codes = [Path.MOVETO] + [Path.CURVE4] * 6
     return [PathPatch(Path(points, codes), **LINE, fc=GLASS)]
 
@@ -86,8 +87,8 @@ def _knife() -> list[Patch]:
 
 
 def _spiral() -> list[Patch]:
-    steps = [(-0.08, -0.29), (0.12, -0.29), (0.12, -0.1), (0.06, -0.1), (0.06, 0.1), (0.0, 0.1), (0.0, 0.29), (-0.08, 0.29)]
-    return [Polygon(steps, closed=True, **LINE, fc=GLASS)]
+    steps = [(0.12, -0.29), (0.12, -0.1), (0.06, -0.1), (0.06, 0.1), (0.0, 0.1), (0.0, 0.29)]
+    return [Polygon([(-0.08, -0.29), *steps, (-0.08, 0.29)], closed=True, **LINE, fc=GLASS)]
 
 
 def _wedge() -> list[Patch]:
@@ -126,7 +127,8 @@ def _unknown() -> list[Patch]:
 
 
 def _mirror() -> list[Patch]:
-    ticks = [_stroke([(0.0, y), (0.09, y + 0.08)], wide=0.6, colour=SOFT) for y in (-0.28, -0.18, -0.08, 0.02, 0.12, 0.22)]
+    feet = (-0.28, -0.18, -0.08, 0.02, 0.12, 0.22)
+    ticks = [_stroke([(0.0, y), (0.09, y + 0.08)], wide=0.6, colour=SOFT) for y in feet]
     return [_stroke([(0, -0.32), (0, 0.32)], wide=2.4), *ticks]
 
 

@@ -1,0 +1,82 @@
+"""What can be typed after ``fastaxis``."""
+
+from __future__ import annotations
+
+from argparse import ArgumentParser, ArgumentTypeError
+from collections.abc import Callable
+from pathlib import Path
+from typing import Any
+
+from fastaxis import __version__
+from fastaxis.cli import choices
+from fastaxis.cli.quantities import assignment
+from fastaxis.conventions import View
+from fastaxis.errors import FastaxisError
+
+__all__ = ["parser"]
+
+_EXIT_CODES = "exit codes: 0 done, 1 a mistake in the bench, 2 wrong usage, 130 stopped with Ctrl-C"
+
+
+def _typed(read: Callable[[str], Any]) -> Callable[[str], Any]:
+    """A reader whose complaints are complaints about usage."""
+
+    def reader(text: str) -> Any:
+        try:
+            return read(text)
+        except FastaxisError as error:
+            raise ArgumentTypeError(str(error)) from error
+
+    return reader
+
+
+def _bench(text: str) -> Path:
+    path = Path(text)
+    if not path.is_file():
+        raise ArgumentTypeError(f"there is no file {text}")
+    return path
+
+
+def _view(text: str) -> View:
+    try:
+        return View(text)
+    except ValueError:
+        raise ArgumentTypeError(f"a view is {' or '.join(view.value for view in View)}, not '{text}'") from None
+
+
+def _command(commands: Any, name: str, does: str) -> ArgumentParser:
+    command: ArgumentParser = commands.add_parser(name, help=does, description=does, epilog=_EXIT_CODES)
+    command.add_argument("bench", type=_bench, metavar="BENCH.py", help="Python file that defines train")
+    command.add_argument("--camera", metavar="NAME", help="camera, detector or port; all cameras if left out")
+    command.add_argument("--symbol", action="append", default=[], type=_typed(assignment), metavar="LETTER=VALUE",
+                         help="value of a letter in the bench, e.g. theta=22.5deg; may be repeated")  # fmt: skip
+    command.add_argument("--view", type=_view, default=View.RECEIVER, metavar="receiver|source",
+                         help="from where R and L are named (receiver: R is clockwise facing the source)")  # fmt: skip
+    return command
+
+
+def _writes_figures(command: ArgumentParser) -> None:
+    command.add_argument("--out", metavar="DIR", help="folder to write to; made if it is not there")
+    command.add_argument("--grid", type=_typed(choices.grid), metavar="SAMPLES,WINDOW",
+                         help="samples at the laser's plane, e.g. 1024,8mm; chosen from the bench if left out")  # fmt: skip
+    command.add_argument("--format", type=_typed(choices.formats), default=("png", "pdf"), metavar="png,pdf",
+                         help="of the figures")  # fmt: skip
+
+
+def parser() -> ArgumentParser:
+    """The parser of all commands."""
+    top = ArgumentParser(prog="fastaxis", description="Predict and explain an optical bench.", epilog=_EXIT_CODES)
+    top.add_argument("--version", action="version", version=f"fastaxis {__version__}")
+    commands = top.add_subparsers(dest="command", required=True, metavar="COMMAND")
+    predict = _command(commands, "predict", "Camera frames for every analyzer setting, maps, drawing and a table.")
+    predict.add_argument("--settings", type=_typed(choices.settings), metavar="six|four|linear:N|plate:N",
+                         help="analyzer settings; the bench's own settings, or six, if left out")  # fmt: skip
+    _writes_figures(predict)
+    derive = _command(commands, "derive", "The light at a camera as a formula, letters left as letters.")
+    derive.add_argument("--setting", type=_typed(choices.one_setting), metavar="H|..|ANGLE|LETTER",
+                        help="also the frame behind this analyzer: a state, an angle, or a letter for it")  # fmt: skip
+    derive.add_argument("--latex", action="store_true", help="write the formulas for LaTeX")
+    explain = _command(commands, "explain", "The parts, the plan, the drawing, open ports and cautions.")
+    explain.add_argument("--cards", action="store_true", help="also the card of every part: matrix, H, D, R, losses")
+    _writes_figures(explain)
+    return top
