@@ -10,7 +10,7 @@ import numpy as np
 from numpy.typing import NDArray
 
 from fastaxis.camera.exposure import Exposure
-from fastaxis.camera.settings import Setting, as_settings
+from fastaxis.camera.settings import Setting, as_settings, weight_matrix
 from fastaxis.elements.camera import Camera
 from fastaxis.elements.detector import Detector
 from fastaxis.errors import ParameterError
@@ -55,6 +55,7 @@ def expose(
     ParameterError : no settings; a setting that is neither state nor analyzer; a target that takes no pictures.
     """
     analyzers = as_settings(settings)
+    weight_matrix(analyzers)  # letters are refused before anything is computed
     plan = late("plan", "make_plan")(train, target, grid=grid, engine=engine)
     sensor = _sensor(train, target)
     fields = late("engines", "propagate")(plan)
@@ -106,7 +107,15 @@ def _shown_axes(camera: Camera, seen: Raster) -> tuple[NDArray[Any], NDArray[Any
 
 
 def _all_power(fields: Sequence[Any]) -> NDArray[Any]:
-    return np.asarray(sum(field.total_stokes for field in fields)).reshape(4, 1, 1)
+    return np.asarray(sum(_collected(field) for field in fields))
+
+
+def _collected(field: Any) -> NDArray[Any]:
+    """Stokes parameters [W] of all light of a field, shape (4, 1, 1)."""
+    # One pixel wider than any beam; a plane wave overfills it, and its power is by definition that on its own area.
+    stokes = field.stokes_on(Raster(10.0, (1, 1)))
+    seen = stokes[0, 0, 0]
+    return np.asarray(stokes * (field.power / seen) if seen > 0 else stokes)
 
 
 def merge_guards(guards: Sequence[Any]) -> Any:

@@ -1,0 +1,24 @@
+"""Files that are either whole or not there."""
+
+from __future__ import annotations
+
+import os
+import tempfile
+from collections.abc import Callable
+from pathlib import Path
+from typing import IO
+
+__all__ = ["write_whole"]
+
+
+def write_whole(path: Path, write: Callable[[IO[bytes]], object]) -> Path:
+    """Write next to the goal and move it there at the end, so that a broken-off run leaves the old file alone."""
+    handle, temporary = tempfile.mkstemp(dir=path.parent, prefix=f".{path.name}.")
+    try:
+        with os.fdopen(handle, "w+b") as file:
+            write(file)
+        Path(temporary).replace(path)
+    except BaseException:
+        Path(temporary).unlink(missing_ok=True)
+        raise
+    return path

@@ -1,0 +1,79 @@
+"""An exposure in one file, with everything needed to go on working with it: .npz, no pickles."""
+
+from __future__ import annotations
+
+from pathlib import Path
+from typing import Any
+from zipfile import BadZipFile
+
+import numpy as np
+
+from fastaxis.camera.atomic import write_whole
+from fastaxis.camera.coding import FORMAT, facts, facts_from, setting_from_json, to_text, view_from
+from fastaxis.camera.exposure import Exposure
+from fastaxis.engines.field import Guard
+from fastaxis.errors import FileFormatError
+
+__all__ = ["load", "save"]
+
+
+def save(shots: Exposure, path: str | Path) -> Path:
+    """Write an exposure to an .npz file: stokes, x, y as arrays, all else as JSON text under "about".
+
+    Parameters
+    ----------
+    shots : the exposure.
+    path : ending in .npz; an older file of that name is replaced once the new one is whole.
+
+    Raises
+    ------
+    FileFormatError : another ending.
+    """
+    path = Path(path)
+    _check_ending(path)
+    about = np.array(to_text(facts(shots)))
+    return write_whole(
+        path, lambda file: np.savez_compressed(file, stokes=shots.stokes, x=shots.x, y=shots.y, about=about)
+    )
+
+
+def load(path: str | Path) -> Exposure:
+    """Read what :func:`save` wrote.
+
+    Raises
+    ------
+    FileFormatError : not such a file, or a damaged one.
+    FileNotFoundError : no file.
+    """
+    path = Path(path)
+    _check_ending(path)
+    try:
+        with path.open("rb") as file, np.load(file, allow_pickle=False) as arrays:
+            about = facts_from(str(arrays["about"]))
+            return _exposure(about, {name: arrays[name] for name in ("stokes", "x", "y")})
+    except (BadZipFile, EOFError, KeyError, TypeError, ValueError) as problem:
+        raise FileFormatError(
+            "an exposure is read from the .npz file it was saved to",
+            got=f"{path.name}: not a whole '{FORMAT}' file",
+            fix='fastaxis.camera.save(shots, "shots.npz")',
+        ) from problem
+
+
+def _exposure(about: dict[str, Any], arrays: dict[str, Any]) -> Exposure:
+    guard = about["guard"]
+    return Exposure(
+        **arrays,
+        settings=tuple(setting_from_json(data) for data in about["settings"]),
+        view=view_from(about),
+        guard=None if guard is None else Guard(**guard),
+        **{name: about[name] for name in ("pixel", "wavelength", "name", "target", "orientation", "plan")},
+    )
+
+
+def _check_ending(path: Path) -> None:
+    if path.suffix != ".npz":
+        raise FileFormatError(
+            "an exposure is kept in an .npz file",
+            got=f"{path.name}: ends in '{path.suffix}'",
+            fix=f'"{path.stem or "shots"}.npz"',
+        )
