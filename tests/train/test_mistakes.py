@@ -81,7 +81,7 @@ MISTAKES = [
     # Directions
     Mistake('train.join("cam2", "pbs.reflected")', "cam2 (Camera); light cannot leave there", 'train.join("pbs.reflected", "cam2.in")'),
     Mistake('train.join("pbs.reflected", "laser")', "laser (Laser); light cannot enter there", 'train.join("pbs.reflected", "cam2.in")'),
-    Mistake('train.join("dump", "cam2")', "dump (BeamDump); light cannot leave there" , 'train.join("qwp.back", "cam2.in")'),
+    Mistake('train.join("dump", "cam2")', "dump (BeamDump); light cannot leave there", 'train.join("pbs.reflected", "cam2.in")'),
     Mistake('train.join("cam2.in", "dump")', "cam2.in (Camera); light cannot leave there", 'train.join("pbs.reflected", "dump.in")'),
     Mistake('train.along("pbs.reflected", "cam2", "dump")', "cam2 (Camera); light cannot leave there", 'train.join("qwp.back", "dump.in")'),
     # Ports used twice

@@ -13,7 +13,7 @@ from fastaxis.train.graph import Joints
 from fastaxis.train.ports import Elements
 from fastaxis.train.text_kinds import part_kinds, value_kinds
 from fastaxis.train.text_layout import laid_out
-from fastaxis.train.text_values import build, read_value, refused, write_fields, write_value
+from fastaxis.train.text_values import build, known_kind, read_value, refused, write_fields, write_value
 
 __all__ = ["VERSION", "read_text", "write_text"]
 
@@ -73,9 +73,9 @@ def _part(data: Any, kinds: dict[str, type], values: dict[str, type]) -> Element
     for key in ("kind", "name"):
         if not isinstance(data.get(key), str):
             raise refused("a part has a kind and a name", f"{data!r:.60}: no {key}", f'"{key}": "..."')
-    # Kinds of part stand beside the kinds of value only at this level: no part sits inside another.
-    part: Element = build(data, data["name"], {data["kind"]: kinds[data["kind"]], **values}
-                          if data["kind"] in kinds else kinds, name=data["name"])  # fmt: skip
+    # A part holds values and never another part, so the two tables of kinds are kept apart.
+    kind = known_kind(data["kind"], data["name"], kinds)
+    part: Element = build(kind, data, data["name"], values, name=data["name"])
     return part
 
 

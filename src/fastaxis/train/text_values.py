@@ -15,7 +15,7 @@ from fastaxis.maths import is_symbolic
 from fastaxis.train.ports import closest
 from fastaxis.train.text_expressions import read_expression, write_expression
 
-__all__ = ["Kinds", "build", "read_value", "refused", "write_fields", "write_value"]
+__all__ = ["Kinds", "build", "known_kind", "read_value", "refused", "write_fields", "write_value"]
 
 Kinds = Mapping[str, type]
 
@@ -86,11 +86,11 @@ def read_value(data: Any, where: str, kinds: Kinds) -> Any:
         return data
     if isinstance(data, list):
         return tuple(read_value(item, where, kinds) for item in data)
+    if "kind" in data:
+        return build(known_kind(data["kind"], where, kinds), data, where, kinds)
     for key, reader in _READERS.items():
         if key in data:
             return _guarded(reader, data, where)
-    if "kind" in data:
-        return build(data, where, kinds)
     raise refused("an object in a file names its kind", f"{where}: {_short(data)}", '{"kind": "State", "azimuth": 0.0}')
 
 
@@ -136,14 +136,19 @@ def _guarded(reader: Any, data: Mapping[str, Any], where: str) -> Any:
         ) from None
 
 
-def build(data: Mapping[str, Any], where: str, kinds: Kinds, **extra: Any) -> Any:
-    """An object of a known kind from its stored fields; its own checks apply."""
-    name = data["kind"]
-    if not isinstance(name, str) or name not in kinds:
-        likely = closest(str(name), kinds)
-        raise refused("a file holds kinds of part and of light that fastaxis knows", f"{where}: unknown kind {name!r}",
-                      f'"kind": "{likely}"')  # fmt: skip
-    kind = kinds[name]
+def known_kind(name: Any, where: str, kinds: Kinds) -> type:
+    """The class of this name, if it is one of those a file may hold."""
+    if isinstance(name, str) and name in kinds:
+        return kinds[name]
+    raise refused(
+        "a file holds kinds of part and of light that fastaxis knows",
+        f"{where}: unknown kind {name!r}",
+        f'"kind": "{closest(str(name), kinds)}"',
+    )
+
+
+def build(kind: type, data: Mapping[str, Any], where: str, kinds: Kinds, **extra: Any) -> Any:
+    """An object of a kind from its stored fields, which may hold values of ``kinds``; its own checks apply."""
     if issubclass(kind, Enum):
         return _member(kind, data, where)
     stored = {
@@ -156,7 +161,9 @@ def build(data: Mapping[str, Any], where: str, kinds: Kinds, **extra: Any) -> An
         raise
     except (TypeError, ValueError, AttributeError, ArithmeticError) as error:
         raise refused(
-            f"the fields of {name} must be possible values ({error})", f"{where}: {_short(data)}", f"fa.{name}"
+            f"the fields of {kind.__name__} must be possible values ({error})",
+            f"{where}: {_short(data)}",
+            f"fa.{kind.__name__}",
         ) from error
 
 
