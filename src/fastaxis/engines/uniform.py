@@ -9,7 +9,7 @@ from numpy.typing import NDArray
 
 from fastaxis.engines.field import CLEAN, Guard
 from fastaxis.errors import ParameterError
-from fastaxis.light import Raster, stokes
+from fastaxis.light import PlaneWave, Raster, stokes
 from fastaxis.plan import Branch, JonesStep
 
 __all__ = ["UniformField", "run"]
@@ -67,4 +67,4 @@ def run(branch: Branch) -> UniformField:
         if isinstance(step.law, JonesStep):
             jones = np.array(step.law.matrix) @ jones
     mode = terms[0].mode
-    return UniformField(branch.wavelength, jones, float(mode.area) if mode.infinite else None)
+    return UniformField(branch.wavelength, jones, float(mode.area) if isinstance(mode, PlaneWave) else None)

@@ -44,6 +44,7 @@ def choose(steps: Steps, source: Source, *, bucket: bool, asked: str) -> tuple[s
 
     Parameters
     ----------
+    steps, source : what the light goes through, and the light.
     bucket : whether only the total power and state at the target are asked for.
     asked : "auto", or an engine by name.
 

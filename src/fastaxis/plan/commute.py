@@ -10,7 +10,7 @@ from fastaxis.plan.steps import Step, Steps
 __all__ = ["commute"]
 
 
-def _commute(steps: Steps, wavelength: float) -> Steps:
+def _commute(steps: Steps, _: float) -> Steps:
     out: list[Step] = []
     stretch = 0  # first place after the last law that mixes polarization with place
     matrices = 0  # uniform laws already gathered there

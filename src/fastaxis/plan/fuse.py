@@ -22,7 +22,7 @@ def as_matrix(step: Step) -> JonesStep | None:
     return None
 
 
-def _fuse(steps: Steps, wavelength: float) -> Steps:
+def _fuse(steps: Steps, _: float) -> Steps:
     out: list[Step] = []
     for step in steps:
         matrix = as_matrix(step)

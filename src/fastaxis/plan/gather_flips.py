@@ -37,7 +37,7 @@ def seen_before_flip(law: StepLaw, axis: str) -> StepLaw:
     return law
 
 
-def _gather(steps: Steps, wavelength: float) -> Steps:
+def _gather(steps: Steps, _: float) -> Steps:
     flips: dict[str, Step] = {}
     out: list[Step] = []
     for step in steps:
@@ -48,7 +48,7 @@ def _gather(steps: Steps, wavelength: float) -> Steps:
             else:
                 flips[axis] = step
             continue
-        law = step.law
+        law: StepLaw = step.law
         for axis in flips:
             law = seen_before_flip(law, axis)
         out.append(Step(step.names, law))

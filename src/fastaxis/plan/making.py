@@ -76,7 +76,7 @@ def make_plan(
 
     Parameters
     ----------
-    train : the train.
+    train : the train asked.
     target : camera, detector or port, "cam" or "pbs.reflected".
     grid : samples set by hand, for the grid engine.
     engine : "auto", "uniform" or "grid".

@@ -39,7 +39,7 @@ def _lenses(steps: Steps, wavelength: float) -> Steps:
     return tuple(out)
 
 
-def _travels(steps: Steps, wavelength: float) -> Steps:
+def _travels(steps: Steps) -> Steps:
     out: list[Step] = []
     for step in steps:
         if out and isinstance(step.law, TravelLaw) and isinstance(out[-1].law, TravelLaw):
@@ -51,4 +51,4 @@ def _travels(steps: Steps, wavelength: float) -> Steps:
 
 def merge(plan: Plan) -> Plan:
     """Free spaces and lenses between the same two plates become one ABCD section, done with one transform."""
-    return plan.rewritten(lambda s, w: _travels(_lenses(s, w), w), "spaces and lenses merged into ABCD sections")
+    return plan.rewritten(lambda s, w: _travels(_lenses(s, w)), "spaces and lenses merged into ABCD sections")

@@ -10,8 +10,10 @@ __all__ = ["multiply", "product"]
 
 
 def _transmission(first: Amplitude, second: Amplitude) -> Amplitude | None:
-    if first == UNIT or second == UNIT:
-        return second if first == UNIT else first
+    if first == UNIT:
+        return second
+    if second == UNIT:
+        return first
     return first.times(second) if first.uniform and second.uniform else None
 
 
@@ -31,7 +33,7 @@ def product(first: ScalarLaw, second: ScalarLaw) -> ScalarLaw | None:
     )
 
 
-def _multiply(steps: Steps, wavelength: float) -> Steps:
+def _multiply(steps: Steps, _: float) -> Steps:
     out: list[Step] = []
     for step in steps:
         if out and isinstance(step.law, ScalarLaw) and isinstance(out[-1].law, ScalarLaw):

@@ -7,10 +7,10 @@ import warnings
 from dataclasses import replace
 
 from fastaxis.errors import SamplingError, SamplingWarning
-from fastaxis.laws import ScalarLaw
+from fastaxis.laws import ScalarLaw, TravelLaw
 from fastaxis.plan.grid import Grid
 from fastaxis.plan.sampling import Sampling, follow
-from fastaxis.plan.spread import Spread, closed, reach
+from fastaxis.plan.spread import ROUGH_RADII, Spread, closed, reach
 from fastaxis.plan.steps import Steps
 
 __all__ = ["propose", "sampling_for"]
@@ -27,7 +27,9 @@ WARN_ROUGH, REFUSE_ROUGH = 0.45, 0.334
 
 def _planes(steps: Steps, spread: Spread, samples: int, window: float, wavelength: float) -> Sampling:
     grid = Grid(samples, window)
-    return Sampling(grid, follow(steps, _bounded(steps, spread, window), grid, wavelength), _open(steps, spread))
+    return Sampling(
+        grid, follow(steps, _bounded(steps, spread, window, wavelength), grid, wavelength), _open(steps, spread)
+    )
 
 
 def _first_stop(steps: Steps) -> ScalarLaw | None:
@@ -40,11 +42,12 @@ def _open(steps: Steps, spread: Spread) -> bool:
     return spread.infinite and first is not None and first.stop is not None and not closed(first.stop)
 
 
-def _bounded(steps: Steps, spread: Spread, window: float) -> Spread:
-    """A plane wave that must be faded out is as wide as the faded window."""
+def _bounded(steps: Steps, spread: Spread, window: float, wavelength: float) -> Spread:
+    """A plane wave that must be faded out is as wide as the faded window, and as flat."""
     if not _open(steps, spread):
         return spread
-    return replace(spread, size=window / 6, rough=True)
+    size = window / (4 * ROUGH_RADII)
+    return replace(spread, size=size, angle=wavelength / (2 * math.pi * size), rough=True)
 
 
 def _lengths(steps: Steps, spread: Spread) -> list[float]:
@@ -58,11 +61,33 @@ def _lengths(steps: Steps, spread: Spread) -> list[float]:
 
 
 def _windows(steps: Steps, spread: Spread) -> list[float]:
-    """Windows to try, from twice the smallest length to 60 times the largest, 4 % apart."""
+    """Windows to try, from twice the smallest length to 60 times the largest, 8 % apart."""
     lengths = _lengths(steps, spread)
     low, high = 2 * min(lengths), 60 * max(lengths)
-    count = math.ceil(math.log(high / low) / math.log(1.04))
+    count = math.ceil(math.log(high / low) / math.log(1.08))
     return [low * (high / low) ** (i / count) for i in range(count + 1)]
+
+
+def _open_window(steps: Steps, spread: Spread, samples: int, wavelength: float) -> float:
+    """Window for a plane wave past an open edge, faded out at its own edge.
+
+    Wide enough for every stop, and for each travel so wide that the scaled spectrum is the better kernel: twice the
+    critical wavelength B samples = window^2. Fringes of an edge are then sqrt(samples)/2 samples wide.
+    """
+    window = 20 * max(_lengths(steps, spread)) if _first_reach(steps) else 0.0
+    for step in steps:
+        law = step.law
+        if isinstance(law, TravelLaw):
+            near = law.a + law.b * spread.curvature
+            distance = abs(law.b / near) if near else 0.0
+            window = max(window, math.sqrt(2 * samples * wavelength * distance))
+        spread = spread.past(law, wavelength) if isinstance(law, TravelLaw) else spread
+    return window or 10e-3
+
+
+def _first_reach(steps: Steps) -> float:
+    first = _first_stop(steps)
+    return reach(first.stop) if first is not None and first.stop is not None else 0.0
 
 
 def _fits(sampling: Sampling, steps: Steps) -> float:
@@ -78,6 +103,9 @@ def _fits(sampling: Sampling, steps: Steps) -> float:
 
 def propose(steps: Steps, spread: Spread, wavelength: float, *, most: int = LENGTHS[-1]) -> Sampling:
     """The fewest samples, and for them the best window, that hold the light at every plane."""
+    if _open(steps, spread):
+        window = _open_window(steps, spread, ROUGH_START, wavelength)
+        return _planes(steps, spread, ROUGH_START, window, wavelength)
     windows = _windows(steps, spread)
     rough = spread.infinite or _planes(steps, spread, 256, windows[-1], wavelength).planes[-1].spread.rough
     for samples in LENGTHS:

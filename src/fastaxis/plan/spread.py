@@ -6,11 +6,13 @@ import math
 from dataclasses import dataclass, replace
 
 from fastaxis.laws import Annulus, AxisLaw, Disc, Flip, Rectangle, ScalarLaw, Stop, Strip, TravelLaw
-from fastaxis.light import Beam
+from fastaxis.light import Beam, Mode
 from fastaxis.maths import Pattern
-from fastaxis.plan.steps import JonesStep, StepLaw
+from fastaxis.plan.steps import StepLaw
 
 __all__ = ["Spread", "closed", "of_beam", "reach"]
+
+Pair = tuple[float, float]
 
 SMOOTH_RADII = 6.0  # exp(-6^2) = 2e-16: a Gaussian field has fallen below its own rounding
 ROUGH_RADII = 3.0  # for edges, whose light falls off by a power law and not beyond some radius
@@ -59,8 +61,8 @@ class Spread:
         """After an ABCD section."""
         a, b, c, d = travel.a, travel.b, travel.c, travel.d
         near, far = a + b * self.curvature, c + d * self.curvature
-        offset = tuple(a * x + b * t for x, t in zip(self.offset, self.slope, strict=True))
-        slope = tuple(c * x + d * t for x, t in zip(self.offset, self.slope, strict=True))
+        (x, y), (tx, ty) = self.offset, self.slope
+        offset, slope = (a * x + b * tx, a * y + b * ty), (c * x + d * tx, c * y + d * ty)
         if self.infinite:
             return replace(self, curvature=far / near if near else 0.0, offset=offset, slope=slope)
         x2 = (near * self.size) ** 2 + (b * self.angle) ** 2
@@ -75,12 +77,7 @@ class Spread:
         if isinstance(law, TravelLaw):
             return self.through(law)
         if isinstance(law, Flip):
-            sign = (-1, 1) if law.axis == "x" else (1, -1)
-            return replace(
-                self,
-                offset=tuple(s * x for s, x in zip(sign, self.offset, strict=True)),
-                slope=tuple(s * t for s, t in zip(sign, self.slope, strict=True)),
-            )
+            return replace(self, offset=_reversed(self.offset, law.axis), slope=_reversed(self.slope, law.axis))
         if isinstance(law, AxisLaw):
             spread = self if law.order == 0 else self.twisted(2 * law.order, wavelength)
             return spread if law.uniform or law.order != 0 else replace(spread, rough=True)
@@ -92,8 +89,9 @@ class Spread:
         spread = self if law.charge == 0 else self.twisted(law.charge, wavelength)
         if any(isinstance(v, Pattern) for v in law.transmission.values):
             spread = replace(spread, rough=True)
-        slope = tuple(s + t for s, t in zip(spread.slope, law.tilt, strict=True))
-        spread = replace(spread, slope=slope)
+        (sx, sy), (tx, ty), (x, y), (cx, cy) = spread.slope, law.tilt, spread.offset, law.centre
+        slope = (sx + tx - law.vergence * (x - cx), sy + ty - law.vergence * (y - cy))
+        spread = replace(spread, slope=slope, curvature=spread.curvature - law.vergence)
         return spread if law.stop is None else spread.clipped(law.stop, law.centre, wavelength)
 
     def twisted(self, charge: float, wavelength: float) -> Spread:
@@ -122,15 +120,19 @@ class Spread:
         )
 
 
+def _reversed(pair: Pair, axis: str) -> Pair:
+    return (-pair[0], pair[1]) if axis == "x" else (pair[0], -pair[1])
+
+
 def reach(stop: Stop) -> float:
     """Radius [m] of the circle that holds the edges of a stop; 0 for a straight edge."""
     if isinstance(stop, Disc):
-        return stop.radius
+        return float(stop.radius)
     if isinstance(stop, Annulus):
-        return stop.outer
+        return float(stop.outer)
     if isinstance(stop, Rectangle):
-        return max(stop.width, stop.height) / 2
-    return stop.width / 2 if isinstance(stop, Strip) else 0.0
+        return float(max(stop.width, stop.height)) / 2
+    return float(stop.width) / 2 if isinstance(stop, Strip) else 0.0
 
 
 def closed(stop: Stop) -> bool:
@@ -139,25 +141,33 @@ def closed(stop: Stop) -> bool:
 
 
 def of_beam(beam: Beam, wavelength: float) -> Spread:
-    """The spread of the light at the source: the widest and steepest of its modes."""
+    """The spread of the light at the source: the widest and steepest of its modes.
+
+    Modes of one beam may be focused differently; what the curvature of the widest leaves of the others is angle.
+    """
     spreads = [_of_mode(term.mode, wavelength) for term in beam.terms]
     widest = max(spreads, key=lambda spread: spread.size)
-    # Modes of one beam may be focused differently: what the widest one's curvature leaves of the others counts as angle.
-    angle = max(math.hypot(s.angle, (s.curvature - widest.curvature) * s.size) if s.size < math.inf else 0.0
-                for s in spreads)  # fmt: skip
-    far = max(spreads, key=lambda spread: max(map(abs, spread.offset)))
-    return replace(widest, angle=angle, offset=far.offset, rough=any(s.rough for s in spreads))
+    farthest = max(spreads, key=lambda spread: max(map(abs, spread.offset)))
+    angle = max(_angle_beside(spread, widest.curvature) for spread in spreads)
+    return replace(widest, angle=angle, offset=farthest.offset, rough=any(spread.rough for spread in spreads))
 
 
-def _of_mode(mode: object, wavelength: float) -> Spread:
-    if mode.infinite:  # type: ignore[attr-defined]
+def _angle_beside(spread: Spread, curvature: float) -> float:
+    if spread.infinite:
+        return 0.0
+    return math.hypot(spread.angle, (spread.curvature - curvature) * spread.size)
+
+
+def _of_mode(mode: Mode, wavelength: float) -> Spread:
+    if mode.infinite:
         return Spread(math.inf, 0.0, 0.0)
-    moments = mode.moments(wavelength)  # type: ignore[attr-defined]
-    size, curvature = math.sqrt(moments.x2), mode.curvature(wavelength)  # type: ignore[attr-defined]
-    centre = tuple(map(float, getattr(mode, "centre", (0.0, 0.0))))
+    moments = mode.moments(wavelength)
+    size, curvature = math.sqrt(moments.x2), mode.curvature(wavelength)
+    x, y = getattr(mode, "centre", (0.0, 0.0))
+    centre = (float(x), float(y))
     least = wavelength / (2 * math.pi * size)
     if math.isinf(moments.t2):
         return Spread(size, curvature, least, centre, rough=True)
     # Never below the diffraction limit, which rounding of a difference of large moments could reach.
     angle = math.sqrt(max(moments.t2 - (moments.xt / size) ** 2, (least / 2) ** 2))
-    return Spread(size, curvature, angle, centre, rough=mode.hard)  # type: ignore[attr-defined]
+    return Spread(size, curvature, angle, centre, rough=mode.hard)

@@ -10,7 +10,7 @@ from fastaxis.plan.steps import Steps
 __all__ = ["drop_trailing"]
 
 
-def _trim(steps: Steps, wavelength: float) -> Steps:
+def _trim(steps: Steps, _: float) -> Steps:
     kept = list(steps)
     while kept:
         law = kept[-1].law

@@ -13,6 +13,7 @@ from fastaxis.engines.grid.single import travel_single
 from fastaxis.engines.grid.source import start
 from fastaxis.laws import AxisLaw, Flip, ScalarLaw, TravelLaw
 from fastaxis.plan import Branch, JonesStep
+from fastaxis.plan.fuse import as_matrix
 from fastaxis.plan.sampling import Hop, Sampling
 from fastaxis.plan.steps import StepLaw
 
@@ -24,7 +25,7 @@ def run(branch: Branch) -> GridField:
     sampling = cast("Sampling", branch.sampling)
     light = start(branch, sampling)
     for index, step in enumerate(branch.steps):
-        light = _past(light, step.law, sampling.hop(index))
+        light = _past(light, as_matrix(step) or step.law, sampling.hop(index))
     names = branch.steps[-1].names if branch.steps else ()
     return GridField(light, check(light, names))
 

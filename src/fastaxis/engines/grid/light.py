@@ -42,7 +42,7 @@ class GridLight:
     @property
     def count(self) -> int:
         """Samples along a side."""
-        return self.samples.shape[-1]
+        return int(self.samples.shape[-1])
 
     @property
     def window(self) -> float:
@@ -75,12 +75,12 @@ class GridLight:
 
 def axis(count: int, pitch: float) -> NDArray[np.float64]:
     """Half-pixel symmetric places."""
-    return (np.arange(count) - (count - 1) / 2) * pitch
+    return np.asarray((np.arange(count) - (count - 1) / 2) * pitch, dtype=float)
 
 
 def curve(x: NDArray[np.float64], curvature: float, wavelength: float) -> NDArray[np.complex128]:
     """exp(i k curvature x^2/2) along one axis; the plane's factor is the outer product."""
-    return np.exp(1j * np.pi * curvature / wavelength * x * x)
+    return np.asarray(np.exp(1j * np.pi * curvature / wavelength * x * x))
 
 
 def multiply_separable(samples: NDArray[np.complex128], factor: NDArray[Any]) -> None:

@@ -12,6 +12,7 @@ from fastaxis.engines.grid.light import GridLight
 from fastaxis.laws import AxisLaw, Flip, ScalarLaw
 from fastaxis.maths import NUMBERS, Pattern
 from fastaxis.plan import JonesStep
+from fastaxis.plan.merge import split_lens
 
 __all__ = ["flipped", "past_axis", "past_matrix", "past_scalar"]
 
@@ -55,7 +56,11 @@ def _patterned(law: AxisLaw) -> bool:
 
 
 def past_scalar(light: GridLight, law: ScalarLaw) -> GridLight:
-    """After a mask, wedge, spiral plate or stop. Lenses were made part of the travel."""
+    """After a mask, wedge, spiral plate, stop or lens. A centred lens only changes the curvature kept apart."""
+    if law.vergence:
+        rest, _ = split_lens(law, light.wavelength)
+        light = past_scalar(light, rest)
+        return replace(light, curvature=light.curvature - law.vergence)
     x, y = _places(light, law.centre)
     if any(isinstance(v, Pattern) for v in law.transmission.values):
         light.samples[...] *= law.transmission.value(NUMBERS, *np.broadcast_arrays(x, y))
@@ -78,7 +83,7 @@ def _coverage(depth: Any, pitch: float) -> NDArray[np.float64]:
     Cut to whole samples the edge is a stair whose area is wrong by a random half sample per step; the share keeps
     the area right and the field converges faster.
     """
-    return np.clip(depth / pitch + 0.5, 0.0, 1.0)
+    return np.asarray(np.clip(depth / pitch + 0.5, 0.0, 1.0))
 
 
 def flipped(light: GridLight, law: Flip) -> GridLight:

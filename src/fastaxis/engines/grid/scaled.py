@@ -31,7 +31,7 @@ def travel_scaled(light: GridLight, travel: TravelLaw) -> GridLight:
     samples, discarded = light.samples, light.discarded
     if distance != 0:
         spectrum = forward(samples)
-        frequency = np.fft.fftfreq(light.count, light.pitch)
+        frequency = np.asarray(np.fft.fftfreq(light.count, light.pitch), dtype=float)
         if not light.periodic:
             limit = band_limit(light.window, abs(distance), light.wavelength)
             discarded += cut_band(spectrum, frequency, limit)
