@@ -20,8 +20,9 @@ class Mirror(Element):
     """A flat mirror: J = diag(1, -1) in the frame that follows the beam, and the picture is flipped x -> -x.
 
     So H and V stay, +45 deg becomes -45 deg, R becomes L, charge l becomes -l; a second reflection restores all of it.
-    With the p component along x (horizontal fold) J = diag(sqrt(Rp) exp(i phase_p), -sqrt(Rs) exp(i phase_s)); for a
-    vertical fold p is along y, the two change places, and the picture is flipped y -> -y.
+    With the p component along x (horizontal fold) J = diag(sqrt(Rp) exp(i phase_p), -sqrt(Rs) exp(i phase_s)). For a
+    vertical fold p is along y: J = diag(-sqrt(Rs) exp(i phase_s), sqrt(Rp) exp(i phase_p)), and the picture is flipped
+    y -> -y. At normal incidence both describe the same reflected field, in frames half a turn apart.
 
     Parameters
     ----------
@@ -70,7 +71,7 @@ class Mirror(Element):
             self._keep(**{phase: checks.angle(self.label, phase, getattr(self, phase))})
 
     def forward(self, wavelength: Scalar) -> Passages:
-        p, s = (self.Rp, self.phase_p), (self.Rs, self.phase_s)
-        x, y = (p, s) if self.fold == "horizontal" else (s, p)
-        law = AxisLaw(Amplitude(*x), Amplitude(y[0], y[1] + pi))
-        return {("front", "front"): Passage((law,), "x" if self.fold == "horizontal" else "y")}
+        p, s = Amplitude(self.Rp, self.phase_p), Amplitude(self.Rs, self.phase_s + pi)
+        if self.fold == "horizontal":
+            return {("front", "front"): Passage((AxisLaw(p, s),), "x")}
+        return {("front", "front"): Passage((AxisLaw(s, p),), "y")}
