@@ -1,10 +1,11 @@
 """Light itself: polarization states, Stokes parameters, transverse modes and sources."""
 
+from fastaxis.light.making_states import elliptical, from_jones, from_stokes, helicity, linear
 from fastaxis.light.mixtures import UNPOLARIZED, StateMixture, partially_polarized
 from fastaxis.light.modes import FlatTop, Gaussian, HermiteGauss, LaguerreGauss, Mode, Moments, PlaneWave, SampledMode
 from fastaxis.light.raster import Raster
 from fastaxis.light.source import Component, Source, coherent_source, make_source
-from fastaxis.light.states import A, D, H, L, R, State, V, elliptical, from_jones, from_stokes, helicity, linear
+from fastaxis.light.states import A, D, H, L, R, State, V
 from fastaxis.light.stokes import degree_of_polarization, ellipse, stokes
 from fastaxis.light.terms import Beam, Term
 

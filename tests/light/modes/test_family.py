@@ -188,6 +188,16 @@ def test_symbols_may_be_declared(wavelength):
     assert mode.charge == l
 
 
+def test_exact_numbers_of_sympy_count_as_numbers(wavelength):
+    exact = HermiteGauss(
+        sympy.Integer(1), 0, sympy.Rational(1, 2000), sympy.Rational(1, 3), (sympy.Rational(1, 10000), 0)
+    )
+    plain = HermiteGauss(1, 0, W, 1 / 3, (0.1 * mm, 0))
+    assert exact.moments(wavelength) == plain.moments(wavelength)
+    assert exact.amplitude(0.2 * mm, 0, wavelength) == plain.amplitude(0.2 * mm, 0, wavelength)
+    assert exact.overlap(plain, wavelength) == pytest.approx(1, abs=1e-14)
+
+
 @pytest.mark.parametrize("question", ["amplitude(0, 0, 633*nm)", "moments(633*nm)", "radial(0, 633*nm)",
                                       "curvature(633*nm)", "overlap(Gaussian(1*mm), 633*nm)"])  # fmt: skip
 def test_numeric_questions_refuse_symbols(refuses, question):

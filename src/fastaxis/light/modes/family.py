@@ -7,8 +7,9 @@ u = P(x, y)/w exp(-r^2/w^2) exp(+i k r^2/2R) exp(-i N zeta), N = 2p + |l| + 1 or
 from __future__ import annotations
 
 import math
-from dataclasses import replace
-from typing import TYPE_CHECKING, Any, ClassVar, Self
+from abc import ABC, abstractmethod
+from dataclasses import Field, replace
+from typing import Any, ClassVar, Self
 
 import numpy as np
 from numpy.typing import ArrayLike, NDArray
@@ -16,42 +17,40 @@ from numpy.typing import ArrayLike, NDArray
 from fastaxis.light.modes.base import Complexes, Mode, Moments, places, require_numbers
 from fastaxis.maths import Scalar, free_symbols, is_symbolic
 
-if TYPE_CHECKING:
-    from _typeshed import DataclassInstance as Record
-else:
-    Record = object
-
 __all__ = ["GaussFamily"]
 
 
-class GaussFamily(Record):
+class GaussFamily(ABC):
     """Base of the modes that keep their shape under free space."""
 
     waist: Scalar
     waist_at: Scalar
     centre: tuple[Scalar, Scalar]
 
+    # The members are dataclasses: that is how moved() copies them.
+    __dataclass_fields__: ClassVar[dict[str, Field[Any]]]
+
     infinite: ClassVar[bool] = False
     hard: ClassVar[bool] = False
 
     @property
+    @abstractmethod
     def charge(self) -> int | None:
         """The l of a mode f(r) exp(i l phi) on the axis, else None."""
-        raise NotImplementedError
 
     @property
+    @abstractmethod
     def degree(self) -> int:
         """Degree N - 1 of the polynomial: the Gouy phase is N zeta."""
-        raise NotImplementedError
 
     @property
+    @abstractmethod
     def quality(self) -> int:
         """Beam quality M^2 of the worse axis."""
-        raise NotImplementedError
 
+    @abstractmethod
     def polynomial(self, u: Any, v: Any, *, conjugate: bool = False) -> Any:
         """P at u = sqrt(2) x/w, v = sqrt(2) y/w, as an entire function; ``conjugate`` conjugates its coefficients."""
-        raise NotImplementedError
 
     @property
     def symbols(self) -> set[Any]:
@@ -65,25 +64,28 @@ class GaussFamily(Record):
     def rayleigh(self, wavelength: float) -> float:
         """Rayleigh range pi w0^2 / wavelength [m]."""
         require_numbers(self)
-        return float(math.pi * self.waist**2 / wavelength)
+        return math.pi * float(self.waist) ** 2 / wavelength
 
     def width(self, wavelength: float) -> float:
         """Radius w [m] in the source plane."""
-        return float(self.waist * math.hypot(1, self.waist_at / self.rayleigh(wavelength)))
+        reach = self.rayleigh(wavelength)
+        return float(self.waist) * math.hypot(1, float(self.waist_at) / reach)
 
     def curvature(self, wavelength: float) -> float:
         """1/R [1/m] in the source plane; positive behind the waist."""
         reach = self.rayleigh(wavelength)
-        return float(-self.waist_at / (self.waist_at**2 + reach**2))
+        z = -float(self.waist_at)
+        return z / (z**2 + reach**2)
 
     def gouy(self, wavelength: float) -> float:
         """Gouy phase zeta [rad] of the source plane, from -pi/2 far before the waist to pi/2 far behind."""
-        return math.atan2(-self.waist_at, self.rayleigh(wavelength))
+        reach = self.rayleigh(wavelength)
+        return math.atan2(-float(self.waist_at), reach)
 
     def moments(self, wavelength: float) -> Moments:
         """Second moments: M^2 times those of a Gaussian beam."""
-        z, reach = -self.waist_at, self.rayleigh(wavelength)
-        spread = self.quality * (self.waist / reach) ** 2 / 4
+        reach = self.rayleigh(wavelength)
+        z, spread = -float(self.waist_at), self.quality * (float(self.waist) / reach) ** 2 / 4
         return Moments(x2=spread * (z**2 + reach**2), xt=z * spread, t2=spread)
 
     def moved(self, distance: float) -> Self:
@@ -130,7 +132,8 @@ def _exact_overlap(one: GaussFamily, other: GaussFamily, wavelength: float) -> c
     t, weights = np.polynomial.hermite.hermgauss((one.degree + other.degree) // 2 + 1)
     root = np.sqrt(a_one + a_other)
     nodes, rest = [], 0j
-    for c_one, c_other in zip(one.centre, other.centre, strict=True):
+    for places_of_both in zip(one.centre, other.centre, strict=True):
+        c_one, c_other = map(float, places_of_both)
         middle = (a_one * c_one + a_other * c_other) / (a_one + a_other)
         rest -= a_one * a_other / (a_one + a_other) * (c_one - c_other) ** 2
         nodes.append(middle + t / root)
@@ -142,4 +145,6 @@ def _exact_overlap(one: GaussFamily, other: GaussFamily, wavelength: float) -> c
 
 def _bare(mode: GaussFamily, x: NDArray[Any], y: NDArray[Any], wavelength: float, *, conjugate: bool) -> Any:
     scale = math.sqrt(2) / mode.width(wavelength)
-    return mode.polynomial(scale * (x - mode.centre[0]), scale * (y - mode.centre[1]), conjugate=conjugate)
+    return mode.polynomial(
+        scale * (x - float(mode.centre[0])), scale * (y - float(mode.centre[1])), conjugate=conjugate
+    )

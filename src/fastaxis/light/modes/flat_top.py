@@ -75,7 +75,7 @@ class FlatTop:
     def amplitude(self, x: ArrayLike, y: ArrayLike, wavelength: float) -> Complexes:
         """Amplitude [1/m] of unit power at the places (x, y) [m]; real."""
         require_numbers(self)
-        s = np.hypot(*places(x, y, self.centre)) / self.radius
+        s = np.hypot(*places(x, y, self.centre)) / float(self.radius)
         shape = s <= 1 if self.order is None else np.exp(-(s**self.order))
         return np.asarray(shape / math.sqrt(self._area), dtype=np.complex128)
 
@@ -99,10 +99,10 @@ class FlatTop:
         """x2 = radius^2/4 and no finite t2 for a disc; Gamma functions of the order for a soft edge."""
         require_numbers(self)
         if self.order is None:
-            return Moments(x2=self.radius**2 / 4, xt=0.0, t2=math.inf)
+            return Moments(x2=float(self.radius) ** 2 / 4, xt=0.0, t2=math.inf)
         n = self.order
-        x2 = self.radius**2 / 2 * 2 ** (-2 / n) * math.gamma(4 / n) / math.gamma(2 / n)
-        slope = n**2 * 2 ** (2 / n) / (4 * math.gamma(2 / n) * self.radius**2)  # mean of |du/dr|^2
+        x2 = float(self.radius) ** 2 / 2 * 2 ** (-2 / n) * math.gamma(4 / n) / math.gamma(2 / n)
+        slope = n**2 * 2 ** (2 / n) / (4 * math.gamma(2 / n) * float(self.radius) ** 2)  # mean of |du/dr|^2
         return Moments(x2=x2, xt=0.0, t2=slope / 2 * (wavelength / (2 * math.pi)) ** 2)
 
     @property
