@@ -207,6 +207,12 @@ def test_malformed_text_is_refused_in_a_sentence(case):
     assert "\n" not in str(caught.value)
 
 
+def test_a_picture_is_no_bench(tmp_path):
+    (tmp_path / "frame.png").write_bytes(b"\x89PNG\r\n\x1a\n")
+    with pytest.raises(fa.FileFormatError, match="frame.png: not text"):
+        fa.Train.load(tmp_path / "frame.png")
+
+
 def test_impossible_values_and_joints_are_refused_by_their_own_rules():
     with pytest.raises(fa.ParameterError, match="gap: distance"):
         fa.Train.from_text(json.dumps(with_part(distance=-1)))

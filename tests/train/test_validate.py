@@ -3,6 +3,7 @@
 import warnings
 
 import pytest
+import sympy
 
 import fastaxis as fa
 from fastaxis.units import deg, mm, nm, um
@@ -77,3 +78,18 @@ def test_a_target_without_light_is_an_error_and_no_warning_before_it(line):
 @pytest.mark.parametrize("angle", [0 * deg, 45 * deg])
 def test_validation_does_not_depend_on_values(line, angle):
     assert told(line.with_changes({"hwp.fast": angle})) == []
+
+
+def test_letters_do_not_disturb_validation():
+    a, wavelength = sympy.symbols("a lambda", positive=True)
+    train = fa.Train(wavelength=wavelength).along(
+        fa.Laser(waist=a, state=fa.linear(a), name="laser"),
+        fa.HalfWavePlate(fast=a, design=532 * nm, name="hwp"),
+        fa.QPlate(q=a, name="qp"),
+        fa.Polarizer(axis=a, extinction=a),
+        fa.Aperture(radius=a),
+        fa.Detector(name="meter"),
+    )
+    assert told(train) == []
+    assert train.route("meter").reflections == 0
+    assert "letters: a, lambda" in str(train)

@@ -15,7 +15,7 @@ from fastaxis.train.text_kinds import part_kinds, value_kinds
 from fastaxis.train.text_layout import laid_out
 from fastaxis.train.text_values import build, known_kind, read_value, refused, write_fields, write_value
 
-__all__ = ["VERSION", "read_text", "write_text"]
+__all__ = ["VERSION", "decoded", "read_text", "write_text"]
 
 VERSION = 1
 
@@ -30,6 +30,14 @@ def write_text(name: str, wavelength: Scalar, elements: Elements, joints: Joints
     head = {"fastaxis": VERSION, "stamp": stamp(), "name": name}
     body = {"wavelength": write_value(wavelength, "wavelength", kinds), "elements": parts, "joints": joints}
     return laid_out({**head, **body}) + "\n"
+
+
+def decoded(data: bytes, path: str) -> str:
+    """The text of a file."""
+    try:
+        return data.decode("utf-8")
+    except UnicodeDecodeError:
+        raise refused("a saved train is UTF-8 text", f"{path}: not text", 'train.save("bench.json")') from None
 
 
 def _no_constant(word: str) -> NoReturn:

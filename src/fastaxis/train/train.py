@@ -24,7 +24,7 @@ from fastaxis.train.naming import with_name
 from fastaxis.train.path import joined_along
 from fastaxis.train.routes import Route, find_route
 from fastaxis.train.suggest import open_out
-from fastaxis.train.text import read_text, write_text
+from fastaxis.train.text import decoded, read_text, write_text
 
 __all__ = ["Train"]
 
@@ -171,7 +171,7 @@ class Train:
     @classmethod
     def load(cls, path: str | PathLike[str], kinds: Iterable[type[Element]] = ()) -> Self:
         """The train of a file written by :meth:`save`."""
-        return cls.from_text(Path(path).read_text(encoding="utf-8"), kinds)
+        return cls.from_text(decoded(Path(path).read_bytes(), str(path)), kinds)
 
     def _with(self, elements: dict[str, Element], wavelength: Scalar) -> Self:
         copy = type(self)(wavelength=wavelength, name=self.name)
