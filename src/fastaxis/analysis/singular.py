@@ -21,8 +21,8 @@ def polarization_index(
     """Turns of the long axis of the ellipse along a circle walked once counter-clockwise.
 
     index = (1/2)(1/2 pi) of the winding of S1 + i S2. A radial, azimuthal or spiral beam has +1 at its centre, a lemon
-    +1/2, a star -1/2, a uniform beam 0. Mirrors and wave plates after which the picture is seen upright do not all
-    keep it: a mirror does, a half-wave plate changes its sign. The picture is that of an upright camera.
+    +1/2, a star -1/2, a uniform beam 0. A mirror keeps it, since it flips the places and the ellipses alike; a
+    half-wave plate changes its sign. The picture is that of an upright camera: a mirrored one flips the places alone.
 
     Parameters
     ----------

@@ -19,8 +19,8 @@ def sphere_wrapping(
 ) -> float:
     """Signed share of the sphere covered, (1/4 pi) times the integral of s . (ds/dx x ds/dy).
 
-    Each cell between four neighbouring pixels is two triangles on the sphere, whose solid angles are exact: only the
-    edge of the circle is rough. +1 or -1 is a whole sphere covered once; the sign tells the sense and changes with the
+    Each cell between four neighbouring pixels is two triangles on the sphere, whose solid angles are exact.
+    +1 or -1 is a whole sphere covered once; the sign tells the sense and changes with the
     naming of R and L.
 
     Parameters
@@ -41,8 +41,9 @@ def sphere_wrapping(
     corners = s[:, :-1, :-1], s[:, :-1, 1:], s[:, 1:, 1:], s[:, 1:, :-1]
     angles = _solid_angle(corners[0], corners[1], corners[2]) + _solid_angle(corners[0], corners[2], corners[3])
     middle_x, middle_y = (x[:-1] + x[1:]) / 2 - centre[0], (y[:-1] + y[1:]) / 2 - centre[1]
-    inside = middle_x**2 + middle_y[:, None] ** 2 <= radius**2
-    return float(angles[inside].sum() / (4 * np.pi))
+    # Cells on the circle count by the part of them inside, as if the circle were straight across a cell.
+    inside = np.clip((radius - np.hypot(middle_x, middle_y[:, None])) / (x[1] - x[0]) + 0.5, 0, 1)
+    return float((angles * inside).sum() / (4 * np.pi))
 
 
 def _solid_angle(a: Reals, b: Reals, c: Reals) -> Reals:
