@@ -10,7 +10,7 @@ from fastaxis.camera.exposing import merge_guards
 from fastaxis.elements.camera import ORIENTATIONS, Camera
 from fastaxis.errors import ParameterError, SymbolError
 from fastaxis.light.raster import Raster
-from fastaxis.light.states import H, linear
+from fastaxis.light import H, linear
 
 
 def mounted(bench, **changes):

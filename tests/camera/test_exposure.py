@@ -7,7 +7,7 @@ from fastaxis.camera import no_analyzer, plate_then_polarizer
 from fastaxis.camera.exposure import Exposure
 from fastaxis.conventions import View, stamp
 from fastaxis.errors import ParameterError
-from fastaxis.light.states import A, D, H, L, R, V, linear
+from fastaxis.light import A, D, H, L, R, V, linear
 from fastaxis.units import deg
 
 EPS = np.finfo(float).eps

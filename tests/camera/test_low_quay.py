@@ -10,7 +10,7 @@ import pytest
 
 from fastaxis.camera import plate_harmonics, reconstruct, rotating_plate
 from fastaxis.camera.settings import as_settings, weight_matrix
-from fastaxis.light.states import elliptical
+from fastaxis.light import elliptical
 from fastaxis.light.stokes import ellipse
 from fastaxis.units import deg
 

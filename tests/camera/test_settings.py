@@ -17,7 +17,7 @@ from fastaxis.camera.settings import (
 )
 from fastaxis.errors import ParameterError, SymbolError
 from fastaxis.laws import Amplitude, AxisLaw, CircularLaw, ScalarLaw, TravelLaw
-from fastaxis.light.states import A, D, H, L, R, State, V, elliptical, linear
+from fastaxis.light import A, D, H, L, R, State, V, elliptical, linear
 from fastaxis.maths import NUMBERS
 from fastaxis.units import deg
 
