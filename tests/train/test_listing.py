@@ -43,4 +43,13 @@ def test_lab_units():
     assert lab_parameters(fa.Laser(mode=fa.LaguerreGauss(p=0, l=1, waist=1 * mm), power=2 * mW)).startswith(
         "power 2 mW, mode LaguerreGauss("
     )
+    assert lab_parameters(fa.PatternedRetarder(fast=fa.Pattern(lambda x, y: x), retardance=180 * deg)).startswith(
+        "fast patterned"
+    )
     assert [lab_length(v) for v in (0.0, -2 * mm, 1e-12)] == ["0 m", "-2 mm", "1e-12 m"]
+
+
+def test_a_loop_can_be_shown():
+    train = fa.Train(wavelength=532 * nm).along(fa.Laser(waist=1 * mm, name="laser"), fa.BeamSplitter(name="bs"))
+    train.along("bs.transmitted", fa.Mirror(name="m1"), fa.Mirror(name="m2"), "bs.side")
+    assert str(train).count("  m1 ") == 1

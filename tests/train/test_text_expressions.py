@@ -121,3 +121,8 @@ def test_odd_letters_are_refused(letters):
 def test_what_cannot_be_read_back_is_not_written(formula):
     with pytest.raises(FileFormatError, match="a formula in a file"):
         write_expression(formula)
+
+
+def test_more_digits_than_a_float_holds_are_not_dropped_in_silence():
+    with pytest.raises(FileFormatError, match="would read back as"):
+        write_expression(x + sympy.Float("0.1234567890123456789012345", 25))

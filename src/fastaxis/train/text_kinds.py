@@ -4,7 +4,6 @@ from __future__ import annotations
 
 from collections.abc import Iterable
 from dataclasses import is_dataclass
-from enum import Enum
 from functools import cache
 from importlib import import_module
 from pkgutil import walk_packages
@@ -46,7 +45,7 @@ def _own_values() -> dict[str, type]:
     found = {
         name: kind
         for name, kind in _classes(LIGHT_ROOMS).items()
-        if (is_dataclass(kind) or issubclass(kind, Enum)) and not issubclass(kind, Element)
+        if is_dataclass(kind) and not issubclass(kind, Element)
     }
     return {**found, "Pattern": Pattern}
 
@@ -57,5 +56,5 @@ def part_kinds(extra: Iterable[type[Element]] = ()) -> dict[str, type]:
 
 
 def value_kinds() -> dict[str, type]:
-    """States, modes, terms, beams, sources, patterns, shapes of stops: dataclasses and enumerations."""
+    """States, modes, terms, beams, sources, patterns, shapes of stops: dataclasses of fastaxis."""
     return _own_values()

@@ -5,7 +5,6 @@ from __future__ import annotations
 import math
 from collections.abc import Iterable, Mapping
 from dataclasses import MISSING, fields, is_dataclass
-from enum import Enum
 from typing import Any
 
 import numpy as np
@@ -31,7 +30,7 @@ def write_value(value: Any, where: str, kinds: Kinds) -> Any:
     if isinstance(value, np.ndarray):
         return _write_array(value, where)
     value = value.item() if isinstance(value, np.generic) else value
-    if isinstance(value, int | float | complex) and not isinstance(value, Enum):
+    if isinstance(value, int | float | complex):
         return _write_number(value)
     if isinstance(value, tuple | list):
         return [write_value(item, where, kinds) for item in value]
@@ -46,20 +45,17 @@ def _write_number(value: complex) -> Any:
 
 
 def _write_array(array: Any, where: str) -> dict[str, Any]:
-    if array.dtype.kind == "c":
-        return {"array": array.real.tolist(), "imaginary": array.imag.tolist(), "type": str(array.dtype)}
-    if array.dtype.kind not in "biuf" or not np.all(np.isfinite(array)):
+    if array.dtype.kind not in "biufc" or not np.all(np.isfinite(array)):
         raise refused(
             "an array in a file holds finite numbers", f"{where}: array of {array.dtype}", "np.nan_to_num(array)"
         )
-    return {"array": array.tolist(), "type": str(array.dtype)}
+    imaginary = {"imaginary": array.imag.tolist()} if array.dtype.kind == "c" else {}
+    return {"array": array.real.tolist(), **imaginary, "type": str(array.dtype)}
 
 
 def _write_object(value: Any, where: str, kinds: Kinds) -> dict[str, Any]:
     kind = type(value).__name__
     if kinds.get(kind) is type(value):
-        if isinstance(value, Enum):
-            return {"kind": kind, "member": value.name}
         return {"kind": kind, **write_fields(value, where, kinds)}
     if callable(value):
         raise refused(
@@ -149,8 +145,6 @@ def known_kind(name: Any, where: str, kinds: Kinds) -> type:
 
 def build(kind: type, data: Mapping[str, Any], where: str, kinds: Kinds, **extra: Any) -> Any:
     """An object of a kind from its stored fields, which may hold values of ``kinds``; its own checks apply."""
-    if issubclass(kind, Enum):
-        return _member(kind, data, where)
     stored = {
         key: read_value(item, f"{where}.{key}", kinds) for key, item in data.items() if key not in {"kind", *extra}
     }
@@ -161,21 +155,10 @@ def build(kind: type, data: Mapping[str, Any], where: str, kinds: Kinds, **extra
         raise
     except (TypeError, ValueError, AttributeError, ArithmeticError) as error:
         raise refused(
-            f"the fields of {kind.__name__} must be possible values ({error})",
+            f"the fields of {kind.__name__} must be possible values ({' '.join(str(error).split())})",
             f"{where}: {_short(data)}",
             f"fa.{kind.__name__}",
         ) from error
-
-
-def _member(kind: type[Enum], data: Mapping[str, Any], where: str) -> Enum:
-    word = str(data.get("member"))
-    if word not in kind.__members__:
-        raise refused(
-            f"{kind.__name__} is one of {', '.join(kind.__members__)}",
-            f"{where}: {word!r}",
-            f'"member": "{closest(word, kind.__members__)}"',
-        )
-    return kind[word]
 
 
 def _check_fields(kind: type, given: Iterable[str], where: str) -> None:
