@@ -45,7 +45,9 @@ def same_state(one, other):
 
 class TestWaves:
     def test_more_optical_path_is_more_positive_phase(self):
-        assert PhaseShift(phase=0.3).laws(WAVELENGTH)[0].transmission.number() == pytest.approx(cmath.exp(0.3j), abs=ROUNDING)
+        assert PhaseShift(phase=0.3).laws(WAVELENGTH)[0].transmission.number() == pytest.approx(
+            cmath.exp(0.3j), abs=ROUNDING
+        )
 
     def test_the_slow_wave_of_a_plate_gains_phase(self):
         fast, slow = np.diag(jones(Retarder(fast=0.0, retardance=0.4)))
@@ -133,7 +135,9 @@ class TestElements:
     def test_spiral_plate_of_charge_l_is_exp_i_l_phi_and_so_is_a_mode(self):
         assert SpiralPlate(charge=3).laws(WAVELENGTH)[0].charge == 3
         mode = LaguerreGauss(0, 3, 1 * mm)
-        on_x, on_y = (mode.amplitude(np.array([x]), np.array([y]), WAVELENGTH)[0] for x, y in ((1 * mm, 0.0), (0.0, 1 * mm)))
+        on_x, on_y = (
+            mode.amplitude(np.array([x]), np.array([y]), WAVELENGTH)[0] for x, y in ((1 * mm, 0.0), (0.0, 1 * mm))
+        )
         assert on_y / on_x == pytest.approx(np.exp(3j * np.pi / 2), abs=ROUNDING)
 
     def test_rotator_turns_counter_clockwise(self):
@@ -182,7 +186,9 @@ class TestBackwards:
         )
 
     def test_faraday_rotation_is_met_as_minus_beta_and_optical_activity_as_plus_beta(self):
-        assert jones(FaradayRotator(angle=0.3), ("back", "front")) == pytest.approx(jones(Rotator(angle=-0.3)), abs=ROUNDING)
+        assert jones(FaradayRotator(angle=0.3), ("back", "front")) == pytest.approx(
+            jones(Rotator(angle=-0.3)), abs=ROUNDING
+        )
         assert jones(Rotator(angle=0.3), ("back", "front")) == pytest.approx(jones(Rotator(angle=0.3)), abs=ROUNDING)
 
     def test_places_map_x_to_minus_x(self):

@@ -123,7 +123,9 @@ class TestJonesAndMueller:
         assert mueller(retarder(delta, theta)) == close(SWAP_S3 @ upper @ SWAP_S3)
 
     def test_pol_006_printed_numbers(self):
-        printed = np.array([[1, 0, 0, 0], [0, 0.25, 0.433013, 0.866025], [0, 0.433013, 0.75, -0.5], [0, -0.866025, 0.5, 0]])
+        printed = np.array(
+            [[1, 0, 0, 0], [0, 0.25, 0.433013, 0.866025], [0, 0.433013, 0.75, -0.5], [0, -0.866025, 0.5, 0]]
+        )
         assert mueller(qwp(30 * deg)) == close(SWAP_S3 @ printed @ SWAP_S3, 5e-7)
 
     def test_pol_007_polarizer(self):
@@ -287,7 +289,11 @@ class TestIsolators:
 
     def test_cmp_002_isolator_with_a_wrong_rotator(self):
         # Saleh & Teich section 6.6D: polarizer 0, rotator, polarizer 45 degrees, and light coming back.
-        for beta, forward, backward in ((45, 1.0, 0.0), (44, 0.99969541, 3.04586490e-4), (42, 0.99726095, 2.73905232e-3)):
+        for beta, forward, backward in (
+            (45, 1.0, 0.0),
+            (44, 0.99969541, 3.04586490e-4),
+            (42, 0.99726095, 2.73905232e-3),
+        ):
             rotator = FaradayRotator(angle=beta * deg)
             first, last = Polarizer(axis=0.0), Polarizer(axis=45 * deg)
             onward = jones(last) @ jones(rotator) @ jones(first) @ H.jones
