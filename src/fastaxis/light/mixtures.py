@@ -86,7 +86,11 @@ def _normalized(parts: tuple[tuple[Scalar, State], ...]) -> str:
         shares = [f"({size / total!r}, {_code(state)})" for size, (_, state) in zip(sizes, parts, strict=True)]
     except (TypeError, ValueError, ZeroDivisionError):
         shares = []
-    return f"StateMixture(({', '.join(shares)},))" if shares else "StateMixture(((0.5, H), (0.5, V)))"
+    return (
+        f"StateMixture(({', '.join(shares)}{',' * (len(shares) == 1)}))"
+        if shares
+        else "StateMixture(((0.5, H), (0.5, V)))"
+    )
 
 
 def _code(state: State) -> str:

@@ -205,6 +205,11 @@ def test_numeric_questions_refuse_symbols(refuses, question):
     refuses(f"Gaussian(sympy.Symbol('w')).{question}", text, SymbolError)
 
 
+def test_the_message_names_the_symbols_of_the_centre_too(refuses):
+    code = "Gaussian(1*mm, centre=(sympy.Symbol('c'), 0)).amplitude(0, 0, 633*nm)"
+    assert refuses(code, "symbol c in centre = (c, 0.0)", SymbolError).fix == "centre=(0*mm, 0*mm)"
+
+
 @pytest.mark.parametrize(
     ("code", "text"),
     [

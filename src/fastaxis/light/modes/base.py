@@ -88,10 +88,10 @@ def require_numbers(mode: Any) -> None:
     """Refuse a numeric question to a mode that still has symbols."""
     if mode.symbols:
         kind, letter = type(mode).__name__, min(map(str, mode.symbols))
-        values = ", ".join(f"{name} = {value}" for name, value in vars(mode).items() if is_symbolic(value))
+        values = ", ".join(f"{name} = {value}" for name, value in vars(mode).items() if free_symbols((value,)))
         raise SymbolError(
             "numbers can be had from a mode without symbols only: put a number for each symbol",
-            got=f"{kind}: symbol {letter} in {values or vars(mode)}",
+            got=f"{kind}: symbol {letter} in {values}",
             fix=", ".join(f"{name}={_example(name)}" for name, value in vars(mode).items() if free_symbols((value,))),
         )
 
