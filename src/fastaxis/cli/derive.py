@@ -3,18 +3,46 @@
 from __future__ import annotations
 
 from argparse import Namespace
+from collections.abc import Iterator
 from typing import Any
 
 from fastaxis.cli.bench_file import BenchFile
+from fastaxis.cli.choices import one_setting
 from fastaxis.cli.console import say
 from fastaxis.cli.targets import targets
+from fastaxis.conventions import View
 
 __all__ = ["derive"]
 
 
 def derive(bench: BenchFile, options: Namespace) -> None:
-    """Print the field, the Stokes parameters and, where asked, a frame, each as a formula."""
+    """Print the field, the Stokes parameters and, where asked, a frame, each as a formula with a numeric check."""
     train = bench.train.with_values(dict(options.symbol)) if options.symbol else bench.train
     for target in targets(train, options.camera):
-        form: Any = train.derive(target)
-        say(form.latex() if options.latex else str(form))
+        form = train.derive(target)
+        say(f"{train.name}, {target}: light relative to its envelope [sqrt(W)/m]")
+        for name, value in _quantities(form, options.setting, options.view):
+            say(f"  {name} = {_latex(value) if options.latex else value}")
+        for name, meaning in form.meanings.items():
+            say(f"    with {name} = {_latex(meaning) if options.latex else meaning}")
+        for line in form.assumptions:
+            say(f"  assumed: {line}")
+        say(f"  checked: {form.check()}")
+
+
+def _quantities(form: Any, setting: str | None, view: View) -> Iterator[tuple[str, Any]]:
+    """(name, expression) of all that is shown; a mixture of incoherent parts has no Jones vector."""
+    yield "envelope", form.envelope
+    if len(form.parts) == 1:
+        yield from zip(("Ex", "Ey"), form.jones(), strict=True)
+    signs = (1, 1, 1, view.s3_sign)
+    yield from ((f"S{k}", sign * value) for k, (sign, value) in enumerate(zip(signs, form.stokes, strict=True)))
+    if setting is not None:
+        # R and L are typed as the view names them, and exposed as the receiver names them.
+        yield f"frame behind {setting}", form.frame(one_setting(view.rename(setting)))
+
+
+def _latex(value: Any) -> str:
+    from sympy import latex  # noqa: PLC0415  # loaded only where formulas are asked for
+
+    return str(latex(value))

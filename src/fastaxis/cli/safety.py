@@ -5,10 +5,9 @@ from __future__ import annotations
 from collections.abc import Mapping
 from typing import Any
 
-from fastaxis.cli.console import progress
-from fastaxis.errors import FastaxisError
+from fastaxis.engines.ledger import powers
+from fastaxis.errors import SymbolError, WiringError
 from fastaxis.report.prefix import readable
-from fastaxis.report.walk import is_space
 
 __all__ = ["DARK", "caution", "port_powers"]
 
@@ -16,30 +15,11 @@ DARK = 1e-9  # of the strongest beam; an ideal port that should be dark is, to r
 
 
 def port_powers(train: Any) -> dict[str, float]:
-    """Power [W] that leaves each port, where it can be told.
-
-    A port behind empty space carries what the port before it does, so it is asked for only where it is open.
-    """
-    leaving = [name for name in _out_ports(train) if _worth_asking(train, name)]
-    powers = {}
-    with progress("power at each port", len(leaving)) as move_on:
-        for name in leaving:
-            move_on(f"power at {name}")
-            try:
-                powers[name] = train.power(name)
-            except FastaxisError:
-                continue  # light by two ways, or letters: the drawing leaves the number out
-    return powers
-
-
-def _out_ports(train: Any) -> list[str]:
-    lit = set(train.lit)
-    ports = [f"{name}.{face}" for name, face, way in train.graph if way == "out"]
-    return [port for port in ports if port in lit]
-
-
-def _worth_asking(train: Any, port: str) -> bool:
-    return port in train.open_ports() or not is_space(train.elements[port.partition(".")[0]])
+    """Power [W] that leaves each port; nothing where letters or meeting paths leave it open."""
+    try:
+        return {f"{name}.{face}": power for (name, face), power in powers(train).items()}
+    except (SymbolError, WiringError):
+        return {}
 
 
 def caution(train: Any, powers: Mapping[str, float]) -> str:
@@ -50,6 +30,6 @@ def caution(train: Any, powers: Mapping[str, float]) -> str:
         return ""
     named = ", ".join(f"{port} ({readable(powers[port], 'W')})" if port in powers else port for port in leaving)
     return (
-        f"Laser caution: power leaves at {named}. Block what is not used, keep beams below eye level and enclosed, wear "
-        "the eyewear prescribed; your local rules and your laser safety officer have the last word."
+        f"Laser caution: power leaves at {named}. Block what is not used, keep beams below eye level and enclosed, "
+        "wear the eyewear prescribed; your local rules and your laser safety officer have the last word."
     )

@@ -23,8 +23,8 @@ __all__ = ["SAFETY", "draw_bench", "reflections_in_words"]
 UNIT = 0.86  # [inch] a step of the drawing
 LEAST_WIDTH = 7.2  # [inch]
 SAFETY = (
-    "Laser power leaves the bench here: block it, keep beams below eye level and enclosed, wear the eyewear prescribed. "
-    "Your local rules and your laser safety officer have the last word."
+    "Laser power leaves the bench here: block it, keep beams below eye level and enclosed, wear the eyewear "
+    "prescribed. Your local rules and your laser safety officer have the last word."
 )
 
 

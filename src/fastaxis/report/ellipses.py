@@ -52,7 +52,7 @@ class Glyphs:
         across = -self.size[:, None] * np.tan(self.ellipticity)[:, None] * np.sin(phase)
         cosine, sine = np.cos(self.azimuth)[:, None], np.sin(self.azimuth)[:, None]
         points = np.stack([cosine * along - sine * across, sine * along + cosine * across], axis=-1)
-        return points + np.stack([self.x, self.y], axis=-1)[:, None, :]
+        return np.asarray(points + np.stack([self.x, self.y], axis=-1)[:, None, :])
 
     def arrow_heads(self, length: float) -> NDArray[Any]:
         """Triangles (n, 3, 2) that sit on the curves and point the way the field runs."""

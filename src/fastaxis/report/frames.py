@@ -12,7 +12,7 @@ from numpy.typing import NDArray
 
 from fastaxis.report.powers import draw_powers
 from fastaxis.report.prefix import prefixed, readable
-from fastaxis.report.shots import Shots, bright_crop, heading, whole
+from fastaxis.report.shots import Shots, bright_crop, heading, short_labels, whole
 from fastaxis.report.style import footer, light_map, new_figure, outer_labels, styled
 
 __all__ = ["draw_frames", "layout"]
@@ -55,23 +55,23 @@ def draw_frames(shots: Shots, *, title: str | None = None, full: bool = False) -
 def _draw_pictures(shots: Shots, title: str, *, full: bool) -> Figure:
     crop = whole(shots) if full else bright_crop(shots)
     frames = np.stack([crop.of(shots.frame(k)) for k in range(len(shots))])
+    labels, common = short_labels(shots.labels)
     rows, columns = layout(len(shots))
     side = SIDES.get(columns, SMALL_SIDE)
     figure = new_figure(columns * side + 1.1, rows * (side * crop.aspect + 0.32) + 0.75)
     grid: NDArray[Any] = figure.subplots(rows, columns, squeeze=False)
     factor, unit = prefixed(float(frames.max()), "W")
     scale = {"vmin": 0.0, "vmax": float(frames.max()) * factor or 1.0, "cmap": light_map(), "origin": "lower"}
-    picture = None
     for k, axes in enumerate(grid.flat):
         if k >= len(frames):
             axes.set_axis_off()
             continue
-        picture = axes.imshow(frames[k] * factor, extent=crop.extent, **scale)
+        axes.imshow(frames[k] * factor, extent=crop.extent, **scale)
         # The power is that of the whole camera, whatever piece of it is shown.
-        _caption(axes, shots.labels[k], float(shots.frame(k).sum()), small=len(frames) > MANY)
+        _caption(axes, labels[k], float(shots.frame(k).sum()), small=len(frames) > MANY)
     outer_labels(grid, "x [mm]", "y [mm]")
-    figure.colorbar(picture, ax=grid, label=f"{unit} per pixel", shrink=0.8, aspect=28, pad=0.015)
-    figure.suptitle(title, size=10)
+    figure.colorbar(grid.flat[0].images[0], ax=grid, label=f"{unit} per pixel", shrink=0.8, aspect=28, pad=0.015)
+    figure.suptitle(f"{title}: {common}" if common else title, size=10)
     footer(figure, shots.view)
     return figure
 

@@ -10,6 +10,7 @@ from fastaxis.report.style import INK, SOFT
 __all__ = ["write_distance", "write_label"]
 
 BELOW, BESIDE, ABOVE, LEFT = (0, -1), (1, 0), (0, 1), (-1, 0)
+CORNERS = {BESIDE: (0.42, 0.0, "left"), LEFT: (-0.42, 0.0, "right"), None: (0.33, -0.45, "left")}
 
 
 def write_distance(axes: Axes, place: Place, distance: str) -> None:
@@ -25,11 +26,12 @@ def write_label(axes: Axes, plan: Layout, name: str, lines: str) -> None:
     place = plan.places[name]
     side = _free_side(plan, name, place)
     if side in {BELOW, ABOVE}:
-        base = place.y - 0.36 if side == BELOW else place.y + 0.56 + 0.115 * (lines.count("\n") + 1 if lines else 0)
+        below = 0.36 if place.heading[0] else 0.42
+        base = place.y - below if side == BELOW else place.y + 0.56 + 0.115 * (lines.count("\n") + 1 if lines else 0)
         axes.text(place.x, base, name, size=7.0, weight="bold", ha="center", va="top")
         axes.text(place.x, base - 0.17, lines, size=6.0, color=SOFT, ha="center", va="top", linespacing=1.15)
         return
-    x, y, align = {BESIDE: (0.42, 0.0, "left"), LEFT: (-0.42, 0.0, "right")}.get(side, (0.33, -0.45, "left"))
+    x, y, align = CORNERS[side]
     axes.text(place.x + x, place.y + y + 0.02, name, size=7.0, weight="bold", ha=align, va="bottom")
     axes.text(place.x + x, place.y + y - 0.02, lines, size=6.0, color=SOFT, ha=align, va="top", linespacing=1.15)
 

@@ -115,7 +115,7 @@ def _arranged(train: Any, choices: tuple[int, ...]) -> Layout:
 
 
 def _cost(layout: Layout) -> float:
-    """Beams through parts count most, then beams across beams, then the size of the paper."""
+    """Beams through parts count most, then beams across beams, light that runs left, and the size of the paper."""
     at = {
         port: layout.places[port.partition(".")[0]] for link in layout.links for port in (link.out_port, link.in_port)
     }
@@ -123,7 +123,8 @@ def _cost(layout: Layout) -> float:
     struck = sum(_strikes(here, there, part) for here, there in ends for part in layout.places.values())
     crossed = sum(_cross(one, other) for one, other in combinations(ends, 2))
     left, right, bottom, top = layout.bounds
-    return 100 * struck + 10 * crossed + (right - left + 2) * (top - bottom + 2) / 10
+    leftward = sum(place.heading == (-1, 0) for place in layout.places.values())
+    return 100 * struck + 10 * crossed + leftward + (right - left + 2) * (top - bottom + 2) / 10
 
 
 def _strikes(here: Place, there: Place, part: Place) -> bool:

@@ -2,10 +2,12 @@
 
 from __future__ import annotations
 
+from typing import Any
+
 from matplotlib.figure import Figure
 
 from fastaxis.report.prefix import prefixed
-from fastaxis.report.shots import Shots, heading
+from fastaxis.report.shots import Shots, heading, short_labels
 from fastaxis.report.style import LEFT, footer, new_figure, styled
 
 __all__ = ["draw_powers"]
@@ -29,11 +31,12 @@ def draw_powers(shots: Shots, *, title: str | None = None) -> Figure:
     places = range(len(powers))
     axes.plot(places, [power * factor for power in powers], color=LEFT, lw=0.8, marker="o", ms=3.5)
     every = -(-len(powers) // NAMED)
-    long = max(len(label) for label in shots.labels) > 3
-    axes.set_xticks(places[::every], shots.labels[::every], rotation=60 if long else 0, ha="right" if long else "center",
-                    rotation_mode="anchor")  # fmt: skip
+    labels, common = short_labels(shots.labels)
+    long = max(map(len, labels)) > 3
+    turned: dict[str, Any] = {"rotation": 60, "ha": "right", "rotation_mode": "anchor"} if long else {}
+    axes.set_xticks(places[::every], labels[::every], **turned)
     axes.set_ylim(bottom=0)
-    axes.set(xlabel="analyzer setting", ylabel=f"power [{unit}]")
+    axes.set(xlabel=f"analyzer setting: {common}" if common else "analyzer setting", ylabel=f"power [{unit}]")
     axes.grid(axis="y", lw=0.4, alpha=0.5)
     axes.set_title(heading(shots, title), size=10)
     footer(figure, shots.view)

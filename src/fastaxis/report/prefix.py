@@ -26,12 +26,13 @@ def prefixed(largest: float, unit: str) -> tuple[float, str]:
 def readable(value: float, unit: str, *, digits: int = 3) -> str:
     """A value with its prefix, to so many significant digits.
 
-    >>> readable(0.00125, "W"), readable(0, "W")
-    ('1.25 mW', '0 W')
+    >>> readable(0.00125, "W"), readable(0.00099999, "W"), readable(0, "W")
+    ('1.25 mW', '1.00 mW', '0 W')
     """
+    if value == 0 or not math.isfinite(value):
+        return f"{value:.0f} {unit}"
+    # Rounded before the prefix is chosen: 999.99 uW is 1.00 mW.
+    value = float(f"{value:.{digits}g}")
     factor, name = prefixed(abs(value), unit)
-    shown = value * factor
-    if shown == 0:
-        return f"0 {unit}"
-    decimals = max(digits - 1 - math.floor(math.log10(abs(shown))), 0)
-    return f"{shown:.{decimals}f} {name}"
+    decimals = max(digits - 1 - math.floor(math.log10(abs(value * factor)) + 1e-12), 0)
+    return f"{value * factor:.{decimals}f} {name}"

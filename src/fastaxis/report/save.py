@@ -11,6 +11,7 @@ from matplotlib.figure import Figure
 
 from fastaxis.conventions import View, stamp
 from fastaxis.errors import FileFormatError
+from fastaxis.report.style import rules
 
 __all__ = ["FORMATS", "save"]
 
@@ -45,7 +46,8 @@ def _write(figure: Figure, path: Path, kind: str, view: View) -> Path:
     handle, unfinished = tempfile.mkstemp(dir=path.parent, prefix=f".{path.stem}-", suffix=f".{kind}")
     os.close(handle)
     try:
-        figure.savefig(unfinished, format=kind, metadata=_metadata(kind, view))
+        with rules():
+            figure.savefig(unfinished, format=kind, metadata=_metadata(kind, view))
         Path(unfinished).chmod(0o644)  # mkstemp makes files for the owner only
         Path(unfinished).replace(path)
     finally:

@@ -11,7 +11,7 @@ from numpy.typing import NDArray
 
 from fastaxis.conventions import View
 
-__all__ = ["Crop", "Shots", "bright_crop", "heading", "whole"]
+__all__ = ["Crop", "Shots", "bright_crop", "heading", "short_labels", "whole"]
 
 Image = NDArray[np.float64]
 
@@ -42,6 +42,31 @@ class Shots(Protocol):
 def heading(shots: Shots, title: str | None) -> str:
     """The title asked for, or the names of the train and of the camera."""
     return title if title is not None else ", ".join(part for part in (shots.name, shots.target) if part)
+
+
+def short_labels(labels: tuple[str, ...]) -> tuple[tuple[str, ...], str]:
+    """Labels without the words they all begin and end with, and those words with a gap for what differs.
+
+    >>> short_labels(("plate fast 0°, polarizer 0°", "plate fast 9°, polarizer 0°"))
+    (('0°', '9°'), 'plate fast …, polarizer 0°')
+    >>> short_labels(("H", "V"))
+    (('H', 'V'), '')
+    """
+    words = [label.split(" ") for label in labels]
+    room = min(map(len, words)) - 1  # at least one word of each is left
+    front = _agreeing(words, room)
+    back = _agreeing([row[::-1] for row in words], room - front)
+    if len(labels) < 2 or front + back == 0:
+        return labels, ""
+    middles = [" ".join(row[front : len(row) - back]) for row in words]
+    comma = "," if all(middle.endswith(",") for middle in middles) else ""
+    frame = " ".join([*words[0][:front], f"…{comma}", *words[0][len(words[0]) - back :]])
+    return tuple(middle.rstrip(",") for middle in middles), frame
+
+
+def _agreeing(rows: list[list[str]], most: int) -> int:
+    """How many first words all rows have in common."""
+    return next((k for k in range(most) if len({row[k] for row in rows}) > 1), max(most, 0))
 
 
 @dataclass(frozen=True)

@@ -3,7 +3,8 @@
 from __future__ import annotations
 
 import textwrap
-from collections.abc import Callable
+from collections.abc import Callable, Iterator
+from contextlib import contextmanager
 from functools import cache, wraps
 from typing import Any, ParamSpec
 
@@ -17,7 +18,8 @@ from fastaxis.conventions import View, stamp
 
 __all__ = [
     "DARK", "INK", "LEFT", "LINEAR", "PAPER", "RIGHT", "SOFT", "WARN", "azimuth_map", "footer", "light_map",
-    "new_figure", "outer_labels", "pale_map", "signed_map", "styled",
+    "new_figure", "outer_labels", "pale_map", "rules", "signed_map",
+    "styled",
 ]  # fmt: skip
 
 INK, SOFT, PAPER = "#20262e", "#6b7480", "#ffffff"
@@ -31,7 +33,7 @@ PALE_ANCHORS = ("#ffffff", "#e7e4dc", "#c9c3b4", "#a8a08d")
 SIGNED_ANCHORS = ("#0d3b66", "#3f7cac", "#a9c6dd", "#f6f4ef", "#e9bf93", "#c26a2c", "#6e2c0a")
 AZIMUTH_ANCHORS = ("#f3dc8c", "#6fa8a0", "#23395b", "#8c4a6b", "#f3dc8c")
 
-RULES: dict[str, Any] = {
+RULES: dict[Any, Any] = {
     "font.family": "DejaVu Sans",
     "font.size": 8.0,
     "axes.titlesize": 8.5,
@@ -60,12 +62,21 @@ FOOT_SIZE = 5.5  # [pt]
 P = ParamSpec("P")
 
 
+@contextmanager
+def rules() -> Iterator[None]:
+    """Our rules in place of the caller's matplotlib settings, which are given back afterwards."""
+    with mpl.rc_context():
+        mpl.rcdefaults()
+        mpl.rcParams.update(RULES)
+        yield
+
+
 def styled(draw: Callable[P, Figure]) -> Callable[P, Figure]:
     """Run a drawing function under our rules, and leave the caller's matplotlib settings alone."""
 
     @wraps(draw)
     def under_rules(*args: P.args, **kwargs: P.kwargs) -> Figure:
-        with mpl.rc_context({**mpl.rcParamsDefault, **RULES}):
+        with rules():
             return draw(*args, **kwargs)
 
     return under_rules

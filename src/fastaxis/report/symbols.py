@@ -18,7 +18,7 @@ __all__ = ["HALF_HEIGHT", "draw_symbol"]
 HALF_HEIGHT = 0.3
 BODY = "#eef0f2"
 GLASS = "#dbe7ee"
-LINE = {"ec": INK, "lw": 0.9, "joinstyle": "round"}
+LINE: dict[str, Any] = {"ec": INK, "lw": 0.9, "joinstyle": "round"}
 
 
 def _box(width: float, height: float, fill: str = BODY, **more: Any) -> Rectangle:
