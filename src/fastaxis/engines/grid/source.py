@@ -6,6 +6,7 @@ from typing import Any
 
 import numpy as np
 from numpy.typing import NDArray
+from scipy.ndimage import binary_dilation
 from scipy.special import erf
 
 from fastaxis.engines.grid.light import GridLight, axis, curve, multiply_separable
@@ -14,7 +15,7 @@ from fastaxis.plan.sampling import Sampling
 
 __all__ = ["start"]
 
-SUB = 8  # samples per sample and axis over which a hard-edged mode is averaged
+SUB = 8  # places per axis in a sample that the edge of a hard-edged mode crosses
 FADE = 0.125  # width of a plane wave's fading, as a share of the window
 
 
@@ -39,14 +40,21 @@ def start(branch: Branch, sampling: Sampling) -> GridLight:
 
 
 def _shape(mode: Any, x: NDArray[np.float64], pitch: float, wavelength: float) -> NDArray[np.complex128]:
-    if not mode.hard:
-        shape = mode.amplitude(x[None, :], x[:, None], wavelength)
-        return np.array(np.broadcast_to(shape, (x.size, x.size)), dtype=complex)
-    # A hard edge cut to whole samples converges by half a sample of stairs; averaged it converges faster.
+    values = mode.amplitude(x[None, :], x[:, None], wavelength)
+    shape = np.array(np.broadcast_to(values, (x.size, x.size)), dtype=complex)
+    return _softened(shape, mode, x, pitch, wavelength) if mode.hard else shape
+
+
+def _softened(
+    shape: NDArray[np.complex128], mode: Any, x: NDArray[np.float64], pitch: float, wavelength: float
+) -> NDArray[np.complex128]:
+    """A hard edge averaged over each sample it crosses; cut to whole samples its area would be wrong by chance."""
+    lit = shape != 0
+    rows, columns = np.nonzero(binary_dilation(lit) & binary_dilation(~lit))
     shifts = axis(SUB, pitch / SUB)
-    parts = (mode.amplitude(x[None, :] + dx, x[:, None] + dy, wavelength) for dx in shifts for dy in shifts)
-    mean = sum(parts) / SUB**2
-    return np.asarray(mean / np.sqrt(np.sum(abs(mean) ** 2) * pitch**2))
+    parts = (mode.amplitude(x[columns] + dx, x[rows] + dy, wavelength) for dx in shifts for dy in shifts)
+    shape[rows, columns] = sum(parts) / SUB**2
+    return shape / np.sqrt(np.vdot(shape, shape).real * pitch**2)
 
 
 def _fading(x: NDArray[np.float64], window: float) -> NDArray[np.float64]:

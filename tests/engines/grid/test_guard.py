@@ -1,0 +1,46 @@
+import numpy as np
+import pytest
+
+from fastaxis.engines.grid.guard import check, edge_watched, phase_step
+from fastaxis.engines.grid.light import GridLight, axis
+from fastaxis.errors import SamplingError, SamplingWarning
+
+
+def light(width, curvature=0.0, count=256, pitch=0.1e-3, **options):
+    x = axis(count, pitch)
+    r2 = x[None] ** 2 + x[:, None] ** 2
+    samples = np.exp(-r2 / width**2 + 1j * np.pi / 500e-9 * curvature * r2)[None]
+    return GridLight(samples, np.array([1, 0j]), pitch, 0.0, 500e-9, **options)
+
+
+def test_edge_power_is_the_share_in_the_outer_sixteenth():
+    flat = GridLight(np.ones((1, 256, 256), complex), np.array([1, 0j]), 1e-4, 0.0, 500e-9)
+    assert edge_watched(flat).edge_power == pytest.approx(1 - (15 / 16) ** 2)
+    assert edge_watched(light(1e-3)).edge_power < 1e-15
+
+
+def test_the_largest_edge_power_on_the_way_is_kept():
+    assert edge_watched(light(1e-3, edge_power=0.1)).edge_power == 0.1
+
+
+def test_a_plane_wave_that_fills_the_window_is_exempt():
+    assert edge_watched(light(1.0, periodic=True)).edge_power == 0
+
+
+def test_phase_steps_are_those_where_the_light_is():
+    """Along x the phase pi K x^2/wavelength turns by 2 pi K x pitch/wavelength a sample."""
+    step = phase_step(light(1e-3, curvature=0.5))
+    at_one_width = 2 * np.pi * 0.5 * 1e-3 * 0.1e-3 / 500e-9
+    # 99 % of the |u|^2 along a line lies within 1.29 w.
+    assert step == pytest.approx(1.29 * at_one_width, rel=0.05)
+
+
+def test_good_light_passes_silently():
+    assert check(light(1e-3), ("cam",)).edge_power == 0
+
+
+def test_light_near_the_edge_is_warned_about_and_then_refused():
+    with pytest.warns(SamplingWarning, match=r"lens: 5.00% of the power near the edge"):
+        check(light(1e-3, edge_power=0.05), ("lens",))
+    with pytest.raises(SamplingError, match=r"30.00% cut off by the band limit"):
+        check(light(1e-3, discarded=0.3), ("lens",))
