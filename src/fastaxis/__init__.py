@@ -87,14 +87,18 @@ if TYPE_CHECKING:
         PlaneWave,
         R,
         SampledMode,
+        Source,
         State,
+        StateMixture,
         Term,
         V,
+        coherent_source,
         elliptical,
         from_jones,
         from_stokes,
         helicity,
         linear,
+        make_source,
         partially_polarized,
     )
     from fastaxis.maths import Pattern
@@ -111,8 +115,8 @@ _HOMES = {
     "PolarizingBeamSplitter Polarizer QPlate QuarterWavePlate RectangularAperture Retarder Rotator Slit SpiralPlate Wedge",
     "errors": "FastaxisError FastaxisWarning FileFormatError ParameterError SamplingError SamplingWarning SlipWarning "
     "SymbolError WiringError WiringWarning",
-    "light": "UNPOLARIZED A Beam D FlatTop Gaussian H HermiteGauss L LaguerreGauss PlaneWave R SampledMode State Term V "
-    "elliptical from_jones from_stokes helicity linear partially_polarized",
+    "light": "UNPOLARIZED A Beam D FlatTop Gaussian H HermiteGauss L LaguerreGauss PlaneWave R SampledMode Source State "
+    "StateMixture Term V coherent_source elliptical from_jones from_stokes helicity linear make_source partially_polarized",
     "maths": "Pattern",
     "plan": "Grid",
     "train": "Train",
