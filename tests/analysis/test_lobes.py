@@ -107,3 +107,26 @@ def test_axes_that_do_not_belong_to_the_picture_are_refused(plane):
         ParameterError, match=r"picture of shape \(81, 101\), x of 81, y of 101; a picture has rows along y"
     ):
         lobes(np.ones((81, 101)), x=plane.y, y=plane.x)
+
+
+def test_large_pictures_are_binned_and_small_spots_in_them_are_not_lost():
+    axis = (np.arange(1600) - 799.5) / 1600
+    X, Y = np.meshgrid(axis, axis)
+    for w in (0.3, 0.02):  # 480 and 32 pixels
+        u = X * math.cos(0.4) + Y * math.sin(0.4)
+        found = lobes(u**2 * np.exp(-2 * (X**2 + Y**2) / w**2), x=axis, y=axis)
+        # The wider beam is cut at 1.67 w, where a round taper still leaves the sum of a cosine alone.
+        assert (found.count, found.angle) == (2, pytest.approx(0.4, abs=1e-4))
+
+
+def test_light_in_the_corners_alone_says_nothing(plane):
+    corner = np.zeros((81, 101))
+    corner[0, 0] = 1.0
+    assert lobes(corner, **plane.axes).count == 0
+
+
+@pytest.mark.parametrize("w", [1.0, 2.0, 3.0, 5.0])
+def test_a_round_ring_of_few_pixels_is_round(w):
+    axis = np.arange(-12, 13) / w
+    r2 = axis**2 + axis[:, None] ** 2
+    assert lobes(r2 * np.exp(-2 * r2), x=axis, y=axis).count == 0

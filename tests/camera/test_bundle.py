@@ -113,7 +113,7 @@ def test_a_setting_of_an_unknown_kind_is_refused(shots, tmp_path):
     with np.load(path) as arrays:
         kept = dict(arrays)
     about = json.loads(str(kept["about"]))
-    about["settings"][0]["kind"] = "Amplitude"
+    about["settings"][0] = {"kind": "Amplitude", "power": 1.0}
     np.savez(path, **(kept | {"about": np.array(json.dumps(about))}))
     with pytest.raises(FileFormatError, match="not a whole"):
         load(path)

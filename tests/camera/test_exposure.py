@@ -1,9 +1,11 @@
 """Frames, views and the table of an exposure."""
 
+from dataclasses import replace
+
 import numpy as np
 import pytest
 
-from fastaxis.camera import no_analyzer, plate_then_polarizer
+from fastaxis.camera import load, no_analyzer, plate_then_polarizer, read_pictures
 from fastaxis.camera.exposure import Exposure
 from fastaxis.conventions import View, stamp
 from fastaxis.errors import ParameterError
@@ -129,3 +131,19 @@ def test_the_same_setting_twice_is_no_riddle(shots):
         stokes=shots.stokes, settings=shots.settings[:1] * 2, x=shots.x, y=shots.y, pixel=1e-5, wavelength=633e-9
     )
     np.testing.assert_array_equal(twice.frame("H"), shots.frame("H"))
+
+
+def test_the_axis_outside_the_sensor_leaves_the_table_without_lobes(shots):
+    aside = replace(shots, x=shots.x + 1e-3)
+    assert [(row.lobes, row.power) for row in aside.table()] == [(0, shots.power(k)) for k in range(6)]
+
+
+def test_a_line_camera_has_a_table(shots):
+    line = replace(shots, stokes=shots.stokes[:, :1], y=np.zeros(1))
+    assert line.table()[0].lobes == 0
+
+
+def test_saving_by_name(shots, tmp_path):
+    np.testing.assert_array_equal(load(shots.save(tmp_path / "run.npz")).frames, shots.frames)
+    assert read_pictures(shots.save_tiff(tmp_path / "run.tiff")).labels == shots.labels
+    assert len(shots.save_pngs(tmp_path / "run")) == 6

@@ -53,7 +53,7 @@ def lobes(
     x, y : centres of columns and rows [m].
     centre : about which the lobes are counted [m]; the axis of the beam if left out.
     least : contrast from which a modulation counts as lobes; 5 % is what an eye sees on a screen.
-    most : largest count looked for.
+    most : largest count looked for; fewer in a small picture, where lobes would be narrower than four pixels.
 
     Raises
     ------
@@ -96,9 +96,12 @@ def _dominant(contents: NDArray[np.complex128], least: float) -> Lobes:
 
 
 def _contents(frame: Reals, x: Reals, y: Reals, centre: tuple[float, float], most: int) -> NDArray[np.complex128]:
-    """Twice sum(I u^m) / sum(I |u|^m) for m = 1 .. most."""
-    limit = inscribed_radius(x, y, centre)
-    dx, dy = x - centre[0], y - centre[1]
+    """Twice sum(I u^m) / sum(I |u|^m) for m = 1 .. most, or fewer in a picture of few pixels."""
+    spread = _spread(frame, x - centre[0], y - centre[1])
+    limit = min(inscribed_radius(x, y, centre), 4 * spread)
+    # Lobes narrower than four pixels can't be told from the pixels themselves.
+    most = min(most, max(2, int(2 * math.pi * spread / (4 * (x[1] - x[0])))))
+    frame, dx, dy = _binned(*_cropped(frame, x - centre[0], y - centre[1], limit))
     r2 = dx**2 + dy[:, None] ** 2
     # Beyond the inscribed circle only the corners look on, and they have a fourfold content of their own.
     light = np.where(r2 <= limit**2, frame, 0.0) * _taper(np.sqrt(r2) / limit)
@@ -114,6 +117,27 @@ def _contents(frame: Reals, x: Reals, y: Reals, centre: tuple[float, float], mos
         weight *= size
         contents[m] = 2 * weighted.sum() / weight.sum()
     return contents
+
+
+def _spread(frame: Reals, dx: Reals, dy: Reals) -> float:
+    """Root mean square distance from the centre [m]: four of it hold all the light that shapes a picture."""
+    return math.sqrt(float(frame.sum(axis=0) @ dx**2 + frame.sum(axis=1) @ dy**2) / float(frame.sum()))
+
+
+def _cropped(frame: Reals, dx: Reals, dy: Reals, limit: float) -> tuple[Reals, Reals, Reals]:
+    columns, rows = np.flatnonzero(np.abs(dx) <= limit), np.flatnonzero(np.abs(dy) <= limit)
+    across, along = slice(columns[0], columns[-1] + 1), slice(rows[0], rows[-1] + 1)
+    return frame[along, across], dx[across], dy[along]
+
+
+def _binned(frame: Reals, dx: Reals, dy: Reals) -> tuple[Reals, Reals, Reals]:
+    """At most about 512 pixels a side, neighbours added up: the lobes counted here are many pixels wide."""
+    k = max(frame.shape) // 512
+    if k < 2:
+        return frame, dx, dy
+    ny, nx = frame.shape[0] // k, frame.shape[1] // k
+    blocks = frame[: ny * k, : nx * k].reshape(ny, k, nx, k).sum(axis=(1, 3))
+    return blocks, dx[: nx * k].reshape(nx, k).mean(axis=1), dy[: ny * k].reshape(ny, k).mean(axis=1)
 
 
 def _taper(share: Reals) -> Reals:

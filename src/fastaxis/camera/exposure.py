@@ -2,7 +2,9 @@
 
 from __future__ import annotations
 
+import math
 from dataclasses import dataclass, field, replace
+from pathlib import Path
 from typing import Any
 
 import numpy as np
@@ -28,8 +30,8 @@ class Row:
     label : of the setting.
     power : on the sensor [W].
     peak : brightest pixel: irradiance [W/m^2], or power [W] for a detector.
-    lobes : bright lobes about the axis of the beam, 0 for a round picture.
-    angle : of a bright lobe [rad], counter-clockwise from x, in [0, 2 pi / lobes); nan for a round picture.
+    lobes : bright lobes about the axis of the beam; 0 for a round picture, and if the axis is not on the sensor.
+    angle : of a bright lobe [rad], counter-clockwise from x, in [0, 2 pi / lobes); nan where there are no lobes.
     """
 
     label: str
@@ -181,5 +183,27 @@ class Exposure:
     def _row(self, k: int) -> Row:
         frame = self.frame(k)
         area = 1.0 if self.pixel is None else self.pixel**2
-        lobes = late("analysis.lobes", "lobes")(frame, x=self.x, y=self.y)
-        return Row(self.labels[k], float(frame.sum()), float(frame.max()) / area, lobes.count, lobes.angle)
+        lobes, angle = self._lobes(frame)
+        return Row(self.labels[k], float(frame.sum()), float(frame.max()) / area, lobes, angle)
+
+    def _lobes(self, frame: NDArray[np.float64]) -> tuple[int, float]:
+        x, y = self.x, self.y
+        if min(frame.shape) < 3 or not x[0] < 0 < x[-1] or not y[0] < 0 < y[-1]:
+            return 0, math.nan
+        found = late("analysis.lobes", "lobes")(frame, x=x, y=y)
+        return found.count, found.angle
+
+    def save(self, path: str | Path) -> Path:
+        """Keep everything in an .npz file; ``fastaxis.camera.load`` reads it back."""
+        return Path(late("camera.bundle", "save")(self, path))
+
+    def save_tiff(self, path: str | Path) -> Path:
+        """All frames as the pages of one 16-bit TIFF on one watt scale."""
+        return Path(late("camera.pictures", "save_tiff")(self, path))
+
+    def save_pngs(self, folder: str | Path) -> tuple[Path, ...]:
+        """One 16-bit PNG for each setting on one watt scale."""
+        return tuple(late("camera.pictures", "save_pngs")(self, folder))
+
+    def __str__(self) -> str:
+        return str(late("camera.listing", "listing")(self))

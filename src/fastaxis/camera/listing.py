@@ -1,0 +1,32 @@
+"""An exposure in words: a line a setting, and the signs."""
+
+from __future__ import annotations
+
+import math
+from typing import TYPE_CHECKING
+
+if TYPE_CHECKING:
+    from fastaxis.camera.exposure import Exposure, Row
+
+__all__ = ["listing"]
+
+_STEPS = ((1.0, "W"), (1e-3, "mW"), (1e-6, "uW"), (1e-9, "nW"))
+
+
+def listing(shots: Exposure) -> str:
+    """Power, lobes and the angle of a bright lobe for each setting, closed by the line of signs."""
+    rows = shots.table()
+    width = max(len(row.label) for row in rows)
+    head = ", ".join(word for word in (shots.name, shots.target) if word) or "exposure"
+    return "\n".join([head, *(f"  {row.label:<{width}}  {_words(row)}" for row in rows), shots.stamp])
+
+
+def _words(row: Row) -> str:
+    if row.lobes == 0:
+        return _watts(row.power)
+    return f"{_watts(row.power)}  {row.lobes} lobe{'s' * (row.lobes > 1)} at {math.degrees(row.angle):.1f}°"
+
+
+def _watts(power: float) -> str:
+    scale, unit = next((step for step in _STEPS if power >= step[0]), _STEPS[-1])
+    return f"{power / scale:9.4g} {unit:<2}"
