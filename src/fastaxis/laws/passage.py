@@ -17,7 +17,8 @@ __all__ = ["Flip", "Law", "Passage"]
 class Flip:
     """The change of the transverse frame at a reflection: x -> -x (or y -> -y for a vertical fold).
 
-    It moves places only; the polarization part diag(1, -1) belongs to the mirror's axis law.
+    It moves places only; the polarization part, diag(1, -1) for x and diag(-1, 1) for y, belongs to the mirror's
+    axis law.
     """
 
     axis: str = "x"

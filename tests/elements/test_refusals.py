@@ -1,0 +1,186 @@
+"""Every slip gets one sentence with the part, the value, the rule and a fix; and every fix, pasted, works."""
+
+import math
+
+import numpy as np
+import pytest
+import sympy
+
+import fastaxis.elements as parts
+from fastaxis import light, units
+from fastaxis.errors import ParameterError, SymbolError
+
+PASTE = vars(units) | vars(light) | {"np": np}
+WAY = {"power": 5e-3}
+SLIPS = [
+    # part, what is given, how the message reads before the fix
+    (
+        "HalfWavePlate",
+        {"fast": 22.5},
+        "fast = 22.5; fast is in radians and 22.5 rad is 3.6 turns: write degrees as 45*deg",
+    ),
+    ("HalfWavePlate", {}, "fast = None, slow = None; a plate has its axis named once, as fast= or as slow="),
+    ("HalfWavePlate", {"fast": 0.1, "slow": 0.2}, "fast = 0.1, slow = 0.2; a plate has its axis named once"),
+    (
+        "Retarder",
+        {"fast": 0.1, "retardance": 90},
+        "retardance = 90.0; retardance is in radians and 90 rad is 14.3 turns",
+    ),
+    ("Retarder", {"fast": math.nan}, "fast = nan; fast must be one real, finite number or a symbol"),
+    ("Retarder", {"fast": "22.5"}, "fast = '22.5'; fast must be one real, finite number or a symbol"),
+    ("Retarder", {"fast": 1j}, "fast = 1j; fast must be one real, finite number or a symbol"),
+    ("Retarder", {"fast": sympy.I}, "fast = I; fast must be real and finite"),
+    ("Retarder", {"fast": 0, "transmission": 1.2}, "transmission = 1.2; transmission is a share of power"),
+    ("Retarder", {"fast": 0, "design": 633}, "design = 633.0; design is in metres and must lie between 10 nm and 1 mm"),
+    (
+        "Retarder",
+        {"fast": 0, "order": 3},
+        "order = 3, design = None; order counts whole waves at the design wavelength",
+    ),
+    ("Retarder", {"fast": 0, "order": 1.5, "design": 6e-7}, "order = 1.5; order must be a whole number, 0 or more"),
+    ("Retarder", {"fast": 0, "order": -1, "design": 6e-7}, "order = -1.0; order must be a whole number, 0 or more"),
+    ("QPlate", {"q": 0.3}, "q = 0.3; q must be a multiple of 1/2 (0.5, 1, 1.5 ...): any other value leaves a cut"),
+    ("QPlate", {"q": 0.5, "offset": 45}, "offset = 45.0; offset is in radians and 45 rad is 7.2 turns"),
+    ("QPlate", {"q": 0.5, "centre": 0.1}, "centre = 0.1; centre must be a pair (x, y) in metres"),
+    ("QPlate", {"q": 0.5, "centre": (2.0, 0)}, "centre x = 2.0; centre x is in metres and 2 m is beyond 1 m"),
+    ("Polarizer", {"axis": 0, "extinction": 1e-5}, "extinction = 1e-05; extinction is the ratio T1/T2"),
+    ("Polarizer", {"axis": 0, "extinction": -3}, "extinction = -3.0; extinction is the ratio T1/T2"),
+    ("Polarizer", {"axis": 45}, "axis = 45.0; axis is in radians"),
+    (
+        "PatternedRetarder",
+        {"fast": np.zeros((4, 4))},
+        "pixel is not given; fast as an array needs the side of its cells",
+    ),
+    (
+        "PatternedRetarder",
+        {"fast": np.zeros(4), "pixel": 8e-6},
+        "fast has shape (4,) and type float64; fast as an array",
+    ),
+    ("PatternedRetarder", {}, "neither of fast and slow given; a plate has its axis named once"),
+    (
+        "PatternedRetarder",
+        {"fast": lambda x, y: math.atan2(y, x)},
+        "fast is a function that does not; fast as a function",
+    ),
+    (
+        "PatternedPolarizer",
+        {"axis": lambda x, y: 1.0},
+        "axis is a function that does not; axis as a function takes arrays",
+    ),
+    ("PatternedPolarizer", {"axis": np.zeros((2, 2)), "pixel": 8}, "pixel = 8.0; pixel is in metres and 8 m is beyond"),
+    ("Rotator", {"angle": 90}, "angle = 90.0; angle is in radians and 90 rad is 14.3 turns"),
+    ("FaradayRotator", {"angle": 0, "transmission": -0.1}, "transmission = -0.1; transmission is a share of power"),
+    ("FreeSpace", {"distance": -0.5}, "distance = -0.5; distance must be zero or more"),
+    ("Lens", {"focal": 0}, "focal = 0; a focal length of zero would turn light by any angle"),
+    ("Lens", {"focal": 0.5, "radius": 12.7}, "radius = 12.7; radius is in metres and 12.7 m is beyond 1 m: its unit"),
+    ("Aperture", {"radius": 0}, "radius = 0.0; radius must be positive"),
+    (
+        "Aperture",
+        {"radius": 2},
+        "radius = 2.0; radius is in metres and 2 m is beyond 1 m: its unit is probably missing",
+    ),
+    ("Annulus", {"inner": 2e-3, "outer": 1e-3}, "inner = 0.002, outer = 0.001; the inner radius of a ring is smaller"),
+    ("Slit", {"width": 1e-4, "angle": 45}, "angle = 45.0; angle is in radians"),
+    ("SpiralPlate", {"charge": 1.4}, "charge = 1.4; charge must be a whole number"),
+    ("NeutralDensity", {}, "density = None, transmission = None; a grey filter is given once"),
+    ("NeutralDensity", {"density": -2}, "density = -2; an optical density below zero would be gain"),
+    (
+        "Mask",
+        {"transmission": np.full((2, 2), 2.0), "pixel": 8e-6},
+        "transmission runs from 2 to 2; transmission is a share",
+    ),
+    ("Wedge", {"x": 2}, "x = 2; a thin wedge turns the beam by at most 0.3 rad"),
+    ("PhaseShift", {"phase": 180}, "phase = 180.0; phase is in radians"),
+    ("Mirror", {"fold": "sideways"}, "fold = 'sideways'; a mirror folds the beam \"horizontal\""),
+    ("Mirror", {"Rp": 1.01}, "Rp = 1.01; Rp is a share of power"),
+    ("BeamSplitter", {"reflectance": 50}, "reflectance = 50.0; reflectance is a share of power"),
+    ("PolarizingBeamSplitter", {"Tp": 1.5}, "Tp = 1.5; Tp is a share of power"),
+    (
+        "Camera",
+        {"pixel": 3.45},
+        "pixel = 3.45; pixel is in metres and 3.45 m is beyond 0.01 m: its unit is probably missing",
+    ),
+    ("Camera", {"pixel": 1e-6, "shape": 512}, "shape = 512; shape is a pair (ny, nx) of whole numbers of pixels"),
+    ("Camera", {"pixel": 1e-6, "shape": (0, 5)}, "shape = (0, 5); shape is a pair (ny, nx) of whole numbers of pixels"),
+    ("Camera", {"pixel": 1e-6, "orientation": "left"}, "orientation = 'left'; orientation is one of 'upright'"),
+    ("Laser", WAY, "none given; the shape of a laser beam is given once"),
+    (
+        "Laser",
+        {"waist": 1e-3, "mode": light.Gaussian(1e-3)},
+        "waist and mode given; the shape of a laser beam is given",
+    ),
+    ("Laser", {"waist": 80}, "waist = 80.0; waist is in metres and 80 m is beyond 1 m: its unit is probably missing"),
+    ("Laser", {"waist": 1e-3, "power": 0}, "power = 0.0; power must be positive"),
+    ("Laser", {"waist": 1e-3, "state": "H"}, "state = 'H'; state is a polarization state or a mixture of states"),
+    ("Laser", {"mode": "TEM00"}, "mode = 'TEM00'; mode is a transverse mode"),
+    ("Laser", {"beam": "TEM00"}, "beam = 'TEM00'; beam is a Beam of Terms"),
+    ("Laser", {"incoherent": [0.5]}, "part 0.5; each incoherent part is (weight, Beam) or (weight, Beam, wavelength)"),
+]
+
+
+@pytest.mark.parametrize(("kind", "given", "reads"), SLIPS, ids=lambda value: value if isinstance(value, str) else None)
+def test_slip_is_told_in_one_sentence_and_its_fix_works(kind, given, reads):
+    make = getattr(parts, kind)
+    with pytest.raises(ParameterError) as refusal:
+        make(name="it", **given)
+    sentence = str(refusal.value)
+    assert sentence.startswith(f"it: {reads}")
+    assert sentence.count("(fix: ") == 1
+    assert "\n" not in sentence
+    fixed = eval(f"dict({refusal.value.fix})", dict(PASTE))
+    make(name="it", **_merged(kind, given, fixed))
+
+
+def _merged(kind, given, fixed):
+    """What is given with the fix pasted over it; a plate's axis and a laser's shape take the place of the others."""
+    groups = ({"fast", "slow"}, {"waist", "mode", "beam", "incoherent"})
+    dropped = {name for group in groups if group & fixed.keys() for name in group}
+    return {name: value for name, value in given.items() if name not in dropped} | fixed
+
+
+def test_a_centre_needs_no_unit_to_be_a_pair():
+    with pytest.raises(ParameterError, match="centre must be a pair"):
+        parts.Aperture(radius=1e-3, centre=(1e-3, 0, 0))
+
+
+def test_a_waist_place_belongs_to_a_waist():
+    with pytest.raises(ParameterError) as refusal:
+        parts.Laser(name="it", mode=light.Gaussian(1e-3), waist_at=0.2)
+    assert str(refusal.value).startswith(
+        "it: waist_at = 0.2, centre = (0.0, 0.0); waist_at and centre place the Gaussian"
+    )
+    parts.Laser(**eval(f"dict({refusal.value.fix})", dict(PASTE)))
+
+
+def test_terms_bring_their_own_states():
+    beam = light.Beam((light.Term(1, light.Gaussian(1e-3), light.H),))
+    with pytest.raises(ParameterError) as refusal:
+        parts.Laser(name="it", beam=beam, state=light.D)
+    assert (
+        str(refusal.value)
+        == "it: state given beside beam; the terms of a beam have their states already (fix: state=None)"
+    )
+    parts.Laser(beam=beam, **eval(f"dict({refusal.value.fix})"))
+
+
+def test_an_edge_needs_a_number():
+    with pytest.raises(SymbolError) as refusal:
+        parts.KnifeEdge(name="it", angle=sympy.Symbol("a"))
+    assert (
+        str(refusal.value)
+        == "it: angle = a; an edge is drawn on a grid and needs its angle as a number (fix: angle=45*deg)"
+    )
+    parts.KnifeEdge(**eval(f"dict({refusal.value.fix})", dict(PASTE)))
+
+
+def test_unknown_parameter_names_the_likely_one():
+    with pytest.raises(ParameterError) as refusal:
+        parts.Polarizer(axis=0.0, name="pol").changed(axes=0.3)
+    assert str(refusal.value) == (
+        "pol: no parameter 'axes'; Polarizer has the parameters axis, extinction, transmission (fix: \"pol.axis\")"
+    )
+
+
+def test_changed_values_are_checked_too():
+    with pytest.raises(ParameterError, match="q must be a multiple of 1/2"):
+        parts.QPlate(q=0.5).changed(q=0.3)
