@@ -1,0 +1,64 @@
+import numpy as np
+import pytest
+
+from fastaxis.camera.sets import rotating_plate
+from fastaxis.conventions import View
+from fastaxis.light import linear
+from fastaxis.light.raster import Raster
+from fastaxis.report.frames import draw_frames, layout
+
+
+def pictures(figure):
+    return [axes for axes in figure.axes if axes.images and axes.get_xlabel()]
+
+
+@pytest.mark.parametrize("count", [1, 2, 5, 7, 20])
+def test_a_layout_has_room_for_all(count):
+    rows, columns = layout(count)
+    assert rows * columns >= count
+    assert rows <= columns
+
+
+def test_all_pictures_share_one_scale_that_starts_at_zero(six_shots):
+    axes = pictures(draw_frames(six_shots))
+    limits = {one.images[0].get_clim() for one in axes}
+    assert len(axes) == 6
+    assert len(limits) == 1
+    low, high = limits.pop()
+    assert low == 0
+    # The scale is in microwatts a pixel and ends at the brightest pixel of all frames.
+    assert high == pytest.approx(six_shots.frames.max() * 1e6)
+
+
+def test_each_picture_has_its_setting_and_the_power_of_the_whole_camera(six_shots):
+    axes = pictures(draw_frames(six_shots))
+    assert [one.get_title() for one in axes] == ["H", "V", "D", "A", "R", "L"]
+    assert all(one.get_xlabel().startswith("2.00 mW") for one in axes)
+
+
+def test_the_picture_is_the_frame_with_y_up(six_shots):
+    axes = pictures(draw_frames(six_shots, full=True))
+    image = axes[2].images[0]
+    assert image.origin == "lower"
+    assert np.allclose(image.get_array(), six_shots.frame("D") * 1e6)
+
+
+def test_r_and_l_are_named_as_the_exposure_names_them(six_shots):
+    turned = pictures(draw_frames(six_shots.in_view(View.SOURCE)))
+    assert [one.get_title() for one in turned][4:] == ["L", "R"]
+
+
+@pytest.mark.parametrize("count", [1, 4, 6, 16])
+def test_no_text_lies_on_another_or_outside(poincare_shots, assert_nothing_collides, count):
+    assert_nothing_collides(draw_frames(poincare_shots([linear(k * np.pi / count) for k in range(count)])))
+
+
+def test_64_long_names_fit(poincare_shots, assert_nothing_collides):
+    figure = draw_frames(poincare_shots(rotating_plate(64)))
+    assert_nothing_collides(figure)
+    assert figure._suptitle.get_text() == "Saltpan, cam: plate fast …, polarizer 0°"
+
+
+def test_no_light_is_drawn_without_a_complaint(exposure):
+    figure = draw_frames(exposure(np.zeros((4, 6, 8)), Raster(1e-5, (6, 8))))
+    assert pictures(figure)[0].get_xlabel().startswith("0 W")

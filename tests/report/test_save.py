@@ -1,0 +1,51 @@
+import pytest
+from PIL import Image
+
+from fastaxis.conventions import View, stamp
+from fastaxis.errors import FileFormatError
+from fastaxis.report.save import save
+from fastaxis.report.style import footer, new_figure
+
+
+@pytest.fixture
+def figure():
+    made = new_figure(3, 2)
+    made.subplots().plot([0, 1], [0, 1])
+    footer(made)
+    return made
+
+
+def test_a_png_and_a_vector_pdf_with_the_stamp_inside(figure, tmp_path):
+    png, pdf = save(figure, tmp_path / "new" / "bench", view=View.SOURCE)
+    with Image.open(png) as image:
+        assert image.text["Description"] == stamp(View.SOURCE)
+    data = pdf.read_bytes()
+    assert data.startswith(b"%PDF")
+    assert b"/Subtype /Image" not in data
+
+
+def test_the_same_figure_writes_the_same_bytes(figure, tmp_path):
+    first, second = (save(figure, tmp_path / name, ["pdf"])[0].read_bytes() for name in ("a", "b"))
+    assert first == second
+
+
+def test_an_interrupted_write_leaves_the_older_file_whole(figure, tmp_path, monkeypatch):
+    (path,) = save(figure, tmp_path / "bench", ["png"])
+    before = path.read_bytes()
+
+    def stopped(unfinished, **_):
+        with open(unfinished, "wb") as file:
+            file.write(b"half")
+        raise KeyboardInterrupt
+
+    monkeypatch.setattr(figure, "savefig", stopped)
+    with pytest.raises(KeyboardInterrupt):
+        save(figure, tmp_path / "bench", ["png"])
+    assert path.read_bytes() == before
+    assert list(tmp_path.iterdir()) == [path]
+
+
+def test_another_format_is_refused(figure, tmp_path):
+    with pytest.raises(FileFormatError, match=r"bench: gif; figures are written as png and pdf \(fix: \"pdf\"\)"):
+        save(figure, tmp_path / "bench", ["gif"])
+    assert not list(tmp_path.iterdir())
