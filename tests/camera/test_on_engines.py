@@ -135,3 +135,28 @@ def test_a_real_exposure_survives_its_file(plain, tmp_path):
     np.testing.assert_array_equal(back.frames, plain.frames)
     assert back.guard == plain.guard
     assert back.plan == plain.plan
+
+
+# A. M. Beckley, T. G. Brown, M. A. Alonso, Opt. Express 18, 10777 (2010): S3 runs as (1 - rho^2)/(1 + rho^2), rho^2 = 2 r^2/w^2, towards
+# the state of the core, the azimuth as phi/2. Here it goes through eight frames of a rotating plate first.
+
+
+def test_a_full_poincare_beam_is_mapped_by_a_rotating_plate():
+    w = 0.9 * mm
+    core = fa.Term(np.sqrt(0.5), fa.LaguerreGauss(p=0, l=0, waist=w), fa.L)
+    around = fa.Term(np.sqrt(0.5), fa.LaguerreGauss(p=0, l=1, waist=w), fa.R)
+    train = fa.Train(wavelength=633 * nm, name="Saltpan")
+    train.along(
+        fa.Laser(beam=fa.Beam((core, around)), power=1 * mW, name="laser"),
+        fa.Camera(pixel=10 * um, shape=(200, 200), name="cam"),
+    )
+    shots = train.expose("cam", fa.rotating_plate(8))
+    s0, s1, s2, s3 = reconstruct(shots.frames, shots.settings).stokes
+    x, y = np.meshgrid(shots.x, shots.y)
+    rho2 = 2 * (x**2 + y**2) / w**2
+    # A square pixel averages: (10 um)^2/24 times the Laplacian of S3/S0, at most 16/w^2 (in the middle), is 8.23e-5.
+    np.testing.assert_allclose(s3 / s0, -(1 - rho2) / (1 + rho2), atol=8.3e-5)
+    turn = (s1 + 1j * s2) / np.hypot(s1, s2) * np.exp(-1j * np.arctan2(y, x))
+    # L core with l = +1 around: the long axis turns by half of phi, a lemon. At the middle four pixels phi itself changes within one.
+    away = rho2 > 0.01
+    assert np.ptp(np.angle(turn[away] / turn[0, 0])) < 1e-3

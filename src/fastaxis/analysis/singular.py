@@ -80,6 +80,14 @@ def l_line_radius(stokes: Any, *, x: Any, y: Any, centre: tuple[float, float] = 
     Raises
     ------
     ParameterError : the mean of S3 does not change sign.
+
+    Examples
+    --------
+    >>> axis = np.arange(-20, 21) * 0.1
+    >>> r2 = axis**2 + axis[:, None] ** 2
+    >>> stokes = np.stack([1 + r2, 0 * r2, 0 * r2, 1 - r2])
+    >>> round(l_line_radius(stokes, x=axis, y=axis), 6)
+    1.0
     """
     stokes, x, y = checked(stokes, x, y)
     radii, s3 = radial_profile(stokes[3], x=x, y=y, centre=centre)

@@ -34,6 +34,15 @@ def sphere_wrapping(
     -----
     A. M. Beckley, T. G. Brown, M. A. Alonso, Opt. Express 18, 10777 (2010);
     S. Gao et al., Phys. Rev. A 102, 053513 (2020).
+
+    Examples
+    --------
+    >>> axis = np.arange(-50, 51) * 0.04
+    >>> x, y = np.meshgrid(axis, axis)
+    >>> half = 1 - x**2 - y**2  # stereographic: the rim r = 1 is the equator
+    >>> stokes = np.stack([1 + x**2 + y**2, 2 * x, 2 * y, half])
+    >>> round(sphere_wrapping(stokes, x=axis, y=axis, radius=1.0), 2)
+    0.5
     """
     stokes, x, y = checked(stokes, x, y)
     length = np.sqrt((stokes[1:] ** 2).sum(axis=0))

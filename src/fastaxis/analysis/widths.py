@@ -109,6 +109,13 @@ def radial_profile(
     Raises
     ------
     ParameterError : the centre is outside the picture.
+
+    Examples
+    --------
+    >>> axis = np.arange(-20, 21) * 0.1
+    >>> radii, means = radial_profile(axis**2 + axis[:, None] ** 2, x=axis, y=axis)
+    >>> round(float(means[40] / radii[40] ** 2), 6)
+    1.0
     """
     frame, x, y = checked(frame, x, y)
     step = (x[1] - x[0]) / 4
@@ -151,6 +158,12 @@ def fwhm(frame: Any, *, x: Any, y: Any, centre: tuple[float, float] = _ON_AXIS) 
     Raises
     ------
     ParameterError : the picture has not fallen to a half inside the largest circle that fits.
+
+    Examples
+    --------
+    >>> axis = np.arange(-40, 41) * 0.05
+    >>> round(fwhm(np.exp(-2 * (axis**2 + axis[:, None] ** 2)), x=axis, y=axis), 3)
+    1.177
     """
     radii, means = radial_profile(frame, x=x, y=y, centre=centre)
     half = means.max() / 2

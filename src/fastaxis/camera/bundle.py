@@ -44,6 +44,14 @@ def load(path: str | Path) -> Exposure:
     ------
     FileFormatError : not such a file, or a damaged one.
     FileNotFoundError : no file.
+
+    Examples
+    --------
+    >>> from pathlib import Path
+    >>> load(Path("shots.txt"))
+    Traceback (most recent call last):
+        ...
+    fastaxis.errors.FileFormatError: shots.txt: ends in '.txt'; an exposure is kept in an .npz file (fix: "shots.npz")
     """
     path = Path(path)
     _check_ending(path)

@@ -53,6 +53,17 @@ def expose(
     Raises
     ------
     ParameterError : no settings; a setting that is neither state nor analyzer; a target that takes no pictures.
+    SymbolError : a letter left open in a setting or in the train.
+
+    Examples
+    --------
+    >>> import fastaxis as fa
+    >>> from fastaxis.units import deg, mm, mW, nm
+    >>> train = fa.Train(wavelength=633*nm)
+    >>> _ = train.along(fa.Laser(waist=1*mm, power=4*mW, state=fa.H), fa.Detector(name="bucket"))
+    >>> shots = expose(train, "bucket", [fa.linear(30*deg), fa.V])
+    >>> round(shots.power(0) / mW, 9), shots.power("V")
+    (3.0, 0.0)
     """
     analyzers = as_settings(settings)
     weight_matrix(analyzers)  # letters are refused before anything is computed
