@@ -20,6 +20,7 @@ from fastaxis.elements import (
     Rotator,
     SpiralPlate,
 )
+from fastaxis.laws import Flip
 from fastaxis.light import A, D, H, L, LaguerreGauss, R, Raster, State, V, ellipse, stokes
 from fastaxis.maths import NUMBERS
 from fastaxis.units import deg, mm, nm, um
@@ -172,6 +173,55 @@ class TestReflections:
         assert t == pytest.approx(math.sqrt(0.7) * np.eye(2), abs=ROUNDING)
         assert r == pytest.approx(1j * math.sqrt(0.3) * np.diag([1, -1]), abs=ROUNDING)
         assert r @ t.conj().T + t @ r.conj().T == pytest.approx(np.zeros((2, 2)), abs=ROUNDING)
+
+
+class TestPicturesAfterReflections:
+    """Fields as functions of the place, taken step by step through real passages."""
+
+    @staticmethod
+    def through(steps, x, y, state):
+        """(Ex, Ey) at (x, y) behind the steps, for light of one state that fills the plane."""
+        if not steps:
+            return state.jones
+        *before, last = steps
+        if isinstance(last, Flip):
+            x, y = (-x, y) if last.axis == "x" else (x, -y)
+            return TestPicturesAfterReflections.through(before, x, y, state)
+        matrix = np.array(last.linear(NUMBERS, math.atan2(y, x)), dtype=complex)
+        return matrix @ TestPicturesAfterReflections.through(before, x, y, state)
+
+    def local_azimuth(self, folds, offset, phi):
+        """Azimuth relative to the radius, behind a tuned q = 1/2 plate and mirrors."""
+        steps = list(QPlate(q=0.5, offset=offset).passages(WAVELENGTH)["front", "back"].steps())
+        for fold in folds:
+            steps += Mirror(fold=fold).passages(WAVELENGTH)["front", "front"].steps()
+        field = self.through(steps, math.cos(phi), math.sin(phi), H)
+        s = stokes(field)
+        assert abs(s[3]) < ROUNDING
+        return math.remainder(math.atan2(s[2], s[1]) / 2 - phi, math.pi)
+
+    @pytest.mark.parametrize("folds", [["horizontal"], ["vertical"], ["horizontal", "vertical"], ["horizontal"] * 3])
+    @pytest.mark.parametrize("phi", [0.3, 1.4, -2.0])
+    def test_radial_stays_radial(self, folds, phi):
+        assert self.local_azimuth(folds, 0.0, phi) == pytest.approx(0, abs=ROUNDING)
+
+    @pytest.mark.parametrize(
+        ("folds", "sign"), [([], 1), (["horizontal"], -1), (["vertical"], -1), (["vertical"] * 2, 1)]
+    )
+    def test_a_spiral_changes_its_sense_at_each_reflection(self, folds, sign):
+        assert self.local_azimuth(folds, 10 * deg, 0.7) == pytest.approx(sign * 20 * deg, abs=ROUNDING)
+
+    @pytest.mark.parametrize("axis", ["x", "y"])
+    def test_charge_and_helicity_both_flip(self, axis):
+        fold = {"x": "horizontal", "y": "vertical"}[axis]
+        steps = [
+            *QPlate(q=0.5).passages(WAVELENGTH)["front", "back"].steps(),
+            *Mirror(fold=fold).passages(WAVELENGTH)["front", "front"].steps(),
+        ]
+        # L becomes R with l = +1 in the plate, and L with l = -1 in the mirror.
+        one, other = (self.through(steps, math.cos(phi), math.sin(phi), L) for phi in (0.2, 0.9))
+        assert np.vdot(L.jones, other) / np.vdot(L.jones, one) == pytest.approx(cmath.exp(-0.7j), abs=ROUNDING)
+        assert abs(np.vdot(R.jones, one)) < ROUNDING
 
 
 class TestBackwards:

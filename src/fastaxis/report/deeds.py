@@ -23,7 +23,7 @@ from fastaxis.laws import (
     Strip,
     TravelLaw,
 )
-from fastaxis.light import D, H, L, R
+from fastaxis.light import D, H, L, R, State
 from fastaxis.maths import NUMBERS, Pattern, free_symbols, is_symbolic
 from fastaxis.report.echo import degrees, length, percent, waves
 from fastaxis.report.matrices import Letters, matrix_lines
@@ -80,13 +80,26 @@ def _three_states(law: AxisLaw | CircularLaw, view: View) -> Iterator[tuple[str,
         elif isinstance(law, AxisLaw) and not free_symbols((*law.along.values, *law.across.values)) and _half_wave(law):
             # The hand changes, and linear light goes to the mirror image in the axis.
             yield name, "-> L" if name == "R" else f"-> linear at {Letters().exact(2 * law.angle - state.azimuth)}"
-        else:
-            letters = Letters()
-            ex, ey = state.linear(letters)
-            (a, b), (c, d) = law.linear(letters)
-            out = f"({letters.short(a * ex + b * ey)}, {letters.short(c * ex + d * ey)})"
-            if len(out) <= LONGEST:
-                yield name, f"-> {out}"
+        elif isinstance(law, AxisLaw) and law.across.power == 0:
+            yield name, f"-> linear at {law.angle}, {_malus(law, state)} of the power"
+        elif isinstance(law, CircularLaw) and law.left.power == law.right.power == 1:
+            yield name, f"-> {name if name == 'R' else f'linear at {Letters().exact(state.azimuth + law.right.phase)}'}"
+        elif len(out := _vector(law, state)) <= LONGEST:
+            yield name, f"-> {out}"
+
+
+def _vector(law: AxisLaw | CircularLaw, state: State) -> str:
+    """The Jones vector behind a law with letters."""
+    letters = Letters()
+    ex, ey = state.linear(letters)
+    return f"({', '.join(str(letters.short(a * ex + b * ey)) for a, b in law.linear(letters))})"
+
+
+def _malus(law: AxisLaw, state: State) -> str:
+    """Share of the power that an ideal polarizer with a letter for its axis passes."""
+    letters = Letters()
+    shape = letters.half if state.ellipticity else letters.cos(law.angle - state.azimuth) ** 2
+    return str(letters.number(law.along.power) * shape)
 
 
 def _matrix(law: AxisLaw | CircularLaw) -> NDArray[Any]:

@@ -33,7 +33,9 @@ class Letters:
         return number
 
     def phasor(self, angle: Any) -> Any:
-        return self.sympy.exp(self.sympy.I * self.exact(angle))
+        # As cosine and sine, so that the sum and difference of two phasors shorten by themselves: a general
+        # simplifier takes seconds for the card of one plate.
+        return self.cos(angle) + self.sympy.I * self.sin(angle)
 
     def cos(self, angle: Any) -> Any:
         return self.sympy.cos(self.exact(angle))
@@ -48,8 +50,8 @@ class Letters:
         return self.sympy.nsimplify(value, rational=True)
 
     def short(self, value: Any) -> Any:
-        """The shortest form that is found quickly."""
-        return self.sympy.simplify(self.sympy.sympify(value).rewrite(self.sympy.cos))
+        """A short form that is found quickly."""
+        return self.sympy.factor_terms(self.sympy.expand(value))
 
 
 def _complex(value: complex) -> str:
