@@ -5,6 +5,7 @@ import pytest
 from scipy.special import erf
 
 from fastaxis.engines.field import CLEAN
+from fastaxis.engines.grid import reading
 from fastaxis.engines.grid.interpolant import integral_matrix, value_matrix
 from fastaxis.engines.grid.light import GridLight, axis
 from fastaxis.engines.grid.reading import GridField
@@ -97,3 +98,21 @@ def test_matrices_are_the_sums_of_waves_they_stand_for():
     edges = np.array([-0.5, 0.1, 0.7])
     right = np.diff(np.sin(2 * np.pi * m * edges / 3 + 0.3) * 3 / (2 * np.pi * m), axis=1)
     assert np.allclose(integral_matrix(edges, count, pitch) @ waves.T, right.T)
+
+
+@pytest.mark.parametrize("pixel", [5e-6, 30e-6, 0.15e-3])
+def test_reading_near_a_small_camera_is_reading_from_the_whole_window(pixel, monkeypatch):
+    rng = np.random.default_rng(3)
+    x = axis(COUNT, PITCH)
+    # Noise up to the highest frequency: the worst a window can hold.
+    noise = rng.normal(size=(2, COUNT, COUNT)) + 1j * rng.normal(size=(2, COUNT, COUNT))
+    field = GridField(
+        GridLight(noise * np.exp(-(x[None] ** 2 + x[:, None] ** 2) / 4e-6), None, PITCH, 0.3, WAVELENGTH), CLEAN
+    )
+    raster = Raster(pixel, (9, 12), (0.3e-3, -0.2e-3))
+    near = field.stokes_on(raster)
+    monkeypatch.setattr(reading, "nearby", lambda *_: None)
+    whole = field.stokes_on(raster)
+    # The kernel's own 2e-14, on four Stokes images of two axes and a thousand waves.
+    assert np.allclose(near, whole, atol=2e-12 * whole[0].max())
+    assert abs(near - whole).max() > 0  # both ways were really taken

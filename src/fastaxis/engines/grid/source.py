@@ -54,7 +54,8 @@ def _softened(
     shifts = axis(SUB, pitch / SUB)
     parts = (mode.amplitude(x[columns] + dx, x[rows] + dy, wavelength) for dx in shifts for dy in shifts)
     shape[rows, columns] = sum(parts) / SUB**2
-    return shape / np.sqrt(np.vdot(shape, shape).real * pitch**2)
+    shape /= np.sqrt(np.vdot(shape, shape).real * pitch**2)
+    return shape
 
 
 def _fading(x: NDArray[np.float64], window: float) -> NDArray[np.float64]:
