@@ -23,6 +23,7 @@ __all__ = [
     "usual",
     "wavelength",
     "whole",
+    "whole_radians",
 ]
 
 LARGEST_ANGLE = 4 * math.pi  # two turns: a bare 22.5, 45 or 90 lies beyond
@@ -220,6 +221,19 @@ def usual(part: str, parameter: str, value: Any, most: float, *, fix: str) -> li
             f"{parameter} is in metres and rarely beyond {most:g} m: its unit may be missing",
             got=_got(part, parameter, value),
             fix=fix,
+        )
+    ]
+
+
+def whole_radians(part: str, parameter: str, value: Any) -> list[FastaxisWarning]:
+    """A caution for an angle of 4, 5, 10 ... radians exactly: small enough to pass, but it was meant in degrees."""
+    if not isinstance(value, float) or not value.is_integer() or abs(value) <= math.pi:
+        return []
+    return [
+        SlipWarning(
+            f"{parameter} is in radians and {value:g} rad is {math.degrees(value):.1f} deg: degrees are written 10*deg",
+            got=_got(part, parameter, value),
+            fix=f"{parameter}={value:g}*deg",
         )
     ]
 

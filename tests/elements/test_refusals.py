@@ -184,3 +184,32 @@ def test_unknown_parameter_names_the_likely_one():
 def test_changed_values_are_checked_too():
     with pytest.raises(ParameterError, match="q must be a multiple of 1/2"):
         parts.QPlate(q=0.5).changed(q=0.3)
+
+
+@pytest.mark.parametrize(
+    ("kind", "given", "fix"),
+    [
+        ("HalfWavePlate", {"fast": 10}, "fast=10*deg"),
+        ("Polarizer", {"axis": 5}, "axis=5*deg"),
+        ("QPlate", {"q": 0.5, "offset": -12}, "offset=-12*deg"),
+        ("Slit", {"width": 1e-3, "angle": 9}, "angle=9*deg"),
+        ("Rotator", {"angle": 7}, "angle=7*deg"),
+    ],
+)
+def test_a_few_whole_radians_are_a_caution(kind, given, fix):
+    part = getattr(parts, kind)(name="it", **given)
+    (caution,) = part.cautions(5e-7)
+    assert caution.fix == fix
+    assert part.changed(**eval(f"dict({fix})", dict(PASTE))).cautions(5e-7) == []
+
+
+def test_a_few_whole_radians_read_as_a_sentence():
+    (caution,) = parts.HalfWavePlate(fast=10, name="hwp").cautions(5e-7)
+    assert str(caution) == (
+        "hwp: fast = 10.0; fast is in radians and 10 rad is 573.0 deg: degrees are written 10*deg (fix: fast=10*deg)"
+    )
+
+
+@pytest.mark.parametrize("fast", [0, 1.0, -3, 4.5, sympy.Symbol("a"), math.pi])
+def test_other_angles_are_none(fast):
+    assert parts.HalfWavePlate(fast=fast).cautions(5e-7) == []

@@ -55,7 +55,8 @@ class _StopElement(ThroughElement):
 
     def cautions(self, wavelength: Scalar) -> list[FastaxisWarning]:
         lengths = [(n, v) for n, v in self.parameters().items() if n not in ("centre", "angle")]
-        return [c for n, v in lengths for c in checks.usual(self.label, n, v, 0.1, fix=f"{n}={v}*mm")]
+        found = [c for n, v in lengths for c in checks.usual(self.label, n, v, 0.1, fix=f"{n}={v}*mm")]
+        return super().cautions(wavelength) + found
 
 
 @dataclass(frozen=True, kw_only=True)

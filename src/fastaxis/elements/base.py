@@ -7,6 +7,7 @@ from dataclasses import dataclass, fields, replace
 from difflib import get_close_matches
 from typing import Any, ClassVar
 
+from fastaxis import checks
 from fastaxis.errors import FastaxisWarning, ParameterError
 from fastaxis.laws import Law, Passage
 from fastaxis.loader import late
@@ -14,6 +15,7 @@ from fastaxis.maths import Scalar, free_symbols
 
 __all__ = ["Element", "ThroughElement"]
 
+ANGLES = ("fast", "slow", "axis", "offset", "angle", "retardance")  # of which a few whole radians were meant as degrees
 Passages = Mapping[tuple[str, str], Passage]
 
 
@@ -71,7 +73,8 @@ class Element:
 
     def cautions(self, wavelength: Scalar) -> list[FastaxisWarning]:
         """What is possible but looks like a slip at a wavelength [m]; the train shows these."""
-        return []
+        given = self.parameters()
+        return [c for name in ANGLES if name in given for c in checks.whole_radians(self.label, name, given[name])]
 
     def _keep(self, **checked: Any) -> None:
         """Put checked values into this frozen part, while it is being made."""

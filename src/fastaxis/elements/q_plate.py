@@ -83,4 +83,4 @@ class QPlate(ThroughElement):
         return (AxisLaw(along, across, self.offset, self.q, self.centre),)
 
     def cautions(self, wavelength: Scalar) -> list[FastaxisWarning]:
-        return checks.near_design(self.label, self.design, wavelength)
+        return super().cautions(wavelength) + checks.near_design(self.label, self.design, wavelength)

@@ -96,7 +96,7 @@ class Retarder(ThroughElement):
         return (AxisLaw(along, across, self.fast_axis),)
 
     def cautions(self, wavelength: Scalar) -> list[FastaxisWarning]:
-        return checks.near_design(self.label, self.design, wavelength)
+        return super().cautions(wavelength) + checks.near_design(self.label, self.design, wavelength)
 
     def changed(self, **changes: Any) -> Element:
         # Naming one axis in a change un-names the other: the plate was turned, not declared twice.

@@ -64,4 +64,4 @@ class SpiralPlate(ThroughElement):
         return (ScalarLaw(Amplitude(self.transmission), charge=self.charge_at(wavelength), centre=self.centre),)
 
     def cautions(self, wavelength: Scalar) -> list[FastaxisWarning]:
-        return checks.near_design(self.label, self.design, wavelength)
+        return super().cautions(wavelength) + checks.near_design(self.label, self.design, wavelength)
