@@ -4,6 +4,9 @@ import pytest
 from fastaxis.engines.grid.guard import check, edge_watched, phase_step
 from fastaxis.engines.grid.light import GridLight, axis
 from fastaxis.errors import SamplingError, SamplingWarning
+from fastaxis.plan import Grid
+
+GRID = Grid(256, 25.6e-3)
 
 
 def light(width, curvature=0.0, count=256, pitch=0.1e-3, **options):
@@ -36,11 +39,11 @@ def test_phase_steps_are_those_where_the_light_is():
 
 
 def test_good_light_passes_silently():
-    assert check(light(1e-3), ("cam",)).edge_power == 0
+    assert check(light(1e-3), ("cam",), GRID).edge_power == 0
 
 
 def test_light_near_the_edge_is_warned_about_and_then_refused():
     with pytest.warns(SamplingWarning, match=r"lens: 5.00% of the power near the edge"):
-        check(light(1e-3, edge_power=0.05), ("lens",))
-    with pytest.raises(SamplingError, match=r"30.00% cut off by the band limit"):
-        check(light(1e-3, discarded=0.3), ("lens",))
+        check(light(1e-3, edge_power=0.05), ("lens",), GRID)
+    with pytest.raises(SamplingError, match=r"30.00% cut off by the band limit.*samples=512, window=0.0512"):
+        check(light(1e-3, discarded=0.3), ("lens",), GRID)

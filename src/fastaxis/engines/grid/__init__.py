@@ -27,7 +27,7 @@ def run(branch: Branch) -> GridField:
     for index, step in enumerate(branch.steps):
         light = _past(light, as_matrix(step) or step.law, sampling.hop(index))
     names = branch.steps[-1].names if branch.steps else ()
-    return GridField(light, check(light, names))
+    return GridField(light, check(light, names, sampling.grid))
 
 
 def _past(light: GridLight, law: StepLaw, hop: Hop | None) -> GridLight:

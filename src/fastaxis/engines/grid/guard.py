@@ -13,6 +13,7 @@ from numpy.typing import NDArray
 from fastaxis.engines.field import Guard
 from fastaxis.engines.grid.light import GridLight
 from fastaxis.errors import SamplingError, SamplingWarning
+from fastaxis.plan import Grid
 
 __all__ = ["check", "edge_watched", "phase_step"]
 
@@ -60,8 +61,11 @@ def _quantile(steps: NDArray[np.float64], weights: NDArray[np.float64]) -> float
     return float(steps[order[np.searchsorted(below, QUIET * below[-1])]])
 
 
-def check(light: GridLight, names: tuple[str, ...]) -> Guard:
+def check(light: GridLight, names: tuple[str, ...], grid: Grid) -> Guard:
     """The guard of finished light; warned about or refused where it is bad.
+
+    ``names`` are the parts of the last step, ``grid`` the samples at the source: the same pitch twice as wide is the
+    remedy named.
 
     Warns
     -----
@@ -78,7 +82,7 @@ def check(light: GridLight, names: tuple[str, ...]) -> Guard:
             "rule": "the samples must hold the light, with dark room around it",
             "got": f"{' '.join(names) or 'source'}: {guard.edge_power:.2%} of the power near the edge of the window, "
             f"{guard.discarded:.2%} cut off by the band limit",
-            "fix": f"grid=fa.Grid(samples={2 * light.count}, window=...) twice as wide",
+            "fix": f"grid=fa.Grid(samples={2 * grid.samples}, window={2 * grid.window:.4g})",
         }
         if worst > REFUSE:
             raise SamplingError(**message)
