@@ -10,7 +10,7 @@ from fastaxis.cli.bench_file import BenchFile
 from fastaxis.cli.choices import one_setting
 from fastaxis.cli.console import say
 from fastaxis.cli.targets import targets
-from fastaxis.conventions import View
+from fastaxis.conventions import View, stamp
 
 __all__ = ["derive"]
 
@@ -25,9 +25,10 @@ def derive(bench: BenchFile, options: Namespace) -> None:
             say(f"  {name} = {_latex(value) if options.latex else value}")
         for name, meaning in form.meanings.items():
             say(f"    with {name} = {_latex(meaning) if options.latex else meaning}")
-        for line in form.assumptions:
+        for line in form.assumptions[1:]:  # the first is the stamp, which closes the answer
             say(f"  assumed: {line}")
         say(f"  checked: {form.check()}")
+    say(stamp(options.view))
 
 
 def _quantities(form: Any, setting: str | None, view: View) -> Iterator[tuple[str, Any]]:

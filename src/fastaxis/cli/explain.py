@@ -4,38 +4,49 @@ from __future__ import annotations
 
 from argparse import Namespace
 from pathlib import Path
+from typing import Any
 
 from fastaxis.cli.bench_file import BenchFile
 from fastaxis.cli.console import say, tell
 from fastaxis.cli.safety import caution, port_powers
-from fastaxis.cli.targets import targets
+from fastaxis.cli.targets import recording
+from fastaxis.conventions import stamp
 from fastaxis.report.bench import draw_bench, reflections_in_words
+from fastaxis.report.prefix import readable
 from fastaxis.report.save import save
 
 __all__ = ["explain"]
 
 
 def explain(bench: BenchFile, options: Namespace) -> None:
-    """Print the parts and the plan of each camera, draw the bench, name open ports and cautions."""
+    """Print the parts and the plan of each camera, draw the bench, name open ports and cautions.
+
+    The drawing comes before the wiring is checked: a wrong joint is found most quickly on it.
+    """
     train = bench.train.with_values(dict(options.symbol)) if options.symbol else bench.train
     say(str(train))
+    powers = port_powers(train)
+    _draw(train, powers, bench, options)
     train.validate()
-    if options.cards:
-        for element in train.elements.values():
-            say()
-            say(str(element))
-    for target in targets(train, options.camera):
-        say()
-        say(f"{target}: {reflections_in_words(train, target)}")
-        if not train.symbols:
-            say(str(train.plan(target, grid=options.grid)))
-    powers = {} if train.symbols else port_powers(train)
-    out = Path(options.out) if options.out else Path(f"{bench.path.stem}_explained")
-    for path in save(
-        draw_bench(train, powers=powers, view=options.view), out / "bench", options.format, view=options.view
-    ):
-        say(f"Drawn in {path}")
-    if ports := train.open_ports():
-        say(f"Open ports: {', '.join(ports)}")
+    for element in train.elements.values() if options.cards else ():
+        say(f"\n{element}")
+    for target in [options.camera] if options.camera else recording(train):
+        _explain_target(train, target, options)
+    for port in train.open_ports():
+        say(f"\nopen: {port}" + (f", {readable(powers[port], 'W')}" if port in powers else ""))
+    say(stamp(options.view))
     if warning := caution(train, powers):
         tell(warning, style="bold yellow")
+
+
+def _draw(train: Any, powers: dict[str, float], bench: BenchFile, options: Namespace) -> None:
+    out = Path(options.out) if options.out else Path(f"{bench.path.stem}_explained")
+    figure = draw_bench(train, powers=powers, view=options.view)
+    for path in save(figure, out / "bench", options.format, view=options.view):
+        say(f"Drawn in {path}")
+
+
+def _explain_target(train: Any, target: str, options: Namespace) -> None:
+    say(f"\n{target}: {reflections_in_words(train, target)}")
+    if not train.symbols:
+        say(str(train.plan(target, grid=options.grid)).removesuffix(stamp()).rstrip())

@@ -29,6 +29,9 @@ def main(arguments: Sequence[str] | None = None) -> int:
     except (FastaxisError, BenchFileError) as error:
         tell(f"fastaxis: {error}", style="red")
         return BENCH_ERROR
+    except OSError as error:
+        tell(f"fastaxis: {error.filename or 'output'}: {error.strerror}", style="red")
+        return BENCH_ERROR
     except KeyboardInterrupt:
         tell("fastaxis: stopped; files already written are whole and stay where they are.")
         return INTERRUPTED

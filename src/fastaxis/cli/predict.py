@@ -3,17 +3,19 @@
 from __future__ import annotations
 
 from argparse import Namespace
+from collections.abc import Callable
 from pathlib import Path
 from typing import Any
 
-from fastaxis.camera import SIX_STATES
-from fastaxis.camera.bundle import save as save_bundle
-from fastaxis.camera.pictures import save_tiff
+from fastaxis.camera import SIX_STATES, save_tiff
+from fastaxis.camera import save as save_bundle
 from fastaxis.cli.bench_file import BenchFile
 from fastaxis.cli.console import progress, say, tell
 from fastaxis.cli.safety import caution, port_powers
 from fastaxis.cli.tables import exposure_table
 from fastaxis.cli.targets import targets
+from fastaxis.conventions import stamp
+from fastaxis.errors import SymbolError
 from fastaxis.report.bench import draw_bench
 from fastaxis.report.ellipses import draw_ellipses
 from fastaxis.report.frames import draw_frames
@@ -24,24 +26,35 @@ __all__ = ["predict"]
 
 
 def predict(bench: BenchFile, options: Namespace) -> None:
-    """Expose the cameras of a bench, write figures and data, and print a table."""
+    """Expose the cameras of a bench, write figures and data, and print a table.
+
+    Raises
+    ------
+    SymbolError : a letter of the bench has no value.
+    """
     train = bench.train.with_values(dict(options.symbol)) if options.symbol else bench.train
+    if train.symbols:
+        letters = sorted(map(str, train.symbols))
+        fix = " ".join(f"--symbol {letter}=0.3" for letter in letters)
+        raise SymbolError(
+            "a prediction needs a number for every letter", got=f"{train.name}: {', '.join(letters)} left open", fix=fix
+        )
     out = Path(options.out) if options.out else Path(f"{bench.path.stem}_predicted")
     settings = options.settings or bench.settings or SIX_STATES
     for target in targets(train, options.camera):
         _predict_one(train, target, settings, out, options)
     powers = port_powers(train)
     save(draw_bench(train, powers=powers, view=options.view), out / "bench", options.format, view=options.view)
+    say(stamp(options.view))
+    say(f"Written to {out}/")
     if warning := caution(train, powers):
         tell(warning, style="bold yellow")
-    say(f"Written to {out}/")
 
 
 def _predict_one(train: Any, target: str, settings: Any, out: Path, options: Namespace) -> None:
-    plan = train.plan(target, grid=options.grid)
-    say(str(plan))
-    with progress(target, 6) as move_on:
-        move_on(f"{target}: light")
+    # The plan closes with the stamp of the default view; the whole answer gets one stamp, of the view asked for.
+    say(str(train.plan(target, grid=options.grid)).removesuffix(stamp()).rstrip())
+    with progress(target, 5) as move_on:
         shots = train.expose(target, settings, grid=options.grid).in_view(options.view)
         move_on(f"{target}: data")
         out.mkdir(parents=True, exist_ok=True)
@@ -51,10 +64,9 @@ def _predict_one(train: Any, target: str, settings: Any, out: Path, options: Nam
             move_on(f"{target}: {word}")
             save(draw(shots), out / f"{target}_{word}", options.format, view=options.view)
     say(exposure_table(shots))
-    say(shots.stamp)
 
 
-def _figures(shots: Any) -> dict[str, Any]:
+def _figures(shots: Any) -> dict[str, Callable[[Any], Any]]:
     if shots.pixel is None:
         return {"powers": draw_frames}
     return {"frames": draw_frames, "stokes": draw_stokes, "ellipses": draw_ellipses}

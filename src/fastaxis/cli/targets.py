@@ -6,26 +6,28 @@ from typing import Any
 
 from fastaxis.errors import WiringError
 
-__all__ = ["targets"]
+__all__ = ["recording", "targets"]
+
+
+def recording(train: Any) -> list[str]:
+    """Cameras and detectors that light reaches: parts that record something of a given shape and let no light out."""
+    lit = {port.partition(".")[0] for port in train.lit}
+    return [n for n, part in train.elements.items() if n in lit and part.exit is None and hasattr(part, "shape")]
 
 
 def targets(train: Any, wanted: str | None) -> list[str]:
-    """The camera asked for, or all cameras and detectors that light reaches.
+    """The camera asked for, or all that record something.
 
     Raises
     ------
     WiringError : there is none.
     """
-    if wanted is not None:
-        return [wanted]
-    lit = {port.partition(".")[0] for port in train.lit}
-    # Cameras and detectors are the parts that record something of a given shape and let no light out.
-    found = [n for n, part in train.elements.items() if n in lit and part.exit is None and hasattr(part, "shape")]
+    found = [wanted] if wanted is not None else recording(train)
     if not found:
-        train.validate()
+        train.validate()  # a bench without a laser, say, has a message of its own
         raise WiringError(
-            "a prediction needs a camera or detector that light reaches",
-            got=f"{train.name}: none among {', '.join(train.elements) or 'no parts'}",
+            "the question needs a camera or detector that light reaches",
+            got=f"{train.name}: none among {', '.join(train.elements)}",
             fix='train.along("lens", fa.Camera(pixel=3.45*um, shape=(512, 512), name="cam"))',
         )
     return found

@@ -1,0 +1,80 @@
+import pytest
+import sympy as sp
+
+import fastaxis as fa
+
+SWITCH = """\
+import sympy
+alpha = sympy.Symbol("alpha", real=True)
+train = fa.Train(wavelength=532*nm, name="switch")
+train.along(
+    fa.Laser(waist=0.8*mm, power=4*mW, state=fa.H, name="laser"),
+    fa.HalfWavePlate(fast=alpha, name="hwp"),
+    fa.QPlate(q=0.5, name="qp"),
+    fa.Camera(pixel=20*um, name="cam"),
+)
+"""
+
+
+def formulas(text):
+    pairs = (line.split(" = ", 1) for line in text.splitlines() if " = " in line and not line.startswith("signs"))
+    return {name.strip(): value for name, value in pairs}
+
+
+def parsed(text):
+    return sp.sympify(text, locals={name: sp.Symbol(name, real=True) for name in ("alpha", "theta", "phi", "r")})
+
+
+def test_the_switch_as_a_formula(bench, run):
+    ran = run("derive", bench(SWITCH), "--setting", "theta")
+    found = formulas(ran.out)
+    alpha, theta, phi = (sp.Symbol(name, real=True) for name in ("alpha", "theta", "phi"))
+    # Local azimuth phi - 2 alpha: the half-wave plate turns H to 2 alpha, and the q-plate turns that to phi - 2 alpha.
+    assert sp.simplify(parsed(found["frame behind theta"]) - sp.cos(phi - 2 * alpha - theta) ** 2) == 0
+    assert sp.simplify(parsed(found["S1"]) - sp.cos(2 * phi - 4 * alpha)) == 0
+    assert found["S3"] == "0"
+    assert fa.stamp() in ran.out
+
+
+def test_a_numeric_check_stands_beside_the_formula(bench, run):
+    assert "checked: largest deviation" in run("derive", bench(SWITCH)).out
+
+
+def test_a_letter_may_get_a_value(bench, run):
+    found = formulas(run("derive", bench(SWITCH), "--symbol", "alpha=0deg").out)
+    assert "alpha" not in found["S1"]
+
+
+@pytest.mark.parametrize("view", ["receiver", "source"])
+def test_s3_and_r_follow_the_view_together(bench, run, view):
+    found = formulas(run("derive", bench(), "--setting", "R", "--view", view).out)
+    # The small bench sends L (helicity +1), which the source's view calls R.
+    expected = {"receiver": ("-1", "0"), "source": ("1", "1")}[view]
+    assert (found["S3"], found["frame behind R"]) == expected
+
+
+def test_latex(bench, run):
+    alpha, phi = (sp.Symbol(name, real=True) for name in ("alpha", "phi"))
+    found = formulas(run("derive", bench(SWITCH), "--latex").out)
+    assert found["S1"] == sp.latex(sp.cos(2 * phi - 4 * alpha))
+
+
+def test_unpolarized_light_has_stokes_parameters_only(bench, run):
+    text = """\
+    train = fa.Train(wavelength=532*nm)
+    train.along(fa.Laser(waist=1*mm, state=fa.UNPOLARIZED, name="laser"), fa.Detector(name="meter"))
+    """
+    found = formulas(run("derive", bench(text)).out)
+    assert "Ex" not in found
+    assert [found[f"S{k}"] for k in (1, 2, 3)] == ["0", "0", "0"]
+
+
+def test_a_part_without_a_formula_is_one_sentence(bench, run):
+    text = """\
+    train = fa.Train(wavelength=532*nm)
+    plate = fa.PatternedRetarder(fast=lambda x, y: x*0, name="halves")
+    train.along(fa.Laser(waist=1*mm), plate, fa.Detector(name="meter"))
+    """
+    ran = run("derive", bench(text))
+    assert ran.code == 1
+    assert ran.err.startswith("fastaxis: halves")
