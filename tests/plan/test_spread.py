@@ -64,3 +64,13 @@ def test_modes_of_one_beam_with_different_curvature_spread_by_the_difference():
     both = of_beam(beam(one, two), WAVELENGTH)
     assert both.curvature == pytest.approx(two.curvature(WAVELENGTH))
     assert both.angle > of_beam(beam(two), WAVELENGTH).angle and math.isfinite(both.angle)
+
+
+def test_a_spiral_phase_spreads_as_a_ring_of_half_the_radius():
+    """On a ring of radius w/2 the phase turns by charge/(w/2) a metre; along one axis half of its square counts."""
+    start = of_beam(beam(Gaussian(waist=1e-3)), WAVELENGTH)
+    after = start.past(ScalarLaw(charge=3), WAVELENGTH)
+    added = after.angle**2 - start.angle**2
+    assert added == pytest.approx((3 / 0.5e-3 * WAVELENGTH / (2 * math.pi)) ** 2 / 2, rel=1e-9)
+    plate = start.past(AxisLaw(order=-1.5), WAVELENGTH)
+    assert plate.angle == pytest.approx(after.angle)
