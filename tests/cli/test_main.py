@@ -15,6 +15,7 @@ from fastaxis.camera import load
         (("predict", "bench.py", "--grid", "8mm"), "SAMPLES,WINDOW"),
         (("predict", "bench.py", "--format", "svg"), "format 'svg'"),
         (("predict", "bench.py", "--symbol", "theta"), "LETTER=VALUE"),
+        (("predict", "bench.py", "--dpi", "7"), "a whole number from 20 to 1200, not '7'"),
         (("predict", "bench.py", "--view", "side"), "receiver or source"),
         (("derive", "bench.py", "--setting", "5 furlongs"), "a quantity is a number"),
     ],

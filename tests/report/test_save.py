@@ -24,6 +24,11 @@ def test_a_png_and_a_vector_pdf_with_the_stamp_inside(figure, tmp_path):
     assert b"/Subtype /Image" not in data
 
 
+def test_dots_an_inch(figure, tmp_path):
+    with Image.open(save(figure, tmp_path / "small", ["png"], dpi=50)[0]) as image:
+        assert image.size == (150, 100)
+
+
 def test_the_same_figure_writes_the_same_bytes(figure, tmp_path):
     first, second = (save(figure, tmp_path / name, ["pdf"])[0].read_bytes() for name in ("a", "b"))
     assert first == second

@@ -37,6 +37,12 @@ def _bench(text: str) -> Path:
     return path
 
 
+def _dots(text: str) -> int:
+    if not text.isdecimal() or not 20 <= int(text) <= 1200:
+        raise ArgumentTypeError(f"dots an inch are a whole number from 20 to 1200, not '{text}'")
+    return int(text)
+
+
 def _setting(text: str) -> str:
     choices.one_setting(text)  # complains about what is no setting
     return text
@@ -66,6 +72,7 @@ def _writes_figures(command: ArgumentParser) -> None:
                          help="samples at the laser, e.g. 1024,8mm; chosen from the bench if left out")  # fmt: skip
     command.add_argument("--format", type=_typed(choices.formats), default=("png", "pdf"), metavar="png,pdf",
                          help="of the figures")  # fmt: skip
+    command.add_argument("--dpi", type=_dots, default=160, metavar="N", help="dots an inch of the png figures")
 
 
 def parser() -> ArgumentParser:

@@ -42,7 +42,7 @@ def explain(bench: BenchFile, options: Namespace) -> None:
 def _draw(train: Any, powers: dict[str, float], bench: BenchFile, options: Namespace) -> None:
     out = Path(options.out) if options.out else Path(f"{bench.path.stem}_explained")
     figure = draw_bench(train, powers=powers, view=options.view)
-    for path in save(figure, out / "bench", options.format, view=options.view):
+    for path in save(figure, out / "bench", options.format, view=options.view, dpi=options.dpi):
         say(f"Drawn in {path}")
 
 

@@ -44,7 +44,7 @@ def predict(bench: BenchFile, options: Namespace) -> None:
     for target in targets(train, options.camera):
         _predict_one(train, target, settings, out, options)
     powers = port_powers(train)
-    save(draw_bench(train, powers=powers, view=options.view), out / "bench", options.format, view=options.view)
+    _save(draw_bench(train, powers=powers, view=options.view), out / "bench", options)
     say(stamp(options.view))
     say(f"Written to {out}/")
     if warning := caution(train, powers):
@@ -62,8 +62,12 @@ def _predict_one(train: Any, target: str, settings: Any, out: Path, options: Nam
         save_tiff(shots, out / f"{target}.tif")
         for word, draw in _figures(shots).items():
             move_on(f"{target}: {word}")
-            save(draw(shots), out / f"{target}_{word}", options.format, view=options.view)
+            _save(draw(shots), out / f"{target}_{word}", options)
     say(exposure_table(shots))
+
+
+def _save(figure: Any, stem: Path, options: Namespace) -> None:
+    save(figure, stem, options.format, view=options.view, dpi=options.dpi)
 
 
 def _figures(shots: Any) -> dict[str, Callable[[Any], Any]]:

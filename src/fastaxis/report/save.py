@@ -6,6 +6,7 @@ import os
 import tempfile
 from collections.abc import Iterable
 from pathlib import Path
+from typing import Any
 
 from matplotlib.figure import Figure
 
@@ -13,13 +14,20 @@ from fastaxis.conventions import View, stamp
 from fastaxis.errors import FileFormatError
 from fastaxis.report.style import rules
 
-__all__ = ["FORMATS", "save"]
+__all__ = ["DPI", "FORMATS", "save"]
 
 FORMATS = ("png", "pdf")
+DPI = 160
+PACKED: dict[str, dict[str, Any]] = {"png": {"pil_kwargs": {"optimize": True}}, "pdf": {}}
 
 
 def save(
-    figure: Figure, stem: str | Path, formats: Iterable[str] = FORMATS, *, view: View = View.RECEIVER
+    figure: Figure,
+    stem: str | Path,
+    formats: Iterable[str] = FORMATS,
+    *,
+    view: View = View.RECEIVER,
+    dpi: int = DPI,
 ) -> tuple[Path, ...]:
     """Write ``stem.png`` and ``stem.pdf``; an interrupted write leaves the older file as it was.
 
@@ -29,6 +37,7 @@ def save(
     stem : path without its ending; missing folders are made.
     formats : of "png", "pdf".
     view : whose naming of R and L the stamp in the file states.
+    dpi : dots an inch of the PNG.
 
     Raises
     ------
@@ -38,16 +47,16 @@ def save(
     for kind in wanted:
         if kind not in FORMATS:
             raise FileFormatError(f"figures are written as {' and '.join(FORMATS)}", got=f"{stem}: {kind}", fix='"pdf"')
-    return tuple(_write(figure, Path(f"{stem}.{kind}"), kind, view) for kind in wanted)
+    return tuple(_write(figure, Path(f"{stem}.{kind}"), kind, view, dpi) for kind in wanted)
 
 
-def _write(figure: Figure, path: Path, kind: str, view: View) -> Path:
+def _write(figure: Figure, path: Path, kind: str, view: View, dpi: int) -> Path:
     path.parent.mkdir(parents=True, exist_ok=True)
     handle, unfinished = tempfile.mkstemp(dir=path.parent, prefix=f".{path.stem}-", suffix=f".{kind}")
     os.close(handle)
     try:
         with rules():
-            figure.savefig(unfinished, format=kind, metadata=_metadata(kind, view))
+            figure.savefig(unfinished, format=kind, dpi=dpi, metadata=_metadata(kind, view), **PACKED[kind])
         Path(unfinished).chmod(0o644)  # mkstemp makes files for the owner only
         Path(unfinished).replace(path)
     finally:

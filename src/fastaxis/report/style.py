@@ -54,7 +54,6 @@ RULES: dict[Any, Any] = {
     "legend.fontsize": 7.5,
     "image.interpolation": "nearest",
     "pdf.fonttype": 42,  # text stays text
-    "savefig.dpi": 160,
 }
 
 FOOT_SIZE = 5.5  # [pt]
