@@ -97,15 +97,20 @@ def as_sum(poly: Poly) -> Any:
     ring, parts = poly.ring, []
     for angle, amplitudes in grouped(poly).items():
         for amplitude, roots in amplitudes.items():
-            size = amplitude_of(ring, amplitude)
-            if len(roots) == 1:
-                ((root, value),) = roots.items()
-                phase = angle_of(ring, angle, root)
-                parts.append(sp.Rational(value, poly.den) * size * sp.exp(sp.I * phase))
-            else:
-                real, imag = _complex(roots, poly.den)
-                parts.append((real + sp.I * imag) * size * sp.exp(sp.I * angle_of(ring, angle)))
+            factor, rest = _number(roots, poly.den)
+            phase = angle_of(ring, angle, rest)
+            parts.append(factor * amplitude_of(ring, amplitude) * sp.exp(sp.I * phase))
     return sp.Add(*parts)
+
+
+def _number(roots: dict[int, int], den: int) -> tuple[Any, int]:
+    """(factor, rest): a sum of roots of unity as a factor times one root, whose quarter turns are in the factor."""
+    if len(roots) == 1:
+        ((root, value),) = roots.items()
+        quarters, rest = divmod(root % TURN, TURN // 4)
+        return sp.Rational(value, den) * sp.I**quarters, rest
+    real, imag = _complex(roots, den)
+    return real + sp.I * imag, 0
 
 
 def real_sum(poly: Poly) -> Any:

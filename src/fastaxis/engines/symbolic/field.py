@@ -14,10 +14,10 @@ from fastaxis.engines.symbolic.ring import Poly
 from fastaxis.engines.symbolic.ring.angles import linear
 from fastaxis.engines.symbolic.ring.reading import read
 from fastaxis.engines.symbolic.ring.ring import ANGLE, UNIT
-from fastaxis.engines.symbolic.waves import IntegralWave, Place, Section, TwistedWave, Wave
+from fastaxis.engines.symbolic.waves import IntegralWave, Place, Section, StillWave, Wave
 from fastaxis.errors import SymbolError
 
-__all__ = ["Field", "Pair"]
+__all__ = ["Field", "Pair", "split"]
 
 Pair = tuple[Poly, Poly]
 """(E_L, E_R)."""
@@ -62,13 +62,25 @@ class Field:
 
     def moved(self, section: Section) -> Field:
         """Behind a section of free space and lenses."""
+        if section == Section():
+            return self
         found: dict[Wave, Pair] = {}
         for wave, pair in self.pieces:
-            for key, split in _split(pair).items():
-                there = _carried(wave, key, section, self.place)
+            for key, share in split(pair).items():
+                there = _carried(wave, key, section)
                 old = found.get(there)
-                found[there] = split if old is None else (old[0] + split[0], old[1] + split[1])
+                found[there] = share if old is None else (old[0] + share[0], old[1] + share[1])
         return Field(tuple(found.items()), self.place, self.scale)
+
+    def bent(self, vergence: Any) -> Field:
+        """Behind a thin centred lens, which turns no charge and cuts nothing off."""
+        lens = Section(c=-vergence)
+        phase = self.place.maths.phasor(-self.place.wave_number * vergence * R**2 / 2)
+        pieces = tuple(
+            (wave, (pair[0] * phase, pair[1] * phase)) if isinstance(wave, StillWave) else (wave.moved(lens), pair)
+            for wave, pair in self.pieces
+        )
+        return Field(pieces, self.place, self.scale)
 
     @property
     def whole(self) -> Pair:
@@ -81,7 +93,7 @@ class Field:
 Key = tuple[Any, Any]
 
 
-def _split(pair: Pair) -> dict[Key, Pair]:
+def split(pair: Pair) -> dict[Key, Pair]:
     """The Jones vector by its charge and its function of r."""
     zero = pair[0].ring.zero
     left, right = (poly.parts(lambda key, poly=poly: _structure(poly, key)) for poly in pair)
@@ -113,14 +125,12 @@ def _structure(poly: Poly, key: int) -> tuple[Key, int]:
     return (charge, shape), ring.pack(root, exponents)
 
 
-def _carried(wave: Wave, key: Key, section: Section, place: Place) -> Wave:
+def _carried(wave: Wave, key: Key, section: Section) -> Wave:
     charge, shape = key
     if shape != 1:
         return IntegralWave(wave, charge, section, shape)
     if charge == 0:
         return wave.moved(section)
-    if section.b == 0:
-        return TwistedWave(wave, charge, section) if hasattr(wave, "gouy") else wave.twisted(charge, section)
     return wave.twisted(charge, section)
 
 

@@ -10,11 +10,24 @@ from typing import Any
 import sympy as sp
 
 from fastaxis.engines.symbolic.analyzers import behind
+from fastaxis.engines.symbolic.answers import (
+    AnalyzerAngles,
+    Branches,
+    Lobes,
+    Mistake,
+    analyzer_angles,
+    dark_when,
+    lobes,
+    ranked_mistakes,
+)
+from fastaxis.engines.symbolic.checking import Check, check
 from fastaxis.engines.symbolic.expressions import middle, split_key, written
 from fastaxis.engines.symbolic.field import Field, Pair
+from fastaxis.engines.symbolic.functions import NumericForm
 from fastaxis.engines.symbolic.presentations import compact, exponential, harmonics, series
 from fastaxis.engines.symbolic.ring import Poly
 from fastaxis.engines.symbolic.showing import Shown
+from fastaxis.engines.symbolic.slopes import derivative
 from fastaxis.errors import SymbolError
 from fastaxis.light import Beam
 
@@ -167,8 +180,66 @@ class Form(Shown):
     @property
     def irradiance(self) -> Any:
         """All light, no analyzer [W/m^2]."""
-        size = sp.Abs(self.envelope) ** 2 if self._factored else _plain(self.source_power)
-        return size * self.stokes[0]
+        return self.scale * self.stokes[0]
+
+    @property
+    def scale(self) -> Any:
+        """|envelope|^2 [W/m^2], or the power [W] where the modes are in the Jones vector."""
+        size = _plain(self.source_power)
+        if not self._factored:
+            return size
+        wave, _ = self.parts[0].field.pieces[0]
+        return size * compact(wave.poly(self.parts[0].field.place).abs2())
+
+    # --- answers ----------------------------------------------------------------------------------------------------
+    def analyzer_angles(self) -> AnalyzerAngles:
+        """Angles of a linear analyzer that give the brightest and the darkest frame."""
+        return analyzer_angles(self.stokes_polys())
+
+    def lobes(self, setting: Any) -> Lobes:
+        """Number, place and turning rate of the lobes around the axis; ``setting`` is the analyzer's letter."""
+        return lobes(self.frame_poly(setting), setting)
+
+    def dark_when(self, angle: Any, setting: Any = None) -> Branches:
+        """Values of an angle that make the frame of a setting dark, or the port itself without one."""
+        polys = [poly for weight, pair in self.pairs for poly in self._amplitudes(setting, pair)]
+        return dark_when(tuple(polys), angle)
+
+    def derivative(self, setting: Any, parameter: Any) -> Any:
+        """Slope of the frame with a parameter, exact."""
+        return compact(derivative(self.frame_poly(setting), parameter))
+
+    def mistakes(self, setting: Any, small: Sequence[Any]) -> tuple[Mistake, ...]:
+        """Small errors ranked by the order in which they change the frame, and where they do."""
+        return ranked_mistakes(self.frame_poly(setting), small)
+
+    def _amplitudes(self, setting: Any, pair: Pair) -> tuple[Poly, ...]:
+        return pair if setting is None else behind(setting, pair, self._maths)[1]
+
+    # --- numbers ----------------------------------------------------------------------------------------------------
+    def to_function(
+        self, quantity: str = "stokes", *arguments: Any, absolute: bool = False, **options: Any
+    ) -> NumericForm:
+        """A quantity as a numpy function of the letters, of r [m] and phi [rad].
+
+        Parameters
+        ----------
+        quantity : "stokes", "jones", "frame" (with its setting), "irradiance" or "power".
+        absolute : multiply Stokes parameters and frames by |envelope|^2, so that they are in W/m^2.
+
+        Examples
+        --------
+        ``form.to_function("frame", theta)(alpha=0.3, theta=0.1, r=0, phi=np.linspace(0, 6.28, 100))``
+        """
+        value = self._value(quantity, *arguments, **options)
+        if absolute and quantity in ("stokes", "frame"):
+            value = value * self.scale
+        self.meanings  # noqa: B018  # the waves give their names when they are written down
+        return NumericForm(self.parts[0].field.place.letters.spelled_out(value))
+
+    def check(self, *, points: int = 24, seed: int = 1) -> Check:
+        """The form beside numbers at random admissible points: the largest deviation, in roundings."""
+        return check(self, points=points, seed=seed)
 
     # --- comparisons ------------------------------------------------------------------------------------------------
     def equals(self, other: Form) -> bool:

@@ -49,7 +49,9 @@ def _scalar(field: Field, name: str, law: ScalarLaw) -> Field:
         factor = factor * maths.phasor(law.charge * _azimuth(law.centre))
     if law.tilt != (0.0, 0.0):
         k = field.place.wave_number
-        factor = factor * maths.phasor(k * (exactly(law.tilt[0]) * X + exactly(law.tilt[1]) * Y))
+        (tx, ty), (x, y) = law.tilt, law.centre
+        ramp = exactly(tx) * (X - exactly(x)) + exactly(ty) * (Y - exactly(y))
+        factor = factor * maths.phasor(sp.expand(k * ramp))
     if law.stop is not None:
         factor = factor * maths.ring.switch(_clear(name, law))
     field = field.times(factor) if law != ScalarLaw(vergence=law.vergence, centre=law.centre) else field
@@ -60,7 +62,7 @@ def _scalar(field: Field, name: str, law: ScalarLaw) -> Field:
         # A lens off centre is a centred lens, a tilt and a constant phase.
         shift = k * exactly(law.vergence) * (exactly(x) * X + exactly(y) * Y - (exactly(x) ** 2 + exactly(y) ** 2) / 2)
         field = field.times(maths.phasor(sp.expand(shift)))
-    return field.moved(Section.of(TravelLaw.lens(law.vergence)))
+    return field.bent(exactly(law.vergence))
 
 
 def _clear(name: str, law: ScalarLaw) -> Any:
@@ -79,7 +81,7 @@ def _clear(name: str, law: ScalarLaw) -> Any:
 
 
 def _azimuth(centre: tuple[Any, Any]) -> Any:
-    """phi counted from a centre."""
+    """The azimuth counted from a centre."""
     if _on_axis(centre):
         return PHI
     return sp.atan2(Y - exactly(centre[1]), X - exactly(centre[0]))

@@ -6,9 +6,11 @@ from typing import TYPE_CHECKING, Any
 
 import sympy as sp
 
-from fastaxis.engines.symbolic.coordinates import PHI, R
+from fastaxis.engines.symbolic.field import Field, Pair, split
 from fastaxis.engines.symbolic.presentations import compact
 from fastaxis.engines.symbolic.ring import Poly
+from fastaxis.engines.symbolic.waves import Wave
+from fastaxis.engines.symbolic.waves.base import exactly
 from fastaxis.errors import SymbolError
 
 if TYPE_CHECKING:
@@ -18,29 +20,55 @@ __all__ = ["total_power"]
 
 
 def total_power(form: Form) -> Any:
-    """Power [W]: 2 pi times the integral over r of the part of S0 that does not turn with phi."""
-    mean = _round_part(form.stokes_polys()[0])
-    watts = sp.nsimplify(form.source_power, rational=True)
-    expression = compact(mean)
-    if form._factored and not expression.has(R):  # noqa: SLF001  # the mode has unit power and travels without loss
-        return watts * expression
-    meanings = form.parts[0].field.place.letters
-    named = form.irradiance if form._factored else watts * expression  # noqa: SLF001
-    density = sp.expand(meanings.spelled_out(named))
-    if density.has(sp.Heaviside, sp.Integral, sp.hyper, sp.conjugate):
+    """Power [W]: free space and lenses keep the power of every wave, and waves of different charge are orthogonal."""
+    maths = form.parts[0].field.place.maths
+    total = maths.ring.zero
+    for part in form.parts:
+        weight = maths.number(part.weight) * maths.ring.rational(part.field.scale)
+        total = total + weight * _power(part.field, form.target)
+    return exactly(form.source_power) * compact(total)
+
+
+Piece = tuple[Wave, Any, Pair]
+
+
+def _power(field: Field, target: str) -> Poly:
+    total = field.place.maths.ring.zero
+    pieces: list[Piece] = [
+        (wave, charge, pair)
+        for wave, whole in field.pieces
+        for (charge, shape), pair in split(whole).items()
+        if _uncut(shape, target)
+    ]
+    for i, (wave, charge, pair) in enumerate(pieces):
+        total = total + pair[0].abs2() + pair[1].abs2()
+        for other_wave, other_charge, other in pieces[i + 1 :]:
+            cross = pair[0].conj() * other[0] + pair[1].conj() * other[1]
+            if cross and not _orthogonal(wave, charge, other_wave, other_charge):
+                raise SymbolError(
+                    "the power of two waves of one charge needs their overlap, which has no closed form here",
+                    got=f"{target}: two waves that are not orthogonal",
+                    fix=f'train.power("{target}")',
+                )
+    return total
+
+
+def _uncut(shape: Any, target: str) -> bool:
+    if shape.has(sp.Heaviside):
         raise SymbolError(
-            "the power of light cut by a stop or known by an integral has no closed form here",
-            got=f"{form.target}: a field with a stop or a special function of r",
-            fix=f'train.power("{form.target}")',
+            "the power of light that is cut by a stop has no closed form here",
+            got=f"{target}: a stop of shape {shape}",
+            fix=f'train.power("{target}")',
         )
-    return sp.simplify(sp.integrate(2 * sp.pi * R * density, (R, 0, sp.oo)))
+    return True
 
 
-def _round_part(poly: Poly) -> Poly:
-    """The terms that do not turn with phi."""
-    ring = poly.ring
-
-    def turns(key: int) -> bool:
-        return any(ring.generators[place].expression.has(PHI) for place in ring.exponents(key)[1])
-
-    return ring.poly({key: value for key, value in poly.terms.items() if not turns(key)}, poly.den)
+def _orthogonal(wave: Wave, charge: Any, other: Wave, other_charge: Any) -> bool:
+    one, two = getattr(wave, "total", None), getattr(other, "total", None)
+    if one is not None and two is not None:
+        difference = sp.expand(one + charge - two - other_charge)
+        # A letter stands for any half-integer q, so only a difference that is always a number is sure.
+        if difference.is_zero is False:
+            return True
+    family = [getattr(w, "waist", None) and (w.waist, w.section, w.kind) for w in (wave, other)]
+    return charge == other_charge and family[0] is not None and family[0] == family[1]

@@ -7,12 +7,13 @@ from typing import Any
 
 import sympy as sp
 
-from fastaxis.engines.symbolic.expressions import angle_of, real_sum
+from fastaxis.engines.symbolic.expressions import angle_of
+from fastaxis.engines.symbolic.presentations.compact import compact
 from fastaxis.engines.symbolic.ring import Poly
 from fastaxis.engines.symbolic.ring.ring import ANGLE, UNIT
 from fastaxis.errors import SymbolError
 
-__all__ = ["harmonics"]
+__all__ = ["harmonics", "order_in"]
 
 
 def harmonics(poly: Poly, angle: Any) -> dict[Any, tuple[Any, Any]]:
@@ -20,18 +21,18 @@ def harmonics(poly: Poly, angle: Any) -> dict[Any, tuple[Any, Any]]:
 
     ``n`` is a number or, for an angle that enters as q*angle, an expression in q. b_0 is 0.
     """
-    parts: dict[Any, Poly] = poly.parts(lambda key: _order(poly, key, angle))
+    parts: dict[Any, Poly] = poly.parts(lambda key: order_in(poly, key, angle))
     found = {}
     for order, part in parts.items():
         if -order in found or (order.could_extract_minus_sign() and -order in parts):
             continue  # the conjugate of one that is counted
         scale = poly.ring.rational(1 if order != 0 else Fraction(1, 2))
         i = poly.ring.root_of_unity(Fraction(1, 4))
-        found[order] = (real_sum((part + part.conj()) * scale), real_sum((part - part.conj()) * scale * i))
+        found[order] = (compact((part + part.conj()) * scale), compact((part - part.conj()) * scale * i))
     return {n: found[n] for n in sorted(found, key=sp.default_sort_key)}
 
 
-def _order(poly: Poly, key: int, angle: Any) -> tuple[Any, int]:
+def order_in(poly: Poly, key: int, angle: Any) -> tuple[Any, int]:
     """How often the angle turns in a monomial, and the monomial without it."""
     ring = poly.ring
     root, exponents = ring.exponents(key)

@@ -44,7 +44,7 @@ class Place:
 
     @property
     def wave_number(self) -> Any:
-        """k = 2 pi/wavelength [1/m]."""
+        """Wave number k = 2 pi/wavelength [1/m]."""
         return 2 * sp.pi / self.wavelength
 
 
@@ -75,6 +75,10 @@ class Section:
 
 class Wave(Protocol):
     """A scalar function of the plane."""
+
+    @property
+    def total(self) -> Any:
+        """Turns of phase per turn of phi; None for a wave that is no function of r alone times such a phase."""
 
     def moved(self, section: Section) -> Wave:
         """Behind a section."""

@@ -20,7 +20,8 @@ __all__ = ["IntegralWave"]
 class IntegralWave:
     """exp(i charge phi) factor(r) times a round wave, behind a section, as a Hankel integral.
 
-    U(r) = (k/b) int_0^limit f(s) exp(i k a s^2/2b) J_l(k r s/b) s ds, field = -i (-i)^l exp(i l phi) exp(i k d r^2/2b) U.
+    U(r) = (k/b) int_0^limit f(s) exp(i k a s^2/2b) J_l(k r s/b) s ds, and the field is
+    -i (-i)^l exp(i l phi) exp(i k d r^2/2b) U(r).
 
     Parameters
     ----------
@@ -37,6 +38,12 @@ class IntegralWave:
     factor: Any = sp.S.One
     limit: Any = sp.oo
 
+    @property
+    def total(self) -> Any:
+        """The charge here."""
+        inner = self.wave.total
+        return None if inner is None else inner + self.charge
+
     def moved(self, section: Section) -> IntegralWave:
         return replace(self, section=self.section.then(section))
 
@@ -52,9 +59,8 @@ class IntegralWave:
     def poly(self, place: Place) -> Poly:
         place.letters.note("no closed form is known behind the last plate or stop: U is left as an integral over s")
         k, section = place.wave_number, self.section
-        before = sp.expand(place.letters.spelled_out(as_sum(self.wave.poly(place))), deep=False)
-        own = sp.simplify(sp.diff(sp.log(before), PHI) / sp.I)
-        order = sp.sympify(own + self.charge)
+        before = place.letters.spelled_out(as_sum(self.wave.poly(place)))
+        order = sp.sympify(self.total)
         at = sp.Symbol("s", positive=True)
         shape = (before.subs(PHI, 0) * self.factor).subs(R, at)
         kernel = sp.exp(sp.I * k * section.a * at**2 / (2 * section.b)) * sp.besselj(order, k * R * at / section.b)

@@ -89,7 +89,7 @@ class TwistedWave:
         """(U(r), whether it is real)."""
         k, b, size = place.wave_number, self.section.b, sp.Abs(self.total)
         radius = self.mode.width(place)
-        bend = sp.cancel(self.mode.front(place) / 2 + k * self.section.a / (2 * b))
+        bend = sp.cancel(self.mode.bend(place) / 2 + k * self.section.a / (2 * b))
         alpha = 1 / radius**2 - sp.I * bend
         beta = k / b
         total = sp.S.Zero

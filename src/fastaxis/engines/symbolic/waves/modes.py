@@ -18,9 +18,10 @@ __all__ = ["ModeWave"]
 
 @dataclass(frozen=True)
 class ModeWave:
-    """P(sqrt2 x/w, sqrt2 y/w)/w exp(-r^2/w^2 + i k r^2/2R - i N zeta), with w, R, zeta of a ray matrix from the waist.
+    """P(sqrt2 x/w, sqrt2 y/w)/w exp(-r^2/w^2 + i k r^2/2R - i N zeta), for a ray matrix from the waist.
 
-    w^2 = w0^2 (a^2 + b^2/zR^2), 1/R = (a c zR^2 + b d)/(a^2 zR^2 + b^2), zeta = arg(a + i b/zR), zR = pi w0^2/wavelength.
+    w^2 = w0^2 (a^2 + b^2/zR^2), 1/R = (a c zR^2 + b d)/(a^2 zR^2 + b^2), zeta = arg(a + i b/zR), with the Rayleigh
+    range zR = pi w0^2/wavelength.
 
     Parameters
     ----------
@@ -34,7 +35,7 @@ class ModeWave:
     kind: str
     orders: tuple[Any, Any]
     waist: Any
-    section: Section = Section()
+    section: Section
 
     @property
     def charge(self) -> Any:
@@ -42,6 +43,11 @@ class ModeWave:
         if self.kind == "LG":
             return self.orders[1]
         return sp.S.Zero if self.orders == (0, 0) else None
+
+    @property
+    def total(self) -> Any:
+        """The charge, as of every wave."""
+        return self.charge
 
     @property
     def gouy_order(self) -> Any:
@@ -72,7 +78,7 @@ class ModeWave:
 
     # --- what it looks like here ------------------------------------------------------------------------------------
     def rayleigh(self, place: Place) -> Any:
-        """PI w0^2/wavelength [m]."""
+        """Rayleigh range pi w0^2/wavelength [m]."""
         return sp.pi * self.waist**2 / place.wavelength
 
     def at_waist(self) -> bool:
@@ -91,9 +97,14 @@ class ModeWave:
 
     def front(self, place: Place) -> Any:
         """k/R [1/m^2]: 0 for a flat front, else a name for it."""
+        value = self.bend(place)
+        return sp.S.Zero if value == 0 else place.letters.name("K", value)
+
+    def bend(self, place: Place) -> Any:
+        """k/R [1/m^2], spelled out."""
         s, reach = self.section, self.rayleigh(place)
-        value = sp.cancel((s.a * s.c * reach**2 + s.b * s.d) / (s.a**2 * reach**2 + s.b**2))
-        return sp.S.Zero if value == 0 else place.letters.name("K", place.wave_number * value)
+        curvature = (s.a * s.c * reach**2 + s.b * s.d) / (s.a**2 * reach**2 + s.b**2)
+        return place.wave_number * sp.cancel(curvature)
 
     def gouy(self, place: Place) -> Any:
         """The phase zeta [rad]."""

@@ -23,7 +23,8 @@ class StillWave:
     """
 
     shape: Any
-    charge = 0
+    total = 0
+    """Its charge."""
 
     def moved(self, section: Section) -> Wave:
         return self.twisted(0, section)

@@ -1,0 +1,7 @@
+"""Questions asked of forms: dark and bright angles, lobes, conditions for darkness, slopes, errors ranked."""
+
+from fastaxis.engines.symbolic.answers.analyzer import AnalyzerAngles, Lobes, analyzer_angles, lobes
+from fastaxis.engines.symbolic.answers.darkness import Branches, dark_when
+from fastaxis.engines.symbolic.answers.mistakes import Mistake, ranked_mistakes
+
+__all__ = ["AnalyzerAngles", "Branches", "Lobes", "Mistake", "analyzer_angles", "dark_when", "lobes", "ranked_mistakes"]

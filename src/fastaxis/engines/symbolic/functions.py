@@ -1,0 +1,67 @@
+"""Forms as fast numpy functions."""
+
+from __future__ import annotations
+
+from collections.abc import Mapping
+from dataclasses import dataclass
+from functools import cached_property
+from typing import Any
+
+import scipy.special
+import sympy as sp
+from sympy.printing.numpy import SciPyPrinter
+
+from fastaxis.engines.symbolic.coordinates import PHI, R
+from fastaxis.errors import SymbolError
+
+__all__ = ["NumericForm"]
+
+
+class _Printer(SciPyPrinter):  # type: ignore[misc]  # sympy has no types
+    """scipy's names for the special functions of the forms."""
+
+    def _print_hyper(self, e: Any) -> str:
+        above, below = e.ap, e.bq
+        if len(above) != 1 or len(below) != 1:
+            return str(super()._print_hyper(e))
+        return f"hyp1f1({self._print(above[0])}, {self._print(below[0])}, {self._print(e.argument)})"
+
+
+@dataclass(frozen=True, eq=False)
+class NumericForm:
+    """A function of the form's letters, of r [m] and of phi [rad]; arrays broadcast.
+
+    Parameters
+    ----------
+    expression : sympy expression or column.
+    """
+
+    expression: Any
+
+    @cached_property
+    def letters(self) -> tuple[Any, ...]:
+        """The letters in the order of :meth:`positional`."""
+        return tuple(sorted(self.expression.free_symbols, key=lambda s: (s in (R, PHI), str(s))))
+
+    @cached_property
+    def positional(self) -> Any:
+        """The bare numpy function, arguments in the order of ``letters``."""
+        return sp.lambdify(self.letters, self.expression, modules=[{"hyp1f1": scipy.special.hyp1f1}, "scipy", "numpy"],
+                           printer=_Printer, cse=True)  # fmt: skip
+
+    def __call__(self, values: Mapping[Any, Any] | None = None, **named: Any) -> Any:
+        """The value; letters by symbol in a mapping or by name.
+
+        Raises
+        ------
+        SymbolError : a letter without a value.
+        """
+        given = {str(letter): value for letter, value in (values or {}).items()} | named
+        missing = [str(letter) for letter in self.letters if str(letter) not in given]
+        if missing:
+            raise SymbolError(
+                "every letter of a form needs a number before it has a value",
+                got=f"no value for {', '.join(missing)}",
+                fix=f"function({', '.join(f'{name}=0.1' for name in missing)})",
+            )
+        return self.positional(*(given[str(letter)] for letter in self.letters))
