@@ -11,6 +11,7 @@ from fastaxis.elements import (
     Polarizer,
     PolarizingBeamSplitter,
     QPlate,
+    SpiralPlate,
 )
 from fastaxis.engines.ledger import powers
 from fastaxis.light import D, FlatTop, LaguerreGauss
@@ -52,6 +53,13 @@ def test_losses_are_counted():
     ledger = powers(bench(NeutralDensity(transmission=0.1, name="nd"), Polarizer(axis=60 * deg, name="pol")))
     assert ledger["nd", "back"] == pytest.approx(5e-4, rel=1e-14)
     assert ledger["pol", "back"] == pytest.approx(1.25e-4, rel=1e-13)
+
+
+def test_a_lossy_spiral_plate_counts_with_either_engine():
+    plate = SpiralPlate(charge=1, transmission=0.9, name="spp")
+    assert powers(bench(plate))["spp", "back"] == pytest.approx(4.5e-3, rel=1e-13)
+    behind = bench(QPlate(q=0.5), Aperture(radius=9 * mm), plate)
+    assert powers(behind)["spp", "back"] == pytest.approx(4.5e-3, rel=1e-12)
 
 
 def test_an_aperture_clips_a_gaussian():

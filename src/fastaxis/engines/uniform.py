@@ -2,17 +2,19 @@
 
 from __future__ import annotations
 
-from dataclasses import dataclass
+from collections.abc import Sequence
+from dataclasses import dataclass, replace
 
 import numpy as np
 from numpy.typing import NDArray
 
 from fastaxis.engines.field import CLEAN, Guard
 from fastaxis.errors import ParameterError
+from fastaxis.laws import ScalarLaw
 from fastaxis.light import PlaneWave, Raster, stokes
 from fastaxis.plan import Branch, JonesStep
 
-__all__ = ["UniformField", "run"]
+__all__ = ["UniformField", "combined", "run"]
 
 
 @dataclass(frozen=True)
@@ -60,11 +62,19 @@ class UniformField:
 
 
 def run(branch: Branch) -> UniformField:
-    """The light of a branch whose parts are uniform; travel, flips and pure phases leave its Jones vector alone."""
+    """The light of a branch whose parts are uniform; travel, flips and phases leave its Jones vector alone."""
     terms, scale = branch.beam.terms, branch.beam.scale(branch.wavelength)
     jones = sum(scale * term.number * term.state.jones for term in terms) * np.sqrt(branch.power)
     for step in branch.steps:
         if isinstance(step.law, JonesStep):
             jones = np.array(step.law.matrix) @ jones
+        elif isinstance(step.law, ScalarLaw):
+            jones = np.sqrt(step.law.transmission.power) * jones
     mode = terms[0].mode
     return UniformField(branch.wavelength, jones, float(mode.area) if isinstance(mode, PlaneWave) else None)
+
+
+def combined(fields: Sequence[UniformField], coefficients: NDArray[np.complex128]) -> UniformField:
+    """The sum of coefficient * field, of light at one target."""
+    jones = sum(number * field.jones for number, field in zip(coefficients, fields, strict=True))
+    return replace(fields[0], jones=np.asarray(jones))

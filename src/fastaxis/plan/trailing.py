@@ -3,7 +3,6 @@
 from __future__ import annotations
 
 from fastaxis.laws import Flip, ScalarLaw, TravelLaw
-from fastaxis.maths import Pattern
 from fastaxis.plan.plan import Plan
 from fastaxis.plan.steps import Steps
 
@@ -14,9 +13,7 @@ def _trim(steps: Steps, _: float) -> Steps:
     kept = list(steps)
     while kept:
         law = kept[-1].law
-        phase_only = isinstance(law, ScalarLaw) and (
-            law.stop is None and law.transmission.power == 1 and not isinstance(law.transmission.power, Pattern)
-        )
+        phase_only = isinstance(law, ScalarLaw) and law.stop is None and law.transmission.power == 1
         if not (phase_only or isinstance(law, TravelLaw | Flip)):
             break
         kept.pop()
