@@ -28,6 +28,12 @@ def test_lengths_as_a_lab_says_them(length, shown):
         (fa.PolarizingBeamSplitter(), []),
         (fa.PolarizingBeamSplitter(Tp=0.97), ["Tp 0.97"]),
         (fa.Mirror(), []),
+        (fa.Mirror(fold="vertical"), ["fold vertical"]),
+        (fa.Camera(pixel=5 * um, orientation="turned 90"), ["pixel 5 µm", "turned 90"]),
+        (
+            fa.Laser(power=5e-3, mode=fa.LaguerreGauss(p=0, l=1, waist=1 * mm), state=fa.R),
+            ["5.00 mW", "LaguerreGauss", "R"],
+        ),
         (fa.SpiralPlate(charge=-2), ["charge -2"]),
         (fa.Camera(pixel=3.45 * um), ["pixel 3.45 µm"]),
         (fa.PatternedRetarder(fast=lambda x, y: np.arctan2(y, x)), ["fast patterned", "δ 180°"]),

@@ -70,13 +70,21 @@ WORDS: dict[str, tuple[str, Callable[[Any], str]]] = {
     "retardance": ("δ", in_degrees),
     "power": ("", lambda power: str(power) if is_symbolic(power) else readable(power, "W")),
     "waist": ("w", in_lab_units),
+    "mode": ("", lambda mode: type(mode).__name__),
+    "beam": ("", lambda beam: f"sum of {len(beam.terms)} modes"),
     "state": ("", lambda state: str(getattr(state, "label", ""))),
+    "fold": ("fold", str),
+    "orientation": ("", str),
     "centre": ("at", lambda place: ", ".join(in_lab_units(x) for x in place)),
 }
-NOT_SHOWN = {  # what goes without saying: an ordinary half- or quarter-wave plate, a part on the axis
+NOT_SHOWN: dict[
+    tuple[str, str], float | str
+] = {  # what goes without saying: an ordinary half- or quarter-wave plate, a part on the axis
     ("HalfWavePlate", "retardance"): math.pi,
     ("QuarterWavePlate", "retardance"): math.pi / 2,
     ("QPlate", "retardance"): math.pi,
+    ("Mirror", "fold"): "horizontal",
+    ("Camera", "orientation"): "upright",
     ("Mirror", "Rs"): 1.0,
     ("PolarizingBeamSplitter", "Rs"): 1.0,
     ("PolarizingBeamSplitter", "Tp"): 1.0,
@@ -105,7 +113,9 @@ def detail(element: Any, *, most: int = 3) -> str:
 def _goes_without_saying(element: Any, parameter: str, value: Any) -> bool:
     if parameter == "centre":
         return not any(is_symbolic(x) or x != 0 for x in value)
-    if isinstance(value, Pattern) or is_symbolic(value):
-        return False
     usual = NOT_SHOWN.get((type(element).__name__, parameter))
-    return usual is not None and math.isclose(value, usual)
+    if isinstance(usual, str):
+        return bool(value == usual)
+    if usual is None or isinstance(value, Pattern) or is_symbolic(value):
+        return False
+    return math.isclose(value, usual)

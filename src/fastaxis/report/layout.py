@@ -6,6 +6,7 @@ from dataclasses import dataclass, field, replace
 from itertools import combinations, product
 from typing import Any
 
+from fastaxis.report.align import align, astray
 from fastaxis.report.walk import Node, branches, joined, port, step
 
 __all__ = ["Layout", "Link", "Place", "Stub", "arrange"]
@@ -110,12 +111,14 @@ def _arranged(train: Any, choices: tuple[int, ...]) -> Layout:
         out = (source, train.elements[source].exit or "out", "out")
         layout.exits[out[:2]] = RIGHT
         _follow(layout, train, graph, out)
+    if astray(layout):
+        align(layout, train)
     _set_down_unlit(layout, train)
     return layout
 
 
 def _cost(layout: Layout) -> float:
-    """Beams through parts count most, then beams across beams, light that runs left, and the size of the paper."""
+    """Beams through parts count most, then stray and crossing beams, light that runs left, the size of the paper."""
     at = {
         port: layout.places[port.partition(".")[0]] for link in layout.links for port in (link.out_port, link.in_port)
     }
@@ -124,7 +127,7 @@ def _cost(layout: Layout) -> float:
     crossed = sum(_cross(one, other) for one, other in combinations(ends, 2))
     left, right, bottom, top = layout.bounds
     leftward = sum(place.heading == (-1, 0) for place in layout.places.values())
-    return 100 * struck + 10 * crossed + leftward + (right - left + 2) * (top - bottom + 2) / 10
+    return 100 * struck + 50 * astray(layout) + 10 * crossed + leftward + (right - left + 2) * (top - bottom + 2) / 10
 
 
 def _strikes(here: Place, there: Place, part: Place) -> bool:
