@@ -9,8 +9,9 @@ from fastaxis.laws.axis import AxisLaw
 from fastaxis.laws.circular import CircularLaw
 from fastaxis.laws.scalar import ScalarLaw
 from fastaxis.laws.travel import TravelLaw
+from fastaxis.maths import Scalar
 
-__all__ = ["Flip", "Law", "Passage"]
+__all__ = ["Flip", "Law", "Passage", "Turn"]
 
 
 @dataclass(frozen=True)
@@ -32,7 +33,35 @@ class Flip:
         return self
 
 
-Law: TypeAlias = AxisLaw | CircularLaw | ScalarLaw | TravelLaw | Flip
+@dataclass(frozen=True)
+class Turn:
+    """The picture turned counter-clockwise about the axis: field'(r) = field(R(-angle) r), so l gains exp(-i l angle).
+
+    It moves places only; (Ex, Ey) stay what they are. With a Flip it makes the reversal across any line: first y
+    reversed, then turned by 2a, is the mirror image in the line at a, which is what a Dove prism does.
+
+    Parameters
+    ----------
+    angle : [rad], counter-clockwise facing the source.
+    """
+
+    angle: Scalar
+    uniform = False
+
+    @property
+    def values(self) -> tuple[Scalar, ...]:
+        return (self.angle,)
+
+    def mirrored(self, axis: str = "x") -> Turn:
+        """Seen with one axis reversed it turns the other way."""
+        return Turn(-self.angle)
+
+    def backward(self) -> Turn:
+        """Undone on the way back, which in the backward beam's reversed frame is the same turn."""
+        return self
+
+
+Law: TypeAlias = AxisLaw | CircularLaw | ScalarLaw | TravelLaw | Flip | Turn
 
 
 @dataclass(frozen=True)

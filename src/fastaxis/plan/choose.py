@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from fastaxis.errors import ParameterError
-from fastaxis.laws import Flip, ScalarLaw, TravelLaw
+from fastaxis.laws import Flip, ScalarLaw, TravelLaw, Turn
 from fastaxis.light import Source
 from fastaxis.maths import Pattern
 from fastaxis.plan.steps import JonesStep, StepLaw, Steps
@@ -17,14 +17,14 @@ def _keeps_power(law: StepLaw) -> bool:
     """Whether a law changes neither power nor polarization from place to place, wherever the light goes."""
     if isinstance(law, ScalarLaw):
         return law.stop is None and not isinstance(law.transmission.power, Pattern)
-    return isinstance(law, JonesStep | TravelLaw | Flip)
+    return isinstance(law, JonesStep | TravelLaw | Flip | Turn)
 
 
 def _keeps_plane_wave(law: StepLaw) -> bool:
     """Whether a plane wave along the axis stays one."""
     if isinstance(law, TravelLaw):
         return bool(law.a == 1 and law.c == 0)
-    return isinstance(law, JonesStep | Flip)
+    return isinstance(law, JonesStep | Flip | Turn)
 
 
 def _uniform_reason(steps: Steps, source: Source, *, bucket: bool) -> str:

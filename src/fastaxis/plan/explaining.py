@@ -7,7 +7,7 @@ from collections.abc import Iterator
 from typing import TYPE_CHECKING
 
 from fastaxis.conventions import stamp
-from fastaxis.laws import AxisLaw, Flip, ScalarLaw, TravelLaw
+from fastaxis.laws import AxisLaw, Flip, ScalarLaw, TravelLaw, Turn
 
 if TYPE_CHECKING:
     from fastaxis.plan.plan import Branch, Plan
@@ -24,6 +24,8 @@ def _said(law: StepLaw) -> str:
         return f"axis law, q = {law.order:g}" if law.order else "patterned axis law"
     if isinstance(law, ScalarLaw):
         return "scalar law" + "".join(_pieces(law))
+    if isinstance(law, Turn):
+        return f"picture turned by {math.degrees(law.angle):.6g} deg"
     return f"{law.axis} reversed" if isinstance(law, Flip) else "uniform matrix"
 
 
@@ -49,6 +51,7 @@ def _branch(branch: Branch) -> Iterator[str]:
     sampling = branch.sampling
     if sampling is not None:
         yield f"  {sampling.grid.samples} x {sampling.grid.samples} samples ({sampling.chosen})"
+        yield "  margin: of room or pitch over what the light needs; 1 or more is enough"
         yield f"    0. source: {_sampled(sampling.planes[0])}"
     for index, step in enumerate(branch.steps, start=1):
         line = f"    {index}. {', '.join(step.names)}: {_said(step.law)}"

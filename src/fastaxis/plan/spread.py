@@ -5,10 +5,11 @@ from __future__ import annotations
 import math
 from dataclasses import dataclass, replace
 
-from fastaxis.laws import Annulus, AxisLaw, Disc, Flip, Rectangle, ScalarLaw, Stop, Strip, TravelLaw
+from fastaxis.laws import Annulus, AxisLaw, Disc, Flip, Rectangle, ScalarLaw, Stop, Strip, TravelLaw, Turn
 from fastaxis.light import Beam, Mode
 from fastaxis.maths import Pattern
 from fastaxis.plan.steps import StepLaw
+from fastaxis.plan.turning import turned
 
 __all__ = ["Spread", "closed", "of_beam", "reach"]
 
@@ -78,6 +79,8 @@ class Spread:
             return self.through(law)
         if isinstance(law, Flip):
             return replace(self, offset=_reversed(self.offset, law.axis), slope=_reversed(self.slope, law.axis))
+        if isinstance(law, Turn):
+            return replace(self, offset=turned(self.offset, law.angle), slope=turned(self.slope, law.angle))
         if isinstance(law, AxisLaw):
             spread = self if law.order == 0 else self.twisted(2 * law.order, wavelength)
             return spread if law.uniform or law.order != 0 else replace(spread, rough=True)

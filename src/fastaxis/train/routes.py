@@ -7,7 +7,7 @@ from typing import Any
 
 from fastaxis.elements.base import Element
 from fastaxis.errors import WiringError
-from fastaxis.laws import Law, Passage
+from fastaxis.laws import Flip, Law, Passage
 from fastaxis.train.graph import Node, port_of
 from fastaxis.train.ports import Elements, read_port
 from fastaxis.train.suggest import feed_code
@@ -47,8 +47,8 @@ class Route:
 
     @property
     def reflections(self) -> int:
-        """How often the light was reflected on the way."""
-        return sum(bool(leg.passage.reflected) for leg in self.legs)
+        """How often the picture was reversed on the way, by a reflection or by a reversing prism."""
+        return sum(isinstance(law, Flip) for _, law in self.steps())
 
     @property
     def parity(self) -> int:
