@@ -4,7 +4,7 @@ from fastaxis.elements import Aperture, FreeSpace, Lens, QPlate, Wedge
 from fastaxis.errors import SamplingError, SamplingWarning
 from fastaxis.light import FlatTop, Gaussian, LaguerreGauss, PlaneWave
 from fastaxis.plan import Grid, make_plan
-from fastaxis.units import mm, mrad
+from fastaxis.units import mm, mrad, um
 
 
 def test_smooth_beams_take_few_samples_and_six_radii(bench):
@@ -34,6 +34,13 @@ def test_the_window_reaches_off_axis_beams_and_stops(bench):
     assert off.sampling.planes[-1].window / 2 >= 6 * 0.5 * mm + 3 * mm
     stop = make_plan(bench(Aperture(radius=1 * mm, centre=(2 * mm, 0)), mode=FlatTop(radius=4 * mm)), "cam")
     assert stop.sampling.planes[-1].window / 2 >= 5 * mm
+
+
+def test_a_pinhole_in_a_focus_is_drawn_with_twelve_samples(bench):
+    parts = [Lens(focal=100 * mm), FreeSpace(100 * mm), Aperture(radius=40 * um), FreeSpace(100 * mm)]
+    sampling = make_plan(bench(*parts, mode=Gaussian(waist=1 * mm)), "cam").sampling
+    assert sampling.planes[2].pitch <= 40 * um / 12
+    assert sampling.planes[0].window / 2 >= 6 * mm
 
 
 def test_near_planes_go_by_the_spectrum_and_far_ones_by_one_transform(bench):

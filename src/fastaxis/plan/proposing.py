@@ -18,6 +18,7 @@ __all__ = ["propose", "sampling_for"]
 # Lengths with small prime factors, for the transform; smooth beams start at the first, rough ones at 1024.
 LENGTHS = (256, 320, 384, 512, 640, 768, 1024, 1280, 1536, 2048, 3072, 4096)
 ROUGH_START = 1024
+RIM = 12  # samples along the radius of a stop: its area is then right to one part in a thousand
 # Margins are in units of a window that holds the beam to its last digit. At 0.55 of it a Gaussian field has fallen
 # to exp(-(3.3)^2) = 2e-5 at the edge; at 0.3, to 4 %: the answer would be a different beam.
 WARN, REFUSE = 0.55, 0.3
@@ -91,13 +92,14 @@ def _first_reach(steps: Steps) -> float:
 
 
 def _fits(sampling: Sampling, steps: Steps) -> float:
-    """The margin of a sampling; stops met must be held with three of their radii."""
-    margin = sampling.worst.margin
+    """The margin of a sampling: room and band at every plane, and stops both held and drawn finely enough."""
+    margin = min(min(plane.margin, plane.band) for plane in sampling.planes)
     for plane, step in zip(sampling.planes[1:], steps, strict=False):
         law = step.law
-        if isinstance(law, ScalarLaw) and law.stop is not None and plane.spread.rough:
-            needed = max(map(abs, law.centre)) + 3 * reach(law.stop)
-            margin = min(margin, plane.window / 2 / needed) if needed else margin
+        if isinstance(law, ScalarLaw) and law.stop is not None and plane.spread.rough and reach(law.stop):
+            radius = reach(law.stop)
+            held = plane.window / 2 / (max(map(abs, law.centre)) + 3 * radius)
+            margin = min(margin, held, radius / (RIM * plane.pitch))
     return margin
 
 
