@@ -18,6 +18,18 @@ def test_cards_only_on_request(bench, run):
     assert "set to" in run("explain", path, "--format", "png", "--cards").out
 
 
+def test_the_view_is_kept_apart_from_the_listing(bench, run):
+    text = """\
+    train = fa.Train(wavelength=532*nm)
+    train.along(fa.Laser(waist=1*mm, state=fa.R, name="laser"), fa.Detector(name="meter"))
+    """
+    ran = run("explain", bench(text), "--format", "png", "--cards", "--view", "source")
+    listing, rest = ran.out.split("(in this listing R and L are named by the receiver; below, by the source)")
+    assert "state R" in listing
+    assert "Gaussian, L" in rest
+    assert fa.stamp() not in rest
+
+
 def test_open_ports_with_power_and_caution(bench, run):
     text = """\
     train = fa.Train(wavelength=532*nm)

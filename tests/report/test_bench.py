@@ -91,7 +91,16 @@ def coloured(figure, colour):
 def test_every_text_is_legible(made, assert_nothing_collides):
     train = made()
     powers = {f"{name}.{face}": 4.56e-3 for name, face, way in train.graph if way == "out"}
-    assert_nothing_collides(draw_bench(train, powers=powers))
+    figure = draw_bench(train, powers=powers)
+    assert_nothing_collides(figure)
+    axes = figure.axes[0]
+    for text in axes.texts:
+        box = text.get_window_extent()
+        for patch in axes.patches:
+            part = patch.get_window_extent()
+            over_x, over_y = min(box.x1, part.x1) - max(box.x0, part.x0), min(box.y1, part.y1) - max(box.y0, part.y0)
+            # One pixel: the outline of a part is that wide.
+            assert not text.get_text() or min(over_x, over_y) < 1, f"{text.get_text()!r} lies on a part"
 
 
 @pytest.mark.parametrize("made", TRAINS)
@@ -119,7 +128,7 @@ def test_cameras_say_how_often_their_light_was_reflected():
     train = tree()
     assert reflections_in_words(train, "cam a") == "1 reflection: mirrored"
     assert reflections_in_words(train, "meter") == "4 reflections: upright"
-    assert any("1 reflection: mirrored" in text for text in words(draw_bench(train)))
+    assert any("1 reflection\nmirrored" in text for text in words(draw_bench(train)))
     assert "no reflection" in reflections_in_words(line(), "far camera")
 
 
@@ -158,6 +167,12 @@ def test_parts_without_light_say_so():
     with pytest.warns(fa.WiringWarning, match="spare"):
         texts = words(draw_bench(bench(camera()).add(fa.Lens(focal=1.0, name="spare"))))
     assert "f 1 m\nno light" in texts
+
+
+def test_the_state_of_the_laser_follows_the_view():
+    train = fa.Train(wavelength=532 * nm).along(fa.Laser(waist=1 * mm, state=fa.R, name="laser"), camera())
+    named = [next(t for t in words(draw_bench(train, view=view)) if "w 1 mm" in t)[-1] for view in fa.View]
+    assert named == ["R", "L"]
 
 
 def test_letters_stay_letters():

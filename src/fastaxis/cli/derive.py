@@ -11,6 +11,7 @@ from fastaxis.cli.choices import one_setting
 from fastaxis.cli.console import say
 from fastaxis.cli.targets import targets
 from fastaxis.conventions import View, stamp
+from fastaxis.errors import FastaxisError
 
 __all__ = ["derive"]
 
@@ -27,8 +28,15 @@ def derive(bench: BenchFile, options: Namespace) -> None:
             say(f"    with {name} = {_latex(meaning) if options.latex else meaning}")
         for line in form.assumptions[1:]:  # the first is the stamp, which closes the answer
             say(f"  assumed: {line}")
-        say(f"  checked: {form.check()}")
+        say(f"  {_checked(form)}")
     say(stamp(options.view))
+
+
+def _checked(form: Any) -> str:
+    try:
+        return f"checked: {form.check()}"
+    except FastaxisError as error:
+        return f"not checked: {error}"
 
 
 def _quantities(form: Any, setting: str | None, view: View) -> Iterator[tuple[str, Any]]:

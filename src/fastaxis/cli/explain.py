@@ -10,8 +10,9 @@ from fastaxis.cli.bench_file import BenchFile
 from fastaxis.cli.console import say, tell
 from fastaxis.cli.safety import caution, port_powers
 from fastaxis.cli.targets import recording
-from fastaxis.conventions import stamp
+from fastaxis.conventions import View, stamp
 from fastaxis.report.bench import draw_bench, reflections_in_words
+from fastaxis.report.card import card
 from fastaxis.report.prefix import readable
 from fastaxis.report.save import save
 
@@ -25,11 +26,13 @@ def explain(bench: BenchFile, options: Namespace) -> None:
     """
     train = bench.train.with_values(dict(options.symbol)) if options.symbol else bench.train
     say(str(train))
+    if options.view is not View.RECEIVER:
+        say("(in this listing R and L are named by the receiver; below, by the source)")
     powers = port_powers(train)
     _draw(train, powers, bench, options)
     train.validate()
     for element in train.elements.values() if options.cards else ():
-        say(f"\n{element}")
+        say(f"\n{card(element, options.view)}")
     for target in [options.camera] if options.camera else recording(train):
         _explain_target(train, target, options)
     for port in train.open_ports():

@@ -39,7 +39,7 @@ def draw_bench(
     train : the train; letters stay letters.
     powers : power [W] that leaves each port, by port string; written beside the beam where given.
     title : above all; None for the train's name.
-    view : whose naming of R and L the stamp states.
+    view : whose naming of R and L the laser's state and the stamp follow.
     """
     plan, powers = arrange(train), powers or {}
     left, right, bottom, top = plan.bounds
@@ -51,8 +51,8 @@ def draw_bench(
     axes.set(xlim=(left - missing, right + missing), ylim=(bottom, top), aspect="equal")
     axes.set_axis_off()
     draw_beams(axes, plan, train, powers)
-    for name, element in train.elements.items():
-        _draw_part(axes, train, plan, name, element)
+    for name in train.elements:
+        _draw_part(axes, train, plan, name, view)
     figure.suptitle(train.name if title is None else title, size=10)
     footer(figure, view, note=f"Not to scale. {SAFETY if _leaving(plan, powers) else ''}".strip())
     return figure
@@ -74,15 +74,16 @@ def reflections_in_words(train: Any, target: str) -> str:
     return f"{times}: {'mirrored' if count % 2 else 'upright'}"
 
 
-def _draw_part(axes: Axes, train: Any, plan: Layout, name: str, element: Any) -> None:
-    place = plan.places[name]
+def _draw_part(axes: Axes, train: Any, plan: Layout, name: str, view: View) -> None:
+    element, place = train.elements[name], plan.places[name]
     if is_space(element):
         write_distance(axes, place, in_lab_units(element.distance))
         return
     draw_symbol(axes, element, place)
-    lines = detail(element)
+    lines = detail(element, view=view)
     if name in plan.unlit:
         lines = f"{lines}\nno light".strip()
     elif element.exit is None and element.entry and type(element).__name__ != "BeamDump":
-        lines = f"{lines}\n{reflections_in_words(train, name)}".strip()
+        # On two lines: a neighbour may stand close by.
+        lines = f"{lines}\n{reflections_in_words(train, name)}".strip().replace(": ", "\n")
     write_label(axes, plan, name, lines)

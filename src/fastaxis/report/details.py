@@ -7,6 +7,7 @@ from collections.abc import Callable
 from fractions import Fraction
 from typing import Any
 
+from fastaxis.conventions import View
 from fastaxis.maths import Pattern, is_symbolic
 from fastaxis.report.prefix import readable
 
@@ -91,8 +92,8 @@ NOT_SHOWN: dict[
 }
 
 
-def detail(element: Any, *, most: int = 3) -> str:
-    """The main settings of a part, one a line.
+def detail(element: Any, *, most: int = 3, view: View = View.RECEIVER) -> str:
+    """The main settings of a part, one a line; R and L named as ``view`` names them.
 
     >>> from fastaxis.elements.retarder import HalfWavePlate, Retarder
     >>> print(detail(Retarder(slow=0, retardance=1.5)))
@@ -106,7 +107,8 @@ def detail(element: Any, *, most: int = 3) -> str:
         value = getattr(element, parameter, None) if parameter in element.parameters() else None
         if value is None or _goes_without_saying(element, parameter, value):
             continue
-        lines.append(f"{word} {shown(value)}".strip())
+        text = shown(value)
+        lines.append(f"{word} {view.rename(text) if parameter == 'state' else text}".strip())
     return "\n".join([line for line in lines if line][:most])
 
 
