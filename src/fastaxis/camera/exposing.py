@@ -21,7 +21,7 @@ from fastaxis.loader import late
 if TYPE_CHECKING:
     from collections.abc import Iterable, Sequence
 
-__all__ = ["expose", "merge_guards"]
+__all__ = ["expose", "merge_guards", "recorded", "sensor_at"]
 
 
 def expose(
@@ -68,12 +68,9 @@ def expose(
     analyzers = as_settings(settings)
     weight_matrix(analyzers)  # letters are refused before anything is computed
     plan = late("plan", "make_plan")(train, target, grid=grid, engine=engine)
-    sensor = _sensor(train, target)
+    sensor = sensor_at(train, target)
     fields = late("engines", "propagate")(plan)
-    if isinstance(sensor, Camera):
-        stokes, x, y = _picture(fields, sensor)
-    else:
-        stokes, x, y = _all_power(fields), np.zeros(1), np.zeros(1)
+    stokes, x, y = recorded(fields, sensor)
     return Exposure(
         stokes=stokes,
         settings=analyzers,
@@ -89,7 +86,13 @@ def expose(
     )
 
 
-def _sensor(train: Any, target: str) -> Camera | Detector:
+def sensor_at(train: Any, target: str) -> Camera | Detector:
+    """The camera or detector that a target names.
+
+    Raises
+    ------
+    ParameterError : it names something that takes no pictures.
+    """
     sensor = train.elements.get(target.split(".", maxsplit=1)[0])
     if isinstance(sensor, Camera | Detector):
         return sensor
@@ -98,6 +101,18 @@ def _sensor(train: Any, target: str) -> Camera | Detector:
         got=f"expose: target '{target}' ({'no such part' if sensor is None else type(sensor).__name__})",
         fix='train.join("pbs.reflected", fa.Camera(pixel=3.45*um, shape=(512, 512), name="cam2"))',
     )
+
+
+def recorded(
+    fields: Sequence[Any], sensor: Camera | Detector
+) -> tuple[NDArray[np.float64], NDArray[np.float64], NDArray[np.float64]]:
+    """What a sensor sees of mutually incoherent fields: (stokes, x, y).
+
+    Stokes images [W per pixel], shape (4, ny, nx), in the sensor's picture; and its columns and rows [m].
+    """
+    if isinstance(sensor, Camera):
+        return _picture(fields, sensor)
+    return _all_power(fields), np.zeros(1), np.zeros(1)
 
 
 def _picture(fields: Sequence[Any], camera: Camera) -> tuple[NDArray[Any], NDArray[Any], NDArray[Any]]:

@@ -296,9 +296,39 @@ class Train:
         """Camera frames, one for each analyzer setting, on one common scale."""
         return late("camera.exposing", "expose")(self, target, settings, grid=grid, engine=engine)
 
+    def sweep(
+        self, values: Mapping[str, Any], target: str, settings: Any, *, zipped: bool = False, **options: Any
+    ) -> Any:
+        """Camera frames for many values of some parameters: {"hwp.fast": angles, "qp.retardance": values}."""
+        return late("studies.sweep", "sweep")(self, values, target, settings, zipped=zipped, **options)
+
     def derive(self, target: str, **options: Any) -> Any:
         """The light at a target as a formula, with the letters of the train left as letters."""
         return late("engines.symbolic", "derive")(self, target, **options)
+
+    def inspect(self) -> Any:
+        """Checks before the bench is built: findings ranked by severity, laser cautions, and what was not checked."""
+        return late("inspect", "inspect_train")(self)
+
+    def set_sheet(
+        self,
+        *,
+        mounts: Mapping[str, Any] | None = None,
+        rail_start: float = 0.0,
+        heights: Mapping[str, float] | float | None = None,
+        settings: Any = None,
+    ) -> Any:
+        """What to take to the bench: dials, positions, expected powers, states and frames.
+
+        Parameters
+        ----------
+        mounts : {part: Mount}, for the parts whose scale is to be read.
+        rail_start : rail reading [m] at the laser's output; positions count along the beam from there.
+        heights : height of the beam [m], for all parts or by name.
+        settings : analyzer settings of the frames; the six states if left out.
+        """
+        sheet = late("inspect", "set_sheet")
+        return sheet(self, mounts=mounts or {}, rail_start=rail_start, heights=heights, settings=settings)
 
 
 def _same(old: Any, new: Any) -> bool:

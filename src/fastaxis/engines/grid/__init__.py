@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from typing import cast
 
+from fastaxis.engines.grid.combining import combined
 from fastaxis.engines.grid.guard import check, edge_watched
 from fastaxis.engines.grid.light import GridLight
 from fastaxis.engines.grid.pointwise import flipped, past_axis, past_matrix, past_scalar
@@ -11,23 +12,39 @@ from fastaxis.engines.grid.reading import GridField
 from fastaxis.engines.grid.scaled import travel_scaled
 from fastaxis.engines.grid.single import travel_single
 from fastaxis.engines.grid.source import start
-from fastaxis.laws import AxisLaw, Flip, ScalarLaw, TravelLaw
+from fastaxis.engines.grid.turning import turned
+from fastaxis.laws import AxisLaw, Flip, ScalarLaw, TravelLaw, Turn
 from fastaxis.plan import Branch, JonesStep
 from fastaxis.plan.fuse import as_matrix
 from fastaxis.plan.sampling import Hop, Sampling
 from fastaxis.plan.steps import StepLaw
 
-__all__ = ["GridField", "run"]
+__all__ = ["GridField", "begun", "combined", "continued", "finished", "run"]
 
 
 def run(branch: Branch) -> GridField:
     """The light of a branch at its target, on the samples its plan chose."""
+    return finished(continued(begun(branch), branch, 0, len(branch.steps)), branch)
+
+
+def begun(branch: Branch) -> GridLight:
+    """The light of a branch at its source."""
+    return start(branch, cast("Sampling", branch.sampling))
+
+
+def continued(light: GridLight, branch: Branch, first: int, end: int) -> GridLight:
+    """Light before step ``first`` of a branch taken to before step ``end``; may use up the samples it is given."""
     sampling = cast("Sampling", branch.sampling)
-    light = start(branch, sampling)
-    for index, step in enumerate(branch.steps):
+    for index in range(first, end):
+        step = branch.steps[index]
         light = _past(light, as_matrix(step) or step.law, sampling.hop(index))
+    return light
+
+
+def finished(light: GridLight, branch: Branch) -> GridField:
+    """Light at the target of a branch, looked over."""
     names = branch.steps[-1].names if branch.steps else ()
-    return GridField(light, check(light, names, sampling.grid))
+    return GridField(light, check(light, names, cast("Sampling", branch.sampling).grid))
 
 
 def _past(light: GridLight, law: StepLaw, hop: Hop | None) -> GridLight:
@@ -37,6 +54,8 @@ def _past(light: GridLight, law: StepLaw, hop: Hop | None) -> GridLight:
         return past_scalar(light, law)
     if isinstance(law, Flip):
         return flipped(light, law)
+    if isinstance(law, Turn):
+        return turned(light, law)
     return past_axis(light, law) if isinstance(law, AxisLaw) else past_matrix(light, cast("JonesStep", law))
 
 

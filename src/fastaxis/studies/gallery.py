@@ -1,0 +1,114 @@
+"""The families of a sweep: which value belongs to which, and the pictures of the latest ones."""
+
+from __future__ import annotations
+
+from collections import OrderedDict
+from collections.abc import Callable
+from functools import cached_property
+from typing import Any, TypeAlias
+
+import numpy as np
+from numpy.typing import NDArray
+
+from fastaxis.engines.sharing import Relay
+from fastaxis.studies.family import Family, make_family
+from fastaxis.studies.knobs import Knobs
+from fastaxis.studies.response import response
+
+__all__ = ["Gallery", "Progress"]
+
+Reals: TypeAlias = NDArray[np.float64]
+Indices: TypeAlias = NDArray[np.intp]
+Progress: TypeAlias = Callable[[int, int], None]
+
+KEPT = 256 << 20  # bytes of pictures of earlier families kept beside the latest one
+
+
+class Gallery:
+    """Pictures for all values of a sweep, propagated when first looked at.
+
+    Values that differ in parameters the field is linear in are one family; each combination of the other parameters
+    has its own.
+
+    Parameters
+    ----------
+    train, target, grid, engine : as in ``train.expose``.
+    knobs : the parameters and their values.
+    progress : called as progress(done, expected) after each propagation.
+    """
+
+    def __init__(
+        self, train: Any, target: str, knobs: Knobs, *, grid: Any, engine: str, progress: Progress | None
+    ) -> None:
+        self.train, self.target, self.knobs = train, target, knobs
+        self.propagations = 0
+        self._options = {"grid": grid, "engine": engine}
+        self._progress = progress
+        self._relay = Relay()
+        self._families: OrderedDict[int, Family] = OrderedDict()
+        self._sums: dict[int, Reals] = {}
+        start = train.with_changes(knobs.at(0))
+        answers = {group: response(start, target, knobs.only(group)) is not None for group in knobs.groups()}
+        self.linear = [group for group, answer in answers.items() if answer]
+        self.stiff = [group for group, answer in answers.items() if not answer]
+
+    @cached_property
+    def numbers(self) -> Indices:
+        """The family of each value."""
+        numbers = np.zeros(len(self.knobs), dtype=np.intp)
+        for group in self.stiff:
+            numbers = numbers * len(self.knobs.only(group)) + self.knobs.places(group)
+        return numbers
+
+    @cached_property
+    def members(self) -> dict[int, Indices]:
+        """The values of each family, in order."""
+        order = np.argsort(self.numbers, kind="stable")
+        found, starts = np.unique(self.numbers[order], return_index=True)
+        return dict(zip(found.tolist(), np.split(order, starts[1:]), strict=True))
+
+    @cached_property
+    def _places(self) -> list[Indices]:
+        return [self.knobs.places(group) for group in self.linear]
+
+    def family(self, number: int) -> Family:
+        """The pictures of a family, propagated unless they are at hand."""
+        if number not in self._families:
+            family = self._made(number)
+            self._sums[number] = self.shares(family, self.members[number]) @ family.images.sum(axis=(2, 3)).T
+            self._families[number] = family
+            while len(self._families) > 1 and sum(f.images.nbytes for f in self._families.values()) > KEPT:
+                self._families.popitem(last=False)
+        self._families.move_to_end(number)
+        return self._families[number]
+
+    def _made(self, number: int) -> Family:
+        changes = self.knobs.at(int(self.members[number][0]))
+        fixed = {name: changes[name] for group in self.stiff for name in group}
+        return make_family(
+            self.train.with_changes(fixed) if fixed else self.train,
+            self.target,
+            [self.knobs.only(group) for group in self.linear],
+            relay=self._relay,
+            done=self._moved_on,
+            **self._options,
+        )
+
+    def _moved_on(self, count: int) -> None:
+        self.propagations += 1
+        if self._progress is not None:
+            self._progress(self.propagations, max(self.propagations, count * len(self.members)))
+
+    def shares(self, family: Family, indices: Indices) -> Reals:
+        """What values of a family take of each of its pictures, shape (values, pictures)."""
+        return family.shares([places[indices] for places in self._places], len(indices))
+
+    @cached_property
+    def total_stokes(self) -> Reals:
+        """Stokes parameters of all light on the sensor [W], shape (values, 4)."""
+        out = np.empty((len(self.knobs), 4))
+        for number, indices in self.members.items():
+            if number not in self._sums:
+                self.family(number)
+            out[indices] = self._sums[number]
+        return out
