@@ -3,9 +3,12 @@
 import numpy as np
 import pytest
 
-from fastaxis.elements import FreeSpace, Lens
-from fastaxis.light import Gaussian, HermiteGauss, LaguerreGauss
-from fastaxis.units import mm, nm
+from fastaxis.elements import FreeSpace, Laser, Lens, Wedge
+from fastaxis.engines import propagate
+from fastaxis.light import Beam, Gaussian, H, HermiteGauss, LaguerreGauss, SampledMode, Term
+from fastaxis.plan import make_plan
+from fastaxis.train import Train
+from fastaxis.units import mm, mrad, nm
 
 WAVELENGTH = 632.8 * nm
 WAIST = 0.5 * mm
@@ -79,3 +82,55 @@ def test_one_travel_is_two_half_travels(arrive):
         # The idle plate counts as rough, so the window there is chosen by other rules; 384 samples in 20 mm hold it.
         two = arrive(mode, FreeSpace(near), idle, FreeSpace(far)).at(x, x)
         assert np.max(abs(one - two)) / np.max(abs(one)) < 1e-10
+
+
+def test_a_wedge_turns_the_beam(arrive):
+    """Behind a tilt t the beam walks by t z and carries exp(i k (t x - t^2 z/2)): the paraxial Galilean shift."""
+    mode, tilt, distance = LaguerreGauss(0, 1, WAIST), 1 * mrad, 0.5
+    field = arrive(mode, Wedge(x=tilt), FreeSpace(distance))
+    x, y = np.linspace(-1, 1, 21) * mm + tilt * distance, np.linspace(-1, 1, 21) * mm
+    k = 2 * np.pi / WAVELENGTH
+    shifted = mode.moved(distance).amplitude(x[None] - tilt * distance, y[:, None], WAVELENGTH)
+    expected = shifted * np.exp(1j * k * (tilt * x[None] - tilt**2 * distance / 2))
+    # The tilt's phase reaches k t x = 15 rad; its rounding is that many times larger than that of the beam.
+    assert error(field, expected, x, y) < 5 * ROUNDING
+
+
+def test_an_off_centre_lens_focuses_behind_its_centre(arrive):
+    """At the focus u(x) = (-i/(wavelength f)) exp(i k |x - c|^2/2f) U((x - c)/(wavelength f)) about the centre c."""
+    focal, c = 0.3, 0.4 * mm
+    mode = Gaussian(waist=WAIST)
+    field = arrive(mode, Lens(focal=focal, centre=(c, 0.0)), FreeSpace(focal))
+    spot = WAVELENGTH * focal / (np.pi * WAIST)
+    x, y = c + np.linspace(-2, 2, 21) * spot, np.linspace(-2, 2, 21) * spot
+    r2 = (x[None] - c) ** 2 + y[:, None] ** 2
+    # The lens law is exp(-i k |r - c|^2/2f), so with s = r - c the beam's own centre sits at s = -c.
+    k = 2 * np.pi / WAVELENGTH
+    expected = (-1j * np.sqrt(2 / np.pi) / spot) * np.exp(-r2 / spot**2 + 1j * k / (2 * focal) * r2)
+    expected = expected * np.exp(1j * k * c * (x[None] - c) / focal)
+    assert error(field, expected, x, y) < 5 * ROUNDING
+
+
+def test_samples_of_a_mode_travel_as_the_mode(arrive):
+    pixel = WAIST / 12
+    x = (np.arange(128) - 63.5) * pixel
+    mode = LaguerreGauss(0, 1, WAIST)
+    sampled = SampledMode(mode.amplitude(x[None], x[:, None], WAVELENGTH), pixel=pixel)
+    places = np.linspace(-1, 1, 21) * mm
+    field = arrive(sampled, FreeSpace(1.0))
+    expected = mode.moved(1.0).amplitude(places[None], places[:, None], WAVELENGTH)
+    # Cubic splines through 12 samples a waist: (1/12)^4/24 times fourth derivatives of a few tens, 1e-4.
+    assert error(field, expected, places, places) < 3e-4
+    assert field.power == pytest.approx(1, abs=1e-12)
+
+
+def test_parts_of_two_wavelengths_spread_differently():
+    beam = Beam((Term(1, Gaussian(waist=WAIST), H),))
+    laser = Laser(incoherent=((0.5, beam, 500 * nm), (0.5, beam, 1000 * nm)), power=1.0)
+    fields = propagate(make_plan(Train(wavelength=633 * nm).along(laser, FreeSpace(2.0)), "space1"))
+    for field, wavelength in zip(fields, (500 * nm, 1000 * nm), strict=True):
+        origin = np.array([0.0])
+        peak = abs(field.at(origin, origin)[0, 0, 0]) ** 2
+        width = WAIST * np.hypot(1, 2.0 * wavelength / (np.pi * WAIST**2))
+        assert field.wavelength == wavelength
+        assert peak == pytest.approx(0.5 * 2 / (np.pi * width**2), rel=1e-12)

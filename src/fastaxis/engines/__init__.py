@@ -22,6 +22,16 @@ def propagate(plan: Plan) -> tuple[PlaneField, ...]:
     Raises
     ------
     SamplingError : so much of it that the answer would be another beam.
+
+    Examples
+    --------
+    >>> from fastaxis.elements import FreeSpace, Laser, Polarizer
+    >>> from fastaxis.plan import make_plan
+    >>> from fastaxis.train import Train
+    >>> train = Train(wavelength=633e-9).along(Laser(waist=1e-3, power=2e-3), Polarizer(axis=0.0), FreeSpace(0.5))
+    >>> (field,) = propagate(make_plan(train, "space1"))
+    >>> round(field.power, 12)
+    0.002
     """
     engine = import_module(f"fastaxis.engines.{plan.engine}")
     return tuple(engine.run(branch) for branch in plan.branches)

@@ -38,6 +38,16 @@ def powers(train: Any) -> dict[Port, float]:
     ------
     SymbolError : a letter without a value on the way.
     WiringError : light by two paths meets in a port.
+
+    Examples
+    --------
+    >>> from fastaxis.elements import Laser, PolarizingBeamSplitter
+    >>> from fastaxis.light import D
+    >>> from fastaxis.train import Train
+    >>> laser = Laser(waist=1e-3, power=2e-3, state=D)
+    >>> train = Train(wavelength=633e-9).along(laser, PolarizingBeamSplitter(name="pbs"))
+    >>> {port: round(watts, 9) for port, watts in powers(train).items()}
+    {('laser1', 'out'): 0.002, ('pbs', 'transmitted'): 0.001, ('pbs', 'reflected'): 0.001}
     """
     graph = train.graph
     ledger: dict[Port, float] = {}

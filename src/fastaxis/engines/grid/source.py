@@ -10,6 +10,7 @@ from scipy.ndimage import binary_dilation
 from scipy.special import erf
 
 from fastaxis.engines.grid.light import GridLight, axis, curve, multiply_separable
+from fastaxis.light import SampledMode
 from fastaxis.plan import Branch
 from fastaxis.plan.sampling import Sampling
 
@@ -42,20 +43,21 @@ def start(branch: Branch, sampling: Sampling) -> GridLight:
 def _shape(mode: Any, x: NDArray[np.float64], pitch: float, wavelength: float) -> NDArray[np.complex128]:
     values = mode.amplitude(x[None, :], x[:, None], wavelength)
     shape = np.array(np.broadcast_to(values, (x.size, x.size)), dtype=complex)
-    return _softened(shape, mode, x, pitch, wavelength) if mode.hard else shape
+    if mode.hard:
+        _soften(shape, mode, x, pitch, wavelength)
+    if mode.hard or isinstance(mode, SampledMode):
+        # What edges and splines between foreign samples leave of unit power is the sampling's doing, not the beam's.
+        shape /= np.sqrt(np.vdot(shape, shape).real * pitch**2)
+    return shape
 
 
-def _softened(
-    shape: NDArray[np.complex128], mode: Any, x: NDArray[np.float64], pitch: float, wavelength: float
-) -> NDArray[np.complex128]:
+def _soften(shape: NDArray[np.complex128], mode: Any, x: NDArray[np.float64], pitch: float, wavelength: float) -> None:
     """A hard edge averaged over each sample it crosses; cut to whole samples its area would be wrong by chance."""
     lit = shape != 0
     rows, columns = np.nonzero(binary_dilation(lit) & binary_dilation(~lit))
     shifts = axis(SUB, pitch / SUB)
     parts = (mode.amplitude(x[columns] + dx, x[rows] + dy, wavelength) for dx in shifts for dy in shifts)
     shape[rows, columns] = sum(parts) / SUB**2
-    shape /= np.sqrt(np.vdot(shape, shape).real * pitch**2)
-    return shape
 
 
 def _fading(x: NDArray[np.float64], window: float) -> NDArray[np.float64]:
