@@ -11,8 +11,8 @@ def test_a_plan_says_what_was_fused_which_engine_and_the_samples(bench):
         Lens(focal=0.3),
         FreeSpace(0.3),
     ]
-    text = str(make_plan(bench(*parts), "cam"))
-    assert text.startswith("plan for cam: engine grid, because the light has a shape, or parts give it one")
+    text = str(make_plan(bench(*parts), "cam", engine="grid"))
+    assert text.startswith("plan for cam: engine grid, because asked for")
     assert "spaces and lenses merged into ABCD sections (5 -> 3 steps)" in text
     assert "2. qp: axis law, q = 0.5; window" in text
     assert "3. space1, lens1, space2: ABCD (0, 300 mm; -3.333/m, 0), path 600 mm; single transform -> window" in text
@@ -21,7 +21,7 @@ def test_a_plan_says_what_was_fused_which_engine_and_the_samples(bench):
 
 def test_scalar_parts_and_reflections_are_named(bench):
     parts = [SpiralPlate(charge=-2), Wedge(x=1 * mrad), Aperture(radius=2 * mm), FreeSpace(0.1), Mirror()]
-    text = str(make_plan(bench(*parts), "cam"))
+    text = str(make_plan(bench(*parts), "cam", engine="grid"))
     assert "scalar law, charge -2, tilt (1, 0) mrad, stop Disc" in text and "x reversed" in text
     assert "scaled angular spectrum -> window" in text
 
