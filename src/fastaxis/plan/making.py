@@ -79,7 +79,7 @@ def make_plan(
     train : the train asked.
     target : camera, detector or port, "cam" or "pbs.reflected".
     grid : samples set by hand, for the grid engine.
-    engine : "auto", "uniform", "azimuthal" or "grid".
+    engine : "auto", "uniform" or "grid".
     power_only : ask for total power only; a lossless end of the path is left out.
 
     Raises
@@ -99,7 +99,7 @@ def make_plan(
     >>> train = Train(wavelength=532e-9).along(
     ...     Laser(waist=0.8e-3), HalfWavePlate(fast=0.1), FreeSpace(0.2), QPlate(q=0.5), FreeSpace(0.3)
     ... )
-    >>> plan = make_plan(train, "space2")
+    >>> plan = make_plan(train, "space2", engine="grid")
     >>> plan.engine, [step.names for step in plan.steps]
     ('grid', [('plate1',), ('space1',), ('qplate1',), ('space2',)])
     """
@@ -107,7 +107,7 @@ def make_plan(
     if power_only:
         plan = drop_trailing(plan)
     bucket = power_only or _is_bucket(train, target)
-    name, reason = choose(plan.steps, plan.source, bucket=bucket, asked=engine, sampled=grid is not None)
+    name, reason = choose(plan.steps, plan.source, bucket=bucket, asked=engine)
     if name == "grid":
         plan = _sampled(plan, grid)
     return replace(plan, engine=name, reason=reason)
