@@ -53,6 +53,24 @@ def test_s3_and_r_follow_the_view_together(bench, run, view):
     assert (found["S3"], found["frame behind R"]) == expected
 
 
+def test_names_in_a_formula_are_explained(bench, run):
+    text = """\
+    train = fa.Train(wavelength=532*nm)
+    train.along(fa.Laser(waist=1*mm, name="laser"), fa.FreeSpace(1*m), fa.Camera(pixel=20*um, name="cam"))
+    """
+    assert "    with w = " in run("derive", bench(text)).out
+
+
+def test_a_form_that_cannot_be_checked_says_so(bench, run, monkeypatch):
+    def refuse(*_, **__):
+        raise fa.SamplingError("a window is too small", got="cam: 1 mm", fix="--grid 64,2mm")
+
+    monkeypatch.setattr("fastaxis.engines.symbolic.form.Form.check", refuse)
+    ran = run("derive", bench(SWITCH))
+    assert ran.code == 0
+    assert "not checked: cam: 1 mm; a window is too small" in ran.out
+
+
 def test_latex(bench, run):
     alpha, phi = (sp.Symbol(name, real=True) for name in ("alpha", "phi"))
     found = formulas(run("derive", bench(SWITCH), "--latex").out)

@@ -28,7 +28,7 @@ class Predicted:
 @pytest.fixture
 def predicted(run, examples, tmp_path):
     def predict(name):
-        ran = run("predict", examples / f"{name}.py", "--out", "out", "--format", "png")
+        ran = run("predict", examples / f"{name}.py", "--out", "out", "--format", "png", "--dpi", "40")
         assert ran.code == 0
         return Predicted(ran.out, ran.err, tmp_path / "out")
 

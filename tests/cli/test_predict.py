@@ -5,6 +5,12 @@ import fastaxis as fa
 from fastaxis.camera import load, read_pictures
 
 
+METER = """\
+train = fa.Train(wavelength=532*nm, name="Gannet")
+train.along(fa.Laser(waist=0.5*mm, power=4*mW, state=fa.D, name="laser"), fa.Detector(name="meter"))
+"""
+
+
 def table(text):
     """{setting: cells} of a printed table."""
     rows = [line.split() for line in text.splitlines() if "%" in line]
@@ -26,8 +32,8 @@ def test_everything_is_written_and_the_table_printed(bench, run, tmp_path):
 
 
 def test_without_out_the_folder_is_named_after_the_bench(bench, run, tmp_path):
-    run("predict", bench(name="quay.py"), "--format", "png")
-    assert (tmp_path / "quay_predicted" / "cam_frames.png").exists()
+    run("predict", bench(METER, name="quay.py"), "--format", "png")
+    assert (tmp_path / "quay_predicted" / "meter_powers.png").exists()
 
 
 def test_the_data_can_be_read_back(bench, run, tmp_path):
@@ -51,13 +57,7 @@ def test_the_source_view_renames_everything_at_once(bench, run, tmp_path):
 
 
 def test_settings_come_from_the_command_then_the_bench_then_six(bench, run):
-    own = bench(
-        """\
-        train = fa.Train(wavelength=532*nm, name="Gannet")
-        train.along(fa.Laser(waist=0.5*mm, name="laser"), fa.Detector(name="meter"))
-        settings = (fa.A,)
-        """
-    )
+    own = bench(METER + "settings = (fa.A,)")
     assert list(table(run("predict", own, "--format", "png").out)) == ["A"]
     assert list(table(run("predict", own, "--format", "png", "--settings", "four").out)) == ["H", "V", "D", "R"]
 
@@ -82,7 +82,7 @@ def test_a_letter_gets_its_value(bench, run):
 
 
 def test_a_grid_of_the_users_own(bench, run):
-    assert "64 x 64" in run("predict", bench(), "--grid", "64,4mm", "--format", "png").out
+    assert "64 x 64" in run("explain", bench(), "--grid", "64,4mm", "--format", "png").out
 
 
 def test_power_that_leaves_is_cautioned_about(bench, run):
@@ -100,7 +100,7 @@ def test_power_that_leaves_is_cautioned_about(bench, run):
 
 
 def test_no_caution_on_a_closed_bench(bench, run):
-    assert run("predict", bench(), "--format", "png").err == ""
+    assert run("predict", bench(METER), "--format", "png").err == ""
 
 
 def test_all_cameras_are_predicted_unless_one_is_named(bench, run, tmp_path):

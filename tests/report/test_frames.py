@@ -53,6 +53,13 @@ def test_no_text_lies_on_another_or_outside(poincare_shots, assert_nothing_colli
     assert_nothing_collides(draw_frames(poincare_shots([linear(k * np.pi / count) for k in range(count)])))
 
 
+def test_places_without_a_picture_stay_empty_and_the_axes_above_them_are_numbered(poincare_shots):
+    figure = draw_frames(poincare_shots([linear(k * np.pi / 5) for k in range(5)]))
+    axes = pictures(figure)
+    assert len(axes) == 5
+    assert [one.get_xlabel().endswith("x [mm]") for one in axes] == [False, False, True, True, True]
+
+
 def test_64_long_names_fit(poincare_shots, assert_nothing_collides):
     figure = draw_frames(poincare_shots(rotating_plate(64)))
     assert_nothing_collides(figure)

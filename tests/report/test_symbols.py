@@ -51,6 +51,10 @@ def test_a_mirror_met_head_on_stands_across_the_beam():
     assert ends[:, 0] == pytest.approx([0, 0], abs=1e-12)
 
 
+def test_a_splitter_without_light_is_drawn_too():
+    assert len(drawn(fa.BeamSplitter(), Place(0, 0))) == 2
+
+
 def test_a_camera_looks_at_the_light():
     sensor = drawn(fa.Camera(pixel=1e-6), Place(0, 0, UP))[1]
     assert sensor[:, 1].max() < 0
