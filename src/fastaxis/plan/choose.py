@@ -6,11 +6,12 @@ from fastaxis.errors import ParameterError
 from fastaxis.laws import Flip, ScalarLaw, TravelLaw, Turn
 from fastaxis.light import Source
 from fastaxis.maths import Pattern
+from fastaxis.plan.covariant import covariance_reason
 from fastaxis.plan.steps import JonesStep, StepLaw, Steps
 
 __all__ = ["ENGINES", "choose"]
 
-ENGINES = ("uniform", "grid")
+ENGINES = ("uniform", "azimuthal", "grid")
 
 
 def _keeps_power(law: StepLaw) -> bool:
@@ -39,7 +40,17 @@ def _uniform_reason(steps: Steps, source: Source, *, bucket: bool) -> str:
     return ""
 
 
-def choose(steps: Steps, source: Source, *, bucket: bool, asked: str) -> tuple[str, str]:
+def _automatic(uniform: str, shaped: str, *, sampled: bool) -> tuple[str, str]:
+    if uniform:
+        return "uniform", uniform
+    if sampled:
+        return "grid", "a grid was set by hand"
+    if shaped:
+        return "grid", shaped
+    return "azimuthal", "beam and parts are round about the axis"
+
+
+def choose(steps: Steps, source: Source, *, bucket: bool, asked: str, sampled: bool = False) -> tuple[str, str]:
     """(engine, reason).
 
     Parameters
@@ -47,20 +58,28 @@ def choose(steps: Steps, source: Source, *, bucket: bool, asked: str) -> tuple[s
     steps, source : what the light goes through, and the light.
     bucket : whether only the total power and state at the target are asked for.
     asked : "auto", or an engine by name.
+    sampled : whether a grid was set by hand.
 
     Raises
     ------
     ParameterError : no such engine, or one that cannot answer this.
     """
     reason = _uniform_reason(steps, source, bucket=bucket)
+    shaped = covariance_reason(steps, source)
     if asked == "auto":
-        return ("uniform", reason) if reason else ("grid", "the light has a shape, or parts give it one")
+        return _automatic(reason, shaped, sampled=sampled)
     if asked not in ENGINES:
         raise ParameterError(f"the engines are {', '.join(ENGINES)}", got=f"engine = {asked!r}", fix='engine="auto"')
     if asked == "uniform" and not reason:
         raise ParameterError(
             "the uniform engine follows no transverse structure, and this question has some",
             got="engine = 'uniform'",
+            fix='engine="grid"',
+        )
+    if asked == "azimuthal" and shaped:
+        raise ParameterError(
+            "the azimuthal engine wants beam and parts round about the axis",
+            got=f"engine = 'azimuthal', but {shaped}",
             fix='engine="grid"',
         )
     return asked, "asked for"

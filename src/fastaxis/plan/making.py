@@ -79,7 +79,7 @@ def make_plan(
     train : the train asked.
     target : camera, detector or port, "cam" or "pbs.reflected".
     grid : samples set by hand, for the grid engine.
-    engine : "auto", "uniform" or "grid".
+    engine : "auto", "uniform", "azimuthal" or "grid".
     power_only : ask for total power only; a lossless end of the path is left out.
 
     Raises
@@ -107,7 +107,7 @@ def make_plan(
     if power_only:
         plan = drop_trailing(plan)
     bucket = power_only or _is_bucket(train, target)
-    name, reason = choose(plan.steps, plan.source, bucket=bucket, asked=engine)
+    name, reason = choose(plan.steps, plan.source, bucket=bucket, asked=engine, sampled=grid is not None)
     if name == "grid":
         plan = _sampled(plan, grid)
     return replace(plan, engine=name, reason=reason)

@@ -43,7 +43,7 @@ class Plan:
     wavelength : of the train [m].
     source : the light at the start.
     branches : one for each incoherent part of the source.
-    engine : "uniform" or "grid".
+    engine : "uniform", "azimuthal" or "grid".
     reason : why this engine.
     notes : what the passes did.
     """

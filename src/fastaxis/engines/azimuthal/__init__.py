@@ -1,0 +1,11 @@
+"""Light about one axis: a few azimuthal harmonics in the circular basis, moved by the Collins integral.
+
+Each harmonic f_l(r) exp(i l phi) lives on panels of Gauss-Legendre nodes, so hard rims cost no accuracy, nothing
+wraps around, and the plane of the target may be as wide or as narrow as one likes.
+"""
+
+from fastaxis.engines.azimuthal.plane import AzimuthalField
+from fastaxis.engines.azimuthal.resolving import Settings
+from fastaxis.engines.azimuthal.running import run
+
+__all__ = ["AzimuthalField", "Settings", "run"]

@@ -1,0 +1,148 @@
+"""Functions of the radius as Legendre polynomials on panels: quadrature, interpolation and refinement in one."""
+
+from __future__ import annotations
+
+from collections.abc import Callable
+from dataclasses import dataclass
+from functools import cached_property, lru_cache
+from typing import Any, TypeAlias
+
+import numpy as np
+from numpy.typing import NDArray
+
+__all__ = ["ORDER", "Complexes", "Profile", "Reals", "sampled"]
+
+Reals: TypeAlias = NDArray[np.float64]
+Complexes: TypeAlias = NDArray[np.complex128]
+
+ORDER = 32
+"""Nodes a panel. High orders need fewer nodes a fringe: 32 carry 2.5 fringes to the last digit."""
+
+NODES, WEIGHTS = np.polynomial.legendre.leggauss(ORDER)
+_VANDER = np.polynomial.legendre.legvander(NODES, ORDER - 1)
+# c_j = (2j+1)/2 sum_i w_i P_j(x_i) f(x_i): exact for polynomials of the panel, the rule being exact to 2 ORDER - 1.
+_TO_COEFFICIENTS = (_VANDER * WEIGHTS[:, np.newaxis] * (np.arange(ORDER) + 0.5)).T
+
+
+@lru_cache(maxsize=64)
+def _split(count: int) -> tuple[Reals, Reals, Reals]:
+    """Nodes and weights on ``count`` equal parts of [-1, 1], and the matrix from coefficients to values there."""
+    middles = (2 * np.arange(count) + 1) / count - 1
+    nodes = (middles[:, np.newaxis] + NODES / count).ravel()
+    matrix = np.asarray(np.polynomial.legendre.legvander(nodes, ORDER - 1), dtype=float)
+    return nodes, np.tile(WEIGHTS / count, count), matrix
+
+
+@dataclass(frozen=True, eq=False)
+class Profile:
+    """Several complex functions of the radius on common panels.
+
+    Parameters
+    ----------
+    edges : panel borders [m], ascending, shape (panels + 1,). Outside of them every function is zero.
+    values : at the Gauss-Legendre nodes of the panels, shape (functions, panels, ORDER).
+    """
+
+    edges: Reals
+    values: Complexes
+
+    @cached_property
+    def coefficients(self) -> Complexes:
+        """Legendre coefficients, shape (functions, panels, ORDER)."""
+        return np.asarray(self.values @ _TO_COEFFICIENTS.T)
+
+    @property
+    def start(self) -> float:
+        return float(self.edges[0])
+
+    @property
+    def end(self) -> float:
+        return float(self.edges[-1])
+
+    @cached_property
+    def nodes(self) -> Reals:
+        """All nodes [m], ascending, shape (panels * ORDER,)."""
+        return nodes_on(self.edges)
+
+    @cached_property
+    def weights(self) -> Reals:
+        """Weights of the integral over dr [m]."""
+        return np.asarray((np.diff(self.edges)[:, np.newaxis] / 2 * WEIGHTS).ravel())
+
+    @cached_property
+    def peak(self) -> float:
+        """Largest modulus among the nodes."""
+        return float(abs(self.values).max(initial=0.0))
+
+    def flat(self) -> Complexes:
+        """Values at :attr:`nodes`, shape (functions, nodes)."""
+        return self.values.reshape(len(self.values), -1)
+
+    def powers(self) -> Reals:
+        """2 pi times the integral of |f|^2 r dr of each function, exact for the panels' polynomials."""
+        weight = 2 * np.pi * self.weights * self.nodes
+        return np.asarray((abs(self.flat()) ** 2) @ weight)
+
+    def __call__(self, r: Reals) -> Complexes:
+        """Values at any radii [m], shape (functions, len(r)); zero outside the panels."""
+        panel = np.clip(np.searchsorted(self.edges, r, side="right") - 1, 0, len(self.edges) - 2)
+        low, high = self.edges[panel], self.edges[panel + 1]
+        place = (2 * r - low - high) / (high - low)
+        inside = (r >= self.start) & (r <= self.end)
+        return np.asarray(_clenshaw(self.coefficients[:, :, : self.degree + 1], panel, place) * inside)
+
+    @cached_property
+    def degree(self) -> int:
+        """Highest Legendre degree that still matters to the last digit."""
+        size = abs(self.coefficients).max(axis=(0, 1))
+        return int(np.flatnonzero(size > 1e-16 * size.max(initial=0.0)).max(initial=1))
+
+    def refined(self, counts: NDArray[np.int_]) -> tuple[Reals, Reals, Complexes]:
+        """Nodes, weights and values with each panel cut into so many equal parts."""
+        nodes, weights, values = [], [], []
+        # Neighbours cut alike are done together: there are few different counts.
+        borders = np.flatnonzero(np.diff(counts)) + 1
+        for some in np.split(np.arange(len(counts)), borders):
+            place, weight, matrix = _split(int(counts[some[0]]))
+            half = np.diff(self.edges)[some, np.newaxis] / 2
+            nodes.append((self.edges[some, np.newaxis] + half * (1 + place)).ravel())
+            weights.append((half * weight).ravel())
+            values.append((self.coefficients[:, some] @ matrix.T).reshape(len(self.values), -1))
+        return np.concatenate(nodes), np.concatenate(weights), np.concatenate(values, axis=1)
+
+    def combined(self, matrix: Complexes) -> Profile:
+        """Linear combinations: row i of the matrix gives new function i."""
+        return Profile(self.edges, np.tensordot(matrix, self.values, axes=1))
+
+    def clipped(self, start: float, end: float) -> Profile:
+        """The part between two radii, the panels cut exactly there."""
+        inner = self.edges[(self.edges > start) & (self.edges < end)]
+        edges = np.concatenate([[max(start, self.start)], inner, [min(end, self.end)]])
+        if edges[-1] <= edges[0]:
+            return Profile(np.array([start, end]), np.zeros((len(self.values), 1, ORDER), dtype=complex))
+        return sampled(self, edges)
+
+    def stretched(self, factor: float) -> Profile:
+        """f(r / factor)."""
+        return Profile(self.edges * factor, self.values)
+
+
+def _clenshaw(coefficients: Complexes, panel: NDArray[np.intp], place: Reals) -> Complexes:
+    """Sum of Legendre polynomials, from the highest degree down."""
+    last = this = np.zeros((len(coefficients), len(place)), dtype=complex)
+    for j in range(coefficients.shape[2] - 1, 0, -1):
+        step = coefficients[:, panel, j] + (2 * j + 1) / (j + 1) * place * this - (j + 1) / (j + 2) * last
+        last, this = this, step
+    return np.asarray(coefficients[:, panel, 0] + place * this - 0.5 * last)
+
+
+def nodes_on(edges: Reals) -> Reals:
+    """Gauss-Legendre nodes of all panels, ascending."""
+    low, high = edges[:-1, np.newaxis], edges[1:, np.newaxis]
+    return np.asarray(((high + low) / 2 + (high - low) / 2 * NODES).ravel())
+
+
+def sampled(function: Callable[[Reals], Any], edges: Reals) -> Profile:
+    """A profile of a function that takes radii and gives (functions, len(r))."""
+    values = np.asarray(function(nodes_on(edges)), dtype=complex)
+    return Profile(edges, values.reshape(len(values), -1, ORDER))

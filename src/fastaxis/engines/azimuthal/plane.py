@@ -1,0 +1,103 @@
+"""The light of the azimuthal engine in the plane of a target."""
+
+from __future__ import annotations
+
+import math
+from dataclasses import dataclass, field
+
+import numpy as np
+from numpy.typing import NDArray
+
+from fastaxis.engines.azimuthal.applying import TO_CIRCULAR
+from fastaxis.engines.azimuthal.bucket import square_stokes
+from fastaxis.engines.azimuthal.harmonics import LEFT, RIGHT, Harmonics
+from fastaxis.engines.azimuthal.panels import Profile, Reals
+from fastaxis.engines.azimuthal.rendering import circular_field, corner, stokes_images
+from fastaxis.engines.azimuthal.resolving import Settings
+from fastaxis.engines.azimuthal.table import table_of
+from fastaxis.engines.azimuthal.travelling import arrived
+from fastaxis.engines.field import Guard
+from fastaxis.light import Raster
+
+__all__ = ["AzimuthalField"]
+
+
+@dataclass(frozen=True, eq=False)
+class AzimuthalField:
+    """Coherent light as harmonics about the axis; the last section is travelled to just the radii asked for.
+
+    Parameters
+    ----------
+    wavelength : [m].
+    harmonics : the light before its last section.
+    settings : how far the engine goes.
+    """
+
+    wavelength: float
+    harmonics: Harmonics
+    settings: Settings = field(default_factory=Settings)
+    _arrivals: dict[float, Harmonics] = field(default_factory=dict, repr=False)
+
+    @property
+    def power(self) -> float:
+        """Total power [W], by radial quadrature; travel conserves it."""
+        return self.harmonics.power
+
+    @property
+    def total_stokes(self) -> NDArray[np.float64]:
+        """S0 .. S3 of all the light [W], shape (4,); S1 and S2 from equal charges, other pairs cancel around."""
+        (left, right), beyond = self.harmonics.powers, self.harmonics.beyond
+        left, right = left + beyond[LEFT], right + beyond[RIGHT]
+        cross = 2 * _same_charge(self.harmonics)
+        return np.array([left + right, cross.real, cross.imag, right - left])
+
+    @property
+    def guard(self) -> Guard:
+        """Nothing is sampled in the plane; light outside a cut field counts as discarded."""
+        power = self.power
+        return Guard(discarded=sum(self.harmonics.beyond) / power if power else 0.0)
+
+    def out_to(self, reach: float) -> Harmonics:
+        """The harmonics in the target's plane, out to a radius [m]; its ``error`` is the estimate."""
+        known = [far for far in self._arrivals if reach <= far <= 2 * reach]
+        if known:
+            return self._arrivals[min(known)]
+        self._arrivals[reach] = arrived(self.harmonics, self.settings, end=reach)
+        return self._arrivals[reach]
+
+    def error(self, reach: float) -> float:
+        """Expected error of the field out to a radius [m], as a share of its peak there."""
+        return self.out_to(reach).error
+
+    def stokes_on(self, raster: Raster) -> NDArray[np.float64]:
+        """Watts per pixel of S0 .. S3, integrated over each pixel, shape (4, ny, nx)."""
+        if raster.shape == (1, 1) and raster.centre == (0.0, 0.0):
+            return self._on_square(raster.pitch)[:, np.newaxis, np.newaxis]
+        arrival = self.out_to(corner(raster))
+        return stokes_images(arrival.profile, arrival.orders, raster)
+
+    def _on_square(self, side: float) -> NDArray[np.float64]:
+        whole = self._arrivals.setdefault(math.inf, arrived(self.harmonics, self.settings))
+        if whole.profile.end <= side / 2:
+            return self.total_stokes
+        return square_stokes(self.out_to(side / math.sqrt(2)), side)
+
+    def at(self, x: NDArray[np.float64], y: NDArray[np.float64]) -> NDArray[np.complex128]:
+        """(Ex, Ey) [sqrt(W)/m] at columns x and rows y [m], shape (2, ny, nx)."""
+        x, y = np.atleast_1d(np.asarray(x, dtype=float)), np.atleast_1d(np.asarray(y, dtype=float))
+        # An axis place alone still needs panels, which have a width.
+        reach = max(math.hypot(abs(x).max(), abs(y).max()), 1e-3 * self.wavelength)
+        arrival = self.out_to(reach * (1 + 1e-9))
+        circular = circular_field(table_of(arrival.profile, reach), arrival.orders, x, y)
+        bend = self.harmonics.wavenumber * arrival.curvature / 2
+        circular *= np.exp(1j * bend * (x**2 + y[:, np.newaxis] ** 2))
+        return np.tensordot(TO_CIRCULAR.conj().T, circular, axes=1)
+
+
+def _same_charge(harmonics: Harmonics) -> complex:
+    """Integral of E_L* E_R over the plane."""
+    profile: Profile = harmonics.profile
+    weight: Reals = 2 * np.pi * profile.weights * profile.nodes
+    values = dict(zip(harmonics.orders, profile.flat(), strict=True))
+    pairs = [(values[LEFT, l], values[RIGHT, l]) for hand, l in values if hand == LEFT and (RIGHT, l) in values]
+    return complex(sum((left.conj() * right) @ weight for left, right in pairs))

@@ -1,0 +1,128 @@
+"""The light of a source as harmonics."""
+
+from __future__ import annotations
+
+import math
+from collections.abc import Callable
+from typing import Any
+
+import numpy as np
+
+from fastaxis.engines.azimuthal.applying import TO_CIRCULAR
+from fastaxis.engines.azimuthal.harmonics import LEFT, RIGHT, Harmonics
+from fastaxis.engines.azimuthal.panels import ORDER, Complexes, Profile, Reals
+from fastaxis.engines.azimuthal.resolving import Settings, extended, resolved
+from fastaxis.laws import Annulus, TravelLaw
+from fastaxis.plan import Branch, JonesStep
+from fastaxis.plan.steps import Steps
+
+__all__ = ["started"]
+
+Radial = Callable[[Reals], Complexes]
+
+
+def started(branch: Branch, settings: Settings) -> tuple[Harmonics, Steps]:
+    """The harmonics where they begin, scaled to the power of the branch, and the steps left to do.
+
+    Most light begins in the plane of the source; a plane wave begins at the first hole, since it changes nothing of
+    itself on the way there.
+    """
+    if any(term.mode.infinite for term in branch.beam.terms):
+        return started_at_stop(branch)
+    return started_at_source(branch, settings), branch.steps
+
+
+def started_at_stop(branch: Branch) -> tuple[Harmonics, Steps]:
+    """A plane wave through an ABCD section is (1/a) exp(i k c r^2/2a), cut off by the first hole behind it."""
+    first = next(i for i, step in enumerate(branch.steps) if getattr(step.law, "stop", None) is not None)
+    rim = _rim(branch.steps[first].law)
+    level = [term.number * complex(term.mode.radial(0.0, branch.wavelength)) for term in branch.beam.terms]
+    jones = np.array([term.state.jones for term in branch.beam.terms]).T @ np.array(level)
+    jones = jones * branch.beam.scale(branch.wavelength) * math.sqrt(branch.power)
+    section = TravelLaw()
+    for step in branch.steps[:first]:
+        if isinstance(step.law, TravelLaw):
+            section = section.then(step.law)
+        elif isinstance(step.law, JonesStep):
+            jones = np.array(step.law.matrix) @ jones
+    hands = TO_CIRCULAR @ jones / section.a
+    kept = [hand for hand in (LEFT, RIGHT) if abs(hands[hand]) > 4 * np.finfo(float).eps * abs(hands).max()]
+    values = np.ones((1, 1, ORDER)) * hands[kept, np.newaxis, np.newaxis]
+    field = Harmonics(
+        orders=tuple((hand, 0) for hand in kept),
+        profile=Profile(np.array([0.0, rim]), values),
+        curvature=section.c / section.a,
+        wavenumber=2 * math.pi / branch.wavelength,
+    )
+    return field, branch.steps[first:]
+
+
+def _rim(law: Any) -> float:
+    return float(law.stop.outer if isinstance(law.stop, Annulus) else law.stop.radius)
+
+
+def started_at_source(branch: Branch, settings: Settings) -> Harmonics:
+    """The harmonics in the plane of the source."""
+    wavelength, terms = branch.wavelength, branch.beam.terms
+    scale = branch.beam.scale(wavelength) * math.sqrt(branch.power)
+    main = max(terms, key=lambda term: abs(term.number)).mode
+    curvature = float(main.curvature(wavelength))
+    wavenumber = 2 * math.pi / wavelength
+    rows: dict[tuple[int, int], list[tuple[int, complex]]] = {}
+    radials: list[Radial] = []
+    for term in terms:
+        hands = scale * term.number * (TO_CIRCULAR @ term.state.jones)
+        for l, radial in _harmonics(term.mode, wavelength):
+            for hand in (LEFT, RIGHT):
+                if abs(hands[hand]) > 4 * np.finfo(float).eps * abs(hands).max():
+                    rows.setdefault((hand, l), []).append((len(radials), complex(hands[hand])))
+            radials.append(radial)
+
+    def relative(r: Reals) -> Complexes:
+        front = np.exp(-1j * wavenumber * curvature / 2 * r**2)
+        return np.stack([radial(r) * front for radial in radials])
+
+    profile, rest = _profile([term.mode for term in terms], relative, wavelength, settings)
+    matrix = np.zeros((len(rows), len(radials)), dtype=complex)
+    for i, parts in enumerate(rows.values()):
+        for j, amplitude in parts:
+            matrix[i, j] += amplitude
+    return Harmonics(
+        orders=tuple(rows),
+        profile=profile.combined(matrix),
+        curvature=curvature,
+        wavenumber=wavenumber,
+        error=rest,
+    ).without_dark()
+
+
+def _harmonics(mode: Any, wavelength: float) -> list[tuple[int, Radial]]:
+    """(l, f_l) of a mode on the axis."""
+    if mode.charge is not None:
+        return [(int(mode.charge), lambda r: mode.radial(r, wavelength))]
+    # A polynomial of degree N times a round envelope has |l| <= N: so many samples around separate them exactly.
+    around = np.arange(2 * mode.degree + 2) * (math.pi / (mode.degree + 1))
+
+    def part(l: int) -> Radial:
+        turn = np.exp(-1j * l * around) / len(around)
+        return lambda r: (
+            turn
+            @ mode.amplitude(np.multiply.outer(np.cos(around), r), np.multiply.outer(np.sin(around), r), wavelength)
+        )
+
+    # Only orders of the parity of the degree occur.
+    return [(l, part(l)) for l in range(-mode.degree, mode.degree + 1, 2)]
+
+
+def _profile(modes: list[Any], radials: Radial, wavelength: float, settings: Settings) -> tuple[Profile, float]:
+    hard = [float(mode.radius) for mode in modes if mode.hard]
+    if hard:
+        # Panels break at each edge; beyond the last edge soft modes go on.
+        soft = [4 * math.sqrt(mode.moments(wavelength).x2) for mode in modes if not mode.hard]
+        edges = np.unique([0.0, *hard, *(w for w in soft if w > max(hard))])
+        if not soft:
+            return resolved(radials, edges, settings)
+    else:
+        edges = np.linspace(0, 6 * max(math.sqrt(mode.moments(wavelength).x2) for mode in modes), 4)
+    profile, rest, _ = extended(radials, edges, settings)
+    return profile, rest

@@ -1,0 +1,67 @@
+"""Radial functions tabled finely, so that a million radii cost a million short polynomials."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+
+import numpy as np
+
+from fastaxis.engines.azimuthal.panels import Complexes, Profile, Reals
+
+__all__ = ["Table", "table_of"]
+
+POINTS = 8  # a cell: polynomials of degree 7, so halving a cell gains a factor 256
+CHEBYSHEV: Reals = np.cos(np.pi * (np.arange(POINTS) + 0.5) / POINTS)
+TO_POWERS = np.linalg.inv(np.vander(CHEBYSHEV, increasing=True)).T
+FINEST = 1 << 15
+SETTLED = 2e-13  # of the peak: twice what the panels themselves are settled to
+
+
+@dataclass(frozen=True, eq=False)
+class Table:
+    """Polynomials on equal cells from 0 to ``reach``.
+
+    Parameters
+    ----------
+    reach : outermost radius [m].
+    powers : coefficients of 1, t, t^2 ... with t in [-1, 1] on each cell, shape (functions, cells, POINTS).
+    """
+
+    reach: float
+    powers: Complexes
+
+    def __call__(self, r: Reals) -> Complexes:
+        """Values at radii up to ``reach`` [m], shape (functions, *r.shape)."""
+        cells = self.powers.shape[1]
+        place = r * (cells / self.reach)
+        cell = np.minimum(place.astype(np.intp), cells - 1)
+        t = (2 * (place - cell) - 1).ravel()
+        return np.stack([_horner(rows.take(cell.ravel(), axis=0), t).reshape(r.shape) for rows in self.powers])
+
+
+def _horner(rows: Complexes, t: Reals) -> Complexes:
+    total = rows[:, -1] * t
+    for j in range(POINTS - 2, 0, -1):
+        total += rows[:, j]
+        total *= t
+    total += rows[:, 0]
+    return np.asarray(total)
+
+
+def _at(profile: Profile, reach: float, cells: int) -> Table:
+    r = (np.arange(cells)[:, np.newaxis] + (1 + CHEBYSHEV) / 2) * (reach / cells)
+    values = profile(r.ravel()).reshape(-1, cells, POINTS)
+    return Table(reach, values @ TO_POWERS)
+
+
+def table_of(profile: Profile, reach: float) -> Table:
+    """A table of a profile, refined until it agrees with it off its own points."""
+    reach = min(reach, profile.end) if profile.end > 0 else reach
+    cells = max(16, 2 * (len(profile.edges) - 1))
+    while True:
+        table = _at(profile, reach, cells)
+        # The places where a Chebyshev interpolant is worst, a third of the way off its points.
+        r = (np.arange(cells, dtype=float) + 0.4755) * (reach / cells)
+        if cells >= FINEST or abs(table(r) - profile(r)).max() <= SETTLED * profile.peak:
+            return table
+        cells *= 2
