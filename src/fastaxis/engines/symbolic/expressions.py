@@ -11,7 +11,7 @@ from fastaxis.engines.symbolic.ring.poly import Poly
 from fastaxis.engines.symbolic.ring.ring import ANGLE, UNIT, Ring
 from fastaxis.engines.symbolic.ring.roots import TURN
 
-__all__ = ["angle_of", "as_sum", "amplitude_of", "real_sum", "split_key", "written"]
+__all__ = ["amplitude_of", "angle_of", "as_sum", "real_sum", "split_key", "written"]
 
 
 def split_key(ring: Ring, key: int) -> tuple[int, int, int]:

@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from dataclasses import dataclass
 from fractions import Fraction
-from functools import reduce
+from functools import partial, reduce
 from typing import Any
 
 import sympy as sp
@@ -60,6 +60,22 @@ class Field:
             pieces.append((turned, (left, right)))
         return Field(tuple(pieces), self.place, self.scale)
 
+    def turned(self, angle: Any) -> Field:
+        """With the picture turned counter-clockwise: phi - angle in place of phi, for plates and waves alike.
+
+        Raises
+        ------
+        ValueError : a wave that is not a function of r times exp(i l phi).
+        """
+        pieces = []
+        for wave, pair in self.pieces:
+            if wave.total is None:
+                raise ValueError(wave)
+            phase = self.place.maths.phasor(-wave.total * angle)
+            left, right = (_with_phi(poly, PHI - angle) * phase for poly in pair)
+            pieces.append((wave, (left, right)))
+        return Field(tuple(pieces), self.place, self.scale)
+
     def moved(self, section: Section) -> Field:
         """Behind a section of free space and lenses."""
         if section == Section():
@@ -96,7 +112,7 @@ Key = tuple[Any, Any]
 def split(pair: Pair) -> dict[Key, Pair]:
     """The Jones vector by its charge and its function of r."""
     zero = pair[0].ring.zero
-    left, right = (poly.parts(lambda key, poly=poly: _structure(poly, key)) for poly in pair)
+    left, right = (poly.parts(partial(_structure, poly)) for poly in pair)
     return {key: (left.get(key, zero), right.get(key, zero)) for key in left | right}
 
 

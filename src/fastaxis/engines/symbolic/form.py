@@ -25,7 +25,7 @@ from fastaxis.engines.symbolic.expressions import middle, split_key, written
 from fastaxis.engines.symbolic.field import Field, Pair
 from fastaxis.engines.symbolic.functions import NumericForm
 from fastaxis.engines.symbolic.presentations import compact, exponential, harmonics, series
-from fastaxis.engines.symbolic.ring import Poly
+from fastaxis.engines.symbolic.ring import ExactMaths, Poly
 from fastaxis.engines.symbolic.showing import Shown
 from fastaxis.engines.symbolic.slopes import derivative
 from fastaxis.errors import SymbolError
@@ -234,8 +234,7 @@ class Form(Shown):
         value = self._value(quantity, *arguments, **options)
         if absolute and quantity in ("stokes", "frame"):
             value = value * self.scale
-        self.meanings  # noqa: B018  # the waves give their names when they are written down
-        return NumericForm(self.parts[0].field.place.letters.spelled_out(value))
+        return NumericForm(self.spelled_out(value))
 
     def check(self, *, points: int = 24, seed: int = 1) -> Check:
         """The form beside numbers at random admissible points: the largest deviation, in roundings."""
@@ -249,7 +248,7 @@ class Form(Shown):
 
     # --- helpers ----------------------------------------------------------------------------------------------------
     @property
-    def _maths(self) -> Any:
+    def _maths(self) -> ExactMaths:
         return self.parts[0].field.place.maths
 
     def _only_pair(self) -> Pair:
@@ -262,7 +261,12 @@ class Form(Shown):
         return self.pairs[0][1]
 
     def _present(self, poly: Poly, way: str, **options: Any) -> Any:
-        ways = {"compact": compact, "exponential": exponential, "harmonics": harmonics, "series": series}
+        ways: dict[str, Any] = {
+            "compact": compact,
+            "exponential": exponential,
+            "harmonics": harmonics,
+            "series": series,
+        }
         if way not in ways:
             raise SymbolError(f"forms are written {', '.join(ways)}", got=f'way="{way}"', fix='way="compact"')
         return ways[way](poly, **options)

@@ -7,11 +7,12 @@ from dataclasses import dataclass
 from functools import cached_property
 from typing import Any
 
-import scipy.special
+import numpy as np
 import sympy as sp
 from sympy.printing.numpy import SciPyPrinter
 
 from fastaxis.engines.symbolic.coordinates import PHI, R
+from fastaxis.engines.symbolic.kummer_numbers import kummer
 from fastaxis.errors import SymbolError
 
 __all__ = ["NumericForm"]
@@ -21,10 +22,11 @@ class _Printer(SciPyPrinter):  # type: ignore[misc]  # sympy has no types
     """scipy's names for the special functions of the forms."""
 
     def _print_hyper(self, e: Any) -> str:
-        above, below = e.ap, e.bq
-        if len(above) != 1 or len(below) != 1:
-            return str(super()._print_hyper(e))
-        return f"hyp1f1({self._print(above[0])}, {self._print(below[0])}, {self._print(e.argument)})"
+        (above,), (below,) = e.ap, e.bq
+        return f"hyp1f1({self._print(above)}, {self._print(below)}, {self._print(e.argument)})"
+
+    def _print_conjugate(self, e: Any) -> str:
+        return f"conj({self._print(e.args[0])})"
 
 
 @dataclass(frozen=True, eq=False)
@@ -46,8 +48,8 @@ class NumericForm:
     @cached_property
     def positional(self) -> Any:
         """The bare numpy function, arguments in the order of ``letters``."""
-        return sp.lambdify(self.letters, self.expression, modules=[{"hyp1f1": scipy.special.hyp1f1}, "scipy", "numpy"],
-                           printer=_Printer, cse=True)  # fmt: skip
+        names = {"hyp1f1": kummer, "conj": np.conj}
+        return sp.lambdify(self.letters, self.expression, modules=[names, "scipy", "numpy"], printer=_Printer, cse=True)
 
     def __call__(self, values: Mapping[Any, Any] | None = None, **named: Any) -> Any:
         """The value; letters by symbol in a mapping or by name.

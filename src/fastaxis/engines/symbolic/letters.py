@@ -55,7 +55,7 @@ class Letters:
             self.notes.append(sentence)
 
     def spelled_out(self, expression: Any) -> Any:
-        """An expression with every name replaced by what it stands for."""
-        for symbol, meaning in reversed(self.meanings.items()):
-            expression = expression.subs(symbol, meaning)
+        """An expression with every name replaced by what it stands for; later names may stand for earlier ones."""
+        for name, meaning in reversed(self.meanings.items()):
+            expression = expression.subs(name, meaning)
         return expression

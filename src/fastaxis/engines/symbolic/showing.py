@@ -12,13 +12,22 @@ __all__ = ["Shown"]
 class Shown:
     """LaTeX, text and the list of assumptions of a form."""
 
+    parts: tuple[Any, ...]
+    letters: frozenset[Any]
+    target: str
+
+    @property
+    def meanings(self) -> dict[Any, Any]:
+        """What the names in the form stand for."""
+        raise NotImplementedError
+
     def latex(self, quantity: str = "jones", *arguments: Any, **options: Any) -> str:
         r"""LaTeX of a quantity in the user's own letters: "jones", "stokes", "power", or "frame" with its setting.
 
         What the names in it stand for follows after "with". ``form.latex("frame", theta)``.
         """
         value = self._value(quantity, *arguments, **options)
-        text = sp.latex(value)
+        text = str(sp.latex(value))
         used = self._explained(value)
         if used:
             text += r", \quad \text{with } " + r",\; ".join(
@@ -30,22 +39,25 @@ class Shown:
         """A quantity as text that sympy.sympify reads back; names are spelled out unless asked otherwise."""
         value = self._value(quantity, *arguments, **options)
         if spelled_out:
-            meanings = self.meanings  # type: ignore[attr-defined]
-            for name, meaning in reversed(meanings.items()):
-                value = value.subs(name, meaning)
-        return sp.sstr(value, full_prec=True)
+            value = self.spelled_out(value)
+        return str(sp.sstr(value, full_prec=True))
 
     @property
     def assumptions(self) -> tuple[str, ...]:
         """What the form takes for granted, one sentence each."""
-        place = self.parts[0].field.place  # type: ignore[attr-defined]
-        self.meanings  # noqa: B018  # writing the waves down makes their notes
-        letters = ", ".join(sorted(str(letter) for letter in self.letters))  # type: ignore[attr-defined]
+        place = self.parts[0].field.place
+        assert self.meanings is not None  # writing the waves down makes their notes
+        letters = ", ".join(sorted(str(letter) for letter in self.letters))
         lines = ["exp(-i w t), seen facing the source, angles counter-clockwise, S3 = I_R - I_L"]
         if letters:
             lines.append(f"{letters}: real; lengths positive; shares of power between 0 and 1")
         lines.append("thin parts, paraxial light, r and phi about the axis of the beam")
         return (*lines, *place.letters.notes)
+
+    def spelled_out(self, expression: Any) -> Any:
+        """An expression of the form with every name replaced by what it stands for."""
+        assert self.meanings is not None  # writing the waves down gives their names
+        return self.parts[0].field.place.letters.spelled_out(expression)
 
     def _value(self, quantity: str, *arguments: Any, **options: Any) -> Any:
         found = getattr(self, quantity)
@@ -53,7 +65,7 @@ class Shown:
 
     def _explained(self, value: Any) -> dict[Any, Any]:
         """The names in an expression, those in their meanings included."""
-        meanings: dict[Any, Any] = self.meanings  # type: ignore[attr-defined]
+        meanings: dict[Any, Any] = self.meanings
         used: dict[Any, Any] = {}
         open_names = [name for name in meanings if value.has(name)]
         while open_names:
@@ -63,13 +75,13 @@ class Shown:
         return used
 
     def _repr_latex_(self) -> str:
-        return f"$\\displaystyle {self.latex(*(('jones',) if len(self.parts) == 1 else ('stokes',)))}$"  # type: ignore[attr-defined]
+        return f"$\\displaystyle {self.latex(*(('jones',) if len(self.parts) == 1 else ('stokes',)))}$"
 
     def __str__(self) -> str:
-        quantity = "jones" if len(self.parts) == 1 else "stokes"  # type: ignore[attr-defined]
+        quantity = "jones" if len(self.parts) == 1 else "stokes"
         names = "(Ex, Ey)" if quantity == "jones" else "(S0, S1, S2, S3)"
         value = self._value(quantity)
-        lines = [f"light at {self.target}, relative to its envelope", f"{names} = ({', '.join(map(str, value))})"]  # type: ignore[attr-defined]
+        lines = [f"light at {self.target}, relative to its envelope", f"{names} = ({', '.join(map(str, value))})"]
         lines += [f"  {name} = {_short(meaning)}" for name, meaning in self._explained(value).items()]
         return "\n".join((*lines, "assumed: " + "; ".join(self.assumptions)))
 

@@ -82,11 +82,8 @@ def _relatives(one: Any, other: Any) -> bool:
     """Different members of one orthonormal family."""
     same = [getattr(m, "waist", None) is not None and (m.waist, m.waist_at, m.centre) for m in (one, other)]
     kinds = {type(m) for m in (one, other)}
-    return (
-        bool(same[0])
-        and same[0] == same[1]
-        and HermiteGauss not in kinds
-        or (kinds == {HermiteGauss} and same[0] == same[1])
+    return (bool(same[0]) and same[0] == same[1] and HermiteGauss not in kinds) or (
+        kinds == {HermiteGauss} and same[0] == same[1]
     )
 
 

@@ -11,7 +11,7 @@ from fastaxis.engines.symbolic.field import Field
 from fastaxis.engines.symbolic.waves import Section
 from fastaxis.engines.symbolic.waves.base import exactly
 from fastaxis.errors import SymbolError
-from fastaxis.laws import AxisLaw, CircularLaw, Flip, Law, ScalarLaw, TravelLaw
+from fastaxis.laws import AxisLaw, CircularLaw, Flip, Law, ScalarLaw, TravelLaw, Turn
 from fastaxis.laws.stops import Annulus, Disc
 from fastaxis.maths import Pattern
 
@@ -33,6 +33,8 @@ def applied(field: Field, name: str, law: Law) -> Field:
         )
     if isinstance(law, Flip):
         return field.flipped(law.axis)
+    if isinstance(law, Turn):
+        return _turned(field, name, law)
     if isinstance(law, TravelLaw):
         return field.moved(Section.of(law))
     if isinstance(law, ScalarLaw):
@@ -40,6 +42,17 @@ def applied(field: Field, name: str, law: Law) -> Field:
     assert isinstance(law, AxisLaw | CircularLaw)
     phi = _azimuth(law.centre) if isinstance(law, AxisLaw) else PHI
     return field.with_matrix(law.circular(field.place.maths, phi))
+
+
+def _turned(field: Field, name: str, law: Turn) -> Field:
+    try:
+        return field.turned(law.angle)
+    except ValueError:
+        raise SymbolError(
+            "a Hermite-Gauss beam turned by any angle is a sum of many; a Laguerre-Gauss beam only gains a phase",
+            got=f"{name}: turns the picture by {law.angle}",
+            fix="fa.LaguerreGauss(p=0, l=1, waist=0.8*mm)",
+        ) from None
 
 
 def _scalar(field: Field, name: str, law: ScalarLaw) -> Field:

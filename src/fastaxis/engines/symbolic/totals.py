@@ -9,7 +9,7 @@ import sympy as sp
 from fastaxis.engines.symbolic.field import Field, Pair, split
 from fastaxis.engines.symbolic.presentations import compact
 from fastaxis.engines.symbolic.ring import Poly
-from fastaxis.engines.symbolic.waves import Wave
+from fastaxis.engines.symbolic.waves import ModeWave, Wave
 from fastaxis.engines.symbolic.waves.base import exactly
 from fastaxis.errors import SymbolError
 
@@ -70,5 +70,10 @@ def _orthogonal(wave: Wave, charge: Any, other: Wave, other_charge: Any) -> bool
         # A letter stands for any half-integer q, so only a difference that is always a number is sure.
         if difference.is_zero is False:
             return True
-    family = [getattr(w, "waist", None) and (w.waist, w.section, w.kind) for w in (wave, other)]
-    return charge == other_charge and family[0] is not None and family[0] == family[1]
+    modes = isinstance(wave, ModeWave) and isinstance(other, ModeWave)
+    return modes and charge == other_charge and _family(wave) == _family(other)
+
+
+def _family(wave: Any) -> tuple[Any, ...]:
+    """Modes that agree in this are orthogonal."""
+    return wave.kind, wave.waist, wave.section

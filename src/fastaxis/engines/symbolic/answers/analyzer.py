@@ -117,7 +117,7 @@ def lobes(frame: Poly, angle: Any) -> Lobes:
     wave = _of_order(frame, order)
     size, phase = _polar_of(wave)
     first = sp.expand(-phase / order)
-    mean, _ = found[sp.S.Zero] if sp.S.Zero in found else (sp.S.Zero, 0)
+    mean, _ = found.get(sp.S.Zero, (sp.S.Zero, 0))
     return Lobes(sp.Abs(order), first, sp.diff(first, angle), sp.cancel(2 * size / mean))
 
 

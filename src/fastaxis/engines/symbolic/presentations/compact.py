@@ -1,8 +1,8 @@
 """The short way: products of cosines, with half-angle squares where they exist.
 
-The polynomial is factored; a factor of two equal terms is a cosine of half their difference in phase. A factor with more
-terms is split by the angle that makes the rest shortest, cos^2(d/2) ... + sin^2(d/2) ... + sin(d) ..., and so on. A product is
-multiplied up again in the ring and used only if it is exactly the polynomial asked for.
+The polynomial is factored; a factor of two equal terms is a cosine of half their difference in phase. A factor with
+more terms is split by the angle that makes the rest shortest, cos^2(d/2) ... + sin^2(d/2) ... + sin(d) ..., and so on.
+A product is multiplied up again in the ring and used only if it is exactly the polynomial asked for.
 """
 
 from __future__ import annotations

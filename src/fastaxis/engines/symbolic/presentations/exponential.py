@@ -11,5 +11,5 @@ __all__ = ["exponential"]
 
 
 def exponential(poly: Poly) -> Any:
-    """sum c exp(i angle), canonical: equal forms have equal terms."""
+    """The sum of c exp(i angle), canonical: equal forms have equal terms."""
     return as_sum(poly)

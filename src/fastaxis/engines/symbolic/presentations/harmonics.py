@@ -37,7 +37,7 @@ def order_in(poly: Poly, key: int, angle: Any) -> tuple[Any, int]:
     ring = poly.ring
     root, exponents = ring.exponents(key)
     order: Any = sp.Integer(0)
-    for place, value in list(exponents.items()):
+    for place in list(exponents):
         generator = ring.generators[place]
         if not generator.expression.has(angle):
             continue

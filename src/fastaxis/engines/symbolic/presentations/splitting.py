@@ -18,13 +18,22 @@ Split = list[tuple[Any, Poly]]
 def best_split(poly: Poly) -> Split | None:
     """[(factor, rest), ...] with the fewest terms in the rests, or None if no split has fewer than the sum itself."""
     candidates = [split for place in _angles(poly) for split in _splits(poly, place)]
-    best = min(candidates, key=_size, default=None)
+    best = min(candidates, key=lambda split: (_complex_parts(split), _size(split)), default=None)
     # A sum of n cosines has 2 n terms.
     return best if best is not None and _size(best) < len(poly) else None
 
 
 def _size(split: Split) -> int:
     return sum(len(part) for _, part in split)
+
+
+def _complex_parts(split: Split) -> int:
+    """How many rests are neither real nor i times real: those would be written with exponentials."""
+    return sum(not any(real.terms == real.conj().terms for real in _quarters(part)) for _, part in split)
+
+
+def _quarters(part: Poly) -> tuple[Poly, Poly]:
+    return part, part * part.ring.root_of_unity(Fraction(1, 4))
 
 
 def _angles(poly: Poly) -> list[int]:

@@ -44,7 +44,8 @@ def _number(value: float) -> Linear:
 def _expression(angle: Any) -> Linear:
     if angle.has(sp.I) or angle.is_real is False:
         raise SymbolError("an angle is a real quantity", got=f"the angle {angle}", fix='sympy.Symbol("a", real=True)')
-    turns, found = Fraction(0), {}
+    turns = Fraction(0)
+    found: dict[Any, Fraction] = {}
     for term in sp.Add.make_args(sp.expand(angle)):
         coefficient, generator = _term(term)
         if generator == sp.pi:

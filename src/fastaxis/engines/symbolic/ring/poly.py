@@ -29,7 +29,7 @@ class Poly:
     @classmethod
     def made(cls, ring: Ring, terms: Terms, den: int) -> Poly:
         """Brings raw terms to canonical form."""
-        terms = _roots_reduced(ring, terms)
+        terms = _roots_reduced(terms)
         if ring.has_relations():
             reduced = _wholes_reduced(ring, terms, den)
             if reduced is not None:
@@ -148,7 +148,7 @@ class Poly:
         return {name: Poly.made(self.ring, terms, self.den) for name, terms in found.items()}
 
 
-def _roots_reduced(ring: Ring, terms: Terms) -> Terms:
+def _roots_reduced(terms: Terms) -> Terms:
     reduced: Terms = {}
     for key, value in terms.items():
         if not value:

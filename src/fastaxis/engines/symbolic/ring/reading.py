@@ -3,6 +3,8 @@
 from __future__ import annotations
 
 from fractions import Fraction
+from functools import reduce
+from operator import add, mul
 from typing import Any
 
 import sympy as sp
@@ -36,22 +38,12 @@ def _read(ring: Ring, e: Any) -> Poly:
         return ring.rational(Fraction(int(e.p), int(e.q)))
     if e == sp.I:
         return ring.root_of_unity(Fraction(1, 4))
-    if isinstance(e, sp.Add):
-        total = ring.zero
-        for part in e.args:
-            total = total + _read(ring, part)
-        return total
-    if isinstance(e, sp.Mul):
-        product = ring.rational(1)
-        for part in e.args:
-            product = product * _read(ring, part)
-        return product
-    if isinstance(e, sp.cos | sp.sin):
-        return _cosine(ring, e)
-    if isinstance(e, sp.exp):
-        return _exponential(ring, e)
-    if isinstance(e, sp.Pow) and isinstance(e.exp, sp.Rational):
-        return _power(ring, e)
+    if isinstance(e, sp.Add | sp.Mul):
+        parts = [_read(ring, part) for part in e.args]
+        return reduce(add if isinstance(e, sp.Add) else mul, parts)
+    for kind, reader in _FUNCTIONS.items():
+        if isinstance(e, kind):
+            return reader(ring, e)
     return ring.amplitude(e)
 
 
@@ -65,7 +57,8 @@ def _cosine(ring: Ring, e: Any) -> Poly:
 
 def _exponential(ring: Ring, e: Any) -> Poly:
     """exp(real + i angle), the real exponent being one generator."""
-    real, imag = [], []
+    real: list[Any] = []
+    imag: list[Any] = []
     for part in sp.Add.make_args(sp.expand(e.args[0])):
         (imag if part.has(sp.I) else real).append(part)
     turns, generators = linear(sp.expand(-sp.I * sp.Add(*imag)))
@@ -74,6 +67,8 @@ def _exponential(ring: Ring, e: Any) -> Poly:
 
 
 def _power(ring: Ring, e: Any) -> Poly:
+    if not isinstance(e.exp, sp.Rational):
+        return ring.amplitude(e)
     exponent = Fraction(int(e.exp.p), int(e.exp.q))
     if exponent.denominator == 1 and exponent > 0:
         return _read(ring, e.base).power(int(exponent))
@@ -104,6 +99,9 @@ def _rational_power(ring: Ring, value: Fraction, exponent: Fraction) -> Poly:
         return ring.rational(value ** int(exponent))
     root = ring.surd(value if exponent > 0 else 1 / value)
     return root.power(abs(exponent.numerator))
+
+
+_FUNCTIONS = {sp.cos: _cosine, sp.sin: _cosine, sp.exp: _exponential, sp.Pow: _power}
 
 
 def _rationalized(e: Any) -> Any:

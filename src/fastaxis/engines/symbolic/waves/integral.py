@@ -59,6 +59,7 @@ class IntegralWave:
     def poly(self, place: Place) -> Poly:
         place.letters.note("no closed form is known behind the last plate or stop: U is left as an integral over s")
         k, section = place.wave_number, self.section
+        # What depends on r is spelled out: inside the integral r is s.
         before = place.letters.spelled_out(as_sum(self.wave.poly(place)))
         order = sp.sympify(self.total)
         at = sp.Symbol("s", positive=True)

@@ -97,7 +97,7 @@ class TwistedWave:
         for term in sp.Add.make_args(sp.expand(self.mode.radial(radius, at))):
             factor, power = term.as_independent(at)
             m = (_power(power, at) + size) / 2 + 1
-            shape = sp.hyper([m], [size + 1], -(beta**2) * R**2 / (4 * alpha))
+            shape = _kummer(m, size + 1, -(beta**2) * R**2 / (4 * alpha))
             total += factor * sp.gamma(m) / alpha**m * shape
         scale = k / b * (beta * R) ** size / (2 ** (size + 1) * sp.gamma(size + 1))
         return scale * total, bend == 0
@@ -105,3 +105,7 @@ class TwistedWave:
 
 def _power(expression: Any, at: Any) -> Any:
     return expression.as_base_exp()[1] if expression.has(at) else sp.S.Zero
+
+
+def _kummer(a: Any, b: Any, z: Any) -> Any:
+    return sp.exp(z) if a == b else sp.hyper([a], [b], z)
