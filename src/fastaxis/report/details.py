@@ -47,6 +47,11 @@ def _share(value: Any) -> str:
     return "patterned" if isinstance(value, Pattern) else str(value) if is_symbolic(value) else f"{value:.3g}"
 
 
+def _index(value: Any) -> str:
+    value = complex(value)
+    return f"{value.real:.4g}" if value.imag == 0 else f"{value.real:.3g}+{value.imag:.3g}i"
+
+
 WORDS: dict[str, tuple[str, Callable[[Any], str]]] = {
     "fast": ("fast", in_degrees),
     "slow": ("slow", in_degrees),
@@ -66,6 +71,9 @@ WORDS: dict[str, tuple[str, Callable[[Any], str]]] = {
     "reflectance": ("R", _share),
     "Tp": ("Tp", _share),
     "Rs": ("Rs", _share),
+    "index": ("n", _index),
+    "incidence": ("at", in_degrees),
+    "roll": ("roll", in_degrees),
     "density": ("density", _share),
     "pixel": ("pixel", in_lab_units),
     "retardance": ("δ", in_degrees),

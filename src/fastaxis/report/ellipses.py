@@ -2,7 +2,6 @@
 
 from __future__ import annotations
 
-from dataclasses import dataclass
 from typing import Any
 
 import numpy as np
@@ -13,57 +12,12 @@ from matplotlib.lines import Line2D
 from numpy.typing import NDArray
 
 from fastaxis.conventions import View
+from fastaxis.report.glyphs import FLAT, TURN, Glyphs
 from fastaxis.report.prefix import prefixed
 from fastaxis.report.shots import Crop, Shots, bright_crop, heading
 from fastaxis.report.style import LEFT, LINEAR, RIGHT, footer, new_figure, pale_map, styled
 
-__all__ = ["Glyphs", "draw_ellipses", "glyphs"]
-
-FLAT = 2.0  # [deg] of ellipticity; flatter ellipses are drawn as lines and have no sense
-POINTS = 41
-ARROW_AT = 0.14  # part of a turn after the long axis: on the flank, where the curve is smooth for every shape
-
-
-@dataclass(frozen=True)
-class Glyphs:
-    """Ellipses at places of the plane.
-
-    Parameters
-    ----------
-    x, y : places (n,), in the unit of the picture.
-    azimuth : of the long axis (n,) [rad].
-    ellipticity : (n,) [rad]; positive turns clockwise as the picture is seen (helicity -1).
-    size : long half-axis (n,).
-    """
-
-    x: NDArray[Any]
-    y: NDArray[Any]
-    azimuth: NDArray[Any]
-    ellipticity: NDArray[Any]
-    size: NDArray[Any]
-
-    def curve(self, turn: NDArray[Any]) -> NDArray[Any]:
-        """Points of each ellipse (n, len(turn), 2), in the order in which the field runs through them.
-
-        ``turn`` is the time in periods; with exp(-i w t) the field is R(azimuth) (cos wt, -tan(ellipticity) sin wt).
-        """
-        phase = 2 * np.pi * turn[None, :]
-        along = self.size[:, None] * np.cos(phase)
-        across = -self.size[:, None] * np.tan(self.ellipticity)[:, None] * np.sin(phase)
-        cosine, sine = np.cos(self.azimuth)[:, None], np.sin(self.azimuth)[:, None]
-        points = np.stack([cosine * along - sine * across, sine * along + cosine * across], axis=-1)
-        return np.asarray(points + np.stack([self.x, self.y], axis=-1)[:, None, :])
-
-    def arrow_heads(self, length: float) -> NDArray[Any]:
-        """Triangles (n, 3, 2) that sit on the curves and point the way the field runs."""
-        tip, tail = np.moveaxis(self.curve(np.array([ARROW_AT + 0.004, ARROW_AT])), 1, 0)
-        ahead = tip - tail
-        ahead = ahead / np.hypot(*ahead.T)[:, None] * length
-        side = np.stack([-ahead[:, 1], ahead[:, 0]], axis=-1) * 0.45
-        return np.stack([tail + 0.6 * ahead, tail - 0.4 * ahead + side, tail - 0.4 * ahead - side], axis=1)
-
-    def of(self, chosen: NDArray[np.bool_]) -> Glyphs:
-        return Glyphs(*(getattr(self, name)[chosen] for name in self.__dataclass_fields__))
+__all__ = ["draw_ellipses", "glyphs"]
 
 
 def glyphs(crop: Crop, stokes: NDArray[Any], *, across: int = 17, dark: float = 0.03) -> Glyphs:
@@ -133,12 +87,11 @@ def draw_ellipses(shots: Shots, *, title: str | None = None, across: int = 17, d
 
 def _draw_glyphs(axes: Axes, all_glyphs: Glyphs) -> None:
     degrees = np.degrees(all_glyphs.ellipticity)
-    turn = np.linspace(0, 1, POINTS)
     for chosen, colour in ((degrees > FLAT, RIGHT), (degrees < -FLAT, LEFT), (np.abs(degrees) <= FLAT, LINEAR)):
         here = all_glyphs.of(chosen)
         if not len(here.x):
             continue
-        axes.add_collection(LineCollection(list(here.curve(turn)), colors=colour, linewidths=1.0, capstyle="round"))
+        axes.add_collection(LineCollection(list(here.curve(TURN)), colors=colour, linewidths=1.0, capstyle="round"))
         if colour != LINEAR:
             head = 0.5 * float(here.size.max())
             axes.add_collection(PolyCollection(list(here.arrow_heads(head)), facecolors=colour, linewidths=0))

@@ -10,6 +10,7 @@ from matplotlib.axes import Axes
 from matplotlib.figure import Figure
 from numpy.typing import NDArray
 
+from fastaxis.report.marks import mark_analyzer
 from fastaxis.report.powers import draw_powers
 from fastaxis.report.prefix import prefixed, readable
 from fastaxis.report.shots import Shots, bright_crop, heading, short_labels, whole
@@ -37,8 +38,8 @@ def layout(count: int) -> tuple[int, int]:
 def draw_frames(shots: Shots, *, title: str | None = None, full: bool = False) -> Figure:
     """All frames side by side: one scale of colour, the same piece of the camera, axes in mm.
 
-    Each picture has its setting above and its power below; the colour bar gives watts per pixel. A detector, which
-    has no picture, gets its power against the settings instead.
+    Each picture has its setting above, its power below and a mark for the state that passes; the colour bar gives
+    watts per pixel. A detector, which has no picture, gets its power against the settings instead.
 
     Parameters
     ----------
@@ -61,6 +62,8 @@ def _draw_pictures(shots: Shots, title: str, *, full: bool) -> Figure:
     figure = new_figure(columns * side + 1.1, rows * (side * crop.aspect + 0.32) + 0.75)
     grid: NDArray[Any] = figure.subplots(rows, columns, squeeze=False)
     factor, unit = prefixed(float(frames.max()), "W")
+    marked = False
+    signs = np.array([1, 1, 1, shots.view.s3_sign])
     scale = {"vmin": 0.0, "vmax": float(frames.max()) * factor or 1.0, "cmap": light_map(), "origin": "lower"}
     for k, axes in enumerate(grid.flat):
         if k >= len(frames):
@@ -69,10 +72,11 @@ def _draw_pictures(shots: Shots, title: str, *, full: bool) -> Figure:
         axes.imshow(frames[k] * factor, extent=crop.extent, **scale)
         # The power is that of the whole camera, whatever piece of it is shown.
         _caption(axes, labels[k], float(shots.frame(k).sum()), small=len(frames) > MANY)
+        marked |= mark_analyzer(axes, signs * shots.weights[k])
     outer_labels(grid, "x [mm]", "y [mm]")
     figure.colorbar(grid.flat[0].images[0], ax=grid, label=f"{unit} per pixel", shrink=0.8, aspect=28, pad=0.015)
     figure.suptitle(f"{title}: {common}" if common else title, size=10)
-    footer(figure, shots.view)
+    footer(figure, shots.view, note="White mark: the state that the analyzer lets pass." if marked else "")
     return figure
 
 

@@ -103,6 +103,25 @@ def _window() -> list[Patch]:
     return [_box(0.16, 0.5, GLASS)]
 
 
+def _dove() -> list[Patch]:
+    body = Polygon([(-0.36, -0.13), (0.36, -0.13), (0.18, 0.13), (-0.18, 0.13)], closed=True, **LINE, fc=GLASS)
+    return [body, _stroke([(-0.27, 0.0), (0.0, -0.13), (0.27, 0.0)], wide=0.6, colour=SOFT)]
+
+
+def _rhomb() -> list[Patch]:
+    body = Polygon([(-0.24, -0.06), (-0.24, 0.24), (0.24, 0.06), (0.24, -0.24)], closed=True, **LINE, fc=GLASS)
+    return [body, _stroke([(-0.08, -0.1), (0.08, 0.1)], wide=0.6, colour=SOFT)]
+
+
+def _k_mirror() -> list[Patch]:
+    roof = [_stroke([(-0.3, 0.05), (-0.05, -0.2)], wide=2.0), _stroke([(0.05, -0.2), (0.3, 0.05)], wide=2.0)]
+    return [*roof, _stroke([(-0.14, 0.26), (0.14, 0.26)], wide=2.0)]
+
+
+def _pick_off() -> list[Patch]:
+    return [Rectangle((-0.04, -0.32), 0.08, 0.64, **LINE, fc=GLASS)]
+
+
 def _camera() -> list[Patch]:
     return [
         Rectangle((-0.12, -0.22), 0.46, 0.44, **LINE, fc=BODY),
@@ -157,11 +176,17 @@ SYMBOLS: dict[str, Callable[[], list[Patch]]] = {
     "Wedge": _wedge,
     "NeutralDensity": _filter,
     "PhaseShift": _window,
+    "Window": _window,
+    "DovePrism": _dove,
+    "KMirror": _k_mirror,
+    "Rhomb": _rhomb,
     "Camera": _camera,
     "Detector": _detector,
     "BeamDump": _dump,
     "FreeSpace": list,
 }
+
+REFLECTORS: dict[str, Callable[[], list[Patch]]] = {"Mirror": _mirror, "MetalMirror": _mirror, "PickOff": _pick_off}
 
 
 def draw_symbol(axes: Any, element: object, place: Place) -> None:
@@ -180,10 +205,11 @@ def _patches_and_turn(element: object, place: Place) -> tuple[list[Patch], float
         # Seen along the beam, light turned to its left was turned by a diagonal that rises with the beam.
         left = place.heading[0] * place.reflects[1] - place.heading[1] * place.reflects[0]
         return _cube(left), along
-    if type(element).__name__ == "Mirror":
+    if type(element).__name__ in REFLECTORS:
         reflects = place.reflects or (-place.heading[0], -place.heading[1])
         # The back of a mirror looks along (heading - reflected), and its symbol has the back on the right.
-        return _mirror(), math.atan2(place.heading[1] - reflects[1], place.heading[0] - reflects[0])
+        turn = math.atan2(place.heading[1] - reflects[1], place.heading[0] - reflects[0])
+        return REFLECTORS[type(element).__name__](), turn
     if "Splitter" in type(element).__name__:
         return _cube(1), along
     kinds = [SYMBOLS[kind.__name__] for kind in type(element).__mro__ if kind.__name__ in SYMBOLS]
