@@ -15,7 +15,10 @@ from fastaxis.errors import FastaxisError
 
 __all__ = ["parser"]
 
-_EXIT_CODES = "exit codes: 0 done, 1 a mistake in the bench, 2 wrong usage, 130 stopped with Ctrl-C"
+_EXIT_CODES = (
+    "exit codes: 0 done, 1 a mistake in the bench, 2 wrong usage, 3 (inspect) a finding of high severity, "
+    "130 stopped with Ctrl-C"
+)
 
 
 def _typed(read: Callable[[str], Any]) -> Callable[[str], Any]:
@@ -91,4 +94,8 @@ def parser() -> ArgumentParser:
     explain = _command(commands, "explain", "The parts, the plan, the drawing, open ports and cautions.")
     explain.add_argument("--cards", action="store_true", help="also the card of every part: matrix, H, D, R, losses")
     _writes_figures(explain)
+    inspect = _command(commands, "inspect", "What may be wrong with a bench before it is built; laser cautions.")
+    inspect.add_argument("--json", action="store_true", help="write the findings as JSON")
+    inspect.add_argument("--brief", action="store_true", help="leave out notes")
+    inspect.add_argument("--out", metavar="DIR", help="folder for inspection.txt, .json, .pdf and .png")
     return top

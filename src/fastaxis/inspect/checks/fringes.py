@@ -1,0 +1,61 @@
+"""Beams that meet on a camera by two paths: fringe period against pixel, path difference against coherence."""
+
+from __future__ import annotations
+
+import math
+from collections import defaultdict
+from collections.abc import Iterator
+from itertools import combinations
+
+from fastaxis.elements.camera import Camera
+from fastaxis.inspect.bench import Bench, Visit
+from fastaxis.inspect.finding import Finding, Severity
+from fastaxis.inspect.words import length
+
+__all__ = ["fringes", "period"]
+
+
+def fringes(bench: Bench) -> Iterator[Finding]:
+    """Each pair of paths of one laser that ends on the same camera."""
+    arrivals: dict[tuple[str, str], list[Visit]] = defaultdict(list)
+    for visit in bench.of_kind(Camera):
+        arrivals[visit.name, visit.source].append(visit)
+    for visits in arrivals.values():
+        for one, other in combinations(visits, 2):
+            yield from _against_pixel(one, other)
+            yield from _path(one, other)
+
+
+def period(one: Visit, other: Visit) -> float:
+    """Fringe period [m] of two beams by the angle between them: wavelength/angle."""
+    (ax, ay), (bx, by) = one.widest.spread.slope, other.widest.spread.slope
+    angle = math.hypot(ax - bx, ay - by)
+    return one.widest.wavelength / angle if angle else math.inf
+
+
+def _against_pixel(one: Visit, other: Visit) -> Iterator[Finding]:
+    pixels = period(one, other) / one.element.pixel  # type: ignore[attr-defined]  # ends on a camera
+    if pixels >= 4:
+        return
+    yield Finding(
+        severity=Severity.HIGH if pixels < 2 else Severity.MEDIUM,
+        check="fringe period",
+        element=one.name,
+        rule="fringes need two pixels a period to be seen and four to keep 90 % of their contrast",
+        got=f"{one.name}: fringes of {length(period(one, other))}, {pixels:.2g} pixels",
+        fix="a smaller angle between the beams, or a smaller pixel",
+    )
+
+
+def _path(one: Visit, other: Visit) -> Iterator[Finding]:
+    apart = abs(one.distance - other.distance)
+    if apart < 1e-4:
+        return
+    yield Finding(
+        severity=Severity.LOW,
+        check="path difference",
+        element=one.name,
+        rule="fringes need a coherence length well above the path difference",
+        got=f"{one.name}: the two paths differ by {length(apart)}",
+        fix="compare with the coherence length of the laser, or lengthen the shorter arm",
+    )

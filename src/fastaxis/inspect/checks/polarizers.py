@@ -1,0 +1,71 @@
+"""Light that meets a polarizer in a state it does not pass."""
+
+from __future__ import annotations
+
+from collections.abc import Iterator
+
+from fastaxis.elements.polarizer import Polarizer
+from fastaxis.inspect.bench import Bench, Visit
+from fastaxis.inspect.finding import Finding, Severity
+from fastaxis.inspect.strands import azimuth, degree, state_in_words, total
+from fastaxis.inspect.words import degrees, percent
+from fastaxis.maths import NUMBERS
+
+__all__ = ["axis_fix", "passing", "polarizers"]
+
+
+def polarizers(bench: Bench) -> Iterator[Finding]:
+    """Share of the light that each polarizer passes, of what it could pass with its axis along the light."""
+    for visit in bench.of_kind(Polarizer):
+        if visit.patterned:
+            continue  # a beam of many states is what such a polarizer sorts
+        share = passing(visit)
+        if share < 0.9:
+            yield _finding(visit, share)
+
+
+def passing(visit: Visit) -> float:
+    """Share of the light along the axis of a polarizer: (1 + s . a)/2 of its Stokes vector on the equator."""
+    s0, s1, s2, _ = total(visit.before)
+    turn = 2 * float(visit.laws[0].angle)  # as met; from behind the axis stands mirrored
+    return float((1 + (s1 * NUMBERS.cos(turn) + s2 * NUMBERS.sin(turn)) / s0) / 2)
+
+
+def axis_fix(visit: Visit) -> str:
+    """Code that turns the axis along the light."""
+    met, wanted = float(visit.laws[0].angle), azimuth(total(visit.before))
+    sense = -1 if visit.entered == "back" else 1
+    axis = float(visit.element.axis) + sense * (wanted - met)  # type: ignore[attr-defined]
+    return f'train.with_changes({{"{visit.name}.axis": {degrees(axis).rstrip("°")}*deg}})'
+
+
+def _finding(visit: Visit, share: float) -> Finding:
+    stokes = total(visit.before)
+    got = f"{visit.name}: {state_in_words(visit.before)} light meets the axis at {degrees(float(visit.laws[0].angle))}"
+    if degree(stokes) < 0.1:
+        return Finding(
+            severity=Severity.NOTE,
+            check="polarizer",
+            element=visit.name,
+            rule="of unpolarized light a polarizer passes half",
+            got=got,
+            fix="a polarized laser, or twice the power",
+        )
+    if abs(stokes[3]) > 0.9 * stokes[0]:
+        return Finding(
+            severity=Severity.MEDIUM,
+            check="polarizer",
+            element=visit.name,
+            rule=f"of circular light a polarizer passes half, {percent(share)} here, whatever its axis",
+            got=got,
+            fix=f"fa.QuarterWavePlate(fast={degrees(float(visit.element.axis)).rstrip('°')}*deg + 45*deg) "  # type: ignore[attr-defined]
+            f"before {visit.name}",
+        )
+    return Finding(
+        severity=Severity.MEDIUM if share < 0.02 else Severity.LOW,
+        check="polarizer",
+        element=visit.name,
+        rule="a polarizer across the light blocks it" if share < 0.02 else "a polarizer passes cos² of the angle",
+        got=f"{got}: {percent(share)} passes",
+        fix=axis_fix(visit),
+    )

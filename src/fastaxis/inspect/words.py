@@ -1,0 +1,60 @@
+"""Quantities as they are read at a bench."""
+
+from __future__ import annotations
+
+import math
+
+from fastaxis.train.lab_values import lab_length
+
+__all__ = ["degrees", "length", "mm", "percent", "watts"]
+
+PREFIXES = ((1.0, ""), (1e-3, "m"), (1e-6, "µ"), (1e-9, "n"), (1e-12, "p"))
+
+
+def watts(power: float) -> str:
+    """A power to three digits.
+
+    >>> watts(0.00125), watts(0.39e-3), watts(0.0)
+    ('1.25 mW', '390 µW', '0 W')
+    """
+    for factor, prefix in PREFIXES:
+        # Half of the last of three digits: 0.9996 mW is read as 1 mW.
+        if abs(power) >= 0.9995 * factor:
+            return f"{power / factor:.3g} {prefix}W"
+    return f"{power:.3g} W"
+
+
+def length(value: float) -> str:
+    """A length to four digits, in the unit it is spoken of.
+
+    >>> length(0.0012345), length(math.inf)
+    ('1.234 mm', 'unbounded')
+    """
+    return "unbounded" if math.isinf(value) else lab_length(float(f"{value:.4g}"))
+
+
+def degrees(angle: float) -> str:
+    """An angle [rad] in degrees.
+
+    >>> degrees(math.pi / 8)
+    '22.5°'
+    """
+    return f"{math.degrees(angle) + 0.0:.4g}°"
+
+
+def percent(share: float) -> str:
+    """A share in per cent.
+
+    >>> percent(0.0076), percent(1e-7)
+    ('0.76 %', '1e-05 %')
+    """
+    return f"{100 * share:.3g} %"
+
+
+def mm(value: float) -> str:
+    """A length as code.
+
+    >>> mm(0.00254)
+    '2.54*mm'
+    """
+    return f"{value * 1e3:.4g}*mm"
