@@ -39,8 +39,7 @@ def test_an_interrupted_write_leaves_the_older_file_whole(figure, tmp_path, monk
     before = path.read_bytes()
 
     def stopped(unfinished, **_):
-        with open(unfinished, "wb") as file:
-            file.write(b"half")
+        unfinished.write(b"half")
         raise KeyboardInterrupt
 
     monkeypatch.setattr(figure, "savefig", stopped)

@@ -8,7 +8,7 @@ from zipfile import BadZipFile
 
 import numpy as np
 
-from fastaxis.camera.atomic import write_whole
+from fastaxis.files import write_whole
 from fastaxis.camera.coding import FORMAT, facts, facts_from, setting_from_json, to_text, view_from
 from fastaxis.camera.exposure import Exposure
 from fastaxis.engines.field import Guard

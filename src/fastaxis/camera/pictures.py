@@ -11,7 +11,7 @@ import numpy as np
 from numpy.typing import NDArray
 from PIL import Image, PngImagePlugin, UnidentifiedImageError
 
-from fastaxis.camera.atomic import write_whole
+from fastaxis.files import write_whole
 from fastaxis.camera.coding import FORMAT, facts, facts_from, to_text
 from fastaxis.camera.exposure import Exposure
 from fastaxis.errors import FileFormatError

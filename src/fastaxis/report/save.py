@@ -2,16 +2,15 @@
 
 from __future__ import annotations
 
-import os
-import tempfile
 from collections.abc import Iterable
 from pathlib import Path
-from typing import Any
+from typing import IO, Any
 
 from matplotlib.figure import Figure
 
 from fastaxis.conventions import View, stamp
 from fastaxis.errors import FileFormatError
+from fastaxis.files import write_whole
 from fastaxis.report.style import rules
 
 __all__ = ["DPI", "FORMATS", "save"]
@@ -52,16 +51,12 @@ def save(
 
 def _write(figure: Figure, path: Path, kind: str, view: View, dpi: int) -> Path:
     path.parent.mkdir(parents=True, exist_ok=True)
-    handle, unfinished = tempfile.mkstemp(dir=path.parent, prefix=f".{path.stem}-", suffix=f".{kind}")
-    os.close(handle)
-    try:
+
+    def draw(file: IO[bytes]) -> None:
         with rules():
-            figure.savefig(unfinished, format=kind, dpi=dpi, metadata=_metadata(kind, view), **PACKED[kind])
-        Path(unfinished).chmod(0o644)  # mkstemp makes files for the owner only
-        Path(unfinished).replace(path)
-    finally:
-        Path(unfinished).unlink(missing_ok=True)
-    return path
+            figure.savefig(file, format=kind, dpi=dpi, metadata=_metadata(kind, view), **PACKED[kind])
+
+    return write_whole(path, draw)
 
 
 def _metadata(kind: str, view: View) -> dict[str, str | None]:

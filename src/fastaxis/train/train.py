@@ -11,6 +11,7 @@ from typing import Any, Self
 from fastaxis.checks import wavelength as checked_wavelength
 from fastaxis.elements.base import Element
 from fastaxis.elements.camera import Camera
+from fastaxis.files import write_whole
 from fastaxis.loader import late
 from fastaxis.maths import Scalar
 from fastaxis.train import validate as checks
@@ -166,7 +167,8 @@ class Train:
 
     def save(self, path: str | PathLike[str]) -> None:
         """Write the text form to a file (UTF-8)."""
-        Path(path).write_text(self.to_text(), encoding="utf-8")
+        text = self.to_text().encode()
+        write_whole(Path(path), lambda file: file.write(text))
 
     @classmethod
     def load(cls, path: str | PathLike[str], kinds: Iterable[type[Element]] = ()) -> Self:

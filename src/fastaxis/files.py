@@ -17,8 +17,16 @@ def write_whole(path: Path, write: Callable[[IO[bytes]], object]) -> Path:
     try:
         with os.fdopen(handle, "w+b") as file:
             write(file)
+        Path(temporary).chmod(_usual_mode())
         Path(temporary).replace(path)
     except BaseException:
         Path(temporary).unlink(missing_ok=True)
         raise
     return path
+
+
+def _usual_mode() -> int:
+    """Permissions an ordinary new file would have; mkstemp makes files for their owner only."""
+    mask = os.umask(0o077)
+    os.umask(mask)
+    return 0o666 & ~mask
