@@ -28,9 +28,10 @@ def test_a_q_plate_swaps_hands_and_adds_charge(form, letters):
 
 def test_the_frame_of_a_tuned_q_plate_is_one_square(form, letters):
     a, b, _, _, t, q = letters
-    assert form(fa.HalfWavePlate(fast=b), fa.QPlate(q=q, offset=a)).frame(t) == sp.cos(
-        2 * q * PHI + 2 * a - 2 * b - t
-    ) ** 2
+    assert (
+        form(fa.HalfWavePlate(fast=b), fa.QPlate(q=q, offset=a)).frame(t)
+        == sp.cos(2 * q * PHI + 2 * a - 2 * b - t) ** 2
+    )
 
 
 def test_the_frame_of_a_detuned_q_plate(form, letters):

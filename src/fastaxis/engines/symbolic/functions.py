@@ -7,7 +7,6 @@ from dataclasses import dataclass
 from functools import cached_property
 from typing import Any
 
-import numpy as np
 import sympy as sp
 from sympy.printing.numpy import SciPyPrinter
 
@@ -24,9 +23,6 @@ class _Printer(SciPyPrinter):  # type: ignore[misc]  # sympy has no types
     def _print_hyper(self, e: Any) -> str:
         (above,), (below,) = e.ap, e.bq
         return f"hyp1f1({self._print(above)}, {self._print(below)}, {self._print(e.argument)})"
-
-    def _print_conjugate(self, e: Any) -> str:
-        return f"conj({self._print(e.args[0])})"
 
 
 @dataclass(frozen=True, eq=False)
@@ -48,7 +44,7 @@ class NumericForm:
     @cached_property
     def positional(self) -> Any:
         """The bare numpy function, arguments in the order of ``letters``."""
-        names = {"hyp1f1": kummer, "conj": np.conj}
+        names = {"hyp1f1": kummer}
         return sp.lambdify(self.letters, self.expression, modules=[names, "scipy", "numpy"], printer=_Printer, cse=True)
 
     def __call__(self, values: Mapping[Any, Any] | None = None, **named: Any) -> Any:

@@ -32,14 +32,14 @@ class Letters:
         self.meanings[symbol] = meaning
         return symbol
 
-    def function(self, stem: str, meaning: Any) -> tuple[Any, Any]:
-        """Symbols for a complex function of the plane and its conjugate."""
+    def function(self, stem: str, meaning: Any) -> Any:
+        """A symbol for a complex function of the plane."""
         for symbol, known in self.meanings.items():
             if known == meaning:
-                return symbol, sp.conjugate(symbol)
-        symbol = sp.Symbol(self._free(stem))
+                return symbol
+        symbol = sp.Symbol(self._free(stem), complex=True)
         self.meanings[symbol] = meaning
-        return symbol, sp.conjugate(symbol)
+        return symbol
 
     def _free(self, stem: str) -> str:
         used = self.taken | {symbol.name for symbol in self.meanings}

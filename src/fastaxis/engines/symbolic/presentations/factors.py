@@ -52,7 +52,8 @@ def factored(poly: Poly) -> list[tuple[Poly, int]] | None:
         return None
     terms: dict[tuple[int, ...], int] = {}
     for power, (root, _, value) in zip(powers, rows, strict=True):
-        turned = (root - rows[0][0]) * SIXTEENTHS // TURN - sum(t * n for t, n in zip(twists, power, strict=True))
+        turned = (root - rows[0][0]) * SIXTEENTHS // TURN
+        turned -= sum(t * (n - first) for t, n, first in zip(twists, power, powers[0], strict=True))
         terms[power] = terms.get(power, 0) + (value if turned % SIXTEENTHS == 0 else -value)
     letters = sp.symbols(f"x0:{len(layout.places)}")
     _, factors = sp.Poly(terms, *letters, domain=sp.ZZ).factor_list()

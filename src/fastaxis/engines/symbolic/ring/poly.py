@@ -89,13 +89,7 @@ class Poly:
     def _conj_key(self, key: int) -> int:
         ring = self.ring
         root, exponents = ring.exponents(key)
-        turned: dict[int, int] = {}
-        for place, value in exponents.items():
-            generator = ring.generators[place]
-            if generator.kind == "angle":
-                turned[place] = -value
-            else:
-                turned[place if generator.partner is None else generator.partner] = value
+        turned = {p: -e if ring.generators[p].kind == "angle" else e for p, e in exponents.items()}
         return ring.pack(-root, turned)
 
     def abs2(self) -> Poly:

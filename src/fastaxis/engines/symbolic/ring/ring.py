@@ -25,23 +25,21 @@ HALF = 1 << (WIDTH - 1)
 # Denominators a coefficient may have: decimals to 16 places halved a few times, and small primes.
 UNIT = 2**24 * 3**4 * 5**16 * 7 * 11 * 13
 
-ANGLE, REAL, COMPLEX = "angle", "real", "complex"
+ANGLE, REAL = "angle", "real"
 
 
 @dataclass(frozen=True)
 class Generator:
-    """One independent angle, real amplitude or complex function.
+    """One independent angle or real amplitude.
 
     Parameters
     ----------
-    kind : "angle" (enters as exp(i c angle)), "real" (enters as amplitude**c) or "complex".
+    kind : "angle" (enters as exp(i c angle)) or "real" (enters as amplitude**c).
     expression : its sympy form.
-    partner : for "complex", the index of the conjugate.
     """
 
     kind: str
     expression: Any
-    partner: int | None = None
 
 
 @dataclass(eq=False)
@@ -62,15 +60,6 @@ class Ring:
             place = self._places[kind, expression] = len(self.generators)
             self.generators.append(Generator(kind, expression))
         return place
-
-    def conjugate_pair(self, function: Any, conjugate: Any) -> int:
-        """A complex function of the plane and its conjugate, as two generators."""
-        if (COMPLEX, function) in self._places:
-            return self._places[COMPLEX, function]
-        one, other = len(self.generators), len(self.generators) + 1
-        self.generators += [Generator(COMPLEX, function, other), Generator(COMPLEX, conjugate, one)]
-        self._places[COMPLEX, function], self._places[COMPLEX, conjugate] = one, other
-        return one
 
     def has_relations(self) -> bool:
         """Whether products may need more than adding exponents."""
@@ -140,10 +129,9 @@ class Ring:
         """A real generator to a rational power."""
         return Poly.made(self, {self.key(REAL, expression, power): 1}, 1)
 
-    def complex_function(self, function: Any, conjugate: Any) -> Poly:
-        """A complex function of the plane, known by name."""
-        place = self.conjugate_pair(function, conjugate)
-        return Poly.made(self, {UNIT << (WIDTH * (1 + place)): 1}, 1)
+    def complex_function(self, function: Any) -> Poly:
+        """A complex function of the plane, known by name: its size, and its phase as one more angle."""
+        return self.amplitude(sp.Abs(function)) * self.phasor({sp.arg(function): Fraction(1)})
 
     def switch(self, expression: Any) -> Poly:
         """A function that is 0 or 1 everywhere, such as a stop: its square is itself."""
@@ -177,8 +165,6 @@ class Ring:
         other = poly.ring
         places = {}
         for place, generator in enumerate(other.generators):
-            if generator.kind == COMPLEX:
-                continue
             places[place] = self.generator(generator.kind, generator.expression)
             if place in other._wholes:  # noqa: SLF001  # another ring's own relations
                 self._wholes.setdefault(places[place], self.adopted(other._wholes[place]))  # noqa: SLF001

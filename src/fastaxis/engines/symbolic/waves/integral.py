@@ -66,6 +66,6 @@ class IntegralWave:
         shape = (before.subs(PHI, 0) * self.factor).subs(R, at)
         kernel = sp.exp(sp.I * k * section.a * at**2 / (2 * section.b)) * sp.besselj(order, k * R * at / section.b)
         value = k / section.b * sp.Integral(shape * kernel * at, (at, 0, self.limit))
-        name, conjugate = place.letters.function("U", value)
+        name = place.letters.function("U", value)
         phase = place.maths.phasor(order * PHI - sp.pi * (order + 1) / 2 + k * section.d * R**2 / (2 * section.b))
-        return phase * place.maths.ring.complex_function(name, conjugate)
+        return phase * place.maths.ring.complex_function(name)

@@ -81,9 +81,7 @@ class TwistedWave:
         value, real = self.profile(place)
         if real:
             return place.maths.ring.amplitude(place.letters.name("U", value))
-        name, conjugate = place.letters.function("U", value)
-        ring = place.maths.ring
-        return ring.complex_function(name, conjugate)
+        return place.maths.ring.complex_function(place.letters.function("U", value))
 
     def profile(self, place: Place) -> tuple[Any, bool]:
         """(U(r), whether it is real)."""
