@@ -37,29 +37,35 @@ if TYPE_CHECKING:
         BeamSplitter,
         Camera,
         Detector,
+        DovePrism,
         FaradayRotator,
         FreeSpace,
         HalfWavePlate,
+        KMirror,
         KnifeEdge,
         Laser,
         Lens,
         Mask,
+        MetalMirror,
         Mirror,
         NeutralDensity,
         Obstacle,
         PatternedPolarizer,
         PatternedRetarder,
         PhaseShift,
-        PolarizingBeamSplitter,
+        PickOff,
         Polarizer,
+        PolarizingBeamSplitter,
         QPlate,
         QuarterWavePlate,
         RectangularAperture,
         Retarder,
+        Rhomb,
         Rotator,
         Slit,
         SpiralPlate,
         Wedge,
+        Window,
     )
     from fastaxis.errors import (
         FastaxisError,
@@ -77,13 +83,17 @@ if TYPE_CHECKING:
         UNPOLARIZED,
         A,
         Beam,
+        Comb,
         D,
         FlatTop,
         Gaussian,
+        GaussianLine,
         H,
         HermiteGauss,
         L,
         LaguerreGauss,
+        LorentzianLine,
+        Monochromatic,
         PlaneWave,
         R,
         SampledMode,
@@ -110,13 +120,15 @@ __version__ = "0.1.0"
 _HOMES = {
     "camera": "SIX_STATES Exposure Setting four_frames no_analyzer plate_then_polarizer polarizer_at rotating_plate",
     "conventions": "View stamp",
-    "elements": "Annulus Aperture BeamDump BeamSplitter Camera Detector FaradayRotator FreeSpace HalfWavePlate KnifeEdge "
-    "Laser Lens Mask Mirror NeutralDensity Obstacle PatternedPolarizer PatternedRetarder PhaseShift "
-    "PolarizingBeamSplitter Polarizer QPlate QuarterWavePlate RectangularAperture Retarder Rotator Slit SpiralPlate Wedge",
+    "elements": "Annulus Aperture BeamDump BeamSplitter Camera Detector DovePrism FaradayRotator FreeSpace "
+    "HalfWavePlate KMirror KnifeEdge Laser Lens Mask MetalMirror Mirror NeutralDensity Obstacle PatternedPolarizer "
+    "PatternedRetarder PhaseShift PickOff Polarizer PolarizingBeamSplitter QPlate QuarterWavePlate "
+    "RectangularAperture Retarder Rhomb Rotator Slit SpiralPlate Wedge Window",
     "errors": "FastaxisError FastaxisWarning FileFormatError ParameterError SamplingError SamplingWarning SlipWarning "
     "SymbolError WiringError WiringWarning",
-    "light": "UNPOLARIZED A Beam D FlatTop Gaussian H HermiteGauss L LaguerreGauss PlaneWave R SampledMode Source State "
-    "StateMixture Term V coherent_source elliptical from_jones from_stokes helicity linear make_source partially_polarized",
+    "light": "UNPOLARIZED A Beam Comb D FlatTop Gaussian GaussianLine H HermiteGauss L LaguerreGauss LorentzianLine "
+    "Monochromatic PlaneWave R SampledMode Source State StateMixture Term V coherent_source elliptical from_jones "
+    "from_stokes helicity linear make_source partially_polarized",
     "maths": "Pattern",
     "plan": "Grid",
     "train": "Train",

@@ -60,6 +60,16 @@ ALL = [
     e.Camera(pixel=3.45 * um, shape=(512, 640), name="cam"),
     e.Detector(),
     e.BeamDump(),
+    e.MetalMirror(index=0.184 + 3.431j),
+    e.KMirror(),
+    e.KMirror(index=0.184 + 3.431j, roll=30 * deg),
+    e.DovePrism(index=1.515),
+    e.DovePrism(index=1.515, roll=theta),
+    e.Rhomb(index=1.51, incidence=54.62 * deg),
+    e.PickOff(index=1.515),
+    e.Window(index=1.515),
+    e.Window(index=1.52, layer=1.38, wedge=0.5 * deg, design=532 * nm),
+    e.BeamSplitter(Rp=0.47, Rs=0.52, phase_rs=90 * deg, transmittance=0.45),
 ]
 
 
@@ -140,6 +150,16 @@ def test_the_card_of_a_half_wave_plate_in_full():
             "0.7596 % of what passes keeps its state and charge; of the rest:",
         ),
         (e.Polarizer(axis=90 * deg), "H", "-> dark"),
+        (e.MetalMirror(index=0.184 + 3.431j), "index", "0.184 + 3.431i"),
+        (e.DovePrism(index=1.5), "picture", "flipped y -> -y: up and down change places, charge l becomes -l"),
+        (
+            e.KMirror(roll=10 * deg),
+            "",
+            "then turned by 20 deg counter-clockwise, which puts exp(-i l 20 deg) on charge l",
+        ),
+        (e.DovePrism(index=1.5), "coated", "no"),
+        (e.PickOff(index=1.5, incidence=0), "s", "3.84 % leaves beside the two beams"),
+        (e.Window(index=1.5), "first", "0.16 % of the beam, along it and counted with it"),
         (e.Camera(pixel=10 * um, shape=(100, 200)), "view", "2.00 mm x 1.00 mm"),
     ],
 )

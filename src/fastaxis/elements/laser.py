@@ -35,6 +35,8 @@ class Laser(Element):
     state : polarization of ``waist`` or ``mode``: a State, or a StateMixture such as UNPOLARIZED; H if left out.
     beam : a Beam of Terms.
     incoherent : sequence of (weight, Beam) or (weight, Beam, wavelength [m]); weights are shares of the power.
+    line : shape of its spectral line, which sets how well paths of different length interfere: GaussianLine,
+        LorentzianLine, Comb or Monochromatic (if left out).
 
     Raises
     ------
@@ -61,6 +63,7 @@ class Laser(Element):
     state: light.State | light.StateMixture | None = None
     beam: light.Beam | None = None
     incoherent: Sequence[Any] | None = None
+    line: light.Line = light.MONOCHROMATIC
 
     stem: ClassVar[str] = "laser"
     faces: ClassVar[tuple[str, ...]] = ("out",)
@@ -126,6 +129,12 @@ class Laser(Element):
             )
         if self.incoherent is not None:
             self._keep(incoherent=tuple(self._part(part) for part in self.incoherent))
+        if not isinstance(self.line, light.Line):
+            raise ParameterError(
+                "line is the shape of a spectral line",
+                got=f"{self.label}: line = {self.line!r}",
+                fix="line=fa.GaussianLine(coherence_length=200*mm)",
+            )
 
     def _part(self, part: Any) -> tuple[Any, ...]:
         """One incoherent part as (weight, beam, wavelength or None)."""

@@ -4,19 +4,18 @@ from __future__ import annotations
 
 from dataclasses import dataclass
 from math import pi
-from typing import ClassVar
 
 from fastaxis import checks
-from fastaxis.elements.base import Element, Passages
-from fastaxis.errors import ParameterError
-from fastaxis.laws import Amplitude, AxisLaw, Passage
+from fastaxis.elements.base import Passages
+from fastaxis.elements.folding import Folding, check_fold, reflection
+from fastaxis.laws import Amplitude
 from fastaxis.maths import Scalar
 
 __all__ = ["Mirror"]
 
 
 @dataclass(frozen=True, kw_only=True)
-class Mirror(Element):
+class Mirror(Folding):
     """A flat mirror: J = diag(1, -1) in the frame that follows the beam, and the picture is flipped x -> -x.
 
     So H and V stay, +45 deg becomes -45 deg, R becomes L, charge l becomes -l; a second reflection restores all of it.
@@ -29,6 +28,7 @@ class Mirror(Element):
     fold : "horizontal" (the beam stays in the table plane; also for a straight return) or "vertical".
     Rp, Rs : shares of the power reflected, in and across the plane of incidence [0 .. 1].
     phase_p, phase_s : phases [rad] on top of the ideal mirror's.
+    two_way : whether a second beam runs the same path against the first; ``train.loop`` sets it.
 
     Raises
     ------
@@ -53,18 +53,8 @@ class Mirror(Element):
     phase_p: Scalar = 0.0
     phase_s: Scalar = 0.0
 
-    stem: ClassVar[str] = "mirror"
-    faces: ClassVar[tuple[str, ...]] = ("front",)
-    entry: ClassVar[str | None] = "front"
-    exit: ClassVar[str | None] = "front"
-
     def __post_init__(self) -> None:
-        if self.fold not in ("horizontal", "vertical"):
-            raise ParameterError(
-                'a mirror folds the beam "horizontal" (in the table plane) or "vertical"',
-                got=f"{self.label}: fold = {self.fold!r}",
-                fix='fold="horizontal"',
-            )
+        check_fold(self.label, self.fold)
         for share in ("Rp", "Rs"):
             self._keep(**{share: checks.fraction(self.label, share, getattr(self, share), fix=f"{share}=0.98")})
         for phase in ("phase_p", "phase_s"):
@@ -72,6 +62,4 @@ class Mirror(Element):
 
     def forward(self, wavelength: Scalar) -> Passages:
         p, s = Amplitude(self.Rp, self.phase_p), Amplitude(self.Rs, self.phase_s + pi)
-        if self.fold == "horizontal":
-            return {("front", "front"): Passage((AxisLaw(p, s),), "x")}
-        return {("front", "front"): Passage((AxisLaw(s, p),), "y")}
+        return {("front", "front"): reflection(self.fold, p, s)}

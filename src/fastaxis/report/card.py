@@ -26,6 +26,10 @@ KINDS = {
     "FaradayRotator": "Faraday rotator",
     "NeutralDensity": "neutral-density filter",
     "Annulus": "ring aperture",
+    "DovePrism": "Dove prism",
+    "KMirror": "K-mirror",
+    "PickOff": "pick-off plate",
+    "Rhomb": "Fresnel rhomb",
 }
 # Any wavelength does for a part without design=: its laws don't depend on it.
 ANY_WAVELENGTH = 1e-6
@@ -53,11 +57,14 @@ def card_rows(element: Element, view: View = View.RECEIVER) -> list[tuple[str, R
         seen.setdefault(passage, []).append(f"{into} to {out}")
     for passage, ways in seen.items():
         rows = list(deeds(passage, view))
-        if not isinstance(element, ThroughElement):  # fixed on the table: nobody turns a mirror about the beam
+        # Fixed on the table, or turning the picture too: nobody turns it about the beam for the polarization alone.
+        if not isinstance(element, ThroughElement) or "roll" in element.parameters():
             rows = [(what, text) for what, text in rows if what != "turning"]
         sections.append((", ".join(ways), rows))
     if isinstance(element, Splitter):
         sections.append(("all ports", [("power", _port_sums(element, wavelength))]))
+    if ghosts := getattr(element, "ghosts", None):
+        sections.append(("ghosts", [(what, f"{percent(share)} {where}") for what, share, where in ghosts]))
     sections += _ends(element, view)
     return [(heading, rows) for heading, rows in sections if rows]
 

@@ -16,12 +16,14 @@ from fastaxis.laws import (
     AxisLaw,
     CircularLaw,
     Disc,
+    Flip,
     HalfPlane,
     Passage,
     Rectangle,
     ScalarLaw,
     Strip,
     TravelLaw,
+    Turn,
 )
 from fastaxis.light import D, H, L, R, State
 from fastaxis.maths import NUMBERS, Pattern, free_symbols, is_symbolic
@@ -41,8 +43,7 @@ def deeds(passage: Passage, view: View) -> Iterator[tuple[str, str]]:
     for law in passage.laws:
         yield from _OF_LAW[type(law)](law, view)
     if passage.reflected:
-        fold, other = ("x -> -x", "left and right") if passage.reflected == "x" else ("y -> -y", "up and down")
-        yield "picture", f"flipped {fold}: {other} change places, charge l becomes -l"
+        yield from _flip(Flip(passage.reflected), view)
 
 
 def _axis(law: AxisLaw, view: View) -> Iterator[tuple[str, str]]:
@@ -227,4 +228,17 @@ def _travel(law: TravelLaw, _view: View) -> Iterator[tuple[str, str]]:
     yield "power", "all of it, in any state"
 
 
-_OF_LAW: dict[type, Any] = {AxisLaw: _axis, CircularLaw: _circular, ScalarLaw: _scalar, TravelLaw: _travel}
+def _flip(law: Flip, _view: View) -> Iterator[tuple[str, str]]:
+    fold, other = ("x -> -x", "left and right") if law.axis == "x" else ("y -> -y", "up and down")
+    yield "picture", f"flipped {fold}: {other} change places, charge l becomes -l"
+
+
+def _turn(law: Turn, _view: View) -> Iterator[tuple[str, str]]:
+    angle = degrees(law.angle)
+    yield "", f"then turned by {angle} counter-clockwise, which puts exp(-i l {angle}) on charge l"
+
+
+_OF_LAW: dict[type, Any] = {
+    AxisLaw: _axis, CircularLaw: _circular, ScalarLaw: _scalar, TravelLaw: _travel,
+    Flip: _flip, Turn: _turn,
+}  # fmt: skip

@@ -75,6 +75,12 @@ def _tilt(value: Scalar) -> str:
     return str(value) if is_symbolic(value) else readable(value, "rad")
 
 
+def _index(value: complex) -> str:
+    """n, or n + ik of what absorbs."""
+    value = complex(value)
+    return f"{value.real:g}" if value.imag == 0 else f"{value.real:g} + {value.imag:g}i"
+
+
 def _power(value: Scalar) -> str:
     return str(value) if is_symbolic(value) else readable(value, "W")
 
@@ -123,15 +129,16 @@ def _rows_and_columns(value: tuple[int, int]) -> str:
 
 
 SPOKEN = (
-    (degrees, "fast slow axis offset angle"),
+    (degrees, "fast slow axis offset angle incidence base roll"),
     (waves, "retardance phase phase_p phase_s phase_t phase_r phase_tp phase_ts phase_rp phase_rs"),
     (length, "focal radius inner outer width height distance pixel waist_at"),
     (percent, "transmission reflectance transmittance Rp Rs Tp Ts"),
     (_waist, "waist"),
     (_place, "centre"),
     (_extinction, "extinction"),
-    (_tilt, "x y"),
+    (_tilt, "x y wedge"),
     (_power, "power"),
+    (_index, "index layer"),
     (_nanometres, "design"),
     (_mode, "mode"),
     (_parts, "incoherent"),
@@ -147,12 +154,14 @@ def _spoken(parameter: str, value: Any, view: View) -> str:
         return _state(value, view) if parameter == "state" else _beam(value, view)
     if parameter in _SPEAKER:
         return str(_SPEAKER[parameter](value))
+    if isinstance(value, bool):
+        return "yes" if value else "no"
     return f"{value:g}" if isinstance(value, int | float) else str(value)
 
 
 # What goes without saying unless it was changed.
 USUAL: dict[str, Any] = {
-    "transmission": 1.0, "order": 0, "centre": (0.0, 0.0), "waist_at": 0.0, "x": 0.0, "y": 0.0,
+    "transmission": 1.0, "order": 0, "centre": (0.0, 0.0), "waist_at": 0.0, "x": 0.0, "y": 0.0, "wedge": 0.0,
     "orientation": "upright",
     "phase_p": 0.0, "phase_s": 0.0, "phase_t": 0.0, "phase_tp": 0.0, "phase_ts": 0.0,
     "phase_r": pi / 2, "phase_rp": pi / 2, "phase_rs": pi / 2,

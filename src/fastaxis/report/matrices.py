@@ -10,6 +10,9 @@ from fastaxis.maths import NUMBERS, free_symbols
 __all__ = ["Letters", "matrix_lines"]
 
 
+SIMPLE = 10_000  # a share that is no whole number of hundredths of a percent was worked out, and stays a decimal
+
+
 class Letters:
     """The maths namespace of a card: sympy, with multiples of pi made exact."""
 
@@ -44,14 +47,16 @@ class Letters:
         return self.sympy.sin(self.exact(angle))
 
     def root(self, power: Any) -> Any:
-        return self.sympy.sqrt(self.sympy.nsimplify(power, rational=True))
+        share = self.sympy.nsimplify(power, rational=True)
+        return self.sympy.sqrt(share) if getattr(share, "q", 1) <= SIMPLE else self.sympy.sqrt(share).n()
 
     def number(self, value: complex) -> Any:
         return self.sympy.nsimplify(value, rational=True)
 
     def short(self, value: Any) -> Any:
         """A short form that is found quickly."""
-        return self.sympy.factor_terms(self.sympy.expand(value))
+        found = self.sympy.factor_terms(self.sympy.expand(value))
+        return found.xreplace({number: self.sympy.Float(number, 4) for number in found.atoms(self.sympy.Float)})
 
 
 def _complex(value: complex) -> str:
