@@ -29,7 +29,7 @@ from fastaxis.plan.binding import refuse_letters
 
 __all__ = ["HEADINGS", "Row", "SetSheet", "set_sheet"]
 
-HEADINGS = ("part", "kind", "leaves by", "along beam [mm]", "height [mm]", "angle", "dial", "same at", "w [mm]",
+HEADINGS = ("part", "kind", "leaves by", "position [mm]", "height [mm]", "angle", "dial", "same at", "w [mm]",
             "power", "state behind it", "picture")  # fmt: skip
 
 

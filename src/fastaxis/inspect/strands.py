@@ -164,9 +164,10 @@ def state_in_words(strands: tuple[Strand, ...]) -> str:
 
 
 def _named(state: State) -> str:
-    turn, hand = math.degrees(state.azimuth), math.degrees(state.ellipticity)
+    # Nine decimals: what is left of 0 degrees after a few plates is 1e-14.
+    turn, hand = (round(math.degrees(angle), 9) + 0.0 for angle in (state.azimuth, state.ellipticity))
     if abs(abs(hand) - 45) < 0.01:
         return "circular R" if hand > 0 else "circular L"
     if abs(hand) < 0.01:
-        return f"linear {turn + 0.0:.4g}°"
-    return f"azimuth {turn + 0.0:.4g}°, ellipticity {hand:+.4g}°"
+        return f"linear {turn:.4g}°"
+    return f"azimuth {turn:.4g}°, ellipticity {hand:+.4g}°"

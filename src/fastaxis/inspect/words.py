@@ -39,7 +39,7 @@ def degrees(angle: float) -> str:
     >>> degrees(math.pi / 8)
     '22.5°'
     """
-    return f"{math.degrees(angle) + 0.0:.4g}°"
+    return f"{round(math.degrees(angle), 9) + 0.0:.4g}°"
 
 
 def percent(share: float) -> str:

@@ -17,7 +17,7 @@ __all__ = ["draw_set_sheet"]
 
 SIZE = 8.0
 TICK = 0.28  # [inch], a box to tick when the part is set
-SHARES = (0.95, 1.5, 0.8, 0.65, 0.6, 0.95, 0.55, 0.6, 0.5, 0.7, 1.5, 0.65)
+SHARES = (0.95, 1.5, 0.8, 0.7, 0.6, 0.95, 0.55, 0.6, 0.55, 0.7, 1.5, 0.65)
 """Widths of the columns among each other, in the order of the sheet's headings."""
 ROOM = 0.08  # [inch] between rows
 THUMB, GAP, PER_ROW = 1.58, 0.14, 6

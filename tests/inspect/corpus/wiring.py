@@ -1,0 +1,76 @@
+"""Mistakes of joining."""
+
+import fastaxis as fa
+from fastaxis.units import deg, mm, mW, um
+
+
+@pair("wiring", "second", "high")
+def camera_without_light(wrong):
+    train = line(fa.BeamSplitter(name="split"), fa.Camera(pixel=10 * um, shape=(512, 512), name="first"))
+    train.add(fa.Camera(pixel=10 * um, shape=(512, 512), orientation="mirrored", name="second"))
+    return train.along("split.reflected", fa.BeamDump(name="dump") if wrong else "second")
+
+
+@pair("wiring", "spare", "medium")
+def plate_never_joined(wrong):
+    train = line(fa.HalfWavePlate(fast=20 * deg, name="hwp"), fa.Detector(name="meter"))
+    return train.add(fa.QuarterWavePlate(fast=0 * deg, name="spare")) if wrong else train
+
+
+@pair("wiring", "bench", "high")
+def no_laser(wrong):
+    if not wrong:
+        return line(fa.HalfWavePlate(fast=20 * deg, name="hwp"), fa.Detector(name="meter"))
+    return fa.Train(wavelength=532e-9, name="bench").along(fa.HalfWavePlate(fast=20 * deg), fa.Detector())
+
+
+@pair("wiring", "split", "high")
+def light_runs_round(wrong):
+    train = line(fa.BeamSplitter(reflectance=0.1, name="split"), fa.Mirror(name="m1"), fa.Mirror(name="m2"))
+    train.along("m2", fa.Mirror(name="m3"), "split.side" if wrong else fa.Detector(name="meter"))
+    return train.along("split.reflected", fa.BeamDump(name="dump"))
+
+
+@pair("open port", "pbs.reflected", "medium")
+def forgotten_dump(wrong):
+    train = line(fa.PolarizingBeamSplitter(name="pbs"), fa.Detector(name="meter"), state=fa.D, power=0.5 * mW)
+    return train if wrong else train.along("pbs.reflected", fa.BeamDump(name="dump"))
+
+
+@pair("laser caution", "pbs.reflected", "high")
+def strong_beam_leaves(wrong):
+    train = line(fa.PolarizingBeamSplitter(name="pbs"), fa.Detector(name="meter"), state=fa.D, power=100 * mW)
+    return train if wrong else train.along("pbs.reflected", fa.BeamDump(name="dump"))
+
+
+@pair("returning light", "pbs.front", "medium")
+def double_pass_with_a_turned_plate(wrong):
+    train = line(
+        fa.PolarizingBeamSplitter(name="pbs"),
+        fa.QuarterWavePlate(fast=(30 if wrong else 45) * deg, name="qwp"),
+        fa.Mirror(name="end"),
+    )
+    return train.along("end", "qwp.back", "pbs.transmitted").along("pbs.side", fa.Detector(name="meter"))
+
+
+@pair("dark port", "meter", "medium")
+def crossed_polarizer(wrong):
+    return line(fa.Polarizer(axis=(90 if wrong else 0) * deg, name="pol"), fa.Detector(name="meter"))
+
+
+@pair("fringe period", "cam", "high")
+def steep_fringes(wrong):
+    return _two_arms(tilt=0.1 if wrong else 0.001, longer=0.0)
+
+
+@pair("path difference", "cam", "low")
+def unequal_arms(wrong):
+    return _two_arms(tilt=0.001, longer=40 * mm if wrong else 0.0)
+
+
+def _two_arms(tilt, longer):
+    train = line(fa.BeamSplitter(name="split"), fa.FreeSpace(100 * mm), fa.Mirror(name="m1"))
+    train.along("m1", fa.Wedge(x=tilt, name="tilt"), fa.BeamSplitter(name="join"))
+    train.along("split.reflected", fa.FreeSpace(100 * mm + longer), fa.Mirror(name="m2"), "join.side")
+    camera = fa.Camera(pixel=5 * um, shape=(1024, 1024), orientation="mirrored", name="cam")
+    return train.along("join.transmitted", camera).along("join.reflected", fa.BeamDump(name="dump"))

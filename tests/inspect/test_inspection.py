@@ -1,0 +1,123 @@
+"""The list of findings: ranks, words, JSON, files, and what it says it did not check."""
+
+import json
+import warnings
+
+import pytest
+
+import fastaxis as fa
+from fastaxis.inspect import Finding, Inspection, Severity
+from fastaxis.units import deg, mm, mW, nm, um
+
+
+def finding(severity, element="hwp", check="slip"):
+    return Finding(severity=severity, check=check, element=element, rule="a rule", got="a value", fix="a fix")
+
+
+MIXED = Inspection("bench", tuple(map(finding, (Severity.NOTE, Severity.HIGH, Severity.LOW, Severity.MEDIUM))), ("x",))
+
+
+def test_the_weightiest_comes_first():
+    assert [f.severity for f in MIXED] == list(Severity)
+    assert len(MIXED) == 4
+    assert len(MIXED.high) == len(MIXED.medium) == len(MIXED.low) == len(MIXED.notes) == 1
+    assert not MIXED.passed
+    assert Inspection("bench", MIXED.medium).passed
+
+
+def test_findings_of_one_part_and_of_its_ports():
+    both = Inspection("b", (finding(Severity.LOW, "pbs.reflected"), finding(Severity.LOW, "pbs2")))
+    assert [f.element for f in both.of("pbs")] == ["pbs.reflected"]
+
+
+def test_text_tells_rule_got_fix_and_what_was_not_checked():
+    text = str(MIXED)
+    assert text.startswith("bench: 1 high, 1 medium, 1 low, 1 note")
+    assert "HIGH   hwp: slip" in text
+    assert "a value; a rule" in text
+    assert "fix: a fix" in text
+    assert "not checked:\n  x\n" in text
+    assert "signs: exp(-iwt)" in text
+    assert "NOTE" not in MIXED.text(notes=False)
+    assert Inspection("bench", ()).text().startswith("bench: nothing found")
+    assert str(MIXED.high[0]) == "[high] slip: a value; a rule (fix: a fix)"
+
+
+def test_json_reads_back():
+    data = json.loads(MIXED.json())
+    assert data["passed"] is False
+    assert data["findings"][0] == {
+        "severity": "high", "check": "slip", "element": "hwp", "rule": "a rule", "got": "a value", "fix": "a fix",
+    }  # fmt: skip
+
+
+@pytest.mark.parametrize("ending", ["txt", "json", "pdf", "png"])
+def test_saved_whole(tmp_path, ending):
+    (path,) = MIXED.save(tmp_path / f"found.{ending}")
+    assert path.exists()
+    assert path.stat().st_size > 100
+
+
+def test_another_ending_is_refused(tmp_path):
+    with pytest.raises(fa.FileFormatError, match="pdf, png, json or txt"):
+        MIXED.save(tmp_path / "found.doc")
+
+
+def test_many_findings_take_several_pages():
+    many = Inspection("bench", tuple(finding(Severity.LOW) for _ in range(60)), ("one", "two"))
+    assert len(many.figures()) > 2
+
+
+def test_letters_leave_only_the_wiring(bench_of):
+    import sympy
+
+    theta = sympy.Symbol("theta", real=True)
+    train = bench_of(fa.HalfWavePlate(fast=theta, name="hwp"), fa.Detector(name="meter"))
+    (note,) = train.inspect()
+    assert (note.check, note.severity) == ("letters", Severity.NOTE)
+    assert "theta" in note.got
+    assert eval(note.fix, {"train": train}).passed  # noqa: S307 - the fix is code to paste
+
+
+def test_an_inspection_hides_no_caution_from_the_train(bench_of):
+    train = bench_of(fa.HalfWavePlate(fast=1 * deg, design=900 * nm, name="hwp"), fa.Detector(name="meter"))
+    with warnings.catch_warnings():
+        warnings.simplefilter("error")
+        train.inspect()
+    with pytest.warns(fa.SlipWarning):
+        train.validate()
+
+
+def test_what_is_never_checked_is_said(bench_of):
+    told = " ".join(bench_of(fa.Detector()).inspect().not_checked)
+    for word in ("saturation", "temperature", "ghosts", "coherence", "pulsed"):
+        assert word in told
+
+
+@pytest.mark.parametrize("check", ["clipped beam", "off centre", "design wavelength", "bare degrees", "isolator"])
+def test_fixes_that_are_code_mend_what_they_are_for(pairs, check):
+    pair = next(p for p in pairs if p.check == check and p.name not in {"stop_beside_the_beam"})
+    train = pair.build(True)
+    (found,) = [f for f in train.inspect() if f.check == check and f.element == pair.element]
+    mended = eval(found.fix, {"train": train, "mm": mm, "nm": nm, "deg": deg, "um": um, "fa": fa})  # noqa: S307
+    again = [f for f in mended.inspect() if f.check == check and f.element == pair.element]
+    assert all(f.severity.rank > found.severity.rank for f in again), again
+
+
+def test_no_example_of_the_project_raises_an_alarm(request):
+    import runpy
+
+    folder = request.config.rootpath / "train_examples"
+    for path in sorted(folder.glob("*.py")):
+        if "planted" in path.name:
+            continue
+        train = runpy.run_path(str(path))["train"]
+        assert train.inspect().passed, f"{path.name}\n{train.inspect()}"
+
+
+def test_power_units_in_words():
+    from fastaxis.inspect.words import degrees, watts
+
+    assert watts(5 * mW) == "5 mW"
+    assert watts(3e-15) == "3e-15 W"
+    assert degrees(-0.0) == "0°"
