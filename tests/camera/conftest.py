@@ -43,8 +43,8 @@ class Beam:
         return np.array(self.vector)[:, None, None] * picture
 
     @property
-    def power(self):
-        return self.vector[0]
+    def total_stokes(self):
+        return np.array(self.vector)
 
 
 @dataclass

@@ -112,7 +112,8 @@ def recorded(
     """
     if isinstance(sensor, Camera):
         return _picture(fields, sensor)
-    return _all_power(fields), np.zeros(1), np.zeros(1)
+    totals = np.asarray(sum(field.total_stokes for field in fields))
+    return totals[:, None, None], np.zeros(1), np.zeros(1)
 
 
 def _picture(fields: Sequence[Any], camera: Camera) -> tuple[NDArray[Any], NDArray[Any], NDArray[Any]]:
@@ -130,18 +131,6 @@ def _shown_axes(camera: Camera, seen: Raster) -> tuple[NDArray[Any], NDArray[Any
     return tuple(  # type: ignore[return-value]  # of two
         np.sort(np.sign(step) * (seen.x if abs(step) == 1 else seen.y)) for step in (along_columns, along_rows)
     )
-
-
-def _all_power(fields: Sequence[Any]) -> NDArray[Any]:
-    return np.asarray(sum(_collected(field) for field in fields))
-
-
-def _collected(field: Any) -> NDArray[Any]:
-    """Stokes parameters [W] of all light of a field, shape (4, 1, 1)."""
-    # One pixel wider than any beam; a plane wave overfills it, and its power is by definition that on its own area.
-    stokes = field.stokes_on(Raster(10.0, (1, 1)))
-    seen = stokes[0, 0, 0]
-    return np.asarray(stokes * (field.power / seen) if seen > 0 else stokes)
 
 
 def merge_guards(guards: Sequence[Any]) -> Any:

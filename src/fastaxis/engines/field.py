@@ -45,6 +45,10 @@ class PlaneField(Protocol):
         """Total power [W]."""
 
     @property
+    def total_stokes(self) -> NDArray[np.float64]:
+        """S0 .. S3 of all the light [W], shape (4,); S0 is the power."""
+
+    @property
     def guard(self) -> Guard:
         """How well samples carried the light."""
 

@@ -38,6 +38,11 @@ class UniformField:
         """Total power [W]; of a plane wave, the power on its area."""
         return float(np.sum(abs(self.jones) ** 2))
 
+    @property
+    def total_stokes(self) -> NDArray[np.float64]:
+        """S0 .. S3 [W], shape (4,); of a plane wave, on its area."""
+        return stokes(self.jones)
+
     def stokes_on(self, raster: Raster) -> NDArray[np.float64]:
         """A plane wave puts its irradiance on every pixel; a collected beam is all in one pixel."""
         if self.area is None and raster.shape != (1, 1):

@@ -3,34 +3,89 @@
 from __future__ import annotations
 
 from collections.abc import Sequence
-from dataclasses import replace
+from dataclasses import dataclass, replace
+from functools import cached_property
+from typing import TypeVar
 
 import numpy as np
 from numpy.typing import NDArray
 
 from fastaxis.engines.field import Guard
 from fastaxis.engines.grid.light import GridLight
-from fastaxis.engines.grid.reading import GridField
+from fastaxis.engines.grid.reading import Collected, GridField
 from fastaxis.errors import SamplingError
+from fastaxis.light import Raster
 
-__all__ = ["combined"]
+__all__ = ["GridSum", "combined"]
 
 Complexes = NDArray[np.complex128]
+Sampled = TypeVar("Sampled", GridLight, Collected)
 
 
-def combined(fields: Sequence[GridField], coefficients: Complexes) -> GridField:
+@dataclass(frozen=True, eq=False)
+class GridSum:
+    """The sum of coefficient * field, of light at one target.
+
+    Parameters
+    ----------
+    fields : on the same samples.
+    coefficients : one complex number a field.
+    """
+
+    fields: Sequence[GridField]
+    coefficients: Complexes
+
+    @property
+    def wavelength(self) -> float:
+        """Vacuum wavelength [m]."""
+        return self.fields[0].wavelength
+
+    @cached_property
+    def whole(self) -> GridField:
+        """The sum as sampled light."""
+        return GridField(_sum([field.light for field in self.fields], self.coefficients), self.guard)
+
+    @property
+    def power(self) -> float:
+        """Power in the window [W]."""
+        return self.whole.power
+
+    @property
+    def total_stokes(self) -> NDArray[np.float64]:
+        """S0 .. S3 of the light in the window [W], shape (4,)."""
+        return self.whole.total_stokes
+
+    @property
+    def guard(self) -> Guard:
+        """The worst of the fields."""
+        guards = [field.guard for field in self.fields]
+        worst = (max(getattr(guard, name) for guard in guards) for name in ("edge_power", "phase_step", "discarded"))
+        return Guard(*worst)
+
+    def at(self, x: NDArray[np.float64], y: NDArray[np.float64]) -> Complexes:
+        """(Ex, Ey) [sqrt(W)/m] at columns x and rows y [m], shape (2, ny, nx)."""
+        return self.whole.at(x, y)
+
+    def stokes_on(self, raster: Raster) -> NDArray[np.float64]:
+        """Watts per pixel of S0 .. S3, shape (4, ny, nx); each field is brought to the pixels once for all sums."""
+        parts = [field.collected_by(raster) for field in self.fields]
+        if len({part.samples.shape[1:] for part in parts}) > 1:
+            return self.whole.stokes_on(raster)
+        return _sum(parts, self.coefficients).stokes()
+
+
+def combined(fields: Sequence[GridField], coefficients: Complexes) -> GridSum:
     """The sum of coefficient * field, of light at one target.
 
     Raises
     ------
     SamplingError : the fields are not on the same samples.
     """
-    lights = [field.light for field in fields]
-    _check_samples(lights)
-    return GridField(_sum(lights, coefficients), _worst([field.guard for field in fields]))
+    _check_samples([field.light for field in fields])
+    return GridSum(fields, coefficients)
 
 
-def _sum(lights: list[GridLight], coefficients: Complexes) -> GridLight:
+def _sum(lights: Sequence[Sampled], coefficients: Complexes) -> Sampled:
     """One scalar field stays one: where the lights share their polarization, or all but their polarization."""
     first, vectors = lights[0], [light.jones for light in lights if light.jones is not None]
     if len(vectors) == len(lights):
@@ -38,7 +93,11 @@ def _sum(lights: list[GridLight], coefficients: Complexes) -> GridLight:
             return replace(first, samples=_total([light.samples for light in lights], coefficients))
         if all(np.array_equal(first.samples, light.samples) for light in lights):
             return replace(first, jones=_total(vectors, coefficients))
-    return replace(first, samples=_total([light.components() for light in lights], coefficients), jones=None)
+    return replace(first, samples=_total([_components(light) for light in lights], coefficients), jones=None)
+
+
+def _components(light: GridLight | Collected) -> Complexes:
+    return light.samples if light.jones is None else light.jones[:, None, None] * light.samples
 
 
 def _total(arrays: list[Complexes], coefficients: Complexes) -> Complexes:
@@ -58,11 +117,3 @@ def _check_samples(lights: list[GridLight]) -> None:
             got=f"fields on {pitches}",
             fix="grid=fa.Grid(samples=1024, window=10*mm)",
         )
-
-
-def _worst(guards: list[Guard]) -> Guard:
-    return Guard(
-        max(guard.edge_power for guard in guards),
-        max(guard.phase_step for guard in guards),
-        max(guard.discarded for guard in guards),
-    )

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from dataclasses import dataclass
+from dataclasses import dataclass, field
 
 import numpy as np
 from numpy.typing import NDArray
@@ -14,10 +14,39 @@ from fastaxis.engines.grid.light import GridLight, curve
 from fastaxis.engines.grid.nearby import nearby
 from fastaxis.light import Raster, stokes
 
-__all__ = ["GridField"]
+__all__ = ["Collected", "GridField"]
 
 Reals = NDArray[np.float64]
 Complexes = NDArray[np.complex128]
+
+
+@dataclass(frozen=True, eq=False)
+class Collected:
+    """Light on samples that hold its irradiance, and what the pixels of a raster collect of it.
+
+    Parameters
+    ----------
+    samples : (1, m, n) times a Jones vector, or (2, m, n) as (Ex, Ey) [sqrt(W)/m].
+    jones : (2,) of a uniformly polarized field, else None.
+    left, right : matrices from irradiance to rows and columns of pixels [m].
+    """
+
+    samples: Complexes
+    jones: Complexes | None
+    left: Reals
+    right: Reals
+
+    def stokes(self) -> Reals:
+        """Watts per pixel of S0 .. S3, shape (4, ny, nx)."""
+        left, right = self.left, self.right
+        if self.jones is not None:
+            states: Reals = stokes(self.jones)
+            scalar = self.samples[0]
+            return np.multiply.outer(states, _sandwich(left, scalar.real**2 + scalar.imag**2, right))
+        ex, ey = self.samples
+        px, py, cross = ex.real**2 + ex.imag**2, ey.real**2 + ey.imag**2, 2 * ex.conj() * ey
+        images = (_sandwich(left, image, right) for image in (px + py, px - py, cross.real, -cross.imag))
+        return np.stack(list(images))
 
 
 @dataclass(frozen=True)
@@ -29,6 +58,7 @@ class GridField:
 
     light: GridLight
     guard: Guard
+    _read: dict[Raster, Collected] = field(default_factory=dict, repr=False, compare=False)
 
     @property
     def wavelength(self) -> float:
@@ -39,6 +69,17 @@ class GridField:
     def power(self) -> float:
         """Power in the window [W]."""
         return self.light.power
+
+    @property
+    def total_stokes(self) -> Reals:
+        """S0 .. S3 of the light in the window [W], shape (4,)."""
+        light = self.light
+        if light.jones is not None:
+            scalar = float(np.vdot(light.samples, light.samples).real) * light.pitch**2
+            return np.asarray(scalar * stokes(light.jones))
+        (ex, ey), area = light.samples, light.pitch**2
+        px, py, cross = float(np.vdot(ex, ex).real), float(np.vdot(ey, ey).real), 2 * complex(np.vdot(ex, ey))
+        return np.array([px + py, px - py, cross.real, -cross.imag]) * area
 
     def at(self, x: Reals, y: Reals) -> Complexes:
         """(Ex, Ey) [sqrt(W)/m] at columns x and rows y [m], shape (2, ny, nx)."""
@@ -57,28 +98,26 @@ class GridField:
         Irradiance has twice the band of the field, so finer samples hold it exactly, and what a pixel of any size
         collects is a fixed sum of them.
         """
-        samples, left, right = self._collected_by(raster)
-        if self.light.jones is not None:
-            states: Reals = stokes(self.light.jones)
-            image = _sandwich(left, samples[0].real ** 2 + samples[0].imag ** 2, right)
-            return np.multiply.outer(states, image)
-        ex, ey = samples
-        px, py, cross = ex.real**2 + ex.imag**2, ey.real**2 + ey.imag**2, 2 * ex.conj() * ey
-        images = (_sandwich(left, image, right) for image in (px + py, px - py, cross.real, -cross.imag))
-        return np.stack(list(images))
+        return (self._read.get(raster) or self._collected_by(raster)).stokes()
 
-    def _collected_by(self, raster: Raster) -> tuple[Complexes, Reals, Reals]:
-        """Finer samples, and the matrices from their irradiance to rows and columns of pixels."""
+    def collected_by(self, raster: Raster) -> Collected:
+        """The light as pixels collect it; kept for the last raster, since sums of this field are read alike."""
+        if raster not in self._read:
+            self._read.clear()
+            self._read[raster] = self._collected_by(raster)
+        return self._read[raster]
+
+    def _collected_by(self, raster: Raster) -> Collected:
         light = self.light
         rows, columns = (nearby(places, raster.pitch, light.count, light.pitch) for places in (raster.y, raster.x))
         if rows and columns:
             down, across = rows.values(), columns.values().T
             samples = np.stack([_complex_sandwich(down, part, across) for part in light.samples])
-            return samples, rows.integrals(), columns.integrals().T
+            return Collected(samples, light.jones, rows.integrals(), columns.integrals().T)
         samples, pitch = finer(light.samples, light.pitch)
         edges = (_edges(places, raster.pitch) for places in (raster.y, raster.x))
         left, right = (integral_matrix(edge, samples.shape[-1], pitch) for edge in edges)
-        return samples, left, right.T
+        return Collected(samples, light.jones, left, right.T)
 
 
 def _edges(centres: Reals, pitch: float) -> Reals:
