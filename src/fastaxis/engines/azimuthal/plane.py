@@ -86,7 +86,8 @@ class AzimuthalField:
         """(Ex, Ey) [sqrt(W)/m] at columns x and rows y [m], shape (2, ny, nx)."""
         x, y = np.atleast_1d(np.asarray(x, dtype=float)), np.atleast_1d(np.asarray(y, dtype=float))
         # An axis place alone still needs panels, which have a width.
-        reach = max(math.hypot(abs(x).max(), abs(y).max()), 1e-3 * self.wavelength)
+        # The farthest place may round to a hair beyond its own distance, where the table would read nothing.
+        reach = max(math.hypot(abs(x).max(), abs(y).max()), 1e-3 * self.wavelength) * (1 + 1e-12)
         arrival = self.out_to(reach * (1 + 1e-9))
         circular = circular_field(table_of(arrival.profile, reach), arrival.orders, x, y)
         bend = self.harmonics.wavenumber * arrival.curvature / 2
