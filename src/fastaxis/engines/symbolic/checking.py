@@ -80,7 +80,8 @@ def _radius(train: Any, target: str) -> float:
     spread = section.a**2 * moments.x2 + 2 * section.a * section.b * moments.xt
     if section.b:
         spread += section.b**2 * moments.t2
-    return 2 * math.sqrt(spread)
+    # A hard edge has no finite spread of angles.
+    return 2 * math.sqrt(spread) if math.isfinite(spread) else 1e-3
 
 
 def _propagated(train: Any, target: str, r: float, phi: float) -> NDArray[np.float64]:
