@@ -16,12 +16,15 @@ from fastaxis.engines.symbolic.answers import (
     Lobes,
     Mistake,
     analyzer_angles,
+    charge_share,
     dark_when,
     lobes,
+    mode_share,
     ranked_mistakes,
 )
 from fastaxis.engines.symbolic.checking import Check, check
-from fastaxis.engines.symbolic.expressions import middle, split_key, written
+from fastaxis.engines.symbolic.common_phase import made_real, without_common_phase
+from fastaxis.engines.symbolic.expressions import written
 from fastaxis.engines.symbolic.field import Field, Pair
 from fastaxis.engines.symbolic.functions import NumericForm
 from fastaxis.engines.symbolic.presentations import compact, exponential, harmonics, series
@@ -112,20 +115,21 @@ class Form(Shown):
         SymbolError : the light is a mixture and has no Jones vector.
         """
         pair = self._only_pair()
+        scale = self.parts[0].field.scale
         if not global_phase:
-            pair = _without_common_phase(pair)
+            pair = without_common_phase(pair)
         if basis == "linear":
-            left, right = pair
-            ring, i = left.ring, self._maths.number(1j)
-            root = ring.surd(self.parts[0].field.scale / 2)
+            (left, right), root, i = pair, self._maths.ring.surd(scale / 2), self._maths.number(1j)
             pair = ((left + right) * root, (left - right) * root * i)
         elif basis == "circular":
-            root = self._maths.ring.surd(self.parts[0].field.scale)
+            root = self._maths.ring.surd(scale)
             pair = (pair[0] * root, pair[1] * root)
         else:
             raise SymbolError(
                 "a Jones vector is written in one of two bases", got=f'basis="{basis}"', fix='basis="circular"'
             )
+        if not global_phase:
+            pair = made_real(pair)
         return sp.Matrix([self._present(poly, way) for poly in pair])
 
     def stokes_polys(self) -> tuple[Poly, ...]:
@@ -213,6 +217,20 @@ class Form(Shown):
         """Small errors ranked by the order in which they change the frame, and where they do."""
         return ranked_mistakes(self.frame_poly(setting), small)
 
+    def share(self, mode: Any) -> Any:
+        """Share of the laser's power in a Laguerre-Gauss mode, in either polarization; the mode may have letters."""
+        return self._shared(lambda field: mode_share(field, mode))
+
+    def charge_share(self, charge: Any) -> Any:
+        """Share of the laser's power that turns with exp(i charge phi)."""
+        return self._shared(lambda field: charge_share(field, charge))
+
+    def _shared(self, share: Any) -> Any:
+        maths, total = self._maths, self._maths.ring.zero
+        for part in self.parts:
+            total = total + maths.number(part.weight) * share(part.field)
+        return compact(total)
+
     def _amplitudes(self, setting: Any, pair: Pair) -> tuple[Poly, ...]:
         return pair if setting is None else behind(setting, pair, self._maths)[1]
 
@@ -278,25 +296,6 @@ class Form(Shown):
     def series(self, setting: Any, small: Sequence[Any], order: int = 2) -> Any:
         """The frame to a total order in small symbols."""
         return series(self.frame_poly(setting), small, order)
-
-
-def _without_common_phase(pair: Pair) -> Pair:
-    """Both components without the phase they share all over the plane."""
-    polys = [poly for poly in pair if poly]
-    if not polys:
-        return pair
-    ring = polys[0].ring
-    _, exponents = ring.exponents(middle(polys))
-    plane = {"r", "phi"}
-    common = {
-        place: value
-        for place, value in exponents.items()
-        if not plane & {str(s) for s in ring.generators[place].expression.free_symbols}
-    }
-    root = split_key(ring, min(polys[0].terms))[2]
-    key = ring.pack(root, common)
-    left, right = (Poly.made(ring, {k - key: v for k, v in poly.terms.items()}, poly.den) for poly in pair)
-    return left, right
 
 
 def _plain(value: Any) -> Any:

@@ -1,4 +1,4 @@
-"""Kummer's function 1F1(a; b; z) in numbers, for Re z <= 0, where the library's complex one loses all digits near |z| = 30.
+"""Kummer's function 1F1(a; b; z) in numbers for Re z <= 0, where the library's complex one loses digits at |z| = 30.
 
 Three ways meet: with a - b a whole number n >= 0, exp(z) times a polynomial; up to |z| = 40, Gauss-Jacobi quadrature of
 int_0^1 exp(z t) t^(a-1) (1-t)^(b-a-1) dt, after raising b above a; beyond, the asymptotic series. NIST DLMF 13.2.39,

@@ -16,14 +16,14 @@ from fastaxis.engines.symbolic.waves.base import exactly
 from fastaxis.errors import SymbolError
 from fastaxis.light import Beam, FlatTop, Gaussian, HermiteGauss, LaguerreGauss, PlaneWave, State
 
-__all__ = ["as_field", "state_pair"]
+__all__ = ["as_field", "state_pair", "wave_of"]
 
 
 def as_field(beam: Beam, place: Place) -> Field:
     """A coherent beam; terms that share a mode share a wave."""
     found: dict[Wave, Pair] = {}
     for term in beam.terms:
-        wave = _wave(term.mode)
+        wave = wave_of(term.mode)
         amplitude = place.maths.number(term.amplitude)
         left, right = (amplitude * part for part in state_pair(term.state, place.maths))
         old = found.get(wave)
@@ -87,7 +87,8 @@ def _relatives(one: Any, other: Any) -> bool:
     )
 
 
-def _wave(mode: Any) -> Wave:
+def wave_of(mode: Any) -> Wave:
+    """A mode of a source as a wave with exact parameters."""
     if isinstance(mode, PlaneWave):
         return StillWave(1 / sp.sqrt(exactly(mode.area)))
     if not hasattr(mode, "centre") or any(c != 0 for c in mode.centre):
