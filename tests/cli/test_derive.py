@@ -2,6 +2,7 @@ import pytest
 import sympy as sp
 
 import fastaxis as fa
+from fastaxis.engines.symbolic.checking import Check
 
 SWITCH = """\
 import sympy
@@ -69,6 +70,13 @@ def test_a_form_that_cannot_be_checked_says_so(bench, run, monkeypatch):
     ran = run("derive", bench(SWITCH))
     assert ran.code == 0
     assert "not checked: cam: 1 mm; a window is too small" in ran.out
+
+
+@pytest.mark.parametrize(("roundings", "says"), [(12.0, "  checked: "), (1e14, "  NOT CONFIRMED, do not rely")])
+def test_a_form_that_disagrees_with_numbers_is_not_called_checked(bench, run, monkeypatch, roundings, says):
+    check = Check(roundings, 24, "numbers")
+    monkeypatch.setattr("fastaxis.engines.symbolic.form.Form.check", lambda *_, **__: check)
+    assert says in run("derive", bench(SWITCH)).out
 
 
 def test_latex(bench, run):

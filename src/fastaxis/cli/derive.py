@@ -15,6 +15,9 @@ from fastaxis.errors import FastaxisError
 
 __all__ = ["derive"]
 
+ROUNDING = 2.0**-52
+AGREED = 1e-3  # of the irradiance; a numeric engine meets a hard edge or a singular point to about this
+
 
 def derive(bench: BenchFile, options: Namespace) -> None:
     """Print the field, the Stokes parameters and, where asked, a frame, each as a formula with a numeric check."""
@@ -34,9 +37,11 @@ def derive(bench: BenchFile, options: Namespace) -> None:
 
 def _checked(form: Any) -> str:
     try:
-        return f"checked: {form.check()}"
+        check = form.check()
     except FastaxisError as error:
         return f"not checked: {error}"
+    agreed = check.roundings * ROUNDING < AGREED
+    return f"{'checked' if agreed else 'NOT CONFIRMED, do not rely on this form'}: {check}"
 
 
 def _quantities(form: Any, setting: str | None, view: View) -> Iterator[tuple[str, Any]]:
