@@ -43,3 +43,20 @@ def test_warnings_can_be_made_errors():
         warnings.simplefilter("error", errors.FastaxisWarning)
         with pytest.raises(errors.SlipWarning):
             warnings.warn(errors.SlipWarning("r", got="g", fix="f"), stacklevel=1)
+
+
+def test_a_caution_points_at_the_line_of_the_user():
+    with pytest.warns(errors.SlipWarning) as caught:
+        errors.caution(errors.SlipWarning("r", got="g", fix="f"))
+    assert caught[0].filename == __file__
+
+
+def test_a_caution_from_deep_inside_points_at_the_line_of_the_user():
+    import fastaxis as fa
+
+    train = fa.Train(wavelength=532e-9).along(
+        fa.Laser(waist=1e-3), fa.HalfWavePlate(fast=0, design=800e-9), fa.Detector(name="out")
+    )
+    with pytest.warns(errors.SlipWarning, match="design") as caught:
+        train.expose("out", [fa.H])
+    assert caught[0].filename == __file__

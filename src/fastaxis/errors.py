@@ -5,6 +5,10 @@ Every class asks for all three parts, so none can be left out. ``str(error)`` is
     qp: q = 0.3; q must be a multiple of 1/2: any other value leaves a cut in the plate (fix: q=0.5)
 """
 
+import sys
+import warnings
+from pathlib import Path
+
 
 def _sentence(rule: str, got: str, fix: str) -> str:
     return f"{got}; {rule.rstrip('.')} (fix: {fix})"
@@ -71,3 +75,15 @@ class SamplingWarning(FastaxisWarning):
 
 class WiringWarning(FastaxisWarning):
     """The train can be answered, but something about its wiring is probably not meant."""
+
+
+_PACKAGE = str(Path(__file__).parent)
+
+
+def caution(warning: FastaxisWarning) -> None:
+    """Warn at the user's own line, however deep inside the package the finding was made."""
+    level = 2
+    frame = sys._getframe(1)  # noqa: SLF001 - the documented way to find the caller
+    while frame.f_back is not None and frame.f_code.co_filename.startswith(_PACKAGE):
+        frame, level = frame.f_back, level + 1
+    warnings.warn(warning, stacklevel=level)

@@ -3,10 +3,9 @@
 from __future__ import annotations
 
 import math
-import warnings
 from dataclasses import replace
 
-from fastaxis.errors import SamplingError, SamplingWarning
+from fastaxis.errors import SamplingError, SamplingWarning, caution
 from fastaxis.laws import ScalarLaw, TravelLaw
 from fastaxis.plan.grid import Grid
 from fastaxis.plan.sampling import Sampling, follow
@@ -146,7 +145,7 @@ def sampling_for(steps: Steps, spread: Spread, wavelength: float, grid: Grid | N
     message = _message(sampling, steps, spread, wavelength)
     if worst.margin < (REFUSE_ROUGH if rough else REFUSE):
         raise SamplingError(**message)
-    warnings.warn(SamplingWarning(**message), stacklevel=2)
+    caution(SamplingWarning(**message))
     return sampling
 
 

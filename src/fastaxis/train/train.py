@@ -2,7 +2,6 @@
 
 from __future__ import annotations
 
-import warnings
 from collections.abc import Iterable, Mapping
 from os import PathLike
 from pathlib import Path
@@ -11,10 +10,12 @@ from typing import Any, Self
 from fastaxis.checks import wavelength as checked_wavelength
 from fastaxis.elements.base import Element
 from fastaxis.elements.camera import Camera
+from fastaxis.errors import caution
 from fastaxis.files import write_whole
 from fastaxis.loader import late
 from fastaxis.maths import Scalar
 from fastaxis.train import validate as checks
+from fastaxis.train.both_ways import joined_both_ways, looped
 from fastaxis.train.changes import changed_elements
 from fastaxis.train.collected import state_of
 from fastaxis.train.graph import Joints, Node, build, is_source, lit_nodes, port_of, source_nodes
@@ -23,7 +24,7 @@ from fastaxis.train.letters import as_symbols, letters, substituted, substituted
 from fastaxis.train.listing import listing
 from fastaxis.train.naming import with_name
 from fastaxis.train.path import joined_along
-from fastaxis.train.routes import Route, find_route
+from fastaxis.train.routes import Route, find_route, find_routes
 from fastaxis.train.suggest import open_out
 from fastaxis.train.text import decoded, read_text, write_text
 
@@ -99,6 +100,32 @@ class Train:
         """
         joint = checked_joint(self.elements, self.joints, self.wavelength, out_port, in_port)
         self.joints = (*self.joints, joint)
+        return self
+
+    def retro(self, *items: Element | str) -> Self:
+        """Add an arm that light runs out along and comes back through, and return the train.
+
+        ``retro("bs.transmitted", fa.FreeSpace(200*mm), fa.Mirror(name="end"))`` sends the light of that port to the
+        mirror, and what the mirror returns back through the same parts to the same port.
+
+        Parameters
+        ----------
+        items : as for :meth:`along`; the first is where the arm starts, the last what turns the light round. Mirrors
+            in between become two-way: light comes to them from both sides.
+        """
+        self.elements, self.joints = joined_both_ways(self.elements, self.joints, self.wavelength, items)
+        return self
+
+    def loop(self, *items: Element | str) -> Self:
+        """Add a loop that light runs round in both senses, and return the train.
+
+        ``loop("pbs.transmitted", fa.Mirror(name="m1"), fa.Mirror(name="m2"), "pbs.reflected")``.
+
+        Parameters
+        ----------
+        items : as for :meth:`along`; the first and the last are ports. Mirrors in between become two-way.
+        """
+        self.elements, self.joints = looped(self.elements, self.joints, self.wavelength, items)
         return self
 
     # -- changed copies -------------------------------------------------------------------------------------------
@@ -228,7 +255,7 @@ class Train:
 
         Raises
         ------
-        WiringError : no laser, an impossible joint, or a loop.
+        WiringError : no laser, or an impossible joint.
 
         Warns
         -----
@@ -238,18 +265,16 @@ class Train:
         self._warn(self._checked())
 
     def _checked(self) -> set[Node]:
-        """The lit port states of a train without impossible joints or loops."""
+        """The lit port states of a train without impossible joints."""
         checks.check_joints(self.elements, self.joints, self.wavelength)
         checks.check_source(self.elements, self.name)
-        lit = self._lit()
-        checks.check_loops(self.graph, lit)
-        return lit
+        return self._lit()
 
     def _warn(self, lit: set[Node]) -> None:
         for finding in checks.findings(self.elements, self.graph, lit, self.wavelength):
             if str(finding) not in self._said:
                 self._said.add(str(finding))
-                warnings.warn(finding, stacklevel=3)
+                caution(finding)
 
     def route(self, target: str) -> Route:
         """The light path to a camera, a detector, a dump or any port ("qp.back").
@@ -258,12 +283,26 @@ class Train:
 
         Raises
         ------
-        WiringError : no light gets there, or light by more than one path.
+        WiringError : no light gets there, or light by several paths (see :meth:`routes`).
         """
         lit = self._checked()
         route = find_route(self.elements, self.graph, lit, target)
         self._warn(lit)
         return route
+
+    def routes(self, target: str) -> tuple[Route, ...]:
+        """All light paths to a port that meet no port state twice: the arms of an interferometer.
+
+        Light that runs round a cavity also comes by longer paths; those are summed where the light is worked out.
+
+        Raises
+        ------
+        WiringError : no light gets there, or light by too many paths to list.
+        """
+        lit = self._checked()
+        routes = find_routes(self.elements, self.graph, lit, target)
+        self._warn(lit)
+        return routes
 
     def reflections(self, target: str) -> int:
         """How often light is reflected on its way to a target; odd means it arrives mirrored."""

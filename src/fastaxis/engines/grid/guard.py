@@ -3,7 +3,6 @@
 from __future__ import annotations
 
 import math
-import warnings
 from dataclasses import replace
 from typing import Any
 
@@ -12,7 +11,7 @@ from numpy.typing import NDArray
 
 from fastaxis.engines.field import Guard
 from fastaxis.engines.grid.light import GridLight
-from fastaxis.errors import SamplingError, SamplingWarning
+from fastaxis.errors import SamplingError, SamplingWarning, caution
 from fastaxis.plan import Grid
 
 __all__ = ["check", "edge_watched", "phase_step"]
@@ -86,5 +85,5 @@ def check(light: GridLight, names: tuple[str, ...], grid: Grid) -> Guard:
         }
         if worst > REFUSE:
             raise SamplingError(**message)
-        warnings.warn(SamplingWarning(**message), stacklevel=2)
+        caution(SamplingWarning(**message))
     return guard
