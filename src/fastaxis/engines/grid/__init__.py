@@ -55,7 +55,7 @@ def _past(light: GridLight, law: StepLaw, hop: Hop | None) -> GridLight:
     if isinstance(law, Flip):
         return flipped(light, law)
     if isinstance(law, Turn):
-        return turned(light, law)
+        return edge_watched(turned(light, law))
     return past_axis(light, law) if isinstance(law, AxisLaw) else past_matrix(light, cast("JonesStep", law))
 
 
