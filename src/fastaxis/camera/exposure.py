@@ -10,6 +10,7 @@ from typing import Any
 import numpy as np
 from numpy.typing import NDArray
 
+from fastaxis.camera.mixing import mixed
 from fastaxis.camera.settings import Setting, as_setting, weight_matrix
 from fastaxis.conventions import View, stamp
 from fastaxis.errors import ParameterError
@@ -97,7 +98,7 @@ class Exposure:
     @property
     def frames(self) -> NDArray[np.float64]:
         """All frames [W per pixel], shape (n, ny, nx); made anew at each call, ``frame(k)`` makes one at a time."""
-        return np.stack([self.frame(k) for k in range(len(self))])
+        return self._mixed(self.weights)
 
     def frame(self, which: int | str | Setting | State) -> NDArray[np.float64]:
         """One frame [W per pixel], shape (ny, nx).
@@ -118,9 +119,11 @@ class Exposure:
         >>> float(shots.frame("H")[0, 0]), float(shots.frame(V)[0, 0])
         (2.0, 1.0)
         """
-        weights = self._setting(which).weights * self._s3_signs
-        # A dark pixel of a physical field comes out a rounding below zero; power has no sign.
-        return np.maximum(np.tensordot(weights, self.stokes, axes=1), 0.0)
+        return self._mixed(self._setting(which).weights[None] * self._s3_signs)[0]
+
+    def _mixed(self, weights: NDArray[np.float64]) -> NDArray[np.float64]:
+        frames: NDArray[np.float64] = mixed(weights, self.stokes.reshape(4, -1))
+        return frames.reshape(len(weights), *self.stokes.shape[1:])
 
     def power(self, which: int | str | Setting | State) -> float:
         """Power on the sensor behind this setting [W]; ``which`` as in :meth:`frame`."""
