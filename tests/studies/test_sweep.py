@@ -155,3 +155,11 @@ def test_of_several_parameters_all_are_named(flat):
     assert zipped.at({"hwp.fast": ANGLES[1], "qwp.fast": ANGLES[1]}) == zipped.at(1)
     with pytest.raises(ParameterError, match="only values that were swept"):
         zipped.at({"hwp.fast": ANGLES[1], "qwp.fast": ANGLES[2]})
+
+
+def test_pictures_that_would_not_fit_are_propagated_value_by_value(flat, compare, monkeypatch):
+    # 5 x 3 pictures of 4 x 20 pixels are 9.6 kB; without the plate of fewer values 5 are left, 3.2 kB.
+    monkeypatch.setattr("fastaxis.studies.gallery.MOST", 4000)
+    swept = compare(flat, {"qwp.fast": ANGLES, "hwp.fast": ANGLES[:4]})
+    assert swept.gallery.linear == [("qwp.fast",)]
+    assert swept.propagations == 4 * 3

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import math
 from collections import OrderedDict
 from collections.abc import Callable
 from functools import cached_property
@@ -10,10 +11,12 @@ from typing import Any, TypeAlias
 import numpy as np
 from numpy.typing import NDArray
 
+from fastaxis.camera.exposing import sensor_at
 from fastaxis.engines.sharing import Relay
 from fastaxis.studies.family import Family, make_family
 from fastaxis.studies.knobs import Knobs
 from fastaxis.studies.response import response
+from fastaxis.studies.spanning import spanning, squares
 
 __all__ = ["Gallery", "Progress"]
 
@@ -22,6 +25,7 @@ Indices: TypeAlias = NDArray[np.intp]
 Progress: TypeAlias = Callable[[int, int], None]
 
 KEPT = 256 << 20  # bytes of pictures of earlier families kept beside the latest one
+MOST = 1 << 30  # bytes of pictures of one family
 
 
 class Gallery:
@@ -47,10 +51,24 @@ class Gallery:
         self._relay = Relay()
         self._families: OrderedDict[int, Family] = OrderedDict()
         self._sums: dict[int, Reals] = {}
-        start = train.with_changes(knobs.at(0))
-        answers = {group: response(start, target, knobs.only(group)) is not None for group in knobs.groups()}
-        self.linear = [group for group, answer in answers.items() if answer]
-        self.stiff = [group for group, answer in answers.items() if not answer]
+        self.linear = self._linear(sensor_at(train, target))
+        self.stiff = [group for group in knobs.groups() if group not in self.linear]
+
+    def _linear(self, sensor: Any) -> list[tuple[str, ...]]:
+        """Groups of parameters the field is linear in, as far as the pictures of all of them fit in memory.
+
+        Those left out, the ones with the fewest values first, are propagated value by value.
+        """
+        start = self.train.with_changes(self.knobs.at(0))
+        counts: dict[tuple[str, ...], int] = {}
+        for group in self.knobs.groups():
+            answer = response(start, self.target, self.knobs.only(group))
+            if answer is not None:
+                counts[group] = spanning(squares(spanning(answer).coefficients)).rank
+        size = 4 * 8 * math.prod(sensor.shape)
+        while counts and size * math.prod(counts.values()) > MOST:
+            del counts[min(counts, key=lambda group: len(self.knobs.only(group)))]
+        return list(counts)
 
     @cached_property
     def numbers(self) -> Indices:
