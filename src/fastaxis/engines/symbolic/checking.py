@@ -47,7 +47,8 @@ def check(form: Form, *, points: int = 24, seed: int = 1) -> Check:
     numeric engine, whose own error then counts too.
     """
     generator = np.random.default_rng(seed)
-    travels = any(isinstance(law, TravelLaw) for _, law in form.train.route(form.target).steps())
+    routes = form.train.routes(form.target)
+    travels = any(isinstance(law, TravelLaw) for route in routes for _, law in route.steps())
     numeric = _propagated if travels else _direct
     function = form.to_function("stokes", absolute=True)
     worst, scale = 0.0, 0.0
@@ -65,7 +66,7 @@ def check(form: Form, *, points: int = 24, seed: int = 1) -> Check:
 
 def _radius(train: Any, target: str) -> float:
     """Radius [m] the bare source would have at the target."""
-    route = train.route(target)
+    route = train.routes(target)[0]
     component = route.laser.source.components[0]
     mode = component.beam.terms[0].mode
     if mode.infinite:
@@ -133,26 +134,34 @@ def _leaves(name: str, value: Any) -> list[tuple[str, Any]]:
 
 
 def _direct(train: Any, target: str, r: float, phi: float) -> NDArray[np.float64]:
-    route = train.route(target)
-    total = np.zeros(4)
-    for component in route.laser.source.components:
-        wavelength = component.wavelength_or(train.wavelength)
-        field = component.beam.field
-        # Places are followed from the port back to the source, so that reflections find the place a ray started from.
-        x, y = r * math.cos(phi), r * math.sin(phi)
-        places = []
-        for _, law in reversed(route.steps()):
-            if isinstance(law, Flip):
-                x, y = (-x, y) if law.axis == "x" else (x, -y)
-            if isinstance(law, Turn):
-                cosine, sine = math.cos(law.angle), math.sin(law.angle)
-                x, y = cosine * x + sine * y, cosine * y - sine * x
-            places.append((x, y))
-        vector = np.asarray(field(x, y, wavelength), complex)
-        for (_, law), (px, py) in zip(route.steps(), reversed(places), strict=True):
-            vector = _matrix(law, px, py, wavelength) @ vector
-        total += float(component.weight) * _stokes(*vector)
-    return total * float(route.laser.source.power)
+    total, routes = np.zeros(4), train.routes(target)
+    for name in dict.fromkeys(route.source_name for route in routes):
+        ways = [route for route in routes if route.source_name == name]
+        source = ways[0].laser.source
+        for component in source.components:
+            wavelength = component.wavelength_or(train.wavelength)
+            vectors = [_along(route, component.beam, wavelength, r, phi) for route in ways]
+            total += float(component.weight) * float(source.power) * _stokes(*sum(vectors))
+    return total
+
+
+def _along(route: Any, beam: Any, wavelength: float, r: float, phi: float) -> NDArray[Any]:
+    """(Ex, Ey) by one route. Places are followed from the port back to the source, so that reflections find the
+    place a ray started from.
+    """
+    x, y = r * math.cos(phi), r * math.sin(phi)
+    places = []
+    for _, law in reversed(route.steps()):
+        if isinstance(law, Flip):
+            x, y = (-x, y) if law.axis == "x" else (x, -y)
+        if isinstance(law, Turn):
+            cosine, sine = math.cos(law.angle), math.sin(law.angle)
+            x, y = cosine * x + sine * y, cosine * y - sine * x
+        places.append((x, y))
+    vector = np.asarray(beam.field(x, y, wavelength), complex)
+    for (_, law), (px, py) in zip(route.steps(), reversed(places), strict=True):
+        vector = _matrix(law, px, py, wavelength) @ vector
+    return vector
 
 
 def _matrix(law: Law, x: float, y: float, wavelength: float) -> NDArray[Any]:

@@ -4,12 +4,13 @@ from __future__ import annotations
 
 from typing import Any
 
+import sympy as sp
+
 from fastaxis.engines.symbolic.coordinates import check_letters
 from fastaxis.engines.symbolic.form import Form, Part
 from fastaxis.engines.symbolic.letters import Letters
+from fastaxis.engines.symbolic.paths import joined, open_routes
 from fastaxis.engines.symbolic.ring import ExactMaths, Ring
-from fastaxis.engines.symbolic.sources import as_field
-from fastaxis.engines.symbolic.steps import applied
 from fastaxis.engines.symbolic.waves import Place
 from fastaxis.engines.symbolic.waves.base import exactly
 
@@ -19,6 +20,9 @@ __all__ = ["derive"]
 def derive(train: Any, target: str) -> Form:
     """The light at a port as an exact form, with the letters of the train left as letters.
 
+    Light that comes by several paths is summed, each path with the phase of its length beyond the first one's; light
+    of several lasers adds up in power.
+
     Parameters
     ----------
     train : parts, joints and wavelength; any parameter may be a sympy expression.
@@ -26,8 +30,8 @@ def derive(train: Any, target: str) -> Form:
 
     Raises
     ------
-    SymbolError : a letter named r or phi or not real; a part without a closed form.
-    WiringError : no light there, or light by several paths.
+    SymbolError : a letter named r or phi or not real; a part without a closed form; a loop on the way.
+    WiringError : no light there.
 
     Examples
     --------
@@ -40,17 +44,17 @@ def derive(train: Any, target: str) -> Form:
     >>> derive(train, "hwp").frame(t)
     cos(2*alpha - theta)**2
     """
-    route = train.route(target)
-    source, steps = route.laser.source, route.steps()
-    letters = set(train.symbols) | set(source.symbols)
+    routes = open_routes(train, target)
+    sources = {name: ways[0].laser.source for name, ways in routes.items()}
+    letters = set(train.symbols).union(*(source.symbols for source in sources.values()))
     check_letters(letters)
     maths = ExactMaths(Ring())
     names = Letters({str(letter) for letter in letters} | {"r", "phi"})
+    total = sum((exactly(source.power) for source in sources.values()), sp.S.Zero)
     parts = []
-    for component in source.components:
-        place = Place(maths, names, exactly(component.wavelength_or(train.wavelength)))
-        field = as_field(component.beam, place)
-        for name, law in steps:
-            field = applied(field, name, law)
-        parts.append(Part(component.weight, component.beam, field))
-    return Form(train, target, tuple(parts), source.power, frozenset(letters))
+    for name, source in sources.items():
+        for component in source.components:
+            place = Place(maths, names, exactly(component.wavelength_or(train.wavelength)))
+            field = joined(component, routes[name], place)
+            parts.append(Part(exactly(component.weight) * exactly(source.power) / total, component.beam, field))
+    return Form(train, target, tuple(parts), total, frozenset(letters))

@@ -46,6 +46,14 @@ class Field:
         """Behind a scalar transmission."""
         return self._each(lambda pair: (factor * pair[0], factor * pair[1]))
 
+    def plus(self, other: Field) -> Field:
+        """The coherent sum with light of the same source that came another way."""
+        found = dict(self.pieces)
+        for wave, pair in other.pieces:
+            old = found.get(wave)
+            found[wave] = pair if old is None else (old[0] + pair[0], old[1] + pair[1])
+        return Field(tuple(found.items()), self.place, self.scale)
+
     def _each(self, change: Any) -> Field:
         return Field(tuple((wave, change(pair)) for wave, pair in self.pieces), self.place, self.scale)
 

@@ -16,6 +16,8 @@ from fastaxis.errors import SymbolError
 
 __all__ = ["NumericForm"]
 
+WHOLE = 2**53  # up to here a float is the whole number itself
+
 
 class _Printer(SciPyPrinter):  # type: ignore[misc]  # sympy has no types
     """scipy's names for the special functions of the forms."""
@@ -23,6 +25,10 @@ class _Printer(SciPyPrinter):  # type: ignore[misc]  # sympy has no types
     def _print_hyper(self, e: Any) -> str:
         (above,), (below,) = e.ap, e.bq
         return f"hyp1f1({self._print(above)}, {self._print(below)}, {self._print(e.argument)})"
+
+    def _print_Integer(self, e: Any) -> str:
+        # numpy has no root of a whole number beyond 64 bits, as the exact value of a decimal has in its surds.
+        return repr(float(e)) if abs(e) > WHOLE else str(super()._print_Integer(e))
 
 
 @dataclass(frozen=True, eq=False)

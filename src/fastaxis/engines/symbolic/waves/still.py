@@ -27,6 +27,8 @@ class StillWave:
     """Its charge."""
 
     def moved(self, section: Section) -> Wave:
+        if not self.shape.has(R) and section.c == 0 and section.a == 1:
+            return self  # a plane wave
         return self.twisted(0, section)
 
     def twisted(self, charge: Any, section: Section) -> Wave:
