@@ -92,8 +92,9 @@ def test_ten_thousand_values_do_not_fill_memory(flat):
     _, peak = tracemalloc.get_traced_memory()
     tracemalloc.stop()
     assert brightest > 0
-    # All frames are 328 MB. A chunk is 16 MB, and the next is made while it is still held; 1 MB for shares and images.
-    assert peak < 2 * 17 * 2**20
+    # All frames are 328 MB. A chunk is 16 MB, and the next is made while it is still held; images, shares and blocks of
+    # 1 MB for each thread are a few more.
+    assert peak < 40 * 2**20
 
 
 def test_pictures_of_earlier_values_are_let_go(bench, monkeypatch):

@@ -133,3 +133,14 @@ def test_the_order_of_parameters_is_that_of_the_values(bench, compare):
 def test_a_part_beside_the_path_changes_nothing(bench, compare):
     bench.add(fa.HalfWavePlate(fast=0, name="spare"))
     assert compare(bench, {"spare.fast": ANGLES}, grid=GRID).propagations == 1
+
+
+def test_light_by_two_paths_is_propagated_for_each_value(compare):
+    train = fa.Train(wavelength=633 * nm, name="Gannet Stack").along(
+        fa.Laser(mode=fa.PlaneWave(area=1e-6), power=2 * mW, state=fa.D, name="laser"),
+        fa.BeamSplitter(name="split"),
+    )
+    train.along("split.transmitted", fa.HalfWavePlate(fast=20 * deg, name="hwp"), fa.BeamSplitter(name="join"))
+    train.along("split.reflected", fa.Mirror(name="mirror"), "join.side")
+    train.along("join.transmitted", fa.Camera(pixel=60e-6, shape=(2, 3), name="cam"))
+    assert compare(train, {"hwp.fast": ANGLES[:3]}, checked=3).propagations == 3

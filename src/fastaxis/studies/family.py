@@ -88,7 +88,7 @@ def make_family(
     fields = [spanning(table) for table in answers if table is not None]
     pictures = [spanning(squares(span.coefficients)) for span in fields]
     first = make_plan(_at(train, groups, [span.nodes[:1] for span in fields])[0], target, grid=grid, engine=engine)
-    summed = combines(first.engine)
+    summed = bool(fields) and combines(first.engine)
     chosen = fields if summed else pictures
     trains = _at(train, groups, [span.nodes for span in chosen])
     plans = [first] if len(trains) == 1 else [make_plan(each, target, grid=grid, engine=engine) for each in trains]

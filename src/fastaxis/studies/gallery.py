@@ -13,6 +13,7 @@ from numpy.typing import NDArray
 
 from fastaxis.camera.exposing import sensor_at
 from fastaxis.engines.sharing import Relay
+from fastaxis.plan import make_plan
 from fastaxis.studies.family import Family, make_family
 from fastaxis.studies.knobs import Knobs
 from fastaxis.studies.response import response
@@ -60,6 +61,7 @@ class Gallery:
         Those left out, the ones with the fewest values first, are propagated value by value.
         """
         start = self.train.with_changes(self.knobs.at(0))
+        make_plan(start, self.target, **self._options)  # refuses letters in the train, and a target without light
         counts: dict[tuple[str, ...], int] = {}
         for group in self.knobs.groups():
             answer = response(start, self.target, self.knobs.only(group))

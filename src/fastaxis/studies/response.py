@@ -9,6 +9,7 @@ from typing import Any
 import numpy as np
 from numpy.typing import NDArray
 
+from fastaxis.errors import WiringError
 from fastaxis.plan.binding import bound
 from fastaxis.studies.coordinates import coordinates
 from fastaxis.studies.knobs import Knobs
@@ -35,9 +36,12 @@ def response(train: Any, target: str, knobs: Knobs) -> Complexes | None:
     Returns
     -------
     complex (values, columns); None where the values change more than coordinates of laws: the source, the sensor,
-    the wavelength, or what a law does from place to place.
+    the wavelength, or what a law does from place to place; and where light comes by several paths.
     """
-    route = train.route(target)
+    try:
+        route = train.route(target)
+    except WiringError:
+        return None  # by several paths: there is no one row of laws
     swept = {name.partition(".")[0] for name in knobs.names}
     if swept & {"wavelength", route.source_name, target.partition(".")[0]}:
         return None

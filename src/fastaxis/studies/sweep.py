@@ -10,6 +10,7 @@ import numpy as np
 
 from fastaxis.camera.exposing import sensor_at
 from fastaxis.camera.exposure import Exposure
+from fastaxis.camera.mixing import mixed
 from fastaxis.camera.settings import Setting, as_settings, weight_matrix
 from fastaxis.conventions import stamp
 from fastaxis.light.states import State
@@ -23,7 +24,6 @@ Which: TypeAlias = int | float | Mapping[str, Any]
 Asked: TypeAlias = int | str | Setting | State
 
 CHUNK = 16 << 20  # bytes of frames made in one product
-BLOCK = 1 << 18  # multiplications in one block
 
 
 def sweep(
@@ -72,8 +72,6 @@ def sweep(
     analyzers = as_settings(settings)
     weight_matrix(analyzers)  # letters are refused before anything is computed
     sensor_at(train, target)
-    start = train.with_changes(knobs.at(0))
-    start.plan(target, grid=grid, engine=engine)  # refuses letters in the train
     gallery = Gallery(train, target, knobs, grid=grid, engine=engine, progress=progress)
     gallery.family(0)  # what cannot be propagated is refused now, not with the first frame
     return Sweep(gallery=gallery, settings=analyzers)
@@ -153,9 +151,8 @@ class Sweep:
         weights = setting_of(self.settings, setting, self.gallery.target).weights
         family, shares = self._shared(which)
         images = family.images
-        frame = np.outer(weights, shares).ravel() @ images.reshape(weights.size * shares.size, -1)
-        # A dark pixel of a physical field comes out a rounding below zero; power has no sign.
-        return np.asarray(np.maximum(frame, 0.0, out=frame)).reshape(images.shape[2:])
+        mixture = np.outer(weights, shares).reshape(1, -1)
+        return np.asarray(mixed(mixture, images.reshape(mixture.size, -1))).reshape(images.shape[2:])
 
     def frames(self, setting: Asked) -> Iterator[tuple[int, Reals]]:
         """(index, frame) for every value, in the order that takes the fewest propagations.
@@ -180,7 +177,7 @@ class Sweep:
             images = family.contracted(weights)
             size = most or max(1, CHUNK // (8 * images.shape[1]))
             for part in np.split(indices, range(size, len(indices), size)):
-                frames = _products(self.gallery.shares(family, part), images)
+                frames = mixed(self.gallery.shares(family, part), images)
                 yield part, frames.reshape(-1, *family.images.shape[2:])
 
     def exposure(self, which: Which) -> Exposure:
@@ -220,18 +217,3 @@ class Sweep:
         lines.append(f"  the field is linear in what {linear} does; propagated anew for each value of {stiff}")
         lines.append(f"  {self.propagations} propagations so far, in {len(gallery.members)} groups of values")
         return "\n".join([*lines, stamp()])
-
-
-def _products(shares: Reals, images: Reals) -> Reals:
-    """The product without its negative roundings, a few thousand pixels at a time.
-
-    A block of frames stays in the cache between the two passes, and is small enough for one thread: several threads
-    would only wait for the memory that all of them write to. Twice as fast on an idle machine, ten times on a busy one.
-    """
-    frames = np.empty((len(shares), images.shape[1]))
-    size = max(512, BLOCK // shares.size)
-    for start in range(0, images.shape[1], size):
-        block = frames[:, start : start + size]
-        np.matmul(shares, images[:, start : start + size], out=block)
-        np.maximum(block, 0.0, out=block)
-    return frames
