@@ -15,7 +15,8 @@ from fastaxis.maths import Scalar, free_symbols
 
 __all__ = ["Element", "ThroughElement"]
 
-ANGLES = ("fast", "slow", "axis", "offset", "angle", "retardance")  # of which a few whole radians were meant as degrees
+# Of these a few whole radians were meant as degrees.
+ANGLES = ("fast", "slow", "axis", "offset", "angle", "retardance", "roll")
 Passages = Mapping[tuple[str, str], Passage]
 
 

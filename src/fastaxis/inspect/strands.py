@@ -10,7 +10,7 @@ import numpy as np
 from numpy.typing import NDArray
 
 from fastaxis.inspect.clear_area import passed
-from fastaxis.laws import AxisLaw, CircularLaw, Flip, ScalarLaw
+from fastaxis.laws import AxisLaw, CircularLaw, Flip, ScalarLaw, Turn
 from fastaxis.light import Component, State, ellipse, from_stokes
 from fastaxis.maths import NUMBERS
 from fastaxis.plan.binding import bound
@@ -103,6 +103,8 @@ def through(strand: Strand, law: Any) -> Strand:
     spread = strand.spread.past(law, strand.wavelength)
     if isinstance(law, Flip):
         return replace(strand, spread=spread, ring=_reversed(strand.ring, law.axis))
+    if isinstance(law, Turn):
+        return replace(strand, spread=spread, ring=_carried_round(strand.ring, law.angle))
     if isinstance(law, AxisLaw | CircularLaw):
         return replace(strand, spread=spread, ring=_turned(strand, law))
     if isinstance(law, ScalarLaw):
@@ -131,6 +133,12 @@ def _reversed(ring: NDArray[np.complex128], axis: str) -> NDArray[np.complex128]
     """The ring in a frame with x (phi -> pi - phi) or y (phi -> -phi) reversed."""
     places = np.arange(PLACES)
     return ring[:, (PLACES // 2 - 1 - places) % PLACES if axis == "x" else PLACES - 1 - places]
+
+
+def _carried_round(ring: NDArray[np.complex128], angle: float) -> NDArray[np.complex128]:
+    """The ring turned counter-clockwise: exp(i l phi) becomes exp(i l (phi - angle))."""
+    charges = np.fft.fftfreq(PLACES, 1 / PLACES)
+    return np.fft.ifft(np.fft.fft(ring, axis=1) * np.exp(-1j * charges * angle), axis=1)
 
 
 def total(strands: tuple[Strand, ...]) -> Reals:

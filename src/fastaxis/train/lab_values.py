@@ -13,8 +13,8 @@ from fastaxis.maths import Pattern, Scalar, is_symbolic
 __all__ = ["lab_length", "lab_parameters"]
 
 ANGLES = frozenset({
-    "angle", "axis", "azimuth", "ellipticity", "fast", "offset", "phase", "phase_p", "phase_r", "phase_rp", "phase_rs",
-    "phase_s", "phase_t", "phase_tp", "phase_ts", "retardance", "slow",
+    "angle", "axis", "azimuth", "base", "ellipticity", "fast", "incidence", "offset", "phase", "phase_p", "phase_r",
+    "phase_rp", "phase_rs", "phase_s", "phase_t", "phase_tp", "phase_ts", "retardance", "roll", "slow", "wedge",
     "x", "y",  # the angles by which a wedge turns the beam
 })  # fmt: skip
 LENGTHS = frozenset({
