@@ -79,6 +79,7 @@ if TYPE_CHECKING:
         WiringError,
         WiringWarning,
     )
+    from fastaxis.inspect import Mount
     from fastaxis.light import (
         UNPOLARIZED,
         A,
@@ -126,6 +127,7 @@ _HOMES = {
     "RectangularAperture Retarder Rhomb Rotator Slit SpiralPlate Wedge Window",
     "errors": "FastaxisError FastaxisWarning FileFormatError ParameterError SamplingError SamplingWarning SlipWarning "
     "SymbolError WiringError WiringWarning",
+    "inspect": "Mount",
     "light": "UNPOLARIZED A Beam Comb D FlatTop Gaussian GaussianLine H HermiteGauss L LaguerreGauss LorentzianLine "
     "Monochromatic PlaneWave R SampledMode Source State StateMixture Term V coherent_source elliptical from_jones "
     "from_stokes helicity linear make_source partially_polarized",

@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 import math
-from collections.abc import Iterator, Mapping
+from collections.abc import Iterable, Iterator, Mapping
 from dataclasses import dataclass, field
 from functools import cached_property
 from typing import Any
@@ -105,12 +105,14 @@ class Bench:
     visits : every part on every path, in the order the light meets them.
     ledger : exact power [W] at the ports that light leaves, where it could be worked out.
     whole : whether all paths were followed to their end.
+    loops : parts at which light on its way round comes back to where it was; followed once round.
     """
 
     train: Any
     visits: tuple[Visit, ...]
     ledger: Mapping[tuple[str, str], float] = field(default_factory=dict)
     whole: bool = True
+    loops: tuple[str, ...] = ()
 
     @property
     def wavelength(self) -> float:
@@ -127,9 +129,28 @@ class Bench:
 
     def arriving(self, visit: Visit) -> float:
         """Power that arrives at a visit [W]: of the ledger where it has it, else by second moments."""
+        return self.ledger.get(self.upstream(visit), visit.power)
+
+    def upstream(self, visit: Visit) -> tuple[str, str]:
+        """(part, face) that the light of a visit comes from."""
         before = visit.previous
-        port = (visit.source, self.train.elements[visit.source].exit) if before is None else (before.name, before.left)
-        return self.ledger.get(port, visit.power)
+        if before is not None:
+            return before.name, before.left
+        return visit.source, self.train.elements[visit.source].exit
+
+    def arriving_together(self, visits: Iterable[Visit]) -> float:
+        """Power [W] of several visits; light of several paths through one port is counted once if it is known."""
+        by_port: dict[tuple[str, str], float] = {}
+        for visit in visits:
+            port = self.upstream(visit)
+            by_port[port] = self.ledger.get(port, by_port.get(port, 0.0) + visit.power)
+        return math.fsum(by_port.values())
+
+    def leaving_together(self, visits: Iterable[Visit]) -> float:
+        """Power [W] that leaves by one port, on whichever paths it came."""
+        several = list(visits)
+        estimate = math.fsum(float(total(visit.after)[0]) for visit in several)
+        return self.ledger.get((several[0].name, several[0].left), estimate)
 
     def leaving(self, visit: Visit) -> float:
         """Power that leaves by the port of a visit [W]."""

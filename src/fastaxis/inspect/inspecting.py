@@ -16,8 +16,7 @@ __all__ = ["inspect_train"]
 NEVER = (
     "saturation and noise: a camera is declared without what it holds",
     "temperature of plates, thickness, walk-off and tilt inside parts",
-    "ghosts of parallel surfaces: parts have no inner reflections",
-    "coherence: lasers are declared without a line width; only path differences are told",
+    "ghosts of parts other than windows",
     "pulsed light, damage thresholds, and laser limits outside 400 to 1400 nm",
     "mechanics: heights, clearances, mounts",
 )
@@ -79,6 +78,15 @@ def _following_the_light(train: Any) -> Iterator[Finding]:
             rule="paths are followed up to a number",
             got=f"{train.name}: more paths than {len(bench.visits)} visits hold",
             fix="inspect a part of the bench on its own",
+        )
+    for name in bench.loops:
+        yield Finding(
+            severity=Severity.MEDIUM,
+            check="light runs round",
+            element=name,
+            rule="light that comes back to where it was makes a cavity, whose powers hang on its length",
+            got=f"{name}: light that left it comes back to it the same way",
+            fix="end the loop on a dump, unless a cavity is meant; beam sizes here are those of the first turn",
         )
     for check in CHECKS:
         yield from check(bench)

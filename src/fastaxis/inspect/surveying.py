@@ -20,16 +20,17 @@ MOST = 2000  # visits; splitters in a row double the paths, and a bench of more 
 
 
 def survey(train: Any) -> Bench:
-    """The bench as the light meets it. Needs a train without letters, loops or impossible joints."""
+    """The bench as the light meets it. Needs a train without letters or impossible joints."""
     visits: list[Visit] = []
+    loops: list[str] = []
     for name in train.sources:
         laser = train.elements[name]
         source = bound(laser.source)
         strands = tuple(
             strand for part in source.components for strand in start(part, float(source.power), float(train.wavelength))
         )
-        _Follower(train, name, visits).follow((name, laser.exit or "out", "out"), strands, None, 0.0)
-    return Bench(train, tuple(visits[:MOST]), _ledger(train), len(visits) <= MOST)
+        _Follower(train, name, visits, loops).follow((name, laser.exit or "out", "out"), strands, None, 0.0)
+    return Bench(train, tuple(visits[:MOST]), _ledger(train), len(visits) <= MOST, tuple(dict.fromkeys(loops)))
 
 
 def _ledger(train: Any) -> dict[tuple[str, str], float]:
@@ -49,6 +50,7 @@ class _Follower:
     train: Any
     source: str
     visits: list[Visit]
+    loops: list[str]
 
     def follow(
         self, port: tuple[str, str, str], strands: tuple[Strand, ...], previous: Visit | None, distance: float
@@ -57,6 +59,9 @@ class _Follower:
         for entry in graph.successors(port):
             if len(self.visits) > MOST:
                 return
+            if previous is not None and any((v.name, v.entered) == entry[:2] for v in previous.chain()):
+                self.loops.append(entry[0])
+                continue
             here = Visit(elements[entry[0]], entry[1], "", (), strands, (), distance, previous, self.source)
             ways = list(graph.successors(entry))
             if not ways:

@@ -65,8 +65,8 @@ def line_height(size: float) -> float:
 
 def wrapped(text: str, size: float, width: float, *, mono: bool = False) -> list[str]:
     """Lines of a text that fit a width [inch]."""
-    # A fixed-pitch glyph is 0.602 em wide; running text of the other font needs 0.54 em on average.
-    return textwrap.wrap(text, max(8, int(width * 72 / ((0.602 if mono else 0.54) * size)))) or [""]
+    # A fixed-pitch glyph is 0.602 em wide, but on whole dots of a screen up to 0.7; running text needs 0.54 em.
+    return textwrap.wrap(text, max(8, int(width * 72 / ((0.7 if mono else 0.54) * size)))) or [""]
 
 
 def blank(*, landscape: bool = False) -> Sheet:

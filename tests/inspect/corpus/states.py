@@ -149,3 +149,14 @@ def three_radians(wrong):
 @pair("bare degrees", "laser", "medium")
 def azimuth_of_two_radians(wrong):
     return line(METER, state=fa.linear(2 if wrong else 2 * deg))
+
+
+@pair("mirror polarization", "gold", "medium")
+def gold_mirror_for_diagonal_light(wrong):
+    gold = fa.MetalMirror(index=0.184 + 3.431j, name="gold")
+    return line(gold, fa.Mirror(name="second"), METER, state=fa.D if wrong else fa.V, wavelength=632.8 * nm)
+
+
+@pair("parallel window", "window", "medium")
+def parallel_window_before_the_camera(wrong):
+    return line(fa.Window(index=1.52, wedge=(0 if wrong else 0.5) * deg, name="window"), CAMERA)

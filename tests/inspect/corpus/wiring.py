@@ -24,7 +24,7 @@ def no_laser(wrong):
     return fa.Train(wavelength=532e-9, name="bench").along(fa.HalfWavePlate(fast=20 * deg), fa.Detector())
 
 
-@pair("wiring", "split", "high")
+@pair("light runs round", "m1", "medium")
 def light_runs_round(wrong):
     train = line(fa.BeamSplitter(reflectance=0.1, name="split"), fa.Mirror(name="m1"), fa.Mirror(name="m2"))
     train.along("m2", fa.Mirror(name="m3"), "split.side" if wrong else fa.Detector(name="meter"))
@@ -60,7 +60,7 @@ def crossed_polarizer(wrong):
 
 @pair("fringe period", "cam", "high")
 def steep_fringes(wrong):
-    return _two_arms(tilt=0.1 if wrong else 0.001, longer=0.0)
+    return _two_arms(tilt=0.03 if wrong else 0.001, longer=0.0, pixel=10 * um)
 
 
 @pair("path difference", "cam", "low")
@@ -68,9 +68,16 @@ def unequal_arms(wrong):
     return _two_arms(tilt=0.001, longer=40 * mm if wrong else 0.0)
 
 
-def _two_arms(tilt, longer):
-    train = line(fa.BeamSplitter(name="split"), fa.FreeSpace(100 * mm), fa.Mirror(name="m1"))
+@pair("path difference", "cam", "high")
+def arms_beyond_the_coherence_length(wrong):
+    return _two_arms(tilt=0.001, longer=40 * mm, coherence=(10 if wrong else 2000) * mm)
+
+
+def _two_arms(tilt, longer, coherence=None, pixel=5 * um):
+    train = line(fa.BeamSplitter(name="split"), fa.FreeSpace(100 * mm), fa.Mirror(name="m1"), waist=0.3 * mm)
     train.along("m1", fa.Wedge(x=tilt, name="tilt"), fa.BeamSplitter(name="join"))
     train.along("split.reflected", fa.FreeSpace(100 * mm + longer), fa.Mirror(name="m2"), "join.side")
-    camera = fa.Camera(pixel=5 * um, shape=(1024, 1024), orientation="mirrored", name="cam")
+    if coherence is not None:
+        train = train.with_changes({"laser.line": fa.GaussianLine(coherence_length=coherence)})
+    camera = fa.Camera(pixel=pixel, shape=(1024, 1024), orientation="mirrored", name="cam")
     return train.along("join.transmitted", camera).along("join.reflected", fa.BeamDump(name="dump"))

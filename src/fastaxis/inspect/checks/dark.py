@@ -2,9 +2,11 @@
 
 from __future__ import annotations
 
+from collections import defaultdict
 from collections.abc import Iterator
 
-from fastaxis.inspect.bench import DARK, Bench
+from fastaxis.elements.detector import BeamDump
+from fastaxis.inspect.bench import DARK, Bench, Visit
 from fastaxis.inspect.finding import Finding, Severity
 from fastaxis.inspect.words import watts
 
@@ -13,11 +15,12 @@ __all__ = ["dark"]
 
 def dark(bench: Bench) -> Iterator[Finding]:
     """One finding for each end of a path where next to nothing arrives; dumps may be dark."""
-    ends: dict[str, float] = {}
+    ends: dict[str, list[Visit]] = defaultdict(list)
     for visit in bench.visits:
-        if not visit.left and type(visit.element).__name__ != "BeamDump":
-            ends[visit.name] = ends.get(visit.name, 0.0) + bench.arriving(visit)
-    for name, power in ends.items():
+        if not visit.left and not isinstance(visit.element, BeamDump):
+            ends[visit.name].append(visit)
+    for name, visits in ends.items():
+        power = bench.arriving_together(visits)
         if power <= DARK * bench.total:
             yield Finding(
                 severity=Severity.MEDIUM,

@@ -10,7 +10,7 @@ from itertools import combinations
 from fastaxis.elements.camera import Camera
 from fastaxis.inspect.bench import Bench, Visit
 from fastaxis.inspect.finding import Finding, Severity
-from fastaxis.inspect.words import length
+from fastaxis.inspect.words import length, mm
 
 __all__ = ["fringes", "period"]
 
@@ -23,7 +23,7 @@ def fringes(bench: Bench) -> Iterator[Finding]:
     for visits in arrivals.values():
         for one, other in combinations(visits, 2):
             yield from _against_pixel(one, other)
-            yield from _path(one, other)
+            yield from _path(bench, one, other)
 
 
 def period(one: Visit, other: Visit) -> float:
@@ -47,15 +47,21 @@ def _against_pixel(one: Visit, other: Visit) -> Iterator[Finding]:
     )
 
 
-def _path(one: Visit, other: Visit) -> Iterator[Finding]:
+def _path(bench: Bench, one: Visit, other: Visit) -> Iterator[Finding]:
     apart = abs(one.distance - other.distance)
     if apart < 1e-4:
         return
+    line = bench.train.elements[one.source].line
+    seen = float(abs(line.degree(apart)))
+    told = f"{one.name}: the two paths differ by {length(apart)}"
+    if not line.sharp:
+        told = f"{told}, which leaves fringes a visibility of {seen:.3g}"
     yield Finding(
-        severity=Severity.LOW,
+        severity=Severity.HIGH if seen < 0.05 else Severity.MEDIUM if seen < 0.8 else Severity.LOW,
         check="path difference",
         element=one.name,
-        rule="fringes need a coherence length well above the path difference",
-        got=f"{one.name}: the two paths differ by {length(apart)}",
-        fix="compare with the coherence length of the laser, or lengthen the shorter arm",
+        rule="fringes need a coherence length well above the path difference"
+        + (", and this laser is declared without a line width" if line.sharp else ""),
+        got=told,
+        fix=f"lengthen the shorter path by {mm(apart)}, or take a laser of narrower line",
     )

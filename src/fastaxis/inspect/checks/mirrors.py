@@ -1,4 +1,4 @@
-"""Mirrors and splitters that change the polarization they were meant to keep."""
+"""Mirrors, splitters and prisms that change the polarization they were meant to keep."""
 
 from __future__ import annotations
 
@@ -6,30 +6,26 @@ from collections.abc import Iterator
 
 import numpy as np
 
-from fastaxis.elements.beam_splitter import BeamSplitter
-from fastaxis.elements.mirror import Mirror
-from fastaxis.inspect.bench import Bench
+from fastaxis.elements.polarizing_beam_splitter import PolarizingBeamSplitter
+from fastaxis.inspect.bench import Bench, Visit
 from fastaxis.inspect.finding import Finding, Severity
 from fastaxis.inspect.strands import state_in_words, total
 from fastaxis.inspect.words import percent
+from fastaxis.laws import Flip
 
-__all__ = ["mirrors"]
+__all__ = ["mirrors", "wrong_share"]
 
 
 def mirrors(bench: Bench) -> Iterator[Finding]:
     """Overlap of the reflected state with that behind an ideal mirror, which only changes its hand."""
-    for visit in bench.of_kind(Mirror, BeamSplitter):
-        reflected = len(visit.flips) and any(type(law).__name__ == "Flip" for law in visit.laws)
-        if not reflected or visit.patterned:
+    for visit in bench.visits:
+        # A polarizing splitter is there to change the state.
+        if visit.patterned or isinstance(visit.element, PolarizingBeamSplitter) or not bench.lit(visit):
             continue
-        before, after = total(visit.before), total(visit.after)
-        if after[0] <= 0:
+        if sum(isinstance(law, Flip) for law in visit.laws) % 2 == 0:
             continue
-        # Behind an ideal mirror S2 and S3 have changed their sign, in a fold of either plane.
-        ideal = np.array([before[1], -before[2], -before[3]]) / before[0]
-        lost = float(1 - after[1:] @ ideal / after[0]) / 2
-        pure = float(1 - ideal @ ideal) < 1e-9
-        if pure and lost > 1e-3:
+        lost = wrong_share(visit)
+        if lost > 1e-3:
             yield Finding(
                 severity=Severity.MEDIUM,
                 check="mirror polarization",
@@ -39,3 +35,16 @@ def mirrors(bench: Bench) -> Iterator[Finding]:
                 f"{percent(lost)} in the wrong state",
                 fix="turn the light to 0 or 90 deg before it, or undo the change with a plate behind it",
             )
+
+
+def wrong_share(visit: Visit) -> float:
+    """Share of the light in the state orthogonal to the one behind an ideal mirror; 0 for light that is not pure.
+
+    Behind an ideal mirror S2 and S3 have changed their sign, in a fold of either plane.
+    """
+    before, after = total(visit.before), total(visit.after)
+    if after[0] <= 0:
+        return 0.0
+    ideal = np.array([before[1], -before[2], -before[3]]) / before[0]
+    pure = float(1 - ideal @ ideal) < 1e-9
+    return float(1 - after[1:] @ ideal / after[0]) / 2 if pure else 0.0

@@ -43,7 +43,7 @@ def open_ports(bench: Bench) -> Iterator[Finding]:
 
 
 def _power(bench: Bench, name: str, face: str) -> float:
-    estimate = sum(bench.leaving(visit) for visit in bench.visits if (visit.name, visit.left) == (name, face))
-    if not estimate and name in bench.train.sources:
+    if name in bench.train.sources:
         return float(bench.train.elements[name].source.power)
-    return bench.ledger.get((name, face), estimate)
+    visits = [visit for visit in bench.visits if (visit.name, visit.left) == (name, face)]
+    return bench.leaving_together(visits) if visits else 0.0
