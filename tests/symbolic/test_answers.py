@@ -68,6 +68,30 @@ def test_no_solution_is_said(form, letters):
     assert not form(state=fa.R).dark_when(t, t)
 
 
+def test_elliptical_light_is_dark_under_two_conditions_only(form, letters):
+    a, _, d, _, t, _ = letters
+    # cos(d/2) cos t - i sin(d/2) cos(2a - t).
+    found = form(fa.Retarder(fast=a, retardance=d)).dark_when(t, t)
+    assert {
+        sp.expand(branch): condition for branch, condition in zip(found.branches, found.conditions, strict=True)
+    } == {
+        sp.pi / 2 + sp.pi * TURN_COUNT: sp.Eq(sp.sin(d / 2), 0),
+        2 * a + sp.pi / 2 + sp.pi * TURN_COUNT: sp.Eq(sp.cos(d / 2), 0),
+    }
+
+
+def test_both_signs_of_an_opening_are_branches(form, letters):
+    a, b, *_ = letters
+    c = sp.Symbol("c", real=True)
+    # Elliptical light of equal handed parts from two plates: cos 2a (1) and a constant meet in one amplitude.
+    found = form(fa.Retarder(fast=a, retardance=c), fa.Retarder(fast=b, retardance=c)).dark_when(c, sp.pi / 2)
+    for branch, condition in zip(found.branches, found.conditions, strict=True):
+        values = {a: 0.3, b: 0.3 + sp.pi / 2, TURN_COUNT: 1}
+        frame = form(fa.Retarder(fast=a, retardance=c), fa.Retarder(fast=b, retardance=c)).frame(sp.pi / 2)
+        if condition.subs(values) == True:  # noqa: E712
+            assert abs(frame.subs(c, branch).subs(values).evalf()) < 1e-20
+
+
 def test_always_dark_is_said(form, letters):
     a, *_ = letters
     found = form(fa.Polarizer(axis=0.0), fa.Polarizer(axis=sp.pi / 2), fa.HalfWavePlate(fast=a)).dark_when(a)

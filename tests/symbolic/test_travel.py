@@ -142,6 +142,16 @@ def test_a_round_stop_before_travel_stays_an_integral(travelled):
     assert inside != integral.function
 
 
+def test_a_letter_for_the_charge_of_a_plate(travelled):
+    q = sp.Symbol("q", positive=True)
+    made = travelled(fa.Gaussian(w), fa.QPlate(q=q), fa.FreeSpace(z), fa.Mirror())
+    fixed = travelled(fa.Gaussian(w), fa.QPlate(q=1.5), fa.FreeSpace(z), fa.Mirror())
+    values = {"w": VALUES[w], "z": VALUES[z], "lambda": VALUES[lam], "r": 3e-4, "phi": 0.7}
+    got, wanted = made.to_function("stokes")(values, q=1.5), fixed.to_function("stokes")(values)
+    # Stokes parameters of 1/m^2 with a Kummer function good to 1e-11.
+    assert np.abs(got - wanted).max() < 1e-10 * np.abs(wanted).max()
+
+
 def test_a_tilt_before_travel_has_no_closed_form(travelled):
     with pytest.raises(SymbolError, match="has no closed form once the light travels on"):
         travelled(fa.Gaussian(w), fa.Wedge(x=1e-4), fa.FreeSpace(z))

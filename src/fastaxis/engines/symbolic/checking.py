@@ -141,7 +141,8 @@ def _direct(train: Any, target: str, r: float, phi: float) -> NDArray[np.float64
         for component in source.components:
             wavelength = component.wavelength_or(train.wavelength)
             vectors = [_along(route, component.beam, wavelength, r, phi) for route in ways]
-            total += float(component.weight) * float(source.power) * _stokes(*sum(vectors))
+            ex, ey = np.sum(vectors, axis=0)
+            total += float(component.weight) * float(source.power) * _stokes(ex, ey)
     return total
 
 

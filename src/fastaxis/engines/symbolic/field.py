@@ -62,8 +62,8 @@ class Field:
         angle = sp.pi - PHI if axis == "x" else -PHI
         pieces = []
         for wave, pair in self.pieces:
-            turns, turned = wave.flipped(axis)
-            phase = self.place.maths.ring.root_of_unity(turns)
+            gained, turned = wave.flipped(axis)
+            phase = self.place.maths.phasor(gained)
             left, right = (_with_phi(poly, angle) * phase for poly in pair)
             pieces.append((turned, (left, right)))
         return Field(tuple(pieces), self.place, self.scale)

@@ -8,6 +8,8 @@ import sympy as sp
 
 __all__ = ["Shown"]
 
+LONG = 10_000
+
 
 class Shown:
     """LaTeX, text and the list of assumptions of a form."""
@@ -27,7 +29,7 @@ class Shown:
         What the names in it stand for follows after "with". ``form.latex("frame", theta)``.
         """
         value = self._value(quantity, *arguments, **options)
-        text = str(sp.latex(value))
+        text = str(sp.latex(_readable(value)))
         used = self._explained(value)
         if used:
             text += r", \quad \text{with } " + r",\; ".join(
@@ -81,11 +83,20 @@ class Shown:
         quantity = "jones" if len(self.parts) == 1 else "stokes"
         names = "(Ex, Ey)" if quantity == "jones" else "(S0, S1, S2, S3)"
         value = self._value(quantity)
-        lines = [f"light at {self.target}, relative to its envelope", f"{names} = ({', '.join(map(str, value))})"]
+        lines = [
+            f"light at {self.target}, relative to its envelope",
+            f"{names} = ({', '.join(map(str, _readable(value)))})",
+        ]
         lines += [f"  {name} = {_short(meaning)}" for name, meaning in self._explained(value).items()]
         return "\n".join((*lines, "assumed: " + "; ".join(self.assumptions)))
 
 
 def _short(meaning: Any) -> Any:
-    """A plain number in six digits; anything else as it is."""
-    return meaning.evalf(6) if not meaning.free_symbols else meaning
+    """A plain number in six digits; anything else with readable numbers in it."""
+    return _readable(meaning) if meaning.free_symbols else meaning.evalf(6)
+
+
+def _readable(expression: Any) -> Any:
+    """Long fractions, such as 133/250000000 for 532 nm, as decimals of six digits."""
+    long = {n: sp.Float(n, 6) for n in expression.atoms(sp.Rational) if n.q > LONG or abs(n.p) > LONG}
+    return expression.xreplace(long) if long else expression

@@ -70,38 +70,55 @@ def dark_when(amplitudes: tuple[Poly, ...], angle: Any) -> Branches:
 
 
 def _vanishing(amplitude: Poly, angle: Any) -> Branches:
-    factors = factored(amplitude)
-    if not factors:
-        factors = [(amplitude, 1)] if len(amplitude) > 1 else []
+    """Where one complex amplitude is zero: its real and its imaginary part at once, if it has both."""
+    _, turned = centred(amplitude)
+    half, i = turned.ring.rational(Fraction(1, 2)), turned.ring.root_of_unity(Fraction(1, 4))
+    parts = ((turned + turned.conj()) * half, (turned.conj() - turned) * half * i)
+    first, *rest = [_real_vanishing(part, angle) for part in parts if not part.is_zero()]
+    return _common(first, rest[0]) if rest else first
+
+
+def _real_vanishing(amplitude: Poly, angle: Any) -> Branches:
+    factors = factored(amplitude) or [(amplitude, 1)]
     branches: list[Any] = []
     conditions: list[Any] = []
     others: list[Any] = []
     for factor, _ in factors:
-        real = written(centred(factor)[1])
-        if not real.has(angle):
-            if real.free_symbols:
-                others.append(sp.Mul(*(part for part in sp.Mul.make_args(real) if part.free_symbols)))
+        if len(factor) == 1:
             continue
-        for branch, condition in _roots(factor, angle):
+        real = _made_real(factor)
+        if not written(real).has(angle):
+            others.append(_bare(written(real)))
+            continue
+        for branch, condition in _roots(real, angle):
             if condition != False:  # noqa: E712  # sympy's false
                 branches.append(branch)
                 conditions.append(condition)
-    return Branches(angle, tuple(branches), tuple(conditions), tuple(others))
+    found = [other for other in others if other.free_symbols]
+    return Branches(angle, tuple(branches), tuple(conditions), tuple(found))
 
 
-def _roots(factor: Poly, angle: Any) -> list[tuple[Any, Any]]:
-    """Angles at which a + b cos(m angle) + c sin(m angle) is zero, for a factor that is real up to a phase."""
+def _made_real(factor: Poly) -> Poly:
+    """A factor of a real polynomial, turned by the phase that makes it real."""
     _, turned = centred(factor)
-    if turned.terms != turned.conj().terms:
-        turned = turned * turned.ring.root_of_unity(Fraction(1, 4))
-    if turned.terms != turned.conj().terms:
-        both = turned.abs2()
-        raise SymbolError(
-            "an amplitude that is complex vanishes only where two conditions hold at once",
-            got=f"{written(both)} for {angle}",
-            fix=f"form.frame(theta, way='harmonics', angle={angle})",
-        )
-    waves = harmonics(turned, angle)
+    for eighths in range(4):
+        real = turned * turned.ring.root_of_unity(Fraction(eighths, 8))
+        if real.terms == real.conj().terms:
+            return real
+    raise SymbolError(
+        "an amplitude with a complex factor is not solved for an angle",
+        got=str(written(factor)),
+        fix="form.frame(theta, way='exponential')",
+    )
+
+
+def _bare(expression: Any) -> Any:
+    return sp.Mul(*(part for part in sp.Mul.make_args(expression) if part.free_symbols))
+
+
+def _roots(real: Poly, angle: Any) -> list[tuple[Any, Any]]:
+    """(branch, condition) of a + b cos(m angle) + c sin(m angle) = 0."""
+    waves = harmonics(real, angle)
     orders = [order for order in waves if order != 0]
     if len(orders) != 1:
         raise SymbolError(
@@ -110,37 +127,55 @@ def _roots(factor: Poly, angle: Any) -> list[tuple[Any, Any]]:
             fix=f"form.frame(theta, way='harmonics', angle={angle})",
         )
     (order,) = orders
-    a, (b, c) = waves.get(sp.S.Zero, (sp.S.Zero, 0))[0], waves[order]
-    turns = 2 * sp.pi * TURN_COUNT
+    a, (size, phase) = waves.get(sp.S.Zero, (sp.S.Zero, 0))[0], _polar(*waves[order])
     if a == 0:
-        return [(sp.expand((_phase(b, c) + sp.pi / 2 + sp.pi * TURN_COUNT) / order), sp.true)]
-    size = sp.sqrt(sp.simplify(b**2 + c**2))
-    reach = sp.simplify(sp.Abs(a) <= size)
-    opening = sp.acos(sp.simplify(-a / size))
-    return [((_phase(b, c) + sign * opening + turns) / order, reach) for sign in (1, -1)]
+        return [(_least((phase + sp.pi / 2 + sp.pi * TURN_COUNT) / order), sp.true)]
+    opening, turns = sp.acos(sp.cancel(-a / size)), 2 * sp.pi * TURN_COUNT
+    reach = sp.Abs(sp.cancel(a / size)) <= 1
+    return [((phase + sign * opening + turns) / order, reach) for sign in (1, -1)]
 
 
-def _phase(b: Any, c: Any) -> Any:
-    """arg(b + i c), read off where b and c are the cosine and sine of one angle."""
-    for factor_b in sp.Mul.make_args(b):
-        if isinstance(factor_b, sp.cos) and sp.expand(c - b / factor_b * sp.sin(factor_b.args[0])) == 0:
-            rest = b / factor_b
-            return factor_b.args[0] + (sp.pi if rest.could_extract_minus_sign() else 0)
-        if isinstance(factor_b, sp.cos) and sp.expand(c + b / factor_b * sp.sin(factor_b.args[0])) == 0:
-            rest = b / factor_b
-            return -factor_b.args[0] + (sp.pi if rest.could_extract_minus_sign() else 0)
-    return sp.atan2(c, b)
+def _least(branch: Any) -> Any:
+    """A branch with its constant brought between zero and one step of n."""
+    branch = sp.expand(branch)
+    step = branch.coeff(TURN_COUNT)
+    constant = sp.Add(*(part for part in sp.Add.make_args(branch) if not part.free_symbols))
+    whole = sp.floor(constant / step)
+    return sp.expand(branch - whole * step) if whole.is_integer and not step.free_symbols else branch
+
+
+def _polar(b: Any, c: Any) -> tuple[Any, Any]:
+    """(size, phase) with b = size cos(phase) and c = size sin(phase); read off where b and c show the angle."""
+    if c == 0:
+        return b, sp.S.Zero
+    if b == 0:
+        return c, sp.pi / 2
+    for factor in sp.Mul.make_args(b):
+        if isinstance(factor, sp.cos):
+            size, phase = b / factor, factor.args[0]
+            for sign in (1, -1):
+                if sp.expand(c - sign * size * sp.sin(phase)) == 0:
+                    return size, sign * phase
+    return sp.sqrt(b**2 + c**2), sp.atan2(c, b)
 
 
 def _common(one: Branches, other: Branches) -> Branches:
-    """What makes both vanish, as far as the branches agree."""
-    shared = [
-        (branch, condition)
+    """What makes both vanish: shared branches, a branch of one with a condition of the other, shared conditions."""
+    found = [
+        (branch, sp.And(condition, theirs))
         for branch, condition in zip(one.branches, one.conditions, strict=True)
-        if any(_same(branch, theirs) for theirs in other.branches) or other.always
+        for branch_there, theirs in zip(other.branches, other.conditions, strict=True)
+        if _same(branch, branch_there)
     ]
-    others = tuple(o for o in one.others if o in other.others)
-    return Branches(one.angle, tuple(b for b, _ in shared), tuple(c for _, c in shared), others)
+    others = tuple(elsewhere for elsewhere in one.others if elsewhere in other.others)
+    for first, second in ((one, other), (other, one)):
+        found += [
+            (branch, sp.And(condition, sp.Eq(elsewhere, 0)))
+            for branch, condition in zip(first.branches, first.conditions, strict=True)
+            for elsewhere in second.others
+            if elsewhere not in others and not any(_same(branch, known) for known, _ in found)
+        ]
+    return Branches(one.angle, tuple(b for b, _ in found), tuple(c for _, c in found), others)
 
 
 def _same(one: Any, other: Any) -> bool:

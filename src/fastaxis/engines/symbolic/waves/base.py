@@ -3,7 +3,6 @@
 from __future__ import annotations
 
 from dataclasses import dataclass
-from fractions import Fraction
 from typing import Any, Protocol
 
 import sympy as sp
@@ -86,8 +85,8 @@ class Wave(Protocol):
     def twisted(self, charge: Any, section: Section) -> Wave:
         """Multiplied by exp(i charge phi), then behind a section that is not an image."""
 
-    def flipped(self, axis: str) -> tuple[Fraction, Wave]:
-        """In a frame with x (or y) reversed: (turns of phase, wave)."""
+    def flipped(self, axis: str) -> tuple[Any, Wave]:
+        """In a frame with x (or y) reversed: (phase [rad], wave)."""
 
     def poly(self, place: Place) -> Poly:
         """Its value at (r, phi)."""

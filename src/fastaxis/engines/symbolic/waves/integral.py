@@ -3,7 +3,6 @@
 from __future__ import annotations
 
 from dataclasses import dataclass, replace
-from fractions import Fraction
 from typing import Any
 
 import sympy as sp
@@ -50,11 +49,10 @@ class IntegralWave:
     def twisted(self, charge: Any, section: Section) -> Wave:
         return IntegralWave(self, charge, section)
 
-    def flipped(self, axis: str) -> tuple[Fraction, IntegralWave]:
-        turns, wave = self.wave.flipped(axis)
-        if axis == "x":
-            turns += Fraction(sp.Rational(self.charge).p, sp.Rational(self.charge).q) / 2
-        return turns, replace(self, wave=wave, charge=-self.charge)
+    def flipped(self, axis: str) -> tuple[Any, IntegralWave]:
+        angle, wave = self.wave.flipped(axis)
+        own = sp.pi * self.charge if axis == "x" else 0
+        return angle + own, replace(self, wave=wave, charge=-self.charge)
 
     def poly(self, place: Place) -> Poly:
         place.letters.note("no closed form is known behind the last plate or stop: U is left as an integral over s")

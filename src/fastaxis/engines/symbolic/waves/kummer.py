@@ -13,7 +13,6 @@ J. Opt. Soc. Am. A 22, 849 (2005) for the Gaussian with a spiral plate.
 from __future__ import annotations
 
 from dataclasses import dataclass, replace
-from fractions import Fraction
 from typing import Any
 
 import sympy as sp
@@ -51,11 +50,10 @@ class TwistedWave:
             return TwistedWave(self.mode.moved(self.section), self.charge + charge, section)
         return IntegralWave(self, charge, section)
 
-    def flipped(self, axis: str) -> tuple[Fraction, TwistedWave]:
-        turns, mode = self.mode.flipped(axis)
-        if axis == "x":
-            turns += Fraction(sp.Rational(self.charge).p, sp.Rational(self.charge).q) / 2
-        return turns, replace(self, mode=mode, charge=-self.charge)
+    def flipped(self, axis: str) -> tuple[Any, TwistedWave]:
+        angle, mode = self.mode.flipped(axis)
+        own = sp.pi * self.charge if axis == "x" else 0
+        return angle + own, replace(self, mode=mode, charge=-self.charge)
 
     @property
     def total(self) -> Any:

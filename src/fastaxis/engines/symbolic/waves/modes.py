@@ -3,7 +3,6 @@
 from __future__ import annotations
 
 from dataclasses import dataclass, replace
-from fractions import Fraction
 from typing import Any
 
 import sympy as sp
@@ -69,12 +68,11 @@ class ModeWave:
             )
         return TwistedWave(self, charge, section)
 
-    def flipped(self, axis: str) -> tuple[Fraction, ModeWave]:
+    def flipped(self, axis: str) -> tuple[Any, ModeWave]:
         first, second = self.orders
         if self.kind == "LG":
-            turns = Fraction(int(second), 2) if axis == "x" else Fraction(0)
-            return turns, replace(self, orders=(first, -second))
-        return Fraction(int(first if axis == "x" else second), 2), self
+            return (sp.pi * second if axis == "x" else sp.S.Zero), replace(self, orders=(first, -second))
+        return sp.pi * (first if axis == "x" else second), self
 
     # --- what it looks like here ------------------------------------------------------------------------------------
     def rayleigh(self, place: Place) -> Any:

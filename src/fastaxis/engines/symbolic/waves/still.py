@@ -3,7 +3,6 @@
 from __future__ import annotations
 
 from dataclasses import dataclass
-from fractions import Fraction
 from typing import Any
 
 from fastaxis.engines.symbolic.coordinates import R
@@ -36,8 +35,8 @@ class StillWave:
 
         return IntegralWave(self, charge, section)
 
-    def flipped(self, axis: str) -> tuple[Fraction, StillWave]:
-        return Fraction(0), self
+    def flipped(self, axis: str) -> tuple[Any, StillWave]:
+        return 0, self
 
     def poly(self, place: Place) -> Poly:
         if not self.shape.has(R):
