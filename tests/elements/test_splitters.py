@@ -29,6 +29,16 @@ def scattering(jones, splitter, ways=FORWARD):
 splitters = st.one_of(
     st.builds(BeamSplitter, reflectance=shares),
     st.builds(PolarizingBeamSplitter, Tp=shares, Ts=shares),
+    # A real coating: p and s differ in power and in phase, each lossless for itself.
+    st.builds(
+        lambda Rp, Rs, p, s: BeamSplitter(
+            Rp=Rp, Rs=Rs, phase_tp=p, phase_rp=p + 90 * deg, phase_ts=s, phase_rs=s + 90 * deg
+        ),
+        shares,
+        shares,
+        st.floats(-4, 4),
+        st.floats(-4, 4),
+    ),
 )
 
 
@@ -135,6 +145,23 @@ def test_non_unitary_sets_are_refused_with_their_port_sum(make, sentence):
         make()
     assert str(refusal.value) == sentence
     make(**eval(f"dict({refusal.value.fix})", {"deg": deg}))
+
+
+def test_a_real_coating_says_only_what_differs(jones):
+    cube = BeamSplitter(reflectance=0.45, Rs=0.52, phase_rs=85 * deg, phase_ts=-5 * deg)
+    s = -math.sqrt(0.52) * cmath.exp(85j * deg)
+    assert jones(cube, ("front", "reflected")) == pytest.approx(np.diag([1j * math.sqrt(0.45), s]), abs=ROUNDING)
+    passed = np.diag([math.sqrt(0.55), math.sqrt(0.48) * cmath.exp(-5j * deg)])
+    assert jones(cube, ("side", "reflected")) == pytest.approx(passed, abs=ROUNDING)
+    lossy = BeamSplitter(reflectance=0.45, transmittance=0.5, Tp=0.46)
+    assert jones(lossy, ("front", "transmitted")) == pytest.approx(np.diag(np.sqrt([0.46, 0.5])), abs=ROUNDING)
+
+
+def test_a_coating_is_refused_with_its_port_sum():
+    # s reflected in phase: 1 + 2 sqrt(0.48 0.52) at worst.
+    with pytest.raises(ParameterError, match=r"port sum reaches 1.999") as refusal:
+        BeamSplitter(Rs=0.52, phase_rs=0.0)
+    assert refusal.value.got.endswith("transmittance = 0.48, Rs = 0.52, phase_t = 0, phase_rs = 0")
 
 
 def test_numbers_agree_with_letters(agrees):

@@ -123,6 +123,17 @@ def test_the_roll_as_a_letter():
         assert found[0] == pytest.approx(abs(ex) ** 2 + abs(ey) ** 2, rel=1e-9)
 
 
+def test_a_sweep_of_the_roll_turns_the_picture_too():
+    rolls = [0.0, 0.1, 0.9]  # at 0 there is nothing to be turned
+    laser = fa.Laser(beam=petals(10 * deg), power=1 * mW, name="laser")
+    camera = fa.Camera(pixel=80 * um, shape=(64, 64), name="cam")
+    train = fa.Train(wavelength=633 * nm).along(laser, fa.KMirror(roll=0.0, name="k"), camera)
+    swept = train.sweep({"k.roll": rolls}, "cam", [fa.H])
+    for place, roll in enumerate(rolls):
+        one = train.with_changes({"k.roll": roll}).expose("cam", [fa.H]).frame(0)
+        assert np.allclose(swept.frame(place, 0), one, rtol=0, atol=1e-12 * one.max())
+
+
 def test_a_hermite_gauss_beam_has_no_short_form_behind_a_turn():
     train = bench(fa.KMirror(roll=0.3), mode=fa.HermiteGauss(m=1, n=0, waist=W))
     with pytest.raises(fa.SymbolError, match="Hermite-Gauss beam turned by any angle"):
