@@ -67,12 +67,41 @@ def test_two_lasers_on_one_table_keep_their_own_paths(line):
 
 
 def test_paths_that_meet_are_refused_with_the_place(fork):
-    with pytest.raises(fa.WiringError, match="coherent joining of paths is not available yet") as caught:
+    with pytest.raises(fa.WiringError, match="each of them is a route of its own") as caught:
         fork.route("cam")
-    assert "bs2.transmitted: light by way of" in str(caught.value)
+    assert "cam.in: light by way of" in str(caught.value)
     assert {"bs2.front", "bs2.side"} == set(caught.value.got.split("by way of ")[1].split(" meets")[0].split(" and "))
     assert names(fork.route("m1")) == ["bs1", "m1"]
-    assert names(eval(caught.value.fix, {"train": fork}))[-1] in {"m1", "m2"}
+    assert {tuple(names(route)) for route in eval(caught.value.fix, {"train": fork})} == {
+        ("bs1", "m1", "bs2"),
+        ("bs1", "m2", "bs2"),
+    }
+
+
+def test_a_single_path_is_its_own_list_of_routes(line):
+    assert line.routes("cam") == (line.route("cam"),)
+
+
+def test_routes_of_a_cavity_leave_out_its_round_trips():
+    train = fa.Train(wavelength=532 * nm)
+    train.along(fa.Laser(waist=1 * mm), fa.BeamSplitter(name="left"), fa.FreeSpace(0.1, name="gap"))
+    train.along("gap", fa.BeamSplitter(name="right"), fa.Detector(name="out"))
+    train.along("right.reflected", "gap.back", "left.side")
+    assert [names(route) for route in train.routes("out")] == [["left", "gap", "right"]]
+    assert {tuple(names(route)) for route in train.routes("left.reflected")} == {
+        ("left",),
+        ("left", "gap", "right", "gap", "left"),
+    }
+
+
+def test_more_paths_than_anyone_reads_are_refused():
+    train = fa.Train(wavelength=532 * nm).along(fa.Laser(waist=1 * mm), fa.BeamSplitter(name="bs0"))
+    for n in range(13):
+        train.along(f"bs{n}.transmitted", fa.BeamSplitter(name=f"bs{n + 1}"))
+        train.along(f"bs{n}.reflected", fa.Mirror(), f"bs{n + 1}.side")
+    with pytest.raises(fa.WiringError, match="more than 4096 paths are not listed") as caught:
+        train.routes("bs13")
+    assert 0 <= eval(caught.value.fix, {"train": train}) < 1e-3
 
 
 def test_str_of_a_route_reads_as_a_path(line):

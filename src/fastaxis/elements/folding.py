@@ -2,7 +2,6 @@
 
 from __future__ import annotations
 
-from dataclasses import dataclass
 from typing import Any, ClassVar
 
 from fastaxis.elements.base import Element, Passages
@@ -13,17 +12,14 @@ from fastaxis.maths import Scalar
 __all__ = ["Folding", "check_fold", "reflection"]
 
 
-@dataclass(frozen=True, kw_only=True)
 class Folding(Element):
     """Base of the mirrors: light comes to the front and leaves from the front.
 
-    Parameters
-    ----------
-    two_way : whether two beams meet the mirror, one running along the other's path against it, as in a loop. Then
-        light that enters by "front" leaves by "side" and the other way round, so that both beams can be joined on.
+    With ``two_way`` a second beam runs the same path against the first, as in a loop. Then light that enters by
+    "front" leaves by "side" and the other way round, so that both beams can be joined on.
     """
 
-    two_way: bool = False
+    two_way: bool  # a field of each mirror, listed after its own
 
     stem: ClassVar[str] = "mirror"
     entry: ClassVar[str | None] = "front"

@@ -49,6 +49,7 @@ class MetalMirror(Folding):
     index: complex
     incidence: Scalar = pi / 4
     fold: str = "horizontal"
+    two_way: bool = False
 
     def __post_init__(self) -> None:
         check_fold(self.label, self.fold)

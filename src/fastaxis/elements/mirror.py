@@ -52,6 +52,7 @@ class Mirror(Folding):
     Rs: Scalar = 1.0
     phase_p: Scalar = 0.0
     phase_s: Scalar = 0.0
+    two_way: bool = False
 
     def __post_init__(self) -> None:
         check_fold(self.label, self.fold)

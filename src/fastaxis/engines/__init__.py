@@ -33,5 +33,8 @@ def propagate(plan: Plan) -> tuple[PlaneField, ...]:
     >>> round(field.power, 12)
     0.002
     """
-    engine = import_module(f"fastaxis.engines.{plan.engine}")
-    return tuple(engine.run(branch) for branch in plan.branches)
+    found: list[PlaneField] = []
+    for group in plan.groups:
+        fields = [import_module(f"fastaxis.engines.{b.engine or plan.engine}").run(b) for b in group]
+        found += fields if len(group) == 1 else import_module("fastaxis.engines.joined").joined(group, fields)
+    return tuple(found)

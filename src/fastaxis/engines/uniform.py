@@ -14,7 +14,7 @@ from fastaxis.laws import ScalarLaw
 from fastaxis.light import PlaneWave, Raster, stokes
 from fastaxis.plan import Branch, JonesStep
 
-__all__ = ["UniformField", "combined", "run"]
+__all__ = ["UniformField", "combined", "run", "started"]
 
 
 @dataclass(frozen=True)
@@ -66,17 +66,25 @@ class UniformField:
         return np.broadcast_to(values[:, None, None], (2, np.size(y), np.size(x))).copy()
 
 
-def run(branch: Branch) -> UniformField:
-    """The light of a branch whose parts are uniform; travel, flips and phases leave its Jones vector alone."""
+def started(branch: Branch) -> UniformField:
+    """The light of a branch where it begins."""
     terms, scale = branch.beam.terms, branch.beam.scale(branch.wavelength)
     jones = sum(scale * term.number * term.state.jones for term in terms) * np.sqrt(branch.power)
+    mode = terms[0].mode
+    area = float(mode.area) if isinstance(mode, PlaneWave) else None
+    return UniformField(branch.wavelength, np.asarray(jones), area)
+
+
+def run(branch: Branch) -> UniformField:
+    """The light of a branch whose parts are uniform; travel and frame changes leave its Jones vector alone."""
+    start = started(branch)
+    jones = start.jones
     for step in branch.steps:
         if isinstance(step.law, JonesStep):
             jones = np.array(step.law.matrix) @ jones
         elif isinstance(step.law, ScalarLaw):
-            jones = np.sqrt(step.law.transmission.power) * jones
-    mode = terms[0].mode
-    return UniformField(branch.wavelength, jones, float(mode.area) if isinstance(mode, PlaneWave) else None)
+            jones = step.law.transmission.number() * jones
+    return replace(start, jones=jones)
 
 
 def combined(fields: Sequence[UniformField], coefficients: NDArray[np.complex128]) -> UniformField:

@@ -1,5 +1,6 @@
 """Light itself: polarization states, Stokes parameters, transverse modes and sources."""
 
+from fastaxis.light.line import MONOCHROMATIC, Comb, GaussianLine, Line, LorentzianLine, Monochromatic
 from fastaxis.light.making_states import elliptical, from_jones, from_stokes, helicity, linear
 from fastaxis.light.mixtures import UNPOLARIZED, StateMixture, partially_polarized
 from fastaxis.light.modes import FlatTop, Gaussian, HermiteGauss, LaguerreGauss, Mode, Moments, PlaneWave, SampledMode
@@ -10,19 +11,25 @@ from fastaxis.light.stokes import degree_of_polarization, ellipse, stokes
 from fastaxis.light.terms import Beam, Term
 
 __all__ = [
+    "MONOCHROMATIC",
     "UNPOLARIZED",
     "A",
     "Beam",
+    "Comb",
     "Component",
     "D",
     "FlatTop",
     "Gaussian",
+    "GaussianLine",
     "H",
     "HermiteGauss",
     "L",
     "LaguerreGauss",
+    "Line",
+    "LorentzianLine",
     "Mode",
     "Moments",
+    "Monochromatic",
     "PlaneWave",
     "R",
     "Raster",

@@ -2,10 +2,16 @@
 
 from __future__ import annotations
 
+from collections.abc import Callable
 from dataclasses import replace
+from fractions import Fraction
+from functools import cache
 from typing import Any
 
-from fastaxis.light import Source
+from fastaxis.laws import TravelLaw
+from fastaxis.light import Component, Source
+from fastaxis.plan.arms import arms
+from fastaxis.plan.at_once import by_network
 from fastaxis.plan.binding import bound, refuse_letters
 from fastaxis.plan.choose import choose
 from fastaxis.plan.commute import commute
@@ -17,7 +23,7 @@ from fastaxis.plan.multiply import multiply
 from fastaxis.plan.plan import Branch, Plan
 from fastaxis.plan.proposing import sampling_for
 from fastaxis.plan.spread import of_beam
-from fastaxis.plan.steps import Step, Steps
+from fastaxis.plan.steps import JonesStep, Step, Steps
 from fastaxis.plan.trailing import drop_trailing
 
 __all__ = ["PASSES", "make_plan", "simplified", "unfused"]
@@ -26,34 +32,55 @@ PASSES = (gather_flips, merge, commute, fuse, merge, multiply)
 """In this order: flips and plates out of the way first, so that what they parted can be merged."""
 
 
-def _steps(train: Any, route: Any, wavelength: float) -> Steps:
-    """The laws on a route, asked at a wavelength, exact numbers made floats."""
-    steps = []
-    for leg in route.legs:
-        element = train.elements[leg.element_name]
-        refuse_letters(leg.element_name, element.parameters())
-        passage = element.passages(wavelength)[leg.entered, leg.left]
-        steps += [Step((leg.element_name,), bound(law)) for law in passage.steps()]
-    return tuple(steps)
+def _asked(train: Any, wavelength: float) -> Callable[[str, str, str], Steps]:
+    """The laws of a part between two faces, exact numbers made floats; each passage is asked for once."""
+
+    @cache
+    def steps(name: str, entered: str, left: str) -> Steps:
+        element = train.elements[name]
+        refuse_letters(name, element.parameters())
+        return tuple(Step((name,), bound(law)) for law in element.passages(wavelength)[entered, left].steps())
+
+    return steps
+
+
+def _length(steps: Steps) -> Fraction:
+    return sum((Fraction(step.law.path) for step in steps if isinstance(step.law, TravelLaw)), Fraction(0))
 
 
 def unfused(train: Any, target: str) -> Plan:
-    """The plan as declared: a branch for each incoherent part of the source, no pass applied, no engine chosen.
+    """The plan as declared: a branch for each incoherent part and each path, no pass applied, no engine chosen.
 
     Raises
     ------
     SymbolError : a letter without a value on the way.
     """
     refuse_letters(train.name, {"wavelength": train.wavelength})
-    route = train.route(target)
-    refuse_letters(route.source_name, route.laser.parameters())
-    source: Source = bound(route.laser.source)
-    wavelength = float(train.wavelength)
+    train.validate()
+    routes = arms(train, target)
+    branches: list[Branch] = []
+    for name in dict.fromkeys(route.source_name for route in routes):
+        own = [route for route in routes if route.source_name == name]
+        branches += _of_laser(train, own, len(branches))
+    first: Any = routes[0].laser
+    return Plan(target, float(train.wavelength), bound(first.source), tuple(branches))
+
+
+def _of_laser(train: Any, routes: list[Any], group: int) -> list[Branch]:
+    laser: Any = routes[0].laser
+    refuse_letters(routes[0].source_name, laser.parameters())
+    source: Source = bound(laser.source)
     branches = []
-    for part in source.components:
-        own = wavelength if part.wavelength is None else float(part.wavelength)
-        branches.append(Branch(part.beam, own, float(source.power * part.weight), _steps(train, route, own)))
-    return Plan(target, wavelength, source, tuple(branches))
+    for index, part in enumerate(source.components):
+        wavelength = float(part.wavelength_or(train.wavelength))
+        asked = _asked(train, wavelength)
+        for route in routes:
+            steps = tuple(s for leg in route.legs for s in asked(leg.element_name, leg.entered, leg.left))
+            branch = Branch(part.beam, wavelength, float(source.power * part.weight), steps)
+            if len(routes) > 1:
+                branch = replace(branch, group=group + index, length=_length(steps), line=laser.line)
+            branches.append(branch)
+    return branches
 
 
 def simplified(plan: Plan) -> Plan:
@@ -103,19 +130,40 @@ def make_plan(
     >>> plan.engine, [step.names for step in plan.steps]
     ('grid', [('plate1',), ('space1',), ('qplate1',), ('space2',)])
     """
+    at_once = by_network(train, target, asked=engine)
+    if at_once is not None:
+        return at_once
     plan = simplified(unfused(train, target))
+    bucket = power_only or _is_bucket(train, target)
+    if plan.joined:
+        return _joined(plan, grid, bucket=bucket, asked=engine)
     if power_only:
         plan = drop_trailing(plan)
-    bucket = power_only or _is_bucket(train, target)
     name, reason = choose(plan.steps, plan.source, bucket=bucket, asked=engine, sampled=grid is not None)
     if name == "grid":
-        plan = _sampled(plan, grid)
+        plan = replace(plan, branches=tuple(_sampled(branch, grid) for branch in plan.branches))
     return replace(plan, engine=name, reason=reason)
 
 
-def _sampled(plan: Plan, grid: Grid | None) -> Plan:
-    branches = tuple(
-        replace(b, sampling=sampling_for(b.steps, of_beam(b.beam, b.wavelength), b.wavelength, grid))
-        for b in plan.branches
-    )
-    return replace(plan, branches=branches)
+def _sampled(branch: Branch, grid: Grid | None) -> Branch:
+    spread = of_beam(branch.beam, branch.wavelength)
+    return replace(branch, sampling=sampling_for(branch.steps, spread, branch.wavelength, grid))
+
+
+def _joined(plan: Plan, grid: Grid | None, *, bucket: bool, asked: str) -> Plan:
+    """Every arm with the engine that suits it."""
+    branches = []
+    for group in plan.groups:
+        alike = bucket and len({_shape(branch.steps) for branch in group}) == 1
+        for branch in group:
+            source = Source((Component(1.0, branch.beam, branch.wavelength),), branch.power)
+            name, _ = choose(branch.steps, source, bucket=alike, asked=asked, sampled=grid is not None)
+            chosen = replace(branch, engine=name)
+            branches.append(_sampled(chosen, grid) if name == "grid" else chosen)
+    return replace(plan, branches=tuple(branches), engine="joined", reason="light comes by several paths")
+
+
+def _shape(steps: Steps) -> tuple[Any, ...]:
+    """What makes the beams of two arms differ from place to place: all but uniform matrices and path length."""
+    laws = [step.law for step in steps if not isinstance(step.law, JonesStep)]
+    return tuple(replace(law, path=0.0) if isinstance(law, TravelLaw) else law for law in laws)

@@ -4,18 +4,24 @@ from __future__ import annotations
 
 from collections.abc import Callable
 from dataclasses import dataclass, replace
+from fractions import Fraction
+from itertools import groupby
+from typing import TYPE_CHECKING
 
-from fastaxis.light import Beam, Source
+from fastaxis.light import MONOCHROMATIC, Beam, Line, Source
 from fastaxis.plan.explaining import explain
 from fastaxis.plan.sampling import Sampling
 from fastaxis.plan.steps import Steps
+
+if TYPE_CHECKING:
+    from fastaxis.plan.network import Network
 
 __all__ = ["Branch", "Plan"]
 
 
 @dataclass(frozen=True)
 class Branch:
-    """One incoherent part of the source on its way to the target.
+    """One incoherent part of the source on one of its ways to the target.
 
     Parameters
     ----------
@@ -24,6 +30,12 @@ class Branch:
     power : it starts with [W].
     steps : laws asked at this wavelength, in the order the light meets them.
     sampling : for the grid engine; None for engines that need no samples.
+    group : branches of one number are arms, whose fields add up; None for light that comes by one way.
+    length : optical path from source to target [m], exact.
+    line : shape of the spectral line, which says how well arms of different length add up.
+    engine : of this branch; "" for the engine of the plan.
+    network : all ways at once, for light whose shape is not followed; then there are no steps.
+    feed : place in the network where the light begins.
     """
 
     beam: Beam
@@ -31,6 +43,12 @@ class Branch:
     power: float
     steps: Steps
     sampling: Sampling | None = None
+    group: int | None = None
+    length: Fraction = Fraction(0)
+    line: Line = MONOCHROMATIC
+    engine: str = ""
+    network: Network | None = None
+    feed: int = 0
 
 
 @dataclass(frozen=True)
@@ -43,7 +61,7 @@ class Plan:
     wavelength : of the train [m].
     source : the light at the start.
     branches : one for each incoherent part of the source.
-    engine : "uniform", "azimuthal" or "grid".
+    engine : "uniform", "azimuthal" or "grid"; "joined" where arms meet, each with an engine of its own.
     reason : why this engine.
     notes : what the passes did.
     """
@@ -65,6 +83,18 @@ class Plan:
     def sampling(self) -> Sampling | None:
         """The sampling of the first incoherent part."""
         return self.branches[0].sampling
+
+    @property
+    def groups(self) -> tuple[tuple[Branch, ...], ...]:
+        """The branches, arms of one coherent light together."""
+        alone = enumerate(self.branches)
+        keyed = [((-1, i) if b.group is None else (b.group, 0), b) for i, b in alone]
+        return tuple(tuple(b for _, b in part) for _, part in groupby(keyed, key=lambda pair: pair[0]))
+
+    @property
+    def joined(self) -> bool:
+        """Whether light comes by several ways whose fields add up."""
+        return any(len(group) > 1 for group in self.groups)
 
     def rewritten(self, rewrite: Callable[[Steps, float], Steps], note: str) -> Plan:
         """The plan with the steps of every branch rewritten; noted if it changed anything."""

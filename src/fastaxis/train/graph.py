@@ -8,7 +8,7 @@ from typing import Any, TypeAlias
 from fastaxis.maths import Scalar
 from fastaxis.train.ports import Elements, Way, in_faces, out_faces, split
 
-__all__ = ["Joints", "Node", "build", "first_loop", "is_source", "lit_nodes", "port_of", "source_nodes"]
+__all__ = ["Joints", "Node", "build", "is_source", "lit_nodes", "port_of", "source_nodes"]
 
 Joints: TypeAlias = tuple[tuple[str, str], ...]
 Node: TypeAlias = tuple[str, str, Way]
@@ -62,14 +62,3 @@ def lit_nodes(graph: Any, sources: Iterable[Node]) -> set[Node]:
             lit.add(node)
             waiting.extend(graph.successors(node))
     return lit
-
-
-def first_loop(graph: Any, lit: set[Node]) -> tuple[tuple[Node, Node], ...]:
-    """The joints of a closed loop of lit port states; empty when there is none."""
-    import networkx as nx  # noqa: PLC0415
-
-    try:
-        cycle = nx.find_cycle(graph.subgraph(lit))
-    except nx.NetworkXNoCycle:
-        return ()
-    return tuple((a, b) for a, b in cycle if graph.edges[a, b]["kind"] == "join")

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from dataclasses import dataclass
+from itertools import pairwise
 from typing import Any
 
 from fastaxis.elements.base import Element
@@ -12,7 +13,9 @@ from fastaxis.train.graph import Node, port_of
 from fastaxis.train.ports import Elements, read_port
 from fastaxis.train.suggest import feed_code
 
-__all__ = ["Leg", "Route", "find_route", "target_node"]
+__all__ = ["Leg", "Route", "find_route", "find_routes", "lit_target", "target_node"]
+
+MOST = 4096  # twelve interferometers in a row; beyond it nobody reads the list
 
 
 @dataclass(frozen=True)
@@ -70,12 +73,12 @@ def target_node(elements: Elements, graph: Any, lit: set[Node], target: str) -> 
     return next((node for node in present if node in lit), (present or [arriving])[0])
 
 
-def find_route(elements: Elements, graph: Any, lit: set[Node], target: str) -> Route:
-    """The one lit path to a target.
+def lit_target(elements: Elements, graph: Any, lit: set[Node], target: str) -> Node:
+    """The port state meant by a target, which light reaches.
 
     Raises
     ------
-    WiringError : no light gets there, or light by two paths.
+    WiringError : no light gets there.
     """
     node = target_node(elements, graph, lit, target)
     if node not in lit:
@@ -84,23 +87,65 @@ def find_route(elements: Elements, graph: Any, lit: set[Node], target: str) -> R
             got=f"{port_of(node)}: not on any path from a laser",
             fix=feed_code(elements, graph, lit, node),
         )
-    end, legs = node, []
-    while before := _one_before(graph, lit, node):
-        if graph.edges[before, node]["kind"] == "inside":
-            legs.append(Leg(node[0], before[1], node[1], graph.edges[before, node]["passage"]))
+    return node
+
+
+def find_route(elements: Elements, graph: Any, lit: set[Node], target: str) -> Route:
+    """The one lit path to a target.
+
+    Raises
+    ------
+    WiringError : no light gets there, or light by several paths.
+    """
+    end = lit_target(elements, graph, lit, target)
+    node, back = end, [end]
+    while before := _one_before(graph, lit, node, end):
+        back.append(before)
         node = before
-    return Route(node[0], elements[node[0]], tuple(reversed(legs)), port_of(end))
+    return _route(elements, graph, tuple(reversed(back)))
 
 
-def _one_before(graph: Any, lit: set[Node], node: Node) -> Node | None:
+def _one_before(graph: Any, lit: set[Node], node: Node, end: Node) -> Node | None:
     before = [other for other in graph.predecessors(node) if other in lit]
     if len(before) > 1:
         meeting = " and ".join(port_of(other) for other in before)
-        feeding = next(graph.predecessors(before[0]), before[0])
         raise WiringError(
-            "coherent joining of paths is not available yet, so a port is answered when one path leads to it; "
-            "ask before they meet",
-            got=f"{port_of(node)}: light by way of {meeting} meets in {node[0]}",
-            fix=f'train.route("{port_of(feeding)}")',
+            "light gets there by several paths, whose fields add up; each of them is a route of its own",
+            got=f"{port_of(end)}: light by way of {meeting} meets in {node[0]}",
+            fix=f'train.routes("{port_of(end)}")',
         )
     return before[0] if before else None
+
+
+def find_routes(elements: Elements, graph: Any, lit: set[Node], target: str) -> tuple[Route, ...]:
+    """All lit paths to a target that meet no port state twice: of a cavity, those without a whole round trip.
+
+    Raises
+    ------
+    WiringError : no light gets there, or light by too many paths to list.
+    """
+    end = lit_target(elements, graph, lit, target)
+    found: list[tuple[Node, ...]] = []
+    waiting: list[tuple[Node, ...]] = [(end,)]
+    while waiting:
+        walk = waiting.pop()
+        before = [other for other in graph.predecessors(walk[0]) if other in lit]
+        if not before:
+            found.append(walk)
+        if len(found) > MOST:
+            raise WiringError(
+                f"more than {MOST} paths are not listed; plane waves need no list of them",
+                got=f"{port_of(end)}: paths double at every pair of splitters",
+                fix=f'train.power("{port_of(end)}", engine="uniform")',
+            )
+        waiting += [(other, *walk) for other in reversed(before) if other not in walk]
+    return tuple(_route(elements, graph, walk) for walk in found)
+
+
+def _route(elements: Elements, graph: Any, walk: tuple[Node, ...]) -> Route:
+    legs = tuple(
+        Leg(into[0], into[1], out[1], graph.edges[into, out]["passage"])
+        for into, out in pairwise(walk)
+        if graph.edges[into, out]["kind"] == "inside"
+    )
+    return Route(walk[0][0], elements[walk[0][0]], legs, port_of(walk[-1]))

@@ -9,12 +9,12 @@ from fastaxis.elements.base import Element
 from fastaxis.elements.detector import BeamDump
 from fastaxis.errors import FastaxisWarning, WiringError, WiringWarning
 from fastaxis.maths import Scalar
-from fastaxis.train.graph import Joints, Node, first_loop, is_source, port_of
+from fastaxis.train.graph import Joints, Node, is_source
 from fastaxis.train.joining import checked_joint
 from fastaxis.train.ports import Elements
 from fastaxis.train.suggest import feed_code
 
-__all__ = ["check_joints", "check_loops", "check_source", "findings"]
+__all__ = ["check_joints", "check_source", "findings"]
 
 
 def check_joints(elements: Elements, joints: Joints, wavelength: Scalar) -> None:
@@ -34,19 +34,6 @@ def check_source(elements: Elements, name: str) -> None:
         "a train needs a laser",
         got=f"{name}: no source among {', '.join(elements) or 'no parts'}",
         fix=f'train.along(fa.Laser(waist=0.8*mm, power=5*mW, state=fa.H, name="laser"){ending})',
-    )
-
-
-def check_loops(graph: Any, lit: set[Node]) -> None:
-    """A WiringError when light would come back to a port it left, going the same way."""
-    loop = first_loop(graph, lit)
-    if not loop:
-        return
-    out, into = loop[-1]
-    raise WiringError(
-        f'a loop (a cavity) has no single path; end it with a dump in place of the joint to "{port_of(into)}"',
-        got=" -> ".join([loop[0][0][0], *(b[0] for _, b in loop)]) + ": light runs round for ever",
-        fix=f'train.add(fa.BeamDump(name="dump")).join("{port_of(out)}", "dump")',
     )
 
 

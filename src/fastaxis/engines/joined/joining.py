@@ -1,0 +1,119 @@
+"""Several arms in the plane where they meet."""
+
+from __future__ import annotations
+
+from collections.abc import Sequence
+from dataclasses import dataclass, fields
+from functools import cached_property
+from typing import Any, cast
+
+import numpy as np
+from numpy.typing import NDArray
+
+from fastaxis.engines.field import Guard, PlaneField
+from fastaxis.engines.joined.coherence import mixtures
+from fastaxis.engines.joined.extent import Extent
+from fastaxis.engines.joined.nodes import PixelNodes
+from fastaxis.engines.joined.overlap import overlaps
+from fastaxis.errors import ParameterError
+from fastaxis.light import Raster, stokes
+from fastaxis.plan import Branch
+
+__all__ = ["JoinedField", "joined"]
+
+Reals = NDArray[np.float64]
+Complexes = NDArray[np.complex128]
+
+BLOCK = 1 << 18  # places at which the arms are held at a time
+
+
+def joined(arms: Sequence[Branch], found: Sequence[PlaneField]) -> tuple[PlaneField, ...]:
+    """The light of arms together: one field, or for uniform light one for each sum that does not interfere."""
+    mixed = mixtures(arms)
+    if all(arm.engine == "uniform" for arm in arms):
+        return tuple(_uniform_sum(cast("Sequence[Any]", found), row) for row in mixed)
+    return (JoinedField(tuple(found), mixed, Extent.of(arms)),)
+
+
+def _uniform_sum(found: Sequence[Any], numbers: Complexes) -> PlaneField:
+    first = found[0]
+    total = sum(number * field.jones for number, field in zip(numbers, found, strict=True))
+    return type(first)(first.wavelength, np.asarray(total), first.area)  # type: ignore[no-any-return]
+
+
+@dataclass(frozen=True, eq=False)
+class JoinedField:
+    """Light that came by several paths.
+
+    Parameters
+    ----------
+    arms : the field of each, as its engine left it.
+    mixtures : rows of numbers, one an arm; each row makes a coherent sum, and the powers of the sums add.
+    extent : how wide and fine the light is.
+    """
+
+    arms: tuple[PlaneField, ...]
+    mixtures: Complexes
+    extent: Extent
+
+    @property
+    def wavelength(self) -> float:
+        """Vacuum wavelength [m]."""
+        return self.arms[0].wavelength
+
+    @cached_property
+    def total_stokes(self) -> Reals:
+        """S0 .. S3 of all the light [W], shape (4,)."""
+        table = overlaps(self.arms, self.extent)
+        ((xx, xy), (_, yy)) = np.einsum("mi,mj,ijab->ab", self.mixtures, self.mixtures.conj(), table)
+        return np.array([xx.real + yy.real, xx.real - yy.real, 2 * xy.real, 2 * xy.imag])
+
+    @property
+    def power(self) -> float:
+        """Total power [W]: that of each arm, and what their overlap adds or takes."""
+        return max(0.0, float(self.total_stokes[0]))
+
+    @property
+    def guard(self) -> Guard:
+        """The worst of the arms."""
+        guards = [arm.guard for arm in self.arms]
+        return Guard(**{f.name: max(getattr(guard, f.name) for guard in guards) for f in fields(Guard)})
+
+    def at(self, x: Reals, y: Reals) -> Complexes:
+        """(Ex, Ey) [sqrt(W)/m] at columns x and rows y [m], shape (2, ny, nx), of arms that are fully coherent."""
+        if len(self.mixtures) > 1:
+            raise ParameterError(
+                "light that is partly coherent has no one field; it has Stokes parameters everywhere",
+                got=f"{len(self.arms)} paths of different length, and a line of some width",
+                fix='train.with_changes({"laser.line": fa.Monochromatic()})',
+            )
+        return np.asarray(self._sums(np.atleast_1d(x), np.atleast_1d(y))[0])
+
+    def _sums(self, x: Reals, y: Reals) -> Complexes:
+        """Every coherent sum at columns x and rows y, shape (sums, 2, ny, nx)."""
+        total = np.zeros((len(self.mixtures), 2, len(y), len(x)), dtype=complex)
+        for arm, numbers in zip(self.arms, self.mixtures.T, strict=True):
+            field = arm.at(x, y)
+            for index, number in enumerate(numbers):
+                total[index] += number * field
+        return total
+
+    def stokes_on(self, raster: Raster) -> Reals:
+        """Watts per pixel of S0 .. S3, integrated over each pixel, shape (4, ny, nx).
+
+        The sums are evaluated at Gauss-Legendre nodes inside each pixel, as many as the finest fringes ask for.
+        """
+        half = self.extent.half_window
+        if raster.shape == (1, 1) and half and raster.pitch / 2 >= half + max(map(abs, raster.centre)):
+            return self.total_stokes[:, np.newaxis, np.newaxis]
+        ny, nx = raster.shape
+        reach = max(abs(raster.x).max(), abs(raster.y).max()) + raster.pitch / 2
+        nodes = PixelNodes.of(raster.pitch, self.extent.frequency(reach))
+        columns, rows = nodes.places(raster.x), nodes.rows_at_once(raster, BLOCK)
+        image = np.empty((4, ny, nx))
+        for first in range(0, ny, rows):
+            middles = raster.y[first : first + rows]
+            sums = self._sums(columns, nodes.places(middles))
+            values = np.sum([stokes(one) for one in sums], axis=0)
+            image[:, first : first + rows] = nodes.collected(values, (len(middles), nx))
+        return image

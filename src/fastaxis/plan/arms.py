@@ -1,0 +1,171 @@
+"""All ways light takes to a target: the arms of an interferometer, and the round trips of a cavity until they fade."""
+
+from __future__ import annotations
+
+import math
+from collections.abc import Iterator
+from dataclasses import dataclass, replace
+from functools import cached_property
+from itertools import pairwise
+from typing import Any
+
+import numpy as np
+from numpy.typing import NDArray
+
+from fastaxis.errors import SamplingError
+from fastaxis.laws import AxisLaw, ScalarLaw
+from fastaxis.plan.binding import bound
+from fastaxis.plan.fuse import as_matrix
+from fastaxis.plan.steps import Step
+from fastaxis.train.graph import Node, lit_nodes, port_of, source_nodes
+from fastaxis.train.routes import Leg, Route, lit_target
+
+__all__ = ["FAINT", "MOST", "arms", "upstream"]
+
+# Amplitude of a path over that of the source at which it is left out: its power is 1e-28, and what it changes by
+# interference is 1e-14, a few roundings. Ways that a polarizer or splitter closes exactly go the same way.
+FAINT = 1e-14
+MOST = 1024  # paths followed; each is propagated, and a camera adds all of them up
+Matrix = NDArray[np.complex128]
+
+
+@dataclass(frozen=True)
+class _Strength:
+    """The largest amplitude that any state of the source can still have: exact while parts are uniform.
+
+    Parameters
+    ----------
+    states : (2, n), the states of the source after the uniform parts so far; the identity behind a patterned part,
+        which could turn the light into anything.
+    scale : amplitude kept apart.
+    known : whether ``states`` are still those of the source.
+    """
+
+    states: Matrix
+    scale: float = 1.0
+    known: bool = True
+
+    @cached_property
+    def amplitude(self) -> float:
+        largest = np.linalg.norm(self.states, axis=0).max() if self.known else np.linalg.norm(self.states, 2)
+        return self.scale * float(largest)
+
+    def past(self, law: Any) -> _Strength:
+        matrix = as_matrix(Step((), law))
+        if matrix is not None:
+            return replace(self, states=np.array(matrix.matrix) @ self.states)
+        if isinstance(law, AxisLaw):
+            most = max(_most(law.along.power), _most(law.across.power))
+            return _Strength(np.eye(2, dtype=complex), self.amplitude * math.sqrt(most), known=False)
+        if isinstance(law, ScalarLaw):
+            return replace(self, scale=self.scale * math.sqrt(_most(law.transmission.power)))
+        return self
+
+
+def _most(power: Any) -> float:
+    return float(power) if isinstance(power, int | float) else 1.0
+
+
+@dataclass(frozen=True)
+class _Walk:
+    """Light on its way: where it is, how it came, how strong it may be."""
+
+    node: Node
+    strength: _Strength
+    before: _Walk | None = None
+
+    def nodes(self) -> Iterator[_Walk]:
+        here: _Walk | None = self
+        while here is not None:
+            yield here
+            here = here.before
+
+    def gain(self) -> float | None:
+        """Amplitude kept since the light was last here; None on the first visit."""
+        earlier = next((walk for walk in self.nodes() if walk is not self and walk.node == self.node), None)
+        return None if earlier is None else self.strength.amplitude / earlier.strength.amplitude
+
+
+def upstream(graph: Any, lit: set[Node], end: Node) -> set[Node]:
+    """The lit port states from which light can get to ``end``."""
+    found, waiting = set[Node](), [end]
+    while waiting:
+        node = waiting.pop()
+        if node not in found and node in lit:
+            found.add(node)
+            waiting.extend(graph.predecessors(node))
+    return found
+
+
+def arms(train: Any, target: str) -> tuple[Route, ...]:
+    """All paths to a target that carry light, round trips included, the shortest first.
+
+    Raises
+    ------
+    WiringError : no light gets there.
+    SamplingError : too many paths carry light, as in a cavity of high finesse.
+    """
+    graph, sources = train.graph, source_nodes(train.elements)
+    lit = lit_nodes(graph, sources)
+    end = lit_target(train.elements, graph, lit, target)
+    inside = upstream(graph, lit, end)
+    if all(sum(before in inside for before in graph.predecessors(node)) < 2 for node in inside):
+        return (train.route(target),)
+    found: list[_Walk] = []
+    for start in sources:
+        if start in inside:
+            states = [
+                t.state.jones for part in bound(train.elements[start[0]].source).components for t in part.beam.terms
+            ]
+            _follow(graph, inside, end, _Walk(start, _Strength(np.array(states).T)), found)
+    if not found:  # a port that is dark by polarization: one of its paths says so
+        return tuple(train.routes(target)[:1])
+    return tuple(_route(train, walk) for walk in found)
+
+
+def _follow(graph: Any, inside: set[Node], end: Node, start: _Walk, found: list[_Walk]) -> None:
+    waiting, least = [start], 0.0
+    while waiting:
+        walk = waiting.pop(0)
+        if walk.node == end:
+            found.append(walk)
+        if len(found) > MOST or len(waiting) > MOST:
+            raise _too_many(end, least)
+        if graph.in_degree(walk.node) > 1:
+            least = max(least, walk.gain() or 0.0)
+        for ahead in graph.successors(walk.node):
+            if ahead in inside:
+                there = _Walk(ahead, _through(graph.edges[walk.node, ahead], walk.strength), walk)
+                if there.strength.amplitude > FAINT:
+                    waiting.append(there)
+
+
+def _through(edge: Any, strength: _Strength) -> _Strength:
+    if edge["kind"] == "inside":
+        for law in edge["passage"].laws:
+            strength = strength.past(bound(law))
+    return strength
+
+
+def _too_many(end: Node, gain: float) -> SamplingError:
+    port = port_of(end)
+    if gain == 0:
+        got = f"{port}: the paths double at every pair of splitters"
+    elif gain > 1 - 1e-12:  # a few roundings a part
+        got = f"{port}: light loses nothing on its way round and would build up for ever"
+    else:
+        trips = math.ceil(math.log(FAINT) / math.log(gain))
+        got = f"{port}: {gain:.4g} of the amplitude is left after a round trip, which takes {trips} trips to fade"
+    return SamplingError(
+        f"light with a shape is followed along at most {MOST} paths; of plane waves all are summed at once",
+        got=got,
+        fix=f'train.power("{port}", engine="uniform")',
+    )
+
+
+def _route(train: Any, walk: _Walk) -> Route:
+    nodes = [step.node for step in walk.nodes()][::-1]
+    edges = train.graph.edges
+    pairs = pairwise(nodes)
+    legs = tuple(Leg(a[0], a[1], b[1], edges[a, b]["passage"]) for a, b in pairs if edges[a, b]["kind"] == "inside")
+    return Route(nodes[0][0], train.elements[nodes[0][0]], legs, port_of(nodes[-1]))
