@@ -132,6 +132,11 @@ def test_a_letter_in_the_train_is_refused(flat):
         train.sweep({"hwp.fast": ANGLES}, "cam", fa.H)
 
 
+def test_a_letter_that_is_swept_needs_no_other_value(flat, compare):
+    train = flat.with_changes({"qwp.fast": sympy.Symbol("theta", real=True)})
+    compare(train, {"qwp.fast": ANGLES, "hwp.fast": ANGLES})
+
+
 @pytest.mark.parametrize(
     ("which", "setting", "words"),
     [

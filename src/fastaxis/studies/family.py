@@ -16,7 +16,6 @@ from fastaxis.engines.combining import combined, combines
 from fastaxis.engines.sharing import Relay
 from fastaxis.plan import Plan, make_plan
 from fastaxis.studies.knobs import Knobs
-from fastaxis.studies.response import response
 from fastaxis.studies.spanning import Span, products, spanning, squares
 
 __all__ = ["Family", "make_family"]
@@ -64,6 +63,7 @@ def make_family(
     train: Any,
     target: str,
     groups: Sequence[Knobs],
+    answers: Sequence[NDArray[np.complex128]],
     *,
     relay: Relay,
     grid: Any = None,
@@ -81,11 +81,11 @@ def make_family(
     ----------
     train, target : with the parameters outside of the groups at their values.
     groups : parameters the field is linear in, each group for itself.
+    answers : for each group, the table from :func:`fastaxis.studies.response.response`.
     relay : carries light that earlier families share with this one.
     done : called after each propagation with the number that is needed in all.
     """
-    answers = [response(train, target, group) for group in groups]
-    fields = [spanning(table) for table in answers if table is not None]
+    fields = [spanning(table) for table in answers]
     pictures = [spanning(squares(span.coefficients)) for span in fields]
     first = make_plan(_at(train, groups, [span.nodes[:1] for span in fields])[0], target, grid=grid, engine=engine)
     summed = bool(fields) and combines(first.engine)

@@ -52,25 +52,24 @@ class Gallery:
         self._relay = Relay()
         self._families: OrderedDict[int, Family] = OrderedDict()
         self._sums: dict[int, Reals] = {}
-        self.linear = self._linear(sensor_at(train, target))
+        self._first = self._answers_within(sensor_at(train, target))
+        self.linear = list(self._first)
         self.stiff = [group for group in knobs.groups() if group not in self.linear]
 
-    def _linear(self, sensor: Any) -> list[tuple[str, ...]]:
+    def _answers_within(self, sensor: Any) -> dict[tuple[str, ...], NDArray[np.complex128]]:
         """Groups of parameters the field is linear in, as far as the pictures of all of them fit in memory.
 
-        Those left out, the ones with the fewest values first, are propagated value by value.
+        Those left out, the ones with the fewest values first, are propagated value by value. The tables are those of
+        the first family.
         """
         start = self.train.with_changes(self.knobs.at(0))
         make_plan(start, self.target, **self._options)  # refuses letters in the train, and a target without light
-        counts: dict[tuple[str, ...], int] = {}
-        for group in self.knobs.groups():
-            answer = response(start, self.target, self.knobs.only(group))
-            if answer is not None:
-                counts[group] = spanning(squares(spanning(answer).coefficients)).rank
-        size = 4 * 8 * math.prod(sensor.shape)
-        while counts and size * math.prod(counts.values()) > MOST:
-            del counts[min(counts, key=lambda group: len(self.knobs.only(group)))]
-        return list(counts)
+        answers = {group: response(start, self.target, self.knobs.only(group)) for group in self.knobs.groups()}
+        linear = {group: answer for group, answer in answers.items() if answer is not None}
+        counts = {group: spanning(squares(spanning(table).coefficients)).rank for group, table in linear.items()}
+        while linear and 4 * 8 * math.prod(sensor.shape) * math.prod(counts[group] for group in linear) > MOST:
+            del linear[min(linear, key=lambda group: len(self.knobs.only(group)))]
+        return linear
 
     @cached_property
     def numbers(self) -> Indices:
@@ -105,10 +104,12 @@ class Gallery:
     def _made(self, number: int) -> Family:
         changes = self.knobs.at(int(self.members[number][0]))
         fixed = {name: changes[name] for group in self.stiff for name in group}
+        train, groups = self.train.with_changes(fixed), [self.knobs.only(group) for group in self.linear]
         return make_family(
-            self.train.with_changes(fixed) if fixed else self.train,
+            train,
             self.target,
-            [self.knobs.only(group) for group in self.linear],
+            groups,
+            list(self._first.values()) if number == 0 else [_table(train, self.target, group) for group in groups],
             relay=self._relay,
             done=self._moved_on,
             **self._options,
@@ -132,3 +133,10 @@ class Gallery:
                 self.family(number)
             out[indices] = self._sums[number]
         return out
+
+
+def _table(train: Any, target: str, group: Knobs) -> NDArray[np.complex128]:
+    """The answer to a group that is known to be linear."""
+    table = response(train, target, group)
+    assert table is not None
+    return table
