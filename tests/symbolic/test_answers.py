@@ -6,8 +6,9 @@ import pytest
 import sympy as sp
 
 import fastaxis as fa
-from fastaxis.engines.symbolic.answers.darkness import TURN_COUNT
+from fastaxis.engines.symbolic.answers.darkness import TURN_COUNT, dark_when
 from fastaxis.engines.symbolic.coordinates import PHI
+from fastaxis.engines.symbolic.ring import ExactMaths, Ring
 from fastaxis.errors import SymbolError
 
 
@@ -80,16 +81,41 @@ def test_elliptical_light_is_dark_under_two_conditions_only(form, letters):
     }
 
 
-def test_both_signs_of_an_opening_are_branches(form, letters):
-    a, b, *_ = letters
-    c = sp.Symbol("c", real=True)
-    # Elliptical light of equal handed parts from two plates: cos 2a (1) and a constant meet in one amplitude.
-    found = form(fa.Retarder(fast=a, retardance=c), fa.Retarder(fast=b, retardance=c)).dark_when(c, sp.pi / 2)
-    for branch, condition in zip(found.branches, found.conditions, strict=True):
-        values = {a: 0.3, b: 0.3 + sp.pi / 2, TURN_COUNT: 1}
-        frame = form(fa.Retarder(fast=a, retardance=c), fa.Retarder(fast=b, retardance=c)).frame(sp.pi / 2)
-        if condition.subs(values) == True:  # noqa: E712
-            assert abs(frame.subs(c, branch).subs(values).evalf()) < 1e-20
+def test_a_branch_inside_another_is_shared(form, letters):
+    a, b, d, *_ = letters
+    # sin^2(d/2) sin(2a - 2b) and sin(d) sin(a + b) cos(a - b) vanish together.
+    found = form(fa.Retarder(fast=a, retardance=d), fa.Retarder(fast=b, retardance=d)).dark_when(d, sp.pi / 2)
+    assert dict(zip(found.branches, found.conditions, strict=True)) == {
+        2 * sp.pi * TURN_COUNT: sp.true,
+        sp.pi * TURN_COUNT: sp.Eq(sp.sin(2 * a - 2 * b), 0),
+    }
+
+
+def _solved(expression, letter):
+    return dark_when((ExactMaths(Ring()).number(expression),), letter)
+
+
+def test_both_signs_of_an_opening_are_branches(letters):
+    a, b, d, *_ = letters
+    found = _solved(sp.cos(d - a) - sp.Rational(1, 2), d)
+    assert len(found.branches) == 2
+    for branch in found.branches:
+        assert sp.simplify(sp.cos(branch.subs(TURN_COUNT, 3) - a)) == sp.Rational(1, 2)
+    assert found.conditions == (sp.true, sp.true)
+    assert [c.subs({a: 0.2, b: 0.1}) for c in _solved(sp.cos(d) * sp.cos(a) - sp.cos(b), d).conditions] == [
+        sp.false
+    ] * 2
+
+
+def test_a_constant_too_large_has_no_solution(letters):
+    _, _, d, *_ = letters
+    assert str(_solved(sp.cos(d) - 2, d)) == "no solution"
+
+
+def test_two_harmonics_that_do_not_factor_are_refused(letters):
+    a, _, d, *_ = letters
+    with pytest.raises(SymbolError, match="in one harmonic"):
+        _solved(3 * sp.cos(2 * d) + sp.cos(d - a), d)
 
 
 def test_always_dark_is_said(form, letters):

@@ -161,26 +161,29 @@ def _polar(b: Any, c: Any) -> tuple[Any, Any]:
 
 def _common(one: Branches, other: Branches) -> Branches:
     """What makes both vanish: shared branches, a branch of one with a condition of the other, shared conditions."""
-    found = [
-        (branch, sp.And(condition, theirs))
-        for branch, condition in zip(one.branches, one.conditions, strict=True)
-        for branch_there, theirs in zip(other.branches, other.conditions, strict=True)
-        if _same(branch, branch_there)
-    ]
+    found: list[tuple[Any, Any]] = []
+    for first, second in ((one, other), (other, one)):
+        for branch, condition in zip(first.branches, first.conditions, strict=True):
+            for branch_there, theirs in zip(second.branches, second.conditions, strict=True):
+                if _within(branch, branch_there) and not _known(branch, found):
+                    found.append((branch, sp.And(condition, theirs)))
     others = tuple(elsewhere for elsewhere in one.others if elsewhere in other.others)
     for first, second in ((one, other), (other, one)):
         found += [
             (branch, sp.And(condition, sp.Eq(elsewhere, 0)))
             for branch, condition in zip(first.branches, first.conditions, strict=True)
             for elsewhere in second.others
-            if elsewhere not in others and not any(_same(branch, known) for known, _ in found)
+            if elsewhere not in others and not _known(branch, found)
         ]
     return Branches(one.angle, tuple(b for b, _ in found), tuple(c for _, c in found), others)
 
 
-def _same(one: Any, other: Any) -> bool:
-    """Whether two branches name the same set of angles."""
-    step = sp.diff(one, TURN_COUNT)
-    return (
-        step == sp.diff(other, TURN_COUNT) and sp.simplify((one - other).subs(TURN_COUNT, 0) / step).is_integer is True
-    )
+def _known(branch: Any, found: list[tuple[Any, Any]]) -> bool:
+    return any(_within(branch, other) for other, _ in found)
+
+
+def _within(one: Any, other: Any) -> bool:
+    """Whether every angle of one branch is also one of another."""
+    step, wider = sp.diff(one, TURN_COUNT), sp.diff(other, TURN_COUNT)
+    apart = sp.simplify((one - other).subs(TURN_COUNT, 0) / wider)
+    return sp.simplify(step / wider).is_integer is True and apart.is_integer is True

@@ -14,7 +14,7 @@ import sympy as sp
 
 from fastaxis.engines.symbolic.expressions import amplitude_of, centred, split_key, written
 from fastaxis.engines.symbolic.presentations.factors import factored
-from fastaxis.engines.symbolic.presentations.splitting import best_split
+from fastaxis.engines.symbolic.presentations.splitting import best_split, by_amplitude
 from fastaxis.engines.symbolic.ring import Poly
 from fastaxis.engines.symbolic.ring.ring import ANGLE
 from fastaxis.engines.symbolic.ring.roots import TURN
@@ -87,7 +87,7 @@ def _sum(poly: Poly) -> Any:
     """A polynomial with no factors: split by one angle if that is shorter."""
     if len(poly) < 3:
         return written(poly)
-    split = best_split(poly)
+    split = best_split(poly) or by_amplitude(poly)
     if split is None:
         return written(poly)
     return sp.Add(*(compact(part) * factor for factor, part in split if part))

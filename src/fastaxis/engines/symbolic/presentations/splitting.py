@@ -7,10 +7,11 @@ from typing import Any
 
 import sympy as sp
 
+from fastaxis.engines.symbolic.expressions import amplitude_of, split_key
 from fastaxis.engines.symbolic.ring import Poly
 from fastaxis.engines.symbolic.ring.ring import ANGLE, UNIT
 
-__all__ = ["best_split"]
+__all__ = ["best_split", "by_amplitude"]
 
 Split = list[tuple[Any, Poly]]
 
@@ -21,6 +22,18 @@ def best_split(poly: Poly) -> Split | None:
     best = min(candidates, key=lambda split: (_complex_parts(split), _size(split)), default=None)
     # A sum of n cosines has 2 n terms.
     return best if best is not None and _size(best) < len(poly) else None
+
+
+def by_amplitude(poly: Poly) -> Split | None:
+    """[(amplitude, rest), ...] of a sum with several amplitudes, or None."""
+    ring = poly.ring
+
+    def amplitude(key: int) -> tuple[int, int]:
+        _, size, _ = split_key(ring, key)
+        return size, key - size
+
+    parts = poly.parts(amplitude)
+    return None if len(parts) < 2 else [(amplitude_of(ring, size), part) for size, part in parts.items()]
 
 
 def _size(split: Split) -> int:
