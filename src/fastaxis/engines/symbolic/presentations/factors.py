@@ -14,7 +14,7 @@ from fastaxis.engines.symbolic.ring.roots import TURN
 __all__ = ["factored"]
 
 # Beyond these, factoring costs more than a short form is worth.
-MOST_TERMS, MOST_GENERATORS, MOST_DEGREE = 90, 8, 24
+MOST_TERMS, MOST_GENERATORS, MOST_DEGREE = 48, 8, 24
 SIXTEENTHS, HALF = 16, 8
 
 
