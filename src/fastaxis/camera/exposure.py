@@ -123,7 +123,7 @@ class Exposure:
 
     def _mixed(self, weights: NDArray[np.float64]) -> NDArray[np.float64]:
         frames: NDArray[np.float64] = mixed(weights, self.stokes.reshape(4, -1))
-        return frames.reshape(len(weights), *self.stokes.shape[1:])
+        return np.asarray(frames.reshape(len(weights), *self.stokes.shape[1:]))
 
     def power(self, which: int | str | Setting | State) -> float:
         """Power on the sensor behind this setting [W]; ``which`` as in :meth:`frame`."""

@@ -71,9 +71,13 @@ class AxisLaw:
 
     def linear(self, maths: Maths, phi: Any = 0.0, x: Any = 0.0, y: Any = 0.0) -> Matrix:
         """The matrix in the basis (x, y); phi, x, y are counted from ``centre``."""
-        a, b = self.mean_and_difference(maths, x, y)
         twice = 2 * self.axis_angle(phi, x, y)
-        cosine, sine = b * maths.cos(twice), b * maths.sin(twice)
+        return self.with_axis(maths, maths.cos(twice), maths.sin(twice), x, y)
+
+    def with_axis(self, maths: Maths, cosine: Any, sine: Any, x: Any = 0.0, y: Any = 0.0) -> Matrix:
+        """The matrix in the basis (x, y), given cosine and sine of twice the angle of the axis."""
+        a, b = self.mean_and_difference(maths, x, y)
+        cosine, sine = b * cosine, b * sine
         return (a + cosine, sine), (sine, a - cosine)
 
     def angle_derivative(self, maths: Maths, phi: Any = 0.0) -> Matrix:

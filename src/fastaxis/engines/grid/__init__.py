@@ -35,9 +35,10 @@ def begun(branch: Branch) -> GridLight:
 def continued(light: GridLight, branch: Branch, first: int, end: int) -> GridLight:
     """Light before step ``first`` of a branch taken to before step ``end``; may use up the samples it is given."""
     sampling = cast("Sampling", branch.sampling)
+    last = max((i for i, step in enumerate(branch.steps) if isinstance(step.law, TravelLaw)), default=0)
     for index in range(first, end):
         step = branch.steps[index]
-        light = _past(light, as_matrix(step) or step.law, sampling.hop(index))
+        light = _past(light, as_matrix(step) or step.law, sampling.hop(index), last=index == last)
     return light
 
 
@@ -47,9 +48,9 @@ def finished(light: GridLight, branch: Branch) -> GridField:
     return GridField(light, check(light, names, cast("Sampling", branch.sampling).grid))
 
 
-def _past(light: GridLight, law: StepLaw, hop: Hop | None) -> GridLight:
+def _past(light: GridLight, law: StepLaw, hop: Hop | None, *, last: bool) -> GridLight:
     if isinstance(law, TravelLaw):
-        return _travelled(light, law, cast("Hop", hop))
+        return _travelled(light, law, cast("Hop", hop), last=last)
     if isinstance(law, ScalarLaw):
         return past_scalar(light, law)
     if isinstance(law, Flip):
@@ -59,6 +60,8 @@ def _past(light: GridLight, law: StepLaw, hop: Hop | None) -> GridLight:
     return past_axis(light, law) if isinstance(law, AxisLaw) else past_matrix(light, cast("JonesStep", law))
 
 
-def _travelled(light: GridLight, travel: TravelLaw, hop: Hop) -> GridLight:
-    travel_by = travel_scaled if hop.kernel == "scaled" else travel_single
-    return edge_watched(travel_by(light.referred(hop.curvature), travel))
+def _travelled(light: GridLight, travel: TravelLaw, hop: Hop, *, last: bool) -> GridLight:
+    """After travel; only behind the last one is it of use to know how much of the band is filled."""
+    if hop.kernel == "single":
+        return edge_watched(travel_single(light, travel, measured=last))
+    return edge_watched(travel_scaled(light.referred(hop.curvature), travel, measured=last))

@@ -11,8 +11,9 @@ import numpy as np
 from numpy.typing import NDArray
 
 from fastaxis.engines.field import Guard
+from fastaxis.engines.grid.collecting import Collected
 from fastaxis.engines.grid.light import GridLight
-from fastaxis.engines.grid.reading import Collected, GridField
+from fastaxis.engines.grid.reading import GridField
 from fastaxis.errors import SamplingError
 from fastaxis.light import Raster
 
@@ -43,7 +44,9 @@ class GridSum:
     @cached_property
     def whole(self) -> GridField:
         """The sum as sampled light."""
-        return GridField(_sum([field.light for field in self.fields], self.coefficients), self.guard)
+        light = _sum([field.light for field in self.fields], self.coefficients)
+        # Each field fills as many waves as it needs; how many the sum fills is found anew.
+        return GridField(replace(light, filled=None), self.guard)
 
     @property
     def power(self) -> float:
@@ -69,7 +72,7 @@ class GridSum:
     def stokes_on(self, raster: Raster) -> NDArray[np.float64]:
         """Watts per pixel of S0 .. S3, shape (4, ny, nx); each field is brought to the pixels once for all sums."""
         parts = [field.collected_by(raster) for field in self.fields]
-        if len({part.samples.shape[1:] for part in parts}) > 1:
+        if any((part.rows, part.columns) != (parts[0].rows, parts[0].columns) for part in parts):
             return self.whole.stokes_on(raster)
         return _sum(parts, self.coefficients).stokes()
 

@@ -7,10 +7,10 @@ from dataclasses import replace
 from typing import Any
 
 import numpy as np
-from numpy.typing import NDArray
 
 from fastaxis.engines.field import Guard
-from fastaxis.engines.grid.light import GridLight
+from fastaxis.engines.grid.light import GridLight, Samples
+from fastaxis.engines.grid.workers import strips
 from fastaxis.errors import SamplingError, SamplingWarning, caution
 from fastaxis.plan import Grid
 
@@ -21,6 +21,7 @@ QUIET = 0.99  # share of the light whose phase steps are looked at
 # A frame that holds one part in a thousand is what the slow tails of a hard edge put there in a good window; ten
 # times that would show in a frame. With 20 % the light has come round the edge.
 WARN, REFUSE = 1e-2, 0.2
+DIM = 1e-6  # of the brightest: where even all samples of a line together are no part of the last 1 %
 LINES = 128  # rows and columns looked at for phase steps: enough to meet a beam anywhere
 
 
@@ -28,14 +29,27 @@ def edge_watched(light: GridLight) -> GridLight:
     """The light with the power near the edge of its window noted, if that is the most so far."""
     if light.periodic:
         return light
-    samples, count = light.samples, light.count
-    inner = slice(math.ceil(count * FRAME / 2), count - math.ceil(count * FRAME / 2))
-    total = float(np.vdot(samples, samples).real)
+    count = light.count
+    margin = math.ceil(count * FRAME / 2)
+    total, frame = np.sum(strips(lambda strip: _powers(light.samples, strip, margin), count, count), axis=0)
     if total == 0:
         return light
-    middle = samples[:, inner, inner]
-    inside = float(np.sum(middle.real**2) + np.sum(middle.imag**2))
-    return replace(light, edge_power=max(light.edge_power, 1 - inside / total, 0.0))
+    return replace(light, edge_power=max(light.edge_power, float(frame / total)))
+
+
+def _powers(samples: Samples, strip: slice, margin: int) -> tuple[float, float]:
+    """Sums of the squares in some rows, and of those of them that lie in the margin."""
+    count, rows = samples.shape[-1], samples[:, strip]
+    total = _squares(rows)
+    low, high = (min(max(row, strip.start), strip.stop) - strip.start for row in (margin, count - margin))
+    between = rows[:, low:high]
+    frame = (rows[:, :low], rows[:, high:], between[:, :, :margin], between[:, :, count - margin :])
+    return total, sum(map(_squares, frame))
+
+
+def _squares(samples: Samples) -> float:
+    parts = samples.view(samples.real.dtype)
+    return float(np.einsum("kij,kij->", parts, parts))
 
 
 def phase_step(light: GridLight) -> float:
@@ -45,19 +59,21 @@ def phase_step(light: GridLight) -> float:
     common, so the jump by pi at a zero of the field, which no sampling removes, weighs next to nothing.
     """
     stride = max(light.count // LINES, 1)
-    steps, weights = [], []
+    products = []
     for part in light.samples:
-        for lines in (part[::stride], part[:, ::stride].T):
+        for lines in (part[::stride], part.T[::stride]):
             product = lines[:, 1:] * lines[:, :-1].conj()
-            steps.append(abs(np.angle(product)).ravel())
-            weights.append(abs(product).ravel())
-    return _quantile(np.concatenate(steps), np.concatenate(weights))
+            products.append(product.ravel())
+    return _quantile(np.concatenate(products))
 
 
-def _quantile(steps: NDArray[np.float64], weights: NDArray[np.float64]) -> float:
+def _quantile(products: Samples) -> float:
+    weights = abs(products)
+    seen = weights > DIM * weights.max()
+    weights, steps = weights[seen], abs(np.angle(products[seen]))
     order = np.argsort(steps)
     below = np.cumsum(weights[order])
-    return float(steps[order[np.searchsorted(below, QUIET * below[-1])]])
+    return float(steps[order[np.searchsorted(below, QUIET * below[-1])]]) if steps.size else 0.0
 
 
 def check(light: GridLight, names: tuple[str, ...], grid: Grid) -> Guard:

@@ -3,12 +3,17 @@
 from __future__ import annotations
 
 from dataclasses import dataclass, replace
-from typing import Any
+from typing import Any, TypeAlias
 
 import numpy as np
 from numpy.typing import NDArray
 
-__all__ = ["GridLight", "axis", "curve", "multiply_separable"]
+from fastaxis.engines.grid.workers import strips
+
+__all__ = ["GridLight", "Samples", "axis", "curve", "multiply_separable"]
+
+Samples: TypeAlias = NDArray[Any]
+"""Complex numbers of double or single precision."""
 
 
 @dataclass(frozen=True)
@@ -28,9 +33,10 @@ class GridLight:
     periodic : whether a plane wave fills the window to its edge.
     edge_power : largest share of the power met near the edge of the window.
     discarded : share of the power removed by band limits.
+    filled : waves along a side that hold the light, if known from the travel it comes from; None if not.
     """
 
-    samples: NDArray[np.complex128]
+    samples: Samples
     jones: NDArray[np.complex128] | None
     pitch: float
     curvature: float
@@ -38,6 +44,7 @@ class GridLight:
     periodic: bool = False
     edge_power: float = 0.0
     discarded: float = 0.0
+    filled: int | None = None
 
     @property
     def count(self) -> int:
@@ -83,7 +90,13 @@ def curve(x: NDArray[np.float64], curvature: float, wavelength: float) -> NDArra
     return np.asarray(np.exp(1j * np.pi * curvature / wavelength * x * x))
 
 
-def multiply_separable(samples: NDArray[np.complex128], factor: NDArray[Any]) -> None:
-    """Samples times factor(x) factor(y), in place; two passes over the samples and no plane of factors."""
-    samples *= factor[:, None]
-    samples *= factor[None, :]
+def multiply_separable(samples: Samples, across: NDArray[Any], down: NDArray[Any] | None = None) -> None:
+    """Samples times across(x) down(y), in place; ``down`` is ``across`` if left out. No plane of factors is made."""
+    kind = samples.dtype if across.dtype.kind == "c" else samples.real.dtype
+    columns = across.astype(kind, copy=False)
+    rows = columns if down is None else down.astype(kind, copy=False)
+
+    def multiply(strip: slice) -> None:
+        samples[:, strip] *= columns * rows[strip, None]
+
+    strips(multiply, *samples.shape[-2:])

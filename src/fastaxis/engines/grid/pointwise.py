@@ -8,13 +8,16 @@ from typing import Any
 import numpy as np
 from numpy.typing import NDArray
 
-from fastaxis.engines.grid.light import GridLight
+from fastaxis.engines.grid.light import GridLight, multiply_separable
+from fastaxis.engines.grid.workers import strips
 from fastaxis.laws import AxisLaw, Flip, ScalarLaw
 from fastaxis.maths import NUMBERS, Pattern
 from fastaxis.plan import JonesStep
 from fastaxis.plan.merge import split_lens
 
 __all__ = ["flipped", "past_axis", "past_matrix", "past_scalar"]
+
+Reals = NDArray[np.float64]
 
 # A matrix whose determinant is this small against its square norm passes one state only (1e-15: its rounding).
 RANK_ONE = 1e-15
@@ -27,28 +30,86 @@ def past_matrix(light: GridLight, law: JonesStep) -> GridLight:
         return replace(light, jones=matrix @ light.jones)
     left, strengths, right = np.linalg.svd(matrix)
     if strengths[1] <= RANK_ONE * strengths[0]:
-        samples = np.tensordot(right[:1], light.samples, axes=1)
+        samples = np.empty_like(light.samples[:1])
+        _mix(samples, light.samples, right[:1])
         return replace(light, samples=samples, jones=left[:, 0] * strengths[0])
-    return replace(light, samples=np.tensordot(matrix, light.samples, axes=1))
+    _mix(light.samples, light.samples, matrix)
+    return light
 
 
-def _places(light: GridLight, centre: tuple[float, float]) -> tuple[NDArray[np.float64], NDArray[np.float64]]:
+def _mix(out: NDArray[Any], samples: NDArray[Any], matrix: NDArray[np.complex128]) -> None:
+    """Components of ``out`` as sums of those of ``samples``, which may be the same array."""
+    matrix = matrix.astype(samples.dtype)
+
+    def mix(strip: slice) -> None:
+        ex, ey = samples[:, strip]
+        for place, part in enumerate([a * ex + b * ey for a, b in matrix]):
+            out[place, strip] = part
+
+    strips(mix, *samples.shape[-2:])
+
+
+def _places(light: GridLight, centre: tuple[float, float]) -> tuple[Reals, Reals]:
     return light.x[None, :] - centre[0], light.x[:, None] - centre[1]
+
+
+def _turns(x: Reals, y: Reals, times: float) -> NDArray[np.complex128]:
+    """exp(i times phi); for whole numbers a power of (x + iy)/r, which takes no angle of any place."""
+    if times != int(times):
+        return np.asarray(np.exp(1j * times * np.arctan2(y, x)))
+    ray = np.empty(np.broadcast_shapes(x.shape, y.shape), dtype=complex)
+    ray.real, ray.imag = x, y
+    radius = abs(ray)
+    # On the axis itself phi counts as 0.
+    ray[radius == 0], radius[radius == 0] = 1, 1
+    ray /= radius
+    power = _power(ray, int(abs(times)))
+    return power if times > 0 else power.conj()
+
+
+def _power(ray: NDArray[np.complex128], times: int) -> NDArray[np.complex128]:
+    if times <= 1:
+        return ray if times else np.ones_like(ray)
+    half = _power(ray, times // 2)
+    square = half * half
+    return square * ray if times % 2 else square
 
 
 def past_axis(light: GridLight, law: AxisLaw) -> GridLight:
     """After a patterned plate or polarizer; from here on (Ex, Ey) differ from place to place."""
     x, y = _places(light, law.centre)
-    phi = np.arctan2(y, x) if law.order else 0.0
-    if _patterned(law):
-        x, y = np.broadcast_arrays(x, y)
-    (a, b), (c, d) = law.linear(NUMBERS, phi, x, y)
+    samples = light.samples
     if light.jones is not None:
-        ex, ey = light.jones
-        samples = np.stack([np.broadcast_to(s, light.samples.shape[1:]) for s in (a * ex + b * ey, c * ex + d * ey)])
-        return replace(light, samples=samples * light.samples, jones=None)
-    ex, ey = light.samples
-    return replace(light, samples=np.stack([a * ex + b * ey, c * ex + d * ey]))
+        samples = np.empty((2, *samples.shape[1:]), dtype=samples.dtype)
+    if _patterned(law):
+        # A pattern may be any function of all places, so it is asked for the whole plane at once.
+        x, y = np.broadcast_arrays(x, y)
+        phi = np.arctan2(y, x) if law.order else 0.0
+        _apply(samples, light, law.linear(NUMBERS, phi, x, y))
+        return replace(light, samples=samples, jones=None, filled=None)
+    start = NUMBERS.phasor(2 * law.angle)
+
+    def turn(strip: slice) -> None:
+        twice = start * _turns(x, y[strip], 2 * law.order)
+        _apply(
+            samples[:, strip],
+            replace(light, samples=light.samples[:, strip]),
+            law.with_axis(NUMBERS, twice.real, twice.imag),
+        )
+
+    strips(turn, light.count, light.count)
+    return replace(light, samples=samples, jones=None, filled=None)
+
+
+def _apply(out: NDArray[Any], light: GridLight, matrix: Any) -> None:
+    (a, b), (c, d) = matrix
+    if light.jones is None:
+        ex, ey = light.samples
+        out[0], out[1] = a * ex + b * ey, c * ex + d * ey
+        return
+    jx, jy = light.jones
+    np.multiply(a * jx + b * jy, light.samples[0], out=out[0], casting="same_kind")
+    np.multiply(c * jx + d * jy, light.samples[0], out=out[1], casting="same_kind")
 
 
 def _patterned(law: AxisLaw) -> bool:
@@ -63,21 +124,33 @@ def past_scalar(light: GridLight, law: ScalarLaw) -> GridLight:
         return replace(light, curvature=light.curvature - law.vergence)
     x, y = _places(light, law.centre)
     if any(isinstance(v, Pattern) for v in law.transmission.values):
-        light.samples[...] *= law.transmission.value(NUMBERS, *np.broadcast_arrays(x, y))
+        _multiply(light, law.transmission.value(NUMBERS, *np.broadcast_arrays(x, y)))
     elif law.transmission.values != (1.0, 0.0):
-        light.samples[...] *= law.transmission.value(NUMBERS)
+        _multiply(light, law.transmission.value(NUMBERS))
+    if law.tilt != (0.0, 0.0):
+        across, down = (
+            np.exp(2j * np.pi / light.wavelength * tilt * place.ravel())
+            for place, tilt in zip((x, y), law.tilt, strict=True)
+        )
+        multiply_separable(light.samples, across, down)
+    if law.charge or law.stop is not None:
+        strips(lambda strip: _shape(light.samples[:, strip], law, (x, y[strip]), light.pitch), light.count, light.count)
+    return replace(light, periodic=light.periodic and law.stop is None, filled=None)
+
+
+def _multiply(light: GridLight, factor: Any) -> None:
+    np.multiply(light.samples, factor, out=light.samples, casting="same_kind")
+
+
+def _shape(samples: NDArray[Any], law: ScalarLaw, places: tuple[Reals, Reals], pitch: float) -> None:
+    """Some rows behind a spiral and a stop, in place."""
     if law.charge:
-        light.samples[...] *= NUMBERS.phasor(law.charge * np.arctan2(y, x))
-    for place, tilt in zip((x, y), law.tilt, strict=True):
-        if tilt:
-            light.samples[...] *= np.exp(2j * np.pi / light.wavelength * tilt * place)
+        samples *= _turns(*places, law.charge).astype(samples.dtype, copy=False)
     if law.stop is not None:
-        light.samples[...] *= _coverage(law.stop.depth(x, y), light.pitch)
-        return replace(light, periodic=False)
-    return light
+        samples *= _coverage(law.stop.depth(*places), pitch).astype(samples.real.dtype, copy=False)
 
 
-def _coverage(depth: Any, pitch: float) -> NDArray[np.float64]:
+def _coverage(depth: Any, pitch: float) -> Reals:
     """Share of each sample's square inside the clear area, to first order in the edge's distance from its centre.
 
     Cut to whole samples the edge is a stair whose area is wrong by a random half sample per step; the share keeps

@@ -2,51 +2,31 @@
 
 from __future__ import annotations
 
+import math
 from dataclasses import dataclass, field
 
 import numpy as np
 from numpy.typing import NDArray
+from scipy import fft
 
 from fastaxis.engines.field import Guard
-from fastaxis.engines.grid.finer import finer
-from fastaxis.engines.grid.interpolant import integral_matrix, value_matrix
-from fastaxis.engines.grid.light import GridLight, curve
+from fastaxis.engines.grid.collecting import Collected
+from fastaxis.engines.grid.filled import filled
+from fastaxis.engines.grid.interpolant import value_matrix
+from fastaxis.engines.grid.kernel import blocks, reach_for
+from fastaxis.engines.grid.light import GridLight, Samples, curve
 from fastaxis.engines.grid.nearby import nearby
+from fastaxis.engines.grid.transforms import forward
 from fastaxis.light import Raster, stokes
 
-__all__ = ["Collected", "GridField"]
+__all__ = ["GridField"]
 
 Reals = NDArray[np.float64]
 Complexes = NDArray[np.complex128]
 
 
-@dataclass(frozen=True, eq=False)
-class Collected:
-    """Light on samples that hold its irradiance, and what the pixels of a raster collect of it.
-
-    Parameters
-    ----------
-    samples : (1, m, n) times a Jones vector, or (2, m, n) as (Ex, Ey) [sqrt(W)/m].
-    jones : (2,) of a uniformly polarized field, else None.
-    left, right : matrices from irradiance to rows and columns of pixels [m].
-    """
-
-    samples: Complexes
-    jones: Complexes | None
-    left: Reals
-    right: Reals
-
-    def stokes(self) -> Reals:
-        """Watts per pixel of S0 .. S3, shape (4, ny, nx)."""
-        left, right = self.left, self.right
-        if self.jones is not None:
-            states: Reals = stokes(self.jones)
-            scalar = self.samples[0]
-            return np.multiply.outer(states, _sandwich(left, scalar.real**2 + scalar.imag**2, right))
-        ex, ey = self.samples
-        px, py, cross = ex.real**2 + ex.imag**2, ey.real**2 + ey.imag**2, 2 * ex.conj() * ey
-        images = (_sandwich(left, image, right) for image in (px + py, px - py, cross.real, -cross.imag))
-        return np.stack(list(images))
+SPARE = 1.25  # density of samples over what irradiance needs, at least: room for a kernel to fall off
+MOST_SPARE = 5.0  # beyond it the kernel gets no shorter to speak of
 
 
 @dataclass(frozen=True)
@@ -109,22 +89,27 @@ class GridField:
 
     def _collected_by(self, raster: Raster) -> Collected:
         light = self.light
-        rows, columns = (nearby(places, raster.pitch, light.count, light.pitch) for places in (raster.y, raster.x))
+        waves = light.filled or filled(forward(light.samples.copy()), fft.fftfreq(light.count, 1 / light.count))
+        parts = math.ceil(SPARE * 2 * min(waves, light.count) / light.count)
+        rows, columns = (
+            nearby(places, raster.pitch, light.count, light.pitch, parts) for places in (raster.y, raster.x)
+        )
         if rows and columns:
-            down, across = rows.values(), columns.values().T
-            samples = np.stack([_complex_sandwich(down, part, across) for part in light.samples])
-            return Collected(samples, light.jones, rows.integrals(), columns.integrals().T)
-        samples, pitch = finer(light.samples, light.pitch)
-        edges = (_edges(places, raster.pitch) for places in (raster.y, raster.x))
-        left, right = (integral_matrix(edge, samples.shape[-1], pitch) for edge in edges)
-        return Collected(samples, light.jones, left, right.T)
+            left, right = rows.values(), columns.values().T
+            samples = np.stack([_complex_sandwich(left, part, right) for part in light.samples])
+            return Collected(samples.astype(light.samples.dtype), light.jones, 1, rows.blocks(), columns.blocks())
+        reach = reach_for(max(min(parts * light.count / (2 * waves), MOST_SPARE), SPARE))
+        down, across = (
+            blocks(
+                count=light.count, pitch=light.pitch, parts=parts, reach=reach,
+                pixels=pixels, pixel=raster.pitch, middle=middle,
+            )
+            for pixels, middle in zip(raster.shape, reversed(raster.centre), strict=True)
+        )  # fmt: skip
+        return Collected(light.samples, light.jones, parts, down, across)
 
 
-def _edges(centres: Reals, pitch: float) -> Reals:
-    return np.append(centres - pitch / 2, centres[-1] + pitch / 2)
-
-
-def _complex_sandwich(left: Reals, middle: Complexes, right: Reals) -> Complexes:
+def _complex_sandwich(left: Reals, middle: Samples, right: Reals) -> Complexes:
     """Two real products: half the work of one with real matrices made complex."""
     real, imaginary = (_sandwich(left, np.ascontiguousarray(part), right) for part in (middle.real, middle.imag))
     values: Complexes = real + 1j * imaginary

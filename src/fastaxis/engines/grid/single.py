@@ -6,6 +6,7 @@ from dataclasses import replace
 
 import numpy as np
 
+from fastaxis.engines.grid.filled import filled
 from fastaxis.engines.grid.light import GridLight, curve, multiply_separable
 from fastaxis.engines.grid.transforms import forward
 from fastaxis.laws import TravelLaw
@@ -13,7 +14,7 @@ from fastaxis.laws import TravelLaw
 __all__ = ["travel_single"]
 
 
-def travel_single(light: GridLight, travel: TravelLaw) -> GridLight:
+def travel_single(light: GridLight, travel: TravelLaw, *, measured: bool = False) -> GridLight:
     """After an ABCD section with B not 0, on samples of pitch wavelength |B| / (n pitch).
 
     The Collins integral as it stands, with A' = A + B K for samples * exp(i k K r^2/2):
@@ -22,6 +23,9 @@ def travel_single(light: GridLight, travel: TravelLaw) -> GridLight:
 
     Samples of both planes are symmetric about the axis, half a pitch off it: with c = (n - 1)/2 the kernel
     exp(-2 pi i (j - c)(m - c)/n) is a plain transform between two factors exp(2 pi i c j/n).
+
+    Near and far plane are each other's spectrum: with ``measured``, how far the light reaches out here tells how much
+    of the band it fills there.
     """
     count, pitch, wavelength, b = light.count, light.pitch, light.wavelength, travel.b
     middle = (count - 1) / 2
@@ -30,12 +34,13 @@ def travel_single(light: GridLight, travel: TravelLaw) -> GridLight:
     shift = np.exp(2j * np.pi * turns)
     chirp = curve(light.x, (travel.a + b * light.curvature) / b, wavelength) * shift
     samples = light.samples
+    waves = filled(samples, np.arange(count) - middle) if measured else None
     multiply_separable(samples, chirp)
     out = forward(samples)
     corner = np.exp(-2j * np.pi * np.mod(middle * middle, count) / count)
     factor = shift * corner
-    out *= (-1j * pitch**2 / (wavelength * b)) * factor[:, None]
-    out *= factor[None, :]
+    multiply_separable(out, factor, (-1j * pitch**2 / (wavelength * b)) * factor)
     if b < 0:
         out = np.ascontiguousarray(out[:, ::-1, ::-1])
-    return replace(light, samples=out, pitch=wavelength * abs(b) / (count * pitch), curvature=travel.d / b)
+    pitch = wavelength * abs(b) / (count * pitch)
+    return replace(light, samples=out, pitch=pitch, curvature=travel.d / b, filled=waves)

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from collections.abc import Iterable, Sequence
 from typing import Any
 
 import numpy as np
@@ -9,7 +10,8 @@ from numpy.typing import NDArray
 from scipy.ndimage import binary_dilation
 from scipy.special import erf
 
-from fastaxis.engines.grid.light import GridLight, axis, curve, multiply_separable
+from fastaxis.engines.grid.light import GridLight, Samples, axis, curve, multiply_separable
+from fastaxis.engines.grid.workers import strips
 from fastaxis.light import SampledMode
 from fastaxis.plan import Branch
 from fastaxis.plan.sampling import Sampling
@@ -26,12 +28,12 @@ def start(branch: Branch, sampling: Sampling) -> GridLight:
     x = axis(count, pitch)
     terms, scale = branch.beam.terms, branch.beam.scale(branch.wavelength) * np.sqrt(branch.power)
     curvature = sampling.planes[0].spread.curvature
-    shapes = [scale * term.number * _shape(term.mode, x, pitch, branch.wavelength) for term in terms]
+    shapes = (_shape(term.mode, x, pitch, branch.wavelength) for term in terms)
+    numbers = [scale * term.number for term in terms]
     if branch.beam.state is not None:
-        samples, jones = np.sum(shapes, axis=0)[None], branch.beam.state.jones
+        samples, jones = _sum(shapes, [np.array([number]) for number in numbers]), branch.beam.state.jones
     else:
-        samples = sum(t.state.jones[:, None, None] * shape for t, shape in zip(terms, shapes, strict=True))
-        jones = None
+        samples, jones = _sum(shapes, [number * t.state.jones for number, t in zip(numbers, terms, strict=True)]), None
     if curvature:
         multiply_separable(samples, curve(x, -curvature, branch.wavelength))
     infinite = any(term.mode.infinite for term in terms)
@@ -40,9 +42,28 @@ def start(branch: Branch, sampling: Sampling) -> GridLight:
     return GridLight(samples, jones, pitch, curvature, branch.wavelength, periodic=infinite and not sampling.taper)
 
 
+def _sum(shapes: Iterable[Samples], vectors: Sequence[NDArray[np.complex128]]) -> Samples:
+    """The sum of shapes times vectors, (components, n, n), one shape at a time."""
+    total: Samples | None = None
+    for shape, vector in zip(shapes, vectors, strict=True):
+        if total is not None:
+            for part, number in zip(total, vector, strict=True):
+                np.add(part, number * shape, out=part)
+        elif vector.size == 1:
+            total = np.multiply(shape, vector[0], out=shape)[None]
+        else:
+            total = vector[:, None, None] * shape
+    assert total is not None
+    return total
+
+
 def _shape(mode: Any, x: NDArray[np.float64], pitch: float, wavelength: float) -> NDArray[np.complex128]:
-    values = mode.amplitude(x[None, :], x[:, None], wavelength)
-    shape = np.array(np.broadcast_to(values, (x.size, x.size)), dtype=complex)
+    shape = np.empty((x.size, x.size), dtype=complex)
+
+    def fill(strip: slice) -> None:
+        shape[strip] = mode.amplitude(x[None, :], x[strip, None], wavelength)
+
+    strips(fill, *shape.shape)
     if mode.hard:
         _soften(shape, mode, x, pitch, wavelength)
     if mode.hard or isinstance(mode, SampledMode):

@@ -2,22 +2,25 @@
 
 from __future__ import annotations
 
-import os
+from typing import Any
 
-import numpy as np
 from numpy.typing import NDArray
 from scipy import fft
 
+from fastaxis.engines.grid.workers import WORKERS
+
 __all__ = ["forward", "inverse"]
 
-WORKERS = os.cpu_count() or 1
+Samples = NDArray[Any]
 
 
-def forward(samples: NDArray[np.complex128]) -> NDArray[np.complex128]:
+def forward(samples: Samples) -> Samples:
     """Two-dimensional transform of each component; may reuse the memory of its input."""
-    return fft.fft2(samples, axes=(-2, -1), overwrite_x=True, workers=WORKERS)
+    transformed: Samples = fft.fft2(samples, axes=(-2, -1), overwrite_x=True, workers=WORKERS)
+    return transformed
 
 
-def inverse(spectrum: NDArray[np.complex128]) -> NDArray[np.complex128]:
+def inverse(spectrum: Samples) -> Samples:
     """Inverse of :func:`forward`; may reuse the memory of its input."""
-    return fft.ifft2(spectrum, axes=(-2, -1), overwrite_x=True, workers=WORKERS)
+    transformed: Samples = fft.ifft2(spectrum, axes=(-2, -1), overwrite_x=True, workers=WORKERS)
+    return transformed

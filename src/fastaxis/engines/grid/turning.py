@@ -6,11 +6,10 @@ import math
 from dataclasses import replace
 
 import numpy as np
-from numpy.typing import NDArray
 from scipy import fft
 
-from fastaxis.engines.grid.light import GridLight
-from fastaxis.engines.grid.transforms import WORKERS
+from fastaxis.engines.grid.light import GridLight, Samples
+from fastaxis.engines.grid.workers import WORKERS
 from fastaxis.laws import Turn
 
 __all__ = ["turned"]
@@ -39,7 +38,7 @@ def turned(light: GridLight, law: Turn) -> GridLight:
     return replace(light, samples=samples)
 
 
-def _sheared(samples: NDArray[np.complex128], slope: float, axis: int) -> NDArray[np.complex128]:
+def _sheared(samples: Samples, slope: float, axis: int) -> Samples:
     """f(x + slope y, y) along axis 2, or f(x, y + slope x) along axis 1, of the curve through the samples."""
     count = samples.shape[-1]
     places = np.arange(count) - (count - 1) / 2
@@ -48,6 +47,6 @@ def _sheared(samples: NDArray[np.complex128], slope: float, axis: int) -> NDArra
     # The highest wave is shared by both signs: its shift is a cosine.
     phases[:, count // 2] = phases[:, count // 2].real
     spectrum = fft.fft(samples, axis=axis, workers=WORKERS)
-    spectrum *= phases if axis == 2 else phases.T
-    shifted: NDArray[np.complex128] = fft.ifft(spectrum, axis=axis, overwrite_x=True, workers=WORKERS)
+    spectrum *= (phases if axis == 2 else phases.T).astype(samples.dtype, copy=False)
+    shifted: Samples = fft.ifft(spectrum, axis=axis, overwrite_x=True, workers=WORKERS)
     return shifted

@@ -1,0 +1,47 @@
+"""How much of the band of its samples a field fills."""
+
+from __future__ import annotations
+
+from typing import Any
+
+import numpy as np
+from numpy.typing import NDArray
+
+from fastaxis.engines.grid.workers import strips
+
+__all__ = ["filled", "marginals"]
+
+Reals = NDArray[np.float64]
+Complexes = NDArray[np.complexfloating[Any, Any]]
+
+EMPTY = 1e-25  # share of the power; 3e-13 of the field, a thousand roundings
+
+
+def marginals(samples: Complexes) -> tuple[Reals, Reals]:
+    """Squares of all components summed along rows and along columns: one number a row, one a column."""
+    rows, columns = samples.shape[-2:]
+    down = np.zeros(rows)
+
+    def add(strip: slice) -> Reals:
+        real = samples[:, strip].view(samples.real.dtype)
+        power = np.einsum("kij,kij->ij", real, real).reshape(-1, columns, 2).sum(axis=2)
+        down[strip] = power.sum(axis=1)
+        return np.asarray(power.sum(axis=0), dtype=float)
+
+    across = sum(strips(add, rows, columns))
+    return down, np.asarray(across)
+
+
+def filled(samples: Complexes, order: NDArray[np.floating[Any]]) -> int:
+    """Waves along a side, from -m to +m, that hold all but rounding of the power.
+
+    Parameters
+    ----------
+    samples : (components, n, n), one for each wave.
+    order : of the waves along either side, in cycles a window.
+    """
+    down, across = marginals(samples)
+    by_order = np.bincount(np.ceil(abs(order)).astype(int), down + across)
+    beyond = np.cumsum(by_order[::-1])[::-1]
+    needed = np.nonzero(beyond > EMPTY * beyond[0])[0]
+    return 2 * (int(needed[-1]) + 1) if needed.size else 2

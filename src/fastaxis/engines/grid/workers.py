@@ -1,0 +1,35 @@
+"""Work on a plane handed out to threads in strips of rows that stay in a core's cache."""
+
+from __future__ import annotations
+
+import os
+from collections.abc import Callable, Iterable
+from concurrent.futures import ThreadPoolExecutor
+from functools import cache
+from typing import TypeVar
+
+__all__ = ["WORKERS", "strips", "together"]
+
+WORKERS = os.cpu_count() or 1
+STRIP = 1 << 16  # samples in a strip: 1 MB of complex numbers
+ALONE = 1 << 18  # samples below which handing out the work takes longer than it saves
+
+Job = TypeVar("Job")
+Done = TypeVar("Done")
+
+
+@cache
+def _pool() -> ThreadPoolExecutor:
+    return ThreadPoolExecutor(WORKERS)
+
+
+def together(work: Callable[[Job], Done], jobs: Iterable[Job]) -> list[Done]:
+    """The results of all jobs, in order; jobs must not hand out work themselves."""
+    return list(_pool().map(work, jobs))
+
+
+def strips(work: Callable[[slice], Done], rows: int, columns: int) -> list[Done]:
+    """The results of some work on every strip of rows of a plane, in order."""
+    height = max(STRIP // columns, 1)
+    jobs = [slice(start, min(start + height, rows)) for start in range(0, rows, height)]
+    return [work(job) for job in jobs] if rows * columns < ALONE else together(work, jobs)
