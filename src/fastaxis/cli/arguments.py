@@ -58,12 +58,19 @@ def _view(text: str) -> View:
         raise ArgumentTypeError(f"a view is {' or '.join(view.value for view in View)}, not '{text}'") from None
 
 
-def _command(commands: Any, name: str, does: str) -> ArgumentParser:
+def _of_bench(commands: Any, name: str, does: str) -> ArgumentParser:
+    """A command on a whole bench."""
     command: ArgumentParser = commands.add_parser(name, help=does, description=does, epilog=_EXIT_CODES)
     command.add_argument("bench", type=_bench, metavar="BENCH.py", help="Python file that defines train")
-    command.add_argument("--camera", metavar="NAME", help="camera, detector or port; all cameras if left out")
     command.add_argument("--symbol", action="append", default=[], type=_typed(assignment), metavar="LETTER=VALUE",
                          help="value of a letter in the bench, e.g. theta=22.5deg; may be repeated")  # fmt: skip
+    return command
+
+
+def _command(commands: Any, name: str, does: str) -> ArgumentParser:
+    """A command on the cameras of a bench."""
+    command = _of_bench(commands, name, does)
+    command.add_argument("--camera", metavar="NAME", help="camera, detector or port; all cameras if left out")
     command.add_argument("--view", type=_view, default=View.RECEIVER, metavar="receiver|source",
                          help="whose names R and L are (receiver: R is clockwise facing the source)")  # fmt: skip
     return command
@@ -94,7 +101,7 @@ def parser() -> ArgumentParser:
     explain = _command(commands, "explain", "The parts, the plan, the drawing, open ports and cautions.")
     explain.add_argument("--cards", action="store_true", help="also the card of every part: matrix, H, D, R, losses")
     _writes_figures(explain)
-    inspect = _command(commands, "inspect", "What may be wrong with a bench before it is built; laser cautions.")
+    inspect = _of_bench(commands, "inspect", "What may be wrong with a bench before it is built; laser cautions.")
     inspect.add_argument("--json", action="store_true", help="write the findings as JSON")
     inspect.add_argument("--brief", action="store_true", help="leave out notes")
     inspect.add_argument("--out", metavar="DIR", help="folder for inspection.txt, .json, .pdf and .png")

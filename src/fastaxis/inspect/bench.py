@@ -9,6 +9,7 @@ from functools import cached_property
 from typing import Any
 
 from fastaxis.elements.base import Element
+from fastaxis.errors import FastaxisError
 from fastaxis.inspect.strands import Strand, total
 from fastaxis.laws import Flip, ScalarLaw, TravelLaw
 
@@ -106,6 +107,7 @@ class Bench:
     ledger : exact power [W] at the ports that light leaves, where it could be worked out.
     whole : whether all paths were followed to their end.
     loops : parts at which light on its way round comes back to where it was; followed once round.
+    obstacle : why the ledger is empty, if it is.
     """
 
     train: Any
@@ -113,6 +115,7 @@ class Bench:
     ledger: Mapping[tuple[str, str], float] = field(default_factory=dict)
     whole: bool = True
     loops: tuple[str, ...] = ()
+    obstacle: FastaxisError | None = None
 
     @property
     def wavelength(self) -> float:

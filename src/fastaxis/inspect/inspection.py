@@ -12,6 +12,7 @@ from typing import Any
 
 from fastaxis.conventions import stamp
 from fastaxis.errors import FileFormatError
+from fastaxis.files import write_whole
 from fastaxis.inspect.finding import Finding, Severity
 from fastaxis.loader import late
 
@@ -121,8 +122,8 @@ class Inspection:
         path = Path(path)
         written = {".json": self.json, ".txt": self.text}
         if path.suffix in written:
-            path.write_text(written[path.suffix]() + "\n", encoding="utf-8")
-            return (path,)
+            text = f"{written[path.suffix]()}\n".encode()
+            return (write_whole(path, lambda file: file.write(text)),)
         if path.suffix in (".pdf", ".png"):
             pages: tuple[Path, ...] = late("report.paper", "save_pages")(self.figures(), path)
             return pages

@@ -17,6 +17,7 @@ from fastaxis.conventions import stamp
 from fastaxis.elements.camera import Camera
 from fastaxis.elements.free_space import FreeSpace
 from fastaxis.errors import FastaxisError, FileFormatError, ParameterError
+from fastaxis.files import write_whole
 from fastaxis.inspect.bench import Bench, Visit
 from fastaxis.inspect.laser_safety import DEFERS, laser_cautions
 from fastaxis.inspect.mount import Mount
@@ -151,8 +152,8 @@ class SetSheet:
         path = Path(path)
         written = {".csv": self.csv, ".txt": self.text}
         if path.suffix in written:
-            path.write_text(written[path.suffix](), encoding="utf-8")
-            return (path,)
+            text = written[path.suffix]().encode()
+            return (write_whole(path, lambda file: file.write(text)),)
         if path.suffix in (".pdf", ".png"):
             pages: tuple[Path, ...] = late("report.paper", "save_pages")(self.figures(), path)
             return pages

@@ -30,17 +30,18 @@ def survey(train: Any) -> Bench:
             strand for part in source.components for strand in start(part, float(source.power), float(train.wavelength))
         )
         _Follower(train, name, visits, loops).follow((name, laser.exit or "out", "out"), strands, None, 0.0)
-    return Bench(train, tuple(visits[:MOST]), _ledger(train), len(visits) <= MOST, tuple(dict.fromkeys(loops)))
+    ledger, obstacle = _ledger(train)
+    return Bench(train, tuple(visits[:MOST]), ledger, len(visits) <= MOST, tuple(dict.fromkeys(loops)), obstacle)
 
 
-def _ledger(train: Any) -> dict[tuple[str, str], float]:
-    """Exact watts at the ports; empty where light cannot be sampled or paths meet that cannot be joined."""
+def _ledger(train: Any) -> tuple[dict[tuple[str, str], float], FastaxisError | None]:
+    """Exact watts at the ports; none, and why, where light cannot be sampled or paths cannot be joined."""
     with warnings.catch_warnings():
         warnings.simplefilter("ignore")  # the sampling check tells of them, camera by camera
         try:
-            return powers(train)
-        except FastaxisError:
-            return {}
+            return powers(train), None
+        except FastaxisError as error:
+            return {}, error
 
 
 @dataclass

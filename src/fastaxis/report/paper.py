@@ -4,8 +4,9 @@ from __future__ import annotations
 
 import textwrap
 from collections.abc import Sequence
+from functools import partial
 from pathlib import Path
-from typing import Any
+from typing import IO, Any
 
 from matplotlib.axes import Axes
 from matplotlib.backends.backend_agg import FigureCanvasAgg
@@ -13,6 +14,7 @@ from matplotlib.backends.backend_pdf import PdfPages
 from matplotlib.figure import Figure
 
 from fastaxis.conventions import stamp
+from fastaxis.files import write_whole
 from fastaxis.report.style import FOOT_SIZE, INK, PAPER, SOFT, rules
 
 __all__ = ["A4", "MARGIN", "Sheet", "blank", "number_pages", "save_pages"]
@@ -90,15 +92,22 @@ def number_pages(sheets: Sequence[Sheet], title: str) -> tuple[Figure, ...]:
 def save_pages(figures: Sequence[Figure], path: Path) -> tuple[Path, ...]:
     """Write pages as one PDF, or as a PNG each ("sheet-1.png", "sheet-2.png")."""
     path.parent.mkdir(parents=True, exist_ok=True)
+    if path.suffix == ".pdf":
+        return (write_whole(path, partial(_write_pdf, figures)),)
+    return tuple(
+        write_whole(path.with_name(f"{path.stem}-{number}.png"), partial(_write_png, figure))
+        for number, figure in enumerate(figures, start=1)
+    )
+
+
+def _write_pdf(figures: Sequence[Figure], file: IO[bytes]) -> None:
+    # Without a date the same bench writes the same bytes.
+    metadata = {"Creator": "fastaxis", "Subject": stamp(), "CreationDate": None}
+    with rules(), PdfPages(file, metadata=metadata) as pdf:
+        for figure in figures:
+            pdf.savefig(figure)
+
+
+def _write_png(figure: Figure, file: IO[bytes]) -> None:
     with rules():
-        if path.suffix == ".pdf":
-            # Without a date the same bench writes the same bytes.
-            metadata = {"Creator": "fastaxis", "Subject": stamp(), "CreationDate": None}
-            with PdfPages(path, metadata=metadata) as pdf:
-                for figure in figures:
-                    pdf.savefig(figure)
-            return (path,)
-        pages = [path.with_name(f"{path.stem}-{number}.png") for number in range(1, len(figures) + 1)]
-        for figure, page in zip(figures, pages, strict=True):
-            figure.savefig(page, dpi=110, metadata={"Software": "fastaxis", "Description": stamp()})
-    return tuple(pages)
+        figure.savefig(file, format="png", dpi=110, metadata={"Software": "fastaxis", "Description": stamp()})

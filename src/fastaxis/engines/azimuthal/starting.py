@@ -12,6 +12,7 @@ from fastaxis.engines.azimuthal.applying import TO_CIRCULAR
 from fastaxis.engines.azimuthal.harmonics import LEFT, RIGHT, Harmonics
 from fastaxis.engines.azimuthal.panels import ORDER, Complexes, Profile, Reals
 from fastaxis.engines.azimuthal.resolving import Settings, extended, resolved
+from fastaxis.errors import SamplingError
 from fastaxis.laws import Annulus, TravelLaw
 from fastaxis.plan import Branch, JonesStep
 from fastaxis.plan.steps import Steps
@@ -33,7 +34,12 @@ def started(branch: Branch, settings: Settings) -> tuple[Harmonics, Steps]:
 
 
 def started_at_stop(branch: Branch) -> tuple[Harmonics, Steps]:
-    """A plane wave through an ABCD section is (1/a) exp(i k c r^2/2a), cut off by the first hole behind it."""
+    """A plane wave through an ABCD section is (1/a) exp(i k c r^2/2a), cut off by the first hole behind it.
+
+    Raises
+    ------
+    SamplingError : the hole stands where the plane wave comes to its focus.
+    """
     first = next(i for i, step in enumerate(branch.steps) if getattr(step.law, "stop", None) is not None)
     rim = _rim(branch.steps[first].law)
     level = [term.number * complex(term.mode.radial(0.0, branch.wavelength)) for term in branch.beam.terms]
@@ -45,6 +51,12 @@ def started_at_stop(branch: Branch) -> tuple[Harmonics, Steps]:
             section = section.then(step.law)
         elif isinstance(step.law, JonesStep):
             jones = np.array(step.law.matrix) @ jones
+    if section.a == 0:
+        raise SamplingError(
+            "a plane wave has no finite focus; a stop before it gives it one",
+            got=f"plane wave at {', '.join(branch.steps[first].names)}",
+            fix='fa.Aperture(radius=2*mm, name="stop")',
+        )
     hands = TO_CIRCULAR @ jones / section.a
     kept = [hand for hand in (LEFT, RIGHT) if abs(hands[hand]) > 4 * np.finfo(float).eps * abs(hands).max()]
     values = np.ones((1, 1, ORDER)) * hands[kept, np.newaxis, np.newaxis]

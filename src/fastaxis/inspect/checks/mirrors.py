@@ -11,7 +11,7 @@ from fastaxis.inspect.bench import Bench, Visit
 from fastaxis.inspect.finding import Finding, Severity
 from fastaxis.inspect.strands import state_in_words, total
 from fastaxis.inspect.words import percent
-from fastaxis.laws import Flip
+from fastaxis.laws import Flip, Turn
 
 __all__ = ["mirrors", "wrong_share"]
 
@@ -22,7 +22,9 @@ def mirrors(bench: Bench) -> Iterator[Finding]:
         # A polarizing splitter is there to change the state.
         if visit.patterned or isinstance(visit.element, PolarizingBeamSplitter) or not bench.lit(visit):
             continue
-        if sum(isinstance(law, Flip) for law in visit.laws) % 2 == 0:
+        # So is a prism that turns the picture.
+        turning = any(isinstance(law, Turn) for law in visit.laws)
+        if turning or sum(isinstance(law, Flip) for law in visit.laws) % 2 == 0:
             continue
         lost = wrong_share(visit)
         if lost > 1e-3:

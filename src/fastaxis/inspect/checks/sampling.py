@@ -15,7 +15,10 @@ __all__ = ["sampling"]
 
 
 def sampling(bench: Bench) -> Iterator[Finding]:
-    """The plan of each lit camera, with its warnings."""
+    """The plan of each lit camera, with its warnings, and why powers are estimates where they are."""
+    if bench.obstacle is not None:
+        name = bench.train.name
+        yield from_message(bench.obstacle, severity=Severity.MEDIUM, check="estimated powers", element=name)
     for name in dict.fromkeys(visit.name for visit in bench.of_kind(Camera)):
         yield from _planned(bench.train, name)
 

@@ -1,0 +1,142 @@
+"""Checks where they hold back, and where a question has no answer."""
+
+import math
+
+import numpy as np
+import pytest
+
+import fastaxis as fa
+from fastaxis.inspect.checks.isolators import backward_leak
+from fastaxis.inspect.checks.planes import waist_beyond
+from fastaxis.inspect.checks.polarizers import passing
+from fastaxis.inspect.strands import state_in_words
+from fastaxis.inspect.surveying import survey
+from fastaxis.units import deg, mm, nm, um
+
+METER = fa.Detector(name="meter")
+CAMERA = fa.Camera(pixel=10 * um, shape=(640, 640), name="cam")
+
+
+def checks(train, check):
+    return [f for f in train.inspect() if f.check == check]
+
+
+def test_unpolarized_light_on_a_polarizer_is_a_note(bench_of):
+    (found,) = checks(bench_of(fa.Polarizer(axis=10 * deg, name="pol"), METER, state=fa.UNPOLARIZED), "polarizer")
+    assert found.severity.value == "note"
+    assert "unpolarized light meets" in found.got
+
+
+def test_a_patterned_beam_on_a_polarizer_is_no_finding(bench_of):
+    train = bench_of(fa.QPlate(q=0.5, name="qp"), fa.Polarizer(axis=90 * deg, name="pol"), CAMERA)
+    assert not checks(train, "polarizer")
+    assert not checks(train, "idle plate")
+
+
+def test_a_tuned_quarter_wave_q_plate_is_a_note(bench_of):
+    (found,) = checks(bench_of(fa.QPlate(q=0.5, retardance=90 * deg, name="qp"), CAMERA), "unconverted light")
+    assert found.severity.value == "note"
+    assert "50 % unconverted" in found.got
+
+
+def test_a_polarizer_met_from_behind_is_turned_the_right_way(bench_of):
+    train = bench_of(
+        fa.BeamSplitter(name="split"), fa.Polarizer(axis=20 * deg, name="pol"), fa.Mirror(name="end"), state=fa.D
+    )
+    train.along("end", "pol.back", "split.transmitted").along("split.reflected", fa.BeamDump(name="dump"))
+    train.along("split.side", METER)
+    first = [v for v in survey(train).visits if v.name == "pol"]
+    assert passing(first[0]) == pytest.approx(math.cos(25 * deg) ** 2)
+    # What passed comes back along the axis, mirrored and met from behind: all of it passes again.
+    assert passing(first[1]) == pytest.approx(1)
+
+
+@pytest.mark.parametrize("angle", [45, 40, 30, 0])
+def test_backward_leak_of_an_isolator_is_cos_squared_of_twice_the_angle(bench_of, angle):
+    train = bench_of(
+        fa.Polarizer(axis=10 * deg, name="in"),
+        fa.FaradayRotator(angle=angle * deg, name="rotator"),
+        fa.Polarizer(axis=(10 + angle) * deg, name="out"),
+        METER,
+    )
+    trio = survey(train).visits[:3]
+    assert backward_leak(trio, 532 * nm) == pytest.approx(math.cos(2 * angle * deg) ** 2, abs=1e-15)
+
+
+@pytest.mark.parametrize("ahead", [-40 * mm, 0.0, 25 * mm])
+def test_the_distance_to_a_waist(bench_of, ahead):
+    laser = fa.Laser(waist=0.1 * mm, waist_at=ahead, name="laser")
+    train = fa.Train(wavelength=532 * nm).along(laser, METER)
+    found, rayleigh = waist_beyond(survey(train).visits[0])
+    assert found == pytest.approx(ahead, abs=1e-12)
+    assert rayleigh == pytest.approx(math.pi * (0.1 * mm) ** 2 / (532 * nm))
+
+
+def test_a_laser_without_a_bench_gets_its_caution():
+    train = fa.Train(wavelength=532 * nm).add(fa.Laser(waist=1 * mm, power=20e-3, name="laser"))
+    (found,) = checks(train, "laser caution")
+    assert found.element == "laser.out"
+    assert found.severity.value == "high"
+    assert "2 mm (1/e²)" in found.got
+    assert [f.element for f in checks(train, "open port")] == ["laser.out"]
+
+
+def test_light_that_cannot_be_sampled_leaves_estimates():
+    train = fa.Train(wavelength=532 * nm, name="bench").along(
+        fa.Laser(mode=fa.PlaneWave(area=1e-6), power=1e-3, name="laser"),
+        fa.Lens(focal=0.3, name="lens"),
+        fa.FreeSpace(0.3),
+        fa.Aperture(radius=1 * mm, name="stop"),
+        CAMERA,
+    )
+    bench = survey(train)
+    assert bench.ledger == {}
+    assert bench.arriving(bench.visits[-1]) == pytest.approx(1e-3)
+    (found,) = checks(train, "estimated powers")
+    assert found.rule.startswith("a plane wave has no finite focus")
+
+
+def test_two_colours_are_each_checked(bench_of):
+    beam = fa.Beam((fa.Term(1, fa.Gaussian(1 * mm), fa.H),))
+    laser = fa.Laser(incoherent=[(0.5, beam, 532 * nm), (0.5, beam, 633 * nm)], power=1e-3, name="laser")
+    plate = fa.HalfWavePlate(fast=20 * deg, design=532 * nm, name="hwp")
+    (found,) = checks(fa.Train(wavelength=532 * nm).along(laser, plate, METER), "design wavelength")
+    # 180 deg 532/633 = 151.28 deg
+    assert "151.3° at 633 nm" in found.got
+
+
+def test_states_in_words(bench_of):
+    def words(state):
+        return state_in_words(survey(bench_of(METER, state=state)).visits[0].before)
+
+    assert words(fa.R) == "circular R"
+    assert words(fa.L) == "circular L"
+    assert words(fa.linear(-30 * deg)) == "linear -30°"
+    assert words(fa.elliptical(20 * deg, 10 * deg)) == "azimuth 20°, ellipticity +10°"
+    assert words(fa.UNPOLARIZED) == "unpolarized"
+    assert words(fa.partially_polarized(fa.H, 0.5)) == "linear 0°, 50 % polarized"
+
+
+def test_a_relay_shows_the_plane_inverted(bench_of):
+    train = bench_of(
+        fa.QPlate(q=0.5, name="qp"), fa.FreeSpace(200 * mm), fa.Lens(focal=200 * mm, name="l1"),
+        fa.FreeSpace(300 * mm), fa.Lens(focal=100 * mm, name="l2"), fa.FreeSpace(100 * mm),
+        fa.Camera(pixel=3.45 * um, shape=(1024, 1024), name="cam"),
+    )  # fmt: skip
+    (found,) = checks(train, "plane shown")
+    assert "shows the plane of qp, magnification -0.5 (turned by 180°)" in found.got
+    assert not checks(train, "relay spacing")
+
+
+def test_a_wedged_window_has_a_ghost(bench_of):
+    (found,) = checks(bench_of(fa.Window(index=1.5, wedge=0.5 * deg, name="window"), METER), "ghost")
+    # R = (0.5/2.5)^2 = 4 %, twice: 0.16 %
+    assert "0.16 %" in found.got
+    assert found.severity.value == "note"
+
+
+def test_the_gain_of_a_lossless_splitter_is_one(bench_of):
+    from fastaxis.inspect.checks.gain import largest_gain
+
+    train = bench_of(fa.PolarizingBeamSplitter(Tp=0.9, Ts=0.2, name="pbs"), METER, state=fa.D)
+    np.testing.assert_allclose(largest_gain(survey(train).visits[0], 532 * nm), 1, rtol=1e-14)
