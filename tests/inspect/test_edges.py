@@ -1,6 +1,7 @@
 """Checks where they hold back, and where a question has no answer."""
 
 import math
+from dataclasses import replace
 
 import numpy as np
 import pytest
@@ -140,3 +141,29 @@ def test_the_gain_of_a_lossless_splitter_is_one(bench_of):
 
     train = bench_of(fa.PolarizingBeamSplitter(Tp=0.9, Ts=0.2, name="pbs"), METER, state=fa.D)
     np.testing.assert_allclose(largest_gain(survey(train).visits[0], 532 * nm), 1, rtol=1e-14)
+
+
+def test_paths_that_meet_without_a_ledger_are_taken_at_their_brightest(bench_of):
+    """Two arms of a quarter of the power each can leave by one port with all of it."""
+    train = bench_of(fa.BeamSplitter(name="split"), fa.Mirror(name="m1"), fa.BeamSplitter(name="join"), METER)
+    train.along("split.reflected", fa.Mirror(name="m2"), "join.side")
+    known = survey(train)
+    unknown = replace(known, ledger={})
+    ends = [visit for visit in known.visits if visit.name == "meter"]
+    assert len(ends) == 2
+    assert known.arriving_together(ends) == pytest.approx(train.power("meter"))
+    assert unknown.arriving_together(ends) == pytest.approx(1e-3)
+    open_end = [visit for visit in known.visits if (visit.name, visit.left) == ("join", "reflected")]
+    assert unknown.leaving_together(open_end) == pytest.approx(1e-3)
+    assert known.leaving_together(open_end) + known.arriving_together(ends) == pytest.approx(1e-3)
+
+
+def test_loops_and_return_arms_are_followed(bench_of):
+    sagnac = bench_of(fa.BeamSplitter(name="split"), state=fa.D)
+    sagnac.loop("split.transmitted", fa.Mirror(name="m1"), fa.Mirror(name="m2"), "split.reflected")
+    sagnac.along("split.side", METER)
+    inspection = sagnac.inspect()
+    assert inspection.passed, str(inspection)
+    assert not [f for f in inspection if f.check == "light runs round"]
+    (back,) = [f for f in inspection if f.check == "returning light"]
+    assert back.element == "split.front"

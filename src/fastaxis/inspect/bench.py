@@ -143,17 +143,25 @@ class Bench:
 
     def arriving_together(self, visits: Iterable[Visit]) -> float:
         """Power [W] of several visits; light of several paths through one port is counted once if it is known."""
-        by_port: dict[tuple[str, str], float] = {}
+        by_port: dict[tuple[str, str], list[float]] = {}
         for visit in visits:
-            port = self.upstream(visit)
-            by_port[port] = self.ledger.get(port, by_port.get(port, 0.0) + visit.power)
-        return math.fsum(by_port.values())
+            by_port.setdefault(self.upstream(visit), []).append(visit.power)
+        return math.fsum(self.ledger.get(port, self._at_most(powers)) for port, powers in by_port.items())
 
     def leaving_together(self, visits: Iterable[Visit]) -> float:
         """Power [W] that leaves by one port, on whichever paths it came."""
         several = list(visits)
-        estimate = math.fsum(float(total(visit.after)[0]) for visit in several)
+        estimate = self._at_most([float(total(visit.after)[0]) for visit in several])
         return self.ledger.get((several[0].name, several[0].left), estimate)
+
+    def _at_most(self, powers: list[float]) -> float:
+        """The most that light of several paths can carry together: the square of the sum of their amplitudes.
+
+        A caution must not be too small, so interference is taken at its brightest, and a cavity as letting all through.
+        """
+        if self.loops:
+            return self.total
+        return powers[0] if len(powers) == 1 else min(self.total, math.fsum(math.sqrt(power) for power in powers) ** 2)
 
     def leaving(self, visit: Visit) -> float:
         """Power that leaves by the port of a visit [W]."""
