@@ -13,7 +13,7 @@ __all__ = ["covariance_reason"]
 
 
 @singledispatch
-def _refusal(law: Any) -> str:
+def _refusal(law: Any) -> str:  # noqa: ARG001 -- any other law is round
     """What in a law is not round about the axis; empty if nothing is."""
     return ""
 

@@ -125,7 +125,8 @@ class Collins:
     def parts(self, reach: float) -> np.ndarray[tuple[int], np.dtype[np.int_]]:
         """Into how many parts each panel is cut, for output radii up to ``reach``."""
         edges, flat, k = self.profile.edges, self.flat, self.wavenumber
-        phase = k * abs(flat.a / flat.b) * np.diff(edges**2) / 2 + k * reach / abs(flat.b) * np.diff(edges)
+        # The outer end of a panel has the most fringes, and its parts are equally wide.
+        phase = k * (abs(flat.a) * edges[1:] + reach) / abs(flat.b) * np.diff(edges)
         # One part carries the panel's own polynomial too, so it may carry less of the kernel's phase.
         whole = 0.4 * self.phase
         parts = np.where(phase <= whole, 1, np.maximum(2, np.ceil(phase / self.phase)))

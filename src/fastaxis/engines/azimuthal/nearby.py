@@ -21,7 +21,7 @@ from numpy.polynomial import chebyshev
 from scipy.special import erf, gamma, rgamma
 
 from fastaxis.engines.azimuthal.collins import Collins, turn
-from fastaxis.engines.azimuthal.panels import Complexes, Profile, Reals
+from fastaxis.engines.azimuthal.panels import Complexes, Reals
 from fastaxis.engines.azimuthal.table import Table, table_of
 from fastaxis.engines.azimuthal.taper import Taper
 
@@ -36,17 +36,6 @@ TERMS = 17  # of the Taylor series of the field about the axis
 MOST_CHARGE = 12  # the phase of a kernel of high order is no longer nearly linear within the window
 
 
-def highest_frequency(profile: Profile) -> float:
-    """Radial frequency [rad/m] of the field, from the degrees that its panels need.
-
-    exp(i c x) on [-1, 1] has coefficients J_n(c), which fall to 1e-12 at (e c/2n)^n, so c = (2n/e) 10^(-12/n).
-    """
-    size = abs(profile.coefficients).max(axis=0)
-    degree = ((size > 1e-15 * profile.peak) * np.arange(size.shape[1])).max(axis=1).clip(1)
-    frequency = 2 * degree / math.e * 10 ** (-12 / degree)
-    return float((2 * frequency / np.diff(profile.edges)).max())
-
-
 def suits(section: Collins) -> bool:
     """Whether the light is smooth compared with sqrt(b/k), so that this is exact and cheaper than all of it."""
     flat, profile = section.flat, section.profile
@@ -54,7 +43,7 @@ def suits(section: Collins) -> bool:
         return False
     ends = section.taper is not None or abs(profile.values[:, -1]).max() <= 1e-12 * profile.peak
     root = math.sqrt(section.wavenumber * abs(flat.a / flat.b) / 2)
-    shift = highest_frequency(profile) / (2 * root)
+    shift = profile.highest_frequency / (2 * root)
     return bool(ends and shift < SMOOTH)
 
 
@@ -82,7 +71,7 @@ class Nearby:
     @cached_property
     def middle(self) -> float:
         """Middle of the window's edges; light at an angle shifts the image by its own t."""
-        return (MIDDLE + highest_frequency(self.section.profile) / (2 * self.root)) * self.margin
+        return (MIDDLE + self.section.profile.highest_frequency / (2 * self.root)) * self.margin
 
     @cached_property
     def inner(self) -> float:
@@ -122,8 +111,7 @@ class Nearby:
         window = np.exp(1j * sign * t**2) * _window(t, self.middle) * (step / self.root)
         before = r[:, np.newaxis] / abs(flat.a) + t / self.root
         x = k / abs(flat.b) * r[:, np.newaxis] * before
-        inside = before <= section.profile.end
-        fields = self.table(np.minimum(before, section.profile.end)) * (inside * before / np.sqrt(2 * math.pi * x))
+        fields = self.table(before) * (before / np.sqrt(2 * math.pi * x))
         if section.taper:
             fields = fields * section.taper(before)
         out = np.empty((len(section.charges), len(r)), dtype=complex)
@@ -154,7 +142,7 @@ class Nearby:
     @property
     def _unit(self) -> float:
         """Length [m] that the Taylor series counts in."""
-        return 4 / max(highest_frequency(self.section.profile), 4 / self.section.profile.end)
+        return 4 / max(self.section.profile.highest_frequency, 4 / self.section.profile.end)
 
     @cached_property
     def _series(self) -> Complexes:

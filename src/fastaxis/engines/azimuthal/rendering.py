@@ -33,16 +33,13 @@ def circular_field(table: Table, orders: Orders, x: Reals, y: Reals) -> Complexe
     """(E_L, E_R) at columns x and rows y [m], relative to the reference front; shape (2, ny, nx)."""
     (xs, column), (ys, row) = _halves(x), _halves(y)
     r = np.hypot(xs, ys[:, np.newaxis])
-    dark = r > table.reach
-    values = table(np.minimum(r, table.reach))
-    if dark.any():
-        values[:, dark] = 0
+    values = table(r)
     unit = x + 1j * y[:, np.newaxis]
     unit /= np.where(unit == 0, 1, abs(unit))
     turns = _powers(unit, {l for _, l in orders})
     field = np.zeros((2, len(y), len(x)), dtype=complex)
     for value, (hand, l) in zip(values, orders, strict=True):
-        full = value[row][:, column] if value.shape != field.shape[1:] else value
+        full = value.take(column, axis=1).take(row, axis=0) if value.shape != field.shape[1:] else value
         field[hand] += full if l == 0 else full * turns[l]
     return field
 

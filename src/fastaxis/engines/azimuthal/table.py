@@ -19,24 +19,30 @@ SETTLED = 2e-13  # of the peak: twice what the panels themselves are settled to
 
 @dataclass(frozen=True, eq=False)
 class Table:
-    """Polynomials on equal cells from 0 to ``reach``.
+    """Polynomials on equal cells from ``start`` to ``reach``.
 
     Parameters
     ----------
+    start : innermost radius [m].
     reach : outermost radius [m].
     powers : coefficients of 1, t, t^2 ... with t in [-1, 1] on each cell, shape (functions, cells, POINTS).
     """
 
+    start: float
     reach: float
     powers: Complexes
 
     def __call__(self, r: Reals) -> Complexes:
-        """Values at radii up to ``reach`` [m], shape (functions, *r.shape)."""
+        """Values at radii [m], shape (functions, *r.shape); zero inside ``start`` and outside ``reach``."""
         cells = self.powers.shape[1]
-        place = r * (cells / self.reach)
-        cell = np.minimum(place.astype(np.intp), cells - 1)
+        place = (r - self.start) * (cells / (self.reach - self.start))
+        cell = np.clip(place.astype(np.intp), 0, cells - 1)
         t = (2 * (place - cell) - 1).ravel()
-        return np.stack([_horner(rows.take(cell.ravel(), axis=0), t).reshape(r.shape) for rows in self.powers])
+        values = np.stack([_horner(rows.take(cell.ravel(), axis=0), t).reshape(r.shape) for rows in self.powers])
+        dark = (r < self.start) | (r > self.reach)
+        if dark.any():
+            values[:, dark] = 0
+        return values
 
 
 def _horner(rows: Complexes, t: Reals) -> Complexes:
@@ -48,20 +54,22 @@ def _horner(rows: Complexes, t: Reals) -> Complexes:
     return np.asarray(total)
 
 
-def _at(profile: Profile, reach: float, cells: int) -> Table:
-    r = (np.arange(cells)[:, np.newaxis] + (1 + CHEBYSHEV) / 2) * (reach / cells)
+def _at(profile: Profile, start: float, reach: float, cells: int) -> Table:
+    r = start + (np.arange(cells)[:, np.newaxis] + (1 + CHEBYSHEV) / 2) * ((reach - start) / cells)
     values = profile(r.ravel()).reshape(-1, cells, POINTS)
-    return Table(reach, values @ TO_POWERS)
+    return Table(start, reach, values @ TO_POWERS)
 
 
 def table_of(profile: Profile, reach: float) -> Table:
     """A table of a profile, refined until it agrees with it off its own points."""
-    reach = min(reach, profile.end) if profile.end > 0 else reach
+    if reach <= profile.start:
+        return Table(0.0, reach, np.zeros((len(profile.values), 1, POINTS), dtype=complex))
+    start, reach = profile.start, min(reach, profile.end)
     cells = max(16, 2 * (len(profile.edges) - 1))
     while True:
-        table = _at(profile, reach, cells)
+        table = _at(profile, start, reach, cells)
         # The places where a Chebyshev interpolant is worst, a third of the way off its points.
-        r = (np.arange(cells, dtype=float) + 0.4755) * (reach / cells)
+        r = start + (np.arange(cells, dtype=float) + 0.4755) * ((reach - start) / cells)
         if cells >= FINEST or abs(table(r) - profile(r)).max() <= SETTLED * profile.peak:
             return table
         cells *= 2

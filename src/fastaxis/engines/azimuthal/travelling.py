@@ -17,17 +17,15 @@ from fastaxis.laws import TravelLaw
 
 __all__ = ["arrived", "images", "section_for", "share_of_error"]
 
-SAFETY = 4.0  # a dozen places seldom meet the worst one
+SAFETY = 10.0  # a dozen places seldom meet the worst one
 ROUNDING = 4 * np.finfo(float).eps
 
 TAPER = 0.7
-NEGLIGIBLE = 1e-14
-"""Phase [rad] of diffraction that changes nothing: a relay closes to 1e-17 m, not to zero."""
+NEGLIGIBLE = 1e-12
+"""Phase [rad] of diffraction that changes nothing, at the highest frequency, which has 1e-12 of the amplitude or less.
 
-
-def _finest(profile: Profile) -> float:
-    """Highest radial frequency [rad/m] that the panels carry."""
-    return 2 * profile.degree / float(np.diff(profile.edges).min())
+A relay closes to 1e-16 m, not to zero.
+"""
 
 
 def images(field: Harmonics) -> bool:
@@ -36,7 +34,7 @@ def images(field: Harmonics) -> bool:
     if flat.b == 0:
         return True
     reach = abs(flat.b / flat.a) if flat.a else math.inf
-    return bool(reach * _finest(field.profile) ** 2 / (2 * field.wavenumber) < NEGLIGIBLE)
+    return bool(reach * field.profile.highest_frequency**2 / (2 * field.wavenumber) < NEGLIGIBLE)
 
 
 @dataclass(frozen=True)

@@ -1,0 +1,130 @@
+"""Azimuthal against grid engine on a centred bench of eight parts: time, error, nodes and growth.
+
+Run: python tests/benchmarks/bench_azimuthal.py
+"""
+
+import os
+import platform
+import time
+
+import numpy as np
+from rich.console import Console
+from rich.table import Table
+from scipy.special import ive
+
+from fastaxis.elements import (
+    Camera, FreeSpace, HalfWavePlate, Laser, Lens, QPlate, QuarterWavePlate, Retarder,
+)  # fmt: skip
+from fastaxis.engines import propagate
+from fastaxis.light import Gaussian, H, Raster
+from fastaxis.plan import Grid, make_plan
+from fastaxis.train import Train
+from fastaxis.units import deg, mm, nm, um
+
+WAIST, WAVELENGTH, FOCAL = 0.8 * mm, 532 * nm, 500 * mm
+PIXEL = 3.45 * um
+
+
+def bench(pixels, *, plates=1):
+    """Laser, eight parts (three spaces, a lens, a tuned q-plate, three uniform plates), camera in the focus."""
+    more = [part for i in range(plates - 1) for part in (QPlate(q=0.5, offset=0.1 * i), FreeSpace(200 * mm))]
+    parts = [
+        HalfWavePlate(fast=20 * deg), FreeSpace(100 * mm), QPlate(q=0.5), *more, FreeSpace(200 * mm),
+        QuarterWavePlate(fast=30 * deg), Lens(focal=FOCAL), FreeSpace(FOCAL), Retarder(fast=0.2, retardance=0.4),
+    ]  # fmt: skip
+    laser = Laser(mode=Gaussian(waist=WAIST, waist_at=100 * mm), power=5e-3, state=H, name="laser")
+    camera = Camera(pixel=PIXEL, shape=(pixels, pixels), name="cam")
+    return Train(wavelength=WAVELENGTH).along(laser, *parts, camera)
+
+
+def median(run, count):
+    """Median time [s] of some runs, and the last answer."""
+    times = []
+    for _ in range(count):
+        begin = time.perf_counter()
+        answer = run()
+        times.append(time.perf_counter() - begin)
+    return float(np.median(times)), answer
+
+
+def closed_form_error(field):
+    """Error of the whole field in focus, as a share of its peak.
+
+    Ring of charge 1 behind a waist at the plate: (2/pi)^1/2/w_f sqrt(pi)/2 s exp(-s^2/2)(I_0 - I_1)(s^2/2). The
+    state is uniform before and behind the plate, so each harmonic is this times a constant.
+    """
+    spot = WAVELENGTH * FOCAL / (np.pi * WAIST)
+    x = np.linspace(0, 3, 61)[1:] * spot
+    half = (x / spot) ** 2 / 2
+    ring = np.sqrt(2 * 5e-3 / np.pi) / spot * np.sqrt(np.pi) / 2 * x / spot * (ive(0, half) - ive(1, half))
+    total = np.sqrt((abs(field.at(x, np.zeros(1))) ** 2).sum(axis=0)[0])
+    return float(abs(total - ring).max() / ring.max())
+
+
+def frame(train, engine, grid=None):
+    """The Stokes images of the camera, from plan to pixels."""
+    field = propagate(make_plan(train, "cam", engine=engine, grid=grid))[0]
+    camera = train.elements["cam"]
+    return field, field.stokes_on(Raster(camera.pixel, camera.shape))
+
+
+def engines_table(console):
+    train = bench(512)
+    cold_begin = time.perf_counter()
+    field, exact = frame(train, "azimuthal")
+    cold = time.perf_counter() - cold_begin
+    table = Table(
+        "engine", "samples or nodes", "frames 512^2 [ms]", "frame error", "field error", "ratio", title="8 parts"
+    )
+    ours, _ = median(lambda: frame(train, "azimuthal"), 9)
+    nodes = len(field.harmonics.profile.nodes), len(field.out_to(1.3 * mm).profile.nodes)
+    table.add_row(
+        "azimuthal", f"{nodes[0]} -> {nodes[1]}", f"{ours * 1e3:.1f}", "-", f"{closed_form_error(field):.1e}", "1"
+    )
+    for samples in (256, 512, 1024, 2048):
+        grid = Grid(samples, 12 * mm)
+        taken, (sampled, image) = median(lambda g=grid: frame(train, "grid", g), 3)
+        error = abs(image - exact).max() / exact[0].max()
+        table.add_row(
+            "grid",
+            str(samples),
+            f"{taken * 1e3:.1f}",
+            f"{error:.1e}",
+            f"{closed_form_error(sampled):.1e}",
+            f"{taken / ours:.1f}",
+        )
+    console.print(table)
+    console.print(f"azimuthal, first run with cold kernels: {cold * 1e3:.1f} ms")
+
+
+def growth_table(console):
+    table = Table(
+        "pixels", "q-plates", "nodes before the last section", "harmonics", "[ms]", "estimate", title="growth"
+    )
+    for pixels, plates in ((128, 1), (256, 1), (512, 1), (1024, 1), (512, 2), (512, 3)):
+        train = bench(pixels, plates=plates)
+        taken, (field, _) = median(lambda t=train: frame(t, "azimuthal"), 3)
+        light = field.harmonics
+        row = (
+            pixels,
+            plates,
+            len(light.profile.nodes),
+            len(light.orders),
+            f"{taken * 1e3:.1f}",
+            f"{field.error(1 * mm):.1e}",
+        )
+        table.add_row(*map(str, row))
+    console.print(table)
+
+
+def main():
+    console = Console()
+    console.print(
+        f"{platform.machine()}, {os.cpu_count()} cores, Python {platform.python_version()}, numpy {np.__version__}"
+    )
+    engines_table(console)
+    growth_table(console)
+
+
+if __name__ == "__main__":
+    main()
