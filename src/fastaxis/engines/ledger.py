@@ -5,8 +5,9 @@ from __future__ import annotations
 from typing import Any
 
 from fastaxis.engines import propagate
-from fastaxis.laws import AxisLaw, CircularLaw, Law, Passage, ScalarLaw
+from fastaxis.laws import AxisLaw, CircularLaw, Law, ScalarLaw
 from fastaxis.plan import make_plan
+from fastaxis.train.graph import lit_nodes, source_nodes
 
 __all__ = ["lossless", "powers"]
 
@@ -28,16 +29,16 @@ def _is_one(power: Any) -> bool:
     return isinstance(power, int | float) and power == 1
 
 
-def powers(train: Any) -> dict[Port, float]:
+def powers(train: Any, *, engine: str = "auto") -> dict[Port, float]:
     """Power [W] on every lit port that light leaves, (part, face) -> watts, in the order the light gets there.
 
-    A passage without loss hands its power on; only where a part may lose or divide light is it worked out, and then
-    without what follows in the same path.
+    A passage without loss hands its power on; only where a part may lose, divide or join light is it worked out, and
+    then without what follows in the same path.
 
     Raises
     ------
     SymbolError : a letter without a value on the way.
-    WiringError : light by two paths meets in a port.
+    SamplingError : light that cannot be sampled, or a cavity whose light takes too many trips to fade.
 
     Examples
     --------
@@ -50,6 +51,7 @@ def powers(train: Any) -> dict[Port, float]:
     {('laser1', 'out'): 0.002, ('pbs', 'transmitted'): 0.001, ('pbs', 'reflected'): 0.001}
     """
     graph = train.graph
+    lit = lit_nodes(graph, source_nodes(train.elements))
     ledger: dict[Port, float] = {}
     waiting = [(name, train.elements[name].exit or "out", "out") for name in train.sources]
     for name, face, _ in waiting:
@@ -61,13 +63,12 @@ def powers(train: Any) -> dict[Port, float]:
             for leaving in graph.successors(entry):
                 port = (leaving[0], leaving[1])
                 if port not in ledger:
-                    passage = graph.edges[entry, leaving]["passage"]
-                    ledger[port] = _after(train, port, passage, arriving)
+                    alone = sum(before in lit for before in graph.predecessors(leaving)) == 1
+                    hands_on = alone and all(map(lossless, graph.edges[entry, leaving]["passage"].laws))
+                    ledger[port] = arriving if hands_on else _worked_out(train, port, engine)
                     waiting.append(leaving)
     return ledger
 
 
-def _after(train: Any, port: Port, passage: Passage, arriving: float) -> float:
-    if all(lossless(law) for law in passage.laws):
-        return arriving
-    return sum(field.power for field in propagate(make_plan(train, ".".join(port), power_only=True)))
+def _worked_out(train: Any, port: Port, engine: str) -> float:
+    return sum(field.power for field in propagate(make_plan(train, ".".join(port), power_only=True, engine=engine)))

@@ -48,6 +48,8 @@ def _sampled(plane: Plane) -> str:
 
 def _branch(branch: Branch) -> Iterator[str]:
     yield f"  {branch.wavelength * 1e9:.6g} nm, {branch.power * 1e3:.6g} mW"
+    if branch.path:
+        yield f"  arm {branch.path}: engine {branch.engine}, path {float(branch.length) * 1e3:.6g} mm"
     sampling = branch.sampling
     if sampling is not None:
         yield f"  {sampling.grid.samples} x {sampling.grid.samples} samples ({sampling.chosen})"

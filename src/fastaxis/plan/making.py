@@ -78,7 +78,7 @@ def _of_laser(train: Any, routes: list[Any], group: int) -> list[Branch]:
             steps = tuple(s for leg in route.legs for s in asked(leg.element_name, leg.entered, leg.left))
             branch = Branch(part.beam, wavelength, float(source.power * part.weight), steps)
             if len(routes) > 1:
-                branch = replace(branch, group=group + index, length=_length(steps), line=laser.line)
+                branch = replace(branch, group=group + index, length=_length(steps), line=laser.line, path=str(route))
             branches.append(branch)
     return branches
 
@@ -97,7 +97,13 @@ def _is_bucket(train: Any, target: str) -> bool:
 
 
 def make_plan(
-    train: Any, target: str, *, grid: Grid | None = None, engine: str = "auto", power_only: bool = False
+    train: Any,
+    target: str,
+    *,
+    grid: Grid | None = None,
+    engine: str = "auto",
+    power_only: bool = False,
+    by_arms: bool = False,
 ) -> Plan:
     """How the light at a port of a train will be computed.
 
@@ -108,6 +114,7 @@ def make_plan(
     grid : samples set by hand, for the grid engine.
     engine : "auto", "uniform", "azimuthal" or "grid".
     power_only : ask for total power only; a lossless end of the path is left out.
+    by_arms : keep a branch for each path also where all of them can be summed at once.
 
     Raises
     ------
@@ -130,7 +137,7 @@ def make_plan(
     >>> plan.engine, [step.names for step in plan.steps]
     ('grid', [('plate1',), ('space1',), ('qplate1',), ('space2',)])
     """
-    at_once = by_network(train, target, asked=engine)
+    at_once = None if by_arms else by_network(train, target, asked=engine)
     if at_once is not None:
         return at_once
     plan = simplified(unfused(train, target))

@@ -36,6 +36,7 @@ class Branch:
     engine : of this branch; "" for the engine of the plan.
     network : all ways at once, for light whose shape is not followed; then there are no steps.
     feed : place in the network where the light begins.
+    path : parts of an arm, as text.
     """
 
     beam: Beam
@@ -49,6 +50,7 @@ class Branch:
     engine: str = ""
     network: Network | None = None
     feed: int = 0
+    path: str = ""
 
 
 @dataclass(frozen=True)

@@ -322,6 +322,19 @@ class Train:
         """Power [W] at a camera or leaving a port."""
         return float(sum(part.power for part in self._collected(target, grid, engine)))
 
+    def ledger(self, *, engine: str = "auto") -> Any:
+        """Where all the watts go: on every edge, into parts, out of open ports, back to the laser; they add up."""
+        return late("engines.power_ledger", "power_ledger")(self, engine=engine)
+
+    def visibility(self, target: str, setting: Any = None, *, grid: Any = None, engine: str = "auto") -> Any:
+        """How deep the fringes at a target are, for each pair of paths, and why: see ``print(...)``.
+
+        Parameters
+        ----------
+        setting : an analyzer in front of the target; none if left out.
+        """
+        return late("analysis.visibility", "visibility")(self, target, setting, grid=grid, engine=engine)
+
     def state(self, target: str, *, grid: Any = None, engine: str = "auto") -> Any:
         """Polarization of all the light at a target together: a State, or a StateMixture where it is not pure.
 

@@ -11,6 +11,8 @@ from fastaxis.plan.spread import Spread, of_beam
 
 __all__ = ["Extent", "arrival"]
 
+PRODUCT_RADII = 4.3  # exp(-2 4.3^2) = 9e-17: the product of two equal Gaussian fields has fallen below its rounding
+
 
 def arrival(arm: Branch) -> Spread:
     """Second moments of the light of an arm at the target."""
@@ -41,6 +43,12 @@ class Extent:
         half = 0.0 if endless else max(spread.half_window for spread in spreads)
         return cls(half, arms[0].wavelength, spreads)
 
+    @property
+    def shared_half(self) -> float:
+        """Half side [m] of a square that holds the product of any two beams."""
+        halves = (max(map(abs, s.offset)) + min(s.radii, PRODUCT_RADII) * 2 * s.size for s in self.spreads)
+        return sorted(halves)[-2] if self.half_window else 0.0
+
     def frequency(self, reach: float) -> float:
         """Highest spatial frequency [1/m] of the sum's irradiance out to a distance [m] along each axis.
 
@@ -53,7 +61,9 @@ class Extent:
     def _of_pair(self, a: Spread, b: Spread, reach: float) -> float:
         within = min(reach, self.half_window) if self.half_window else reach
         leaning = max(abs(s - t) for s, t in zip(_lean(a), _lean(b), strict=True))
-        bands = sum(s.radii * 2 * s.angle for s in (a, b))
+        # The spectrum of a product is the convolution of both; of two Gaussians the squares of their widths add.
+        widths = [s.radii * 2 * s.angle for s in (a, b)]
+        bands = sum(widths) if a.rough or b.rough else math.hypot(*widths)
         return (leaning + bands + abs(a.curvature - b.curvature) * within) / self.wavelength
 
 

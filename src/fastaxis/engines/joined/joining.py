@@ -14,7 +14,7 @@ from fastaxis.engines.field import Guard, PlaneField
 from fastaxis.engines.joined.coherence import mixtures
 from fastaxis.engines.joined.extent import Extent
 from fastaxis.engines.joined.nodes import PixelNodes
-from fastaxis.engines.joined.overlap import overlaps
+from fastaxis.engines.joined.overlap import total_of_sums
 from fastaxis.errors import ParameterError
 from fastaxis.light import Raster, stokes
 from fastaxis.plan import Branch
@@ -64,9 +64,7 @@ class JoinedField:
     @cached_property
     def total_stokes(self) -> Reals:
         """S0 .. S3 of all the light [W], shape (4,)."""
-        table = overlaps(self.arms, self.extent)
-        ((xx, xy), (_, yy)) = np.einsum("mi,mj,ijab->ab", self.mixtures, self.mixtures.conj(), table)
-        return np.array([xx.real + yy.real, xx.real - yy.real, 2 * xy.real, 2 * xy.imag])
+        return total_of_sums(self.arms, self.mixtures, self.extent)
 
     @property
     def power(self) -> float:
@@ -110,6 +108,8 @@ class JoinedField:
         reach = max(abs(raster.x).max(), abs(raster.y).max()) + raster.pitch / 2
         nodes = PixelNodes.of(raster.pitch, self.extent.frequency(reach))
         columns, rows = nodes.places(raster.x), nodes.rows_at_once(raster, BLOCK)
+        # Engines that work out a plane as far as they are asked do so once if the farthest place comes first.
+        self._sums(np.array([reach]), np.array([reach]))
         image = np.empty((4, ny, nx))
         for first in range(0, ny, rows):
             middles = raster.y[first : first + rows]

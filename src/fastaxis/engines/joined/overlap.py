@@ -1,4 +1,4 @@
-"""Overlap integrals of arms: what their interference adds to the power at a port."""
+"""What interference adds to the power at a port, and takes from another."""
 
 from __future__ import annotations
 
@@ -11,62 +11,57 @@ from numpy.typing import NDArray
 
 from fastaxis.engines.field import PlaneField
 from fastaxis.engines.joined.extent import Extent
-from fastaxis.light import Raster
+from fastaxis.light import Raster, stokes
 
-__all__ = ["overlaps"]
+__all__ = ["places", "total", "total_of_sums"]
 
 Complexes = NDArray[np.complex128]
 Reals = NDArray[np.float64]
 
 EVERYTHING = Raster(10.0, (1, 1))  # one pixel of 10 m: no table carries a wider beam
 MOST = 4096  # samples along a side; edges and singularities ask for more than pays
-BLOCK = 1 << 20  # samples of one arm held at a time
+BLOCK = 1 << 18  # places at which fields are held at a time
 
 
-def overlaps(fields: Sequence[PlaneField], extent: Extent) -> Complexes:
-    """Integrals of E_i E_j^H over the plane [W], shape (arms, arms, 2, 2).
+def total(field: Any) -> Reals:
+    """S0 .. S3 of all the light of one field [W]; of a plane wave, on the area its power is counted on."""
+    found = np.asarray(field.stokes_on(EVERYTHING)[:, 0, 0])
+    return np.asarray(found * (field.power / found[0])) if found[0] > 0 else found
 
-    What an arm has alone is its own engine's; what two have in common is a sum over equally spaced samples, which for
-    light that falls off on all sides and has a band is exact to rounding. The samples are the same at every port of
-    a splitter and stand symmetric about the axis, so that what interference takes from one port it gives to the
-    other to the last digits.
+
+def total_of_sums(arms: Sequence[PlaneField], mixtures: Complexes, extent: Extent) -> Reals:
+    """S0 .. S3 [W] of coherent sums of arms, whose powers add.
+
+    What the arms have by themselves is their own engines'. What interference adds is |sum|^2 less the sum of
+    |arm|^2 on equally spaced samples, which for light that falls off on all sides and has a band is exact to
+    rounding. The samples are the same at every port of a splitter and stand symmetric about the axis, so that what
+    one port gains another loses to the last digits.
     """
-    count = len(fields)
-    table = np.zeros((count, count, 2, 2), dtype=complex)
-    if count > 1:
-        table += _sampled(fields, extent)
-    for index, field in enumerate(fields):
-        table[index, index] = _alone(field)
-    return table
-
-
-def _alone(field: PlaneField) -> Complexes:
-    """The coherency matrix of all light of one arm, S3 = 2 Im(Ex Ey*)."""
-    s0, s1, s2, s3 = _total(field)
-    matrix = np.array([[s0 + s1, s2 + 1j * s3], [s2 - 1j * s3, s0 - s1]], dtype=complex)
-    return np.asarray(matrix / 2)
-
-
-def _total(field: Any) -> Reals:
-    stokes = np.asarray(field.stokes_on(EVERYTHING)[:, 0, 0])
-    return stokes * (field.power / stokes[0]) if stokes[0] > 0 else stokes
-
-
-def _sampled(fields: Sequence[PlaneField], extent: Extent) -> Complexes:
-    x, pitch = _places(extent)
-    count = len(fields)
-    table = np.zeros((count, count, 2, 2), dtype=complex)
-    rows = max(1, BLOCK // len(x))
+    shares = np.sum(abs(mixtures) ** 2, axis=0)
+    alone = sum(share * total(arm) for share, arm in zip(shares, arms, strict=True))
+    if len(arms) == 1:
+        return np.asarray(alone)
+    x, pitch = places(extent)
+    added, rows = np.zeros(4), max(1, BLOCK // len(x))
     for first in range(0, len(x), rows):
-        values = np.stack([field.at(x, x[first : first + rows]).reshape(2, -1) for field in fields])
-        flat = values.reshape(2 * count, -1)
-        table += (flat @ flat.conj().T).reshape(count, 2, count, 2).transpose(0, 2, 1, 3)
-    return np.asarray(table * pitch**2)
+        added += _added(arms, mixtures, shares, x, x[first : first + rows])
+    return np.asarray(alone + added * pitch**2)
 
 
-def _places(extent: Extent) -> tuple[Reals, float]:
-    half = extent.half_window
-    needed = 2 * half * extent.frequency(half)
-    samples = min(MOST, 2 * math.ceil(max(needed, 64) / 2))
+def _added(arms: Sequence[PlaneField], mixtures: Complexes, shares: Reals, x: Reals, y: Reals) -> Reals:
+    sums = np.zeros((len(mixtures), 2, len(y), len(x)), dtype=complex)
+    added = np.zeros(4)
+    for arm, numbers, share in zip(arms, mixtures.T, shares, strict=True):
+        field = arm.at(x, y)
+        added -= share * stokes(field).sum(axis=(1, 2))
+        for index, number in enumerate(numbers):
+            sums[index] += number * field
+    return np.asarray(added + sum(stokes(one).sum(axis=(1, 2)) for one in sums))
+
+
+def places(extent: Extent) -> tuple[Reals, float]:
+    """Samples along an axis [m], and their distance, that hold all beams of an extent and the products of any two."""
+    half = extent.shared_half
+    samples = min(MOST, 2 * math.ceil(max(2 * half * extent.frequency(half), 64) / 2))
     pitch = 2 * half / samples
     return np.asarray((np.arange(samples) - (samples - 1) / 2) * pitch), pitch
