@@ -4,7 +4,6 @@ from __future__ import annotations
 
 from collections.abc import Iterator
 from dataclasses import dataclass
-from itertools import product
 from typing import Any
 
 import numpy as np
@@ -12,9 +11,7 @@ from numpy.typing import NDArray
 from scipy import fft
 
 from fastaxis.engines.grid.kernel import Block
-from fastaxis.engines.grid.light import multiply_separable
-from fastaxis.engines.grid.transforms import forward, inverse
-from fastaxis.engines.grid.workers import strips, together
+from fastaxis.engines.grid.workers import WORKERS, strips, together
 from fastaxis.light import stokes
 
 __all__ = ["Collected"]
@@ -23,7 +20,7 @@ Images = NDArray[Any]
 Complexes = NDArray[Any]
 
 ACROSS = 48  # pixels in one product: few enough for the linear algebra library not to start threads inside ours
-OVERLAP = 8  # rows taken at a time, in units of those that have to be taken again
+OVERLAP = 8  # rows or columns taken at a time, in units of those that have to be taken again
 
 
 @dataclass(frozen=True, eq=False)
@@ -49,24 +46,26 @@ class Collected:
         kind = self.samples.real.dtype
         shape = (self.rows[-1].pixels.stop, self.columns[-1].pixels.stop)
         out = np.zeros((4 if self.jones is None else 1, *shape), dtype=kind)
-        for (down, across), samples in self._between():
-            rows = [block.every(self.parts, down, kind) for block in self.rows]
-            columns = [block.every(self.parts, across, kind) for block in self.columns]
-            _collect(out, samples, rows, columns)
+        rows = [[block.every(self.parts, part, kind) for block in self.rows] for part in range(self.parts)]
+        for across, moved in _moved(self.samples, self.parts, axis=2):
+            for columns in _groups([block.every(self.parts, across, kind) for block in self.columns]):
+                near = _wrapped(moved, columns[0].first, columns[-1].last, axis=2)
+                for down, samples in _moved(near, self.parts, axis=1):
+                    _collect(out, samples, rows[down], columns)
         return out if self.jones is None else np.multiply.outer(stokes(self.jones).astype(kind), out[0])
 
-    def _between(self) -> Iterator[tuple[tuple[int, int], Complexes]]:
-        """The field moved by each part of a sample along both sides, one after the other."""
-        yield (0, 0), self.samples
-        if self.parts == 1:
-            return
-        spectrum = forward(self.samples.copy())
-        turns = [_turn(self.samples.shape[-1], part / self.parts) for part in range(self.parts)]
-        for down, across in product(range(self.parts), repeat=2):
-            if (down, across) != (0, 0):
-                moved = spectrum.copy()
-                multiply_separable(moved, turns[across], turns[down])
-                yield (down, across), inverse(moved)
+
+def _moved(samples: Complexes, parts: int, axis: int) -> Iterator[tuple[int, Complexes]]:
+    """The field moved along one side by each part of a sample, one after the other."""
+    yield 0, samples
+    if parts == 1:
+        return
+    spectrum = fft.fft(samples, axis=axis, workers=WORKERS)
+    for part in range(1, parts):
+        turn = _turn(samples.shape[axis], part / parts).astype(samples.dtype)
+        moved = spectrum if part == parts - 1 else spectrum.copy()
+        moved *= turn if axis == 2 else turn[:, None]
+        yield part, fft.ifft(moved, axis=axis, overwrite_x=True, workers=WORKERS)
 
 
 def _turn(count: int, part: float) -> NDArray[np.complex128]:
@@ -77,25 +76,26 @@ def _turn(count: int, part: float) -> NDArray[np.complex128]:
 
 
 def _collect(out: Images, samples: Complexes, rows: list[Block], columns: list[Block]) -> None:
-    """Add what pixels collect from samples."""
+    """Add what some columns of pixels collect from samples that begin with the first that they need."""
+    start, stop = columns[0].pixels.start, columns[-1].pixels.stop
     for group in _groups(rows):
         first, last = group[0].first, group[-1].last
-        across = _across(samples, first, last, columns, out)
+        across = _across(samples, first, last, columns)
 
         def down(block: Block, first: int = first, across: Images = across) -> None:
             near = across[:, block.first - first : block.last - first]
-            for start in range(0, out.shape[2], ACROSS):
-                pixels = slice(start, start + ACROSS)
-                out[:, block.pixels, pixels] += block.matrix @ near[:, :, pixels]
+            for place in range(start, stop, ACROSS):
+                pixels = slice(place, min(place + ACROSS, stop))
+                out[:, block.pixels, pixels] += block.matrix @ near[:, :, pixels.start - start : pixels.stop - start]
 
         together(down, group)
 
 
-def _groups(rows: list[Block]) -> Iterator[list[Block]]:
-    """Neighbouring blocks, so many at a time that few rows of samples have to be taken twice."""
-    shared = max(one.last - other.first for one, other in zip(rows, rows[1:] or rows, strict=False))
+def _groups(blocks: list[Block]) -> Iterator[list[Block]]:
+    """Neighbouring blocks, so many at a time that few samples have to be taken twice."""
+    shared = max(one.last - other.first for one, other in zip(blocks, blocks[1:] or blocks, strict=False))
     group: list[Block] = []
-    for block in rows:
+    for block in blocks:
         group.append(block)
         if block.last - group[0].first > OVERLAP * shared:
             yield group
@@ -104,18 +104,20 @@ def _groups(rows: list[Block]) -> Iterator[list[Block]]:
         yield group
 
 
-def _across(samples: Complexes, first: int, last: int, columns: list[Block], out: Images) -> Images:
+def _across(samples: Complexes, first: int, last: int, columns: list[Block]) -> Images:
     """Irradiance in some rows of samples, collected along the rows: (images, rows, pixels)."""
-    count = samples.shape[-1]
-    across = np.empty((len(out), last - first, out.shape[2]), dtype=out.dtype)
+    left, start, stop = columns[0].first, columns[0].pixels.start, columns[-1].pixels.stop
+    images = 1 if len(samples) == 1 else 4
+    across = np.empty((images, last - first, stop - start), dtype=samples.real.dtype)
 
     def fill(strip: slice) -> None:
-        images = _irradiance(_wrapped(samples, first + strip.start, first + strip.stop, axis=1))
+        irradiance = _irradiance(_wrapped(samples, first + strip.start, first + strip.stop, axis=1))
         for block in columns:
-            near = _wrapped(images, block.first, block.last, axis=2)
-            np.matmul(near, block.matrix.T, out=across[:, strip, block.pixels])
+            near = irradiance[..., block.first - left : block.last - left]
+            pixels = slice(block.pixels.start - start, block.pixels.stop - start)
+            np.matmul(near, block.matrix.T, out=across[:, strip, pixels])
 
-    strips(fill, last - first, count)
+    strips(fill, last - first, samples.shape[-1])
     return across
 
 
@@ -131,5 +133,11 @@ def _irradiance(samples: Complexes) -> Images:
     if len(samples) == 1:
         return np.asarray(samples.real**2 + samples.imag**2)
     (xr, yr), (xi, yi) = samples.real, samples.imag
+    images = np.empty((4, *xr.shape), dtype=xr.dtype)
     px, py = xr * xr + xi * xi, yr * yr + yi * yi
-    return np.stack([px + py, px - py, 2 * (xr * yr + xi * yi), 2 * (xi * yr - xr * yi)])
+    np.add(px, py, out=images[0])
+    np.subtract(px, py, out=images[1])
+    np.add(xr * yr, xi * yi, out=images[2])
+    np.subtract(xi * yr, xr * yi, out=images[3])
+    images[2:] *= 2
+    return images

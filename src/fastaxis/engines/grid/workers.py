@@ -11,7 +11,7 @@ from typing import TypeVar
 __all__ = ["WORKERS", "strips", "together"]
 
 WORKERS = os.cpu_count() or 1
-STRIP = 1 << 16  # samples in a strip: 1 MB of complex numbers
+STRIP = 1 << 15  # samples in a strip: half a megabyte of complex numbers
 ALONE = 1 << 18  # samples below which handing out the work takes longer than it saves
 
 Job = TypeVar("Job")
