@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterable, Mapping
+from collections.abc import Iterable, Mapping, Sequence
 from os import PathLike
 from pathlib import Path
 from typing import Any, Self
@@ -346,15 +346,30 @@ class Train:
         plan = late("plan", "make_plan")(self, target, grid=grid, engine=engine, power_only=True)
         return late("engines", "propagate")(plan)
 
-    def expose(self, target: str, settings: Any, *, grid: Any = None, engine: str = "auto") -> Any:
-        """Camera frames, one for each analyzer setting, on one common scale."""
-        return late("camera.exposing", "expose")(self, target, settings, grid=grid, engine=engine)
+    def expose(self, target: str | Sequence[str], settings: Any, **options: Any) -> Any:
+        """Camera frames, one for each analyzer setting, on one common scale; of several sensors if several are named.
+
+        Options are ``grid``, ``engine`` and ``precision``, as in :func:`fastaxis.camera.expose`.
+        """
+        return late("camera.exposing", "expose")(self, target, settings, **options)
 
     def sweep(
         self, values: Mapping[str, Any], target: str, settings: Any, *, zipped: bool = False, **options: Any
     ) -> Any:
         """Camera frames for many values of some parameters: {"hwp.fast": angles, "qp.retardance": values}."""
         return late("studies.sweep", "sweep")(self, values, target, settings, zipped=zipped, **options)
+
+    def tolerance(self, errors: Mapping[Any, Any], figures_of_merit: Mapping[str, Any], **options: Any) -> Any:
+        """How errors of parameters spread: sensitivities, ranked contributions, worst case, draws and yield.
+
+        ``train.tolerance({"hwp.fast": normal(0.5*deg)}, {"leak": power_at("pbs.reflected")}, draws=10_000, seed=0)``,
+        with errors and figures of merit from ``fastaxis.studies.tolerance``.
+        """
+        return late("studies.tolerance", "tolerance")(self, errors, figures_of_merit, **options)
+
+    def find_fault(self, frames: Any, settings: Any, **options: Any) -> Any:
+        """Which single mistake on the bench would make the frames that were recorded, ranked."""
+        return late("studies.fault", "find_fault")(self, frames, settings, **options)
 
     def derive(self, target: str, **options: Any) -> Any:
         """The light at a target as a formula, with the letters of the train left as letters."""

@@ -1,0 +1,167 @@
+"""The tolerance study of a train: which knob matters, and how many benches come out good."""
+
+from __future__ import annotations
+
+from collections.abc import Callable, Mapping
+from concurrent.futures import Executor
+from pathlib import Path
+from typing import Any, TypeAlias
+
+import numpy as np
+from numpy.typing import NDArray
+
+from fastaxis.errors import FileFormatError, ParameterError
+from fastaxis.studies.tolerance.causes import EXAMPLE, Causes, read_causes
+from fastaxis.studies.tolerance.checkpoint import Checkpoint, fingerprint
+from fastaxis.studies.tolerance.drawing import batch_size, shares, work_off
+from fastaxis.studies.tolerance.merits import PictureMerit, StokesMerit
+from fastaxis.studies.tolerance.result import Contribution, Limits, Range, Tolerance
+from fastaxis.studies.tolerance.slopes import Answer, answers, slopes
+from fastaxis.studies.tolerance.working import Merit, prepared
+
+__all__ = ["tolerance"]
+
+Reals: TypeAlias = NDArray[np.float64]
+
+
+def tolerance(
+    train: Any,
+    errors: Mapping[Any, Any],
+    figures_of_merit: Mapping[str, Merit],
+    *,
+    limits: Mapping[str, Limits] | None = None,
+    draws: int = 10_000,
+    seed: int = 0,
+    executor: Executor | None = None,
+    checkpoint: str | Path | None = None,
+    progress: Callable[[int, int], None] | None = None,
+    batch: int | None = None,
+    grid: Any = None,
+    engine: str = "auto",
+) -> Tolerance:
+    """Sensitivities, ranked contributions, worst case and a seeded Monte Carlo.
+
+    Errors that move polarization laws only (axes, retardances, extinctions, rotations) cost a few propagations in all,
+    whatever the number of draws. Any other error (a place, a distance, the light itself) takes one propagation a draw.
+
+    Parameters
+    ----------
+    train : with numbers everywhere.
+    errors : {"hwp.fast": normal(0.5*deg), ("a.axis", "b.axis"): together(uniform(0.1*deg)), ...}; a parameter named more
+        than once gets the sum.
+    figures_of_merit : name -> ``power_at(...)`` and the like, or any function of a train that gives a number.
+    limits : name -> (lowest, highest) that is good; None for no limit.
+    draws, seed : of the Monte Carlo.
+    executor : any ``concurrent.futures.Executor``; in this thread if left out. A process pool needs a train and
+        functions that can be pickled.
+    checkpoint : path of an .npz file, written after each batch; a study that was stopped goes on from there.
+    progress : called as progress(draws done, draws) after each batch.
+    batch : draws in a batch.
+    grid, engine : as in ``train.expose``.
+
+    Raises
+    ------
+    ParameterError : no errors or figures of merit, an unknown parameter, limits of something else, no draws.
+    FileFormatError : the checkpoint is that of another study.
+
+    Examples
+    --------
+    >>> import fastaxis as fa
+    >>> from fastaxis.studies.tolerance import normal, power_at
+    >>> from fastaxis.units import deg, mm, mW, nm
+    >>> train = fa.Train(wavelength=633*nm).along(fa.Laser(waist=1*mm, power=1*mW, state=fa.H, name="laser"),
+    ...     fa.Polarizer(axis=45*deg, name="pol"))
+    >>> found = train.tolerance({"pol.axis": normal(1*deg)}, {"power": power_at("pol")}, draws=100)
+    >>> round(found.sensitivities["power"]["pol.axis"].value / mW, 9), found.ranking[0].cause
+    (-1.0, 'pol.axis')
+    """
+    causes = read_causes(train, errors)
+    merits, wanted = _checked(figures_of_merit, limits or {}, draws)
+    options = {"grid": grid, "engine": engine}
+    offsets = causes.offsets(shares(draws, len(causes.errors), seed))
+    widths = _widths(causes)
+    found = {name: answers(train, causes, merit, options) for name, merit in merits.items()}
+    works = [prepared(train, causes, offsets, merit, options) for merit in merits.values()]
+    study = fingerprint(_text(train), *map(repr, errors.items()), *map(_told, merits.items()), draws, seed, options)
+    kept = Checkpoint(checkpoint, study, (draws, len(merits)))
+    return Tolerance(
+        train=train.copy(),
+        causes=causes,
+        merits=merits,
+        limits=wanted,
+        nominal={name: start for name, (start, _) in found.items()},
+        sensitivities={name: slopes(train, causes, merit, widths, options) for name, merit in merits.items()},
+        rankings={name: _ranked(causes, each) for name, (_, each) in found.items()},
+        worst={name: _worst(train, causes, merit, found[name][1], options) for name, merit in merits.items()},
+        offsets=offsets,
+        values=work_off(works, kept, size=batch or batch_size(works), executor=executor, progress=progress),
+        seed=seed,
+    )
+
+
+def _checked(
+    merits: Mapping[str, Merit], limits: Mapping[str, Limits], draws: int
+) -> tuple[dict[str, Merit], dict[str, Limits]]:
+    known = isinstance(merits, Mapping) and bool(merits)
+    if not known or not all(isinstance(m, StokesMerit | PictureMerit) or callable(m) for m in merits.values()):
+        raise ParameterError(
+            "figures of merit are named, and each is power_at(...) or another of its kind, or a function of a train",
+            got=f"tolerance: {merits!r}",
+            fix=EXAMPLE,
+        )
+    for name in limits:
+        if name not in merits:
+            raise ParameterError(
+                f"limits belong to figures of merit: {', '.join(merits)}",
+                got=f"tolerance: limits of {name!r}",
+                fix=f'limits={{"{next(iter(merits))}": (None, 1e-3)}}',
+            )
+    if isinstance(draws, bool) or not isinstance(draws, int) or draws < 1:
+        raise ParameterError(
+            "draws is a whole number of 1 or more", got=f"tolerance: draws = {draws!r}", fix="draws=1000"
+        )
+    return dict(merits), dict(limits)
+
+
+def _widths(causes: Causes) -> Reals:
+    """Standard deviation of each parameter."""
+    sigmas = np.array([error.sigma for error in causes.errors])
+    return np.asarray(np.sqrt(((causes.directions * sigmas[:, None]) ** 2).sum(axis=0)))
+
+
+def _ranked(causes: Causes, each: tuple[Answer, ...]) -> tuple[Contribution, ...]:
+    variances = np.zeros(len(causes.causes))
+    for owner, error, answer in zip(causes.owners, causes.errors, each, strict=True):
+        variances[owner] += answer.variance(error.sigma, error.kurtosis)
+    total = variances.sum() or 1.0
+    order = np.argsort(-variances, kind="stable")
+    return tuple(
+        Contribution(causes.causes[k].label, float(np.sqrt(variances[k])), float(variances[k] / total)) for k in order
+    )
+
+
+def _worst(train: Any, causes: Causes, merit: Merit, each: tuple[Answer, ...], options: dict[str, Any]) -> Range:
+    """The merit at the corners that give the least and the most by slope and curvature."""
+    corners = []
+    for sign in (-1, 1):
+        sizes = []
+        for error, answer in zip(causes.errors, each, strict=True):
+            tried = (0.0, error.limit, -error.limit)
+            sizes.append(max(tried, key=lambda size, a=answer: sign * a.shift(size)))  # type: ignore[misc]
+        corners.append(np.array(sizes) @ causes.directions)
+    values = prepared(train, causes, np.array(corners), merit, options).values()
+    return Range(float(values.min()), float(values.max()))
+
+
+def _text(train: Any) -> str:
+    try:
+        return str(train.to_text())
+    except FileFormatError:
+        return str(train)  # a part holds a function: its name has to do
+
+
+def _told(item: tuple[str, Merit]) -> str:
+    name, merit = item
+    if isinstance(merit, StokesMerit | PictureMerit):
+        return f"{name}: {sorted((k, np.asarray(v).tolist()) for k, v in vars(merit).items() if v is not None)}"
+    return f"{name}: {getattr(merit, '__module__', '')}.{getattr(merit, '__qualname__', type(merit).__qualname__)}"
