@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from dataclasses import fields as fields_of
 from dataclasses import replace
-from typing import TYPE_CHECKING, Any
+from typing import TYPE_CHECKING, Any, TypeAlias, overload
 
 import numpy as np
 from numpy.typing import NDArray
@@ -21,17 +21,28 @@ from fastaxis.loader import late
 if TYPE_CHECKING:
     from collections.abc import Iterable, Sequence
 
+    Settings: TypeAlias = Setting | State | Iterable[Setting | State]
+
 __all__ = ["expose", "merge_guards", "recorded", "sensor_at"]
 
 
+@overload
+def expose(
+    train: Any, target: str, settings: Settings, *, grid: Any = ..., engine: str = ..., precision: str = ...
+) -> Exposure: ...
+@overload
+def expose(
+    train: Any, target: Sequence[str], settings: Settings, *, grid: Any = ..., engine: str = ..., precision: str = ...
+) -> tuple[Exposure, ...]: ...
 def expose(
     train: Any,
-    target: str,
-    settings: Setting | State | Iterable[Setting | State],
+    target: str | Sequence[str],
+    settings: Settings,
     *,
     grid: Any = None,
     engine: str = "auto",
-) -> Exposure:
+    precision: str = "double",
+) -> Exposure | tuple[Exposure, ...]:
     """Take one frame for each analyzer setting, all on one scale.
 
     The light is propagated once, whatever the number of settings: the camera plane is kept as four Stokes images,
@@ -45,10 +56,13 @@ def expose(
     Parameters
     ----------
     train : the bench.
-    target : name of a Camera or Detector, as in "cam".
+    target : name of a Camera or Detector, as in "cam"; or several names, which give as many exposures. What the ways
+        to several sensors have in common is propagated once.
     settings : states that pass (fa.SIX_STATES, fa.linear(30*deg)) or analyzers (fa.plate_then_polarizer(...)).
     grid : sampling set by hand (fa.Grid); chosen by the plan if left out.
     engine : "auto", or the name of an engine.
+    precision : "double", or "single" for samples and frames of half the memory; frames are then right to about 1e-6
+        of their peak. Only the grid engine has samples; the others take no notice.
 
     Raises
     ------
@@ -67,9 +81,26 @@ def expose(
     """
     analyzers = as_settings(settings)
     weight_matrix(analyzers)  # letters are refused before anything is computed
-    plan = late("plan", "make_plan")(train, target, grid=grid, engine=engine)
-    sensor = sensor_at(train, target)
-    fields = late("engines", "propagate")(plan)
+    targets = (target,) if isinstance(target, str) else tuple(target)
+    plan = late("plan", "make_plan")
+    plans = [plan(train, name, grid=grid, engine=engine) for name in targets]
+    if precision != "double":
+        plans = [one.with_precision(precision) for one in plans]
+    sensors = [sensor_at(train, name) for name in targets]
+    shots = [_shot(train, *taken, analyzers) for taken in zip(plans, sensors, _lights(plans), strict=True)]
+    return shots[0] if isinstance(target, str) else tuple(shots)
+
+
+def _lights(plans: Sequence[Any]) -> Iterable[Any]:
+    if len(plans) == 1:
+        return (late("engines", "propagate")(plans[0]),)
+    shared: Iterable[Any] = late("engines.sharing", "Relay")().propagate(plans)
+    return shared
+
+
+def _shot(
+    train: Any, plan: Any, sensor: Camera | Detector, fields: Sequence[Any], analyzers: tuple[Setting, ...]
+) -> Exposure:
     stokes, x, y = recorded(fields, sensor)
     return Exposure(
         stokes=stokes,
@@ -79,7 +110,7 @@ def expose(
         pixel=sensor.pixel if isinstance(sensor, Camera) else None,
         wavelength=float(plan.wavelength),
         name=str(getattr(train, "name", "")),
-        target=target,
+        target=plan.target,
         orientation=getattr(sensor, "orientation", "upright"),
         guard=merge_guards([field.guard for field in fields]),
         plan=str(plan),

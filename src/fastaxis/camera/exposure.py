@@ -119,11 +119,11 @@ class Exposure:
         >>> float(shots.frame("H")[0, 0]), float(shots.frame(V)[0, 0])
         (2.0, 1.0)
         """
-        return self._mixed(self._setting(which).weights[None] * self._s3_signs)[0]
+        frame: NDArray[np.float64] = self._mixed(self._setting(which).weights[None] * self._s3_signs)[0]
+        return frame
 
     def _mixed(self, weights: NDArray[np.float64]) -> NDArray[np.float64]:
-        frames: NDArray[np.float64] = mixed(weights, self.stokes.reshape(4, -1))
-        return np.asarray(frames.reshape(len(weights), *self.stokes.shape[1:]))
+        return mixed(weights, self.stokes.reshape(4, -1)).reshape(-1, *self.stokes.shape[1:])
 
     def power(self, which: int | str | Setting | State) -> float:
         """Power on the sensor behind this setting [W]; ``which`` as in :meth:`frame`."""

@@ -52,7 +52,8 @@ def _branch(branch: Branch) -> Iterator[str]:
         yield f"  arm {branch.path}: engine {branch.engine}, path {float(branch.length) * 1e3:.6g} mm"
     sampling = branch.sampling
     if sampling is not None:
-        yield f"  {sampling.grid.samples} x {sampling.grid.samples} samples ({sampling.chosen})"
+        precision = "" if sampling.precision == "double" else f", {sampling.precision} precision"
+        yield f"  {sampling.grid.samples} x {sampling.grid.samples} samples ({sampling.chosen}){precision}"
         yield "  margin: of room or pitch over what the light needs; 1 or more is enough"
         yield f"    0. source: {_sampled(sampling.planes[0])}"
     for index, step in enumerate(branch.steps, start=1):

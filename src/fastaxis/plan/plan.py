@@ -8,6 +8,7 @@ from fractions import Fraction
 from itertools import groupby
 from typing import TYPE_CHECKING
 
+from fastaxis.errors import ParameterError
 from fastaxis.light import MONOCHROMATIC, Beam, Line, Source
 from fastaxis.plan.explaining import explain
 from fastaxis.plan.sampling import Sampling
@@ -17,6 +18,8 @@ if TYPE_CHECKING:
     from fastaxis.plan.network import Network
 
 __all__ = ["Branch", "Plan"]
+
+PRECISIONS = ("double", "single")
 
 
 @dataclass(frozen=True)
@@ -53,6 +56,10 @@ class Branch:
     path: str = ""
 
 
+def _in_precision(branch: Branch, precision: str) -> Branch:
+    return replace(branch, sampling=branch.sampling and replace(branch.sampling, precision=precision))
+
+
 @dataclass(frozen=True)
 class Plan:
     """How a question to a train will be answered. ``print(plan)`` says it step by step.
@@ -85,6 +92,21 @@ class Plan:
     def sampling(self) -> Sampling | None:
         """The sampling of the first incoherent part."""
         return self.branches[0].sampling
+
+    def with_precision(self, precision: str) -> Plan:
+        """The plan with samples of "double" or "single" precision; engines without samples take no notice.
+
+        Raises
+        ------
+        ParameterError : another precision.
+        """
+        if precision not in PRECISIONS:
+            raise ParameterError(
+                "samples are numbers of double or single precision",
+                got=f"precision = {precision!r}",
+                fix='precision="single"',
+            )
+        return replace(self, branches=tuple(_in_precision(branch, precision) for branch in self.branches))
 
     @property
     def groups(self) -> tuple[tuple[Branch, ...], ...]:

@@ -76,12 +76,14 @@ class Sampling:
     planes : after each step; ``planes[0]`` is the source itself.
     taper : whether a plane wave fades out smoothly at the window's edge, where an open stop does not bound it.
     chosen : "automatic" or "by hand".
+    precision : "double", or "single" for half the memory and six digits.
     """
 
     grid: Grid
     planes: tuple[Plane, ...]
     taper: bool = False
     chosen: str = "automatic"
+    precision: str = "double"
 
     @property
     def worst(self) -> Plane:

@@ -58,14 +58,15 @@ class Collected:
 def _moved(samples: Complexes, parts: int, axis: int) -> Iterator[tuple[int, Complexes]]:
     """The field moved along one side by each part of a sample, one after the other."""
     yield 0, samples
-    if parts == 1:
-        return
-    spectrum = fft.fft(samples, axis=axis, workers=WORKERS)
+    moved = np.empty_like(samples) if parts > 1 else samples
     for part in range(1, parts):
+        # Transformed anew for each part: a spectrum kept would be one more plane of samples at the peak of memory.
+        np.copyto(moved, samples)
+        moved = fft.fft(moved, axis=axis, overwrite_x=True, workers=WORKERS)
         turn = _turn(samples.shape[axis], part / parts).astype(samples.dtype)
-        moved = spectrum if part == parts - 1 else spectrum.copy()
         moved *= turn if axis == 2 else turn[:, None]
-        yield part, fft.ifft(moved, axis=axis, overwrite_x=True, workers=WORKERS)
+        moved = fft.ifft(moved, axis=axis, overwrite_x=True, workers=WORKERS)
+        yield part, moved
 
 
 def _turn(count: int, part: float) -> NDArray[np.complex128]:

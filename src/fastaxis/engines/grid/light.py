@@ -10,7 +10,7 @@ from numpy.typing import NDArray
 
 from fastaxis.engines.grid.workers import strips
 
-__all__ = ["GridLight", "Samples", "axis", "curve", "multiply_separable"]
+__all__ = ["GridLight", "Samples", "axis", "curve", "inner", "multiply_separable"]
 
 Samples: TypeAlias = NDArray[Any]
 """Complex numbers of double or single precision."""
@@ -64,12 +64,14 @@ class GridLight:
     @property
     def power(self) -> float:
         """Power in the window [W]."""
-        total = float(np.vdot(self.samples, self.samples).real) * self.pitch**2
+        total = inner(self.samples, self.samples).real * self.pitch**2
         return total if self.jones is None else total * float(np.vdot(self.jones, self.jones).real)
 
-    def components(self) -> NDArray[np.complex128]:
+    def components(self) -> Samples:
         """(Ex, Ey) samples, curvature still apart."""
-        return self.samples if self.jones is None else self.jones[:, None, None] * self.samples
+        if self.jones is None:
+            return self.samples
+        return self.jones.astype(self.samples.dtype)[:, None, None] * self.samples
 
     def referred(self, curvature: float) -> GridLight:
         """The same field with another curvature kept apart; changes the samples in place."""
@@ -88,6 +90,15 @@ def axis(count: int, pitch: float) -> NDArray[np.float64]:
 def curve(x: NDArray[np.float64], curvature: float, wavelength: float) -> NDArray[np.complex128]:
     """exp(i k curvature x^2/2) along one axis; the plane's factor is the outer product."""
     return np.asarray(np.exp(1j * np.pi * curvature / wavelength * x * x))
+
+
+def inner(one: Samples, other: Samples) -> complex:
+    """The sum of conj(one) other over all samples, added up in double precision."""
+
+    def add(strip: slice) -> complex:
+        return complex(np.vdot(*(part[:, strip].astype(np.complex128, copy=False) for part in (one, other))))
+
+    return complex(sum(strips(add, *one.shape[-2:])))
 
 
 def multiply_separable(samples: Samples, across: NDArray[Any], down: NDArray[Any] | None = None) -> None:

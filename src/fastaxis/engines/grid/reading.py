@@ -14,7 +14,7 @@ from fastaxis.engines.grid.collecting import Collected
 from fastaxis.engines.grid.filled import filled
 from fastaxis.engines.grid.interpolant import value_matrix
 from fastaxis.engines.grid.kernel import blocks, reach_for
-from fastaxis.engines.grid.light import GridLight, Samples, curve
+from fastaxis.engines.grid.light import GridLight, Samples, curve, inner
 from fastaxis.engines.grid.nearby import nearby
 from fastaxis.engines.grid.transforms import forward
 from fastaxis.light import Raster, stokes
@@ -55,10 +55,10 @@ class GridField:
         """S0 .. S3 of the light in the window [W], shape (4,)."""
         light = self.light
         if light.jones is not None:
-            scalar = float(np.vdot(light.samples, light.samples).real) * light.pitch**2
+            scalar = inner(light.samples, light.samples).real * light.pitch**2
             return np.asarray(scalar * stokes(light.jones))
-        (ex, ey), area = light.samples, light.pitch**2
-        px, py, cross = float(np.vdot(ex, ex).real), float(np.vdot(ey, ey).real), 2 * complex(np.vdot(ex, ey))
+        (ex, ey), area = (light.samples[:1], light.samples[1:]), light.pitch**2
+        px, py, cross = inner(ex, ex).real, inner(ey, ey).real, 2 * inner(ex, ey)
         return np.array([px + py, px - py, cross.real, -cross.imag]) * area
 
     def at(self, x: Reals, y: Reals) -> Complexes:

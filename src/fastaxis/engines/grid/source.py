@@ -10,7 +10,7 @@ from numpy.typing import NDArray
 from scipy.ndimage import binary_dilation
 from scipy.special import erf
 
-from fastaxis.engines.grid.light import GridLight, Samples, axis, curve, multiply_separable
+from fastaxis.engines.grid.light import GridLight, Samples, axis, curve, inner, multiply_separable
 from fastaxis.engines.grid.workers import strips
 from fastaxis.light import SampledMode
 from fastaxis.plan import Branch
@@ -28,7 +28,8 @@ def start(branch: Branch, sampling: Sampling) -> GridLight:
     x = axis(count, pitch)
     terms, scale = branch.beam.terms, branch.beam.scale(branch.wavelength) * np.sqrt(branch.power)
     curvature = sampling.planes[0].spread.curvature
-    shapes = (_shape(term.mode, x, pitch, branch.wavelength) for term in terms)
+    kind = np.dtype(np.complex64 if sampling.precision == "single" else np.complex128)
+    shapes = (_shape(term.mode, x, pitch, branch.wavelength, kind) for term in terms)
     numbers = [scale * term.number for term in terms]
     if branch.beam.state is not None:
         samples, jones = _sum(shapes, [np.array([number]) for number in numbers]), branch.beam.state.jones
@@ -52,13 +53,13 @@ def _sum(shapes: Iterable[Samples], vectors: Sequence[NDArray[np.complex128]]) -
         elif vector.size == 1:
             total = np.multiply(shape, vector[0], out=shape)[None]
         else:
-            total = vector[:, None, None] * shape
+            total = vector.astype(shape.dtype)[:, None, None] * shape
     assert total is not None
     return total
 
 
-def _shape(mode: Any, x: NDArray[np.float64], pitch: float, wavelength: float) -> NDArray[np.complex128]:
-    shape = np.empty((x.size, x.size), dtype=complex)
+def _shape(mode: Any, x: NDArray[np.float64], pitch: float, wavelength: float, kind: np.dtype[Any]) -> Samples:
+    shape: Samples = np.empty((x.size, x.size), dtype=kind)
 
     def fill(strip: slice) -> None:
         shape[strip] = mode.amplitude(x[None, :], x[strip, None], wavelength)
@@ -68,11 +69,11 @@ def _shape(mode: Any, x: NDArray[np.float64], pitch: float, wavelength: float) -
         _soften(shape, mode, x, pitch, wavelength)
     if mode.hard or isinstance(mode, SampledMode):
         # What edges and splines between foreign samples leave of unit power is the sampling's doing, not the beam's.
-        shape /= np.sqrt(np.vdot(shape, shape).real * pitch**2)
+        shape /= np.sqrt(inner(shape[None], shape[None]).real * pitch**2)
     return shape
 
 
-def _soften(shape: NDArray[np.complex128], mode: Any, x: NDArray[np.float64], pitch: float, wavelength: float) -> None:
+def _soften(shape: Samples, mode: Any, x: NDArray[np.float64], pitch: float, wavelength: float) -> None:
     """A hard edge averaged over each sample it crosses; cut to whole samples its area would be wrong by chance."""
     lit = shape != 0
     rows, columns = np.nonzero(binary_dilation(lit) & binary_dilation(~lit))
