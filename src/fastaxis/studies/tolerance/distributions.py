@@ -77,7 +77,7 @@ def _unit(kind: str, shares: Reals) -> Any:
         return 2 * shares - 1
     if kind == "triangular":
         lower = np.sqrt(2 * np.minimum(shares, 1 - shares)) - 1
-        return np.where(shares < 0.5, lower, -lower)
+        return np.where(shares < 0.5, lower, 0.0 - lower)
     return np.where(shares < 0.5, -1.0, 1.0)
 
 

@@ -49,7 +49,7 @@ class StokesMerit:
 
     def values(self, stokes: Reals) -> Reals:
         """The number for light (..., steps, 4) [W]; shape (...)."""
-        return _read(self, stokes.reshape(*stokes.shape[:-2], -1) @ self.rows.T)
+        return np.asarray(_read(self, stokes.reshape(*stokes.shape[:-2], -1) @ self.rows.T))
 
     def slope(self, stokes: Reals, change: Reals) -> float:
         """Its derivative where the light (steps, 4) changes at this rate, by the chain rule."""
@@ -129,9 +129,9 @@ def measured(target: str, quantity: str, *, knob: str, settings: Sequence[Any], 
     ----------
     target : the detector behind the turned part.
     quantity : "s1", "s2", "s3", "azimuth" or "ellipticity".
-    knob : parameter that is turned for each reading, "plate.fast".
-    settings : the analyzer as it is believed to stand at each reading, ``fa.rotating_plate(64)``; the knob is turned by
-        equal steps over half a turn, or over ``360*deg`` where the settings repeat.
+    knob : parameter that is turned for each reading, "plate.fast": to its declared value, its error and the angle of
+        the plate in the setting, taken together.
+    settings : the analyzer as it is believed to stand at each reading, ``fa.rotating_plate(64)``.
     wanted : value that is subtracted.
 
     Raises
@@ -150,17 +150,16 @@ def measured(target: str, quantity: str, *, knob: str, settings: Sequence[Any], 
         raise ParameterError(f"a polarimeter measures {', '.join(known)}", got=f"measured: {quantity!r}", fix='"s1"')
     # Each reading is the power behind the true parts, S0 at the detector.
     rows = np.kron(np.linalg.pinv(weights), np.array([1.0, 0.0, 0.0, 0.0]))
-    steps = tuple(_turns(weights, settings))
+    steps = tuple(_turns(settings))
     reading = "component" if known[quantity] else quantity
     unit = "" if known[quantity] else "rad"
     return StokesMerit(target, reading, rows, wanted, known[quantity], knob, steps, unit)
 
 
-def _turns(weights: Reals, settings: Sequence[Any]) -> list[float]:
-    """The angle of the first plate of each setting, less that of the first setting."""
-    angles = [
-        getattr(as_setting(one).laws[0], "angle", math.nan) if as_setting(one).laws else math.nan for one in settings
-    ]
+def _turns(settings: Sequence[Any]) -> list[float]:
+    """Angle of the fast axis of the plate of each setting."""
+    plates = [as_setting(one).laws[:1] for one in settings]
+    angles = [getattr(plate[0], "angle", math.nan) if plate else math.nan for plate in plates]
     if any(math.isnan(angle) for angle in angles):
         raise ParameterError(
             "a polarimeter turns a plate in front of a polarizer", got="measured: settings without a plate",

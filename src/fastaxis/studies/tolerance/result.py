@@ -106,7 +106,7 @@ class Tolerance:
     def good(self, merit: str | None = None) -> NDArray[np.bool_]:
         """Whether each draw is within the limits: of one figure of merit, or of all."""
         if merit is None:
-            return np.logical_and.reduce([self.good(name) for name in self.merits])
+            return np.asarray(np.logical_and.reduce([self.good(name) for name in self.merits]))
         low, high = self.limits.get(self._named(merit), (None, None))
         values = self.samples[merit]
         # A value that could not be read (nan) is not good where a limit is set.

@@ -71,7 +71,7 @@ def slopes(train: Any, causes: Causes, merit: Merit, widths: Reals, options: dic
     """
     exact = _exact(train, causes, merit, options) if isinstance(merit, StokesMerit) else {}
     rest = [k for k, name in enumerate(causes.names) if name not in exact]
-    differences = _differences(train, causes, merit, rest, widths, options) if rest else {}
+    differences = _differences(train, causes, merit, rest=rest, widths=widths, options=options) if rest else {}
     return {name: exact.get(name) or differences[name] for name in causes.names}
 
 
@@ -115,7 +115,7 @@ def _derivative() -> Reals:
 
 
 def _differences(
-    train: Any, causes: Causes, merit: Merit, rest: list[int], widths: Reals, options: dict[str, Any]
+    train: Any, causes: Causes, merit: Merit, *, rest: list[int], widths: Reals, options: dict[str, Any]
 ) -> dict[str, Slope]:
     """Central differences over two steps, extrapolated to a step of zero; their difference gives the error."""
     steps = np.array([0.5, -0.5, 0.25, -0.25])

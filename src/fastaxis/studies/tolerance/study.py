@@ -47,8 +47,8 @@ def tolerance(
     Parameters
     ----------
     train : with numbers everywhere.
-    errors : {"hwp.fast": normal(0.5*deg), ("a.axis", "b.axis"): together(uniform(0.1*deg)), ...}; a parameter named more
-        than once gets the sum.
+    errors : {"hwp.fast": normal(0.5*deg), ("a.axis", "b.axis"): together(uniform(0.1*deg)), ...}; a parameter
+        named more than once gets the sum.
     figures_of_merit : name -> ``power_at(...)`` and the like, or any function of a train that gives a number.
     limits : name -> (lowest, highest) that is good; None for no limit.
     draws, seed : of the Monte Carlo.

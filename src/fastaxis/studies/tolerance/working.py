@@ -144,7 +144,7 @@ def prepared(train: Any, causes: Any, offsets: Reals, merit: Merit, options: dic
         names, values = _rows(train, causes, offsets, merit)
         chain = make_chain(train, merit.target, names, values)
         if chain is not None:
-            return _summed(train, merit, names, values, chain, options)
+            return _summed(train, merit, (names, values), chain, options)
     changes = tuple(causes.changes(row) for row in offsets)
     return Anew(merit, train.copy(), changes, options)
 
@@ -165,8 +165,9 @@ def _rows(train: Any, causes: Any, offsets: Reals, merit: StokesMerit | PictureM
 
 
 def _summed(
-    train: Any, merit: StokesMerit | PictureMerit, names: tuple[str, ...], values: Reals, chain: Chain, options: Any
+    train: Any, merit: StokesMerit | PictureMerit, rows: tuple[tuple[str, ...], Reals], chain: Chain, options: Any
 ) -> Summed:
+    names, values = rows
     bare = chain.stripped(train)
     kept = [k for k, name in enumerate(names) if name.partition(".")[0] not in chain.removed]
     fields = spanning(chain.fields)

@@ -1,0 +1,194 @@
+"""Which single mistake explains what is seen, and which further setting would tell the explanations apart."""
+
+from __future__ import annotations
+
+import math
+from collections.abc import Iterable, Iterator, Sequence
+from dataclasses import dataclass, field
+from itertools import combinations
+from typing import Any
+
+import numpy as np
+
+from fastaxis.camera import SIX_STATES
+from fastaxis.camera.exposing import expose
+from fastaxis.camera.settings import Setting, as_setting, as_settings
+from fastaxis.conventions import stamp
+from fastaxis.errors import ParameterError
+from fastaxis.light import State, linear
+from fastaxis.studies.fault.mistakes import Mistake, mistakes
+from fastaxis.studies.fault.watching import Watch
+
+__all__ = ["FaultReport", "Suspect", "find_fault", "suspects"]
+
+LEAST = math.radians(0.05)  # half a step of the values tried
+FURTHER = (*SIX_STATES, *(linear(math.radians(angle)) for angle in range(15, 180, 15) if angle % 45))
+
+
+@dataclass(frozen=True, eq=False)
+class Suspect:
+    """One mistake and how well it explains what was seen.
+
+    Parameters
+    ----------
+    words : what would be wrong.
+    misfit : of the train with it; 0 explains everything.
+    train : with the mistake.
+    """
+
+    words: str
+    misfit: float
+    train: Any = field(repr=False)
+
+
+def suspects(train: Any, watch: Watch) -> list[Suspect]:
+    """All single mistakes, the one that explains best first; among equals those with nothing to fit come first."""
+    found = [suspect for mistake in mistakes(train, watch.target) for suspect in _tried(train, mistake, watch)]
+    return sorted(found, key=lambda suspect: suspect.misfit)
+
+
+def _tried(train: Any, mistake: Mistake, watch: Watch) -> Iterator[Suspect]:
+    if not mistake.knob:
+        yield Suspect(mistake.words, watch.of(mistake.train), mistake.train)
+        return
+    misfits = watch.along(mistake)
+    if misfits is None:
+        return
+    value = float(mistake.values[_nearest(misfits, np.abs(mistake.values - mistake.nominal))])
+    if abs(value - mistake.nominal) < LEAST and mistake.train is train:
+        return  # best where it was declared: no mistake
+    words, train = mistake.at(value)
+    yield Suspect(words, float(np.nanmin(misfits[mistake.values == value])), train)
+
+
+def _nearest(misfits: Any, distances: Any) -> int:
+    """The best value, of several the one that is least off."""
+    best = np.nanmin(misfits)
+    # Values a rounding apart, as both ends of half a turn are, are equally good.
+    alike = np.flatnonzero(misfits <= best + 1e-9 * max(1.0, abs(best)))
+    return int(alike[np.argmin(distances[alike])])
+
+
+@dataclass(frozen=True, eq=False)
+class FaultReport:
+    """Single mistakes ranked by how well they reproduce recorded frames. ``print(report)`` tells them.
+
+    Parameters
+    ----------
+    declared : the train without a mistake.
+    ranking : the mistakes, best first.
+    target : camera or detector.
+    settings : of the frames.
+    noise : difference between frames that counts as none.
+    """
+
+    declared: Suspect
+    ranking: tuple[Suspect, ...]
+    target: str
+    settings: tuple[Setting, ...]
+    noise: float
+
+    @property
+    def ties(self) -> tuple[Suspect, ...]:
+        """The best explanation and all that are as good within the noise."""
+        best = self.ranking[0].misfit
+        return tuple(one for one in self.ranking if one.misfit <= max(best + self.noise, 1.01 * best))
+
+    def separating(self, further: Iterable[Any] = FURTHER) -> tuple[State | Setting, int] | None:
+        """The further setting that tells most pairs of equally good explanations apart, and how many pairs.
+
+        None if there is no tie, or no setting parts any of them by more than the noise: then they are the same light.
+        """
+        tried = tuple(further)
+        pairs = list(combinations([expose(one.train, self.target, tried) for one in self.ties], 2))
+        apart = np.array([[_difference(a.frame(k), b.frame(k)) for a, b in pairs] for k in range(len(tried))])
+        if not apart.size or apart.max() <= self.noise:
+            return None
+        # Of settings that part equally many, the one that parts them furthest.
+        parted = (apart > self.noise).sum(axis=1)
+        best = max(range(len(tried)), key=lambda k: (parted[k], apart[k].sum()))
+        return tried[best], int(parted[best])
+
+    def text(self, most: int = 8) -> str:
+        """The ranking in words."""
+        lines = [f"{self.target}: the frames differ from the bench as declared by {self.declared.misfit:.3g}"]
+        if self.declared.misfit <= self.noise:
+            lines.append("that is within the noise: nothing needs explaining")
+        lines += [f"{n:3}. {one.misfit:.3g}  {one.words}" for n, one in enumerate(self.ranking[:most], start=1)]
+        if len(self.ties) > 1:
+            found = self.separating()
+            told = "the same light behind every analyzer" if found is None else _told(*found, len(self.ties))
+            lines.append(f"{len(self.ties)} explanations are equally good: {told}")
+        return "\n".join([*lines, stamp()])
+
+    __str__ = text
+
+
+def _told(setting: State | Setting, parted: int, ties: int) -> str:
+    return f"a frame behind {as_setting(setting).label} parts {parted} of {ties * (ties - 1) // 2} pairs of them"
+
+
+def _difference(one: Any, other: Any) -> float:
+    """Size of the difference over that of both together; 0 for the same picture, about 1 for strangers."""
+    power = float(np.sqrt((one**2).sum() + (other**2).sum()))
+    return float(np.sqrt(((one - other) ** 2).sum())) / power if power else 0.0
+
+
+def find_fault(
+    train: Any, frames: Any, settings: Iterable[Any], *, target: str | None = None, noise: float = 0.01
+) -> FaultReport:
+    """Rank single mistakes by how well they reproduce recorded frames.
+
+    Each mistake of the usual list is made on the train: axes swapped, signs, a plate a few degrees off, detuned,
+    left out or left in, a mirror too many, the hand of the source. The scale common to all frames is free, since a
+    camera's watts are seldom known.
+
+    Parameters
+    ----------
+    train : as declared.
+    frames : recorded, (settings, ny, nx); powers (settings,) of a detector.
+    settings : of the frames.
+    target : camera or detector; the only camera if left out.
+    noise : relative difference of frames that counts as none.
+
+    Returns
+    -------
+    FaultReport : ``.ranking``, ``.ties``, ``.separating()``.
+
+    Raises
+    ------
+    ParameterError : no target named and not just one camera; frames of another number or shape.
+    """
+    camera = _target(train, target)
+    analyzers = as_settings(tuple(settings))
+    recorded = np.asarray(frames, float)
+    recorded = recorded[:, None, None] if recorded.ndim == 1 else recorded
+    shape = expose(train, camera, analyzers).frames.shape
+    if recorded.shape != shape:
+        raise ParameterError(
+            f"there is a frame of the camera for each setting: {shape}",
+            got=f"find_fault: frames of shape {recorded.shape}",
+            fix="train.find_fault(shots.frames, shots.settings)",
+        )
+
+    def misfit(shots: Any) -> float:
+        seen = shots.frames
+        power = float((seen**2).sum())
+        scale = float((seen * recorded).sum()) / power if power else 0.0
+        whole = float(np.sqrt((recorded**2).sum()))
+        return float(np.sqrt(((recorded - scale * seen) ** 2).sum())) / whole if whole else 0.0
+
+    watch = Watch(camera, misfit, "shots", analyzers)
+    declared = Suspect("as declared", watch.of(train), train)
+    return FaultReport(declared, tuple(suspects(train, watch)), camera, analyzers, noise)
+
+
+def _target(train: Any, target: str | None) -> str:
+    known: Sequence[str] = train.cameras
+    if target is None and len(known) != 1:
+        raise ParameterError(
+            "the frames belong to one camera or detector",
+            got=f"find_fault: cameras {', '.join(known) or '(none)'}",
+            fix=f'target="{known[0] if known else "meter"}"',
+        )
+    return target or known[0]
