@@ -17,7 +17,7 @@ from dataclasses import dataclass, replace
 from functools import cached_property
 
 import numpy as np
-from numpy.polynomial import chebyshev
+from numpy.polynomial import Chebyshev, Polynomial
 from scipy.special import erf, gamma, rgamma
 
 from fastaxis.engines.azimuthal.collins import Collins, turn
@@ -148,22 +148,27 @@ class Nearby:
     def _series(self) -> Complexes:
         """Taylor coefficients of f(r) exp(i alpha r^2) about the axis in r/unit, shape (functions, TERMS)."""
         flat, unit = self.section.flat, self._unit
-        points = np.cos(np.pi * (np.arange(TERMS) + 0.5) / TERMS)
-        values = self.section.profile(unit * (1 + points) / 2)
+        values = self.section.profile(unit * PLACES)
         alpha = self.section.wavenumber * flat.a / flat.b / 2
         chirp = np.zeros(TERMS, dtype=complex)
         for j in range((TERMS + 1) // 2):
             chirp[2 * j] = (1j * alpha * unit**2) ** j / math.factorial(j)
-        return np.array([np.convolve(_taylor(points, value), chirp)[:TERMS] for value in values])
+        return np.array([np.convolve(TO_TAYLOR @ value, chirp)[:TERMS] for value in values])
 
 
-def _taylor(points: Reals, values: Complexes) -> Complexes:
-    """Coefficients of powers of r/unit from values at r = unit (1 + points)/2."""
-    return np.asarray(
-        chebyshev.Chebyshev(chebyshev.chebfit(points, values, TERMS - 1), domain=[0, 1])
-        .convert(kind=np.polynomial.Polynomial, domain=[-1, 1], window=[-1, 1])
-        .coef
-    )
+def _to_taylor() -> tuple[Reals, Reals]:
+    """Chebyshev points u in [0, 1], and the matrix from values there to coefficients of powers of u."""
+    points = np.cos(np.pi * (np.arange(TERMS) + 0.5) / TERMS)
+    shifted = np.zeros((TERMS, TERMS))
+    for j in range(TERMS):
+        basis = Chebyshev.basis(j, domain=[0, 1])
+        shifted[: j + 1, j] = basis.convert(kind=Polynomial, domain=[-1, 1], window=[-1, 1]).coef
+    fit = np.cos(np.multiply.outer(np.arange(TERMS), np.arccos(points))) * (2 / TERMS)
+    fit[0] /= 2
+    return (1 + points) / 2, shifted @ fit
+
+
+PLACES, TO_TAYLOR = _to_taylor()
 
 
 def _window(t: Reals, middle: float) -> Reals:

@@ -9,10 +9,12 @@ import numpy as np
 from numpy.typing import NDArray
 
 from fastaxis.engines.azimuthal.applying import TO_CIRCULAR
+from fastaxis.engines.azimuthal.averaging import LONGEST
 from fastaxis.engines.azimuthal.bucket import square_stokes
+from fastaxis.engines.azimuthal.cells import cell_images
 from fastaxis.engines.azimuthal.harmonics import LEFT, RIGHT, Harmonics
 from fastaxis.engines.azimuthal.panels import Profile, Reals
-from fastaxis.engines.azimuthal.rendering import circular_field, corner, stokes_images
+from fastaxis.engines.azimuthal.rendering import circular_field, corner, smooth_images
 from fastaxis.engines.azimuthal.resolving import Settings
 from fastaxis.engines.azimuthal.table import table_of
 from fastaxis.engines.azimuthal.travelling import arrived
@@ -74,7 +76,11 @@ class AzimuthalField:
         if raster.shape == (1, 1) and raster.centre == (0.0, 0.0):
             return self._on_square(raster.pitch)[:, np.newaxis, np.newaxis]
         arrival = self.out_to(corner(raster))
-        return stokes_images(arrival.profile, arrival.orders, raster)
+        images = smooth_images(arrival.profile, arrival.orders, raster)
+        if images is not None:
+            return images
+        arrival = self.out_to(corner(raster, LONGEST))
+        return cell_images(arrival.profile, arrival.orders, raster)
 
     def _on_square(self, side: float) -> NDArray[np.float64]:
         whole = self._arrivals.setdefault(math.inf, arrived(self.harmonics, self.settings))

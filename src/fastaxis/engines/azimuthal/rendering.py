@@ -6,18 +6,14 @@ import math
 
 import numpy as np
 
-from fastaxis.engines.azimuthal.averaging import LONGEST, averaged, taps
+from fastaxis.engines.azimuthal.blocks import blocks_along, collected, lines_across
 from fastaxis.engines.azimuthal.panels import Complexes, Profile, Reals
 from fastaxis.engines.azimuthal.table import Table, table_of
 from fastaxis.light import Raster
 
-__all__ = ["circular_field", "corner", "stokes_images", "stokes_of"]
+__all__ = ["Orders", "circular_field", "corner", "smooth_images", "stokes_of"]
 
 Orders = tuple[tuple[int, int], ...]
-
-SETTLED = 1e-11
-"""Error of the mean over a pixel, as a share of the peak, that chooses filter and cells."""
-MOST = 1 << 24  # samples of a picture, however coarse its pixels
 
 
 def _halves(x: Reals) -> tuple[Reals, np.ndarray[tuple[int], np.dtype[np.intp]]]:
@@ -64,47 +60,29 @@ def stokes_of(circular: Complexes) -> Reals:
     return np.stack([i_left + i_right, 2 * cross.real, 2 * cross.imag, i_right - i_left])
 
 
-def corner(raster: Raster) -> float:
-    """Radius [m] of the corner furthest from the axis, the margin for the filter included."""
+def corner(raster: Raster, margin: float = 0.0) -> float:
+    """Radius [m] of the corner furthest from the axis, so many pixels beyond the raster."""
     sides = zip(raster.centre, raster.shape[::-1], strict=True)
-    return math.hypot(*(abs(c) + (n / 2 + LONGEST) * raster.pitch for c, n in sides))
+    return math.hypot(*(abs(c) + (n / 2 + margin) * raster.pitch for c, n in sides))
 
 
-def stokes_images(profile: Profile, orders: Orders, raster: Raster) -> Reals:
-    """Watts per pixel of S0 .. S3, shape (4, ny, nx)."""
+def smooth_images(profile: Profile, orders: Orders, raster: Raster) -> Reals | None:
+    """Watts per pixel of S0 .. S3, shape (4, ny, nx); None where pictures are not smooth, as at a hard rim."""
     table = table_of(profile, corner(raster))
-    reach, parts = _cells(table, orders, raster)
-    ny, nx = raster.shape
-    cells = Raster(raster.pitch / parts, (ny * parts + 2 * reach, nx * parts + 2 * reach), raster.centre)
-    samples = stokes_of(circular_field(table, orders, cells.x, cells.y))
-    return averaged(samples, reach, parts) * raster.pitch**2
 
+    def images(x: Reals, y: Reals) -> Reals:
+        return stokes_of(circular_field(table, orders, x, y))
 
-def _cells(table: Table, orders: Orders, raster: Raster) -> tuple[int, int]:
-    """(filter reach, cells a pixel and axis), the cheapest that gives the mean along a line through the axis."""
-    most = max(1, math.isqrt(MOST // (raster.shape[0] * raster.shape[1])))
-    parts = 1
-    while True:
-        for reach in (0, 1, 2, 3, 4, 6):
-            if _line_error(table, orders, raster.pitch / parts, reach) <= SETTLED:
-                return reach, parts
-        if 2 * parts > most:
-            return reach, parts
-        parts *= 2
-
-
-def _line_error(table: Table, orders: Orders, pitch: float, reach: int) -> float:
-    """Worst error of the filtered mean on cells along x, as a share of the peak irradiance."""
-    count = min(int(table.reach / pitch) + 1, 256)
-    middles = np.arange(-2.0, count, dtype=float) * pitch
-    nodes, weights = np.polynomial.legendre.leggauss(2 * LONGEST)
-    fine = _line(table, orders, (middles[:, np.newaxis] + nodes * pitch / 2).ravel())
-    exact = fine.reshape(4, -1, len(nodes)) @ weights / 2
-    wide = np.arange(-2.0 - reach, count + reach, dtype=float) * pitch
-    samples = _line(table, orders, wide)
-    means = np.stack([np.convolve(line, taps(reach), mode="valid") for line in samples])
-    return float(abs(means - exact).max() / max(samples[0].max(), 1e-300))
-
-
-def _line(table: Table, orders: Orders, x: Reals) -> Reals:
-    return stokes_of(circular_field(table, orders, x, np.zeros(1)))[:, 0]
+    x, y = raster.x, raster.y
+    peak = float((abs(profile.flat()) ** 2).sum(axis=0).max(initial=0.0))
+    columns = blocks_along(lambda places: images(places, lines_across(y)), x, raster.pitch, peak)
+    rows = blocks_along(lambda places: images(lines_across(x), places).swapaxes(1, 2), y, raster.pitch, peak)
+    if columns is None or rows is None:
+        return None
+    # Half a turn changes no irradiance if it changes all harmonics alike.
+    alike = raster.centre == (0.0, 0.0) and len({l % 2 for _, l in orders}) == 1
+    if not alike or len(y) % 2:
+        return collected(images, rows, columns, raster.pitch**2)
+    upper = [block for block in rows if 2 * block.pixels.start >= len(y)]
+    half = collected(images, upper, columns, raster.pitch**2)
+    return np.concatenate([half[:, ::-1, ::-1], half], axis=1)
