@@ -86,8 +86,9 @@ def expose(
     plans = [plan(train, name, grid=grid, engine=engine) for name in targets]
     if precision != "double":
         plans = [one.with_precision(precision) for one in plans]
-    sensors = [sensor_at(train, name) for name in targets]
-    shots = [_shot(train, *taken, analyzers) for taken in zip(plans, sensors, _lights(plans), strict=True)]
+    for name in targets:
+        sensor_at(train, name)  # wrong targets are refused before anything is propagated
+    shots = [_shot(train, *taken, analyzers) for taken in zip(targets, plans, _lights(plans), strict=True)]
     return shots[0] if isinstance(target, str) else tuple(shots)
 
 
@@ -98,9 +99,8 @@ def _lights(plans: Sequence[Any]) -> Iterable[Any]:
     return shared
 
 
-def _shot(
-    train: Any, plan: Any, sensor: Camera | Detector, fields: Sequence[Any], analyzers: tuple[Setting, ...]
-) -> Exposure:
+def _shot(train: Any, target: str, plan: Any, fields: Sequence[Any], analyzers: tuple[Setting, ...]) -> Exposure:
+    sensor = sensor_at(train, target)
     stokes, x, y = recorded(fields, sensor)
     return Exposure(
         stokes=stokes,
@@ -110,7 +110,7 @@ def _shot(
         pixel=sensor.pixel if isinstance(sensor, Camera) else None,
         wavelength=float(plan.wavelength),
         name=str(getattr(train, "name", "")),
-        target=plan.target,
+        target=target,
         orientation=getattr(sensor, "orientation", "upright"),
         guard=merge_guards([field.guard for field in fields]),
         plan=str(plan),
