@@ -168,6 +168,13 @@ class _Seen:
             values = np.stack([field.at(x, x).reshape(2, -1) for field in fields]) * pitch
         return cls(values, np.stack([total(field) for field in fields]), passed)
 
+    def power(self, i: int) -> float:
+        """Power of an arm behind the analyzer [W]; the samples hold only what arms have in common."""
+        s0, s1, s2, s3 = self.stokes[i]
+        matrix = np.array([[s0 + s1, s2 + 1j * s3], [s2 - 1j * s3, s0 - s1]]) / 2
+        # tr(A C) with the coherency matrix C_ab = <E_a E_b^*>, whose s3 is 2 Im(Ex Ey*).
+        return max(0.0, float(np.trace(self.passed @ matrix).real))
+
     def product(self, i: int, j: int) -> Complexes:
         """E_i^H A E_j, place by place."""
         return np.asarray(np.einsum("ap,ab,bp->p", self.values[i].conj(), self.passed, self.values[j]))
@@ -177,7 +184,7 @@ def _pair(seen: _Seen, branches: Sequence[Branch], names: Sequence[str], i: int,
     a, b = branches[i], branches[j]
     difference = float(b.length - a.length)
     own = [np.sqrt(np.maximum(seen.product(n, n).real, 0)) for n in (i, j)]
-    powers = [float(np.sum(magnitude**2)) for magnitude in own]
+    powers = [seen.power(n) for n in (i, j)]
     both, together = float(own[0] @ own[1]), seen.product(i, j)
     met = float(abs(together).sum())
     scale = math.sqrt(powers[0] * powers[1])

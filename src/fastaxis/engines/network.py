@@ -42,20 +42,40 @@ def fields_at(network: Network, feed: int, jones: Complexes) -> Complexes:
     given[2 * feed : 2 * feed + 2] = jones
     try:
         found = _solver(network).solve(given)
-    except RuntimeError:
+    except RuntimeError:  # exactly singular
         found = np.full_like(given, np.nan)
-    if not np.isfinite(found).all():
+    if not _solves(network, found, given):
+        found = _least(network, given)
+    if not _solves(network, found, given):
         raise ParameterError(
             "light that comes round in phase and without loss builds up for ever",
             got=f"steady state among {', '.join(dict.fromkeys(node[0] for node in network.nodes))}",
-            fix='train.with_changes({"gap.distance": 100.0001*mm})',
+            fix='fa.NeutralDensity(transmission=0.99, name="loss")',
         )
     return np.asarray(found.reshape(-1, 2))
+
+
+def _solves(network: Network, found: Complexes, given: Complexes) -> bool:
+    # The residual of a stable solve is a few roundings of the largest field, which a good cavity builds up.
+    return bool(np.isfinite(found).all() and abs(_system(network) @ found - given).max() < 1e-9 * abs(given).max())
+
+
+def _least(network: Network, given: Complexes) -> Complexes:
+    """The solution with the least light in it: a ring in resonance that no light enters stays dark."""
+    return np.asarray(np.linalg.lstsq(_system(network).toarray(), given, rcond=None)[0])
 
 
 @lru_cache(maxsize=4)
 def _solver(network: Network) -> Any:
     # Four solvers: a question to a bench is usually followed by the next one to the same bench.
+    with warnings.catch_warnings():
+        warnings.simplefilter("ignore", MatrixRankWarning)
+        return splu(_system(network))
+
+
+@lru_cache(maxsize=4)
+def _system(network: Network) -> Any:
+    """1 - M, on (Ex, Ey) of all port states."""
     size = 2 * len(network.nodes)
     system = sparse.lil_matrix((size, size), dtype=complex)
     system.setdiag(1)
@@ -63,6 +83,4 @@ def _solver(network: Network) -> Any:
         block = np.array(edge.matrix.matrix) * np.exp(2j * np.pi * edge.turns)
         rows, columns = 2 * edge.end, 2 * edge.start
         system[rows : rows + 2, columns : columns + 2] -= block
-    with warnings.catch_warnings():
-        warnings.simplefilter("ignore", MatrixRankWarning)
-        return splu(system.tocsc())
+    return system.tocsc()

@@ -5,13 +5,12 @@ from __future__ import annotations
 import math
 from collections.abc import Sequence
 from dataclasses import dataclass
+from itertools import combinations
 
 from fastaxis.plan import Branch
-from fastaxis.plan.spread import Spread, of_beam
+from fastaxis.plan.spread import SMOOTH_RADII, Spread, of_beam
 
 __all__ = ["Extent", "arrival"]
-
-PRODUCT_RADII = 4.3  # exp(-2 4.3^2) = 9e-17: the product of two equal Gaussian fields has fallen below its rounding
 
 
 def arrival(arm: Branch) -> Spread:
@@ -44,10 +43,19 @@ class Extent:
         return cls(half, arms[0].wavelength, spreads)
 
     @property
+    def rough(self) -> bool:
+        """Whether any of the beams has tails that fall off slowly."""
+        return any(spread.rough for spread in self.spreads)
+
+    @property
     def shared_half(self) -> float:
-        """Half side [m] of a square that holds the product of any two beams."""
-        halves = (max(map(abs, s.offset)) + min(s.radii, PRODUCT_RADII) * 2 * s.size for s in self.spreads)
-        return sorted(halves)[-2] if self.half_window else 0.0
+        """Half side [m] of a square that holds the product of any two beams.
+
+        Of fields exp(-r^2/a^2) and exp(-r^2/b^2) it is exp(-r^2 (1/a^2 + 1/b^2)).
+        """
+        if not self.half_window:
+            return 0.0
+        return max(_shared(a, b) for a, b in combinations(self.spreads, 2))
 
     def frequency(self, reach: float) -> float:
         """Highest spatial frequency [1/m] of the sum's irradiance out to a distance [m] along each axis.
@@ -73,3 +81,9 @@ def _lean(spread: Spread) -> tuple[float, float]:
     c = spread.curvature
     lean = (tx - c * x, ty - c * y)
     return lean if all(map(math.isfinite, lean)) else (0.0, 0.0)
+
+
+def _shared(a: Spread, b: Spread) -> float:
+    radii = [SMOOTH_RADII * 2 * spread.size for spread in (a, b)]
+    middle = max(max(map(abs, spread.offset)) for spread in (a, b))
+    return middle + radii[0] * radii[1] / math.hypot(*radii)

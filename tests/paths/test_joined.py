@@ -1,0 +1,148 @@
+"""Fields of several arms together: power, pictures, partial coherence."""
+
+import math
+
+import numpy as np
+import pytest
+from scipy.integrate import dblquad
+
+import fastaxis as fa
+from fastaxis.engines.joined.coherence import coherence, mixtures
+from fastaxis.engines.joined.nodes import PixelNodes, nodes_needed
+from fastaxis.light import Raster
+from fastaxis.units import deg, mm, mrad, nm, um
+
+
+def ports(train, **options):
+    return [train.power(port, **options) for port in ("out.transmitted", "out.reflected")]
+
+
+@pytest.mark.parametrize("engine", ["auto", "grid", "azimuthal"])
+def test_both_ports_of_two_shaped_arms_add_up_to_the_input(mach_zehnder, engine):
+    train = mach_zehnder(arm=[fa.FreeSpace(1.2), fa.Lens(focal=3.0)], other=[fa.FreeSpace(0.7)])
+    assert sum(ports(train, engine=engine)) == pytest.approx(1, abs=1e-12)
+
+
+def test_engines_agree_on_arms_of_different_length(mach_zehnder):
+    train = mach_zehnder(arm=[fa.FreeSpace(2.0)], other=[fa.FreeSpace(0.5)])
+    # The grid window holds a Gaussian to 1e-12 of its power.
+    assert ports(train, engine="grid") == pytest.approx(ports(train, engine="azimuthal"), abs=1e-11)
+
+
+def test_tilted_arms_share_the_power_as_their_overlap_says(mach_zehnder):
+    tilt, phase = 0.2 * mrad, 0.6
+    train = mach_zehnder(other=[fa.Wedge(x=tilt)]).with_changes({"phase.phase": phase})
+    overlap = math.exp(-((math.pi * 1 * mm * tilt / (632.8 * nm)) ** 2) / 2)  # of two Gaussians tilted by an angle
+    # i^2 for the two reflections of one arm: dark at zero phase.
+    expected = (1 - overlap * math.cos(phase)) / 2
+    assert ports(train) == pytest.approx([expected, 1 - expected], abs=1e-12)
+
+
+def test_equal_arms_are_in_phase_exactly_however_their_lengths_are_written(mach_zehnder):
+    arm = [fa.FreeSpace(d) for d in (0.1, 0.2, 0.3)]
+    other = [fa.FreeSpace(d) for d in (0.3, 0.1, 0.2)]
+    dark, bright = ports(mach_zehnder(arm=arm, other=other))
+    assert dark == pytest.approx(0, abs=1e-13)
+    assert bright == pytest.approx(1, abs=1e-13)
+
+
+def test_a_quarter_wave_of_length_is_a_quarter_wave_of_phase(mach_zehnder):
+    laser = fa.Laser(mode=fa.PlaneWave(area=1e-6), power=1.0, name="laser")  # a beam adds the Gouy phase
+    train = mach_zehnder(laser, arm=[fa.FreeSpace(0.5 + 632.8 * nm / 4)], other=[fa.FreeSpace(0.5)])
+    # 0.5 m is written to 1.1e-16 m: 1e-9 rad.
+    assert ports(train) == pytest.approx([0.5, 0.5], abs=2e-9)
+
+
+def test_the_pictures_of_both_ports_add_up_only_when_one_is_mirrored(mach_zehnder):
+    train = mach_zehnder(arm=[fa.SpiralPlate(charge=2)], other=[fa.FreeSpace(0.04), fa.Wedge(x=2 * mrad)])
+    for port in ("transmitted", "reflected"):
+        train.along(f"out.{port}", fa.Camera(pixel=20 * um, shape=(80, 80), name=port))
+    one, other = (train.expose(camera, [fa.H]).frame(0) for camera in ("transmitted", "reflected"))
+    arms = mach_zehnder(arm=[fa.SpiralPlate(charge=2)])
+    alone = sum(
+        branch_picture(train, index) for index in range(2)
+    ) * 2  # each arm leaves half of its light at this port
+    assert one + other[:, ::-1] == pytest.approx(alone, abs=1e-9 * alone.max())
+    assert abs(one + other - alone).max() > 0.3 * alone.max()
+    assert arms.power("out.transmitted") == pytest.approx(0.5, abs=1e-3)
+
+
+def branch_picture(train, index):
+    field = train.field("transmitted")[0].arms[index]
+    return field.stokes_on(Raster(20 * um, (80, 80)))[0]
+
+
+def test_a_pixel_holds_the_integral_of_the_fringes(mach_zehnder):
+    tilt, pixel = 3 * mrad, 100 * um  # half a fringe a pixel
+    train = mach_zehnder(other=[fa.Wedge(x=tilt)])
+    train.along("out.transmitted", fa.Camera(pixel=pixel, shape=(1, 3), name="cam"))
+    frame = train.expose("cam", [fa.H]).frame(0)
+    k = 2 * math.pi / (632.8 * nm)
+
+    def irradiance(y, x):
+        return 2 / math.pi / mm**2 * math.exp(-2 * (x * x + y * y) / mm**2) * (1 - math.cos(k * tilt * x)) / 2
+
+    for index, middle in enumerate((-pixel, 0, pixel)):
+        expected, _ = dblquad(irradiance, middle - pixel / 2, middle + pixel / 2, -pixel / 2, pixel / 2, epsabs=1e-15)
+        assert frame[0, index] == pytest.approx(expected, rel=1e-9, abs=1e-13)
+
+
+def test_partial_coherence_lies_between_full_and_none(mach_zehnder):
+    line = fa.GaussianLine(coherence_length=0.1)
+    train = mach_zehnder(arm=[fa.FreeSpace(0.05)])
+    full, none = np.array(ports(train)), np.array([0.5, 0.5])
+    partly = ports(train.with_changes({"laser.line": line}))
+    assert partly == pytest.approx(none + (full - none) * math.exp(-0.25), abs=1e-12)
+
+
+def test_three_arms_of_different_length_keep_three_degrees(mach_zehnder):
+    train = mach_zehnder(arm=[fa.FreeSpace(0.01)]).with_changes({"laser.line": fa.LorentzianLine(coherence_length=0.03)})
+    train.along("out.transmitted", fa.FreeSpace(0.02, name="third"), fa.BeamSplitter(name="last"))
+    train.along("out.reflected", "last.side")
+    arms = train.plan("last.transmitted").groups[0]
+    degrees = coherence(arms)
+    rows = mixtures(arms)
+    phases = np.exp(1j * np.angle(rows.T @ rows.conj()))
+    assert len(arms) == 4
+    assert abs(rows.T @ rows.conj()) == pytest.approx(degrees.real, abs=1e-14)
+    assert abs(phases) == pytest.approx(1)
+    total = sum(train.power(f"last.{port}") for port in ("transmitted", "reflected"))
+    assert total == pytest.approx(1, abs=1e-12)
+
+
+def test_partly_coherent_light_has_no_one_field(mach_zehnder):
+    line = fa.GaussianLine(coherence_length=0.1)
+    train = mach_zehnder(arm=[fa.FreeSpace(0.05)]).with_changes({"laser.line": line})
+    with pytest.raises(fa.ParameterError, match="has no one field") as caught:
+        train.field("out.transmitted")[0].at(np.zeros(1), np.zeros(1))
+    sharp = eval(caught.value.fix, {"fa": fa, "train": train})
+    assert sharp.field("out.transmitted")[0].at(np.zeros(1), np.zeros(1)).shape == (2, 1, 1)
+
+
+def test_unpolarized_light_interferes_as_its_two_halves_do(mach_zehnder):
+    laser = fa.Laser(waist=1 * mm, power=1.0, state=fa.light.UNPOLARIZED if hasattr(fa, "light") else fa.UNPOLARIZED,
+                     name="laser")  # fmt: skip
+    train = mach_zehnder(laser, arm=[fa.HalfWavePlate(fast=45 * deg)])
+    assert ports(train) == pytest.approx([0.5, 0.5], abs=1e-12)
+    assert ports(mach_zehnder(laser)) == pytest.approx([0, 1], abs=1e-12)
+
+
+def test_two_lasers_add_in_power(mach_zehnder):
+    train = mach_zehnder()
+    train.along(fa.Laser(waist=1 * mm, power=0.5, name="second"), "in.side")
+    assert ports(train) == pytest.approx([0.5, 1.0], abs=1e-12)
+
+
+def test_the_plan_names_each_arm(mach_zehnder):
+    text = str(mach_zehnder(other=[fa.FreeSpace(0.25), fa.Wedge(x=1 * mrad)]).plan("out.transmitted"))
+    assert "engine joined, because light comes by several paths" in text
+    assert "arm laser -> in -> phase -> m1 -> out -> out.transmitted: engine azimuthal, path 0 mm" in text
+    assert "engine grid, path 250 mm" in text
+
+
+@pytest.mark.parametrize("turns", [0.0, 0.1, 0.5, 2.0])
+def test_nodes_give_the_mean_of_a_fringe(turns):
+    pixel = PixelNodes.of(1.0, turns)
+    mean = np.sum(pixel.weights * np.cos(2 * np.pi * turns * pixel.offsets + 0.3))
+    assert mean == pytest.approx(np.sinc(turns) * math.cos(0.3), abs=1e-11)
+    assert len(pixel.offsets) <= nodes_needed(turns) * max(1, math.ceil(turns / 4))

@@ -1,0 +1,51 @@
+"""The power ledger: every watt has a place."""
+
+import math
+
+import pytest
+
+import fastaxis as fa
+from fastaxis.units import deg, mm, mW, nm
+
+
+def test_a_tree_agrees_with_hand_arithmetic():
+    train = fa.Train(wavelength=633 * nm).along(
+        fa.Laser(waist=1 * mm, power=4 * mW, state=fa.D, name="laser"), fa.Aperture(radius=1 * mm, name="hole"),
+        fa.PolarizingBeamSplitter(Tp=0.9, Ts=0.0, Rp=0.05, name="pbs"), fa.Polarizer(axis=0 * deg, transmission=0.8, name="pol"),
+        fa.Detector(name="meter"),
+    )  # fmt: skip
+    train.along("pbs.reflected", fa.BeamDump(name="dump"))
+    ledger = train.ledger()
+    passed = 4 * mW * (1 - math.exp(-2))  # of a Gaussian through a hole of its own radius
+    assert ledger.of("clipped") == pytest.approx({"hole": 4 * mW - passed}, rel=1e-9)
+    assert ledger.of("dumped") == pytest.approx({"dump": passed * 0.525}, rel=1e-9)
+    assert ledger.of("detected") == pytest.approx({"meter": passed * 0.45 * 0.8}, rel=1e-9)
+    assert ledger.of("absorbed") == pytest.approx({"pbs": passed * 0.025, "pol": passed * 0.09}, rel=1e-9)
+    assert ledger.input == 4 * mW
+    assert ledger.missing == pytest.approx(0, abs=1e-15)
+
+
+def test_a_part_passed_twice_loses_twice():
+    train = fa.Train(wavelength=633 * nm).along(
+        fa.Laser(mode=fa.PlaneWave(area=1e-6), power=1.0, name="laser"), fa.BeamSplitter(name="bs")
+    )
+    train.retro("bs.transmitted", fa.NeutralDensity(transmission=0.5, name="nd"), fa.Mirror(Rp=0.9, name="end"))
+    train.along("bs.reflected", fa.BeamDump(name="dump"))
+    ledger = train.ledger()
+    there, back = 0.25, 0.25 * 0.9 * 0.5
+    assert ledger.of("absorbed") == pytest.approx({"nd": there + back, "end": 0.025})
+    assert ledger.of("back to the laser") == pytest.approx({"bs.front": back_power()})
+    assert ledger.of("open port") == pytest.approx({"bs.side": back_power()})
+    assert ledger.missing == pytest.approx(0, abs=1e-15)
+
+
+def back_power():
+    return 0.25 * 0.9 * 0.5 * 0.5
+
+
+def test_printed_it_ends_with_the_sum():
+    train = fa.Train(wavelength=633 * nm).along(fa.Laser(waist=1 * mm, power=2 * mW, name="laser"), fa.Detector(name="meter"))
+    text = str(train.ledger())
+    assert "detected             2 mW  meter" in text
+    assert "sum of the ends 2 mW" in text
+    assert "signs:" in text
