@@ -34,11 +34,13 @@ class Suspect:
     words : what would be wrong.
     misfit : of the train with it; 0 explains everything.
     train : with the mistake.
+    off : how far a fitted value is from the declared one [rad]; 0 where nothing was fitted.
     """
 
     words: str
     misfit: float
     train: Any = field(repr=False)
+    off: float = 0.0
 
 
 def suspects(train: Any, watch: Watch) -> list[Suspect]:
@@ -57,8 +59,8 @@ def _tried(train: Any, mistake: Mistake, watch: Watch) -> Iterator[Suspect]:
     value = float(mistake.values[_nearest(misfits, np.abs(mistake.values - mistake.nominal))])
     if abs(value - mistake.nominal) < LEAST and mistake.train is train:
         return  # best where it was declared: no mistake
-    words, train = mistake.at(value)
-    yield Suspect(words, float(np.nanmin(misfits[mistake.values == value])), train)
+    words, changed = mistake.at(value)
+    yield Suspect(words, float(np.nanmin(misfits)), changed, abs(value - mistake.nominal))
 
 
 def _nearest(misfits: Any, distances: Any) -> int:

@@ -74,7 +74,9 @@ def make_chain(train: Any, target: str, names: tuple[str, ...], values: Reals) -
         return None  # by several paths: there is no one row of laws
     parts = {name.partition(".")[0] for name in names}
     lines = {float(part.wavelength_or(train.wavelength)) for part in route.laser.source.components}
-    if parts & {"wavelength", route.source_name, target.partition(".")[0]} or len(lines) > 1:
+    end = target.partition(".")[0]
+    stiff = {"wavelength", route.source_name, *([end] if train.elements[end].exit is None else [])}
+    if parts & stiff or len(lines) > 1:
         return None
     return _Follower(train, route, names, values, lines.pop()).followed()
 

@@ -1,0 +1,60 @@
+"""A closed form against an expected expression."""
+
+from __future__ import annotations
+
+from typing import Any
+
+import numpy as np
+
+from fastaxis.testing.failing import BenchError
+
+__all__ = ["form_equal"]
+
+POINTS = 12
+# Expressions of a few dozen terms near 1 lose a few digits of sixteen; two different ones differ by far more at some
+# of twelve random points.
+SAME = 1e-9
+
+
+def form_equal(train: Any, target: str, expected: Any, *, behind: Any) -> None:
+    """The derived frame behind an analyzer, relative to the envelope, equals an expression in the same letters.
+
+    Compared with numbers at random points: a difference shows, whatever the shape both are written in.
+
+    Parameters
+    ----------
+    train : with letters.
+    target : camera, detector or port.
+    expected : sympy expression, as for ``train.derive(target).frame(behind)``.
+    behind : analyzer angle [rad], state or setting.
+
+    Raises
+    ------
+    BenchError : it is another.
+    """
+    derived = train.derive(target).frame(behind)
+    difference = derived - expected
+    letters = sorted(difference.free_symbols, key=str)
+    generator = np.random.default_rng(20)
+    worst = 0.0
+    for _ in range(POINTS):
+        values = dict(zip(letters, generator.uniform(0.2, 1.2, len(letters)).tolist(), strict=True))
+        size = max(1.0, abs(complex(derived.subs(values))))
+        worst = max(worst, abs(complex(difference.subs(values))) / size)
+    if not worst <= SAME:
+        raise BenchError(
+            f"{train.name}: {target}",
+            expected=str(expected),
+            got=f"{derived}, which differs by up to {worst:.2g} at random points",
+            cause=_cause(derived, expected, letters),
+        )
+
+
+def _cause(derived: Any, expected: Any, letters: list[Any]) -> str:
+    """Letters whose sign explains the difference."""
+    values = {letter: 0.37 + 0.21 * k for k, letter in enumerate(letters)}
+    wanted = complex(expected.subs(values)) if letters else complex(expected)
+    signs = [
+        letter for letter in letters if abs(complex(derived.subs({**values, letter: -values[letter]})) - wanted) <= SAME
+    ]
+    return f"sign of {' or '.join(map(str, signs))}" if signs else "no letter's sign explains it"

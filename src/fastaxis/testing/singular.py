@@ -1,0 +1,47 @@
+"""The index of a singular point of the polarization pattern."""
+
+from __future__ import annotations
+
+import math
+from typing import Any
+
+from fastaxis.analysis.singular import polarization_index
+from fastaxis.camera.settings import no_analyzer
+from fastaxis.errors import ParameterError
+from fastaxis.testing.failing import Claim, hold
+
+__all__ = ["singular_index"]
+
+
+def singular_index(
+    train: Any, camera: str, index: float, *, radius: float, centre: tuple[float, float] = (0.0, 0.0)
+) -> None:
+    """Turns of the polarization ellipse along a circle: +1 radial or azimuthal, -1 its counterpart, 1/2 lemon, 0 none.
+
+    Parameters
+    ----------
+    train : the bench.
+    camera : that looks; upright, since a mirrored picture flips the places alone.
+    index : expected, a multiple of 1/2.
+    radius, centre : of the circle [m].
+
+    Raises
+    ------
+    BenchError : the index is another, or the circle crosses darkness or circular light.
+    """
+
+    def found(shots: Any) -> float | str:
+        try:
+            return polarization_index(shots.stokes, x=shots.x, y=shots.y, radius=radius, centre=centre)
+        except ParameterError as error:
+            return f"no index: {error.rule}"
+
+    def misfit(shots: Any) -> float:
+        got = found(shots)
+        return math.inf if isinstance(got, str) else 4 * abs(got - index)
+
+    def told(shots: Any) -> str:
+        got = found(shots)
+        return got if isinstance(got, str) else f"index {got:+g}"
+
+    hold(train, Claim(camera, f"index {index:+g}", told, misfit, "shots", (no_analyzer(),)))
