@@ -7,9 +7,9 @@ import math
 import numpy as np
 
 from fastaxis.engines.azimuthal.averaging import LONGEST, averaged, taps
-from fastaxis.engines.azimuthal.panels import Profile, Reals
-from fastaxis.engines.azimuthal.rendering import Orders, circular_field, corner, stokes_of
-from fastaxis.engines.azimuthal.table import Table, table_of
+from fastaxis.engines.azimuthal.panels import Reals
+from fastaxis.engines.azimuthal.rendering import Orders, circular_field, stokes_of
+from fastaxis.engines.azimuthal.table import Table
 from fastaxis.light import Raster
 
 __all__ = ["cell_images"]
@@ -19,9 +19,8 @@ SETTLED = 1e-11
 MOST = 1 << 24  # samples of a picture, however coarse its pixels
 
 
-def cell_images(profile: Profile, orders: Orders, raster: Raster) -> Reals:
+def cell_images(table: Table, orders: Orders, raster: Raster) -> Reals:
     """Watts per pixel of S0 .. S3, shape (4, ny, nx)."""
-    table = table_of(profile, corner(raster, LONGEST))
     reach, parts = _cells(table, orders, raster)
     ny, nx = raster.shape
     cells = Raster(raster.pitch / parts, (ny * parts + 2 * reach, nx * parts + 2 * reach), raster.centre)

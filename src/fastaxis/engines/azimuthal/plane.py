@@ -16,7 +16,8 @@ from fastaxis.engines.azimuthal.harmonics import LEFT, RIGHT, Harmonics
 from fastaxis.engines.azimuthal.panels import Profile, Reals
 from fastaxis.engines.azimuthal.rendering import circular_field, corner, smooth_images
 from fastaxis.engines.azimuthal.resolving import Settings
-from fastaxis.engines.azimuthal.table import table_of
+from fastaxis.engines.azimuthal.shapes import Shapes, remembered
+from fastaxis.engines.azimuthal.table import Table, table_of
 from fastaxis.engines.azimuthal.travelling import arrived
 from fastaxis.engines.field import Guard
 from fastaxis.light import Raster
@@ -39,6 +40,7 @@ class AzimuthalField:
     harmonics: Harmonics
     settings: Settings = field(default_factory=Settings)
     _arrivals: dict[float, Harmonics] = field(default_factory=dict, repr=False)
+    _tables: dict[int, Table] = field(default_factory=dict, repr=False)
 
     @property
     def power(self) -> float:
@@ -67,6 +69,14 @@ class AzimuthalField:
         self._arrivals[reach] = arrived(self.harmonics, self.settings, end=reach)
         return self._arrivals[reach]
 
+    def _table(self, arrival: Harmonics) -> Table:
+        """One table an arrival: neighbouring places read the same polynomials, whoever asks."""
+        if id(arrival) not in self._tables:
+            shapes = Shapes.of(arrival.profile, arrival.charges)
+            table = remembered(("table",), shapes, lambda: table_of(shapes.profile, arrival.profile.end))
+            self._tables[id(arrival)] = table.combined(shapes.numbers)
+        return self._tables[id(arrival)]
+
     def error(self, reach: float) -> float:
         """Expected error of the field out to a radius [m], as a share of its peak there."""
         return self.out_to(reach).error
@@ -76,11 +86,11 @@ class AzimuthalField:
         if raster.shape == (1, 1) and raster.centre == (0.0, 0.0):
             return self._on_square(raster.pitch)[:, np.newaxis, np.newaxis]
         arrival = self.out_to(corner(raster))
-        images = smooth_images(arrival.profile, arrival.orders, raster)
+        images = smooth_images(self._table(arrival), arrival.profile, arrival.orders, raster)
         if images is not None:
             return images
         arrival = self.out_to(corner(raster, LONGEST))
-        return cell_images(arrival.profile, arrival.orders, raster)
+        return cell_images(self._table(arrival), arrival.orders, raster)
 
     def _on_square(self, side: float) -> NDArray[np.float64]:
         whole = self._arrivals.setdefault(math.inf, arrived(self.harmonics, self.settings))
@@ -93,9 +103,8 @@ class AzimuthalField:
         x, y = np.atleast_1d(np.asarray(x, dtype=float)), np.atleast_1d(np.asarray(y, dtype=float))
         # An axis place alone still needs panels, which have a width.
         # The farthest place may round to a hair beyond its own distance, where the table would read nothing.
-        reach = max(math.hypot(abs(x).max(), abs(y).max()), 1e-3 * self.wavelength) * (1 + 1e-12)
-        arrival = self.out_to(reach * (1 + 1e-9))
-        circular = circular_field(table_of(arrival.profile, reach), arrival.orders, x, y)
+        arrival = self.out_to(max(math.hypot(abs(x).max(), abs(y).max()), 1e-3 * self.wavelength) * (1 + 1e-9))
+        circular = circular_field(self._table(arrival), arrival.orders, x, y)
         bend = self.harmonics.wavenumber * arrival.curvature / 2
         circular *= np.exp(1j * bend * (x**2 + y[:, np.newaxis] ** 2))
         return np.tensordot(TO_CIRCULAR.conj().T, circular, axes=1)

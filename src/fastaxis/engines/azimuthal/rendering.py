@@ -8,7 +8,7 @@ import numpy as np
 
 from fastaxis.engines.azimuthal.blocks import blocks_along, collected, lines_across
 from fastaxis.engines.azimuthal.panels import Complexes, Profile, Reals
-from fastaxis.engines.azimuthal.table import Table, table_of
+from fastaxis.engines.azimuthal.table import Table
 from fastaxis.light import Raster
 
 __all__ = ["Orders", "circular_field", "corner", "smooth_images", "stokes_of"]
@@ -66,9 +66,8 @@ def corner(raster: Raster, margin: float = 0.0) -> float:
     return math.hypot(*(abs(c) + (n / 2 + margin) * raster.pitch for c, n in sides))
 
 
-def smooth_images(profile: Profile, orders: Orders, raster: Raster) -> Reals | None:
+def smooth_images(table: Table, profile: Profile, orders: Orders, raster: Raster) -> Reals | None:
     """Watts per pixel of S0 .. S3, shape (4, ny, nx); None where pictures are not smooth, as at a hard rim."""
-    table = table_of(profile, corner(raster))
 
     def images(x: Reals, y: Reals) -> Reals:
         return stokes_of(circular_field(table, orders, x, y))

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 
 import numpy as np
 
@@ -43,6 +43,10 @@ class Table:
         if dark.any():
             values[:, dark] = 0
         return values
+
+    def combined(self, matrix: Complexes) -> Table:
+        """Linear combinations: row i of the matrix gives new function i."""
+        return replace(self, powers=np.tensordot(matrix, self.powers, axes=1))
 
 
 def _horner(rows: Complexes, t: Reals) -> Complexes:

@@ -8,10 +8,11 @@ from dataclasses import dataclass, replace
 import numpy as np
 
 from fastaxis.engines.azimuthal.collins import Collins
-from fastaxis.engines.azimuthal.harmonics import STRAIGHT, Harmonics
+from fastaxis.engines.azimuthal.harmonics import LEFT, STRAIGHT, Harmonics
 from fastaxis.engines.azimuthal.nearby import Nearby, suits
 from fastaxis.engines.azimuthal.panels import Profile, Reals
 from fastaxis.engines.azimuthal.resolving import Settings, extended, resolved
+from fastaxis.engines.azimuthal.shapes import Shapes, remembered
 from fastaxis.engines.azimuthal.taper import Taper
 from fastaxis.laws import TravelLaw
 
@@ -35,6 +36,16 @@ def images(field: Harmonics) -> bool:
         return True
     reach = abs(flat.b / flat.a) if flat.a else math.inf
     return bool(reach * field.profile.highest_frequency**2 / (2 * field.wavenumber) < NEGLIGIBLE)
+
+
+@dataclass(frozen=True, eq=False)
+class _Arrival:
+    """Shapes behind a section, relative to a front there; their soft end if cut; the error that arriving added."""
+
+    profile: Profile
+    curvature: float
+    taper: Taper | None
+    error: float
 
 
 @dataclass(frozen=True)
@@ -94,6 +105,23 @@ def arrived(field: Harmonics, settings: Settings, *, start: float = 0.0, end: fl
     """The field in the plane behind its section, between two radii [m]; ``end=None`` follows it until it is dark."""
     if images(field):
         return _imaged(field, start, end)
+    shapes = Shapes.of(field.profile, field.charges)
+    bare = replace(field, orders=tuple((LEFT, l) for l in shapes.charges), profile=shapes.profile)
+    section = (field.section.a, field.section.b, field.section.c, field.section.d)
+    key = (section, field.curvature, field.wavenumber, field.taper, settings, start, end)
+    there = remembered(key, shapes, lambda: _travelled(bare, settings, start, end))
+    behind = replace(
+        field,
+        profile=there.profile.combined(shapes.numbers),
+        curvature=there.curvature,
+        section=STRAIGHT,
+        taper=there.taper,
+        error=field.error + there.error,
+    )
+    return _balanced(field, behind) if end is None and start == 0 else replace(behind, beyond=(0.0, 0.0))
+
+
+def _travelled(field: Harmonics, settings: Settings, start: float, end: float | None) -> _Arrival:
     waist = _waist_behind(field)
     section = section_for(field, waist.curvature, settings)
     if end is None:
@@ -102,15 +130,8 @@ def arrived(field: Harmonics, settings: Settings, *, start: float = 0.0, end: fl
     else:
         profile, rest = resolved(section, _first_edges(start, end), settings)
         cut = False
-    behind = replace(
-        field,
-        profile=profile,
-        curvature=waist.curvature,
-        section=STRAIGHT,
-        taper=Taper(TAPER * profile.end, profile.end) if cut else None,
-        error=field.error + max(rest, settings.settled) + share_of_error(section, profile),
-    )
-    return _balanced(field, behind) if end is None and start == 0 else replace(behind, beyond=(0.0, 0.0))
+    taper = Taper(TAPER * profile.end, profile.end) if cut else None
+    return _Arrival(profile, waist.curvature, taper, max(rest, settings.settled) + share_of_error(section, profile))
 
 
 def _balanced(before: Harmonics, behind: Harmonics) -> Harmonics:

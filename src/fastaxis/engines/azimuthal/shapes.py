@@ -1,0 +1,107 @@
+"""Radial functions apart from their numbers: what differs by a number alone travels once, and is remembered.
+
+Turning a plate changes how much light each harmonic has, seldom how it is spread along the radius.
+"""
+
+from __future__ import annotations
+
+import math
+from collections import OrderedDict
+from collections.abc import Callable, Hashable
+from dataclasses import dataclass
+from typing import Any, TypeVar, cast
+
+import numpy as np
+
+from fastaxis.engines.azimuthal.panels import Complexes, Profile
+
+__all__ = ["Shapes", "remembered"]
+
+Answer = TypeVar("Answer")
+
+ALIKE = 32 * np.finfo(float).eps
+"""Of the peak: some dozen products and sums of numbers of order one have gone into each function."""
+
+
+@dataclass(frozen=True, eq=False)
+class Shapes:
+    """Functions f_i = sum of numbers_ij g_j.
+
+    Parameters
+    ----------
+    profile : the shapes g_j, with peaks of 1; a weak one peaks at a power of ten, so that its rounding stays small.
+    charges : |l| of each; exp(i l phi) and exp(-i l phi) travel alike.
+    numbers : shape (functions, shapes).
+    """
+
+    profile: Profile
+    charges: tuple[int, ...]
+    numbers: Complexes
+
+    @classmethod
+    def of(cls, profile: Profile, charges: tuple[int, ...]) -> Shapes:
+        """The shapes of some functions with these l, the strongest ones first."""
+        rows = profile.flat()
+        peaks = abs(rows).max(axis=1)
+        shapes: list[Complexes] = []
+        orders: list[int] = []
+        numbers = np.zeros((len(rows), len(rows)), dtype=complex)
+        for i in np.argsort(-peaks, kind="stable"):
+            l, row = abs(charges[i]), rows[i]
+            for j, (order, shape) in enumerate(zip(orders, shapes, strict=True)):
+                number = np.vdot(shape, row) / np.vdot(shape, shape).real if order == l and shape.any() else 0
+                if abs(row - number * shape).max() <= ALIKE * peaks[i]:
+                    numbers[i, j] = number
+                    break
+            else:
+                number = _number(row, peaks[i], peaks.max())
+                numbers[i, len(shapes)] = number
+                shapes.append(row / number)
+                orders.append(l)
+        values = np.array(shapes).reshape(len(shapes), *profile.values.shape[1:])
+        return cls(Profile(profile.edges, values), tuple(orders), numbers[:, : len(shapes)])
+
+
+def _number(row: Complexes, peak: float, highest: float) -> complex:
+    """What to divide by: the value at the peak, less a power of ten by which the row is weaker than the others."""
+    if peak == 0:
+        return 1.0
+    level = 10.0 ** math.ceil(math.log10(peak / highest))
+    return complex(row[abs(row).argmax()]) / level
+
+
+@dataclass(frozen=True, eq=False)
+class _Known:
+    key: Hashable
+    shapes: Shapes
+    answer: Any
+
+    def answers(self, key: Hashable, shapes: Shapes) -> bool:
+        return (
+            self.key == key
+            and self.shapes.charges == shapes.charges
+            and bool(abs(self.shapes.profile.values - shapes.profile.values).max() <= ALIKE)
+        )
+
+
+_known: OrderedDict[int, _Known] = OrderedDict()
+KEPT = 96  # answers: with the panels that fields usually need, some ten megabytes
+
+
+def remembered(key: tuple[Hashable, ...], shapes: Shapes, make: Callable[[], Answer]) -> Answer:
+    """What is made of shapes that differ from earlier ones by rounding alone is what was made of those.
+
+    Parameters
+    ----------
+    key : all that the answer depends on beside the shapes.
+    """
+    key = (*key, shapes.profile.edges.tobytes())
+    for number, known in reversed(_known.items()):
+        if known.answers(key, shapes):
+            _known.move_to_end(number)
+            return cast("Answer", known.answer)
+    answer = make()
+    _known[max(_known, default=0) + 1] = _Known(key, shapes, answer)
+    while len(_known) > KEPT:
+        _known.popitem(last=False)
+    return answer
