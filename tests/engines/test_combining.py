@@ -78,6 +78,10 @@ def test_other_samples_are_refused():
 def test_which_engines_add():
     assert combines("grid")
     assert combines("uniform")
+    assert combines("azimuthal")
+    # Light that the engine has left out of its panels is known by its power alone.
+    assert not combines("azimuthal", totals=True)
+    assert combines("grid", totals=True)
 
 
 def test_jones_vectors_add():

@@ -144,3 +144,15 @@ def test_light_by_two_paths_is_propagated_for_each_value(compare):
     train.along("split.reflected", fa.Mirror(name="mirror"), "join.side")
     train.along("join.transmitted", fa.Camera(pixel=60e-6, shape=(2, 3), name="cam"))
     assert compare(train, {"hwp.fast": ANGLES[:3]}, checked=3).propagations == 3
+
+
+def test_three_propagations_an_angle_about_the_axis(centred):
+    angles = {"qwp.fast": np.linspace(0, np.pi, 7), "qp.offset": np.linspace(0, 1, 5)}
+    for name, some in angles.items():
+        swept = centred.sweep({name: some}, "cam", fa.H)
+        swept.frame(0, "H")
+        assert swept.propagations <= 3
+    # Two angles: all pairs of three.
+    both = centred.sweep(angles, "cam", fa.H)
+    both.frame(0, "H")
+    assert both.propagations <= 9

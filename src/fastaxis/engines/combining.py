@@ -13,9 +13,16 @@ from fastaxis.engines.field import PlaneField
 __all__ = ["combined", "combines"]
 
 
-def combines(engine: str) -> bool:
-    """Whether an engine can add fields; the others propagate so fast that another propagation costs as little."""
-    return hasattr(import_module(f"fastaxis.engines.{engine}"), "combined")
+def combines(engine: str, *, totals: bool = False) -> bool:
+    """Whether an engine can add fields; the others propagate so fast that another propagation costs as little.
+
+    Parameters
+    ----------
+    engine : its name, as in a plan.
+    totals : whether the sums will be asked for all their light, beside pictures.
+    """
+    room = import_module(f"fastaxis.engines.{engine}")
+    return hasattr(room, "combined") and (not totals or getattr(room, "TOTALS_ADD", True))
 
 
 def combined(

@@ -88,7 +88,8 @@ def make_family(
     fields = [spanning(table) for table in answers]
     pictures = [spanning(squares(span.coefficients)) for span in fields]
     first = make_plan(_at(train, groups, [span.nodes[:1] for span in fields])[0], target, grid=grid, engine=engine)
-    summed = bool(fields) and combines(first.engine)
+    sensor = sensor_at(train, target)
+    summed = bool(fields) and combines(first.engine, totals=not hasattr(sensor, "pixel"))
     chosen = fields if summed else pictures
     trains = _at(train, groups, [span.nodes for span in chosen])
     plans = [first] if len(trains) == 1 else [make_plan(each, target, grid=grid, engine=engine) for each in trains]
@@ -96,7 +97,6 @@ def make_family(
     for light in relay.propagate(plans):
         lights.append(light)
         done(len(plans))
-    sensor = sensor_at(train, target)
     shots = [recorded(sums, sensor) for sums in (_sums(first.engine, lights, fields, pictures) if summed else lights)]
     return Family(
         tables=tuple(span.coefficients for span in pictures),

@@ -186,7 +186,8 @@ def _summed(
 def _pictures(at: Any, merit: Any, fields: Any, pictures: Any, options: Any) -> Sequence[tuple[Reals, Any, Any]]:
     whole = isinstance(merit, StokesMerit)
     first = make_plan(at(int(fields.nodes[0])), merit.target, power_only=whole, **options)
-    summed = combines(first.engine)
+    totals = whole or not hasattr(sensor_at(at(int(fields.nodes[0])), merit.target), "pixel")
+    summed = combines(first.engine, totals=totals)
     trains = [at(int(row)) for row in (fields if summed else pictures).nodes]
     plans = [make_plan(each, merit.target, power_only=whole, **options) for each in trains]
     lights = list(Relay().propagate(plans))

@@ -1,0 +1,100 @@
+"""Sums of fields that came by sections alike."""
+
+from __future__ import annotations
+
+from collections.abc import Sequence
+from dataclasses import replace
+from functools import reduce
+
+import numpy as np
+
+from fastaxis.engines.azimuthal.harmonics import Harmonics
+from fastaxis.engines.azimuthal.panels import Complexes, Profile, Reals
+from fastaxis.engines.azimuthal.plane import AzimuthalField
+from fastaxis.engines.azimuthal.resolving import Settings, resolved
+from fastaxis.errors import ParameterError
+
+__all__ = ["combined"]
+
+SAME = 1e-12  # of a ray matrix: some thousand roundings of numbers multiplied in another order
+
+
+def combined(fields: Sequence[AzimuthalField], coefficients: Complexes) -> AzimuthalField:
+    """The sum of coefficient * field, of light at one target.
+
+    Harmonics on the same panels are added number by number; others, which meet where a plate darkens a harmonic, are
+    read onto panels that suit the sum. Light outside a cut is not followed, so of that the powers are added.
+
+    Raises
+    ------
+    ParameterError : the fields have different sections still to travel.
+    """
+    lights = [field.harmonics for field in fields]
+    _check_sections(lights)
+    orders = tuple(dict.fromkeys(order for light in lights for order in light.orders))
+    matrices = [_placed(light, orders) * number for light, number in zip(lights, coefficients, strict=True)]
+    first = lights[0]
+    beyond = [
+        sum(abs(number) ** 2 * light.beyond[hand] for light, number in zip(lights, coefficients, strict=True))
+        for hand in (0, 1)
+    ]
+    total = replace(first, orders=orders, beyond=(float(beyond[0]), float(beyond[1])))
+    total = (
+        _added(total, lights, matrices) if _alike(lights) else _resampled(total, lights, matrices, fields[0].settings)
+    )
+    peak = max(total.profile.peak, 1e-300)
+    # Errors are shares of each field's own peak.
+    shares = [abs(c) * light.error * light.profile.peak for light, c in zip(lights, coefficients, strict=True)]
+    total = replace(total, error=total.error + float(sum(shares)) / peak)
+    return replace(fields[0], harmonics=total.without_dark(), _arrivals={}, _tables={})
+
+
+def _placed(light: Harmonics, orders: tuple[tuple[int, int], ...]) -> Complexes:
+    """Rows of all orders from the functions that a field has."""
+    matrix = np.zeros((len(orders), len(light.orders)), dtype=complex)
+    for column, order in enumerate(light.orders):
+        matrix[orders.index(order), column] = 1
+    return matrix
+
+
+def _alike(lights: list[Harmonics]) -> bool:
+    first = lights[0]
+    return all(
+        light.curvature == first.curvature
+        and light.taper == first.taper
+        and np.array_equal(light.profile.edges, first.profile.edges)
+        for light in lights
+    )
+
+
+def _added(total: Harmonics, lights: list[Harmonics], matrices: list[Complexes]) -> Harmonics:
+    parts = [np.tensordot(matrix, light.profile.values, axes=1) for light, matrix in zip(lights, matrices, strict=True)]
+    return replace(total, profile=Profile(lights[0].profile.edges, sum(parts[1:], parts[0])), error=0.0)
+
+
+def _resampled(total: Harmonics, lights: list[Harmonics], matrices: list[Complexes], settings: Settings) -> Harmonics:
+    """The sum relative to the front of the first field, soft ends worked in."""
+
+    def values(r: Reals) -> Complexes:
+        out = np.zeros((len(total.orders), len(r)), dtype=complex)
+        for light, matrix in zip(lights, matrices, strict=True):
+            bend = light.wavenumber * (light.curvature - total.curvature) / 2
+            end = light.taper(r) if light.taper else 1.0
+            out += matrix @ (light.profile(r) * (np.exp(1j * bend * r**2) * end))
+        return out
+
+    edges = reduce(np.union1d, (light.profile.edges for light in lights))
+    # Borders that two fields share but for a rounding make no panel.
+    edges = edges[np.concatenate([[True], np.diff(edges) > 1e-9 * edges[-1]])]
+    profile, rest = resolved(values, edges, settings)
+    return replace(total, profile=profile, taper=None, error=rest)
+
+
+def _check_sections(lights: list[Harmonics]) -> None:
+    sections = np.array([[s.a, s.b, s.c, s.d] for s in (light.section for light in lights)], dtype=float)
+    if (abs(sections - sections[0]) > SAME * abs(sections[0]) + 1e-300).any():
+        raise ParameterError(
+            "fields add where they have the same way still to go",
+            got="sections " + ", ".join(f"b = {b:.6g} m" for b in sorted(set(sections[:, 1]))),
+            fix='train.expose("cam", [fa.H, fa.V])',
+        )
