@@ -10,6 +10,9 @@ import fastaxis as fa
 from fastaxis.errors import FastaxisError, ParameterError, SymbolError, WiringError
 from fastaxis.units import deg, mW
 
+# Samples set by hand on purpose coarser than edges and vortices want; that they are is said, and tested elsewhere.
+coarse = pytest.mark.filterwarnings("ignore::fastaxis.errors.SamplingWarning")
+
 ANGLES = np.radians(np.linspace(0, 90, 7))
 
 
@@ -74,6 +77,7 @@ def test_it_says_what_it_did(swept):
     assert "2 propagations" in text
 
 
+@coarse
 def test_progress_counts_propagations(bench):
     told = []
     grid = fa.Grid(samples=128, window=8e-3)
@@ -97,6 +101,7 @@ def test_ten_thousand_values_do_not_fill_memory(flat):
     assert peak < 40 * 2**20
 
 
+@coarse
 def test_pictures_of_earlier_values_are_let_go(bench, monkeypatch):
     monkeypatch.setattr("fastaxis.studies.gallery.KEPT", 0)
     grid = fa.Grid(samples=128, window=8e-3)

@@ -1,6 +1,7 @@
 import numpy as np
 import pytest
 
+import fastaxis as fa
 from fastaxis.engines.grid.guard import check, edge_watched, phase_step
 from fastaxis.engines.grid.light import GridLight, axis
 from fastaxis.errors import SamplingError, SamplingWarning
@@ -47,3 +48,19 @@ def test_light_near_the_edge_is_warned_about_and_then_refused():
         check(light(1e-3, edge_power=0.05), ("lens",), GRID)
     with pytest.raises(SamplingError, match=r"30.00% cut off by the band limit.*samples=512, window=0.0512"):
         check(light(1e-3, discarded=0.3), ("lens",), GRID)
+
+
+def test_a_grid_set_by_hand_is_told_when_it_is_coarse():
+    """A vortex 2.3 samples wide after 10 mm: three parts in a hundred of the peak are wrong."""
+    train = fa.Train(wavelength=633e-9).along(
+        fa.Laser(waist=0.65e-3), fa.SpiralPlate(charge=1), fa.FreeSpace(10e-3),
+        fa.Camera(pixel=30e-6, shape=(96, 96), name="cam"),
+    )  # fmt: skip
+    with pytest.warns(SamplingWarning, match=r"highest frequency.*Grid\(samples=768, window=0.0133\)"):
+        train.expose("cam", fa.H, grid=fa.Grid(samples=384, window=13.3e-3), engine="grid")
+
+
+def test_light_near_the_edge_is_said_earlier_where_the_grid_was_set_by_hand():
+    assert check(light(1e-3, edge_power=1e-3), ("lens",), GRID).edge_power == 1e-3
+    with pytest.warns(SamplingWarning, match="0.10% of the power near the edge"):
+        check(light(1e-3, edge_power=1e-3), ("lens",), GRID, by_hand=True)

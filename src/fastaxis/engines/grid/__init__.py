@@ -44,8 +44,8 @@ def continued(light: GridLight, branch: Branch, first: int, end: int) -> GridLig
 
 def finished(light: GridLight, branch: Branch) -> GridField:
     """Light at the target of a branch, looked over."""
-    names = branch.steps[-1].names if branch.steps else ()
-    return GridField(light, check(light, names, cast("Sampling", branch.sampling).grid))
+    names, sampling = branch.steps[-1].names if branch.steps else (), cast("Sampling", branch.sampling)
+    return GridField(light, check(light, names, sampling.grid, by_hand=sampling.chosen == "by hand"), sampling.grid)
 
 
 def _past(light: GridLight, law: StepLaw, hop: Hop | None, *, last: bool) -> GridLight:

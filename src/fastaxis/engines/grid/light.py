@@ -33,6 +33,8 @@ class GridLight:
     periodic : whether a plane wave fills the window to its edge.
     edge_power : largest share of the power met near the edge of the window.
     discarded : share of the power removed by band limits.
+    beyond : light that edges scatter beyond the band of the samples, as a share of what the samples hold.
+    band_power : largest share of the power met near the edge of the band of the samples.
     filled : waves along a side that hold the light, if known from the travel it comes from; None if not.
     """
 
@@ -44,6 +46,8 @@ class GridLight:
     periodic: bool = False
     edge_power: float = 0.0
     discarded: float = 0.0
+    beyond: float = 0.0
+    band_power: float = 0.0
     filled: int | None = None
 
     @property
@@ -63,8 +67,8 @@ class GridLight:
 
     @property
     def power(self) -> float:
-        """Power in the window [W]."""
-        total = inner(self.samples, self.samples).real * self.pitch**2
+        """Power [W]: of the samples, and of what edges scattered beyond their band."""
+        total = inner(self.samples, self.samples).real * self.pitch**2 * (1 + self.beyond)
         return total if self.jones is None else total * float(np.vdot(self.jones, self.jones).real)
 
     def components(self) -> Samples:

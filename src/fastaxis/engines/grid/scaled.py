@@ -8,6 +8,7 @@ import numpy as np
 
 from fastaxis.engines.grid.band import band_limit, cut_band
 from fastaxis.engines.grid.filled import filled
+from fastaxis.engines.grid.guard import rim_share
 from fastaxis.engines.grid.light import GridLight, multiply_separable
 from fastaxis.engines.grid.transforms import forward, inverse
 from fastaxis.laws import TravelLaw
@@ -30,9 +31,10 @@ def travel_scaled(light: GridLight, travel: TravelLaw, *, measured: bool = False
     """
     near, far = travel.a + travel.b * light.curvature, travel.c + travel.d * light.curvature
     distance = travel.b / near
-    samples, discarded, waves = light.samples, light.discarded, None
+    samples, discarded, waves, band = light.samples, light.discarded, None, light.band_power
     if distance != 0:
         spectrum = forward(samples)
+        band = max(band, 0.0 if light.periodic else rim_share(np.fft.fftshift(spectrum, axes=(-2, -1))))
         frequency = np.asarray(np.fft.fftfreq(light.count, light.pitch), dtype=float)
         if not light.periodic:
             limit = band_limit(light.window, abs(distance), light.wavelength)
@@ -46,4 +48,6 @@ def travel_scaled(light: GridLight, travel: TravelLaw, *, measured: bool = False
     if near < 0:
         samples = np.ascontiguousarray(samples[:, ::-1, ::-1])
     pitch, curvature = light.pitch * abs(near), far / near
-    return replace(light, samples=samples, pitch=pitch, curvature=curvature, discarded=discarded, filled=waves)
+    return replace(
+        light, samples=samples, pitch=pitch, curvature=curvature, discarded=discarded, band_power=band, filled=waves
+    )
