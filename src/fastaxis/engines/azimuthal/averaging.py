@@ -8,6 +8,7 @@ import numpy as np
 from scipy.ndimage import correlate1d
 
 from fastaxis.engines.azimuthal.panels import Reals
+from fastaxis.light.gauss import gauss_legendre
 
 __all__ = ["LONGEST", "averaged", "taps"]
 
@@ -24,7 +25,7 @@ def taps(reach: int) -> Reals:
     >>> (taps(1) * 24).round(12)
     array([ 1., 22.,  1.])
     """
-    nodes, weights = np.polynomial.legendre.leggauss(reach + 1)
+    nodes, weights = gauss_legendre(reach + 1)
     near = np.arange(-reach, reach + 1)
     others = [near[near != j] for j in near]
     lagrange = [

@@ -10,6 +10,7 @@ from itertools import pairwise
 import numpy as np
 
 from fastaxis.engines.azimuthal.panels import Reals
+from fastaxis.light.gauss import gauss_legendre
 
 __all__ = ["Block", "blocks_along", "collected"]
 
@@ -45,7 +46,7 @@ class Block:
 @lru_cache(maxsize=64)
 def _rule(count: int) -> tuple[Reals, Reals]:
     """Gauss-Legendre nodes, and the matrix from values there to Legendre coefficients."""
-    nodes, weights = np.polynomial.legendre.leggauss(count)
+    nodes, weights = gauss_legendre(count)
     vander = np.polynomial.legendre.legvander(nodes, count - 1)
     return nodes, np.asarray((vander * weights[:, np.newaxis] * (np.arange(count) + 0.5)).T)
 
@@ -53,7 +54,7 @@ def _rule(count: int) -> tuple[Reals, Reals]:
 @lru_cache(maxsize=256)
 def _means(pixels: int, count: int) -> Reals:
     """Means over so many equal pixels of [-1, 1], from values at the nodes."""
-    inner, weights = np.polynomial.legendre.leggauss(count // 2 + 1)
+    inner, weights = gauss_legendre(count // 2 + 1)
     middles = (2 * np.arange(pixels) + 1) / pixels - 1
     places = middles[:, np.newaxis] + inner / pixels
     return np.asarray(weights / 2 @ np.polynomial.legendre.legvander(places, count - 1) @ _rule(count)[1])

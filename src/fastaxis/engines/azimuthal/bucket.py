@@ -8,10 +8,11 @@ import numpy as np
 
 from fastaxis.engines.azimuthal.harmonics import LEFT, RIGHT, Harmonics
 from fastaxis.engines.azimuthal.panels import Reals
+from fastaxis.light.gauss import gauss_legendre
 
 __all__ = ["square_stokes"]
 
-NODES, WEIGHTS = np.polynomial.legendre.leggauss(96)
+NODES, WEIGHTS = gauss_legendre(96)
 
 
 def _arcs(m: int, r: Reals, half: float) -> Reals:

@@ -11,6 +11,7 @@ from fastaxis.engines.azimuthal.panels import Reals
 from fastaxis.engines.azimuthal.rendering import Orders, circular_field, stokes_of
 from fastaxis.engines.azimuthal.table import Table
 from fastaxis.light import Raster
+from fastaxis.light.gauss import gauss_legendre
 
 __all__ = ["cell_images"]
 
@@ -45,7 +46,7 @@ def _line_error(table: Table, orders: Orders, pitch: float, reach: int) -> float
     """Worst error of the filtered mean on cells along x, as a share of the peak irradiance."""
     count = min(int(table.reach / pitch) + 1, 256)
     middles = np.arange(-2.0, count, dtype=float) * pitch
-    nodes, weights = np.polynomial.legendre.leggauss(2 * LONGEST)
+    nodes, weights = gauss_legendre(2 * LONGEST)
     fine = _line(table, orders, (middles[:, np.newaxis] + nodes * pitch / 2).ravel())
     exact = fine.reshape(4, -1, len(nodes)) @ weights / 2
     wide = np.arange(-2.0 - reach, count + reach, dtype=float) * pitch

@@ -10,6 +10,8 @@ from typing import Any, TypeAlias
 import numpy as np
 from numpy.typing import NDArray
 
+from fastaxis.light.gauss import gauss_legendre
+
 __all__ = ["ORDER", "Complexes", "Profile", "Reals", "sampled"]
 
 Reals: TypeAlias = NDArray[np.float64]
@@ -18,23 +20,7 @@ Complexes: TypeAlias = NDArray[np.complex128]
 ORDER = 32
 """Nodes a panel. High orders need fewer nodes a fringe: 32 carry 2.5 fringes to the last digit."""
 
-
-def _gauss_legendre(count: int) -> tuple[Reals, Reals]:
-    """Nodes and weights to the last digit: numpy's weights are off by 6e-14, a digit that the panels would lose.
-
-    Newton steps in extended precision; where there is none, in double, which is no worse than before.
-    """
-    x: NDArray[Any] = np.polynomial.legendre.leggauss(count)[0].astype(np.longdouble)
-    for _ in range(2):
-        last, this = np.ones_like(x), x
-        for j in range(1, count):
-            last, this = this, ((2 * j + 1) * x * this - j * last) / (j + 1)
-        slope = count * (last - x * this) / (1 - x * x)
-        x = x - this / slope
-    return x.astype(float), (2 / ((1 - x * x) * slope**2)).astype(float)
-
-
-NODES, WEIGHTS = _gauss_legendre(ORDER)
+NODES, WEIGHTS = gauss_legendre(ORDER)
 _VANDER = np.polynomial.legendre.legvander(NODES, ORDER - 1)
 # c_j = (2j+1)/2 sum_i w_i P_j(x_i) f(x_i): exact for polynomials of the panel, the rule being exact to 2 ORDER - 1.
 _TO_COEFFICIENTS = (_VANDER * WEIGHTS[:, np.newaxis] * (np.arange(ORDER) + 0.5)).T

@@ -8,6 +8,7 @@ from typing import TYPE_CHECKING, Any
 import numpy as np
 
 from fastaxis.errors import SamplingError
+from fastaxis.light.gauss import gauss_legendre
 
 if TYPE_CHECKING:
     from fastaxis.light.modes.base import Mode
@@ -48,7 +49,7 @@ def _finest(mode: Mode, wavelength: float) -> float:
 def _polar_sum(
     pair: tuple[Mode, Mode], wavelength: float, count: int, *, centre: tuple[Any, Any], radius: float
 ) -> complex:
-    nodes, weights = np.polynomial.legendre.leggauss(count)
+    nodes, weights = gauss_legendre(count)
     r = radius * (nodes + 1) / 2
     angle = np.arange(count) * (2 * math.pi / count)
     x, y = centre[0] + np.outer(r, np.cos(angle)), centre[1] + np.outer(r, np.sin(angle))
