@@ -91,14 +91,15 @@ def _hankel(rho, radius):
     )
 
 
-def test_power_through_a_hole_converges_to_first_order(arrive):
+def test_samples_behind_a_hole_fall_short_to_first_order(arrive):
     """A rim sample passes c of the amplitude and c^2 of the power, 1/6 of a sample less than its area on the average:
-    the share of a plane wave falls short by pitch/(3 radius)."""
+    the share of a plane wave falls short by pitch/(3 radius), and is counted as scattered beyond the band."""
     radius = 1 * mm
     for count in (256, 512, 1024):
         field = arrive(PlaneWave(area=1.0), Aperture(radius=radius), grid=Grid(count, 6 * mm))
-        short = 1 - field.power / (np.pi * radius**2)
-        assert short == pytest.approx(6 * mm / count / (3 * radius), rel=0.1)
+        assert field.guard.discarded == pytest.approx(6 * mm / count / (3 * radius), rel=0.1)
+        # 256 samples: the rim crosses 270 samples, each with its area wrong by up to 1/24 at random.
+        assert field.power == pytest.approx(np.pi * radius**2, rel=5e-4)
 
 
 def cinder_lane(plate, *after, retardance=180 * deg):

@@ -50,8 +50,8 @@ def expose(
     add there. A frame is then the weighted sum of the four images.
 
     The camera's ``centre`` is the place of the middle of its sensor in the beam's plane [m]. Its ``orientation`` turns
-    or mirrors the picture *after* that; polarization keeps the beam's own axes, so that H and the analyzer angles
-    mean the same whichever way the camera is mounted. A detector gives frames of one pixel that hold all the power.
+    or mirrors the picture *after* that; states keep the names of the beam's own frame, so that H and the analyzer
+    angles mean the same whichever way the camera is mounted. ``shots.upright`` sets the picture upright again. A detector gives frames of one pixel that hold all the power.
 
     Parameters
     ----------
@@ -114,6 +114,8 @@ def _shot(train: Any, target: str, plan: Any, fields: Sequence[Any], analyzers: 
         orientation=getattr(sensor, "orientation", "upright"),
         guard=merge_guards([field.guard for field in fields]),
         plan=str(plan),
+        sent=float(plan.source.power),
+        arrived=float(sum(field.power for field in fields)),
     )
 
 

@@ -22,7 +22,8 @@ class Guard:
     edge_power : largest share of the power met in the outermost 1/16 of the window's half side, at any plane.
     phase_step : phase step [rad] between neighbouring samples that all but 1 % of the light stays below; near pi
         the samples no longer tell which way the phase turns.
-    discarded : share of the power removed by band limits on the way.
+    discarded : share of the power that is in no frame: removed by band limits on the way, or scattered by edges to
+        steeper angles than the samples hold (which powers include).
     """
 
     edge_power: float = 0.0

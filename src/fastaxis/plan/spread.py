@@ -6,12 +6,12 @@ import math
 from dataclasses import dataclass, replace
 
 from fastaxis.laws import Annulus, AxisLaw, Disc, Flip, Rectangle, ScalarLaw, Stop, Strip, TravelLaw, Turn
-from fastaxis.light import Beam, Mode
+from fastaxis.light import Beam, Mode, SampledMode
 from fastaxis.maths import Pattern
 from fastaxis.plan.steps import StepLaw
 from fastaxis.plan.turning import turned
 
-__all__ = ["Spread", "closed", "of_beam", "reach"]
+__all__ = ["Spread", "clear_width", "closed", "of_beam", "reach"]
 
 Pair = tuple[float, float]
 
@@ -30,6 +30,7 @@ class Spread:
     angle : rms angle [rad] left when that curvature is taken out; M^2 wavelength/(4 pi size).
     offset, slope : where the beam's middle is (x, y) [m] and where it heads [rad].
     rough : whether an edge, a mask or a singularity has left tails that fall off slowly.
+    whole : whether samples must hold all of it at the source, since they are scaled to unit power.
     """
 
     size: float
@@ -38,6 +39,7 @@ class Spread:
     offset: tuple[float, float] = (0.0, 0.0)
     slope: tuple[float, float] = (0.0, 0.0)
     rough: bool = False
+    whole: bool = False
 
     @property
     def infinite(self) -> bool:
@@ -138,6 +140,23 @@ def reach(stop: Stop) -> float:
     return float(stop.width) / 2 if isinstance(stop, Strip) else 0.0
 
 
+def clear_width(stop: Stop) -> float:
+    """Area over perimeter [m] of a clear area, or of an obstacle: half the width of a slit, half the radius of a disc.
+
+    Samples of pitch p keep 1 - p/(6 clear_width) of the power of even light that passes: an edge that crosses a sample
+    lets c of the power through and c^2 of it into the samples, and c - c^2 is 1/6 on average. Infinite for a straight
+    edge, which takes its share of whatever light there is.
+    """
+    if isinstance(stop, Disc):
+        return float(stop.radius) / 2
+    if isinstance(stop, Annulus):
+        return float(stop.outer - stop.inner) / 2
+    if isinstance(stop, Rectangle):
+        width, height = float(stop.width), float(stop.height)
+        return width * height / (2 * (width + height))
+    return float(stop.width) / 2 if isinstance(stop, Strip) else math.inf
+
+
 def closed(stop: Stop) -> bool:
     """Whether the clear area is bounded on all sides."""
     return isinstance(stop, Annulus | Rectangle) or (isinstance(stop, Disc) and not stop.opaque)
@@ -152,7 +171,8 @@ def of_beam(beam: Beam, wavelength: float) -> Spread:
     widest = max(spreads, key=lambda spread: spread.size)
     farthest = max(spreads, key=lambda spread: max(map(abs, spread.offset)))
     angle = max(_angle_beside(spread, widest.curvature) for spread in spreads)
-    return replace(widest, angle=angle, offset=farthest.offset, rough=any(spread.rough for spread in spreads))
+    rough, whole = any(spread.rough for spread in spreads), any(spread.whole for spread in spreads)
+    return replace(widest, angle=angle, offset=farthest.offset, rough=rough, whole=whole)
 
 
 def _angle_beside(spread: Spread, curvature: float) -> float:
@@ -167,10 +187,10 @@ def _of_mode(mode: Mode, wavelength: float) -> Spread:
     moments = mode.moments(wavelength)
     size, curvature = math.sqrt(moments.x2), mode.curvature(wavelength)
     x, y = getattr(mode, "centre", (0.0, 0.0))
-    centre = (float(x), float(y))
+    centre, whole = (float(x), float(y)), mode.hard or isinstance(mode, SampledMode)
     least = wavelength / (2 * math.pi * size)
     if math.isinf(moments.t2):
-        return Spread(size, curvature, least, centre, rough=True)
+        return Spread(size, curvature, least, centre, rough=True, whole=whole)
     # Never below the diffraction limit, which rounding of a difference of large moments could reach.
     angle = math.sqrt(max(moments.t2 - (moments.xt / size) ** 2, (least / 2) ** 2))
-    return Spread(size, curvature, angle, centre, rough=mode.hard)
+    return Spread(size, curvature, angle, centre, rough=mode.hard, whole=whole)

@@ -12,6 +12,7 @@ from numpy.typing import NDArray
 
 from fastaxis.engines.field import Guard
 from fastaxis.engines.grid.collecting import Collected
+from fastaxis.engines.grid.edges import watch_frame
 from fastaxis.engines.grid.light import GridLight
 from fastaxis.engines.grid.reading import GridField
 from fastaxis.errors import SamplingError
@@ -46,16 +47,26 @@ class GridSum:
         """The sum as sampled light."""
         light = _sum([field.light for field in self.fields], self.coefficients)
         # Each field fills as many waves as it needs; how many the sum fills is found anew.
-        return GridField(replace(light, filled=None), self.guard)
+        light = replace(light, filled=None, beyond=self._beyond())
+        return GridField(light, self.guard, self.fields[0].grid)
+
+    def _beyond(self) -> float:
+        """What edges scattered, of all fields together; as a share, for light that cancels takes its own along."""
+        lights, weights = [field.light for field in self.fields], abs(self.coefficients) ** 2
+        shares = [light.beyond for light in lights]
+        if not any(shares):
+            return 0.0
+        powers = [w * light.power / (1 + light.beyond) for w, light in zip(weights, lights, strict=True)]
+        return float(np.average(shares, weights=powers)) if sum(powers) else 0.0
 
     @property
     def power(self) -> float:
-        """Power in the window [W]."""
+        """Power [W]: in the window, and scattered by edges beyond the band of the samples."""
         return self.whole.power
 
     @property
     def total_stokes(self) -> NDArray[np.float64]:
-        """S0 .. S3 of the light in the window [W], shape (4,)."""
+        """S0 .. S3 of all the light [W], shape (4,)."""
         return self.whole.total_stokes
 
     @property
@@ -71,6 +82,9 @@ class GridSum:
 
     def stokes_on(self, raster: Raster) -> NDArray[np.float64]:
         """Watts per pixel of S0 .. S3, shape (4, ny, nx); each field is brought to the pixels once for all sums."""
+        if raster.shape != (1, 1):
+            for field in self.fields:
+                watch_frame(field.light, field.grid)
         parts = [field.collected_by(raster) for field in self.fields]
         if any((part.rows, part.columns) != (parts[0].rows, parts[0].columns) for part in parts):
             return self.whole.stokes_on(raster)

@@ -11,6 +11,7 @@ from scipy import fft
 
 from fastaxis.engines.field import Guard
 from fastaxis.engines.grid.collecting import Collected
+from fastaxis.engines.grid.edges import watch_frame
 from fastaxis.engines.grid.filled import filled
 from fastaxis.engines.grid.interpolant import value_matrix
 from fastaxis.engines.grid.kernel import blocks, reach_for
@@ -18,6 +19,7 @@ from fastaxis.engines.grid.light import GridLight, Samples, curve, inner
 from fastaxis.engines.grid.nearby import nearby
 from fastaxis.engines.grid.transforms import forward
 from fastaxis.light import Raster, stokes
+from fastaxis.plan import Grid
 
 __all__ = ["GridField"]
 
@@ -38,6 +40,7 @@ class GridField:
 
     light: GridLight
     guard: Guard
+    grid: Grid | None = field(default=None, repr=False)
     _read: dict[Raster, Collected] = field(default_factory=dict, repr=False, compare=False)
 
     @property
@@ -47,17 +50,16 @@ class GridField:
 
     @property
     def power(self) -> float:
-        """Power in the window [W]."""
+        """Power [W]: in the window, and scattered by edges beyond the band of the samples."""
         return self.light.power
 
     @property
     def total_stokes(self) -> Reals:
-        """S0 .. S3 of the light in the window [W], shape (4,)."""
-        light = self.light
+        """S0 .. S3 of all the light [W], shape (4,); what edges scattered counts with the polarization of the rest."""
+        light, area = self.light, self.light.pitch**2 * (1 + self.light.beyond)
         if light.jones is not None:
-            scalar = inner(light.samples, light.samples).real * light.pitch**2
-            return np.asarray(scalar * stokes(light.jones))
-        (ex, ey), area = (light.samples[:1], light.samples[1:]), light.pitch**2
+            return np.asarray(inner(light.samples, light.samples).real * area * stokes(light.jones))
+        ex, ey = light.samples[:1], light.samples[1:]
         px, py, cross = inner(ex, ex).real, inner(ey, ey).real, 2 * inner(ex, ey)
         return np.array([px + py, px - py, cross.real, -cross.imag]) * area
 
@@ -76,8 +78,15 @@ class GridField:
         """Watts per pixel of S0 .. S3, shape (4, ny, nx): the integral of the band-limited curve over each pixel.
 
         Irradiance has twice the band of the field, so finer samples hold it exactly, and what a pixel of any size
-        collects is a fixed sum of them.
+        collects is a fixed sum of them. Light that edges scattered to steeper angles than the samples hold is in
+        ``power`` and in ``guard.discarded``, not here.
+
+        Warns
+        -----
+        SamplingWarning : that light is more than 1 % of the power.
         """
+        if raster.shape != (1, 1):
+            watch_frame(self.light, self.grid)
         return (self._read.get(raster) or self._collected_by(raster)).stokes()
 
     def collected_by(self, raster: Raster) -> Collected:

@@ -1,0 +1,38 @@
+"""Light that edges scatter to steeper angles than the samples hold."""
+
+from __future__ import annotations
+
+import math
+
+from fastaxis.engines.grid.light import GridLight
+from fastaxis.errors import SamplingWarning, caution
+from fastaxis.plan import Grid
+
+__all__ = ["beyond_share", "watch_frame"]
+
+WARN = 0.01  # of the power: about what a power meter beside the camera would show
+
+
+def beyond_share(light: GridLight) -> float:
+    """Share of all the power that edges scattered beyond the band."""
+    return light.beyond / (1 + light.beyond)
+
+
+def watch_frame(light: GridLight, grid: Grid | None) -> None:
+    """Warn where a picture misses much of the power behind an edge; the share missed goes as the pitch.
+
+    Warns
+    -----
+    SamplingWarning : more than 1 %.
+    """
+    missed = beyond_share(light)
+    if grid is None or missed <= WARN:
+        return
+    samples = 2 * math.ceil(grid.samples * missed / WARN / 2)
+    caution(
+        SamplingWarning(
+            "light that edges scatter beyond the band of the samples is in powers, but in no picture",
+            got=f"a stop drawn on {grid.samples} samples: {missed:.1%} of the power behind it missing from the picture",
+            fix=f"grid=fa.Grid(samples={samples}, window={grid.window:.4g})",
+        )
+    )
