@@ -11,7 +11,7 @@ from fastaxis.studies.fault import Suspect, Watch, suspects
 
 __all__ = ["BenchError", "Claim", "blame", "hold"]
 
-NAMED = 3  # explanations told; of more, the rest is a number
+NAMED = 4  # explanations told; of more, the rest is a number
 
 
 class BenchError(AssertionError):
@@ -100,4 +100,4 @@ def blame(train: Any, watch: Watch) -> str:
 
 def _likeliest(found: list[Suspect]) -> list[Suspect]:
     """Mistakes that are made whole before those that are made by degrees; each in the order of the light path."""
-    return sorted(found, key=lambda one: one.off)
+    return sorted(found, key=lambda one: round(one.off, 6))

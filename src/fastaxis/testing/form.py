@@ -34,7 +34,7 @@ def form_equal(train: Any, target: str, expected: Any, *, behind: Any) -> None:
     """
     derived = train.derive(target).frame(behind)
     difference = derived - expected
-    letters = sorted(difference.free_symbols, key=str)
+    letters = sorted(derived.free_symbols | expected.free_symbols, key=str)
     generator = np.random.default_rng(20)
     worst = 0.0
     for _ in range(POINTS):

@@ -174,5 +174,7 @@ def muellers(matrices: Complexes) -> Reals:
     >>> muellers(np.diag([1.0, -1.0])[None].astype(complex))[0].diagonal().tolist()
     [1.0, 1.0, -1.0, -1.0]
     """
-    turned = np.einsum("vab,jbc,vdc->vjad", matrices, SIGMA, matrices.conj())
-    return np.asarray(np.einsum("iab,vjba->vij", SIGMA, turned).real / 2)
+    turned = matrices[:, None] @ SIGMA @ matrices.conj().swapaxes(1, 2)[:, None]
+    # The trace of a product of two matrices is a product of their entries, one of them transposed.
+    flat = turned.swapaxes(2, 3).reshape(len(matrices), 4, 4)
+    return np.asarray(np.einsum("vjk,ik->vij", flat, SIGMA.reshape(4, 4), optimize=True).real / 2)

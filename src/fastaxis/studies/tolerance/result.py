@@ -124,12 +124,25 @@ class Tolerance:
 
     def percentile(self, share: float, merit: str | None = None) -> float:
         """The value below which this share [%] of the draws lie; draws that could not be read are left out."""
-        return float(np.nanpercentile(self.samples[self._named(merit)], share))
+        values = self.samples[self._named(merit)]
+        read = values[~np.isnan(values)]
+        return float(np.percentile(read, share)) if read.size else float("nan")
 
     def at_percentile(self, share: float, merit: str | None = None) -> Any:
-        """The train as it stands at the draw nearest to a percentile."""
-        values = self.samples[self._named(merit)]
-        row = int(np.nanargmin(np.abs(values - self.percentile(share, merit))))
+        """The train as it stands at the draw nearest to a percentile.
+
+        Raises
+        ------
+        ParameterError : no draw could be read.
+        """
+        apart = np.abs(self.samples[self._named(merit)] - self.percentile(share, merit))
+        if np.isnan(apart).all():
+            raise ParameterError(
+                "a percentile needs a draw that could be read",
+                got=f"tolerance: {self._named(merit)} is nan in all draws",
+                fix="print(found)",
+            )
+        row = int(np.nanargmin(apart))
         return self.train.with_changes(self.causes.changes(self.offsets[row]))
 
     def text(self) -> str:
@@ -146,13 +159,15 @@ class Tolerance:
 
     def _about(self, name: str) -> list[str]:
         unit, values = getattr(self.merits[name], "unit", ""), self.samples[name]
+        read = values[~np.isnan(values)]
+        spread = float(read.std()) if read.size else float("nan")
         low, middle, high = (self.percentile(share, name) for share in (5, 50, 95))
         lines = [
             f"{name}: {self.nominal[name]:.6g} {unit} as declared".replace("  ", " "),
-            f"  drawn: 5 % {low:.6g}, 50 % {middle:.6g}, 95 % {high:.6g}; standard deviation {np.nanstd(values):.4g}",
+            f"  drawn: 5 % {low:.6g}, 50 % {middle:.6g}, 95 % {high:.6g}; standard deviation {spread:.4g}",
             f"  worst case: {self.worst[name].low:.6g} to {self.worst[name].high:.6g}",
         ]
-        unread = int(np.isnan(values).sum())
+        unread = len(values) - len(read)
         lines += [f"  {unread} draws could not be read"] if unread else []
         lines += [f"  {100 * one.share:5.1f} %  {one.cause} (alone {one.sigma:.3g})" for one in self.rankings[name]]
         for parameter, slope in self.sensitivities[name].items():
