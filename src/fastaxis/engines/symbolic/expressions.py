@@ -7,11 +7,12 @@ from typing import Any
 
 import sympy as sp
 
+from fastaxis.engines.symbolic.ring.polar import canonical_sum, polar
 from fastaxis.engines.symbolic.ring.poly import Poly
 from fastaxis.engines.symbolic.ring.ring import ANGLE, UNIT, Ring
 from fastaxis.engines.symbolic.ring.roots import TURN
 
-__all__ = ["amplitude_of", "angle_of", "as_sum", "real_sum", "split_key", "written"]
+__all__ = ["amplitude_of", "angle_of", "as_sum", "by_root", "real_sum", "split_key", "written"]
 
 
 def split_key(ring: Ring, key: int) -> tuple[int, int, int]:
@@ -42,6 +43,15 @@ def amplitude_of(ring: Ring, key: int) -> Any:
             if ring.generators[p].kind != ANGLE
         )
     )
+
+
+def by_root(poly: Poly) -> dict[int, dict[int, int]]:
+    """Coefficients by root of unity, for each monomial without its root."""
+    found: dict[int, dict[int, int]] = {}
+    for key, value in poly.terms.items():
+        root = poly.ring.exponents(key)[0]
+        found.setdefault(key - root, {})[root] = value
+    return found
 
 
 Group = dict[int, dict[int, dict[int, int]]]
@@ -105,12 +115,12 @@ def as_sum(poly: Poly) -> Any:
 
 def _number(roots: dict[int, int], den: int) -> tuple[Any, int]:
     """(factor, rest): a sum of roots of unity as a factor times one root, whose quarter turns are in the factor."""
-    if len(roots) == 1:
-        ((root, value),) = roots.items()
-        quarters, rest = divmod(root % TURN, TURN // 4)
-        return sp.Rational(value, den) * sp.I**quarters, rest
-    real, imag = _complex(roots, den)
-    return real + sp.I * imag, 0
+    found = polar(roots)
+    if found is None:
+        real, imag = _complex(roots, den)
+        return real + sp.I * imag, 0
+    quarters, rest = divmod(found.root, TURN // 4)
+    return found.size * sp.I**quarters / den, rest
 
 
 def real_sum(poly: Poly) -> Any:
@@ -129,16 +139,28 @@ def real_sum(poly: Poly) -> Any:
 
 def _wave(roots: dict[int, int], den: int, angle: Any) -> Any:
     """Re(coefficient * exp(i angle))."""
-    if len(roots) == 1:
-        ((root, value),) = roots.items()
-        return sp.Rational(value, den) * sp.cos(angle + 2 * sp.pi * sp.Rational(root, TURN))
+    found = polar(roots)
+    if found is not None:
+        # Halves of a turn are a sign, so that the angle stays small.
+        halves = (found.root + TURN // 4) // (TURN // 2)
+        left = sp.Rational(found.root - halves * (TURN // 2), TURN)
+        return found.size * (-1) ** halves * sp.cos(angle + 2 * sp.pi * left) / den
     real, imag = _complex(roots, den)
     return real * sp.cos(angle) - imag * sp.sin(angle)
 
 
 def _complex(roots: dict[int, int], den: int) -> tuple[Any, Any]:
     """Real and imaginary part of a sum of roots of unity."""
-    turns = [(sp.Rational(value, den), 2 * sp.pi * sp.Rational(root, TURN)) for root, value in roots.items()]
-    real = sp.Add(*(value * sp.cos(angle) for value, angle in turns))
-    imag = sp.Add(*(value * sp.sin(angle) for value, angle in turns))
-    return real, imag
+    quarter = TURN // 4
+    return _twice_real(roots) / (2 * den), _twice_real({root - quarter: value for root, value in roots.items()}) / (
+        2 * den
+    )
+
+
+def _twice_real(roots: dict[int, int]) -> Any:
+    """A number plus its conjugate; one cosine where it can be."""
+    total = canonical_sum([*roots.items(), *((-root, value) for root, value in roots.items())])
+    found = polar(total) if total else None
+    if found is not None:
+        return found.size * (1 if found.root == 0 else -1)
+    return sp.Add(*(2 * value * sp.cos(2 * sp.pi * sp.Rational(root, TURN)) for root, value in roots.items()))

@@ -23,12 +23,15 @@ from fastaxis.engines.symbolic.answers import (
     ranked_mistakes,
 )
 from fastaxis.engines.symbolic.checking import Check, check
-from fastaxis.engines.symbolic.common_phase import made_real, without_common_phase
+from fastaxis.engines.symbolic.common_phase import plainest_phase, without_common_phase
 from fastaxis.engines.symbolic.expressions import written
 from fastaxis.engines.symbolic.field import Field, Pair
 from fastaxis.engines.symbolic.functions import NumericForm
 from fastaxis.engines.symbolic.presentations import compact, exponential, harmonics, series
+from fastaxis.engines.symbolic.presentations.reality import made_real
+from fastaxis.engines.symbolic.presentations.shortness import length
 from fastaxis.engines.symbolic.ring import ExactMaths, Poly
+from fastaxis.engines.symbolic.ring.roots import split_square
 from fastaxis.engines.symbolic.showing import Shown
 from fastaxis.engines.symbolic.slopes import derivative
 from fastaxis.errors import SymbolError
@@ -117,7 +120,7 @@ class Form(Shown):
         pair = self._only_pair()
         scale = self.parts[0].field.scale
         if not global_phase:
-            pair = without_common_phase(pair)
+            pair = without_common_phase(pair, halfway=basis == "linear")
         if basis == "linear":
             (left, right), root, i = pair, self._maths.ring.surd(scale / 2), self._maths.number(1j)
             pair = ((left + right) * root, (left - right) * root * i)
@@ -129,7 +132,7 @@ class Form(Shown):
                 "a Jones vector is written in one of two bases", got=f'basis="{basis}"', fix='basis="circular"'
             )
         if not global_phase:
-            pair = made_real(pair)
+            pair = plainest_phase(pair)
         return sp.Matrix([self._present(poly, way) for poly in pair])
 
     def stokes_polys(self) -> tuple[Poly, ...]:
@@ -172,7 +175,23 @@ class Form(Shown):
         setting : angle of a linear analyzer [rad] (a letter or a number), a State, or a camera setting.
         way : "compact", "exponential", "harmonics" (give ``angle``) or "series" (give ``small`` and ``order``).
         """
-        return self._present(self.frame_poly(setting), way, **options)
+        found = self._present(self.frame_poly(setting), way, **options)
+        square = self._square(setting) if way == "compact" else None
+        return found if square is None else min(found, square, key=length)
+
+    def _square(self, setting: Any) -> Any:
+        """The frame as the square of its amplitude, where there is one and it is real, else None."""
+        if len(self.pairs) > 1:
+            return None
+        ((weight, pair),) = self.pairs
+        scale, amplitudes = behind(setting, pair, self._maths)
+        real = made_real(amplitudes[0]) if len(amplitudes) == 1 else None
+        if real is None:
+            return None
+        share = weight * self._maths.ring.rational(scale)
+        if share.is_rational and not split_square(share.value)[1]:
+            return compact(real * self._maths.ring.surd(share.value)) ** 2
+        return compact(share) * compact(real) ** 2
 
     @property
     def power(self) -> Any:

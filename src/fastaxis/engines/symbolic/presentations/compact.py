@@ -12,16 +12,19 @@ from typing import Any
 
 import sympy as sp
 
-from fastaxis.engines.symbolic.expressions import amplitude_of, centred, split_key, written
+from fastaxis.engines.symbolic.expressions import amplitude_of, by_root, written
 from fastaxis.engines.symbolic.presentations.factors import factored
+from fastaxis.engines.symbolic.presentations.pieces import by_reality, by_surd, off_constant
+from fastaxis.engines.symbolic.presentations.reality import is_real, made_real, quotient
+from fastaxis.engines.symbolic.presentations.shortness import content_out, doubled, length, one_number
 from fastaxis.engines.symbolic.presentations.splitting import best_split, by_amplitude
 from fastaxis.engines.symbolic.ring import Poly
 from fastaxis.engines.symbolic.ring.ring import ANGLE
-from fastaxis.engines.symbolic.ring.roots import TURN
 
 __all__ = ["compact"]
 
 MOST_TERMS = 600  # beyond, a form is not short whatever one does
+MOST_WAYS = 24  # beyond, only one way of splitting is tried
 
 
 def compact(poly: Poly) -> Any:
@@ -31,9 +34,16 @@ def compact(poly: Poly) -> Any:
     if len(poly) > MOST_TERMS:
         return written(poly)
     surd, bare = _without_surd(poly)
-    content, rest = _without_content(bare)
+    if surd == 1:
+        return one_number(_without_roots(poly))
+    rooted = one_number(surd * content_out(_without_roots(bare)))
+    return rooted if len(by_root(poly)) > MOST_WAYS else min(rooted, one_number(_without_roots(poly)), key=length)
+
+
+def _without_roots(poly: Poly) -> Any:
+    content, rest = _without_content(poly)
     product = _product(rest)
-    return surd * content * (_sum(rest) if product is None else product)
+    return content * (_sum(rest) if product is None else product)
 
 
 def _without_surd(poly: Poly) -> tuple[Any, Poly]:
@@ -63,18 +73,20 @@ def _product(poly: Poly) -> Any | None:
     factors = factored(poly)
     if factors is None:
         return written(poly) if len(poly) < 3 else None
-    if factors and factors[0][1] == 1 and len(factors) == 1 and len(poly) > 2:
+    if not factors:
+        return written(poly)
+    if len(factors) == 1 and factors[0][1] == 1 and len(by_root(poly)) > 2:
         return None
     total, number, result = poly.ring.rational(1), sp.S.One, sp.S.One
     for factor, power in factors:
-        real = _real(factor)
+        real = made_real(factor)
         if real is None:
             return None
         total = total * real.power(power)
         content, wave = _primitive(_sum(real))
         number, result = number * content**power, result * wave**power
-    left = _quotient(poly, total)
-    return None if left is None else number * written(left) * result
+    left = quotient(poly, total)
+    return None if left is None else number * written(left) * doubled(result)
 
 
 def _primitive(expression: Any) -> tuple[Any, Any]:
@@ -84,44 +96,12 @@ def _primitive(expression: Any) -> tuple[Any, Any]:
 
 
 def _sum(poly: Poly) -> Any:
-    """A polynomial with no factors: split by one angle if that is shorter."""
-    if len(poly) < 3:
+    """A polynomial with no factors: split in the way that makes it shortest."""
+    if len(by_root(poly)) < 2 or (len(by_root(poly)) < 3 and is_real(poly)):
         return written(poly)
-    split = best_split(poly) or by_amplitude(poly)
-    if split is None:
-        return written(poly)
-    return sp.Add(*(compact(part) * factor for factor, part in split if part))
-
-
-def _real(factor: Poly) -> Poly | None:
-    """The factor times a phasor that makes it real."""
-    _, turned = centred(factor)
-    roots = {split_key(turned.ring, key)[2] for key in turned.terms}
-    for root in {0, TURN // 4} | {-r for r in roots}:
-        for extra in (0, TURN // 8, -TURN // 8):
-            real = Poly.made(turned.ring, {k + root + extra: v for k, v in turned.terms.items()}, turned.den)
-            if real.terms == real.conj().terms:
-                return real
-    return _binomial(turned)
-
-
-def _binomial(turned: Poly) -> Poly | None:
-    """Two terms of equal size: turned back by the mean of their phases."""
-    if len(turned) != 2:
-        return None
-    roots = [split_key(turned.ring, key)[2] for key in turned.terms]
-    flip = sum(TURN // 2 for value in turned.terms.values() if value < 0)
-    mean = Fraction(sum(roots) + flip, 2 * TURN)
-    real = turned * turned.ring.root_of_unity(-mean)
-    return real if real.terms == real.conj().terms else None
-
-
-def _quotient(poly: Poly, product: Poly) -> Poly | None:
-    """poly/product if that is a monomial with a number, else None."""
-    ring = poly.ring
-    bottom = max(product.terms)
-    for key in sorted(poly.terms, reverse=True)[:4]:
-        monomial = ring.poly({key - bottom: poly.terms[key] * product.den}, poly.den * product.terms[bottom])
-        if monomial * product == poly:
-            return monomial
-    return None
+    best = best_split(poly) or by_amplitude(poly)
+    ways = [best] if best else []
+    if len(by_root(poly)) <= MOST_WAYS:
+        ways += [split for split in (off_constant(poly), by_surd(poly), by_reality(poly)) if split]
+    found = [sp.Add(*(compact(part) * factor for factor, part in way if part)) for way in ways]
+    return min([*found, written(poly)], key=length)

@@ -4,18 +4,20 @@ from __future__ import annotations
 
 from dataclasses import dataclass
 from functools import reduce
-from math import gcd
+from math import gcd, lcm
 
 import sympy as sp
 
+from fastaxis.engines.symbolic.expressions import by_root
 from fastaxis.engines.symbolic.ring import Poly
+from fastaxis.engines.symbolic.ring.polar import polar
 from fastaxis.engines.symbolic.ring.roots import TURN
 
 __all__ = ["factored"]
 
 # Beyond these, factoring costs more than a short form is worth.
 MOST_TERMS, MOST_GENERATORS, MOST_DEGREE = 48, 8, 24
-SIXTEENTHS, HALF = 16, 8
+SIXTEEN, FINEST = 16, 2**20
 
 
 @dataclass(frozen=True)
@@ -34,30 +36,41 @@ class _Layout:
 def factored(poly: Poly) -> list[tuple[Poly, int]] | None:
     """[(factor, power), ...] without factors of one term, or None where none are looked for.
 
-    Coefficients are made real by giving each phasor a constant phase; where that can't be done with sixteenths of a
-    turn nothing is factored: over the complex numbers it takes far too long.
+    Coefficients are made real by giving each phasor a constant phase; where no such phases are found nothing is
+    factored: over the complex numbers it takes far too long.
     """
-    if len(poly) < 2:
-        return []
-    if len(poly) > MOST_TERMS:
+    rows = _rows(poly)
+    if rows is None or len(rows) > MOST_TERMS:
         return None
-    ring = poly.ring
-    rows = [(*ring.exponents(key), value) for key, value in poly.terms.items()]
-    layout = _layout([exponents for _, exponents, _ in rows])
-    powers = [layout.powers(exponents) for _, exponents, _ in rows]
+    if len(rows) < 2:
+        return []
+    layout = _layout([exponents for exponents, _, _ in rows])
+    powers = [layout.powers(exponents) for exponents, _, _ in rows]
     if len(layout.places) > MOST_GENERATORS or sum(map(max, zip(*powers, strict=True))) > MOST_DEGREE:
         return None
-    twists = _twists(powers, [root - rows[0][0] for root, _, _ in rows])
+    turns = [root - rows[0][1] for _, root, _ in rows]
+    parts = lcm(SIXTEEN, *(TURN // gcd(turn, TURN) for turn in turns))
+    steps = [turn * parts // TURN for turn in turns]
+    twists = _twists(powers, steps, parts // 2) if parts < FINEST else None
     if twists is None:
         return None
     terms: dict[tuple[int, ...], int] = {}
-    for power, (root, _, value) in zip(powers, rows, strict=True):
-        turned = (root - rows[0][0]) * SIXTEENTHS // TURN
-        turned -= sum(t * (n - first) for t, n, first in zip(twists, power, powers[0], strict=True))
-        terms[power] = terms.get(power, 0) + (value if turned % SIXTEENTHS == 0 else -value)
+    for power, step, (_, _, value) in zip(powers, steps, rows, strict=True):
+        turned = step - sum(t * (n - first) for t, n, first in zip(twists, power, powers[0], strict=True))
+        terms[power] = value if turned % parts == 0 else -value
     letters = sp.symbols(f"x0:{len(layout.places)}")
     _, factors = sp.Poly(terms, *letters, domain=sp.ZZ).factor_list()
-    return [(_back(poly, factor, layout, twists), power) for factor, power in factors if len(factor.terms()) > 1]
+    found = [(factor, power) for factor, power in factors if len(factor.terms()) > 1]
+    return [(_back(poly, factor, layout, twists, parts), power) for factor, power in found]
+
+
+def _rows(poly: Poly) -> list[tuple[dict[int, int], int, int]] | None:
+    """(exponents, root, whole coefficient) of each monomial, without a number that all share; None if none is."""
+    sizes = {key: polar(number) for key, number in by_root(poly).items()}
+    numbers = {(size.square, size.opening) if size else None for size in sizes.values()}
+    if None in numbers or len(numbers) > 1:
+        return None
+    return [(poly.ring.exponents(key)[1], size.root, size.factor) for key, size in sizes.items() if size]
 
 
 def _layout(rows: list[dict[int, int]]) -> _Layout:
@@ -68,29 +81,27 @@ def _layout(rows: list[dict[int, int]]) -> _Layout:
     return _Layout(moving, tuple(lowest[p] for p in moving), tuple(steps[p] for p in moving))
 
 
-def _twists(powers: list[tuple[int, ...]], roots: list[int]) -> list[int] | None:
-    """Constant phases [1/16 turn] of the phasors that make all coefficients real, up to a common phase."""
-    if any(root * SIXTEENTHS % TURN for root in roots):
-        return None
+def _twists(powers: list[tuple[int, ...]], steps: list[int], half: int) -> list[int] | None:
+    """Constant phases of the phasors that make all coefficients real, up to a common phase; ``half`` is half a turn."""
     width = len(powers[0])
-    # Differences to the first term: sum n t = root, modulo half a turn.
+    # Differences to the first term: sum n t = step, modulo half a turn.
     rows = [
-        ([n - first for n, first in zip(power, powers[0], strict=True)], root * SIXTEENTHS // TURN % HALF)
-        for power, root in zip(powers[1:], roots[1:], strict=True)
+        ([n - first for n, first in zip(power, powers[0], strict=True)], step % half)
+        for power, step in zip(powers[1:], steps[1:], strict=True)
     ]
     solved: list[tuple[int, list[int], int]] = []
     while rows:
-        pivot = next(((i, j) for i, (row, _) in enumerate(rows) for j in range(width) if row[j] % 2), None)
+        pivot = next(((i, j) for i, (row, _) in enumerate(rows) for j in range(width) if gcd(row[j], half) == 1), None)
         if pivot is None:
             break
         row, value = rows.pop(pivot[0])
-        inverse = pow(row[pivot[1]], -1, HALF)
-        row, value = [n * inverse % HALF for n in row], value * inverse % HALF
+        inverse = pow(row[pivot[1]], -1, half)
+        row, value = [n * inverse % half for n in row], value * inverse % half
         solved.append((pivot[1], row, value))
         rows = [
             (
-                [(n - other[pivot[1]] * m) % HALF for n, m in zip(other, row, strict=True)],
-                (v - other[pivot[1]] * value) % HALF,
+                [(n - other[pivot[1]] * m) % half for n, m in zip(other, row, strict=True)],
+                (v - other[pivot[1]] * value) % half,
             )
             for other, v in rows
         ]
@@ -100,14 +111,14 @@ def _twists(powers: list[tuple[int, ...]], roots: list[int]) -> list[int] | None
     for place, row, value in reversed(solved):
         twists[place] = (
             value - sum(n * t for n, t in zip(row, twists, strict=True)) + row[place] * twists[place]
-        ) % HALF
+        ) % half
     return twists
 
 
-def _back(poly: Poly, factor: sp.Poly, layout: _Layout, twists: list[int]) -> Poly:
+def _back(poly: Poly, factor: sp.Poly, layout: _Layout, twists: list[int], parts: int) -> Poly:
     ring, terms = poly.ring, {}
     for powers, coefficient in factor.terms():
         columns = zip(layout.places, powers, layout.steps, strict=True)
-        root = sum(t * n for t, n in zip(twists, powers, strict=True)) * (TURN // SIXTEENTHS)
+        root = sum(t * n for t, n in zip(twists, powers, strict=True)) * (TURN // parts)
         terms[ring.pack(root % TURN, {place: n * step for place, n, step in columns})] = int(coefficient)
     return ring.poly(terms)

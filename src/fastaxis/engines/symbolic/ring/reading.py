@@ -11,6 +11,7 @@ import sympy as sp
 
 from fastaxis.engines.symbolic.ring.angles import linear
 from fastaxis.engines.symbolic.ring.numerals import exact, pi_multiple
+from fastaxis.engines.symbolic.ring.polar import square_root
 from fastaxis.engines.symbolic.ring.poly import Poly
 from fastaxis.engines.symbolic.ring.ring import REAL, Ring
 
@@ -79,7 +80,7 @@ def _raised(ring: Ring, base: Any, exponent: Fraction) -> Poly:
     """A non-negative expression to a multiple of 1/2."""
     if isinstance(base, sp.Mul):
         product = ring.rational(1)
-        for part in base.args:
+        for part in _positive_parts(base):
             product = product * _raised(ring, part, exponent)
         return product
     if isinstance(base, sp.Pow) and isinstance(base.exp, sp.Rational):
@@ -90,8 +91,29 @@ def _raised(ring: Ring, base: Any, exponent: Fraction) -> Poly:
     if exponent.denominator == 1 and (exponent > 0 or len(whole) == 1):
         return whole.power(int(exponent))
     if isinstance(base, sp.Add):
+        number = _number_root(ring, whole) if exponent == Fraction(1, 2) else None
+        if number is not None:
+            return number
         ring.sum_root(base, whole)
     return ring.poly({ring.key(REAL, base, exponent): 1})
+
+
+def _positive_parts(product: Any) -> tuple[Any, ...]:
+    """Factors of a positive product, a leading minus taken into a sum of numbers: -(sqrt(2) - 2) is 2 - sqrt(2)."""
+    number, rest = product.as_coeff_Mul()
+    parts = sp.Mul.make_args(rest)
+    for place, part in enumerate(parts):
+        if number.is_negative and isinstance(part, sp.Add) and part.is_number:
+            return -number, *parts[:place], -part, *parts[place + 1 :]
+    return product.args  # type: ignore[no-any-return]  # sympy has no types
+
+
+def _number_root(ring: Ring, whole: Poly) -> Poly | None:
+    """The square root of a sum of square roots that is a cosine, such as sqrt(1/2 - sqrt(2)/4) = sin(pi/8)."""
+    if any(ring.exponents(key)[1] for key in whole.terms):
+        return None
+    found = square_root(whole.terms, whole.den)
+    return None if found is None else ring.poly(found[0].terms, found[1])
 
 
 def _rational_power(ring: Ring, value: Fraction, exponent: Fraction) -> Poly:

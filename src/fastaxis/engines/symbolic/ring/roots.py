@@ -73,7 +73,7 @@ def split_square(value: Fraction) -> tuple[Fraction, tuple[int, ...]]:
     """
     outside, primes = Fraction(1, value.denominator), []
     for prime, power in sp.factorint(value.numerator * value.denominator).items():
-        outside *= int(prime) ** (power // 2)
+        outside *= int(prime) ** (int(power) // 2)
         if power % 2:
             primes.append(int(prime))
     return outside, tuple(sorted(primes))
