@@ -130,3 +130,14 @@ def test_a_round_ring_of_few_pixels_is_round(w):
     axis = np.arange(-12, 13) / w
     r2 = axis**2 + axis[:, None] ** 2
     assert lobes(r2 * np.exp(-2 * r2), x=axis, y=axis).count == 0
+
+
+def test_stripes_are_no_number_of_lobes(plane):
+    found = lobes(np.exp(-2 * plane.r**2) * (1 - np.cos(12 * plane.X)), **plane.axes)
+    assert (found.count, found.kind) == (0, "other")
+
+
+def test_each_picture_is_told_by_its_kind(plane):
+    beside = np.exp(-2 * ((plane.X - 0.4) ** 2 + (plane.Y + 0.2) ** 2))
+    pictures = (np.zeros((81, 101)), np.exp(-2 * plane.r**2), beside, petals(plane, 3, 0.2))
+    assert [lobes(one, **plane.axes).kind for one in pictures] == ["dark", "round", "beside", "lobes"]

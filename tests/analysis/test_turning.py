@@ -16,13 +16,15 @@ from fastaxis.units import deg
 def exposure(plane, angles, stokes):
     """Linear analyzers in front of given Stokes images."""
     weights = np.array([(0.5, np.cos(2 * a) / 2, np.sin(2 * a) / 2, 0.0) for a in angles])
-    return SimpleNamespace(
+    shots = SimpleNamespace(
         weights=weights,
         labels=[f"{a}" for a in angles],
         x=plane.x,
         y=plane.y,
         frame=lambda k: np.tensordot(weights[k], stokes, axes=1),
     )
+    shots.upright = shots
+    return shots
 
 
 def vector_beam(plane, index, start=0.0):

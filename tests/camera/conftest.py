@@ -1,6 +1,7 @@
 """Small exposures with known Stokes images, and a bench whose light is known in closed form."""
 
-from dataclasses import dataclass
+from dataclasses import dataclass, field
+from types import SimpleNamespace
 
 import numpy as np
 import pytest
@@ -43,6 +44,10 @@ class Beam:
         return np.array(self.vector)[:, None, None] * picture
 
     @property
+    def power(self):
+        return self.vector[0]
+
+    @property
     def total_stokes(self):
         return np.array(self.vector)
 
@@ -50,6 +55,7 @@ class Beam:
 @dataclass
 class Plan:
     wavelength: float = 633e-9
+    source: object = field(default_factory=lambda: SimpleNamespace(power=8.0))
 
     def __str__(self):
         return "a plan"

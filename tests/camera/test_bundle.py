@@ -23,14 +23,34 @@ def rich(shots):
         plate_then_polarizer(fast=0.3, retardance=1.2, axis=-0.4, extinction=77.0, transmission=0.9, label="plate é"),
         Setting("turned", (ScalarLaw(Amplitude(0.5)), CircularLaw(Amplitude(1.0, -0.1), Amplitude(1.0, 0.1)))),
     )
-    return replace(shots, settings=shots.settings + other, guard=Guard(1e-9, 0.25, 1e-12), orientation="turned 90")
+    return replace(
+        shots,
+        settings=shots.settings + other,
+        guard=Guard(1e-9, 0.25, 1e-12),
+        orientation="turned 90",
+        sent=3.0,
+        arrived=2.5,
+    )
 
 
 def test_everything_comes_back(rich, tmp_path):
     back = load(save(rich, tmp_path / "shots.npz"))
     for name in ("stokes", "x", "y", "frames", "weights"):
         np.testing.assert_array_equal(getattr(back, name), getattr(rich, name))
-    for name in ("settings", "labels", "pixel", "wavelength", "name", "target", "orientation", "view", "guard", "plan"):
+    for name in (
+        "settings",
+        "labels",
+        "pixel",
+        "wavelength",
+        "name",
+        "target",
+        "orientation",
+        "view",
+        "guard",
+        "plan",
+        "sent",
+        "arrived",
+    ):
         assert getattr(back, name) == getattr(rich, name), name
     assert back.stamp == rich.stamp
 

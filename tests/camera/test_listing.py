@@ -35,4 +35,26 @@ def test_the_naming_in_force_is_shown(shots):
 def test_darkness_and_watts(shots):
     scaled = replace(shots, stokes=shots.stokes / shots.power("H") * 2)
     assert "2 W" in str(scaled).splitlines()[1]
-    assert "0 nW" in str(replace(shots, stokes=0 * shots.stokes))
+    assert "dark" in str(replace(shots, stokes=0 * shots.stokes)).splitlines()[1]
+
+
+def test_roundings_are_dark_and_have_no_lobes(shots):
+    # Behind V: the difference of two equal images, whose last digits are turned over here and there.
+    s0 = shots.stokes[0]
+    rough = s0 * (1 - 2e-16 * np.sign(np.sin(3 * np.arctan2(*np.meshgrid(shots.x, shots.y)))))
+    dust = replace(shots, stokes=np.stack([s0, rough, 0 * s0, 0 * s0]))
+    row = dust.table()[1]
+    assert 0 < row.power < 1e-15 * dust.total_power
+    assert (row.kind, row.lobes) == ("dark", 0)
+    # 1e-12 of the light on the sensor
+    assert str(dust).splitlines()[2].split()[1:3] == ["dark:", "<"]
+    extinct = replace(shots, stokes=shots.stokes * 1e-32 / shots.total_power, sent=1e-3)
+    assert {row.kind for row in extinct.table()} == {"dark"}
+
+
+def test_a_round_spot_beside_the_axis_is_told_with_its_place(shots):
+    axis = np.arange(-40, 41) * 1e-5
+    spot = 1e-3 * np.exp(-2 * ((axis - 1.2e-4) ** 2 + (axis[:, None] + 0.8e-4) ** 2) / 1e-8)
+    beside = replace(shots, stokes=np.stack([spot, spot, 0 * spot, 0 * spot]), x=axis, y=axis)
+    assert beside.table()[0].kind == "beside"
+    assert str(beside).splitlines()[1].endswith("round about (0.12, -0.08) mm")

@@ -22,14 +22,17 @@ class Lobes:
 
     Parameters
     ----------
-    count : of bright lobes; 0 for a round or dark picture.
+    count : of bright lobes; 0 for a picture that has none.
     angle : of a bright lobe [rad], counter-clockwise from x, in [0, 2 pi / count); nan if there is none.
     contrast : of the modulation about the centre: 1 for cos^2 lobes, up to 2 for narrow ones.
+    kind : "dark"; "round" about the centre; "beside": round about a place beside it; "lobes"; or "other": uneven, but
+        not in lobes about the centre, as stripes are.
     """
 
     count: int
     angle: float
     contrast: float
+    kind: str = "lobes"
 
 
 def lobes(
@@ -73,21 +76,26 @@ def lobes(
     """
     frame, x, y = checked(frame, x, y)
     if frame.size == 1 or not frame.max() > 0:
-        return Lobes(0, math.nan, 0.0)
+        return Lobes(0, math.nan, 0.0, "dark")
     found = _dominant(_contents(frame, x, y, centre, most), least)
     if found.count == 1:
         centroid = (float(frame.sum(axis=0) @ x / frame.sum()), float(frame.sum(axis=1) @ y / frame.sum()))
-        if _dominant(_contents(frame, x, y, centroid, most), least).count == 0:
-            return Lobes(0, math.nan, 0.0)
+        if _dominant(_contents(frame, x, y, centroid, most), least).kind == "round":
+            return Lobes(0, math.nan, 0.0, "beside")
     return found
 
 
 def _dominant(contents: NDArray[np.complex128], least: float) -> Lobes:
     contrasts = np.abs(contents)
     if not contrasts.max() >= least:
-        return Lobes(0, math.nan, float(contrasts.max()))
+        return Lobes(0, math.nan, float(contrasts.max()), "round")
     # Narrow lobes have overtones nearly as strong as their fundamental: the lowest of the strong ones counts.
     order = int(np.flatnonzero(contrasts >= 0.8 * contrasts.max())[0]) + 1
+    # So many equal lobes have no content but that order and its overtones. A dark line through the centre has all even
+    # orders alike, up to the finest looked at.
+    odd = np.arange(1, contrasts.size + 1) % order != 0
+    if np.max(contrasts, where=odd, initial=0.0) >= 0.75 * contrasts[order - 1]:
+        return Lobes(0, math.nan, float(contrasts.max()), "other")
     spacing = 2 * math.pi / order
     angle = float(-np.angle(contents[order - 1]) / order) % spacing
     # A lobe at zero comes out a rounding below it: that is angle 0, not one spacing.

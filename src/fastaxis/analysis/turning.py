@@ -51,6 +51,8 @@ def turning(shots: Any, *, centre: tuple[float, float] = (0.0, 0.0)) -> Turning:
             got=f"turning: {len(analyzers)} linear settings among {len(shots.labels)}",
             fix='train.expose("cam", [fa.linear(a*deg) for a in (0, 20, 40, 60)])',
         )
+    # In the beam's own frame, where analyzer angles are counted, whichever way the camera is mounted.
+    shots = shots.upright
     order = sorted(analyzers, key=analyzers.__getitem__)
     found = [lobes(shots.frame(k), x=shots.x, y=shots.y, centre=centre) for k in order]
     counts = sorted({one.count for one in found})

@@ -8,11 +8,11 @@ from zipfile import BadZipFile
 
 import numpy as np
 
-from fastaxis.files import write_whole
 from fastaxis.camera.coding import FORMAT, facts, facts_from, setting_from_json, to_text, view_from
 from fastaxis.camera.exposure import Exposure
 from fastaxis.engines.field import Guard
 from fastaxis.errors import FileFormatError
+from fastaxis.files import write_whole
 
 __all__ = ["load", "save"]
 
@@ -74,6 +74,8 @@ def _exposure(about: dict[str, Any], arrays: dict[str, Any]) -> Exposure:
         settings=tuple(setting_from_json(data) for data in about["settings"]),
         view=view_from(about),
         guard=None if guard is None else Guard(**guard),
+        sent=about.get("sent"),  # older files have neither
+        arrived=about.get("arrived"),
         **{name: about[name] for name in ("pixel", "wavelength", "name", "target", "orientation", "plan")},
     )
 

@@ -65,6 +65,8 @@ def facts(shots: Exposure) -> dict[str, Any]:
         "settings": [setting_to_json(setting) for setting in shots.settings],
         "guard": None if guard is None else {f.name: getattr(guard, f.name) for f in fields(guard)},
         "plan": shots.plan,
+        "sent": shots.sent,
+        "arrived": shots.arrived,
     }
 
 

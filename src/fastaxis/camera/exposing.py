@@ -10,6 +10,7 @@ import numpy as np
 from numpy.typing import NDArray
 
 from fastaxis.camera.exposure import Exposure
+from fastaxis.camera.room import check_room
 from fastaxis.camera.settings import Setting, as_settings, weight_matrix
 from fastaxis.elements.camera import Camera
 from fastaxis.elements.detector import Detector
@@ -51,7 +52,8 @@ def expose(
 
     The camera's ``centre`` is the place of the middle of its sensor in the beam's plane [m]. Its ``orientation`` turns
     or mirrors the picture *after* that; states keep the names of the beam's own frame, so that H and the analyzer
-    angles mean the same whichever way the camera is mounted. ``shots.upright`` sets the picture upright again. A detector gives frames of one pixel that hold all the power.
+    angles mean the same whichever way the camera is mounted. ``shots.upright`` sets the picture upright again.
+    A detector gives frames of one pixel that hold all the power.
 
     Parameters
     ----------
@@ -66,7 +68,8 @@ def expose(
 
     Raises
     ------
-    ParameterError : no settings; a setting that is neither state nor analyzer; a target that takes no pictures.
+    ParameterError : no settings; a setting that is neither state nor analyzer; a target that takes no pictures; a
+        sensor whose pictures don't fit into memory.
     SymbolError : a letter left open in a setting or in the train.
 
     Examples
@@ -86,8 +89,8 @@ def expose(
     plans = [plan(train, name, grid=grid, engine=engine) for name in targets]
     if precision != "double":
         plans = [one.with_precision(precision) for one in plans]
-    for name in targets:
-        sensor_at(train, name)  # wrong targets are refused before anything is propagated
+    sensors = [sensor_at(train, name) for name in targets]  # refused before anything is propagated
+    check_room(", ".join(targets), [sensor.shape for sensor in sensors if isinstance(sensor, Camera)])
     shots = [_shot(train, *taken, analyzers) for taken in zip(targets, plans, _lights(plans), strict=True)]
     return shots[0] if isinstance(target, str) else tuple(shots)
 

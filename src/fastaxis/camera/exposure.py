@@ -11,6 +11,8 @@ import numpy as np
 from numpy.typing import NDArray
 
 from fastaxis.camera.mixing import mixed
+from fastaxis.camera.mounting import Mounting
+from fastaxis.camera.rows import Row, row
 from fastaxis.camera.settings import Setting, as_setting, weight_matrix
 from fastaxis.conventions import View, stamp
 from fastaxis.errors import ParameterError
@@ -19,27 +21,9 @@ from fastaxis.loader import late
 
 __all__ = ["Exposure", "Row"]
 
+DARK, DARK_SINGLE = 1e-12, 1e-6  # of the light on the sensor: some thousand roundings; what "single" promises
+DUST = 1e-24  # of the light sent; an amplitude that ideal parts extinguish is left at 1e-16 or so
 _S3_FLIP = np.array([1.0, 1.0, 1.0, -1.0])
-
-
-@dataclass(frozen=True)
-class Row:
-    """One line of the table of an exposure.
-
-    Parameters
-    ----------
-    label : of the setting.
-    power : on the sensor [W].
-    peak : brightest pixel: irradiance [W/m^2], or power [W] for a detector.
-    lobes : bright lobes about the axis of the beam; 0 for a round picture, and if the axis is not on the sensor.
-    angle : of a bright lobe [rad], counter-clockwise from x, in [0, 2 pi / lobes); nan where there are no lobes.
-    """
-
-    label: str
-    power: float
-    peak: float
-    lobes: int
-    angle: float
 
 
 @dataclass(frozen=True, kw_only=True, eq=False)
@@ -58,6 +42,8 @@ class Exposure:
     view : the naming of R and L, and with it the sign of S3 and of the last weight.
     guard : how well the sampling carried the light; None if not known.
     plan : how it was computed, in words.
+    sent : power that the laser sends out [W]; None if not known.
+    arrived : power in the plane of the sensor, on it and beside it [W]; None if not known.
     """
 
     stokes: NDArray[np.float64] = field(repr=False)
@@ -72,6 +58,8 @@ class Exposure:
     view: View = View.RECEIVER
     guard: Any = field(default=None, repr=False)
     plan: str = field(default="", repr=False)
+    sent: float | None = None
+    arrived: float | None = None
 
     @property
     def stamp(self) -> str:
@@ -134,6 +122,33 @@ class Exposure:
         """Power on the sensor without an analyzer [W]."""
         return float(self.stokes[0].sum())
 
+    @property
+    def dark_below(self) -> float:
+        """Power [W] below which a frame holds roundings and no light.
+
+        A frame is a difference of Stokes images, right to some roundings of the light on the sensor. Where ideal
+        parts on the way let nothing pass, that light is itself the square of some roundings.
+        """
+        fine = self.stokes.dtype.itemsize >= 8
+        total = self.total_power
+        if total < DUST * (self.sent or 0.0):
+            return math.inf
+        return (DARK if fine else DARK_SINGLE) * total
+
+    def is_dark(self, which: int | str | Setting | State) -> bool:
+        """Whether the frame behind this setting holds no light but roundings."""
+        power = self.power(which)
+        return power == 0 or power < self.dark_below
+
+    @property
+    def upright(self) -> Exposure:
+        """The same light as an upright camera at the same place would have taken it: the beam's own frame."""
+        mounting = Mounting(self.orientation)
+        if mounting.upright:
+            return self
+        x, y = mounting.undone_axes(self.x, self.y)
+        return replace(self, stokes=mounting.undone(self.stokes), x=x, y=y, orientation="upright")
+
     def _setting(self, which: int | str | Setting | State) -> Setting:
         if isinstance(which, str):
             return self._labelled(which)
@@ -180,21 +195,12 @@ class Exposure:
         return replace(self, view=view, stokes=self.stokes * _S3_FLIP[:, None, None])
 
     def table(self) -> tuple[Row, ...]:
-        """Power, peak, lobes and the angle of a bright lobe for each setting, in order."""
-        return tuple(self._row(k) for k in range(len(self)))
+        """Power, peak, and what kind of picture it is, for each setting, in order."""
+        return tuple(self.row(k) for k in range(len(self)))
 
-    def _row(self, k: int) -> Row:
-        frame = self.frame(k)
-        area = 1.0 if self.pixel is None else self.pixel**2
-        lobes, angle = self._lobes(frame)
-        return Row(self.labels[k], float(frame.sum()), float(frame.max()) / area, lobes, angle)
-
-    def _lobes(self, frame: NDArray[np.float64]) -> tuple[int, float]:
-        x, y = self.x, self.y
-        if min(frame.shape) < 3 or not x[0] < 0 < x[-1] or not y[0] < 0 < y[-1]:
-            return 0, math.nan
-        found = late("analysis.lobes", "lobes")(frame, x=x, y=y)
-        return found.count, found.angle
+    def row(self, k: int) -> Row:
+        """One line of :meth:`table`."""
+        return row(self, k)
 
     def save(self, path: str | Path) -> Path:
         """Keep everything in an .npz file; ``fastaxis.camera.load`` reads it back."""

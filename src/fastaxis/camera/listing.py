@@ -5,6 +5,8 @@ from __future__ import annotations
 import math
 from typing import TYPE_CHECKING
 
+from fastaxis.camera.mounting import Mounting
+
 if TYPE_CHECKING:
     from fastaxis.camera.exposure import Exposure, Row
 
@@ -18,10 +20,18 @@ def listing(shots: Exposure) -> str:
     rows = shots.table()
     width = max(len(row.label) for row in rows)
     head = ", ".join(word for word in (shots.name, shots.target) if word) or "exposure"
-    return "\n".join([head, *(f"  {row.label:<{width}}  {_words(row)}" for row in rows), shots.stamp])
+    mounted = Mounting(shots.orientation).words if shots.pixel is not None else ""
+    notes = [f"  picture {mounted}; states, and angles of lobes in the beam's frame"] if mounted else []
+    lines = (f"  {row.label:<{width}}  {_words(row, shots.dark_below)}" for row in rows)
+    return "\n".join([head, *lines, *notes, shots.stamp])
 
 
-def _words(row: Row) -> str:
+def _words(row: Row, dark_below: float) -> str:
+    if row.kind == "dark":
+        return f"{'dark':>9}" if not 0 < row.power < dark_below < math.inf else f"dark: < {_watts(dark_below).strip()}"
+    if row.kind == "beside":
+        x, y = (f"{1e3 * place:.3g}" for place in row.centroid)
+        return f"{_watts(row.power)}  round about ({x}, {y}) mm"
     if row.lobes == 0:
         return _watts(row.power)
     return f"{_watts(row.power)}  {row.lobes} lobe{'s' * (row.lobes > 1)} at {math.degrees(row.angle):.1f}°"

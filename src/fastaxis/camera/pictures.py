@@ -11,10 +11,10 @@ import numpy as np
 from numpy.typing import NDArray
 from PIL import Image, PngImagePlugin, UnidentifiedImageError
 
-from fastaxis.files import write_whole
 from fastaxis.camera.coding import FORMAT, facts, facts_from, to_text
 from fastaxis.camera.exposure import Exposure
 from fastaxis.errors import FileFormatError
+from fastaxis.files import write_whole
 
 __all__ = ["Pictures", "read_pictures", "save_pngs", "save_tiff"]
 

@@ -211,6 +211,7 @@ def plate_then_polarizer(
         )
     named, angle = ("fast", fast) if slow is None else ("slow", slow)
     angle = checks.angle("plate_then_polarizer", named, angle)
+    checks.degrees_missed("plate_then_polarizer", named, angle)
     half = checks.angle("plate_then_polarizer", "retardance", retardance) / 2
     plate = AxisLaw(Amplitude(1.0, -half), Amplitude(1.0, half), angle if named == "fast" else angle - math.pi / 2)
     label = label or f"plate {named} {_degrees(angle)}, polarizer {_degrees(axis)}"
@@ -219,6 +220,7 @@ def plate_then_polarizer(
 
 def _polarizer(axis: Scalar, extinction: Scalar, transmission: Scalar) -> AxisLaw:
     axis = checks.angle("polarizer", "axis", axis)
+    checks.degrees_missed("polarizer", "axis", axis)
     transmission = checks.fraction("polarizer", "transmission", transmission, fix="transmission=0.9")
     leak = 0.0 if extinction == math.inf else transmission / _extinction(extinction)
     return AxisLaw(Amplitude(transmission), Amplitude(leak), axis)
