@@ -2,129 +2,120 @@
 
 from __future__ import annotations
 
-from collections.abc import Mapping
+from collections.abc import Mapping, Sequence
 from typing import Any
 
 from matplotlib.axes import Axes
 
-from fastaxis.report.layout import Layout, Place, Stub
+from fastaxis.report.boxes import Point
+from fastaxis.report.layout import Layout
+from fastaxis.report.lines import PART, Line, comes_in, stub_line
 from fastaxis.report.prefix import readable
 from fastaxis.report.style import SOFT, WARN
 from fastaxis.report.walk import is_space
+from fastaxis.report.writing import Sheet, Words
 
-__all__ = ["DARK", "draw_beams"]
+__all__ = ["BEAM", "DARK", "draw_lines", "draw_stubs", "is_dark", "write_ports", "write_powers", "write_stubs"]
 
 BEAM = "#3c8d5a"
-STUB = 0.62
-LANE = 0.05  # two beams on one line, there and back, keep this far from its middle
 DARK = 1e-9  # of the laser's power; an ideal port that should be dark is, to roundings
+SMALL = 5.8  # [pt]
+ARROWS = {(1, 0): "→", (-1, 0): "←", (0, 1): "↑", (0, -1): "↓"}
+
+Powers = Mapping[str, float]
 
 
-def draw_beams(axes: Axes, plan: Layout, train: Any, powers: Mapping[str, float]) -> None:
-    """Draw every joint that light takes and every open end; ``powers`` [W] by the port that is left."""
-    pairs = {(_part(link.out_port), _part(link.in_port)) for link in plan.links}
-    for link in plan.links:
-        here, there = plan.places[_part(link.out_port)], plan.places[_part(link.in_port)]
-        shared = (_part(link.in_port), _part(link.out_port)) in pairs
-        if link.wrapped:
-            _draw_wrapped(axes, here, there)
-        else:
-            _draw_link(axes, here, there, lane=LANE if shared else 0.0)
-        if link.out_port in powers and not is_space(train.elements[_part(link.out_port)]):
-            _write_power(axes, here, there, readable(powers[link.out_port], "W"), wrapped=link.wrapped, shared=shared)
-    entered = {link.in_port for link in plan.links}
-    for stub in plan.stubs:
-        _draw_stub(axes, plan.places[_part(stub.port)], stub, powers, returns=stub.port in entered)
-    for port in sorted({port for link in plan.links for port in (link.out_port, link.in_port)}):
-        _write_port(axes, plan, train, port)
+def is_dark(powers: Powers, port: str) -> bool:
+    """Whether a port is known to carry no light beyond roundings."""
+    return port in powers and powers[port] <= DARK * max(powers.values())
+
+
+def draw_lines(axes: Axes, lines: Sequence[Line], train: Any, powers: Powers) -> None:
+    """Draw every beam with its arrows: both ways on one line where light runs both ways."""
+    for line in lines:
+        ports = [link.out_port for link in (line.there, line.back) if link]
+        colour = SOFT if all(is_dark(powers, port) for port in ports) else BEAM
+        xs, ys = zip(*line.points, strict=True)
+        style: Any = (0, (4, 2)) if line.there.wrapped else (0, (1, 1.2)) if colour == SOFT else "-"
+        axes.plot(xs, ys, color=colour, lw=1.3, ls=style, zorder=1, solid_capstyle="round", solid_joinstyle="round")
+        start, end = line.longest
+        for link, ends in ((line.there, (start, end)), (line.back, (end, start))):
+            # Through empty space one arrow is enough, where the light arrives.
+            if link and (line.bent or not is_space(train.elements[_part(link.in_port)])):
+                part = 0.56 if line.back is None else 0.7
+                _arrow_head(axes, *ends, part, SOFT if is_dark(powers, link.out_port) else BEAM)
 
 
 def _part(port: str) -> str:
     return port.partition(".")[0]
 
 
-def _unit(here: Place, there: Place) -> tuple[float, float]:
-    dx, dy = there.x - here.x, there.y - here.y
+def _arrow_head(axes: Axes, start: Point, end: Point, part: float, colour: str) -> None:
+    dx, dy = end[0] - start[0], end[1] - start[1]
     length = (dx * dx + dy * dy) ** 0.5 or 1.0
-    return dx / length, dy / length
-
-
-def _draw_link(axes: Axes, here: Place, there: Place, *, lane: float) -> None:
-    ux, uy = _unit(here, there)
-    # Each beam keeps to its own right, so the two of a double pass lie side by side.
-    x, y = lane * uy, -lane * ux
-    axes.plot(
-        [here.x + x, there.x + x], [here.y + y, there.y + y], color=BEAM, lw=1.3, zorder=1, solid_capstyle="round"
-    )
-    tip = 0.56
-    at = (here.x + tip * (there.x - here.x) + x, here.y + tip * (there.y - here.y) + y)
-    _arrow_head(axes, at, (ux, uy))
-
-
-def _arrow_head(axes: Axes, at: tuple[float, float], way: tuple[float, float], colour: str = BEAM) -> None:
-    start = (at[0] - 0.02 * way[0], at[1] - 0.02 * way[1])
+    at = (start[0] + part * dx, start[1] + part * dy)
+    before = (at[0] - 0.02 * dx / length, at[1] - 0.02 * dy / length)
     axes.annotate(
-        "", at, start, arrowprops={"arrowstyle": "-|>", "color": colour, "lw": 0, "mutation_scale": 9}, zorder=2
+        "", at, before, arrowprops={"arrowstyle": "-|>", "color": colour, "lw": 0, "mutation_scale": 9}, zorder=2
     )
 
 
-def _draw_wrapped(axes: Axes, here: Place, there: Place) -> None:
-    end, start, between = here.x + 0.55, there.x - 0.55, (here.y + there.y) / 2 + 0.1
-    xs = [here.x, end, end, start, start, there.x]
-    ys = [here.y, here.y, between, between, there.y, there.y]
-    axes.plot(xs, ys, color=BEAM, lw=1.0, ls=(0, (4, 2)), zorder=1)
-    _arrow_head(axes, ((end + start) / 2, between), (-1.0, 0.0))
-    axes.text(
-        (end + start) / 2, between + 0.05, "goes on in the next row", size=5.5, color=SOFT, ha="center", va="bottom"
-    )
+def draw_stubs(axes: Axes, plan: Layout, powers: Powers) -> None:
+    """Draw every open end: amber where power leaves, grey where it is dark."""
+    for stub in plan.stubs:
+        colour = SOFT if is_dark(powers, stub.port) else WARN
+        start, end = stub_line(plan, stub)
+        axes.plot(*zip(start, end, strict=True), color=colour, lw=1.3, ls=(0, (2, 1.5)), zorder=2)
+        tip = (end[0] + 0.08 * stub.heading[0], end[1] + 0.08 * stub.heading[1])
+        _arrow_head(axes, end, tip, 1.0, colour)
 
 
-def _write_port(axes: Axes, plan: Layout, train: Any, port: str) -> None:
-    """Name a face of a part that has more than a front and a back."""
-    name, _, face = port.partition(".")
-    if len(train.elements[name].faces) > 2:
-        _face_name(axes, plan.places[name], plan.exits[name, face], face)
+def write_stubs(sheet: Sheet, plan: Layout, powers: Powers) -> None:
+    """Name every open port, with its power where that is known."""
+    for stub in plan.stubs:
+        dark, known = is_dark(powers, stub.port), stub.port in powers
+        amount = ", dark" if dark else f"\n{readable(powers[stub.port], 'W')}" if known else ""
+        text = f"{'back out' if comes_in(plan, stub) else 'open'}: {stub.port}{amount}"
+        words = Words(text, SMALL, SOFT if dark else WARN)
+        start, end = stub_line(plan, stub)
+        if comes_in(plan, stub):
+            sheet.at_line(words, start, end, (0.8, 0.6, 1.0))
+        else:
+            sheet.ahead(words, end, stub.heading)
 
 
-def _face_name(axes: Axes, place: Place, way: tuple[int, int], face: str, colour: str = SOFT) -> None:
-    if way[0]:
-        axes.text(place.x + 0.3 * way[0], place.y + 0.06, face, size=5.5, color=colour, va="bottom",
-                  ha="left" if way[0] > 0 else "right")  # fmt: skip
-    else:
-        axes.text(place.x + 0.06, place.y + 0.33 * way[1], face, size=5.5, color=colour, ha="left",
-                  va="bottom" if way[1] > 0 else "top")  # fmt: skip
+def write_ports(sheet: Sheet, plan: Layout, train: Any) -> None:
+    """Name the faces of each part that has more than a front and a back, where light takes them."""
+    for port in sorted({port for link in plan.links for port in (link.out_port, link.in_port)}):
+        name, _, face = port.partition(".")
+        if len(train.elements[name].faces) > 2:
+            place, (wx, wy), words = plan.places[name], plan.exits[name, face], Words(face, 5.5)
+            room = words.extent[0 if wx else 1] + 0.04
+            start = (place.x + wx * PART / 2, place.y + wy * PART / 2)
+            sheet.at_line(words, start, (start[0] + wx * room, start[1] + wy * room), (0.5, 0.8, 1.1))
 
 
-def _write_power(axes: Axes, here: Place, there: Place, power: str, *, wrapped: bool, shared: bool) -> None:
-    if wrapped:
-        axes.text(here.x + 0.6, here.y, power, size=5.8, color=BEAM, va="center")
-        return
-    # Of a beam there and back, each power stands on the side of its own lane.
-    ux, uy = _unit(here, there)
-    middle = ((here.x + there.x) / 2, (here.y + there.y) / 2)
-    if abs(ux) > abs(uy):
-        below = not shared or ux > 0
-        axes.text(middle[0], middle[1] + (-0.09 if below else 0.19), power, size=5.8, color=BEAM, ha="center",
-                  va="top" if below else "bottom")  # fmt: skip
-    else:
-        left = not shared or uy < 0
-        axes.text(middle[0] + (-0.09 if left else 0.09), middle[1], power, size=5.8, color=BEAM,
-                  ha="right" if left else "left", va="center")  # fmt: skip
+def write_powers(sheet: Sheet, lines: Sequence[Line], train: Any, powers: Powers) -> None:
+    """Write the power at each beam, once between two parts; with an arrow each where light runs both ways."""
+    for line in lines:
+        start, end = line.longest
+        told = [
+            (link.out_port, _arrow(*ends))
+            for link, ends in ((line.there, (start, end)), (line.back, (end, start)))
+            if link and link.out_port in powers and not is_space(train.elements[_part(link.out_port)])
+        ]
+        both = line.back is not None
+        texts = [f"{arrow} {_amount(powers, port)}" if both else _amount(powers, port) for port, arrow in told]
+        colour = SOFT if all(is_dark(powers, port) for port, _ in told) else BEAM
+        if texts:
+            sheet.at_line(Words("\n".join(texts), SMALL, colour), start, end, (0.5, 0.4, 0.6, 0.3, 0.7, 0.2, 0.8))
 
 
-def _draw_stub(axes: Axes, place: Place, stub: Stub, powers: Mapping[str, float], *, returns: bool) -> None:
-    """An open end: amber where power leaves, grey where it is dark; ``returns`` if light also comes in there."""
-    power, way = powers.get(stub.port), stub.heading
-    dark = power is not None and power <= DARK * max(powers.values())
-    colour = SOFT if dark else WARN
-    x, y = place.x + (LANE * way[1] if returns else 0), place.y + (-LANE * way[0] if returns else 0)
-    reach = STUB + (0.35 if returns else 0)
-    end = (x + reach * way[0], y + reach * way[1])
-    axes.plot([x, end[0]], [y, end[1]], color=colour, lw=1.3, ls=(0, (2, 1.5)), zorder=2)
-    _arrow_head(axes, (end[0] + 0.08 * way[0], end[1] + 0.08 * way[1]), way, colour)
-    amount = "" if power is None else ", dark" if dark else f"\n{readable(power, 'W')}"
-    words = f"{'back out' if returns else 'open'}: {stub.port}{amount}"
-    if way[0]:
-        axes.text(end[0], end[1] + (0.42 if returns else 0.1), words, size=5.8, color=colour, va="bottom", ha="center")
-    else:
-        axes.text(end[0] + 0.09, end[1], words, size=5.8, color=colour, va="center", ha="left")
+def _amount(powers: Powers, port: str) -> str:
+    return "dark" if is_dark(powers, port) else readable(powers[port], "W")
+
+
+def _arrow(start: Point, end: Point) -> str:
+    dx, dy = end[0] - start[0], end[1] - start[1]
+    way = (int(dx > 0) - int(dx < 0), 0) if abs(dx) > abs(dy) else (0, int(dy > 0) - int(dy < 0))
+    return ARROWS[way]

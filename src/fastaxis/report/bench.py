@@ -2,30 +2,36 @@
 
 from __future__ import annotations
 
-from collections.abc import Mapping
+from collections.abc import Mapping, Sequence
 from typing import Any
 
 from matplotlib.axes import Axes
 from matplotlib.figure import Figure
 
 from fastaxis.conventions import View
-from fastaxis.errors import FastaxisError
-from fastaxis.report.beams import DARK, draw_beams
-from fastaxis.report.details import detail, in_lab_units
-from fastaxis.report.labels import write_distance, write_label
+from fastaxis.report.beams import draw_lines, draw_stubs, is_dark, write_ports, write_powers, write_stubs
+from fastaxis.report.boxes import Box, covering, line_boxes
+from fastaxis.report.labels import words_of, write_labels
 from fastaxis.report.layout import Layout, arrange
-from fastaxis.report.style import footer, new_figure, styled
+from fastaxis.report.lines import Line, lines_of, part_boxes, stub_line
+from fastaxis.report.paths_text import reflections_in_words
+from fastaxis.report.style import foot_height, footer, new_figure, styled
 from fastaxis.report.symbols import draw_symbol
 from fastaxis.report.walk import is_space
+from fastaxis.report.writing import UNIT, Sheet, Words, measured
 
 __all__ = ["SAFETY", "draw_bench", "reflections_in_words"]
 
-UNIT = 0.86  # [inch] a step of the drawing
 LEAST_WIDTH = 7.2  # [inch]
+HEAD = 0.32  # [inch] for the title
+POWER = 1.25  # [steps] a part and a power beside it
+MARGIN = 0.12  # [steps]
+TITLE = 10.0  # [pt]
 SAFETY = (
     "Laser power leaves the bench here: block it, keep beams below eye level and enclosed, wear the eyewear "
     "prescribed. Your local rules and your laser safety officer have the last word."
 )
+BENT = "Lines with corners between two parts are bent for the drawing only; there the light runs straight."
 
 
 @styled
@@ -41,49 +47,71 @@ def draw_bench(
     title : above all; None for the train's name.
     view : whose naming of R and L the laser's state and the stamp follow.
     """
-    plan, powers = arrange(train), powers or {}
-    left, right, bottom, top = plan.bounds
-    up = any(stub.heading == (0, 1) for stub in plan.stubs)
-    left, right, bottom, top = left - 0.9, right + 1.0, bottom - 1.05, top + (1.05 if up else 0.75)
-    missing = max(LEAST_WIDTH / UNIT - (right - left), 0) / 2
-    figure = new_figure((right - left + 2 * missing) * UNIT, (top - bottom) * UNIT + 0.65)
-    axes = figure.subplots()
-    axes.set(xlim=(left - missing, right + missing), ylim=(bottom, top), aspect="equal")
-    axes.set_axis_off()
-    draw_beams(axes, plan, train, powers)
-    for name in train.elements:
-        _draw_part(axes, train, plan, name, view)
-    figure.suptitle(train.name if title is None else title, size=10)
-    footer(figure, view, note=f"Not to scale. {SAFETY if _leaving(plan, powers) else ''}".strip())
+    powers = powers or {}
+    plan = arrange(train, _room(train, view, powered=bool(powers)))
+    words = {name: words_of(train, name, view, lit=name not in plan.unlit) for name in plan.places}
+    lines = lines_of(plan, train)
+    sheet = _written(train, plan, lines, words, powers)
+    title = train.name if title is None else title
+    note = _note(train, plan, lines, powers)
+    figure, axes = _page(covering(sheet.solid), title, view, note)
+    draw_lines(axes, lines, train, powers)
+    draw_stubs(axes, plan, powers)
+    for name in (name for name, element in train.elements.items() if not is_space(element)):
+        draw_symbol(axes, train.elements[name], plan.places[name])
+    sheet.draw(axes)
     return figure
 
 
-def _leaving(plan: Layout, powers: Mapping[str, float]) -> bool:
-    """Whether power leaves by an open port; one whose power is not known counts."""
-    least = DARK * max(powers.values(), default=0.0)
-    return any(powers.get(stub.port, 1.0) > least for stub in plan.stubs)
+def _room(train: Any, view: View, *, powered: bool) -> dict[str, tuple[float, float]]:
+    """What each part needs on paper: its label, and beside it the power of one beam."""
+    room = {name: words_of(train, name, view).extent for name in train.elements}
+    if not powered:
+        return room
+    return {name: (w if is_space(train.elements[name]) else max(w, POWER), h) for name, (w, h) in room.items()}
 
 
-def reflections_in_words(train: Any, target: str) -> str:
-    """How often the light was reflected on the way, and whether the picture arrives mirrored."""
-    try:
-        count = train.reflections(target)
-    except FastaxisError:
-        return "light by several paths"
-    times = "no reflection" if count == 0 else f"{count} reflection{'s' if count > 1 else ''}"
-    return f"{times}: {'mirrored' if count % 2 else 'upright'}"
+def _written(
+    train: Any, plan: Layout, lines: Sequence[Line], words: dict[str, Words], powers: Mapping[str, float]
+) -> Sheet:
+    """All texts in their places; those that must stand close to what they tell of come first."""
+    boxes = part_boxes(plan, train)
+    sheet = Sheet([*boxes.values(), *(box for line in lines for box in line.boxes)])
+    sheet.solid += [box for stub in plan.stubs for box in line_boxes(stub_line(plan, stub), 0.16)]
+    write_ports(sheet, plan, train)
+    write_stubs(sheet, plan, powers)
+    write_labels(sheet, plan, words, boxes)
+    write_powers(sheet, lines, train, powers)
+    for line in (line for line in lines if line.there.wrapped):
+        sheet.at_line(Words("goes on in the next row", 5.5), *line.longest, (0.5, 0.3, 0.7))
+    return sheet
 
 
-def _draw_part(axes: Axes, train: Any, plan: Layout, name: str, view: View) -> None:
-    element, place = train.elements[name], plan.places[name]
-    if is_space(element):
-        write_distance(axes, place, in_lab_units(element.distance))
-        return
-    draw_symbol(axes, element, place)
-    lines = detail(element, view=view)
-    if name in plan.unlit:
-        lines = f"{lines}\nno light".strip()
-    elif element.exit is None and element.entry and type(element).__name__ != "BeamDump":
-        # On two lines: a neighbour may stand close by.
-        lines = f"{lines}\n{reflections_in_words(train, name)}".strip().replace(": ", "\n")
-    write_label(axes, plan, name, lines)
+def _page(cover: Box, title: str, view: View, note: str) -> tuple[Figure, Axes]:
+    """A figure on which a step of the drawing is UNIT inches, with room for the title and the foot."""
+    wide = max(
+        (cover.right - cover.left + 2 * MARGIN) * UNIT, LEAST_WIDTH, (measured("", TITLE, title)[0] + 0.3) * UNIT
+    )
+    high, foot = (cover.top - cover.bottom + 2 * MARGIN) * UNIT, foot_height(wide, view, note=note)
+    figure = new_figure(wide, high + HEAD + foot)
+    figure.set_layout_engine(None)
+    whole = high + HEAD + foot
+    axes = figure.add_axes((0.0, foot / whole, 1.0, high / whole))
+    x, y = cover.middle
+    axes.set(xlim=(x - wide / UNIT / 2, x + wide / UNIT / 2), ylim=(y - high / UNIT / 2, y + high / UNIT / 2))
+    axes.set_autoscale_on(False)
+    axes.set_axis_off()
+    figure.suptitle(title, size=TITLE, y=1 - 0.06 / whole, va="top")
+    footer(figure, view, note=note)
+    return figure, axes
+
+
+def _note(train: Any, plan: Layout, lines: Sequence[Line], powers: Mapping[str, float]) -> str:
+    """The foot: what the drawing does not show, and the caution where power leaves by an open port."""
+    scale = "Not to scale."
+    if any(is_space(element) for element in train.elements.values()):
+        scale = "Not to scale: longer distances are drawn longer, in no fixed proportion."
+    bent = BENT if any(line.bent for line in lines) else ""
+    # A port whose power is not known counts as one that power leaves by.
+    leaving = any(not is_dark(powers, stub.port) for stub in plan.stubs)
+    return " ".join(text for text in (scale, bent, SAFETY if leaving else "") if text)

@@ -1,43 +1,47 @@
-"""Names, settings and distances of a bench drawing, set where no beam runs."""
+"""Names, settings and distances of a bench drawing, set where nothing else is."""
 
 from __future__ import annotations
 
-from matplotlib.axes import Axes
+from typing import Any
 
+from fastaxis.conventions import View
+from fastaxis.report.boxes import Box
+from fastaxis.report.details import detail, in_lab_units
 from fastaxis.report.layout import Layout, Place
-from fastaxis.report.style import INK, SOFT
+from fastaxis.report.paths_text import reflections_in_words
+from fastaxis.report.style import INK
+from fastaxis.report.walk import is_space
+from fastaxis.report.writing import Sheet, Words
 
-__all__ = ["write_distance", "write_label"]
-
-BELOW, BESIDE, ABOVE, LEFT = (0, -1), (1, 0), (0, 1), (-1, 0)
-CORNERS = {BESIDE: (0.42, 0.0, "left"), LEFT: (-0.42, 0.0, "right"), None: (0.33, -0.45, "left")}
-
-
-def write_distance(axes: Axes, place: Place, distance: str) -> None:
-    """A distance, above or beside the beam that crosses it."""
-    if place.heading[0]:
-        axes.text(place.x, place.y + 0.13, distance, size=6.5, color=INK, ha="center", va="bottom", style="italic")
-    else:
-        axes.text(place.x + 0.1, place.y, distance, size=6.5, color=INK, ha="left", va="center", style="italic")
+__all__ = ["words_of", "write_labels"]
 
 
-def write_label(axes: Axes, plan: Layout, name: str, lines: str) -> None:
-    """The name of a part and its settings, on the first side of it that no beam uses."""
-    place = plan.places[name]
-    side = _free_side(plan, name, place)
-    if side in {BELOW, ABOVE}:
-        below = 0.36 if place.heading[0] else 0.42
-        base = place.y - below if side == BELOW else place.y + 0.56 + 0.115 * (lines.count("\n") + 1 if lines else 0)
-        axes.text(place.x, base, name, size=7.0, weight="bold", ha="center", va="top")
-        axes.text(place.x, base - 0.17, lines, size=6.0, color=SOFT, ha="center", va="top", linespacing=1.15)
-        return
-    x, y, align = CORNERS[side]
-    axes.text(place.x + x, place.y + y + 0.02, name, size=7.0, weight="bold", ha=align, va="bottom")
-    axes.text(place.x + x, place.y + y - 0.02, lines, size=6.0, color=SOFT, ha=align, va="top", linespacing=1.15)
+def words_of(train: Any, name: str, view: View, *, lit: bool = True) -> Words:
+    """What is written at a part: its name and settings, or the length of an empty space."""
+    element = train.elements[name]
+    if is_space(element):
+        return Words(in_lab_units(element.distance), 6.5, INK, style="italic")
+    lines = detail(element, view=view)
+    if not lit:
+        lines = f"{lines}\nno light"
+    elif element.exit is None and element.entry and type(element).__name__ != "BeamDump":
+        # On lines of their own: a neighbour may stand close by.
+        lines = f"{lines}\n{reflections_in_words(train, name)}".replace(": ", "\n").replace("; ", "\n")
+    return Words(lines.strip(), name=name)
 
 
-def _free_side(plan: Layout, name: str, place: Place) -> tuple[int, int] | None:
-    """The side for a label; None when beams use all four, for the lower right corner."""
-    used = {way for (part, _), way in plan.exits.items() if part == name}
-    used.add((-place.heading[0], -place.heading[1]))
-    return next((side for side in (BELOW, BESIDE, ABOVE, LEFT) if side not in used), None)
+def write_labels(sheet: Sheet, plan: Layout, words: dict[str, Words], boxes: dict[str, Box]) -> None:
+    """Write the name of each part on the first free side, below if possible, and each distance beside its beam."""
+    for name, text in words.items():
+        place = plan.places[name]
+        if name in boxes:
+            sheet.at_part(text, boxes[name], prefer=((0, -1),) if place.heading[0] else ((1, 0), (-1, 0)))
+        else:
+            start, end = _stretch(place)
+            sheet.at_line(text, start, end, (0.5, 0.2, 0.8))
+
+
+def _stretch(place: Place) -> tuple[tuple[float, float], tuple[float, float]]:
+    dx, dy = 0.35 * place.heading[0], 0.35 * place.heading[1]
+    # From left to right and upwards, whichever way the light runs.
+    return (place.x - abs(dx), place.y - abs(dy)), (place.x + abs(dx), place.y + abs(dy))

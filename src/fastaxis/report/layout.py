@@ -2,76 +2,48 @@
 
 from __future__ import annotations
 
+from collections.abc import Iterator, Mapping
 from dataclasses import dataclass, field, replace
-from itertools import combinations, product
+from itertools import combinations, pairwise, product
 from typing import Any
 
-from fastaxis.report.align import align, astray
-from fastaxis.report.walk import Node, branches, joined, port, step
+from fastaxis.report.following import RIGHT, Followed, Link, Place, Stub, Vector, follow
+from fastaxis.report.settle import Beam, Settled, settle, sketched
+from fastaxis.report.walk import is_space, step
 
 __all__ = ["Layout", "Link", "Place", "Stub", "arrange"]
 
-Vector = tuple[int, int]
-RIGHT: Vector = (1, 0)
 WIDE = 10.0  # [steps]; a straight run longer than this goes on in the next row
 ROW = 2.2
-MOST_TURNS = 6  # so many folds are tried on both sides: 64 drawings at most
-CLEAR = 0.95  # least distance of two parts on one beam
-ASIDE, APART = 1.6, 1.3  # and of others, along and across the rows: their labels stand between them
+MOST_TURNS = 5  # so many folds are tried on both sides together: 32 drawings; of more, one at a time
+ROUNDS = 2
+OPEN = 0.95  # room for an open end, from the middle of its part
+APART = (1.5, 1.45)  # least distance of parts that are not neighbours, along and across: their labels stand between
+SLIM = (0.85, 0.6)  # and of open ends and empty spaces
 
-
-@dataclass(frozen=True)
-class Place:
-    """Where a part stands, how the light first meets it and where it sends what it reflects."""
-
-    x: float
-    y: float
-    heading: Vector = RIGHT
-    reflects: Vector | None = None
-
-    def reflected(self, heading: Vector) -> Vector | None:
-        """Where light of any heading goes when it is reflected here: the mirror that takes heading to reflects."""
-        if self.reflects is None:
-            return None
-        known = {self.reflects: self.heading, self.heading: self.reflects}
-        return known[heading] if heading in known else _back(known[_back(heading)])
-
-
-@dataclass(frozen=True)
-class Link:
-    """A joint that light takes; ``wrapped`` if it goes on in the next row."""
-
-    out_port: str
-    in_port: str
-    wrapped: bool = False
-
-
-@dataclass(frozen=True)
-class Stub:
-    """A port that light leaves towards nothing."""
-
-    port: str
-    heading: Vector
+Room = Mapping[str, tuple[float, float]]
 
 
 @dataclass
 class Layout:
     """Places of all parts, the joints between them, and the open ends.
 
-    ``choices`` says for each fold, in the order they are met, whether it takes its first side or its second.
+    Parameters
+    ----------
+    places : by name.
+    exits, enters : (part, face) -> direction in which light leaves there, and enters.
+    links : joints that light takes; ``bent`` those that no straight line could draw, by their port left.
+    stubs : ports that light leaves towards nothing.
+    unlit : names of the parts without light.
     """
 
     places: dict[str, Place] = field(default_factory=dict)
     exits: dict[tuple[str, str], Vector] = field(default_factory=dict)
+    enters: dict[tuple[str, str], Vector] = field(default_factory=dict)
     links: list[Link] = field(default_factory=list)
     stubs: list[Stub] = field(default_factory=list)
+    bent: frozenset[str] = frozenset()
     unlit: tuple[str, ...] = ()
-    choices: tuple[int, ...] = ()
-    turns: int = 0
-
-    def free(self, x: float, y: float) -> bool:
-        """Whether a part set down at (x, y) would be clear of all others and of their labels."""
-        return all(_clear(abs(p.x - x), abs(p.y - y)) for p in self.places.values())
 
     @property
     def bounds(self) -> tuple[float, float, float, float]:
@@ -79,163 +51,200 @@ class Layout:
         xs, ys = [p.x for p in self.places.values()], [p.y for p in self.places.values()]
         return min(xs), max(xs), min(ys), max(ys)
 
-
-def _clear(dx: float, dy: float) -> bool:
-    near = 1e-6
-    if dy < near:
-        return dx > CLEAR - near
-    if dx < near:
-        return dy > CLEAR - near
-    return dx >= ASIDE or dy >= APART
+    def ends(self, link: Link) -> tuple[Place, Place]:
+        """The places of the two parts of a joint."""
+        return self.places[_part(link.out_port)], self.places[_part(link.in_port)]
 
 
-def arrange(train: Any) -> Layout:
-    """Follow the light from every laser and set each part down where it is first met.
+def arrange(train: Any, room: Room | None = None) -> Layout:
+    """Follow the light from every laser and set each part down.
 
-    Light runs to the right; reflected light turns up, and after a fold back to the right. Where that would lead a beam
-    through a part, other sides are tried, and the drawing with the fewest crossings on the least paper is taken.
-    Parts that no light reaches come in a row of their own, below.
+    Light runs to the right; reflected light turns up, and after a fold back to the right. Other sides are tried as
+    well, and the drawing with the fewest bent and crossing beams on the least paper is taken. Parts that no light
+    reaches come in a row of their own, below.
+
+    Parameters
+    ----------
+    train : the train.
+    room : (width, height) [steps] of what is written at each part.
     """
-    first = _arranged(train, ())
-    if not first.turns:
-        return first
-    trials = (_arranged(train, choices) for choices in product((0, 1), repeat=min(first.turns, MOST_TURNS)))
-    return min(trials, key=_cost)
-
-
-def _arranged(train: Any, choices: tuple[int, ...]) -> Layout:
-    layout, graph = Layout(choices=choices), train.graph
+    layout, rooms = Layout(), room or {}
+    seen: set[str] = set()
     for source in train.sources:
-        top = min((p.y for p in layout.places.values()), default=ROW) - ROW
-        layout.places[source] = Place(0.0, top)
-        out = (source, train.elements[source].exit or "out", "out")
-        layout.exits[out[:2]] = RIGHT
-        _follow(layout, train, graph, out)
-    if astray(layout):
-        align(layout, train)
-    _set_down_unlit(layout, train)
+        if source not in seen:
+            followed = _best(train, source, rooms)
+            seen |= followed.places.keys()
+            _stack(layout, followed, _set_down(train, followed, rooms))
+    _set_down_unlit(layout, train, rooms)
     return layout
 
 
-def _cost(layout: Layout) -> float:
-    """Beams through parts count most, then stray and crossing beams, light that runs left, the size of the paper."""
-    at = {
-        port: layout.places[port.partition(".")[0]] for link in layout.links for port in (link.out_port, link.in_port)
+def _best(train: Any, source: str, rooms: Room) -> Followed:
+    """The light of one laser, turned at every fold to the side that gives the plainest drawing."""
+    first = follow(train, source, ())
+    turns = first.turns
+    if not turns:
+        return first
+    tried: dict[tuple[int, ...], tuple[float, Followed]] = {}
+
+    def cost(choices: tuple[int, ...]) -> float:
+        if choices not in tried:
+            followed = follow(train, source, choices)
+            tried[choices] = (_cost(train, followed, rooms), followed)
+        return tried[choices][0]
+
+    few = min(turns, MOST_TURNS)
+    best = min((choices + (0,) * (turns - few) for choices in product((0, 1), repeat=few)), key=cost)
+    for k in list(range(turns)) * ROUNDS if turns > few else ():
+        best = min(best, (*best[:k], 1 - best[k], *best[k + 1 :]), key=cost)
+    return tried[best][1]
+
+
+def _cost(train: Any, followed: Followed, rooms: Room) -> float:
+    """Bent beams count most, then beams through parts and crossing beams, light that runs left, size of the paper."""
+    names, beams = _beams(train, followed, rooms)
+    found = sketched(names, beams)
+    bent = sum(_detour(followed, found, link) for link in _pairs(iter(followed.links)).values())
+    straight = [beam for beam in beams if beam not in found.bent]
+    points = [(found.x[name], found.y[name]) for name in names]
+    near = sum(abs(a - c) < 0.7 and abs(b - d) < 0.7 for (a, b), (c, d) in combinations(points, 2))
+    crossed = sum(_cross(found, one, other) for one, other in combinations(straight, 2))
+    leftward = sum(place.heading == (-1, 0) for place in followed.places.values())
+    paper = (max(found.x.values()) + 2) * (max(found.y.values()) + 2)
+    return 40 * bent + 3 * near + 10 * crossed + leftward + paper / 10
+
+
+def _detour(followed: Followed, found: Settled, link: Link) -> float:
+    """0 for a straight beam; for a bent one 1, and more for a long one and for each end that looks the wrong way."""
+    here, there = _part(link.out_port), _part(link.in_port)
+    away, towards = followed.exits[_node(link.out_port)], followed.enters[_node(link.in_port)]
+    dx, dy = found.x[there] - found.x[here], found.y[there] - found.y[here]
+    ahead, on = dx * away[0] + dy * away[1], dx * towards[0] + dy * towards[1]
+    if away == towards and ahead > 0 and abs(dx) + abs(dy) - ahead < 1e-6:
+        return 0.0
+    return 1 + 0.3 * (ahead <= 0) + 0.3 * (on <= 0) + (abs(dx) + abs(dy)) / 40
+
+
+def _cross(found: Settled, one: Beam, other: Beam) -> bool:
+    """Whether an upright and a level beam cross between their ends, or the end of one touches the other."""
+    if one.axis == other.axis or {one.start, one.end} & {other.start, other.end}:
+        return False
+    flat, upright = (one, other) if one.axis == 0 else (other, one)
+    left, right = sorted((found.x[flat.start], found.x[flat.end]))
+    low, high = sorted((found.y[upright.start], found.y[upright.end]))
+    return left <= found.x[upright.start] <= right and low <= found.y[flat.start] <= high
+
+
+def _part(port: str) -> str:
+    return port.partition(".")[0]
+
+
+def _pairs(links: Iterator[Link]) -> dict[frozenset[str], Link]:
+    """One joint for each pair of ports: light there and light back share a line."""
+    found: dict[frozenset[str], Link] = {}
+    for link in links:
+        found.setdefault(frozenset((link.out_port, link.in_port)), link)
+    return found
+
+
+def _faces_it(followed: Followed, link: Link) -> bool:
+    """Whether light enters a port in the direction in which it left the other."""
+    return followed.exits[_node(link.out_port)] == followed.enters[_node(link.in_port)]
+
+
+def _node(port: str) -> tuple[str, str]:
+    name, _, face = port.partition(".")
+    return name, face
+
+
+def _longest(train: Any) -> float:
+    lengths = [part.distance for part in train.elements.values() if is_space(part)]
+    return max((float(length) for length in lengths if isinstance(length, int | float)), default=0.0)
+
+
+def _beams(train: Any, followed: Followed, rooms: Room) -> tuple[list[str], list[Beam]]:
+    """Parts and open ends, and the beams between them that can be straight."""
+    names, beams, longest = list(followed.places), [], _longest(train)
+
+    def length(name: str, *, upright: bool) -> float:
+        return step(train.elements[name], upright=upright, room=rooms.get(name, (0.0, 0.0)), longest=longest)
+
+    for link in _pairs(link for link in followed.links if _faces_it(followed, link)).values():
+        here, there = _part(link.out_port), _part(link.in_port)
+        way = followed.exits[_node(link.out_port)]
+        gap = (length(here, upright=not way[0]) + length(there, upright=not way[0])) / 2
+        beams.append(Beam(here, there, way, gap))
+    entered = {link.in_port for link in followed.links}
+    for stub in followed.stubs:
+        if stub.port not in entered:
+            names.append(f"{stub.port} open")
+            beams.append(Beam(_part(stub.port), names[-1], stub.heading, OPEN))
+    return names, beams
+
+
+def _set_down(train: Any, followed: Followed, rooms: Room) -> Settled:
+    names, beams = _beams(train, followed, rooms)
+    neighbours = {frozenset((beam.start, beam.end)) for beam in beams}
+    slim = {name for name in names if name not in train.elements or is_space(train.elements[name])}
+
+    def need(one: str, other: str) -> tuple[float, float]:
+        if one == other:
+            return SLIM if one in slim else APART
+        if frozenset((one, other)) in neighbours or one in slim or other in slim:
+            return SLIM
+        return APART
+
+    return settle(names, beams, need)
+
+
+def _stack(layout: Layout, followed: Followed, found: Settled) -> None:
+    """Put the parts of one laser below all others; a long straight line goes on in further rows."""
+    below = min((place.y for place in layout.places.values()), default=ROW) - ROW
+    top = max(found.y.values())
+    places = {
+        name: replace(place, x=found.x[name], y=found.y[name] - top + below) for name, place in followed.places.items()
     }
-    ends = [(at[link.out_port], at[link.in_port]) for link in layout.links]
-    struck = sum(_strikes(here, there, part) for here, there in ends for part in layout.places.values())
-    crossed = sum(_cross(one, other) for one, other in combinations(ends, 2))
-    left, right, bottom, top = layout.bounds
-    leftward = sum(place.heading == (-1, 0) for place in layout.places.values())
-    return 100 * struck + 50 * astray(layout) + 10 * crossed + leftward + (right - left + 2) * (top - bottom + 2) / 10
+    links = followed.links
+    if not layout.places:
+        # The laser stands at the origin, whatever is drawn above it.
+        first = next(iter(places.values()))
+        places = {name: replace(p, x=p.x - first.x, y=p.y - first.y) for name, p in places.items()}
+    if followed.straight and max(found.x.values()) > WIDE:
+        places, links = _in_rows(places, links)
+    straight = {frozenset(pair) for pair in _straight_pairs(followed, found)}
+    layout.bent |= {k.out_port for k in links if frozenset((k.out_port, k.in_port)) not in straight and not k.wrapped}
+    layout.places |= places
+    layout.exits |= followed.exits
+    layout.enters |= followed.enters
+    layout.links += links
+    layout.stubs += followed.stubs
 
 
-def _strikes(here: Place, there: Place, part: Place) -> bool:
-    """Whether the beam from here to there runs through another part."""
-    if part in (here, there):
-        return False
-    x_in = min(here.x, there.x) - 0.3 < part.x < max(here.x, there.x) + 0.3
-    y_in = min(here.y, there.y) - 0.3 < part.y < max(here.y, there.y) + 0.3
-    return x_in and y_in
+def _straight_pairs(followed: Followed, found: Settled) -> Iterator[tuple[str, str]]:
+    given_up = {(beam.start, beam.end, beam.way) for beam in found.bent}
+    for link in _pairs(iter(followed.links)).values():
+        way = followed.exits[_node(link.out_port)]
+        if _faces_it(followed, link) and (_part(link.out_port), _part(link.in_port), way) not in given_up:
+            yield link.out_port, link.in_port
 
 
-def _cross(one: tuple[Place, Place], other: tuple[Place, Place]) -> bool:
-    """Whether an upright and a level beam cross between their ends."""
-    flat = [pair for pair in (one, other) if pair[0].y == pair[1].y]
-    upright = [pair for pair in (one, other) if pair[0].x == pair[1].x]
-    if len(flat) != 1 or len(upright) != 1:
-        return False
-    (a, b), (c, d) = flat[0], upright[0]
-    return min(a.x, b.x) < c.x < max(a.x, b.x) and min(c.y, d.y) < a.y < max(c.y, d.y)
+def _in_rows(places: dict[str, Place], links: list[Link]) -> tuple[dict[str, Place], list[Link]]:
+    """A straight line broken where it gets too long; each row starts at the left."""
+    broken, start, row = dict(places), 0.0, 0
+    wrapped = set()
+    for name, place in places.items():
+        if place.x - start > WIDE:
+            start, row = place.x, row + 1
+            wrapped.add(name)
+        broken[name] = replace(place, x=place.x - start, y=place.y - ROW * row)
+    return broken, [replace(link, wrapped=_part(link.in_port) in wrapped) for link in links]
 
 
-def _follow(layout: Layout, train: Any, graph: Any, out: Node) -> None:
-    waiting, seen = [out], set[Node]()
-    while waiting:
-        leaving = waiting.pop(0)
-        heading = layout.exits[leaving[:2]]
-        entering = joined(graph, leaving)
-        if entering is None:
-            layout.stubs.append(Stub(port(leaving), heading))
-            continue
-        wrapped = entering[0] not in layout.places and _set_down(layout, train, leaving, entering)
-        layout.links.append(Link(port(leaving), port(entering), wrapped))
-        if entering not in seen:
-            seen.add(entering)
-            arriving = RIGHT if wrapped else heading
-            waiting.extend(_ways_on(layout, graph, entering, arriving, leaving))
-
-
-def _ways_on(layout: Layout, graph: Any, entering: Node, heading: Vector, came_from: Node) -> list[Node]:
-    """The ports left from here, straight ones first, each given the direction in which light leaves it."""
-    name = entering[0]
-    if entering[:2] in layout.exits:  # seen before from the other side: it is met against that direction
-        heading = _back(layout.exits[entering[:2]])
-    layout.exits.setdefault(entering[:2], _back(heading))
-    ways = sorted(branches(graph, entering), key=lambda way: bool(way[1]))
-    for leaving, reflected in ways:
-        if not reflected:
-            layout.exits.setdefault(leaving[:2], heading)
-            continue
-        turned = layout.places[name].reflected(heading) or _turn(layout, graph, leaving, heading, came_from)
-        if layout.places[name].reflects is None:
-            layout.places[name] = replace(layout.places[name], heading=heading, reflects=turned)
-        if leaving[1] == entering[1]:  # a mirror: in and out by the same face
-            layout.exits[leaving[:2]] = turned
-        else:
-            layout.exits.setdefault(leaving[:2], turned)
-    return [leaving for leaving, _ in ways]
-
-
-def _back(heading: Vector) -> Vector:
-    return -heading[0], -heading[1]
-
-
-def _turn(layout: Layout, graph: Any, leaving: Node, heading: Vector, came_from: Node) -> Vector:
-    """Where reflected light goes: straight back to where it came from, or to the chosen side."""
-    entering = joined(graph, leaving)
-    if entering is not None and entering[:2] == came_from[:2]:
-        return _back(heading)
-    sides: tuple[Vector, Vector] = ((0, 1), (0, -1)) if heading[0] else ((1, 0), (-1, 0))
-    layout.turns += 1
-    return sides[layout.choices[layout.turns - 1] if layout.turns <= len(layout.choices) else 0]
-
-
-def _set_down(layout: Layout, train: Any, leaving: Node, entering: Node) -> bool:
-    """Give a part the first free place ahead; True if that is at the start of a new row."""
-    before, name, heading = layout.places[leaving[0]], entering[0], layout.exits[leaving[:2]]
-    pair = (train.elements[leaving[0]], train.elements[name])
-    gap = sum(step(element, upright=not heading[0]) for element in pair) / 2
-    if heading == RIGHT and before.x + gap > WIDE and _may_wrap(layout, train.graph, entering, before.y):
-        layout.places[name] = Place(0.0, before.y - ROW)
-        return True
-    while not layout.free(before.x + heading[0] * gap, before.y + heading[1] * gap):
-        gap += 0.5
-    layout.places[name] = Place(before.x + heading[0] * gap, before.y + heading[1] * gap, heading)
-    return False
-
-
-def _may_wrap(layout: Layout, graph: Any, entering: Node, row: float) -> bool:
-    """Only a drawing that is one straight line so far, and stays one, is broken into rows."""
-    folded = any(place.reflects for place in layout.places.values())
-    lowest = min(place.y for place in layout.places.values())
-    return not folded and not layout.stubs and lowest >= row and _straight(graph, entering)
-
-
-def _straight(graph: Any, entering: Node) -> bool:
-    node: Node | None = entering
-    while node is not None:
-        ways = branches(graph, node)
-        if not ways:
-            return True
-        if len(ways) > 1 or ways[0][1]:
-            return False
-        node = joined(graph, ways[0][0])
-    return True
-
-
-def _set_down_unlit(layout: Layout, train: Any) -> None:
+def _set_down_unlit(layout: Layout, train: Any, rooms: Room) -> None:
     layout.unlit = tuple(name for name in train.elements if name not in layout.places)
     row = min((p.y for p in layout.places.values()), default=ROW) - ROW
-    for k, name in enumerate(layout.unlit):
-        layout.places[name] = Place(1.2 * k, row)
+    x = 0.0
+    for before, name in pairwise((None, *layout.unlit)):
+        if before is not None:
+            x += max(1.2, (rooms.get(before, (0, 0))[0] + rooms.get(str(name), (0, 0))[0]) / 2)
+        layout.places[str(name)] = Place(x, row, RIGHT)

@@ -17,8 +17,8 @@ from numpy.typing import NDArray
 from fastaxis.conventions import View, stamp
 
 __all__ = [
-    "DARK", "INK", "LEFT", "LINEAR", "PAPER", "RIGHT", "SOFT", "WARN", "azimuth_map", "footer", "light_map",
-    "new_figure", "outer_labels", "pale_map", "rules", "signed_map",
+    "DARK", "INK", "LEFT", "LINEAR", "PAPER", "RIGHT", "SOFT", "WARN", "azimuth_map", "foot_height", "footer",
+    "light_map", "new_figure", "outer_labels", "pale_map", "rules", "signed_map",
     "styled",
 ]  # fmt: skip
 
@@ -137,11 +137,19 @@ def outer_labels(grid: NDArray[Any], x: str, y: str) -> None:
 def footer(figure: Figure, view: View = View.RECEIVER, *, note: str = "") -> None:
     """Write the sign stamp (and a note above it) along the foot, and keep the drawing clear of it."""
     width, height = figure.get_size_inches()
-    # A glyph of this font is about 0.6 em wide on average.
-    room = int(width * 72 / (0.56 * FOOT_SIZE)) - 4
-    lines = [piece for text in (note, stamp(view)) if text for piece in textwrap.wrap(text, room)]
-    inches = (len(lines) * 1.25 * FOOT_SIZE + 5) / 72
+    lines, inches = _foot_lines(width, view, note), foot_height(width, view, note=note)
     figure.text(0.01, 0.03 / height, "\n".join(lines), size=FOOT_SIZE, color=SOFT, va="bottom", linespacing=1.15)
     engine = figure.get_layout_engine()
     if engine is not None:
         engine.set(rect=(0, inches / height, 1, 1 - inches / height), h_pad=0.03, w_pad=0.03)  # type: ignore[call-arg]
+
+
+def foot_height(width: float, view: View = View.RECEIVER, *, note: str = "") -> float:
+    """Height [inch] of what :func:`footer` writes on a figure of this width [inch]."""
+    return float((len(_foot_lines(width, view, note)) * 1.25 * FOOT_SIZE + 5) / 72)
+
+
+def _foot_lines(width: float, view: View, note: str) -> list[str]:
+    # A glyph of this font is about 0.6 em wide on average.
+    room = int(width * 72 / (0.56 * FOOT_SIZE)) - 4
+    return [piece for text in (note, stamp(view)) if text for piece in textwrap.wrap(text, room)]

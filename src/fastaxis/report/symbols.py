@@ -10,7 +10,7 @@ from matplotlib.patches import Circle, Patch, PathPatch, Polygon, Rectangle
 from matplotlib.path import Path
 from matplotlib.transforms import Affine2D
 
-from fastaxis.report.layout import Place
+from fastaxis.report.following import Place
 from fastaxis.report.style import INK, PAPER, SOFT
 
 __all__ = ["HALF_HEIGHT", "draw_symbol"]

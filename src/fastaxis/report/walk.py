@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import math
 from typing import Any
 
 __all__ = ["Node", "branches", "is_space", "joined", "port", "step"]
@@ -29,11 +30,19 @@ def is_space(element: object) -> bool:
     return type(element).__name__ == "FreeSpace"
 
 
-def step(element: object, *, upright: bool) -> float:
-    """Room a part takes along the beam; ``upright`` if that runs up or down the page."""
+def step(element: Any, *, upright: bool, room: tuple[float, float] = (0.0, 0.0), longest: float = 0.0) -> float:
+    """Room a part takes along the beam.
+
+    Parameters
+    ----------
+    upright : whether the beam runs up or down the page.
+    room : (width, height) of what is written at the part.
+    longest : the longest of all distances [m]; a longer distance is drawn longer, though not to scale.
+    """
     if is_space(element):
-        return 0.85
+        known = longest > 0 and isinstance(element.distance, int | float)
+        return max(0.85 + (0.6 * math.sqrt(element.distance / longest) if known else 0.0), room[0] + 0.2)
     if upright:
-        return 1.2
+        return max(1.2, room[1] + 0.3)
     # The faces of a splitter are named along the beam.
-    return 1.7 if len(getattr(element, "faces", ())) > 2 else 1.05
+    return max(1.7 if len(getattr(element, "faces", ())) > 2 else 1.05, room[0] + 0.16)
