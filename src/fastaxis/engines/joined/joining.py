@@ -13,7 +13,7 @@ from numpy.typing import NDArray
 from fastaxis.engines.field import Guard, PlaneField
 from fastaxis.engines.joined.coherence import mixtures
 from fastaxis.engines.joined.extent import Extent
-from fastaxis.engines.joined.nodes import PixelNodes
+from fastaxis.engines.joined.nodes import Axis
 from fastaxis.engines.joined.overlap import total_of_sums
 from fastaxis.errors import ParameterError
 from fastaxis.light import Raster, stokes
@@ -24,6 +24,7 @@ __all__ = ["JoinedField", "joined"]
 Reals = NDArray[np.float64]
 Complexes = NDArray[np.complex128]
 
+FARTHER = 1e-6  # a few roundings would do
 BLOCK = 1 << 18  # places at which the arms are held at a time
 
 
@@ -99,21 +100,23 @@ class JoinedField:
     def stokes_on(self, raster: Raster) -> Reals:
         """Watts per pixel of S0 .. S3, integrated over each pixel, shape (4, ny, nx).
 
-        The sums are evaluated at Gauss-Legendre nodes inside each pixel, as many as the finest fringes ask for.
+        The sums are evaluated at places close enough for the finest fringes; a pixel's share is a sum over those.
         """
         half = self.extent.half_window
         if raster.shape == (1, 1) and half and raster.pitch / 2 >= half + max(map(abs, raster.centre)):
             return self.total_stokes[:, np.newaxis, np.newaxis]
-        ny, nx = raster.shape
         reach = max(abs(raster.x).max(), abs(raster.y).max()) + raster.pitch / 2
-        nodes = PixelNodes.of(raster.pitch, self.extent.frequency(reach))
-        columns, rows = nodes.places(raster.x), nodes.rows_at_once(raster, BLOCK)
+        frequency = self.extent.finest(reach)
+        columns = Axis.of(raster.x, raster.pitch, frequency)
+        rows = columns if np.array_equal(raster.x, raster.y) else Axis.of(raster.y, raster.pitch, frequency)
         # Engines that work out a plane as far as they are asked do so once if the farthest place comes first.
-        self._sums(np.array([reach]), np.array([reach]))
-        image = np.empty((4, ny, nx))
-        for first in range(0, ny, rows):
-            middles = raster.y[first : first + rows]
-            sums = self._sums(columns, nodes.places(middles))
-            values = np.sum([stokes(one) for one in sums], axis=0)
-            image[:, first : first + rows] = nodes.collected(values, (len(middles), nx))
+        corner = np.array([max(abs(axis.places).max() for axis in (rows, columns))]) * (1 + FARTHER)
+        self._sums(corner, corner)
+        image = np.zeros((4, *raster.shape))
+        at_once = max(1, BLOCK // len(columns.places))
+        for first in range(0, len(rows.places), at_once):
+            block = slice(first, first + at_once)
+            sums = self._sums(columns.places, rows.places[block])
+            for index, values in enumerate(np.sum([stokes(one) for one in sums], axis=0)):
+                image[index] += rows.matrix[:, block] @ (columns.matrix @ values.T).T
         return image

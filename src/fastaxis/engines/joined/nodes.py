@@ -1,21 +1,23 @@
-"""Places inside the pixels of a camera, dense enough for the fringes there."""
+"""Places at which fringes are looked at, and what each pixel of a camera collects of them."""
 
 from __future__ import annotations
 
 import math
 from dataclasses import dataclass
+from typing import Any
 
 import numpy as np
 from numpy.typing import NDArray
+from scipy import sparse
 
-from fastaxis.light import Raster
-
-__all__ = ["PixelNodes", "nodes_needed"]
+__all__ = ["Axis", "nodes_needed"]
 
 Reals = NDArray[np.float64]
 
 SETTLED = 1e-11
 """Error of a pixel, as a share of the brightest irradiance times its area: that of the engines under the arms."""
+FINER = 4  # places for each period of the finest fringe, twice what it needs, which leaves room for a short kernel
+REACH = 17  # half width of the kernel in places; its error is exp(-pi REACH/2) = 3e-12
 LARGEST = 24  # nodes in one stretch; a pixel that spans many fringes is cut into stretches
 
 
@@ -38,38 +40,62 @@ def nodes_needed(turns: float) -> int:
 
 
 @dataclass(frozen=True)
-class PixelNodes:
-    """Nodes and weights along one axis, the same in every pixel.
+class Axis:
+    """One axis of a camera.
 
     Parameters
     ----------
-    offsets : from the middle of a pixel [m].
-    weights : of the integral over it [m].
+    places : where the fields are asked for [m].
+    matrix : (pixels, places) [m], from irradiance at the places to its integral over each pixel.
     """
 
-    offsets: Reals
-    weights: Reals
+    places: Reals
+    matrix: Any
 
     @classmethod
-    def of(cls, pixel: float, frequency: float) -> PixelNodes:
-        """For irradiance of at most this spatial frequency [1/m]."""
-        stretches = max(1, math.ceil(pixel * frequency / 4))
-        side = pixel / stretches
-        nodes, weights = np.polynomial.legendre.leggauss(nodes_needed(side * frequency))
-        middles = (np.arange(stretches) - (stretches - 1) / 2) * side
-        offsets = (middles[:, np.newaxis] + nodes * side / 2).ravel()
-        return cls(offsets, np.tile(weights * side / 2, stretches))
+    def of(cls, middles: Reals, pixel: float, frequency: float) -> Axis:
+        """For irradiance of at most this spatial frequency [1/m], by whichever way asks for fewer places.
 
-    def places(self, middles: Reals) -> Reals:
-        """All nodes of the pixels with these middles, in order."""
-        return np.asarray((middles[:, np.newaxis] + self.offsets).ravel())
+        Fringes much wider than a pixel are a curve through places further apart than pixels; finer ones are
+        integrated inside each pixel.
+        """
+        inside = _inside(middles, pixel, frequency)
+        if frequency <= 0:
+            return inside
+        step = 1 / (FINER * frequency)
+        span = middles[-1] - middles[0] + pixel + 2 * REACH * step
+        wide = step > pixel / 2 and span / step + 2 < len(inside.places)
+        return _between(middles, pixel, step) if wide else inside
 
-    def collected(self, values: Reals, raster_shape: tuple[int, int]) -> Reals:
-        """Integrals over pixels of values (components, ny n, nx n) at the nodes."""
-        (ny, nx), n = raster_shape, len(self.offsets)
-        cells = values.reshape(len(values), ny, n, nx, n)
-        return np.asarray(np.einsum("cynxm,n,m->cyx", cells, self.weights, self.weights, optimize=True))
 
-    def rows_at_once(self, raster: Raster, most: int) -> int:
-        """How many rows of pixels have about ``most`` nodes."""
-        return max(1, most // (raster.shape[1] * len(self.offsets) ** 2))
+def _inside(middles: Reals, pixel: float, frequency: float) -> Axis:
+    stretches = max(1, math.ceil(pixel * frequency / 4))
+    side = pixel / stretches
+    nodes, weights = np.polynomial.legendre.leggauss(nodes_needed(side * frequency))
+    starts = (np.arange(stretches) - (stretches - 1) / 2) * side
+    offsets = (starts[:, np.newaxis] + nodes * side / 2).ravel()
+    row = np.tile(weights * side / 2, stretches)
+    matrix = sparse.kron(sparse.identity(len(middles)), row[np.newaxis], format="csc")
+    return Axis((middles[:, np.newaxis] + offsets).ravel(), matrix)
+
+
+def _between(middles: Reals, pixel: float, step: float) -> Axis:
+    """The integral over each pixel of the curve through equally spaced places about the camera.
+
+    The kernel is sinc(t) I0(b sqrt(1 - (t/REACH)^2))/I0(b) with b = pi REACH/2, t in places: for a curve of half the
+    band of the places it interpolates to exp(-b). J. F. Kaiser and R. W. Schafer, IEEE Trans. Acoust. Speech Signal
+    Process. 28, 105 (1980), for the window.
+    """
+    low, high = middles[0] - pixel / 2 - REACH * step, middles[-1] + pixel / 2 + REACH * step
+    count = math.ceil((high - low) / step) + 1
+    places = (low + high) / 2 + (np.arange(count) - (count - 1) / 2) * step
+    nodes, weights = np.polynomial.legendre.leggauss(nodes_needed(pixel / step))
+    apart = (middles[:, np.newaxis] - places) / step
+    kernel = sum(w * _kernel(apart + node * pixel / step / 2) for node, w in zip(nodes, weights, strict=True))
+    return Axis(places, np.asarray(kernel * pixel / 2))
+
+
+def _kernel(t: Reals) -> Reals:
+    inside = np.clip(1 - (t / REACH) ** 2, 0.0, None)
+    steep = math.pi * REACH / 2
+    return np.asarray(np.where(inside > 0, np.sinc(t) * np.i0(steep * np.sqrt(inside)) / np.i0(steep), 0.0))

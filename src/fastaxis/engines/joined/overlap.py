@@ -20,9 +20,6 @@ Reals = NDArray[np.float64]
 
 EVERYTHING = Raster(10.0, (1, 1))  # one pixel of 10 m: no table carries a wider beam
 MOST = 4096  # samples along a side; edges and singularities ask for more than pays
-# Light behind a singularity or an edge has tails beyond the band of its moments: with eight times that band the power
-# of a tilted beam joined to one of charge 2 is settled to 1e-11.
-TAILS = 8
 BLOCK = 1 << 18  # places at which fields are held at a time
 
 
@@ -67,7 +64,6 @@ def _added(arms: Sequence[PlaneField], mixtures: Complexes, shares: Reals, x: Re
 def places(extent: Extent) -> tuple[Reals, float]:
     """Samples along an axis [m], and their distance, that hold all beams of an extent and the products of any two."""
     half = extent.shared_half
-    finest = extent.frequency(half) * (TAILS if extent.rough else 1)
-    samples = min(MOST, 2 * math.ceil(max(2 * half * finest, 64) / 2))
+    samples = min(MOST, 2 * math.ceil(max(2 * half * extent.finest(half), 64) / 2))
     pitch = 2 * half / samples
     return np.asarray((np.arange(samples) - (samples - 1) / 2) * pitch), pitch
