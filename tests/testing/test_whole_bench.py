@@ -55,7 +55,7 @@ def test_energy(fails):
     lossy = train.along("pbs.reflected", fa.NeutralDensity(transmission=0.5, name="filter"), fa.BeamDump(name="dump"))
     error = fails(ft.energy_closes, lossy)
     assert error.expected == "2 mW at all ports together"
-    assert error.got.startswith("1.5 mW: ")
+    assert error.got.startswith("1.5 mW, 0.25 of all too little: ")
     assert error.cause == "absorbed or clipped by filter"
     ft.energy_closes(lossy, absorbed=0.25)
     assert "gain" in fails(ft.energy_closes, lossy, absorbed=0.5).cause

@@ -44,7 +44,7 @@ def draw_tolerance(study: Study) -> tuple[Figure, ...]:
         sheets = [blank()]
         _head(sheets[0], study)
         for name in study.merits:
-            needed = HIGH + 0.5 + (FRAME + 0.45 if _camera(study, name) else 0)
+            needed = HIGH + 0.5 + (FRAME + 0.6 if _camera(study, name) else 0)
             if sheets[-1].room < needed:
                 sheets.append(blank())
             _draw(sheets[-1], study, name)
@@ -79,6 +79,10 @@ def _axes(sheet: Sheet, x: float, width: float, height: float) -> Axes:
 
 def _bars(axes: Axes, ranking: Any) -> None:
     """Shares of the variance, the largest on top."""
+    if not all(np.isfinite(one.share) for one in ranking):
+        axes.text(0.5, 0.5, "not known: it cannot be read", ha="center", va="center", transform=axes.transAxes)
+        axes.set_axis_off()
+        return
     shown = [(one.cause, 100 * one.share) for one in ranking[:BARS]]
     if len(ranking) > BARS:
         shown.append((f"{len(ranking) - BARS} more", 100 * sum(one.share for one in ranking[BARS:])))
@@ -127,6 +131,7 @@ def _camera(study: Study, name: str) -> bool:
 
 def _frames(sheet: Sheet, study: Study, name: str) -> None:
     """The frame as declared between those of the 5th and the 95th percentile, on one scale."""
+    sheet.y += 0.15
     merit = study.merits[name]
     benches = {
         "5th percentile": study.at_percentile(5, name),

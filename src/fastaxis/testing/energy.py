@@ -29,11 +29,12 @@ def energy_closes(train: Any, *, absorbed: float = 0.0, within: float = 1e-6) ->
     powers = {port: train.power(port) for port in ports}
     missing = 1 - sum(powers.values()) / sent - absorbed
     if not abs(missing) <= within:
+        share = f"{abs(missing):.2g} of all too {'little' if missing > 0 else 'much'}"
         ledger = ", ".join(f"{port} {watts(power)}" for port, power in powers.items())
         raise BenchError(
             train.name,
             expected=f"{watts(sent * (1 - absorbed))} at all ports together",
-            got=f"{watts(sum(powers.values()))}: {ledger}",
+            got=f"{watts(sum(powers.values()))}, {share}: {ledger}",
             cause=_cause(train, missing),
         )
 

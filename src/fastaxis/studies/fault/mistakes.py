@@ -53,7 +53,8 @@ class Mistake:
 
     def at(self, value: float) -> tuple[str, Any]:
         """Words and train with the knob at a value."""
-        off, told = math.degrees(value - self.nominal), math.degrees(value)
+        # Steps of a tenth of a degree added up leave roundings that nobody reads; + 0.0 turns -0 into 0.
+        off, told = (round(math.degrees(angle), 6) + 0.0 for angle in (value - self.nominal, value))
         words = self.words.format(value=f"{told:.4g} deg", off=f"{off:+.4g} deg")
         return words, self.train.with_changes({self.knob: value})
 
