@@ -83,7 +83,7 @@ def power_ledger(train: Any, *, engine: str = "auto") -> Ledger:
     ...     NeutralDensity(density=1.0, name="nd"), Detector(name="meter"))
     >>> ledger = power_ledger(train)
     >>> {row.place: round(row.power, 9) for row in ledger.ends}
-    {'meter': 0.0001, 'pbs.reflected': 0.001, 'nd': 0.0009}
+    {'pbs.reflected': 0.001, 'meter': 0.0001, 'nd': 0.0009}
     """
     graph, out = train.graph, powers(train, engine=engine)
     edges, ends = [], []
