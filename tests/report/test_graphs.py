@@ -165,6 +165,26 @@ def test_light_there_and_back_shares_one_line_with_both_arrows():
     assert any(text.startswith("←") for text in texts)
 
 
+def test_light_back_by_another_face_shares_the_line():
+    train = begun(fa.FreeSpace(200 * mm, name="gap"), splitter("window"), camera())
+    train.join("window.reflected", "gap.back")
+    back = {line.there.out_port: line.back and line.back.out_port for line in lines_of(arrange(train), train)}
+    assert "window.reflected" in back.values()
+
+
+def test_light_in_and_out_by_one_face_gets_two_lines():
+    train = loop(3).along("pbs.front", fa.BeamDump(name="dump"))
+    plan = arrange(train)
+    assert plan.bent == {"pbs.front"}
+    assert plan.places["laser"].y == plan.places["pbs"].y
+    assert_legible(train, lambda figure: None)
+
+
+def test_light_folded_towards_nothing_is_an_open_end():
+    train = begun(mirror("fold"))
+    assert any(text.get_text() == "open: fold.front" for text in draw_bench(train).axes[0].texts)
+
+
 def test_reflections_of_several_paths_are_counted():
     texts = " ".join(text.get_text() for text in draw_bench(mach_zehnder()).axes[0].texts)
     assert "2 paths\n1 or 3 reflections\nmirrored" in texts

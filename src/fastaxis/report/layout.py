@@ -174,9 +174,8 @@ def _beams(train: Any, followed: Followed, rooms: Room) -> tuple[list[str], list
         way = followed.exits[_node(link.out_port)]
         gap = (length(here, upright=not way[0]) + length(there, upright=not way[0])) / 2
         beams.append(Beam(here, there, way, gap))
-    entered = {link.in_port for link in followed.links}
     for stub in followed.stubs:
-        if stub.port not in entered:
+        if followed.enters.get(_node(stub.port)) != (-stub.heading[0], -stub.heading[1]):
             names.append(f"{stub.port} open")
             beams.append(Beam(_part(stub.port), names[-1], stub.heading, OPEN))
     return names, beams

@@ -20,6 +20,7 @@ STUB = 0.62
 BACK = 0.33  # light back out of a port is drawn longer, beside the light that comes in there
 LANE = 0.1
 ARROW = 0.12
+ASIDE = 0.16
 
 
 @dataclass(frozen=True)
@@ -79,7 +80,19 @@ def _both_ways(plan: Layout) -> Iterator[tuple[Link, Link | None]]:
     while pending:
         (out_port, in_port), link = next(iter(pending.items()))
         del pending[out_port, in_port]
-        yield link, pending.pop((in_port, out_port), None)
+        back = pending.get((in_port, out_port)) or next((o for o in pending.values() if _returns(plan, link, o)), None)
+        if back:
+            del pending[back.out_port, back.in_port]
+        yield link, back
+
+
+def _returns(plan: Layout, link: Link, other: Link) -> bool:
+    """Whether light runs back along a straight line, by other faces of the same two parts."""
+    way, back = plan.exits[_node(link.out_port)], plan.exits[_node(other.out_port)]
+    parts = {_node(port)[0] for port in (link.out_port, link.in_port)}
+    same = parts == {_node(port)[0] for port in (other.out_port, other.in_port)}
+    straight = not {link.out_port, other.out_port} & plan.bent and not link.wrapped and not other.wrapped
+    return same and straight and way == (-back[0], -back[1])
 
 
 def _line(plan: Layout, there: Link, back: Link | None) -> Line:
@@ -94,7 +107,20 @@ def _line(plan: Layout, there: Link, back: Link | None) -> Line:
 def _around(plan: Layout, link: Link, parts: Sequence[Box], taken: Sequence[Box]) -> list[Point]:
     here, there = plan.ends(link)
     leaving, entering = plan.exits[_node(link.out_port)], plan.enters[_node(link.in_port)]
-    return bent_line((here.x, here.y), leaving, (there.x, there.y), entering, parts=parts, lines=taken)
+    start = _aside(plan, link.out_port, (here.x, here.y), leaving)
+    end = _aside(plan, link.in_port, (there.x, there.y), entering)
+    return bent_line(start, leaving, end, entering, parts=parts, lines=taken)
+
+
+def _aside(plan: Layout, port: str, middle: Point, way: tuple[int, int]) -> Point:
+    """Where a bent line begins or ends: beside the middle where a straight beam takes the same face."""
+    taken = False
+    for link in (link for link in plan.links if link.out_port not in plan.bent):
+        taken |= port == link.out_port and plan.exits[_node(port)] in {way, (-way[0], -way[1])}
+        taken |= port == link.in_port and plan.enters[_node(port)] in {way, (-way[0], -way[1])}
+    if not taken:
+        return middle
+    return middle[0] - ASIDE * way[1], middle[1] + ASIDE * way[0]
 
 
 def _node(port: str) -> tuple[str, str]:
@@ -119,5 +145,5 @@ def _free_length(plan: Layout, stub: Stub) -> float:
 
 
 def comes_in(plan: Layout, stub: Stub) -> bool:
-    """Whether light also enters by the port."""
-    return any(stub.port == link.in_port for link in plan.links)
+    """Whether light also enters on the line of an open port; at a folding mirror it enters on another."""
+    return plan.enters.get(_node(stub.port)) == (-stub.heading[0], -stub.heading[1])

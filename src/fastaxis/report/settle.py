@@ -33,6 +33,12 @@ class Beam:
         return 0 if self.way[0] else 1
 
     @property
+    def sides(self) -> tuple[tuple[tuple[str, tuple[int, int]], str], ...]:
+        """Of each end, the side of the part that the beam takes, and the part that it leads to."""
+        back = (-self.way[0], -self.way[1])
+        return ((self.start, self.way), self.end), ((self.end, back), self.start)
+
+    @property
     def run(self) -> Run:
         ends = (self.start, self.end) if sum(self.way) > 0 else (self.end, self.start)
         return (*ends, self.gap)
@@ -81,16 +87,24 @@ def _settled(axes: tuple[Axis, Axis], bent: tuple[Beam, ...]) -> Settled:
 def _straightened(
     names: Sequence[str], beams: Sequence[Beam], refused: Sequence[Beam]
 ) -> tuple[tuple[Axis, Axis], tuple[Beam, ...]]:
-    """Each beam in turn puts its parts into one row or column, unless that contradicts the beams before it."""
+    """Each beam in turn puts its parts into one row or column, unless that contradicts the beams before it.
+
+    Of two beams at one side of a part, to different places, the first is straight.
+    """
     axes, bent = (Axis.of(names), Axis.of(names)), tuple(refused)
+    sides: dict[tuple[str, tuple[int, int]], str] = {}
     for beam in beams:
         if beam in refused:
+            continue
+        if any(sides.get(side, there) != there for side, there in beam.sides):
+            bent = (*bent, beam)
             continue
         along = axes[beam.axis].ordered(beam.run, beam=True)
         across = axes[1 - beam.axis].joined(beam.start, beam.end)
         trial = (along, across) if beam.axis == 0 else (across, along)
         if _possible(trial):
             axes = trial
+            sides |= dict(beam.sides)
         else:
             bent = (*bent, beam)
     return axes, bent
