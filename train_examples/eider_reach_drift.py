@@ -4,8 +4,8 @@ One splitter, two end mirrors. The laser runs on two modes 500 MHz apart; one ar
 turned by half a milliradian, so that the returning beam leans by one. The mirror drifts: "drift" is the phase it adds
 on one passage, twice which counts.
 
-Look for: upright fringes 0.63 mm apart, 0.81 deep: the two modes beat with a period of 600 mm of path, and the way there
-and back differs by 120 mm. Let it drift, and the fringes walk without changing depth:
+Look for: upright fringes 0.63 mm apart, 0.81 deep: the two modes beat with a period of 600 mm of path, and the way
+there and back differs by 120 mm. Let it drift, and the fringes walk without changing depth:
 train.sweep({"drift.phase": [0, 0.2, 0.4]}, "cam", settings). At an arm difference of 150 mm they are gone.
 """
 

@@ -14,9 +14,7 @@ from fastaxis.units import mm, mrad, mW, nm, um
 
 train = fa.Train(wavelength=632.8 * nm, name="Gannet Stack")
 train.along(
-    fa.Laser(
-        waist=1.0 * mm, power=2 * mW, state=fa.V, line=fa.GaussianLine(coherence_length=200 * mm), name="laser"
-    ),
+    fa.Laser(waist=1.0 * mm, power=2 * mW, state=fa.V, line=fa.GaussianLine(coherence_length=200 * mm), name="laser"),
     fa.BeamSplitter(reflectance=0.45, name="split"),
     fa.Mirror(name="m1"),
     fa.FreeSpace(300 * mm, name="short"),

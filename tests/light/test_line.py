@@ -24,7 +24,9 @@ def test_gaussian_line_is_the_transform_of_its_spectrum():
 def test_lorentzian_line_is_the_transform_of_its_spectrum():
     line = fa.LorentzianLine(fwhm=1e9)
     for tau in (0.2e-9, -0.7e-9):
-        half = quad(lambda f: 0.5 / math.pi / (f * f + 0.25), 0, math.inf, weight="cos", wvar=2 * math.pi * abs(tau) * 1e9)
+        half = quad(
+            lambda f: 0.5 / math.pi / (f * f + 0.25), 0, math.inf, weight="cos", wvar=2 * math.pi * abs(tau) * 1e9
+        )
         assert line.degree(SPEED_OF_LIGHT * tau) == pytest.approx(2 * half[0], abs=1e-8)
 
 

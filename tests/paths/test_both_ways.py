@@ -35,13 +35,17 @@ def test_a_fold_on_the_way_becomes_two_way_and_the_end_does_not():
 
 
 def test_both_senses_of_a_loop_pass_every_part():
-    train = start().loop("bs.transmitted", fa.Mirror(name="m1"), fa.FreeSpace(0.1, name="gap"), fa.Mirror(name="m2"), "bs.reflected")
+    train = start().loop(
+        "bs.transmitted", fa.Mirror(name="m1"), fa.FreeSpace(0.1, name="gap"), fa.Mirror(name="m2"), "bs.reflected"
+    )
     senses = {tuple(leg.element_name for leg in route.legs) for route in train.routes("bs.side")}
     assert senses == {("bs", "m1", "gap", "m2", "bs"), ("bs", "m2", "gap", "m1", "bs")}
 
 
 def test_a_metal_mirror_can_be_in_a_loop():
-    train = start().loop("bs.transmitted", fa.MetalMirror(index=0.18 + 3.4j, name="gold"), fa.Mirror(name="m2"), "bs.reflected")
+    train = start().loop(
+        "bs.transmitted", fa.MetalMirror(index=0.18 + 3.4j, name="gold"), fa.Mirror(name="m2"), "bs.reflected"
+    )
     assert train.elements["gold"].faces == ("front", "side")
     assert train.power("bs.side") + train.power("bs.front") < 1e-3
 

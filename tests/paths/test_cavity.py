@@ -30,7 +30,9 @@ def test_a_lossless_ring_returns_everything():
 
 def test_a_ring_at_critical_coupling_absorbs_everything():
     # Loss in the ring equals what the splitter lets in: T = 1 - filter.
-    train = ring(wave(state=fa.V), 0.7, fa.NeutralDensity(transmission=0.7, name="nd"), fa.PhaseShift(phase=0.0, name="scan"))
+    train = ring(
+        wave(state=fa.V), 0.7, fa.NeutralDensity(transmission=0.7, name="nd"), fa.PhaseShift(phase=0.0, name="scan")
+    )
     powers = [train.with_changes({"scan.phase": p}).power("bs.reflected") for p in np.arange(16) * math.pi / 8]
     assert min(powers) == pytest.approx(0, abs=1e-14)
     best = train.with_changes({"scan.phase": float(np.argmin(powers)) * math.pi / 8})
@@ -43,7 +45,9 @@ def test_trips_of_a_beam_add_up_to_the_steady_state_of_a_wave():
     shift = [fa.NeutralDensity(transmission=0.3), fa.PhaseShift(phase=0.5)]
     laser = fa.Laser(waist=1 * mm, power=1.0, name="laser")
     # Without distance and with an even number of reflections in all, every trip lies on the one before.
-    assert ring(laser, 0.4, *shift).power("bs.reflected") == pytest.approx(ring(wave(), 0.4, *shift).power("bs.reflected"))
+    assert ring(laser, 0.4, *shift).power("bs.reflected") == pytest.approx(
+        ring(wave(), 0.4, *shift).power("bs.reflected")
+    )
 
 
 def test_energy_closes_in_a_cavity_whose_beam_spreads():

@@ -59,9 +59,8 @@ def test_the_pictures_of_both_ports_add_up_only_when_one_is_mirrored(mach_zehnde
         train.along(f"out.{port}", fa.Camera(pixel=20 * um, shape=(80, 80), name=port))
     one, other = (train.expose(camera, [fa.H]).frame(0) for camera in ("transmitted", "reflected"))
     arms = mach_zehnder(arm=[fa.SpiralPlate(charge=2)])
-    alone = sum(
-        branch_picture(train, index) for index in range(2)
-    ) * 2  # each arm leaves half of its light at this port
+    # Each arm leaves half of its light at this port.
+    alone = sum(branch_picture(train, index) for index in range(2)) * 2
     assert one + other[:, ::-1] == pytest.approx(alone, abs=1e-9 * alone.max())
     assert abs(one + other - alone).max() > 0.3 * alone.max()
     assert arms.power("out.transmitted") == pytest.approx(0.5, abs=1e-3)
@@ -96,7 +95,9 @@ def test_partial_coherence_lies_between_full_and_none(mach_zehnder):
 
 
 def test_three_arms_of_different_length_keep_three_degrees(mach_zehnder):
-    train = mach_zehnder(arm=[fa.FreeSpace(0.01)]).with_changes({"laser.line": fa.LorentzianLine(coherence_length=0.03)})
+    train = mach_zehnder(arm=[fa.FreeSpace(0.01)]).with_changes(
+        {"laser.line": fa.LorentzianLine(coherence_length=0.03)}
+    )
     train.along("out.transmitted", fa.FreeSpace(0.02, name="third"), fa.BeamSplitter(name="last"))
     train.along("out.reflected", "last.side")
     arms = train.plan("last.transmitted").groups[0]

@@ -44,7 +44,9 @@ def back_power():
 
 
 def test_printed_it_ends_with_the_sum():
-    train = fa.Train(wavelength=633 * nm).along(fa.Laser(waist=1 * mm, power=2 * mW, name="laser"), fa.Detector(name="meter"))
+    train = fa.Train(wavelength=633 * nm).along(
+        fa.Laser(waist=1 * mm, power=2 * mW, name="laser"), fa.Detector(name="meter")
+    )
     text = str(train.ledger())
     assert "detected             2 mW  meter" in text
     assert "sum of the ends 2 mW" in text

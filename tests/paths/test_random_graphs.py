@@ -88,7 +88,9 @@ def quiet(question):
             raise
 
 
-common = settings(max_examples=40, deadline=None, suppress_health_check=[HealthCheck.filter_too_much, HealthCheck.too_slow])
+common = settings(
+    max_examples=40, deadline=None, suppress_health_check=[HealthCheck.filter_too_much, HealthCheck.too_slow]
+)
 
 
 @common

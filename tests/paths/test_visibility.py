@@ -33,12 +33,18 @@ def test_a_camera_sees_tilted_arms_in_full_and_a_detector_does_not(mach_zehnder)
     train.along("out.transmitted", fa.Camera(pixel=10e-6, shape=(8, 8), name="cam"))
     train.along("out.reflected", fa.Detector(name="bucket"))
     assert train.visibility("cam").value == pytest.approx(1, abs=1e-9)
-    assert train.visibility("bucket").value == pytest.approx(math.exp(-((math.pi * mm * 1e-3 / 632.8e-9) ** 2) / 2), abs=1e-9)
+    assert train.visibility("bucket").value == pytest.approx(
+        math.exp(-((math.pi * mm * 1e-3 / 632.8e-9) ** 2) / 2), abs=1e-9
+    )
 
 
 @pytest.mark.parametrize(
     ("state", "marks", "angle"),  # of the last, 10 and 100 deg arrive mirrored: -55 and 35 deg halve them
-    [(fa.H, [fa.HalfWavePlate(fast=45 * deg)], 45), (fa.D, [fa.HalfWavePlate(fast=0 * deg)], 0), (fa.linear(10 * deg), [fa.Rotator(angle=90 * deg)], 35)],
+    [
+        (fa.H, [fa.HalfWavePlate(fast=45 * deg)], 45),
+        (fa.D, [fa.HalfWavePlate(fast=0 * deg)], 0),
+        (fa.linear(10 * deg), [fa.Rotator(angle=90 * deg)], 35),
+    ],
 )
 def test_orthogonal_arms_get_the_analyzer_that_restores_them(mach_zehnder, state, marks, angle):
     train = mach_zehnder(fa.Laser(waist=1 * mm, state=state, name="laser"), arm=marks)

@@ -38,9 +38,7 @@ def test_mach_zehnder_ports(phase, reflectance):
 
 
 def michelson(length, reflectance=0.5, laser=None):
-    train = fa.Train(wavelength=632.8 * nm).along(
-        laser or wave(), fa.BeamSplitter(reflectance=reflectance, name="bs")
-    )
+    train = fa.Train(wavelength=632.8 * nm).along(laser or wave(), fa.BeamSplitter(reflectance=reflectance, name="bs"))
     train.retro("bs.transmitted", fa.FreeSpace(length, name="long"), fa.Mirror(name="end1"))
     return train.retro("bs.reflected", fa.FreeSpace(0.1, name="short"), fa.Mirror(name="end2"))
 
@@ -122,7 +120,9 @@ def visibility_of(line, difference):
     return math.hypot(cosine, sine) / ((scan[0] + scan[2]) / 2)
 
 
-@pytest.mark.parametrize(("tau", "gaussian", "lorentzian"), [(0.1e-9, 0.92303012, 0.62422843), (0.3e-9, 0.48634320, 0.24323756)])
+@pytest.mark.parametrize(
+    ("tau", "gaussian", "lorentzian"), [(0.1e-9, 0.92303012, 0.62422843), (0.3e-9, 0.48634320, 0.24323756)]
+)
 def test_visibility_against_path_difference(tau, gaussian, lorentzian):
     """J. W. Goodman, Statistical Optics (1985), section 5.1; Born and Wolf, section 7.5.8."""
     assert visibility_of(fa.GaussianLine(fwhm=1.5e9), C * tau) == pytest.approx(gaussian, abs=1e-8)
@@ -201,7 +201,9 @@ def test_faraday_isolator(beta, leak):
 def test_polarizing_michelson(waves, expected):
     """P. Hariharan (2003), chapter 2: all light leaves by the output; behind 45 deg it goes as cos^2(k dL)."""
     train = fa.Train(wavelength=632.8 * nm).along(wave(fa.D), fa.PolarizingBeamSplitter(name="pbs"))
-    train.retro("pbs.transmitted", fa.QuarterWavePlate(fast=45 * deg), fa.PhaseShift(phase=2 * math.pi * waves), fa.Mirror())
+    train.retro(
+        "pbs.transmitted", fa.QuarterWavePlate(fast=45 * deg), fa.PhaseShift(phase=2 * math.pi * waves), fa.Mirror()
+    )
     train.retro("pbs.reflected", fa.QuarterWavePlate(fast=45 * deg), fa.Mirror())
     assert train.power("pbs.front") < ROUNDING
     assert train.power("pbs.side") == pytest.approx(1, abs=ROUNDING)
