@@ -1,9 +1,10 @@
 """Sedge Hollow: a vector beam out of a loop.
 
 A polarizing splitter sends horizontal light one way round a loop of three mirrors and vertical light the other way.
-Both pass the same spiral plate, from opposite sides, and leave together by the splitter's fourth face: as no path is longer
-than the other, nothing drifts. With an odd number of mirrors they come out with opposite charges; a quarter-wave plate
-at 45 deg makes their polarizations circular, and the sum is linear everywhere, turning once around the axis.
+Both pass the same spiral plate, from opposite sides, and leave together by the splitter's fourth face: as no path is
+longer than the other, nothing drifts. With an odd number of mirrors they come out with opposite charges; a quarter-
+wave plate at 45 deg makes their polarizations circular, and the sum is linear everywhere, turning once around the
+axis.
 
 Look for: a ring without analyzer, and two lobes behind any linear one, which turn with it one to one. With a fourth
 mirror in the loop both charges are alike and the lobes are gone.

@@ -5,8 +5,8 @@ A window behind the isolator returns 4 % of the light straight into it. On the w
 meets the first polarizer almost crossed.
 
 Look for: the power at the open port "in.front", back to the laser: 0.8 uW of the 2 mW returned, three parts of it for
-the last degree of the rotator and one for the extinction of the polarizers. print(train.ledger()) shows where the rest of
-the returned light goes. An optically active rotator in its place (fa.Rotator) lets all of it back.
+the last degree of the rotator and one for the extinction of the polarizers. print(train.ledger()) shows where the
+rest of the returned light goes. An optically active rotator in its place (fa.Rotator) lets all of it back.
 """
 
 import fastaxis as fa
