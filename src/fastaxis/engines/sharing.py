@@ -14,12 +14,15 @@ from fastaxis.plan import Branch, Plan
 __all__ = ["Prefix", "Relay", "shared_steps"]
 
 
+SAMPLED = ("grid", "handover")
+
+
 def shared_steps(one: Plan, other: Plan) -> int:
     """How many steps two plans have in common from the source on, samples included; 0 for unlike light.
 
-    Only the grid engine is stopped on the way: the others take less time than comparing would save.
+    Only sampled light is stopped on the way: the other engines take less time than comparing would save.
     """
-    if one.engine != "grid" or other.engine != "grid" or len(one.branches) != len(other.branches):
+    if one.engine not in SAMPLED or one.engine != other.engine or len(one.branches) != len(other.branches):
         return 0
     return min(_shared(a, b) for a, b in zip(one.branches, other.branches, strict=True))
 
@@ -30,9 +33,12 @@ def _shared(one: Branch, other: Branch) -> int:
         return 0
     if (one.beam, one.wavelength, one.power) != (other.beam, other.wavelength, other.power):
         return 0
-    count = 0
-    for here, there in zip(one.steps, other.steps, strict=False):
-        if here != there or a.hop(count) != b.hop(count):
+    # Samples begin behind the steps of harmonics, which are shared as a whole or not at all.
+    first = count = one.harmonic_steps
+    if other.harmonic_steps != first or one.steps[:first] != other.steps[:first]:
+        return 0
+    for here, there in zip(one.steps[first:], other.steps[first:], strict=False):
+        if here != there or a.hop(count - first) != b.hop(count - first):
             break
         count += 1
     return count

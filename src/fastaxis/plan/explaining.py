@@ -55,10 +55,16 @@ def _branch(branch: Branch) -> Iterator[str]:
         precision = "" if sampling.precision == "double" else f", {sampling.precision} precision"
         yield f"  {sampling.grid.samples} x {sampling.grid.samples} samples ({sampling.chosen}){precision}"
         yield "  margin: of room or pitch over what the light needs; 1 or more is enough"
-        yield f"    0. source: {_sampled(sampling.planes[0])}"
+        if not branch.harmonic_steps:
+            yield f"    0. source: {_sampled(sampling.planes[0])}"
     for index, step in enumerate(branch.steps, start=1):
-        line = f"    {index}. {', '.join(step.names)}: {_said(step.law)}"
-        yield line if sampling is None else f"{line}; {_sampled(sampling.planes[index])}"
+        line, place = f"    {index}. {', '.join(step.names)}: {_said(step.law)}", index - branch.harmonic_steps
+        if sampling is None or place < 0:
+            yield line if sampling is None else f"{line}; by harmonics"
+        elif place == 0:
+            yield f"{line}; by harmonics, handed over to samples: {_sampled(sampling.planes[0])}"
+        else:
+            yield f"{line}; {_sampled(sampling.planes[place])}"
 
 
 def explain(plan: Plan) -> str:

@@ -18,6 +18,7 @@ from fastaxis.plan.commute import commute
 from fastaxis.plan.fuse import fuse
 from fastaxis.plan.gather_flips import gather_flips
 from fastaxis.plan.grid import Grid
+from fastaxis.plan.handing_over import roomier, round_steps
 from fastaxis.plan.merge import merge
 from fastaxis.plan.multiply import multiply
 from fastaxis.plan.plan import Branch, Plan
@@ -147,14 +148,23 @@ def make_plan(
     if power_only:
         plan = drop_trailing(plan)
     name, reason = choose(plan.steps, plan.source, bucket=bucket, asked=engine, sampled=grid is not None)
-    if name == "grid":
-        plan = replace(plan, branches=tuple(_sampled(branch, grid) for branch in plan.branches))
+    first = round_steps(plan.steps, plan.source) if name == "grid" and engine == "auto" and grid is None else 0
+    if first:
+        name, reason = "handover", f"{reason}, but up to there all is round about the axis"
+    if name in {"grid", "handover"}:
+        plan = replace(plan, branches=tuple(_sampled(branch, grid, first) for branch in plan.branches))
     return replace(plan, engine=name, reason=reason)
 
 
-def _sampled(branch: Branch, grid: Grid | None) -> Branch:
-    spread = of_beam(branch.beam, branch.wavelength)
-    return replace(branch, sampling=sampling_for(branch.steps, spread, branch.wavelength, grid))
+def _sampled(branch: Branch, grid: Grid | None, first: int = 0) -> Branch:
+    """A branch with samples for its steps behind the first ones, which harmonics do."""
+    spread, rest = of_beam(branch.beam, branch.wavelength), branch.steps[first:]
+    for step in branch.steps[:first]:
+        spread = spread.past(step.law, branch.wavelength)
+    sampling = sampling_for(rest, spread, branch.wavelength, grid)
+    if first and grid is None:
+        sampling = roomier(sampling, rest, branch.wavelength)
+    return replace(branch, sampling=sampling, harmonic_steps=first)
 
 
 def _joined(plan: Plan, grid: Grid | None, *, bucket: bool, asked: str) -> Plan:

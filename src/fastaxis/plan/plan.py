@@ -40,6 +40,7 @@ class Branch:
     network : all ways at once, for light whose shape is not followed; then there are no steps.
     feed : place in the network where the light begins.
     path : parts of an arm, as text.
+    harmonic_steps : so many steps are done by harmonics before samples take over; ``sampling`` begins there.
     """
 
     beam: Beam
@@ -54,6 +55,7 @@ class Branch:
     network: Network | None = None
     feed: int = 0
     path: str = ""
+    harmonic_steps: int = 0
 
 
 def _in_precision(branch: Branch, precision: str) -> Branch:
@@ -70,7 +72,8 @@ class Plan:
     wavelength : of the train [m].
     source : the light at the start.
     branches : one for each incoherent part of the source.
-    engine : "uniform", "azimuthal" or "grid"; "joined" where arms meet, each with an engine of its own.
+    engine : "uniform", "azimuthal" or "grid"; "handover" from the second to the third on the way; "joined" where arms
+        meet, each with an engine of its own.
     reason : why this engine.
     notes : what the passes did.
     """
