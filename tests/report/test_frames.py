@@ -1,9 +1,12 @@
+from dataclasses import replace
+
 import numpy as np
 import pytest
 
 from fastaxis.camera.sets import rotating_plate
+from fastaxis.camera.settings import as_settings
 from fastaxis.conventions import View
-from fastaxis.light import linear
+from fastaxis.light import H, V, linear
 from fastaxis.light.raster import Raster
 from fastaxis.report.frames import draw_frames, layout
 
@@ -68,4 +71,29 @@ def test_64_long_names_fit(poincare_shots, assert_nothing_collides):
 
 def test_no_light_is_drawn_without_a_complaint(exposure):
     figure = draw_frames(exposure(np.zeros((4, 6, 8)), Raster(1e-5, (6, 8))))
-    assert pictures(figure)[0].get_xlabel().startswith("0 W")
+    assert [text.get_text() for text in figure.axes[0].texts] == ["dark"]
+    assert len(figure.axes) == 1  # no colour bar of nothing
+
+
+def test_roundings_are_called_dark_and_are_not_drawn_as_light(six_shots):
+    s0 = six_shots.stokes[0]
+    crossed = replace(six_shots, stokes=np.stack([s0, s0 * (1 - 2e-16), 0 * s0, 0 * s0]), settings=as_settings([V]))
+    figure = draw_frames(crossed)
+    assert [text.get_text() for text in figure.axes[0].texts] == ["dark"]
+    beside_light = draw_frames(replace(crossed, settings=as_settings([H, V])))
+    assert [one.get_xlabel().split("\n")[0] for one in pictures(beside_light)] == ["4.00 mW", "dark"]
+
+
+def test_a_logarithmic_scale_reaches_so_many_decades_down_and_shows_where_they_are(six_shots):
+    plain, deep = draw_frames(six_shots), draw_frames(six_shots, decades=4)
+    low, high = pictures(deep)[0].images[0].get_clim()
+    assert high / low == pytest.approx(1e4)
+    width = [np.ptp(pictures(one)[0].get_xlim()) for one in (plain, deep)]
+    assert width[1] > width[0]
+
+
+def test_of_a_thousand_settings_a_hundred_are_shown_and_the_foot_says_so(poincare_shots):
+    shots = poincare_shots([linear(0.003 * k) for k in range(130)], shape=(12, 12), pitch=2e-4)
+    figure = draw_frames(shots)
+    assert len(pictures(figure)) == 65
+    assert figure.texts[-1].get_text().startswith("65 of 130 settings are shown.")

@@ -23,7 +23,7 @@ class Glyphs:
     ----------
     x, y : places (n,), in the unit of the picture.
     azimuth : of the long axis (n,) [rad].
-    ellipticity : (n,) [rad]; positive turns clockwise as the picture is seen (helicity -1).
+    ellipticity : (n,) [rad]; positive turns clockwise in the picture.
     size : long half-axis (n,).
     """
 

@@ -21,7 +21,7 @@ LEAST = 0.02  # of the power; an analyzer that passes all states nearly alike ge
 def mark_analyzer(axes: Axes, weights: NDArray[Any]) -> bool:
     """Draw the ellipse that passes best into the lower left corner, with an arrow for its sense; False if none does.
 
-    ``weights`` are those of S0 to S3 in the frame, R named in the receiver's view.
+    ``weights`` are those of S0 to S3 in the frame, R named in the receiver's view, as seen in the picture.
     """
     m0, m1, m2, m3 = (float(weight) for weight in weights)
     if np.sqrt(m1**2 + m2**2 + m3**2) < LEAST * m0:

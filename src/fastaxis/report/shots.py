@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import math
 from collections.abc import Sequence
 from dataclasses import dataclass
 from typing import Any, Protocol
@@ -9,9 +10,10 @@ from typing import Any, Protocol
 import numpy as np
 from numpy.typing import NDArray
 
+from fastaxis.camera.mounting import Mounting
 from fastaxis.conventions import View
 
-__all__ = ["Crop", "Shots", "bright_crop", "heading", "short_labels", "whole"]
+__all__ = ["Crop", "Shots", "bright_crop", "heading", "is_unlit", "mounting_note", "short_labels", "whole"]
 
 Image = NDArray[np.float64]
 
@@ -37,13 +39,31 @@ class Shots(Protocol):
     def name(self) -> str: ...
     @property
     def target(self) -> str: ...
+    @property
+    def orientation(self) -> str: ...
+    @property
+    def dark_below(self) -> float: ...
     def __len__(self) -> int: ...
     def frame(self, which: int) -> Image: ...
+    def is_dark(self, which: int) -> bool: ...
 
 
 def heading(shots: Shots, title: str | None) -> str:
     """The title asked for, or the names of the train and of the camera."""
     return title if title is not None else ", ".join(part for part in (shots.name, shots.target) if part)
+
+
+def is_unlit(shots: Shots) -> bool:
+    """Whether no light at all reaches the sensor."""
+    return not shots.stokes[0].max() > 0 or math.isinf(shots.dark_below)
+
+
+def mounting_note(shots: Shots) -> str:
+    """What the foot of a figure says of a camera that is turned or mirrored; "" for an upright one."""
+    words = Mounting(shots.orientation).words
+    if not words:
+        return ""
+    return f"Picture {words}: polarization is drawn as it is seen there; states keep the names of the beam's own frame."
 
 
 def short_labels(labels: tuple[str, ...]) -> tuple[tuple[str, ...], str]:
