@@ -52,3 +52,14 @@ def test_index(ring, fails):
 def test_index_where_there_is_none(ring, fails):
     circular = ring.with_changes({"laser.state": fa.R})
     assert "no index" in fails(ft.singular_index, circular, "cam", 1, radius=80 * um).got
+
+
+def test_lobes_and_index_are_those_of_the_beam_however_the_camera_is_mounted(ring):
+    mirrored = ring.with_changes({"cam.orientation": "mirrored"})
+    ft.lobe_angle(mirrored, "cam", 30 * deg, behind=fa.linear(30 * deg))
+    ft.singular_index(mirrored, "cam", +1, radius=80 * um)
+
+
+def test_the_dark_has_no_lobes(ring, fails):
+    dark = ring.with_changes({"qp.retardance": 0 * deg})
+    assert fails(ft.lobe_count, dark, "cam", 2, behind=fa.V).got == "0 lobes behind V"

@@ -12,7 +12,7 @@ from fastaxis.units import deg, mm, mW, nm
 
 @pytest.fixture(scope="module")
 def arms():
-    """Two arms of unequal splitters: V = 2 sqrt(R T) R T... at the straight port 1, across it less."""
+    """Two arms, a filter of 25 % in one of them."""
     train = fa.Train(wavelength=633 * nm, name="Curlew").along(
         fa.Laser(waist=1 * mm, power=1 * mW, state=fa.H, name="laser"),
         fa.BeamSplitter(reflectance=0.5, name="first"),
@@ -30,6 +30,14 @@ def test_visibility(arms, fails):
     ft.visibility(arms, "meter", 0.8, knob="shift.phase")
     error = fails(ft.visibility, arms, "meter", 1.0, knob="shift.phase")
     assert error.got == "visibility 0.8"
+
+
+def test_visibility_of_a_pair_of_paths_tells_its_factors(arms, fails):
+    ft.visibility(arms, "meter", 0.8)
+    error = fails(ft.visibility, arms, "meter", 1.0)
+    assert error.got.startswith("visibility 0.800 = coherence 1.000 x balance 0.800 x polarization 1.000")
+    with pytest.raises(fa.WiringError):
+        ft.visibility(arms, "first.transmitted", 0.8)
 
 
 def test_form(fails):

@@ -1,4 +1,4 @@
-"""The visibility of the power at a port while a phase is stepped."""
+"""The visibility of fringes: of a pair of paths, or of the power at a port while a phase is stepped."""
 
 from __future__ import annotations
 
@@ -6,53 +6,70 @@ from typing import Any
 
 import numpy as np
 
+from fastaxis.analysis.visibility import visibility as visibility_of
 from fastaxis.camera.settings import as_setting, no_analyzer
+from fastaxis.errors import WiringError
 from fastaxis.testing.failing import Claim, hold
 
 __all__ = ["visibility"]
 
-STEPS = 8  # over a turn of the phase; harmonics up to the third do not disturb the first
+STEPS = 8  # over a turn of the phase; harmonics up to the sixth do not disturb the first
 
 
-def visibility(train: Any, port: str, expected: float, *, knob: str, within: float = 0.01, behind: Any = None) -> None:
-    """The power at a port goes as 1 + V cos(phase) while a phase is stepped through a turn; V is as expected.
-
-    V = 2 |c1| / c0 with the first two Fourier coefficients of eight readings.
+def visibility(
+    train: Any, target: str, expected: float, *, within: float = 0.01, behind: Any = None, knob: str | None = None
+) -> None:
+    """Fringes are as deep as expected.
 
     Parameters
     ----------
     train : the bench.
-    port : port or detector.
+    target : camera, detector or port.
     expected : visibility, 0 to 1.
-    knob : parameter that is stepped, "shift.phase".
     within : deviation that is still good.
     behind : analyzer or state in front of it, if any.
+    knob : parameter that is stepped through a turn, "shift.phase": then V = 2 |c1|/c0 of the power at the target,
+        from the first two Fourier coefficients of eight readings. Without a knob it is the product of coherence,
+        balance, polarization and spatial overlap of the two paths, as ``train.visibility`` tells it.
 
     Raises
     ------
-    BenchError : it is another.
+    BenchError : they are deeper or shallower.
+    WiringError : no knob, and not two paths.
     """
-    weights = (no_analyzer() if behind is None else as_setting(behind)).weights
-    part, _, parameter = knob.partition(".")
 
-    def found(bench: Any) -> float:
-        start = bench.elements[part].parameters()[parameter]
-        turned = [bench.with_changes({knob: start + 2 * np.pi * k / STEPS}) for k in range(STEPS)]
-        powers = np.array([weights @ _stokes(one, port) for one in turned])
-        c0, c1 = np.abs(np.fft.fft(powers))[:2]
-        return float(2 * c1 / c0) if c0 > 0 else 0.0
+    def found(bench: Any) -> tuple[float, str]:
+        return _of_paths(bench, target, behind) if knob is None else _stepped(bench, target, behind, knob)
 
     hold(
         train,
         Claim(
-            port,
+            target,
             f"visibility {expected:.4g} within {within:g}",
-            lambda bench: f"visibility {found(bench):.4g}",
-            lambda bench: abs(found(bench) - expected) / within,
+            lambda bench: found(bench)[1],
+            lambda bench: abs(found(bench)[0] - expected) / within,
             "train",
         ),
     )
 
 
-def _stokes(train: Any, port: str) -> Any:
-    return sum(part.total_stokes for part in train.field(port))
+def _of_paths(train: Any, target: str, behind: Any) -> tuple[float, str]:
+    pairs = visibility_of(train, target, behind).pairs
+    if len(pairs) != 1:
+        raise WiringError(
+            "fringes of more than two paths are measured by stepping a phase",
+            got=f"visibility: {len(pairs)} pairs of paths to {target}",
+            fix='knob="shift.phase"',
+        )
+    return pairs[0].value, f"visibility {pairs[0]}"
+
+
+def _stepped(train: Any, target: str, behind: Any, knob: str) -> tuple[float, str]:
+    weights = (no_analyzer() if behind is None else as_setting(behind)).weights
+    part, _, parameter = knob.partition(".")
+    start = train.elements[part].parameters()[parameter]
+    turned = [train.with_changes({knob: start + 2 * np.pi * k / STEPS}) for k in range(STEPS)]
+    powers = np.array([weights @ sum(light.total_stokes for light in one.field(target)) for one in turned])
+    c0, c1 = np.abs(np.fft.fft(powers))[:2]
+    value = float(2 * c1 / c0) if c0 > 0 else 0.0
+    return value, f"visibility {value:.4g}"

@@ -1,4 +1,4 @@
-"""Lobes of a picture: how many, where, and how they turn."""
+"""Lobes of a picture, in the beam's own frame: how many, where, and how they turn."""
 
 from __future__ import annotations
 
@@ -6,7 +6,7 @@ import math
 from collections.abc import Sequence
 from typing import Any
 
-from fastaxis.analysis.lobes import lobes
+from fastaxis.analysis.lobes import Lobes, lobes
 from fastaxis.analysis.turning import turning as turning_of
 from fastaxis.errors import ParameterError
 from fastaxis.light import linear
@@ -37,7 +37,7 @@ def lobe_count(train: Any, camera: str, count: int, *, behind: Any, centre: tupl
     """
 
     def found(shots: Any) -> int:
-        return lobes(shots.frame(0), x=shots.x, y=shots.y, centre=centre).count
+        return _lobes(shots, centre).count
 
     hold(
         train,
@@ -72,14 +72,14 @@ def lobe_angle(
     """
 
     def misfit(shots: Any) -> float:
-        found = lobes(shots.frame(0), x=shots.x, y=shots.y, centre=centre)
+        found = _lobes(shots, centre)
         if not found.count:
             return math.inf
         spacing = 2 * math.pi / found.count
         return abs((found.angle - angle + spacing / 2) % spacing - spacing / 2) / within
 
     def told(shots: Any) -> str:
-        found = lobes(shots.frame(0), x=shots.x, y=shots.y, centre=centre)
+        found = _lobes(shots, centre)
         if not found.count:
             return "no lobes"
         every = f" and every {360 / found.count:g} deg" if found.count > 1 else ""
@@ -127,6 +127,14 @@ def turning(
     sense = "with" if rate > 0 else "against"
     expected = f"lobes turning {sense} the analyzer, {rate:+.3g} to one"
     hold(train, Claim(camera, expected, told, _or_bad(misfit), "shots", tuple(analyzers)))
+
+
+def _lobes(shots: Any, centre: tuple[float, float]) -> Lobes:
+    """In the beam's own frame, however the camera is mounted; none where there is no light but roundings."""
+    if shots.is_dark(0):
+        return Lobes(0, math.nan, 0.0)
+    seen = shots.upright
+    return lobes(seen.frame(0), x=seen.x, y=seen.y, centre=centre)
 
 
 def _or_bad(misfit: Any) -> Any:

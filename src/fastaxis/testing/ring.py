@@ -39,7 +39,8 @@ def ring_radius(
     setting = no_analyzer() if behind is None else behind
 
     def found(shots: Any) -> float:
-        return radius_of(shots.frame(0), x=shots.x, y=shots.y, centre=centre)
+        seen = shots.upright
+        return radius_of(seen.frame(0), x=seen.x, y=seen.y, centre=centre)
 
     hold(
         train,

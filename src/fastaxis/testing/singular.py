@@ -21,7 +21,7 @@ def singular_index(
     Parameters
     ----------
     train : the bench.
-    camera : that looks; upright, since a mirrored picture flips the places alone.
+    camera : that looks, however it is mounted.
     index : expected, a multiple of 1/2.
     radius, centre : of the circle [m].
 
@@ -31,8 +31,9 @@ def singular_index(
     """
 
     def found(shots: Any) -> float | str:
+        seen = shots.upright  # a mirrored picture flips the places alone
         try:
-            return polarization_index(shots.stokes, x=shots.x, y=shots.y, radius=radius, centre=centre)
+            return polarization_index(seen.stokes, x=seen.x, y=seen.y, radius=radius, centre=centre)
         except ParameterError as error:
             return f"no index: {error.rule}"
 

@@ -70,6 +70,16 @@ def test_pictures_agree_with_brute_force(many, twelve):
         assert found.values[row] == pytest.approx(expected, rel=1e-9, abs=1e-12, nan_ok=True)
 
 
+def test_lobes_are_those_of_the_beam_however_the_camera_is_mounted(many):
+    merits = {"lobe": lobe_angle("cam", fa.linear(30 * deg), count=2)}
+    errors = {"qp.offset": normal(1 * deg)}
+    bare = many.with_changes({"q1.retardance": 0.0, "q2.retardance": 0.0, "pol.extinction": 1.001})
+    upright = bare.tolerance(errors, merits, draws=3)
+    mirrored = bare.with_changes({"cam.orientation": "mirrored"}).tolerance(errors, merits, draws=3)
+    assert np.isfinite(upright.values).all()
+    assert mirrored.values == pytest.approx(upright.values, abs=1e-12)
+
+
 def test_slopes_are_those_of_the_law_of_malus(malus):
     found = malus.tolerance({"pol.axis": normal(1 * deg)}, {"power": power_at("meter")}, draws=10)
     slope = found.sensitivities["power"]["pol.axis"]

@@ -66,8 +66,9 @@ def _tried(train: Any, mistake: Mistake, watch: Watch) -> Iterator[Suspect]:
 def _nearest(misfits: Any, distances: Any) -> int:
     """The best value, of several the one that is least off."""
     best = np.nanmin(misfits)
-    # Values a rounding apart, as both ends of half a turn are, are equally good.
-    alike = np.flatnonzero(misfits <= best + 1e-9 * max(1.0, abs(best)))
+    # A tenth of a degree changes a frame by 1e-3 or more where its angle matters; less than a tenth of that is no
+    # reason to prefer a value that is further off.
+    alike = np.flatnonzero(misfits <= best + 1e-4 * max(1.0, abs(best)))
     return int(alike[np.argmin(distances[alike])])
 
 

@@ -209,7 +209,7 @@ def _weights(behind: Any) -> Reals:
 
 
 def lobe_angle(target: str, behind: Any, *, count: int, centre: tuple[float, float] = (0.0, 0.0)) -> PictureMerit:
-    """Angle of a bright lobe [rad], within half a spacing of zero; nan where the picture has another count."""
+    """Angle of a bright lobe in the beam's frame [rad], within half a spacing of zero; nan at another count."""
     return PictureMerit(target, _weights(behind), "lobe angle", count=count, centre=centre, unit="rad")
 
 

@@ -11,6 +11,7 @@ from numpy.typing import NDArray
 
 from fastaxis.camera.exposing import recorded, sensor_at
 from fastaxis.camera.mixing import mixed
+from fastaxis.camera.mounting import Mounting
 from fastaxis.engines import propagate
 from fastaxis.engines.combining import combined, combines
 from fastaxis.engines.sharing import Relay
@@ -134,7 +135,12 @@ def light_at(train: Any, merit: StokesMerit | PictureMerit, options: dict[str, A
 
 def _seen(train: Any, merit: StokesMerit | PictureMerit, light: Any) -> tuple[Reals, Any, Any]:
     if isinstance(merit, PictureMerit):
-        return recorded(light, sensor_at(train, merit.target))
+        sensor = sensor_at(train, merit.target)
+        stokes, x, y = recorded(light, sensor)
+        if merit.reading == "correlation":
+            return stokes, x, y  # beside a frame of the same camera
+        mounting = Mounting(getattr(sensor, "orientation", "upright"))
+        return mounting.undone(stokes), *mounting.undone_axes(x, y)
     return np.asarray(sum(part.total_stokes for part in light))[:, None, None], None, None
 
 
