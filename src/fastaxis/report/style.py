@@ -146,7 +146,7 @@ def footer(figure: Figure, view: View = View.RECEIVER, *, note: str = "") -> Non
 
 def foot_height(width: float, view: View = View.RECEIVER, *, note: str = "") -> float:
     """Height [inch] of what :func:`footer` writes on a figure of this width [inch]."""
-    return float((len(_foot_lines(width, view, note)) * 1.25 * FOOT_SIZE + 5) / 72)
+    return float((len(_foot_lines(width, view, note)) * 1.25 * FOOT_SIZE + 9) / 72)
 
 
 def _foot_lines(width: float, view: View, note: str) -> list[str]:
