@@ -7,41 +7,64 @@ from collections.abc import Iterator
 from typing import Any
 
 from fastaxis.cli.bench_file import BenchFile
-from fastaxis.cli.choices import one_setting
-from fastaxis.cli.console import say
+from fastaxis.cli.choices import STATES, one_setting
+from fastaxis.cli.console import say, tell
+from fastaxis.cli.letters import with_letters
 from fastaxis.cli.targets import targets
 from fastaxis.conventions import View, stamp
 from fastaxis.errors import FastaxisError
 
-__all__ = ["derive"]
+__all__ = ["NOT_CONFIRMED", "derive"]
+
+NOT_CONFIRMED = 4  # exit code
 
 ROUNDING = 2.0**-52
 AGREED = 1e-3  # of the irradiance; a numeric engine meets a hard edge or a singular point to about this
 
 
-def derive(bench: BenchFile, options: Namespace) -> None:
-    """Print the field, the Stokes parameters and, where asked, a frame, each as a formula with a numeric check."""
-    train = bench.train.with_values(dict(options.symbol)) if options.symbol else bench.train
+def derive(bench: BenchFile, options: Namespace) -> int:
+    """Print the field, the Stokes parameters and, where asked, a frame, each as a formula with a numeric check.
+
+    Returns 4 where numbers don't confirm a formula, else 0.
+    """
+    train = with_letters(bench.train, options)
+    _tell_letter(train, options.setting)
+    good = True
     for target in targets(train, options.camera):
         form = train.derive(target)
         say(f"{train.name}, {target}: light relative to its envelope [sqrt(W)/m]")
         for name, value in _quantities(form, options.setting, options.view):
-            say(f"  {name} = {_latex(value) if options.latex else value}")
+            say(f"  {name} = {form.show(value, latex=options.latex)}")
         for name, meaning in form.meanings.items():
-            say(f"    with {name} = {_latex(meaning) if options.latex else meaning}")
+            say(f"    with {form.show(name, latex=options.latex)} = {form.show(meaning, latex=options.latex)}")
         for line in form.assumptions[1:]:  # the first is the stamp, which closes the answer
             say(f"  assumed: {line}")
-        say(f"  {_checked(form)}")
+        agreed, verdict = _checked(form)
+        good &= agreed
+        say(f"  {verdict}")
     say(stamp(options.view))
+    return 0 if good else NOT_CONFIRMED
 
 
-def _checked(form: Any) -> str:
+def _checked(form: Any) -> tuple[bool, str]:
+    """Whether numbers don't contradict a form, and the words for it."""
     try:
         check = form.check()
     except FastaxisError as error:
-        return f"not checked: {error}"
+        # The fix is for those who ask in Python; here there is nothing to be typed.
+        return True, f"not checked: {error.got}; {error.rule}"
     agreed = check.roundings * ROUNDING < AGREED
-    return f"{'checked' if agreed else 'NOT CONFIRMED, do not rely on this form'}: {check}"
+    return agreed, f"{'checked' if agreed else 'NOT CONFIRMED, do not rely on this form'}: {check}"
+
+
+def _tell_letter(train: Any, setting: str | None) -> None:
+    """Say what a setting that is no state and no angle was taken for."""
+    if setting is None or not setting.isidentifier() or setting in STATES:
+        return
+    if setting in map(str, train.symbols):
+        tell(f"caution: {setting} is a letter of the bench too: the analyzer turns with it", style="yellow")
+    else:
+        tell(f"{setting} is no state ({', '.join(STATES)}): taken as a letter, the angle of a linear analyzer")
 
 
 def _quantities(form: Any, setting: str | None, view: View) -> Iterator[tuple[str, Any]]:
@@ -54,9 +77,3 @@ def _quantities(form: Any, setting: str | None, view: View) -> Iterator[tuple[st
     if setting is not None:
         # R and L are typed as the view names them, and exposed as the receiver names them.
         yield f"frame behind {setting}", form.frame(one_setting(view.rename(setting)))
-
-
-def _latex(value: Any) -> str:
-    from sympy import latex  # noqa: PLC0415  # loaded only where formulas are asked for
-
-    return str(latex(value))

@@ -9,7 +9,7 @@ import sympy as sp
 
 from fastaxis.errors import SymbolError
 
-__all__ = ["PHI", "R", "X", "Y", "check_letters"]
+__all__ = ["PHI", "R", "X", "Y", "check_asked", "check_letters"]
 
 R = sp.Symbol("r", positive=True)
 PHI = sp.Symbol("phi", real=True)
@@ -45,3 +45,22 @@ def check_letters(letters: Iterable[Any]) -> None:
                 fix=f'{name} = sympy.Symbol("{name}", real=True)',
             )
         seen[name] = letter
+
+
+def check_asked(letters: Iterable[Any], *asked: Any) -> None:
+    """Refuse a letter in a question that looks like one of the form's and is another.
+
+    Raises
+    ------
+    SymbolError : a letter of the same name with different assumptions.
+    """
+    known = {str(letter): letter for letter in (*letters, PHI, R)}
+    for expression in asked:
+        for letter in getattr(expression, "free_symbols", ()):
+            if known.get(str(letter), letter) != letter:
+                own = "positive=True" if known[str(letter)].is_positive else "real=True"
+                raise SymbolError(
+                    "two letters of one name, declared with different assumptions, cannot be told apart in a form",
+                    got=f"the letter {letter}",
+                    fix=f'{letter} = sympy.Symbol("{letter}", {own})',
+                )

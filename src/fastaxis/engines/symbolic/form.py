@@ -24,6 +24,7 @@ from fastaxis.engines.symbolic.answers import (
 )
 from fastaxis.engines.symbolic.checking import Check, check
 from fastaxis.engines.symbolic.common_phase import plainest_phase, without_common_phase
+from fastaxis.engines.symbolic.coordinates import check_asked
 from fastaxis.engines.symbolic.expressions import written
 from fastaxis.engines.symbolic.field import Field, Pair
 from fastaxis.engines.symbolic.functions import NumericForm
@@ -160,6 +161,7 @@ class Form(Shown):
 
     def frame_poly(self, setting: Any) -> Poly:
         """The frame of a setting in the ring, relative to |envelope|^2."""
+        check_asked(self.letters, setting)
         total = self._maths.ring.zero
         for weight, pair in self.pairs:
             scale, amplitudes = behind(setting, pair, self._maths)
@@ -225,15 +227,18 @@ class Form(Shown):
 
     def dark_when(self, angle: Any, setting: Any = None) -> Branches:
         """Values of an angle that make the frame of a setting dark, or the port itself without one."""
+        check_asked(self.letters, angle, setting)
         polys = [poly for weight, pair in self.pairs for poly in self._amplitudes(setting, pair)]
         return dark_when(tuple(polys), angle)
 
     def derivative(self, setting: Any, parameter: Any) -> Any:
         """Slope of the frame with a parameter, exact."""
+        check_asked(self.letters, parameter)
         return compact(derivative(self.frame_poly(setting), parameter))
 
     def mistakes(self, setting: Any, small: Sequence[Any]) -> tuple[Mistake, ...]:
         """Small errors ranked by the order in which they change the frame, and where they do."""
+        check_asked(self.letters, *small)
         return ranked_mistakes(self.frame_poly(setting), small)
 
     def share(self, mode: Any) -> Any:
@@ -298,22 +303,31 @@ class Form(Shown):
         return self.pairs[0][1]
 
     def _present(self, poly: Poly, way: str, **options: Any) -> Any:
-        ways: dict[str, Any] = {
-            "compact": compact,
-            "exponential": exponential,
-            "harmonics": harmonics,
-            "series": series,
+        ways: dict[str, tuple[Any, str, str]] = {
+            "compact": (compact, "", ""),
+            "exponential": (exponential, "", ""),
+            "harmonics": (harmonics, "angle", ", angle=theta"),
+            "series": (series, "small", ", small=[epsilon], order=2"),
         }
         if way not in ways:
             raise SymbolError(f"forms are written {', '.join(ways)}", got=f'way="{way}"', fix='way="compact"')
-        return ways[way](poly, **options)
+        write, needs, example = ways[way]
+        if bool(needs) != (needs in options) or not options.keys() <= {needs, "order"}:
+            raise SymbolError(
+                f'way="{way}" takes {needs or "no letters"}',
+                got=", ".join(options) or "none",
+                fix=f'way="{way}"{example}',
+            )
+        return write(poly, **options)
 
     def harmonics(self, setting: Any, angle: Any) -> dict[Any, tuple[Any, Any]]:
         """The frame as a Fourier sum in an angle: {n: (cosine coefficient, sine coefficient)}."""
+        check_asked(self.letters, angle)
         return harmonics(self.frame_poly(setting), angle)
 
     def series(self, setting: Any, small: Sequence[Any], order: int = 2) -> Any:
         """The frame to a total order in small symbols."""
+        check_asked(self.letters, *small)
         return series(self.frame_poly(setting), small, order)
 
 

@@ -60,6 +60,12 @@ class NumericForm:
         ------
         SymbolError : a letter without a value.
         """
+        if self.expression.has(sp.Integral):
+            raise SymbolError(
+                "a form with an integral left in it has no fast function; the numeric engines work it out",
+                got=str(next(iter(self.expression.atoms(sp.Integral))))[:60],
+                fix='train.expose("cam", fa.SIX_STATES)',
+            )
         given = {str(letter): value for letter, value in (values or {}).items()} | named
         missing = [str(letter) for letter in self.letters if str(letter) not in given]
         if missing:

@@ -6,9 +6,12 @@ from typing import Any
 
 import sympy as sp
 
+from fastaxis.engines.symbolic.printing import as_latex, as_text
+from fastaxis.errors import SymbolError
+
 __all__ = ["Shown"]
 
-LONG = 10_000
+QUANTITIES = ("jones", "stokes", "frame", "power", "irradiance", "envelope", "scale")
 
 
 class Shown:
@@ -29,13 +32,17 @@ class Shown:
         What the names in it stand for follows after "with". ``form.latex("frame", theta)``.
         """
         value = self._value(quantity, *arguments, **options)
-        text = str(sp.latex(_readable(value)))
+        text = as_latex(value)
         used = self._explained(value)
         if used:
             text += r", \quad \text{with } " + r",\; ".join(
-                f"{sp.latex(name)} = {sp.latex(_short(meaning))}" for name, meaning in used.items()
+                f"{as_latex(name)} = {as_latex(_short(meaning))}" for name, meaning in used.items()
             )
         return text
+
+    def show(self, value: Any, *, latex: bool = False) -> str:
+        """An expression of the form as it is printed: one line of text, or LaTeX."""
+        return as_latex(value) if latex else as_text(value)
 
     def to_text(self, quantity: str = "jones", *arguments: Any, spelled_out: bool = True, **options: Any) -> str:
         """A quantity as text that sympy.sympify reads back; names are spelled out unless asked otherwise."""
@@ -62,6 +69,12 @@ class Shown:
         return self.parts[0].field.place.letters.spelled_out(expression)
 
     def _value(self, quantity: str, *arguments: Any, **options: Any) -> Any:
+        if quantity not in QUANTITIES:
+            raise SymbolError(f"a form has {', '.join(QUANTITIES)}", got=f'"{quantity}"', fix='form.latex("stokes")')
+        if quantity == "frame" and not arguments:
+            raise SymbolError(
+                "a frame belongs to an analyzer setting", got='"frame" alone', fix='form.latex("frame", theta)'
+            )
         found = getattr(self, quantity)
         return found(*arguments, **options) if callable(found) else found
 
@@ -82,21 +95,17 @@ class Shown:
     def __str__(self) -> str:
         quantity = "jones" if len(self.parts) == 1 else "stokes"
         names = "(Ex, Ey)" if quantity == "jones" else "(S0, S1, S2, S3)"
-        value = self._value(quantity)
+        value, envelope = self._value(quantity), self._value("envelope")
         lines = [
-            f"light at {self.target}, relative to its envelope",
-            f"{names} = ({', '.join(map(str, _readable(value)))})",
+            f"light at {self.target}, relative to its envelope [sqrt(W)/m]",
+            f"{names} = ({', '.join(map(as_text, value))})",
+            f"envelope = {as_text(envelope)}",
         ]
-        lines += [f"  {name} = {_short(meaning)}" for name, meaning in self._explained(value).items()]
+        used = self._explained(sp.Tuple(*value, envelope))
+        lines += [f"  {as_text(name)} = {as_text(_short(meaning))}" for name, meaning in used.items()]
         return "\n".join((*lines, "assumed: " + "; ".join(self.assumptions)))
 
 
 def _short(meaning: Any) -> Any:
-    """A plain number in six digits; anything else with readable numbers in it."""
-    return _readable(meaning) if meaning.free_symbols else meaning.evalf(6)
-
-
-def _readable(expression: Any) -> Any:
-    """Long fractions, such as 133/250000000 for 532 nm, as decimals of six digits."""
-    long = {n: sp.Float(n, 6) for n in expression.atoms(sp.Rational) if n.q > LONG or abs(n.p) > LONG}
-    return expression.xreplace(long) if long else expression
+    """A plain number in six digits; anything else as it is."""
+    return meaning if meaning.free_symbols else meaning.evalf(6)

@@ -6,10 +6,11 @@ from typing import TYPE_CHECKING, Any
 
 import sympy as sp
 
+from fastaxis.engines.symbolic.coordinates import R
 from fastaxis.engines.symbolic.field import Field, Pair, split
 from fastaxis.engines.symbolic.presentations import compact
 from fastaxis.engines.symbolic.ring import Poly
-from fastaxis.engines.symbolic.waves import ModeWave, Wave
+from fastaxis.engines.symbolic.waves import IntegralWave, ModeWave, Wave
 from fastaxis.engines.symbolic.waves.base import exactly
 from fastaxis.errors import SymbolError
 
@@ -34,6 +35,8 @@ Piece = tuple[Wave, Any, Pair]
 
 def _power(field: Field, target: str) -> Poly:
     total = field.place.maths.ring.zero
+    for wave, _ in field.pieces:
+        _passed_whole(wave, target)
     pieces: list[Piece] = [
         (wave, charge, pair)
         for wave, whole in field.pieces
@@ -51,6 +54,15 @@ def _power(field: Field, target: str) -> Poly:
                     fix=f'train.power("{target}")',
                 )
     return total
+
+
+def _passed_whole(wave: Wave, target: str) -> None:
+    """Refuses a wave that went through a stop on its way."""
+    while isinstance(wave, IntegralWave):
+        _uncut(sp.sympify(wave.factor), target)
+        if wave.limit != sp.oo:
+            _uncut(sp.Heaviside(wave.limit - R), target)
+        wave = wave.wave
 
 
 def _uncut(shape: Any, target: str) -> bool:

@@ -13,6 +13,7 @@ from fastaxis.engines.symbolic.expressions import written
 from fastaxis.engines.symbolic.presentations import compact, harmonics
 from fastaxis.engines.symbolic.presentations.harmonics import order_in
 from fastaxis.engines.symbolic.ring import Poly
+from fastaxis.engines.symbolic.ring.reading import read
 from fastaxis.errors import SymbolError
 
 __all__ = ["AnalyzerAngles", "Lobes", "analyzer_angles", "lobes"]
@@ -72,6 +73,7 @@ def _polar(turned: Poly, s1: Poly, s2: Poly) -> tuple[Any, Any]:
     if size.has(sp.I):
         one, two = compact(s1), compact(s2)
         return sp.sqrt(one**2 + two**2), sp.atan2(two, one) / 2
+    size = compact(read(turned.ring, size))
     if size.could_extract_minus_sign():
         size, phase = -size, phase + sp.pi
     # sin^2 and the like are never negative; anything else may change sign, and bright and dark with it.

@@ -11,6 +11,7 @@ import sympy as sp
 from fastaxis.engines.symbolic.expressions import centred, written
 from fastaxis.engines.symbolic.presentations import harmonics
 from fastaxis.engines.symbolic.presentations.factors import factored
+from fastaxis.engines.symbolic.printing import as_text
 from fastaxis.engines.symbolic.ring import Poly
 from fastaxis.errors import SymbolError
 
@@ -46,11 +47,20 @@ class Branches:
         if self.always:
             return f"dark at every {self.angle}"
         text = [
-            f"{self.angle} = {branch}" + ("" if condition == True else f" if {condition}")  # noqa: E712  # sympy's true
+            f"{self.angle} = {as_text(branch)}" + ("" if condition == True else f" if {_said(condition)}")  # noqa: E712
             for branch, condition in zip(self.branches, self.conditions, strict=True)
         ]
-        text += [f"or {other} = 0 at every {self.angle}" for other in self.others]
+        text += [f"or {as_text(other)} = 0 at every {self.angle}" for other in self.others]
         return "; ".join(text) + "; n any whole number" * bool(self.branches) if text else "no solution"
+
+
+def _said(condition: Any) -> str:
+    """A condition in words: sin(x) = 0, several joined by and."""
+    if isinstance(condition, sp.And):
+        return " and ".join(sorted(map(_said, condition.args)))
+    if isinstance(condition, sp.Eq):
+        return f"{as_text(condition.lhs)} = {as_text(condition.rhs)}"
+    return str(condition)
 
 
 def dark_when(amplitudes: tuple[Poly, ...], angle: Any) -> Branches:

@@ -9,6 +9,7 @@ from __future__ import annotations
 
 from fractions import Fraction
 from typing import Any
+from weakref import WeakKeyDictionary
 
 import sympy as sp
 
@@ -18,7 +19,7 @@ from fastaxis.engines.symbolic.presentations.pieces import by_reality, by_surd, 
 from fastaxis.engines.symbolic.presentations.reality import is_real, made_real, quotient
 from fastaxis.engines.symbolic.presentations.shortness import content_out, doubled, length, one_number
 from fastaxis.engines.symbolic.presentations.splitting import best_split, by_amplitude
-from fastaxis.engines.symbolic.ring import Poly
+from fastaxis.engines.symbolic.ring import Poly, Ring
 from fastaxis.engines.symbolic.ring.ring import ANGLE
 
 __all__ = ["compact"]
@@ -27,10 +28,19 @@ MOST_TERMS = 600  # beyond, a form is not short whatever one does
 MOST_WAYS = 24  # beyond, only one way of splitting is tried
 
 
+# Ways of splitting meet in the same pieces again and again.
+_KNOWN: WeakKeyDictionary[Ring, dict[Any, Any]] = WeakKeyDictionary()
+
+
 def compact(poly: Poly) -> Any:
     """A polynomial as a short product or sum of products."""
-    if not poly:
-        return sp.S.Zero
+    known, name = _KNOWN.setdefault(poly.ring, {}), (frozenset(poly.terms.items()), poly.den)
+    if name not in known:
+        known[name] = _shortest(poly) if poly else sp.S.Zero
+    return known[name]
+
+
+def _shortest(poly: Poly) -> Any:
     if len(poly) > MOST_TERMS:
         return written(poly)
     surd, bare = _without_surd(poly)
