@@ -97,3 +97,18 @@ def test_one_square_pixel_sees_four_lobes_as_they_lie(arrive):
     one = field.stokes_on(Raster(side, (1, 1)))[:, 0, 0]
     assert abs(one[1]) > 1e-3 * one[0]
     assert one == pytest.approx(fine, abs=1e-9 * one[0])
+
+
+def test_half_a_turn_saves_half_the_work_and_changes_nothing(arrive):
+    """Charges -1 and 1: the lower half of a centred picture is the upper one turned. Each half alone is not centred."""
+    field = arrive(Gaussian(waist=W), QPlate(q=0.5), Lens(focal=0.3), FreeSpace(0.25), state=elliptical(0.3, 0.3))
+    assert {l % 2 for _, l in field.harmonics.orders} == {1}
+    whole = field.stokes_on(Raster(20 * um, (24, 22)))
+    halves = [field.stokes_on(Raster(20 * um, (12, 22), (0, side * 120 * um))) for side in (-1, 1)]
+    assert abs(whole - np.concatenate(halves, axis=1)).max() < 1e-11 * whole.max()
+
+
+def test_mixed_charges_have_no_such_symmetry(arrive):
+    field = arrive(Gaussian(waist=W), QPlate(q=0.5, retardance=2.0), Lens(focal=0.3), FreeSpace(0.25), state=H)
+    s1 = field.stokes_on(Raster(20 * um, (24, 22)))[1]
+    assert abs(s1 - s1[::-1, ::-1]).max() > 0.1 * abs(s1).max()

@@ -104,20 +104,17 @@ def lines_across(places: Reals) -> Reals:
     return np.unique(near + LINES * (far - near))
 
 
-def collected(images: Images, rows: list[Block], columns: list[Block], scale: float) -> Reals:
-    """Means over the pixels times ``scale``, shape (images, pixels down, pixels across)."""
+def collected(images: Images, rows: list[Block], columns: list[Block], scale: float, out: Reals) -> None:
+    """Means over the pixels times ``scale``, written to the rows of ``out`` (images, pixels down, pixels across)."""
     values = images(np.concatenate([b.nodes for b in columns]), np.concatenate([b.nodes for b in rows]))
-    across = np.empty((*values.shape[:2], columns[-1].pixels.stop - columns[0].pixels.start))
+    across = np.empty((*values.shape[:2], out.shape[2]))
     start = 0
     for block in columns:
         stop = start + len(block.nodes)
         np.matmul(values[:, :, start:stop], scale * block.means.T, out=across[:, :, block.pixels])
         start = stop
-    first, start = rows[0].pixels.start, 0
-    out = np.empty((len(values), rows[-1].pixels.stop - first, across.shape[2]))
+    start = 0
     for block in rows:
         stop = start + len(block.nodes)
-        pixels = slice(block.pixels.start - first, block.pixels.stop - first)
-        np.matmul(block.means, across[:, start:stop], out=out[:, pixels])
+        np.matmul(block.means, across[:, start:stop], out=out[:, block.pixels])
         start = stop
-    return out

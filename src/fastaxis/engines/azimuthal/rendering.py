@@ -78,10 +78,12 @@ def smooth_images(table: Table, profile: Profile, orders: Orders, raster: Raster
     rows = blocks_along(lambda places: images(lines_across(x), places).swapaxes(1, 2), y, raster.pitch, peak)
     if columns is None or rows is None:
         return None
+    out = np.empty((4, *raster.shape))
     # Half a turn changes no irradiance if it changes all harmonics alike.
-    alike = raster.centre == (0.0, 0.0) and len({l % 2 for _, l in orders}) == 1
-    if not alike or len(y) % 2:
-        return collected(images, rows, columns, raster.pitch**2)
-    upper = [block for block in rows if 2 * block.pixels.start >= len(y)]
-    half = collected(images, upper, columns, raster.pitch**2)
-    return np.concatenate([half[:, ::-1, ::-1], half], axis=1)
+    half = len(y) // 2
+    if raster.centre != (0.0, 0.0) or len({l % 2 for _, l in orders}) > 1 or len(y) % 2:
+        collected(images, rows, columns, raster.pitch**2, out)
+    else:
+        collected(images, [b for b in rows if b.pixels.start >= half], columns, raster.pitch**2, out)
+        out[:, :half] = out[:, : half - 1 : -1, ::-1]
+    return out
