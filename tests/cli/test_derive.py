@@ -104,3 +104,18 @@ def test_a_part_without_a_formula_is_one_sentence(bench, run):
     ran = run("derive", bench(text))
     assert ran.code == 1
     assert ran.err.startswith("fastaxis: halves")
+
+
+def test_a_form_that_numbers_do_not_confirm_ends_with_a_code_of_its_own(bench, run, monkeypatch):
+    wrong = Check(roundings=1e15, points=3, beside="numbers")
+    monkeypatch.setattr("fastaxis.engines.symbolic.form.Form.check", lambda *_a, **_k: wrong)
+    ran = run("derive", bench(SWITCH))
+    assert ran.code == 4
+    assert "NOT CONFIRMED" in ran.out
+
+
+def test_a_letter_for_the_analyzer_is_said_to_be_one(bench, run):
+    assert "Q is no state (H, V, D, A, R, L): taken as a letter" in run("derive", bench(SWITCH), "--setting", "Q").err
+    clash = run("derive", bench(SWITCH), "--setting", "alpha").err
+    assert "caution: alpha is a letter of the bench too: the analyzer turns with it" in clash
+    assert run("derive", bench(SWITCH), "--setting", "R").err == ""

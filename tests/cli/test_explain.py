@@ -74,3 +74,15 @@ def test_letters_are_explained_without_numbers(bench, run):
     ran = run("explain", bench(text), "--format", "png")
     assert ran.code == 0
     assert "letters: theta" in ran.out
+
+
+def test_the_watts_are_told_and_open_ports_stand_together(bench, run):
+    text = """\
+    train = fa.Train(wavelength=532*nm)
+    train.along(fa.Laser(waist=1*mm, power=4*mW, name="laser"), fa.BeamSplitter(name="a"), fa.BeamSplitter(name="b"))
+    """
+    told = run("explain", bench(text), "--format", "png").out
+    assert "open: a.reflected, 2.00 mW\nopen: b." in told
+    assert "power of the lasers 4 mW" in told
+    assert "sum of the ends 4 mW" in told
+    assert told.count(fa.stamp()) == 1

@@ -1,3 +1,6 @@
+import math
+from importlib import import_module
+
 import pytest
 from PIL import Image
 
@@ -5,6 +8,15 @@ import fastaxis as fa
 from fastaxis.camera import load, read_pictures
 
 
+predict_module = import_module("fastaxis.cli.predict")
+SMALL = """\
+train = fa.Train(wavelength=532*nm, name="Gannet")
+train.along(
+    fa.Laser(waist=0.5*mm, power=4*mW, state=fa.D, name="laser"),
+    fa.QuarterWavePlate(fast=0*deg, name="qwp"),
+    fa.Camera(pixel=100*um, shape=(32, 32), name="cam"),
+)
+"""
 METER = """\
 train = fa.Train(wavelength=532*nm, name="Gannet")
 train.along(fa.Laser(waist=0.5*mm, power=4*mW, state=fa.D, name="laser"), fa.Detector(name="meter"))
@@ -77,8 +89,52 @@ def test_a_letter_gets_its_value(bench, run):
     assert table(run("predict", path, "--symbol", "theta=22.5deg", "--format", "png").out)["D"][2] == "100.00%"
     refused = run("predict", path)
     assert refused.code == 1
-    assert "theta left open; a prediction needs a number for every letter (fix: --symbol theta=0.3)" in refused.err
-    assert run("predict", path, "--symbol", "thta=1").code == 1
+    assert "theta left open; a prediction needs a number for every letter (fix: --symbol theta=30deg)" in refused.err
+    unknown = run("predict", path, "--symbol", "thta=1")
+    assert unknown.code == 1
+    assert "--symbol thta; the letters of this bench are theta (fix: --symbol theta=30deg)" in unknown.err
+    bare = run("predict", path, "--symbol", "theta=45")
+    assert bare.code == 1
+    assert bare.err.rstrip().endswith("(fix: --symbol theta=45deg)")
+    none = run("predict", bench(METER), "--symbol", "theta=1")
+    assert "this bench has no letters (fix: leave out --symbol)" in none.err
+
+
+def test_a_bench_without_settings_and_one_with_none_are_not_the_same(bench, run):
+    refused = run("predict", bench(METER + "settings = ()"), "--format", "png")
+    assert refused.code == 1
+    assert "at least one setting" in refused.err
+
+
+def test_what_misses_the_sensor_is_told(bench, run):
+    ran = run("predict", bench(SMALL.replace("shape=(32, 32)", "shape=(8, 8)")), "--format", "png")
+    # A square of half side 0.4 mm in a beam of w = 0.5 mm collects erf(sqrt2 0.4/0.5)^2 of it.
+    share = math.erf(math.sqrt(2) * 0.8) ** 2
+    assert f"on the sensor {4 * share:.3f} mW of 4.000 mW; {1 - share:.2%} falls beside it" in ran.out
+    assert "falls beside" not in run("predict", bench(), "--format", "png").out
+
+
+def test_shares_are_said_to_be_of_the_light_on_the_sensor(bench, run):
+    assert "share: of the light on the sensor" in run("predict", bench(), "--format", "png").out
+
+
+@pytest.mark.parametrize("orientation", ["turned 90", "mirrored"])
+def test_a_turned_picture_is_told_below_the_table(bench, run, orientation):
+    text = SMALL.replace('name="cam"', f'orientation={orientation!r}, name="cam"')
+    told = run("predict", bench(text), "--format", "png").out
+    assert "states, angles and places are named in the beam's own frame" in told
+
+
+def test_an_engine_by_name(bench, run):
+    assert "engine grid" in run("predict", bench(), "--format", "png", "--engine", "grid").out
+
+
+def test_decades_make_the_scale_logarithmic(bench, run, monkeypatch):
+    seen = []
+    draw = predict_module.draw_frames
+    monkeypatch.setattr(predict_module, "draw_frames", lambda shots, **k: seen.append(k) or draw(shots, **k))
+    assert run("predict", bench(), "--format", "png", "--decades", "5").code == 0
+    assert seen == [{"decades": 5.0}]
 
 
 def test_a_grid_of_the_users_own(bench, run):
@@ -120,3 +176,7 @@ def test_a_bench_without_a_camera_is_told_how_to_add_one(bench, run):
     ran = run("predict", bench("train = fa.Train(wavelength=532*nm).along(fa.Laser(waist=1*mm), fa.BeamDump())"))
     assert ran.code == 1
     assert "needs a camera or detector that light reaches" in ran.err
+    open_end = run(
+        "predict", bench("train = fa.Train(wavelength=532*nm).along(fa.Laser(waist=1*mm), fa.Mirror(name='m'))")
+    )
+    assert 'train.along("m.front", fa.Camera' in open_end.err

@@ -34,11 +34,38 @@ def test_power_share_peak_lobes_and_angle(two_lobes):
     peak = two_lobes.frame("H").max() / 1e-10
     assert found[:3] == ["2.000", "mW", "100.00%"]
     assert float(found[3]) == pytest.approx(peak / 1e3, rel=5e-3)  # three digits shown
-    assert found[4:] == ["kW/m²", "2", "0.0°"]
+    assert found[4:] == ["kW/m²", "2", "lobes", "0.0°"]
 
 
 def test_a_dark_frame_has_no_lobes(two_lobes):
-    assert rows(two_lobes)["V"] == ["0", "W", "0.00%", "0", "W/m²", "round", "-"]
+    assert rows(two_lobes)["V"] == ["0", "W", "0.00%", "-", "dark", "-"]
+
+
+def test_roundings_are_no_power_and_have_no_lobes(two_lobes):
+    s0 = two_lobes.stokes[0]
+    crossed = replace(two_lobes, stokes=np.stack([s0, s0 * (1 - 2e-16), 0 * s0, 0 * s0]))
+    assert crossed.power("V") > 0
+    assert rows(crossed)["V"] == ["<", "2", "fW", "0.00%", "-", "dark", "-"]  # 1e-12 of 2 mW
+
+
+def test_rings_and_places_are_told(two_lobes):
+    def told(s0):
+        return rows(replace(two_lobes, stokes=np.stack([s0, s0, 0 * s0, 0 * s0])))["H"][5:]
+
+    px, py = np.meshgrid(two_lobes.x, two_lobes.y)
+    r2 = (px**2 + py**2) / 1e-8
+    # r^2 exp(-2 r^2) is brightest at w/sqrt2; pixels of w/10 average it over a twelfth of a square of a tenth.
+    ring = told(r2 * np.exp(-2 * r2))
+    assert ring[:3] == ["ring,", "r", "="]
+    assert float(ring[3]) == pytest.approx(70.7, abs=0.7)
+    spot = np.exp(-2 * ((px - 3e-5) ** 2 + (py + 2e-5) ** 2) / 4e-9)
+    assert told(spot)[:5] == ["round", "about", "(0.030,", "-0.020)", "mm"]
+
+
+def test_each_row_is_told_of(two_lobes):
+    told = []
+    exposure_table(two_lobes, each=lambda: told.append(1))
+    assert len(told) == 2
 
 
 def test_a_detector_has_power_and_share_only(two_lobes):

@@ -1,5 +1,5 @@
-"""The command line: ``fastaxis predict``, ``fastaxis derive`` and ``fastaxis explain`` on a bench file."""
+"""The command line: ``fastaxis predict``, ``derive``, ``explain`` and ``inspect`` on a bench file."""
 
-from fastaxis.cli.main import main
+from fastaxis.cli.entry import main
 
 __all__ = ["main"]

@@ -5,20 +5,28 @@ from __future__ import annotations
 from argparse import ArgumentParser, ArgumentTypeError
 from collections.abc import Callable
 from pathlib import Path
-from typing import Any
+from typing import Any, NoReturn
 
 from fastaxis import __version__
 from fastaxis.cli import choices
 from fastaxis.cli.quantities import assignment
 from fastaxis.conventions import View
 from fastaxis.errors import FastaxisError
+from fastaxis.plan.choose import ENGINES
 
 __all__ = ["parser"]
 
 _EXIT_CODES = (
     "exit codes: 0 done, 1 a mistake in the bench, 2 wrong usage, 3 (inspect) a finding of high severity, "
-    "130 stopped with Ctrl-C"
+    "4 (derive) a formula that numbers don't confirm, 130 stopped with Ctrl-C"
 )
+
+
+class _Parser(ArgumentParser):
+    """A parser whose complaints are one line."""
+
+    def error(self, message: str) -> NoReturn:
+        self.exit(2, f"{self.prog}: {message} (see {self.prog} --help)\n")
 
 
 def _typed(read: Callable[[str], Any]) -> Callable[[str], Any]:
@@ -38,6 +46,19 @@ def _bench(text: str) -> Path:
     if not path.is_file():
         raise ArgumentTypeError(f"there is no file {text}")
     return path
+
+
+def _folder(text: str) -> str:
+    # Told before the work is done, not when its results are to be written.
+    if Path(text).exists() and not Path(text).is_dir():
+        raise ArgumentTypeError(f"{text} is a file; results are written to a folder (fix: --out {text}_results)")
+    return text
+
+
+def _decades(text: str) -> float:
+    if not text.isdecimal() or not 1 <= int(text) <= 12:
+        raise ArgumentTypeError(f"decades are a whole number from 1 to 12, not '{text}'")
+    return float(text)
 
 
 def _dots(text: str) -> int:
@@ -77,7 +98,9 @@ def _command(commands: Any, name: str, does: str) -> ArgumentParser:
 
 
 def _writes_figures(command: ArgumentParser) -> None:
-    command.add_argument("--out", metavar="DIR", help="folder to write to; made if it is not there")
+    told = f"how the light is worked out: {', '.join(ENGINES)}; auto takes the quickest that can"
+    command.add_argument("--engine", choices=("auto", *ENGINES), default="auto", metavar="NAME", help=told)
+    command.add_argument("--out", type=_folder, metavar="DIR", help="folder to write to; made if it is not there")
     command.add_argument("--grid", type=_typed(choices.grid), metavar="SAMPLES,WINDOW",
                          help="samples at the laser, e.g. 1024,8mm; chosen from the bench if left out")  # fmt: skip
     command.add_argument("--format", type=_typed(choices.formats), default=("png", "pdf"), metavar="png,pdf",
@@ -87,12 +110,14 @@ def _writes_figures(command: ArgumentParser) -> None:
 
 def parser() -> ArgumentParser:
     """The parser of all commands."""
-    top = ArgumentParser(prog="fastaxis", description="Predict and explain an optical bench.", epilog=_EXIT_CODES)
+    top = _Parser(prog="fastaxis", description="Predict and explain an optical bench.", epilog=_EXIT_CODES)
     top.add_argument("--version", action="version", version=f"fastaxis {__version__}")
     commands = top.add_subparsers(dest="command", required=True, metavar="COMMAND")
     predict = _command(commands, "predict", "Camera frames for every analyzer setting, maps, drawing and a table.")
     predict.add_argument("--settings", type=_typed(choices.settings), metavar="six|four|linear:N|plate:N",
                          help="analyzer settings; the bench's own settings, or six, if left out")  # fmt: skip
+    predict.add_argument("--decades", type=_decades, metavar="N",
+                         help="frames on a logarithmic scale, N powers of ten deep: shows faint rings")  # fmt: skip
     _writes_figures(predict)
     derive = _command(commands, "derive", "The light at a camera as a formula, letters left as letters.")
     derive.add_argument("--setting", type=_typed(_setting), metavar="H|..|ANGLE|LETTER",
@@ -104,5 +129,5 @@ def parser() -> ArgumentParser:
     inspect = _of_bench(commands, "inspect", "What may be wrong with a bench before it is built; laser cautions.")
     inspect.add_argument("--json", action="store_true", help="write the findings as JSON")
     inspect.add_argument("--brief", action="store_true", help="leave out notes")
-    inspect.add_argument("--out", metavar="DIR", help="folder for inspection.txt, .json, .pdf and .png")
+    inspect.add_argument("--out", type=_folder, metavar="DIR", help="folder for inspection.txt, .json, .pdf and .png")
     return top

@@ -12,9 +12,10 @@ from fastaxis.errors import ParameterError
 from fastaxis.light import A, D, H, L, R, V, linear
 from fastaxis.plan import Grid
 
-__all__ = ["formats", "grid", "one_setting", "settings"]
+__all__ = ["MOST", "STATES", "formats", "grid", "one_setting", "settings"]
 
-_STATES = {state.label: state for state in (H, V, D, A, R, L)}
+MOST = 1000  # settings of one command: all of them go into one TIFF and one table
+STATES = {state.label: state for state in (H, V, D, A, R, L)}
 
 
 def _linear(count: int) -> tuple[Any, ...]:
@@ -37,6 +38,12 @@ def settings(text: str) -> tuple[Any, ...]:
     if text in {"six", "four"}:
         return tuple(SIX_STATES) if text == "six" else four_frames()
     kind, _, count = text.partition(":")
+    if kind in _SERIES and count.isdecimal() and int(count) > MOST:
+        raise ParameterError(
+            f"a command takes at most {MOST} settings; Python has no limit, and makes one frame at a time",
+            got=f"settings '{text}'",
+            fix=f"--settings {kind}:{MOST}",
+        )
     if kind in _SERIES and count.isdecimal() and int(count) > 0:
         return _SERIES[kind](int(count))
     raise ParameterError(
@@ -50,8 +57,8 @@ def one_setting(text: str) -> Any:
     >>> one_setting("D").label
     'D'
     """
-    if text in _STATES:
-        return _STATES[text]
+    if text in STATES:
+        return STATES[text]
     if text.isidentifier():
         from sympy import Symbol  # noqa: PLC0415  # only formulas need letters
 

@@ -8,6 +8,7 @@ from typing import Any
 
 from fastaxis.cli.bench_file import BenchFile
 from fastaxis.cli.console import say, tell
+from fastaxis.cli.letters import with_letters
 from fastaxis.cli.safety import caution, port_powers
 from fastaxis.cli.targets import recording
 from fastaxis.conventions import View, stamp
@@ -24,7 +25,7 @@ def explain(bench: BenchFile, options: Namespace) -> None:
 
     The drawing comes before the wiring is checked: a wrong joint is found most quickly on it.
     """
-    train = bench.train.with_values(dict(options.symbol)) if options.symbol else bench.train
+    train = with_letters(bench.train, options)
     say(str(train))
     if options.view is not View.RECEIVER:
         say("(in this listing R and L are named by the receiver; below, by the source)")
@@ -35,11 +36,20 @@ def explain(bench: BenchFile, options: Namespace) -> None:
         say(f"\n{card(element, options.view)}")
     for target in [options.camera] if options.camera else recording(train):
         _explain_target(train, target, options)
+    say()
     for port in train.open_ports():
-        say(f"\nopen: {port}" + (f", {readable(powers[port], 'W')}" if port in powers else ""))
+        say(f"open: {port}" + (f", {readable(powers[port], 'W')}" if port in powers else ""))
+    _say_ledger(train)
     say(stamp(options.view))
     if warning := caution(train, powers):
         tell(warning, style="bold yellow")
+
+
+def _say_ledger(train: Any) -> None:
+    """Where all the watts go; letters leave that open."""
+    if train.symbols:
+        return
+    say(str(train.ledger()).removesuffix(stamp()).rstrip())
 
 
 def _draw(train: Any, powers: dict[str, float], bench: BenchFile, options: Namespace) -> None:
@@ -52,4 +62,4 @@ def _draw(train: Any, powers: dict[str, float], bench: BenchFile, options: Names
 def _explain_target(train: Any, target: str, options: Namespace) -> None:
     say(f"\n{target}: {reflections_in_words(train, target)}")
     if not train.symbols:
-        say(str(train.plan(target, grid=options.grid)).removesuffix(stamp()).rstrip())
+        say(str(train.plan(target, grid=options.grid, engine=options.engine)).removesuffix(stamp()).rstrip())

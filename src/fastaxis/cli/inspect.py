@@ -7,6 +7,7 @@ from pathlib import Path
 
 from fastaxis.cli.bench_file import BenchFile
 from fastaxis.cli.console import say
+from fastaxis.cli.letters import with_letters
 from fastaxis.inspect import inspect_train
 
 __all__ = ["HIGH_FINDINGS", "inspect"]
@@ -16,7 +17,7 @@ HIGH_FINDINGS = 3  # exit code; 1 and 2 are taken by mistakes in the bench file 
 
 def inspect(bench: BenchFile, options: Namespace) -> int:
     """Print the findings, write them to files if asked, and return 3 when one is of high severity, else 0."""
-    train = bench.train.with_values(dict(options.symbol)) if options.symbol else bench.train
+    train = with_letters(bench.train, options)
     inspection = inspect_train(train)
     say(inspection.json() if options.json else inspection.text(notes=not options.brief))
     if options.out:

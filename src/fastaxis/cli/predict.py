@@ -4,15 +4,18 @@ from __future__ import annotations
 
 from argparse import Namespace
 from collections.abc import Callable
+from functools import partial
 from pathlib import Path
 from typing import Any
 
 from fastaxis.camera import SIX_STATES, save_tiff
 from fastaxis.camera import save as save_bundle
+from fastaxis.camera.settings import as_settings
 from fastaxis.cli.bench_file import BenchFile
 from fastaxis.cli.console import progress, say, tell
+from fastaxis.cli.letters import typed, with_letters
 from fastaxis.cli.safety import caution, port_powers
-from fastaxis.cli.tables import exposure_table
+from fastaxis.cli.tables import exposure_table, remarks
 from fastaxis.cli.targets import targets
 from fastaxis.conventions import stamp
 from fastaxis.errors import SymbolError
@@ -32,15 +35,16 @@ def predict(bench: BenchFile, options: Namespace) -> None:
     ------
     SymbolError : a letter of the bench has no value.
     """
-    train = bench.train.with_values(dict(options.symbol)) if options.symbol else bench.train
+    train = with_letters(bench.train, options)
     if train.symbols:
         letters = sorted(map(str, train.symbols))
-        fix = " ".join(f"--symbol {letter}=0.3" for letter in letters)
+        fix = " ".join(f"--symbol {typed(train, letter)}" for letter in letters)
         raise SymbolError(
             "a prediction needs a number for every letter", got=f"{train.name}: {', '.join(letters)} left open", fix=fix
         )
     out = Path(options.out) if options.out else Path(f"{bench.path.stem}_predicted")
-    settings = options.settings or bench.settings or SIX_STATES
+    asked = options.settings if options.settings is not None else bench.settings
+    settings = as_settings(SIX_STATES if asked is None else asked)
     for target in targets(train, options.camera):
         _predict_one(train, target, settings, out, options)
     powers = port_powers(train)
@@ -53,24 +57,27 @@ def predict(bench: BenchFile, options: Namespace) -> None:
 
 def _predict_one(train: Any, target: str, settings: Any, out: Path, options: Namespace) -> None:
     # The plan closes with the stamp of the default view; the whole answer gets one stamp, of the view asked for.
-    say(str(train.plan(target, grid=options.grid)).removesuffix(stamp()).rstrip())
-    with progress(target, 5) as move_on:
-        shots = train.expose(target, settings, grid=options.grid).in_view(options.view)
+    say(str(train.plan(target, grid=options.grid, engine=options.engine)).removesuffix(stamp()).rstrip())
+    with progress(f"{target}: light", 5 + len(settings)) as move_on:
+        shots = train.expose(target, settings, grid=options.grid, engine=options.engine).in_view(options.view)
         move_on(f"{target}: data")
         out.mkdir(parents=True, exist_ok=True)
         save_bundle(shots, out / f"{target}.npz")
         save_tiff(shots, out / f"{target}.tif")
-        for word, draw in _figures(shots).items():
+        for word, draw in _figures(shots, options).items():
             move_on(f"{target}: {word}")
             _save(draw(shots), out / f"{target}_{word}", options)
-    say(exposure_table(shots))
+        table = exposure_table(shots, each=lambda: move_on(f"{target}: table"))
+    say(table)
+    for line in remarks(shots):
+        say(f"  {line}")
 
 
 def _save(figure: Any, stem: Path, options: Namespace) -> None:
     save(figure, stem, options.format, view=options.view, dpi=options.dpi)
 
 
-def _figures(shots: Any) -> dict[str, Callable[[Any], Any]]:
+def _figures(shots: Any, options: Namespace) -> dict[str, Callable[[Any], Any]]:
     if shots.pixel is None:
         return {"powers": draw_frames}
-    return {"frames": draw_frames, "stokes": draw_stokes, "ellipses": draw_ellipses}
+    return {"frames": partial(draw_frames, decades=options.decades), "stokes": draw_stokes, "ellipses": draw_ellipses}

@@ -28,6 +28,11 @@ def targets(train: Any, wanted: str | None) -> list[str]:
         raise WiringError(
             "the question needs a camera or detector that light reaches",
             got=f"{train.name}: none among {', '.join(train.elements)}",
-            fix='train.along("lens", fa.Camera(pixel=3.45*um, shape=(512, 512), name="cam"))',
+            fix=f'train.along("{_loose_end(train)}", fa.Camera(pixel=3.45*um, shape=(512, 512), name="cam"))',
         )
     return found
+
+
+def _loose_end(train: Any) -> str:
+    """A port that light leaves and nothing takes up; else the laser, after which a camera sees light in any case."""
+    return str(next(iter([*train.open_ports(), *train.sources])))

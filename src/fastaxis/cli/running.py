@@ -1,4 +1,4 @@
-"""The entry of the command line: arguments in, an exit code out, one sentence for every mistake."""
+"""From arguments to an exit code, with one sentence for every mistake."""
 
 from __future__ import annotations
 
@@ -14,9 +14,9 @@ from fastaxis.cli.inspect import inspect
 from fastaxis.cli.predict import predict
 from fastaxis.errors import FastaxisError
 
-__all__ = ["BENCH_ERROR", "INTERRUPTED", "OK", "main"]
+__all__ = ["BENCH_ERROR", "OK", "run"]
 
-OK, BENCH_ERROR, INTERRUPTED = 0, 1, 130  # 2, wrong usage, is argparse's
+OK, BENCH_ERROR = 0, 1  # 2, wrong usage, is argparse's
 
 COMMANDS: dict[str, Callable[[BenchFile, Namespace], int | None]] = {
     "predict": predict,
@@ -26,21 +26,16 @@ COMMANDS: dict[str, Callable[[BenchFile, Namespace], int | None]] = {
 }
 
 
-def main(arguments: Sequence[str] | None = None) -> int:
-    """Run a command and return its exit code.
-
-    0 done, 1 a mistake in the bench, 2 wrong usage, 3 an inspection with findings of high severity, 130 stopped.
-    """
+def run(arguments: Sequence[str] | None = None) -> int:
+    """Run a command and return its exit code; Ctrl-C is left to the caller."""
     options = parser().parse_args(arguments)
     try:
         with cautions():
             return COMMANDS[options.command](read_bench(options.bench), options) or OK
     except (FastaxisError, BenchFileError) as error:
         tell(f"fastaxis: {error}", style="red")
-        return BENCH_ERROR
     except OSError as error:
         tell(f"fastaxis: {error.filename or 'output'}: {error.strerror}", style="red")
-        return BENCH_ERROR
-    except KeyboardInterrupt:
-        tell("fastaxis: stopped; files already written are whole and stay where they are.")
-        return INTERRUPTED
+    except MemoryError:
+        tell("fastaxis: not memory enough for this; ask for fewer pixels, samples or settings", style="red")
+    return BENCH_ERROR

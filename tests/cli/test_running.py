@@ -17,14 +17,19 @@ from fastaxis.camera import load
         (("predict", "bench.py", "--symbol", "theta"), "LETTER=VALUE"),
         (("predict", "bench.py", "--dpi", "7"), "a whole number from 20 to 1200, not '7'"),
         (("predict", "bench.py", "--view", "side"), "receiver or source"),
+        (("predict", "bench.py", "--settings", "plate:100000"), "at most 1000 settings"),
+        (("predict", "bench.py", "--decades", "0"), "a whole number from 1 to 12, not '0'"),
+        (("predict", "bench.py", "--engine", "steam"), "invalid choice: 'steam'"),
         (("derive", "bench.py", "--setting", "5 furlongs"), "a quantity is a number"),
     ],
 )
-def test_wrong_usage_is_2_and_says_why(bench, run, arguments, says):
+def test_wrong_usage_is_2_and_says_why_in_one_line(bench, run, arguments, says):
     bench()
     ran = run(*arguments)
     assert ran.code == 2
     assert says in ran.err
+    assert len(ran.err.splitlines()) == 1
+    assert ran.err.rstrip().endswith("--help)")
 
 
 @pytest.mark.parametrize("command", ["predict", "derive", "explain"])
@@ -51,11 +56,20 @@ def test_an_unknown_camera_gets_the_likely_name(bench, run):
     assert '(fix: "cam")' in ran.err
 
 
+@pytest.mark.parametrize("command", ["predict", "explain", "inspect"])
+def test_a_file_in_the_place_of_the_folder_is_told_before_any_work(bench, run, tmp_path, command):
+    (tmp_path / "taken").write_text("a file")
+    ran = run(command, bench(), "--out", "taken")
+    assert ran.code == 2
+    assert "taken is a file; results are written to a folder (fix: --out taken_results)" in ran.err
+    assert ran.out == ""
+
+
 def test_a_folder_that_cannot_be_made_is_one_line(bench, run, tmp_path):
     (tmp_path / "taken").write_text("a file")
-    ran = run("predict", bench(), "--out", "taken")
+    ran = run("predict", bench(), "--out", "taken/inside")
     assert ran.code == 1
-    assert ran.err.startswith("fastaxis: taken: ")
+    assert ran.err.strip().splitlines()[-1].startswith("fastaxis: taken/inside")
 
 
 def test_version(run):
