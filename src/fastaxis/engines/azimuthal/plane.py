@@ -24,6 +24,8 @@ from fastaxis.light import Raster
 
 __all__ = ["AzimuthalField"]
 
+PLACES = 1 << 15  # at a time: half a megabyte a component
+
 
 @dataclass(frozen=True, eq=False)
 class AzimuthalField:
@@ -104,10 +106,23 @@ class AzimuthalField:
         # An axis place alone still needs panels, which have a width.
         # The farthest place may round to a hair beyond its own distance, where the table would read nothing.
         arrival = self.out_to(max(math.hypot(abs(x).max(), abs(y).max()), 1e-3 * self.wavelength) * (1 + 1e-9))
-        circular = circular_field(self._table(arrival), arrival.orders, x, y)
-        bend = self.harmonics.wavenumber * arrival.curvature / 2
-        circular *= np.exp(1j * bend * (x**2 + y[:, np.newaxis] ** 2))
-        return np.tensordot(TO_CIRCULAR.conj().T, circular, axes=1)
+        table, bend = self._table(arrival), self.harmonics.wavenumber * arrival.curvature / 2
+        across, down = (np.exp(1j * bend * side**2) for side in (x, y))
+        out = np.empty((2, len(y), len(x)), dtype=complex)
+        for rows in _strips(len(y), len(x)):
+            circular = circular_field(table, arrival.orders, x, y[rows])
+            circular *= across * down[rows, np.newaxis]
+            out[:, rows] = np.tensordot(TO_CIRCULAR.conj().T, circular, axes=1)
+        return out
+
+
+def _strips(rows: int, columns: int) -> list[NDArray[np.intp]]:
+    """Rows to be done at a time, so few that they stay in the cache; with each its mirror image, which shares radii."""
+    order = np.arange(rows)
+    pairs = max(1, PLACES // (2 * columns))
+    upper = [order[i : min(i + pairs, rows // 2)] for i in range(0, rows // 2, pairs)]
+    strips = [np.concatenate([some, rows - 1 - some[::-1]]) for some in upper]
+    return [*strips, order[rows // 2 : rows // 2 + 1]] if rows % 2 else strips
 
 
 def _same_charge(harmonics: Harmonics) -> complex:
