@@ -5,8 +5,9 @@ import pytest
 from rich.console import Console
 
 from fastaxis.camera import Exposure
-from fastaxis.camera.settings import as_settings
-from fastaxis.cli.tables import exposure_table
+from fastaxis.camera.settings import as_settings, plate_then_polarizer
+from fastaxis.cli.console import say
+from fastaxis.cli.tables import exposure_table, remarks, rows_of
 from fastaxis.light import H, V
 
 
@@ -25,7 +26,7 @@ def two_lobes():
 def rows(shots):
     console = Console(width=100)
     with console.capture() as captured:
-        console.print(exposure_table(shots))
+        console.print(exposure_table(shots, rows_of(shots)))
     return {line.split()[0]: line.split()[1:] for line in captured.get().splitlines() if "%" in line or " - " in line}
 
 
@@ -50,7 +51,8 @@ def test_roundings_are_no_power_and_have_no_lobes(two_lobes):
 
 def test_rings_and_places_are_told(two_lobes):
     def told(s0):
-        return rows(replace(two_lobes, stokes=np.stack([s0, s0, 0 * s0, 0 * s0])))["H"][5:]
+        shots = replace(two_lobes, stokes=np.stack([s0, s0, 0 * s0, 0 * s0]))
+        return [*rows(shots)["H"][5:], *remarks(shots, rows_of(shots))]
 
     px, py = np.meshgrid(two_lobes.x, two_lobes.y)
     r2 = (px**2 + py**2) / 1e-8
@@ -59,12 +61,25 @@ def test_rings_and_places_are_told(two_lobes):
     assert ring[:3] == ["ring,", "r", "="]
     assert float(ring[3]) == pytest.approx(70.7, abs=0.7)
     spot = np.exp(-2 * ((px - 3e-5) ** 2 + (py + 2e-5) ** 2) / 4e-9)
-    assert told(spot)[:5] == ["round", "about", "(0.030,", "-0.020)", "mm"]
+    assert told(spot)[:3] == ["round,", "off", "axis"]
+    assert told(spot)[-1] == "H: centre of gravity at (0.030, -0.020) mm"
+    dark_ring = (1 - 2 * r2) ** 2 * np.exp(-2 * r2)
+    # Pixels of 10 um smear the dip at 70.7 um: it is read to half a pixel.
+    assert float(told(dark_ring)[-1].removeprefix("H: first dark ring at r = ").split()[0]) == pytest.approx(
+        70.7, abs=5
+    )
+
+
+def test_nothing_is_cut_where_there_is_no_terminal(two_lobes, capsys):
+    long = plate_then_polarizer(fast=0.1, axis=0.2)
+    shots = replace(two_lobes, settings=(long,))
+    say(exposure_table(shots, rows_of(shots)))
+    assert long.label in capsys.readouterr().out
 
 
 def test_each_row_is_told_of(two_lobes):
     told = []
-    exposure_table(two_lobes, each=lambda: told.append(1))
+    rows_of(two_lobes, lambda: told.append(1))
     assert len(told) == 2
 
 

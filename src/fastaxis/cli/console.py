@@ -14,10 +14,15 @@ from fastaxis.errors import FastaxisWarning
 
 __all__ = ["cautions", "console", "progress", "say", "tell"]
 
+WIDE = 160  # columns of a file or a pipe: no table is cut there
+
 
 def console(*, error: bool = False) -> Console:
     """A console on the present stdout or stderr; text is never taken as markup."""
-    return Console(stderr=error, highlight=False, markup=False, soft_wrap=True)
+    shown = Console(stderr=error, highlight=False, markup=False, soft_wrap=True)
+    if not shown.is_terminal:
+        shown.width = WIDE
+    return shown
 
 
 def say(text: Any = "") -> None:

@@ -15,7 +15,7 @@ from fastaxis.cli.bench_file import BenchFile
 from fastaxis.cli.console import progress, say, tell
 from fastaxis.cli.letters import typed, with_letters
 from fastaxis.cli.safety import caution, port_powers
-from fastaxis.cli.tables import exposure_table, remarks
+from fastaxis.cli.tables import exposure_table, remarks, rows_of
 from fastaxis.cli.targets import targets
 from fastaxis.conventions import stamp
 from fastaxis.errors import SymbolError
@@ -67,9 +67,9 @@ def _predict_one(train: Any, target: str, settings: Any, out: Path, options: Nam
         for word, draw in _figures(shots, options).items():
             move_on(f"{target}: {word}")
             _save(draw(shots), out / f"{target}_{word}", options)
-        table = exposure_table(shots, each=lambda: move_on(f"{target}: table"))
-    say(table)
-    for line in remarks(shots):
+        rows = rows_of(shots, lambda: move_on(f"{target}: table"))
+    say(exposure_table(shots, rows))
+    for line in remarks(shots, rows):
         say(f"  {line}")
 
 

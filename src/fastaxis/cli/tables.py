@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 import math
-from collections.abc import Callable, Iterator
+from collections.abc import Callable, Iterable, Iterator
 from typing import Any
 
 from rich import box
@@ -12,29 +12,37 @@ from rich.table import Table
 from fastaxis.camera.mounting import Mounting
 from fastaxis.report.prefix import readable
 
-__all__ = ["exposure_table", "remarks"]
+__all__ = ["exposure_table", "remarks", "rows_of"]
 
+MANY = 12  # lines about single settings
 MISSED = 1e-4  # of the light at the sensor: what a digit shown would hide
 
 
-def exposure_table(shots: Any, *, each: Callable[[], object] = lambda: None) -> Table:
+def rows_of(shots: Any, each: Callable[[], object] = lambda: None) -> list[Any]:
+    """The rows of the table; ``each`` is called after each: counting lobes takes its time."""
+    rows = []
+    for k in range(len(shots)):
+        rows.append(shots.row(k))
+        each()
+    return rows
+
+
+def exposure_table(shots: Any, rows: Iterable[Any]) -> Table:
     """Power, its share, brightest pixel, and lobes, rings or place of the picture, for each setting.
 
     Parameters
     ----------
     shots : the exposure.
-    each : called after each row; counting lobes takes its time.
+    rows : its rows, from :func:`rows_of`.
     """
     table = Table(box=box.SIMPLE_HEAD, title=f"{shots.name}, {shots.target}", title_justify="left")
-    table.add_column("setting", no_wrap=True)
+    table.add_column("setting")  # long names give way, numbers don't
     pictured = shots.pixel is not None
     for name in ("power", "share", *(("peak", "picture", "bright angle") if pictured else ())):
         table.add_column(name, justify="right", no_wrap=True)
-    for k in range(len(shots)):
-        row = shots.row(k)
+    for row in rows:
         picture = (_peak(row), _picture(row), _angle(row)) if pictured else ()
         table.add_row(row.label, _power(row, shots), _share(row, shots), *picture)
-        each()
     return table
 
 
@@ -58,12 +66,16 @@ def _picture(row: Any) -> str:
     if row.kind == "lobes":
         return f"{row.lobes} lobe{'s' * (row.lobes > 1)}"
     if row.kind == "round":
-        bright = f"ring, r = {_metres(row.ring)}" if row.ring > 0 else "round"
-        return bright if math.isnan(row.dark_ring) else f"{bright}, dark at {_metres(row.dark_ring)}"
+        return f"ring, r = {_metres(row.ring)}" if row.ring > 0 else "round"
+    return {"beside": "round, off axis", "other": "uneven"}.get(row.kind, row.kind or "-")
+
+
+def _place(row: Any) -> str:
+    """Where a picture is that has no lobes about the axis, or where its dark ring is; "" for others."""
     if row.kind in ("beside", "other"):
-        x, y = (f"{place * 1e3:.3f}" for place in row.centroid)
-        return f"{'round' if row.kind == 'beside' else 'uneven'} about ({x}, {y}) mm"
-    return row.kind or "-"
+        x, y = (f"{round(place * 1e3, 3) + 0.0:.3f}" for place in row.centroid)
+        return f"{row.label}: centre of gravity at ({x}, {y}) mm"
+    return "" if math.isnan(row.dark_ring) else f"{row.label}: first dark ring at r = {_metres(row.dark_ring)}"
 
 
 def _metres(radius: float) -> str:
@@ -74,11 +86,15 @@ def _angle(row: Any) -> str:
     return "-" if math.isnan(row.angle) else f"{math.degrees(row.angle):.1f}°"
 
 
-def remarks(shots: Any) -> Iterator[str]:
+def remarks(shots: Any, rows: Iterable[Any]) -> Iterator[str]:
     """What the table leaves unsaid: what shares are of, what misses the sensor, how the camera is mounted."""
     yield "share: of the light on the sensor, no analyzer in front of it"
     if shots.pixel is None:
         return
+    places = [place for row in rows if (place := _place(row))]
+    yield from places[:MANY]
+    if len(places) > MANY:
+        yield f"... and {len(places) - MANY} more"
     on, at = shots.total_power, shots.arrived
     if at and on < (1 - MISSED) * at:
         told = f"on the sensor {readable(on, 'W', digits=4)} of {readable(at, 'W', digits=4)}"
