@@ -38,9 +38,14 @@ def _mirrored(visit: Visit) -> Iterator[Finding]:
     count = sum(visit.flips)
     told = f"{visit.name}: {count} reflection{'' if count == 1 else 's'}, orientation {visit.element.orientation!r}"  # type: ignore[attr-defined]
     if odd == undone:
-        severity, rule = Severity.NOTE, "the camera's orientation undoes the odd reflection; R and L stay exchanged"
+        severity = Severity.NOTE
+        rule = "the camera's orientation turns the picture back; the light itself keeps R and L exchanged"
     elif odd:
-        severity, rule = Severity.MEDIUM, "an odd number of reflections mirrors the picture and exchanges R and L"
+        severity = Severity.MEDIUM
+        rule = (
+            "an odd number of reflections mirrors the picture and exchanges R and L, and l and -l, in the light; the "
+            "camera's orientation turns the picture back, only one more mirror the light"
+        )
     else:
         severity, rule = Severity.MEDIUM, "the camera mirrors frames that arrive as they left"
     turn = visit.element.orientation.removeprefix("mirrored").strip(", ")  # type: ignore[attr-defined]
