@@ -137,3 +137,11 @@ def test_a_polynomial_is_zero_exactly_when_its_values_are(terms):
         total = total + maths.number(coefficient) * maths.phasor(m * a + n * b + twelfths * sp.pi / 6)
         value += coefficient * cmath.exp(1j * (m * 0.37 + n * 1.91 + twelfths * math.pi / 6))
     assert total.is_zero() == (abs(value) < 1e-12)
+
+
+def test_a_polynomial_with_roots_of_sums_moves_to_another_ring():
+    share = sp.Symbol("R", positive=True)
+    one, two = ExactMaths(Ring()), ExactMaths(Ring())
+    there = two.root(1 - share) * two.root(share)
+    moved = one.ring.adopted(there)
+    assert moved * moved == one.number(share * (1 - share))

@@ -163,16 +163,20 @@ class Ring:
     def adopted(self, poly: Poly) -> Poly:
         """A polynomial of another ring, with the same generators found or made here."""
         other = poly.ring
-        places = {}
-        for place, generator in enumerate(other.generators):
-            places[place] = self.generator(generator.kind, generator.expression)
-            if place in other._wholes:  # noqa: SLF001  # another ring's own relations
-                self._wholes.setdefault(places[place], self.adopted(other._wholes[place]))  # noqa: SLF001
-            if place in other._switches:  # noqa: SLF001
-                self._switches.add(places[place])
+        places = {
+            place: self.generator(generator.kind, generator.expression)
+            for place, generator in enumerate(other.generators)
+        }
+        self._switches |= {places[place] for place in other._switches}  # noqa: SLF001  # another ring's own relations
+        for place, whole in other._wholes.items():  # noqa: SLF001
+            if places[place] not in self._wholes:
+                self._wholes[places[place]] = self._moved(whole, places)
+        return self._moved(poly, places)
+
+    def _moved(self, poly: Poly, places: dict[int, int]) -> Poly:
         terms = {}
         for key, value in poly.terms.items():
-            root, exponents = other.exponents(key)
+            root, exponents = poly.ring.exponents(key)
             terms[self.pack(root, {places[place]: e for place, e in exponents.items()})] = value
         return Poly.made(self, terms, poly.den)
 
