@@ -71,6 +71,7 @@ if TYPE_CHECKING:
         FastaxisError,
         FastaxisWarning,
         FileFormatError,
+        MissingFileError,
         ParameterError,
         SamplingError,
         SamplingWarning,
@@ -125,8 +126,8 @@ _HOMES = {
     "HalfWavePlate KMirror KnifeEdge Laser Lens Mask MetalMirror Mirror NeutralDensity Obstacle PatternedPolarizer "
     "PatternedRetarder PhaseShift PickOff Polarizer PolarizingBeamSplitter QPlate QuarterWavePlate "
     "RectangularAperture Retarder Rhomb Rotator Slit SpiralPlate Wedge Window",
-    "errors": "FastaxisError FastaxisWarning FileFormatError ParameterError SamplingError SamplingWarning SlipWarning "
-    "SymbolError WiringError WiringWarning",
+    "errors": "FastaxisError FastaxisWarning FileFormatError MissingFileError ParameterError SamplingError "
+    "SamplingWarning SlipWarning SymbolError WiringError WiringWarning",
     "inspect": "Mount",
     "light": "UNPOLARIZED A Beam Comb D FlatTop Gaussian GaussianLine H HermiteGauss L LaguerreGauss LorentzianLine "
     "Monochromatic PlaneWave R SampledMode Source State StateMixture Term V coherent_source elliptical from_jones "

@@ -3,16 +3,19 @@
 from __future__ import annotations
 
 import math
+from collections.abc import Callable
+from dataclasses import dataclass, replace
 from typing import Any
 
 import numpy as np
 
-from fastaxis.errors import FastaxisWarning, ParameterError, SlipWarning
+from fastaxis.errors import FastaxisWarning, ParameterError, SlipWarning, caution
 from fastaxis.maths import Pattern, Scalar, Value, is_symbolic
 
 __all__ = [
     "angle",
     "centre",
+    "degrees_missed",
     "extinction",
     "fraction",
     "half_integer",
@@ -26,6 +29,8 @@ __all__ = [
     "whole_radians",
 ]
 
+# Places [m] at which a function is tried out.
+TRIED = (np.array([[-1e-4, 2e-4, 3e-4], [1e-4, 2e-4, -3e-4]]), np.array([[-5e-5, 1e-4, 1.5e-4], [5e-5, 1e-4, -1.5e-4]]))
 LARGEST_ANGLE = 4 * math.pi  # two turns: a bare 22.5, 45 or 90 lies beyond
 
 
@@ -107,7 +112,10 @@ def _extremes(cells: Pattern) -> tuple[float, float]:
 def fraction(part: str, parameter: str, value: Value, *, fix: str, patterned: bool = False) -> Value:
     """A share of power between 0 and 1."""
     if patterned and isinstance(value, Pattern):
-        if not callable(value.source) and not 0 <= _extremes(value)[0] <= _extremes(value)[1] <= 1:
+        if isinstance(value.source, Watched):
+            value = replace(value, source=replace(value.source, share=True))
+            value.source(*TRIED)
+        elif not 0 <= _extremes(value)[0] <= _extremes(value)[1] <= 1:
             low, high = _extremes(value)
             raise ParameterError(
                 f"{parameter} is a share of power and must lie between 0 and 1: a passive part has no gain",
@@ -171,7 +179,8 @@ def whole(part: str, parameter: str, value: Any, *, least: int | None = None) ->
 def pattern(part: str, parameter: str, value: Any, pixel: Any, *, fix: str) -> Value:
     """A number, a symbol, or what varies over the plate: a Pattern, a function f(x, y) or an array of cells."""
     if isinstance(value, Pattern):
-        return value
+        tried = callable(value.source)
+        return replace(value, source=_function(part, parameter, value.source).source) if tried else value
     if callable(value) and not is_symbolic(value):
         return _function(part, parameter, value)
     if hasattr(value, "shape") and value.shape != ():
@@ -181,19 +190,61 @@ def pattern(part: str, parameter: str, value: Any, pixel: Any, *, fix: str) -> V
 
 def _function(part: str, parameter: str, function: Any) -> Pattern:
     """A function of the place, tried out on a small array so that a slip shows here and not in an engine."""
-    x = np.array([[-1e-4, 2e-4, 3e-4], [1e-4, 2e-4, -3e-4]])
+    watched = Watched(function, part, parameter)
     try:
-        answer = np.asarray(function(x, 0.5 * x))
-        good = answer.shape == x.shape and answer.dtype.kind in "fiub"
-    except (TypeError, ValueError):
-        good = False
-    if not good:
-        raise ParameterError(
-            f"{parameter} as a function takes arrays x, y [m] and gives a real array of the same shape",
-            got=f"{part}: {parameter} is a function that does not",
-            fix=f"{parameter}=lambda x, y: np.arctan2(y, x) / 2",
+        watched(*TRIED)
+    except (TypeError, ValueError) as error:
+        if isinstance(error, ParameterError):
+            raise
+        raise watched.refusal(f"stops with {type(error).__name__} ({error})") from None
+    return Pattern(watched)
+
+
+@dataclass(frozen=True)
+class Watched:
+    """A function of the place that is looked at whenever it is asked: a real, finite number everywhere.
+
+    Parameters
+    ----------
+    function : f(x, y) on arrays [m].
+    part, parameter : what it is the value of.
+    share : whether it gives a share of power.
+    """
+
+    function: Callable[[Any, Any], Any]
+    part: str
+    parameter: str
+    share: bool = False
+
+    def __call__(self, x: Any, y: Any) -> Any:
+        with np.errstate(all="ignore"):  # what comes of it is looked at
+            values = np.asarray(self.function(x, y))
+        shape = np.broadcast_shapes(np.shape(x), np.shape(y))
+        if values.shape != shape or values.dtype.kind not in "fiub":
+            raise self.refusal(f"gives {values.dtype} of shape {values.shape} at places of shape {shape}")
+        if not np.isfinite(values).all():
+            self._refuse(~np.isfinite(values), values, x, y)
+        if self.share and values.min(initial=0.0) < 0:
+            self._refuse(values < 0, values, x, y)
+        return values
+
+    def _refuse(self, bad: Any, values: Any, x: Any, y: Any) -> None:
+        first = int(np.argmax(bad))
+        across, down = (np.broadcast_to(place, bad.shape).flat[first] * 1e3 for place in (x, y))
+        value = values.flat[first]
+        raise self.refusal(
+            f"gives {'NaN' if np.isnan(value) else f'{value:g}'} at {np.count_nonzero(bad)} of {bad.size} samples "
+            f"(first at x = {across:.4g} mm, y = {down:.4g} mm)"
         )
-    return Pattern(function)
+
+    def refusal(self, got: str) -> ParameterError:
+        """What is wrong with the function, and one that would do."""
+        kind = "real, finite array of the same shape" + (", shares of power from 0 to 1" if self.share else "")
+        return ParameterError(
+            f"{self.parameter} as a function takes arrays x, y [m] and gives a {kind}",
+            got=f"{self.part}: the function {self.parameter} {got}",
+            fix=f"{self.parameter}=lambda x, y: " + ("0.5 + 0*x*y" if self.share else "90*deg * x / mm"),
+        )
 
 
 def _cells(part: str, parameter: str, cells: Any, pixel: Any) -> Pattern:
@@ -207,7 +258,7 @@ def _cells(part: str, parameter: str, cells: Any, pixel: Any) -> Pattern:
         raise ParameterError(
             f"{parameter} as an array is 2-D (ny, nx), real and finite",
             got=f"{part}: {parameter} has shape {cells.shape} and type {cells.dtype}",
-            fix=f"{parameter}=np.zeros((64, 64)), pixel=8*um",
+            fix=f"{parameter}=lambda x, y: 0*x*y",
         )
     return Pattern(cells.astype(float), length(part, "pixel", pixel, most=0.01, fix="pixel=8*um"))
 
@@ -227,15 +278,25 @@ def usual(part: str, parameter: str, value: Any, most: float, *, fix: str) -> li
 
 def whole_radians(part: str, parameter: str, value: Any) -> list[FastaxisWarning]:
     """A caution for an angle of 4, 5, 10 ... radians exactly: small enough to pass, but it was meant in degrees."""
-    if not isinstance(value, float) or not value.is_integer() or abs(value) <= math.pi:
-        return []
-    return [
-        SlipWarning(
-            f"{parameter} is in radians and {value:g} rad is {math.degrees(value):.1f} deg: degrees are written 10*deg",
-            got=_got(part, parameter, value),
-            fix=f"{parameter}={value:g}*deg",
-        )
-    ]
+    whole = isinstance(value, int | float) and value == round(value)
+    return [_degrees_meant(part, parameter, value)] if whole and math.pi < abs(value) <= LARGEST_ANGLE else []
+
+
+def degrees_missed(part: str, parameter: str, value: Any) -> None:
+    """The same caution said at once, of 1, 2 and 3 as well, for an angle typed without a point.
+
+    A float such as 3.0 is as likely the answer of some calculation.
+    """
+    if isinstance(value, int) and not isinstance(value, bool) and 0 < abs(value) <= LARGEST_ANGLE:
+        caution(_degrees_meant(part, parameter, value))
+
+
+def _degrees_meant(part: str, parameter: str, value: float) -> SlipWarning:
+    return SlipWarning(
+        f"{parameter} is in radians and {value:g} rad is {math.degrees(value):.1f} deg: degrees are written 10*deg",
+        got=_got(part, parameter, value),
+        fix=f"{parameter}={value:g}*deg",
+    )
 
 
 def near_design(part: str, design: Scalar | None, wavelength: Scalar) -> list[FastaxisWarning]:

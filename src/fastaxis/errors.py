@@ -57,6 +57,10 @@ class FileFormatError(FastaxisError, ValueError):
     """A file is not what it should be, or cannot hold what it is asked to hold."""
 
 
+class MissingFileError(FastaxisError, FileNotFoundError):
+    """A file or folder is not where it was looked for."""
+
+
 class FastaxisWarning(UserWarning):
     """Base of all warnings; ``warnings.simplefilter("error", fa.FastaxisWarning)`` makes them errors."""
 

@@ -8,11 +8,34 @@ from collections.abc import Callable
 from pathlib import Path
 from typing import IO
 
-__all__ = ["write_whole"]
+from fastaxis.errors import MissingFileError
+
+__all__ = ["require", "write_whole"]
+
+
+def require(path: Path, fix: str) -> Path:
+    """The path of a file that is there.
+
+    Raises
+    ------
+    MissingFileError : no such file; ``fix`` is what writes one.
+    """
+    if not path.is_file():
+        raise MissingFileError("only a file that was written before can be read", got=f"{path}: no such file", fix=fix)
+    return path
 
 
 def write_whole(path: Path, write: Callable[[IO[bytes]], object]) -> Path:
-    """Write next to the goal and move it there at the end, so that a broken-off run leaves the old file alone."""
+    """Write next to the goal and move it there at the end, so that a broken-off run leaves the old file alone.
+
+    Raises
+    ------
+    MissingFileError : no such folder.
+    """
+    if not path.parent.is_dir():
+        raise MissingFileError(
+            "files are written to a folder that exists", got=f"{path}: no folder {path.parent}", fix=f'"{path.name}"'
+        )
     handle, temporary = tempfile.mkstemp(dir=path.parent, prefix=f".{path.name}.")
     try:
         with os.fdopen(handle, "w+b") as file:

@@ -117,7 +117,7 @@ def nothing(path):
 def test_wrong_files_are_refused(tmp_path, wrong):
     path = tmp_path / "shots.npz"
     wrong(path)
-    with pytest.raises(FileFormatError, match=r"shots.npz: not a whole 'fastaxis exposure 1' file; .*fix: fastaxis"):
+    with pytest.raises(FileFormatError, match=r"shots.npz: not a whole 'fastaxis exposure 1' file; .*fix: fa.camera"):
         load(path)
 
 

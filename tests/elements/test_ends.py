@@ -70,7 +70,7 @@ class TestLaser:
         assert laser.changed(beam=TWO).changed(waist=1 * mm).source.beam.state == H
         assert laser.changed(centre_x=1 * mm).centre == (1 * mm, 0.0)
 
-    @pytest.mark.parametrize(("given", "fix"), [({"power": 5}, "power=5*mW"), ({"waist": 0.8}, "waist=0.8*mm")])
+    @pytest.mark.parametrize(("given", "fix"), [({"power": 5}, "power=5*mW"), ({"waist": 0.15}, "waist=0.15*mm")])
     def test_missing_units_are_cautions(self, given, fix):
         laser = Laser(**{"waist": 0.8 * mm, "power": 5 * mW} | given)
         (caution,) = laser.cautions(532 * nm)

@@ -3,7 +3,9 @@ import math
 import numpy as np
 import pytest
 
-from fastaxis.elements import PatternedPolarizer, PatternedRetarder, Polarizer, QPlate, Retarder
+import fastaxis as fa
+from fastaxis.elements import Mask, PatternedPolarizer, PatternedRetarder, Polarizer, QPlate, Retarder
+from fastaxis.errors import ParameterError
 from fastaxis.maths import Pattern
 from fastaxis.units import um
 
@@ -58,8 +60,40 @@ def test_cells_run_along_plus_y(jones):
 
 
 def test_a_pattern_is_taken_as_it_is():
-    pattern = Pattern(lambda x, y: x)
-    assert PatternedPolarizer(axis=pattern).axis is pattern
+    cells = Pattern(np.eye(2), 1e-3)
+    assert PatternedPolarizer(axis=cells).axis is cells
+    shifted = PatternedPolarizer(axis=2 * Pattern(lambda x, y: x) + 0.5).axis
+    assert shifted(np.array([0.1]), np.array([0.0])) == 0.7
+
+
+@pytest.mark.parametrize(
+    ("make", "says"),
+    [
+        (
+            lambda: PatternedRetarder(fast=lambda x, y: np.log(x)),
+            r"fast gives NaN at 2 of 6 samples \(first at x = -0.1 mm",
+        ),
+        (lambda: PatternedPolarizer(axis=Pattern(lambda x, y: 1 / (x - x))), "axis gives NaN|axis gives inf"),
+        (lambda: Mask(phase=lambda x, y: x / 0), "phase"),
+        (
+            lambda: Mask(transmission=lambda x, y: x / abs(x)),
+            "transmission gives -1 at 2 of 6 samples .*shares of power",
+        ),
+    ],
+)
+def test_a_function_that_gives_no_numbers_is_refused_when_it_is_declared(make, says):
+    with pytest.raises(ParameterError, match=says):
+        make()
+
+
+def test_a_function_that_gives_no_number_somewhere_is_refused_with_the_place():
+    """Right where it is tried out, and NaN 2 mm off the axis, where the beam still has some samples."""
+    plate = PatternedRetarder(fast=lambda x, y: np.sqrt(2e-3 - abs(x)), name="plate")
+    train = fa.Train(wavelength=532e-9).along(fa.Laser(waist=0.8e-3), plate, fa.FreeSpace(0.1), fa.Detector(name="d"))
+    with pytest.raises(
+        ParameterError, match=r"plate: the function fast gives NaN at \d+ of \d+ samples \(first at x = -"
+    ):
+        train.power("d", engine="grid")
 
 
 def test_number_of_a_plain_plate_is_allowed(jones):

@@ -6,11 +6,12 @@ import numpy as np
 import pytest
 import sympy
 
+import fastaxis as fa
 import fastaxis.elements as parts
 from fastaxis import light, units
-from fastaxis.errors import ParameterError, SymbolError
+from fastaxis.errors import ParameterError, SlipWarning, SymbolError
 
-PASTE = vars(units) | vars(light) | {"np": np}
+PASTE = vars(units) | {"fa": fa}
 WAY = {"power": 5e-3}
 SLIPS = [
     # part, what is given, how the message reads before the fix
@@ -60,12 +61,12 @@ SLIPS = [
     (
         "PatternedRetarder",
         {"fast": lambda x, y: math.atan2(y, x)},
-        "fast is a function that does not; fast as a function",
+        "the function fast stops with TypeError (only",
     ),
     (
         "PatternedPolarizer",
         {"axis": lambda x, y: 1.0},
-        "axis is a function that does not; axis as a function takes arrays",
+        "the function axis gives float64 of shape () at places of shape (2, 3); axis as a function",
     ),
     ("PatternedPolarizer", {"axis": np.zeros((2, 2)), "pixel": 8}, "pixel = 8.0; pixel is in metres and 8 m is beyond"),
     ("Rotator", {"angle": 90}, "angle = 90.0; angle is in radians and 90 rad is 14.3 turns"),
@@ -125,7 +126,7 @@ SLIPS = [
         {"waist": 1e-3, "mode": light.Gaussian(1e-3)},
         "waist and mode given; the shape of a laser beam is given",
     ),
-    ("Laser", {"waist": 80}, "waist = 80.0; waist is in metres and 80 m is beyond 1 m: its unit is probably missing"),
+    ("Laser", {"waist": 80}, "waist = 80.0; waist is in metres and 80 m is beyond 0.2 m: its unit is probably missing"),
     ("Laser", {"waist": 1e-3, "power": 0}, "power = 0.0; power must be positive"),
     ("Laser", {"waist": 1e-3, "state": "H"}, "state = 'H'; state is a polarization state or a mixture of states"),
     ("Laser", {"mode": "TEM00"}, "mode = 'TEM00'; mode is a transverse mode"),
@@ -210,6 +211,7 @@ def test_changed_values_are_checked_too():
         ("QPlate", {"q": 0.5, "offset": -12}, "offset=-12*deg"),
         ("Slit", {"width": 1e-3, "angle": 9}, "angle=9*deg"),
         ("Rotator", {"angle": 7}, "angle=7*deg"),
+        ("Laser", {"waist": 1e-3, "state": light.State(5.0)}, "state=fa.linear(5.0*deg)"),
     ],
 )
 def test_a_few_whole_radians_are_a_caution(kind, given, fix):
@@ -219,6 +221,25 @@ def test_a_few_whole_radians_are_a_caution(kind, given, fix):
     assert part.changed(**eval(f"dict({fix})", dict(PASTE))).cautions(5e-7) == []
 
 
+@pytest.mark.parametrize(
+    ("make", "fix"),
+    [
+        (lambda: parts.HalfWavePlate(fast=3), "fast=3*deg"),
+        (lambda: parts.Polarizer(axis=0).changed(axis=-1), "axis=-1*deg"),
+        (lambda: light.State(2), "azimuth=2*deg"),
+        (lambda: light.linear(5), "angle=5*deg"),
+        (lambda: light.elliptical(1, 0.1), "azimuth=1*deg"),
+        (lambda: fa.Mount(12), "zero=12*deg"),
+        (lambda: fa.polarizer_at(6), "axis=6*deg"),
+        (lambda: fa.plate_then_polarizer(slow=7), "slow=7*deg"),
+    ],
+)
+def test_angles_typed_without_a_point_are_a_caution_at_once(make, fix):
+    with pytest.warns(SlipWarning) as found:
+        make()
+    assert [warning.message.fix for warning in found] == [fix]
+
+
 def test_a_few_whole_radians_read_as_a_sentence():
     (caution,) = parts.HalfWavePlate(fast=10, name="hwp").cautions(5e-7)
     assert str(caution) == (
@@ -226,6 +247,6 @@ def test_a_few_whole_radians_read_as_a_sentence():
     )
 
 
-@pytest.mark.parametrize("fast", [0, 1.0, -3, 4.5, sympy.Symbol("a"), math.pi])
+@pytest.mark.parametrize("fast", [0, 1.0, -3.0, 4.5, sympy.Symbol("a"), math.pi])
 def test_other_angles_are_none(fast):
     assert parts.HalfWavePlate(fast=fast).cautions(5e-7) == []

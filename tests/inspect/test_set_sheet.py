@@ -131,7 +131,7 @@ def test_frames_that_cannot_be_worked_out_are_said():
 def test_a_mount_for_a_part_that_does_not_turn():
     with pytest.raises(fa.ParameterError, match="mounts turn the parts hwp, qwp, qp") as caught:
         bench().set_sheet(mounts={"cam": Mount(0)})
-    eval(f"dict({caught.value.fix})", {"Mount": Mount, "deg": deg})  # noqa: S307 - the fix is code to paste
+    eval(f"dict({caught.value.fix})", {"fa": fa, "deg": deg})  # noqa: S307 - the fix is code to paste
 
 
 def test_letters_are_refused():

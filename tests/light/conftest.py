@@ -5,6 +5,7 @@ import numpy
 import pytest
 import sympy
 
+import fastaxis
 from fastaxis import errors, light, units
 
 NAMES = {name: getattr(room, name) for room in (light, units) for name in room.__all__}
@@ -44,7 +45,7 @@ def refuses():
     """
 
     def check(code, text, kind=errors.ParameterError, **more):
-        names = NAMES | {"numpy": numpy, "sympy": sympy} | more
+        names = NAMES | {"numpy": numpy, "sympy": sympy, "fa": fastaxis} | more
         with pytest.raises(kind) as caught:
             eval(code, names)
         assert text in str(caught.value), str(caught.value)

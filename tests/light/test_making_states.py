@@ -53,13 +53,13 @@ def test_labels_say_the_angles():
     [
         ("linear(45)", "linear: angle = 45.0; angle is in radians"),
         ("elliptical(0, 45)", "elliptical: ellipticity = 45.0; ellipticity is in radians"),
-        ("helicity(2)", "helicity: sign = 2; the helicity of circular light is +1 or -1 (fix: helicity(+1))"),
+        ("helicity(2)", "helicity: sign = 2; the helicity of circular light is +1 or -1 (fix: fa.helicity(+1))"),
         ("helicity(True)", "the helicity of circular light is +1 or -1"),
         ("from_jones(0, 0)", "from_jones: (0j, 0j); a state needs a finite field that is not zero"),
         ("from_jones(float('nan'), 1)", "a state needs a finite field that is not zero"),
-        ("from_stokes(0, 0, 0)", "zero Stokes parameters have no state: unpolarized light is a mixture (fix: UNPOLARIZED)"),
-        ("from_stokes(1, 1, 0)", "make partly polarized light with partially_polarized (fix: from_stokes(0.707106781, 0.7"),
-        ("from_stokes(0.3, 0, 0.4)", "polarized to 0.5: it is a mixture (fix: partially_polarized(from_stokes(0.6, 0, 0.8), 0.5))"),
+        ("from_stokes(0, 0, 0)", "zero Stokes parameters have no state: unpolarized light is a mixture (fix: fa.UNPOLARIZED)"),
+        ("from_stokes(1, 1, 0)", "make partly polarized light with partially_polarized (fix: fa.from_stokes(0.707106781, 0.7"),
+        ("from_stokes(0.3, 0, 0.4)", "polarized to 0.5: it is a mixture (fix: fa.partially_polarized(fa.from_stokes(0.6, 0, 0.8), 0.5))"),
         ("from_stokes('S', 0, 0)", "s1 must be one real, finite number or a symbol"),
     ],
 )  # fmt: skip

@@ -44,7 +44,7 @@ def test_symbols_may_be_weights():
     ("code", "text"),
     [
         ("StateMixture(((0.5, H), (0.4, V)))", "mixture: weights add up to 0.9; weights must add up to 1"),
-        ("StateMixture(((0.75, H), (0.75, R)))", "(fix: StateMixture(((0.5, H), (0.5, R))))"),
+        ("StateMixture(((0.75, H), (0.75, R)))", "(fix: fa.StateMixture(((0.5, fa.H), (0.5, fa.R))))"),
         ("StateMixture(((0.5, linear(0.3)), (0.4, V)))", "weights must add up to 1"),
         ("StateMixture(((1.5, H), (-0.5, V)))", "mixture: weights (1.5, -0.5); a weight is a share of power"),
         ("StateMixture((('half', H), (0.5, V)))", "weight must be one real, finite number"),
@@ -59,5 +59,5 @@ def test_refusals(refuses, code, text):
 
 def test_the_fix_of_a_wrong_sum_is_the_scaled_mixture(refuses):
     error = refuses("StateMixture(((0.375, H), (0.125, V)))", "add up to 0.5")
-    assert error.fix == "StateMixture(((0.75, H), (0.25, V)))"
-    assert refuses("StateMixture(((2, H),))", "add up to 2").fix == "StateMixture(((1.0, H),))"
+    assert error.fix == "fa.StateMixture(((0.75, fa.H), (0.25, fa.V)))"
+    assert refuses("StateMixture(((2, H),))", "add up to 2").fix == "fa.StateMixture(((1.0, fa.H),))"

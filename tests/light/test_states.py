@@ -102,7 +102,7 @@ def test_states_travel_between_processes():
         ("State(azimuth=45)", "state: azimuth = 45.0; azimuth is in radians and 45 rad is 7.2 turns"),
         ("State(azimuth='H')", "azimuth must be one real, finite number or a symbol"),
         ("State(azimuth=0, ellipticity=60*deg)", "ellipticity = 1.0472 rad; ellipticity lies between -45 and 45 degrees"),
-        ("State(azimuth=0, ellipticity=-60*deg)", "(fix: ellipticity=-45*deg)"),
+        ("State(azimuth=0, ellipticity=-60*deg)", "(fix: azimuth=90*deg, ellipticity=-30*deg)"),
     ],
 )  # fmt: skip
 def test_refusals(refuses, code, text):

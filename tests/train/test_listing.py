@@ -53,3 +53,10 @@ def test_a_loop_can_be_shown():
     train = fa.Train(wavelength=532 * nm).along(fa.Laser(waist=1 * mm, name="laser"), fa.BeamSplitter(name="bs"))
     train.along("bs.transmitted", fa.Mirror(name="m1"), fa.Mirror(name="m2"), "bs.side")
     assert str(train).count("  m1 ") == 1
+
+
+def test_a_coherent_sum_is_told_by_its_modes_and_nothing_is_cut_off():
+    ring = fa.Term(1.0, fa.LaguerreGauss(p=0, l=1, waist=1 * mm), fa.L)
+    spot = fa.Term(1.0, fa.Gaussian(waist=1 * mm), fa.R)
+    assert "beam sum of Gaussian R and LaguerreGauss L" in lab_parameters(fa.Laser(beam=fa.Beam((spot, ring))))
+    assert "beam sum of 3 modes" in lab_parameters(fa.Laser(beam=fa.Beam((spot, ring, ring))))

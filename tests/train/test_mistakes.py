@@ -103,8 +103,13 @@ MISTAKES = [
     Mistake('train.add(fa.Lens(focal=1.0, name="wavelength"))', "'wavelength' as the name of a part", 'name="wavelength_part"'),
     # Things that are no parts
     Mistake('train.along("pbs.reflected", 500*mm, "cam2")', "float in place of a part; a train takes parts",
-            'train.along("laser", fa.HalfWavePlate(fast=22.5*deg, name="hwp"))'),
-    Mistake("train.add(fa.Lens)", "Lens in place of a part", 'train.along("laser", fa.HalfWavePlate(fast=22.5*deg, name="hwp"))'),
+            "fa.FreeSpace(0.5)"),
+    Mistake("train.add(fa.Lens)", "Lens in place of a part", 'fa.HalfWavePlate(fast=22.5*deg, name="hwp")'),
+    Mistake('train.join("bs", "cam2")', "'bs': no part of this name; the train has the parts laser", '"pbs"'),
+    Mistake('train.join("zzz", "cam2")', "'zzz': no part of this name; the train has the parts laser", "print(train)"),
+    Mistake('train.add(fa.Lens(focal=1.0, name="a/b"))', "'a/b' as the name of a part; a name is a word without dots, slashes",
+            'name="a_b"'),
+    Mistake("train.with_changes([1])", "changes = [1]; changes are written", '{"wavelength": 633*nm}', fa.ParameterError),
     # A splitter in the middle of a path
     Mistake('train.along("mirror", "pbs.reflected", "cam2")', "pbs.reflected: 2 ways on from this face",
             'train.along("mirror", "pbs.reflected")'),

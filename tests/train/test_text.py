@@ -20,7 +20,7 @@ def angles():
     return numbers | st.builds(lambda x, n: x * alpha + sympy.pi / n, st.integers(-3, 3), st.integers(1, 9))
 
 
-def lengths(least=1e-6, most=0.5):
+def lengths(least=1e-6, most=0.2):
     return st.floats(least, most)
 
 

@@ -12,7 +12,7 @@ from fastaxis.camera.coding import FORMAT, facts, facts_from, setting_from_json,
 from fastaxis.camera.exposure import Exposure
 from fastaxis.engines.field import Guard
 from fastaxis.errors import FileFormatError
-from fastaxis.files import write_whole
+from fastaxis.files import require, write_whole
 
 __all__ = ["load", "save"]
 
@@ -43,7 +43,7 @@ def load(path: str | Path) -> Exposure:
     Raises
     ------
     FileFormatError : not such a file, or a damaged one.
-    FileNotFoundError : no file.
+    MissingFileError : no file.
 
     Examples
     --------
@@ -55,6 +55,7 @@ def load(path: str | Path) -> Exposure:
     """
     path = Path(path)
     _check_ending(path)
+    require(path, 'fa.camera.save(shots, "shots.npz")')
     try:
         with path.open("rb") as file, np.load(file, allow_pickle=False) as arrays:
             about = facts_from(str(arrays["about"]))
@@ -63,7 +64,7 @@ def load(path: str | Path) -> Exposure:
         raise FileFormatError(
             "an exposure is read from the .npz file it was saved to",
             got=f"{path.name}: not a whole '{FORMAT}' file",
-            fix='fastaxis.camera.save(shots, "shots.npz")',
+            fix='fa.camera.save(shots, "shots.npz")',
         ) from problem
 
 

@@ -73,7 +73,7 @@ class Setting:
             raise ParameterError(
                 "a setting is either a state that passes or the laws of an analyzer",
                 got=f"{self.label}: {len(self.laws)} laws and a state",
-                fix="Setting('H', state=fa.H)",
+                fix="fa.Setting('H', state=fa.H)",
             )
         for law in self.laws:
             _check_uniform(self.label, law)
@@ -210,8 +210,8 @@ def plate_then_polarizer(
             fix="fast=45*deg",
         )
     named, angle = ("fast", fast) if slow is None else ("slow", slow)
-    angle = checks.angle("plate_then_polarizer", named, angle)
     checks.degrees_missed("plate_then_polarizer", named, angle)
+    angle = checks.angle("plate_then_polarizer", named, angle)
     half = checks.angle("plate_then_polarizer", "retardance", retardance) / 2
     plate = AxisLaw(Amplitude(1.0, -half), Amplitude(1.0, half), angle if named == "fast" else angle - math.pi / 2)
     label = label or f"plate {named} {_degrees(angle)}, polarizer {_degrees(axis)}"
@@ -219,8 +219,8 @@ def plate_then_polarizer(
 
 
 def _polarizer(axis: Scalar, extinction: Scalar, transmission: Scalar) -> AxisLaw:
-    axis = checks.angle("polarizer", "axis", axis)
     checks.degrees_missed("polarizer", "axis", axis)
+    axis = checks.angle("polarizer", "axis", axis)
     transmission = checks.fraction("polarizer", "transmission", transmission, fix="transmission=0.9")
     leak = 0.0 if extinction == math.inf else transmission / _extinction(extinction)
     return AxisLaw(Amplitude(transmission), Amplitude(leak), axis)

@@ -5,7 +5,8 @@ from __future__ import annotations
 from collections.abc import Mapping
 from dataclasses import dataclass, fields, replace
 from difflib import get_close_matches
-from typing import Any, ClassVar
+from math import pi
+from typing import Any, ClassVar, Self
 
 from fastaxis import checks
 from fastaxis.errors import FastaxisWarning, ParameterError
@@ -17,6 +18,8 @@ __all__ = ["Element", "ThroughElement"]
 
 # Of these a few whole radians were meant as degrees.
 ANGLES = ("fast", "slow", "axis", "offset", "angle", "retardance", "roll")
+TYPED = set(ANGLES) - {"retardance"}  # 2 degrees would be no plate, 2 radians is one
+TURNS = (*ANGLES, "theta", "azimuth", "rotation")
 Passages = Mapping[tuple[str, str], Passage]
 
 
@@ -36,6 +39,30 @@ class Element:
     faces: ClassVar[tuple[str, ...]] = ()
     entry: ClassVar[str | None] = None  # face met by default
     exit: ClassVar[str | None] = None  # face left by default
+
+    def __new__(cls, *_: Any, **given: Any) -> Self:
+        """Parameters are looked at by name before they are taken, so that a wrong one is told with the right ones."""
+        unknown = sorted(given.keys() - {f.name for f in fields(cls) if f.init})
+        if unknown:
+            raise cls._no_parameter(given.get("name") or cls.__name__, unknown[0], given[unknown[0]])
+        for angle in given.keys() & TYPED:
+            # Of larger ones the train warns, which knows the part by its name.
+            if not isinstance(given[angle], int) or abs(given[angle]) <= pi:
+                checks.degrees_missed(given.get("name") or cls.__name__, angle, given[angle])
+        return super().__new__(cls)
+
+    @classmethod
+    def _no_parameter(cls, label: str, wrong: str, value: Any) -> ParameterError:
+        known = [f.name for f in fields(cls) if f.init and f.name != "name"]
+        # An angle is an angle, however a part calls it.
+        angles = [name for name in known if name in ANGLES and name != "retardance"] if wrong in TURNS else []
+        likely = (*get_close_matches(wrong, known, 1), *angles, *known, "name")[0]
+        plain = value if isinstance(value, int | float | complex | str | tuple) else None
+        return ParameterError(
+            f"{cls.__name__} has the parameters {', '.join(known) or '(none)'}",
+            got=f"{label}: no parameter '{wrong}'",
+            fix=f"{likely}={plain!r}",
+        )
 
     @property
     def label(self) -> str:

@@ -77,12 +77,12 @@ class Laser(Element):
             waist_at=checks.number(self.label, "waist_at", self.waist_at, fix="waist_at=200*mm"),
         )
         if self.waist is not None:
-            self._keep(waist=checks.length(self.label, "waist", self.waist, most=1.0, fix=f"waist={self.waist}*mm"))
+            self._keep(waist=light.modes.base.waist(self.label, "waist", self.waist))
         elif self.waist_at != 0 or self.centre != (0, 0):
             raise ParameterError(
                 "waist_at and centre place the Gaussian of waist=; a mode has its own",
                 got=f"{self.label}: waist_at = {self.waist_at}, centre = {self.centre}",
-                fix="mode=Gaussian(waist=0.8*mm, waist_at=200*mm)",
+                fix="mode=fa.Gaussian(waist=0.8*mm, waist_at=200*mm)",
             )
         self._check_state()
         self._check_shape()
@@ -111,7 +111,7 @@ class Laser(Element):
             raise ParameterError(
                 "state is a polarization state or a mixture of states",
                 got=f"{self.label}: state = {self.state!r}",
-                fix="state=H",
+                fix="state=fa.H",
             )
 
     def _check_shape(self) -> None:
@@ -119,13 +119,13 @@ class Laser(Element):
             raise ParameterError(
                 "mode is a transverse mode",
                 got=f"{self.label}: mode = {self.mode!r}",
-                fix="mode=LaguerreGauss(0, 1, 0.8*mm)",
+                fix="mode=fa.LaguerreGauss(0, 1, 0.8*mm)",
             )
         if self.beam is not None and not isinstance(self.beam, light.Beam):
             raise ParameterError(
                 "beam is a Beam of Terms",
                 got=f"{self.label}: beam = {self.beam!r}",
-                fix="beam=Beam((Term(1, Gaussian(0.8*mm), H),))",
+                fix="beam=fa.Beam((fa.Term(1, fa.Gaussian(0.8*mm), fa.H),))",
             )
         if self.incoherent is not None:
             self._keep(incoherent=tuple(self._part(part) for part in self.incoherent))
@@ -147,7 +147,7 @@ class Laser(Element):
             raise ParameterError(
                 "each incoherent part is (weight, Beam) or (weight, Beam, wavelength)",
                 got=f"{self.label}: part {part!r}",
-                fix="incoherent=[(1.0, Beam((Term(1.0, Gaussian(0.8*mm), H),)))]",
+                fix="incoherent=[(1.0, fa.Beam((fa.Term(1.0, fa.Gaussian(0.8*mm), fa.H),)))]",
             )
         wavelength = rest[0] if rest else None
         if wavelength is not None:
@@ -201,4 +201,12 @@ class Laser(Element):
                     fix=f"power={self.power:g}*mW",
                 )
             )
-        return found
+        return found + self._whole_radians()
+
+    def _whole_radians(self) -> list[FastaxisWarning]:
+        if not isinstance(self.state, light.State):
+            return []
+        azimuth, ellipticity = self.state.azimuth, self.state.ellipticity
+        found = checks.whole_radians(self.label, "state.azimuth", azimuth)
+        fix = f"state=fa.elliptical({azimuth}*deg, {ellipticity})" if ellipticity else f"state=fa.linear({azimuth}*deg)"
+        return [SlipWarning(one.rule, got=one.got, fix=fix) for one in found]

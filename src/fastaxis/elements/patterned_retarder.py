@@ -62,7 +62,7 @@ class PatternedRetarder(ThroughElement):
             raise ParameterError(
                 "a plate has its axis named once, as fast= or as slow=",
                 got=f"{self.label}: {'neither' if self.fast is None else 'both'} of fast and slow given",
-                fix="fast=lambda x, y: np.arctan2(y, x) / 2",
+                fix="fast=lambda x, y: 90*deg * x / mm",
             )
         for angle in ("fast", "slow", "retardance"):
             if (given := getattr(self, angle)) is not None:

@@ -31,6 +31,10 @@ class Mount:
     ------
     ParameterError : a sense other than 1 and -1; another side; a bare angle in degrees.
 
+    Warns
+    -----
+    SlipWarning : a whole number of radians, which was probably meant in degrees.
+
     Examples
     --------
     >>> from fastaxis.units import deg
@@ -47,6 +51,7 @@ class Mount:
     seen_from: str = "receiver"
 
     def __post_init__(self) -> None:
+        checks.degrees_missed("mount", "zero", self.zero)
         object.__setattr__(self, "zero", checks.angle("mount", "zero", self.zero))
         if self.sense not in (1, -1):
             raise ParameterError(

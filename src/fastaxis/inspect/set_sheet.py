@@ -197,7 +197,7 @@ def _check_mounts(train: Any, mounts: Mapping[str, Mount]) -> None:
                 if turning
                 else "no part of this train is turned in a mount",
                 got=f"mount for '{name}'",
-                fix=f'mounts={{"{(turning or ["hwp"])[0]}": Mount(zero=0*deg)}}',
+                fix=f'mounts={{"{(turning or ["hwp"])[0]}": fa.Mount(zero=0*deg)}}',
             )
 
 

@@ -26,6 +26,7 @@ def linear(angle: Scalar, *, label: str = "") -> State:
     >>> linear(30*deg).label
     '30°'
     """
+    checks.degrees_missed("linear", "angle", angle)
     angle = checks.angle("linear", "angle", angle)
     return State(angle, label=label or _degrees(angle))
 
@@ -37,6 +38,7 @@ def elliptical(azimuth: Scalar, ellipticity: Scalar, *, label: str = "") -> Stat
     >>> elliptical(25*deg, -12*deg).stokes.round(4)
     array([ 1.    ,  0.5872,  0.6998, -0.4067])
     """
+    checks.degrees_missed("elliptical", "azimuth", azimuth)
     azimuth = checks.angle("elliptical", "azimuth", azimuth)
     ellipticity = checks.angle("elliptical", "ellipticity", ellipticity)
     return State(azimuth, ellipticity, label=label or f"{_degrees(azimuth)}, {_degrees(ellipticity)}")
@@ -50,7 +52,7 @@ def helicity(sign: int) -> State:
     """
     if isinstance(sign, bool) or sign not in (1, -1):
         raise ParameterError(
-            "the helicity of circular light is +1 or -1", got=f"helicity: sign = {sign!r}", fix="helicity(+1)"
+            "the helicity of circular light is +1 or -1", got=f"helicity: sign = {sign!r}", fix="fa.helicity(+1)"
         )
     return L if sign == 1 else R
 
@@ -66,13 +68,13 @@ def from_jones(ex: complex, ey: complex, *, label: str = "") -> State:
             raise SymbolError(
                 "a Jones vector is taken in numbers; a state with symbols is declared by its ellipse",
                 got=f"from_jones: {name} = {value}",
-                fix='elliptical(sympy.Symbol("a", real=True), 0)',
+                fix='fa.elliptical(sympy.Symbol("a", real=True), 0)',
             )
     ex, ey = complex(ex), complex(ey)
     length = math.hypot(abs(ex), abs(ey))
     if not math.isfinite(length) or length == 0:
         raise ParameterError(
-            "a state needs a finite field that is not zero", got=f"from_jones: ({ex}, {ey})", fix="from_jones(1, 1j)"
+            "a state needs a finite field that is not zero", got=f"from_jones: ({ex}, {ey})", fix="fa.from_jones(1, 1j)"
         )
     ex, ey = ex / length, ey / length
     s1, s2 = abs(ex) ** 2 - abs(ey) ** 2, 2 * (ex.conjugate() * ey).real
@@ -90,14 +92,14 @@ def from_stokes(s1: float, s2: float, s3: float, *, label: str = "") -> State:
     True
     """
     s1, s2, s3 = (
-        checks.number("from_stokes", n, v, fix="from_stokes(0, 0.6, 0.8)")
+        checks.number("from_stokes", n, v, fix="fa.from_stokes(0, 0.6, 0.8)")
         for n, v in (("s1", s1), ("s2", s2), ("s3", s3))
     )
     if free_symbols((s1, s2, s3)):
         raise SymbolError(
             "a point on the sphere is taken in numbers; a state with symbols is declared by its ellipse",
             got=f"from_stokes: ({s1}, {s2}, {s3})",
-            fix='elliptical(sympy.Symbol("a", real=True), 0)',
+            fix='fa.elliptical(sympy.Symbol("a", real=True), 0)',
         )
     s1, s2, s3 = float(s1), float(s2), float(s3)
     degree = math.hypot(s1, s2, s3)
@@ -110,14 +112,14 @@ def _off_the_sphere(s1: float, s2: float, s3: float, degree: float) -> Parameter
     got = f"from_stokes: ({s1:g}, {s2:g}, {s3:g})"
     if degree == 0:
         return ParameterError(
-            "zero Stokes parameters have no state: unpolarized light is a mixture", got=got, fix="UNPOLARIZED"
+            "zero Stokes parameters have no state: unpolarized light is a mixture", got=got, fix="fa.UNPOLARIZED"
         )
-    pure = f"from_stokes({s1 / degree:.9g}, {s2 / degree:.9g}, {s3 / degree:.9g})"
+    pure = f"fa.from_stokes({s1 / degree:.9g}, {s2 / degree:.9g}, {s3 / degree:.9g})"
     if degree < 1:
         return ParameterError(
             f"a pure state has s1^2 + s2^2 + s3^2 = 1, this light is polarized to {degree:.6g}: it is a mixture",
             got=got,
-            fix=f"partially_polarized({pure}, {degree:.9g})",
+            fix=f"fa.partially_polarized({pure}, {degree:.9g})",
         )
     return ParameterError(
         "s1^2 + s2^2 + s3^2 is at most 1: divide by S0, and make partly polarized light with partially_polarized",

@@ -87,16 +87,16 @@ def _normalized(parts: tuple[tuple[Scalar, State], ...]) -> str:
     except (TypeError, ValueError, ZeroDivisionError):
         shares = []
     return (
-        f"StateMixture(({', '.join(shares)}{',' * (len(shares) == 1)}))"
+        f"fa.StateMixture(({', '.join(shares)}{',' * (len(shares) == 1)}))"
         if shares
-        else "StateMixture(((0.5, H), (0.5, V)))"
+        else "fa.StateMixture(((0.5, fa.H), (0.5, fa.V)))"
     )
 
 
 def _code(state: State) -> str:
     if state.label in {"H", "V", "D", "A", "R", "L"}:
-        return state.label
-    return f"elliptical({state.azimuth}, {state.ellipticity})"
+        return f"fa.{state.label}"
+    return f"fa.elliptical({state.azimuth}, {state.ellipticity})"
 
 
 UNPOLARIZED = StateMixture(((0.5, H), (0.5, V)), "unpolarized")

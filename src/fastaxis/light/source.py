@@ -69,7 +69,7 @@ class Source:
 
     def __post_init__(self) -> None:
         object.__setattr__(self, "components", tuple(self.components))
-        fix = "make_source(Gaussian(waist=0.8*mm), H, power=5*mW)"
+        fix = "fa.make_source(fa.Gaussian(waist=0.8*mm), fa.H, power=5*mW)"
         check_weights("source", tuple(component.weight for component in self.components), fix=fix)
         object.__setattr__(self, "power", checks.length("source", "power", self.power, fix="power=5*mW"))
 
@@ -102,7 +102,8 @@ def make_source(
     >>> [float(1e3 * watts) for watts in make_source(Gaussian(waist=0.8*mm), UNPOLARIZED, power=5*mW).powers]
     [2.5, 2.5]
     """
-    chosen_modes = _weighted(modes, "modes", "((0.9, Gaussian(waist=0.8*mm)), (0.1, LaguerreGauss(0, 1, 0.8*mm)))")
+    fix = "((0.9, fa.Gaussian(waist=0.8*mm)), (0.1, fa.LaguerreGauss(0, 1, 0.8*mm)))"
+    chosen_modes = _weighted(modes, "modes", fix)
     states = state.parts if isinstance(state, StateMixture) else ((1.0, state),)
     beams = [(wm * ws, Beam((Term(1, mode, pure),))) for (wm, mode), (ws, pure) in product(chosen_modes, states)]
     return Source(_on_lines(beams, lines), power)

@@ -52,6 +52,7 @@ class State:
 
     def __post_init__(self) -> None:
         part = self.label or "state"
+        checks.degrees_missed(part, "azimuth", self.azimuth)
         for angle in ("azimuth", "ellipticity", "phase"):
             object.__setattr__(self, angle, checks.angle(part, angle, getattr(self, angle)))
         # 1e-12: degrees times pi/180 carries three roundings.
@@ -59,8 +60,20 @@ class State:
             raise ParameterError(
                 "ellipticity lies between -45 and 45 degrees: at 45 degrees the ellipse is a circle",
                 got=f"{part}: ellipticity = {self.ellipticity:g} rad",
-                fix=f"ellipticity={math.copysign(45, self.ellipticity):g}*deg",
+                fix=self._folded(),
             )
+
+    def _folded(self) -> str:
+        """The same ellipse with its axes told long and short: beyond 45 degrees they have changed places."""
+        if self.ellipticity == round(self.ellipticity) and abs(self.ellipticity) <= 45:
+            return f"ellipticity={self.ellipticity:g}*deg"  # whole radians were meant as degrees
+        beyond = math.remainder(self.ellipticity, math.pi)
+        azimuth = self.azimuth
+        if abs(beyond) > EIGHTH:
+            beyond = math.copysign(math.pi / 2, beyond) - beyond
+            azimuth = azimuth + math.pi / 2
+        shown = f"({azimuth})" if is_symbolic(azimuth) else f"{math.degrees(math.remainder(azimuth, math.pi)):.9g}*deg"
+        return f"azimuth={shown}, ellipticity={math.degrees(beyond):.9g}*deg"
 
     @property
     def symbols(self) -> set[Any]:

@@ -44,7 +44,7 @@ class Term:
             raise ParameterError(
                 "a term of a coherent sum has a pure state; a mixture of states makes a source of several components",
                 got=f"term: state = {getattr(self.state, 'label', None) or type(self.state).__name__}",
-                fix="make_source(Gaussian(waist=0.8*mm), UNPOLARIZED, power=5*mW)",
+                fix="fa.make_source(fa.Gaussian(waist=0.8*mm), fa.UNPOLARIZED, power=5*mW)",
             )
         if is_symbolic(self.amplitude):
             return
@@ -56,7 +56,7 @@ class Term:
             raise ParameterError(
                 "an amplitude is one finite complex number or a sympy expression",
                 got=f"term: amplitude = {self.amplitude!r}",
-                fix="Term(0.6 + 0.8j, Gaussian(waist=0.8*mm), H)",
+                fix="fa.Term(0.6 + 0.8j, fa.Gaussian(waist=0.8*mm), fa.H)",
             )
         object.__setattr__(self, "amplitude", amplitude)
 
@@ -73,7 +73,7 @@ class Term:
             raise SymbolError(
                 "numbers can be had from amplitudes without symbols only: put a number for each symbol",
                 got=f"term: amplitude = {self.amplitude}",
-                fix="Term(1, Gaussian(waist=0.8*mm), H)",
+                fix="fa.Term(1, fa.Gaussian(waist=0.8*mm), fa.H)",
             )
         return complex(self.amplitude)
 
@@ -109,7 +109,7 @@ class Beam:
             raise ParameterError(
                 "a beam is a sum of one or more terms",
                 got=f"beam: terms = {terms}",
-                fix="Beam((Term(1, Gaussian(waist=0.8*mm), H),))",
+                fix="fa.Beam((fa.Term(1, fa.Gaussian(waist=0.8*mm), fa.H),))",
             )
         object.__setattr__(self, "terms", terms)
 
@@ -135,7 +135,7 @@ class Beam:
             raise ParameterError(
                 "the terms of a beam must not cancel: what is left has no direction to scale",
                 got=f"beam: power {total:.3g} from {len(self.terms)} terms",
-                fix="Beam((Term(1, Gaussian(waist=0.8*mm), H),))",
+                fix="fa.Beam((fa.Term(1, fa.Gaussian(waist=0.8*mm), fa.H),))",
             )
         return total
 

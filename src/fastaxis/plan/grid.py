@@ -8,6 +8,9 @@ from fastaxis.errors import ParameterError
 
 __all__ = ["Grid"]
 
+MOST = 32768  # along a side
+BYTES = 48  # a sample at the peak: three planes of complex numbers
+
 
 @dataclass(frozen=True)
 class Grid:
@@ -15,12 +18,12 @@ class Grid:
 
     Parameters
     ----------
-    samples : number along a side, even, 16 or more.
+    samples : number along a side, even, 16 to 32768.
     window : side of the sampled square [m].
 
     Raises
     ------
-    ParameterError : an odd or tiny number of samples; a window that is not a positive length.
+    ParameterError : an odd, tiny or huge number of samples; a window that is not a positive length.
 
     Examples
     --------
@@ -37,6 +40,12 @@ class Grid:
                 "samples is an even number along a side, 16 or more",
                 got=f"Grid: samples = {self.samples}",
                 fix="fa.Grid(samples=1024, window=10*mm)",
+            )
+        if self.samples > MOST:
+            raise ParameterError(
+                f"samples is at most {MOST} along a side",
+                got=f"Grid: samples = {self.samples} takes {BYTES * self.samples**2 / 1e9:.3g} GB",
+                fix="fa.Grid(samples=4096, window=10*mm)",
             )
         if not 0 < self.window < 100:
             raise ParameterError(

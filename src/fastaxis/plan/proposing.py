@@ -8,7 +8,7 @@ from dataclasses import replace
 from itertools import takewhile
 from typing import Any
 
-from fastaxis.errors import SamplingError, SamplingWarning, caution
+from fastaxis.errors import ParameterError, SamplingError, SamplingWarning, caution
 from fastaxis.laws import AxisLaw, CircularLaw, ScalarLaw, TravelLaw
 from fastaxis.plan.grid import Grid
 from fastaxis.plan.sampling import Plane, Sampling, follow
@@ -148,12 +148,17 @@ def sampling_for(steps: Steps, spread: Spread, wavelength: float, grid: Grid | N
 
     Raises
     ------
+    ParameterError : something that is no Grid.
     SamplingError : the grid cannot carry the light; the message names one that can.
 
     Warns
     -----
     SamplingWarning : the grid is tight; errors of about 1e-4 of the peak may show.
     """
+    if grid is not None and not isinstance(grid, Grid):
+        raise ParameterError(
+            "a grid set by hand is a Grid", got=f"grid = {grid!r:.60}", fix="grid=fa.Grid(samples=1024, window=10*mm)"
+        )
     if grid is None:
         sampling = propose(steps, spread, wavelength)
     else:

@@ -9,7 +9,18 @@ from fastaxis.elements.base import Element
 from fastaxis.errors import ParameterError, WiringError
 from fastaxis.train.ports import Elements, closest, named
 
-__all__ = ["changed_elements"]
+__all__ = ["changed_elements", "refuse_unpaired"]
+
+
+def refuse_unpaired(changes: object) -> None:
+    """A ParameterError for changes that are no mapping from names to values."""
+    if isinstance(changes, Mapping) and all(isinstance(key, str) for key in changes):
+        return
+    raise ParameterError(
+        'changes are written {"part.parameter": value}',
+        got=f"changes = {changes!r:.60}",
+        fix='{"wavelength": 633*nm}',
+    )
 
 
 def _known(element: Element) -> list[str]:

@@ -52,7 +52,8 @@ def _directed(
         port, verb, fix = f"{into_name}.{in_face}", "enter", join_code(f"{out_name}.{out_face}", likely or "cam.in")
     else:
         likely = _other_out_port(elements, joints, wavelength, into_name)
-        port, verb, fix = f"{out_name}.{out_face}", "leave", join_code(likely or "laser.out", f"{into_name}.{in_face}")
+        fix = join_code(likely, f"{into_name}.{in_face}") if likely else 'train.add(fa.BeamSplitter(name="splitter"))'
+        port, verb = f"{out_name}.{out_face}", "leave"
     swapped = _swapped(elements, joints, wavelength, out, into)
     raise WiringError(
         f"light cannot {verb} there; join(out_port, in_port) names the port it leaves first",

@@ -17,6 +17,8 @@ ANGLES = frozenset({
     "phase_rp", "phase_rs", "phase_s", "phase_t", "phase_tp", "phase_ts", "retardance", "roll", "slow", "wedge",
     "x", "y",  # the angles by which a wedge turns the beam
 })  # fmt: skip
+LONGEST = 60  # characters of one value in a listing
+MANY_TERMS = 2  # modes named one by one
 LENGTHS = frozenset({
     "centre", "design", "distance", "focal", "height", "inner", "outer", "pixel", "radius", "waist", "waist_at",
     "width",
@@ -66,12 +68,21 @@ def _object(value: Any) -> str:
     """A state or mode: its label if it has one, else its kind and values."""
     if label := getattr(value, "label", ""):
         return str(label)
+    if hasattr(value, "terms"):
+        return f"sum of {_terms(value.terms)}"
     told = (f"{f.name} {_lab(f.name, getattr(value, f.name))}" for f in fields(value) if f.name != "label")
     return f"{type(value).__name__}({', '.join(told)})"
 
 
+def _terms(terms: Any) -> str:
+    """A coherent sum by the kinds and states of its modes, or by their number where there are many."""
+    if len(terms) > MANY_TERMS:
+        return f"{len(terms)} modes"
+    return " and ".join(f"{type(term.mode).__name__} {getattr(term.state, 'label', '')}".strip() for term in terms)
+
+
 def _short(text: str) -> str:
-    return text if len(text) <= 40 else text[:37] + "..."
+    return text if len(text) <= LONGEST else text[: LONGEST - 3] + "..."
 
 
 def _told(element: Element) -> Iterator[tuple[str, Any]]:

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import re
 from dataclasses import replace
 from itertools import count
 
@@ -10,6 +11,8 @@ from fastaxis.errors import WiringError
 from fastaxis.train.ports import Elements
 
 __all__ = ["free_name", "with_name"]
+
+FORBIDDEN = re.compile(r'[./\\:"*?<>|\x00-\x1f]')
 
 
 def free_name(elements: Elements, stem: str) -> str:
@@ -24,7 +27,7 @@ def with_name(elements: Elements, element: object) -> Element:
         raise WiringError(
             "a train takes parts, and names of parts it already has",
             got=f"{kind} in place of a part",
-            fix='train.along("laser", fa.HalfWavePlate(fast=22.5*deg, name="hwp"))',
+            fix=_part_meant(element),
         )
     if not element.name:
         return replace(element, name=free_name(elements, element.stem))
@@ -40,11 +43,19 @@ def with_name(elements: Elements, element: object) -> Element:
     return element
 
 
+def _part_meant(thing: object) -> str:
+    """A length was meant as free space; beyond 2 m its unit is missing."""
+    if isinstance(thing, int | float) and thing > 0:
+        return f"fa.FreeSpace({thing:g}{'*mm' if thing > 2 else ''})"
+    return 'fa.HalfWavePlate(fast=22.5*deg, name="hwp")'
+
+
 def _check_name(name: str) -> None:
-    if "." in name or name != name.strip() or '"' in name or name == "wavelength":
-        plain = name.replace(".", "_").replace('"', "").strip().replace("wavelength", "wavelength_part")
+    if FORBIDDEN.search(name) or name != name.strip() or name == "wavelength":
+        plain = FORBIDDEN.sub("_", name.replace('"', "")).strip().replace("wavelength", "wavelength_part")
         raise WiringError(
-            "a name is a word without dots and quotes, and not 'wavelength': ports and changes are written name.face",
-            got=f"'{name}' as the name of a part",
+            "a name is a word without dots, slashes and quotes, and not 'wavelength': ports and changes are written "
+            "name.face, and files are called by it",
+            got=f"{name!r} as the name of a part",
             fix=f'name="{plain}"',
         )

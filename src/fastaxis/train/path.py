@@ -11,7 +11,7 @@ from fastaxis.maths import Scalar
 from fastaxis.train.graph import Joints
 from fastaxis.train.joining import checked_joint
 from fastaxis.train.naming import with_name
-from fastaxis.train.ports import Elements, read_port
+from fastaxis.train.ports import Elements, out_faces, read_port
 
 __all__ = ["joined_along"]
 
@@ -30,9 +30,22 @@ def joined_along(
             parts[named.name] = named
             stops.append(named.name)
     for index, (here, there) in enumerate(pairwise(stops)):
+        if here not in elements:
+            _refuse_end(parts, wavelength, here)
         out_port = here if index == 0 else _way_out(parts, joints, wavelength, stops, index)
         joints = (*joints, checked_joint(parts, joints, wavelength, out_port, there))
     return parts, joints
+
+
+def _refuse_end(elements: Elements, wavelength: Scalar, here: str) -> None:
+    """A WiringError for a new part that others come after though light does not leave it."""
+    part = elements[read_port(elements, here)[0]]
+    if not out_faces(part, wavelength):
+        raise WiringError(
+            "light cannot leave there: a camera, a detector or a dump comes last in a path, or behind a splitter",
+            got=f"{here} ({type(part).__name__})",
+            fix='fa.BeamSplitter(name="splitter")',
+        )
 
 
 def _way_out(elements: Elements, joints: Joints, wavelength: Scalar, stops: list[str], index: int) -> str:

@@ -10,7 +10,7 @@ from fastaxis.elements.base import Element
 from fastaxis.errors import WiringError
 from fastaxis.maths import Scalar
 
-__all__ = ["Elements", "Way", "closest", "in_faces", "named", "out_faces", "read_port", "split"]
+__all__ = ["Elements", "Way", "alike", "closest", "in_faces", "named", "out_faces", "read_port", "split"]
 
 Elements: TypeAlias = Mapping[str, Element]
 Way: TypeAlias = Literal["in", "out"]
@@ -26,12 +26,17 @@ def split(port: str) -> tuple[str, str]:
     return name, face
 
 
-def closest(word: str, known: Iterable[str]) -> str | None:
-    """The known word that was most likely meant; None when there is none at all."""
-    words = list(known)
-    folded = {w.lower(): w for w in reversed(words)}
+def alike(word: str, known: Iterable[str]) -> str | None:
+    """The known word that was most likely meant; None when none looks like it."""
+    folded = {w.lower(): w for w in reversed(list(known))}
     match = get_close_matches(word.lower(), folded, n=1, cutoff=0.4)
-    return folded[match[0]] if match else (words[0] if words else None)
+    return folded[match[0]] if match else None
+
+
+def closest(word: str, known: Iterable[str]) -> str | None:
+    """The known word that was most likely meant, else the first; None when there is none at all."""
+    words = list(known)
+    return alike(word, words) or (words[0] if words else None)
 
 
 def in_faces(element: Element, wavelength: Scalar) -> tuple[str, ...]:
@@ -54,11 +59,12 @@ def named(elements: Elements, name: str) -> Element:
     """The part of this name, or a WiringError with the name that was likely meant."""
     if name in elements:
         return elements[name]
-    likely = closest(name, elements)
+    likely = alike(name, elements)
+    instead = "print(train)" if elements else f'train.add(fa.FreeSpace(100*mm, name="{name}"))'
     raise WiringError(
         f"the train has the parts {', '.join(elements)}" if elements else "the train has no parts yet",
         got=f"'{name}': no part of this name",
-        fix=f'"{likely}"' if likely else f'train.add(fa.FreeSpace(100*mm, name="{name}"))',
+        fix=f'"{likely}"' if likely else instead,
     )
 
 

@@ -45,6 +45,8 @@ def _no_constant(word: str) -> NoReturn:
 
 
 def _parsed(text: str) -> dict[str, Any]:
+    if not isinstance(text, str):
+        raise refused("a saved train is JSON text", f"{text!r:.40} in place of text", "train.to_text()")
     try:
         data = json.loads(text, parse_constant=_no_constant)
     except (json.JSONDecodeError, RecursionError) as error:

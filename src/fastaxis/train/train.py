@@ -11,12 +11,12 @@ from fastaxis.checks import wavelength as checked_wavelength
 from fastaxis.elements.base import Element
 from fastaxis.elements.camera import Camera
 from fastaxis.errors import caution
-from fastaxis.files import write_whole
+from fastaxis.files import require, write_whole
 from fastaxis.loader import late
 from fastaxis.maths import Scalar
 from fastaxis.train import validate as checks
 from fastaxis.train.both_ways import joined_both_ways, looped
-from fastaxis.train.changes import changed_elements
+from fastaxis.train.changes import changed_elements, refuse_unpaired
 from fastaxis.train.collected import state_of
 from fastaxis.train.graph import Joints, Node, build, is_source, lit_nodes, port_of, source_nodes
 from fastaxis.train.joining import checked_joint
@@ -142,6 +142,7 @@ class Train:
         changes : "name.parameter" -> new value; "wavelength" for the wavelength; "name.centre_x" for one half of
             a centre. The checks of the part apply to the new value.
         """
+        refuse_unpaired(changes)
         rest = {key: value for key, value in changes.items() if key != "wavelength"}
         return self._with(changed_elements(self.elements, rest), changes.get("wavelength", self.wavelength))
 
@@ -200,7 +201,7 @@ class Train:
     @classmethod
     def load(cls, path: str | PathLike[str], kinds: Iterable[type[Element]] = ()) -> Self:
         """The train of a file written by :meth:`save`."""
-        return cls.from_text(decoded(Path(path).read_bytes(), str(path)), kinds)
+        return cls.from_text(decoded(require(Path(path), 'train.save("bench.json")').read_bytes(), str(path)), kinds)
 
     def _with(self, elements: dict[str, Element], wavelength: Scalar) -> Self:
         copy = type(self)(wavelength=wavelength, name=self.name)

@@ -143,12 +143,12 @@ def cameras_of_both_parities(wrong):
 
 @pair("bare degrees", "hwp", "medium")
 def three_radians(wrong):
-    return line(fa.HalfWavePlate(fast=3 if wrong else 3 * deg, name="hwp"), METER)
+    return line(fa.HalfWavePlate(fast=3.0 if wrong else 3 * deg, name="hwp"), METER)
 
 
 @pair("bare degrees", "laser", "medium")
 def azimuth_of_two_radians(wrong):
-    return line(METER, state=fa.linear(2 if wrong else 2 * deg))
+    return line(METER, state=fa.State(2.0 if wrong else 2 * deg))
 
 
 @pair("mirror polarization", "gold", "medium")

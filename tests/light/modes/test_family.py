@@ -215,8 +215,11 @@ def test_the_message_names_the_symbols_of_the_centre_too(refuses):
     [
         ("Gaussian(waist=0)", "Gaussian: waist = 0.0; waist must be positive (fix: waist=0.8*mm)"),
         ("Gaussian(waist=-1e-3)", "Gaussian: waist = -0.001; waist must be positive"),
-        ("Gaussian(waist=5)", "5 m is beyond 1 m: its unit is probably missing (fix: waist=5*mm)"),
-        ("LaguerreGauss(p=0, l=1, waist=500)", "500 m is beyond 1 m: its unit is probably missing (fix: waist=500*mm)"),
+        ("Gaussian(waist=5)", "5 m is beyond 0.2 m: its unit is probably missing (fix: waist=5*mm)"),
+        (
+            "LaguerreGauss(p=0, l=1, waist=500)",
+            "500 m is beyond 0.2 m: its unit is probably missing (fix: waist=0.8*mm)",
+        ),
         ("Gaussian(waist=float('inf'))", "waist must be one real, finite number or a symbol (fix: waist=0.8*mm)"),
         ("Gaussian(waist='1 mm')", "Gaussian: waist = '1 mm'; waist must be one real, finite number"),
         ("Gaussian(waist=0.001, waist_at=None)", "Gaussian: waist_at = None"),

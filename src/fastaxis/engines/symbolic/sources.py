@@ -73,7 +73,7 @@ def _overlap(one: Any, other: Any, place: Place) -> Poly:
         raise SymbolError(
             "the power of a sum of modes that overlap is known as a number only; with letters, use modes of one waist",
             got=f"{type(one).__name__} beside {type(other).__name__}",
-            fix="LaguerreGauss(p=0, l=1, waist=w)",
+            fix="fa.LaguerreGauss(p=0, l=1, waist=w)",
         )
     return maths.number(one.overlap(other, float(place.wavelength)))
 
@@ -95,7 +95,7 @@ def wave_of(mode: Any) -> Wave:
         raise SymbolError(
             "forms start from a centred Gaussian, Laguerre-Gauss, Hermite-Gauss, plane or flat-top mode",
             got=f"the mode {type(mode).__name__}",
-            fix="mode=Gaussian(waist=0.8*mm)",
+            fix="mode=fa.Gaussian(waist=0.8*mm)",
         )
     if isinstance(mode, FlatTop):
         return StillWave(_flat_top(exactly(mode.radius), mode.order))
@@ -115,7 +115,7 @@ def _whole(*orders: Any) -> tuple[Any, ...]:
             raise SymbolError(
                 "the orders of a mode are whole numbers in a form: its polynomial has that many terms",
                 got=f"a mode of order {order}",
-                fix="mode=LaguerreGauss(p=0, l=1, waist=w)",
+                fix="mode=fa.LaguerreGauss(p=0, l=1, waist=w)",
             )
     return tuple(sp.Integer(int(order)) for order in orders)
 

@@ -45,8 +45,8 @@ def _slip(element: str, check: str, *, got: str, rule: str, fix: str, severity: 
 
 def _cautions(element: Element, wavelength: float) -> Iterator[Finding]:
     for caution in element.cautions(wavelength):
-        # Plates off their design wavelength are told with the error it makes.
-        if getattr(element, "design", None) is None:
+        # Plates off their design wavelength are told with the error it makes, angles of whole radians with all others.
+        if getattr(element, "design", None) is None and "is in radians" not in caution.rule:
             yield from_message(caution, severity=Severity.MEDIUM, check="slip", element=element.name)
 
 

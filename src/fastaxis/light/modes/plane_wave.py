@@ -78,6 +78,6 @@ class PlaneWave:
             raise ParameterError(
                 "a plane wave has no end, so its overlap with another mode is not a number: give it an edge",
                 got=f"PlaneWave: area = {self.area:g} m^2 beside {type(other).__name__}",
-                fix=f"FlatTop(radius={math.sqrt(self.area / math.pi):.6g})",
+                fix=f"fa.FlatTop(radius={math.sqrt(self.area / math.pi):.6g})",
             )
         return 1 + 0j

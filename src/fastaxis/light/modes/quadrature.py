@@ -37,7 +37,7 @@ def over_disc(pair: tuple[Mode, Mode], wavelength: float, *, centre: tuple[Any, 
         f"the overlap of two modes must settle within {NODES[-1]} nodes: one is too fine, or has too many fringes, for "
         "the other; light without a fixed phase needs no overlap",
         got=" beside ".join(type(mode).__name__ for mode in pair),
-        fix="make_source(((0.5, FlatTop(radius=1*mm)), (0.5, Gaussian(waist=0.8*mm))), H, power=5*mW)",
+        fix="fa.make_source(((0.5, fa.FlatTop(radius=1*mm)), (0.5, fa.Gaussian(waist=0.8*mm))), fa.H, power=5*mW)",
     )
 
 

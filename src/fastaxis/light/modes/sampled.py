@@ -52,7 +52,7 @@ class SampledMode:
     symbols: ClassVar[frozenset[Any]] = frozenset()
 
     def __post_init__(self) -> None:
-        fix = "array=numpy.ones((8, 8))"
+        fix = "array=[[1.0] * 8] * 8"
         try:
             array = np.array(self.array, dtype=complex)
         except (TypeError, ValueError):
@@ -64,7 +64,7 @@ class SampledMode:
                 "samples form a (ny, nx) array of at least 4 by 4", got=f"SampledMode: shape = {array.shape}", fix=fix
             )
         if not np.isfinite(array).all() or not array.any():
-            raise ParameterError("samples are finite and not all zero", got="SampledMode: array", fix=fix)
+            raise ParameterError("samples are finite and not all zero", got=f"SampledMode: {_unfit(array)}", fix=fix)
         pixel = checks.length("SampledMode", "pixel", self.pixel, most=0.1, fix="pixel=10*um")
         object.__setattr__(self, "pixel", float(pixel))
         array /= np.linalg.norm(array) * self.pixel
@@ -136,3 +136,12 @@ class SampledMode:
             return other.overlap(self, wavelength).conjugate()
         values = other.amplitude(*np.meshgrid(self.raster.x, self.raster.y), wavelength)
         return complex(np.sum(self.array.conj() * values) * self.pixel**2)
+
+
+def _unfit(array: Complexes) -> str:
+    """What samples are when they are no light."""
+    bad = np.argwhere(~np.isfinite(array))
+    if not len(bad):
+        return "all zero"
+    row, column = bad[0]
+    return f"{len(bad)} of {array.size} are not finite (first in row {row}, column {column})"

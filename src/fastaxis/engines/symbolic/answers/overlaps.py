@@ -42,7 +42,7 @@ def charge_share(field: Field, charge: Any) -> Poly:
         raise SymbolError(
             "charges are counted in a beam of one function of r",
             got=f"{len(field.pieces)} functions of r",
-            fix="mode=Gaussian(waist=0.8*mm)",
+            fix="mode=fa.Gaussian(waist=0.8*mm)",
         )
     return _summed(field, lambda wave, own: _around(own + wave.total - charge))
 
@@ -73,7 +73,7 @@ def _flat(wave: Any, field: Field) -> ModeWave:
         raise SymbolError(
             "overlaps have a closed form between Laguerre-Gauss modes in their waists",
             got=f"a {type(wave).__name__}",
-            fix="form.share(LaguerreGauss(p=0, l=1, waist=w))",
+            fix="form.share(fa.LaguerreGauss(p=0, l=1, waist=w))",
         )
     return wave
 

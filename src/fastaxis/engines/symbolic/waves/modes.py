@@ -64,7 +64,7 @@ class ModeWave:
             raise SymbolError(
                 "a spiral or patterned plate on a Hermite-Gauss beam has no closed form behind free space",
                 got=f"HG{self.orders[0]}{self.orders[1]} with charge {charge}",
-                fix="mode=LaguerreGauss(p=0, l=1, waist=0.8*mm)",
+                fix="mode=fa.LaguerreGauss(p=0, l=1, waist=0.8*mm)",
             )
         return TwistedWave(self, charge, section)
 
