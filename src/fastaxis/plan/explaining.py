@@ -19,7 +19,8 @@ __all__ = ["explain"]
 
 def _said(law: StepLaw) -> str:
     if isinstance(law, TravelLaw):
-        return f"ABCD ({law.a:.4g}, {law.b * 1e3:.4g} mm; {law.c:.4g}/m, {law.d:.4g}), path {law.path * 1e3:.4g} mm"
+        bend = f"{law.c:.4g}/m" if law.c else "0"
+        return f"ABCD ({law.a:.4g}, {law.b * 1e3:.4g} mm; {bend}, {law.d:.4g}), path {law.path * 1e3:.4g} mm"
     if isinstance(law, AxisLaw):
         return f"axis law, q = {law.order:g}" if law.order else "patterned axis law"
     if isinstance(law, ScalarLaw):

@@ -27,16 +27,26 @@ def in_degrees(angle: Any) -> str:
 
 
 def in_lab_units(length: Any) -> str:
-    """A length in m, mm, µm or nm without trailing zeros.
+    """A length in m, mm, µm or nm without trailing zeros; beams and stops are spoken of in mm down to a tenth.
 
-    >>> in_lab_units(0.5), in_lab_units(3.45e-6)
-    ('500 mm', '3.45 µm')
+    >>> in_lab_units(0.5), in_lab_units(0.8e-3), in_lab_units(3.45e-6)
+    ('500 mm', '0.8 mm', '3.45 µm')
     """
     if is_symbolic(length):
         return str(length)
+    if abs(length) * (1 + 1e-9) >= 1e-4 and abs(length) < 1e-3:
+        return f"{length * 1e3:.4g} mm"
     shown = readable(length, "m", digits=4)
     number, unit = shown.split(" ")
     return f"{float(number):g} {unit}"
+
+
+def _place(place: Any) -> str:
+    """Both coordinates of a place in one unit."""
+    if any(is_symbolic(x) for x in place):
+        return ", ".join(in_lab_units(x) for x in place)
+    unit, factor = ("mm", 1e3) if max(map(abs, place)) * (1 + 1e-9) >= 1e-4 else ("µm", 1e6)
+    return f"({', '.join(f'{x * factor:.4g}' for x in place)}) {unit}"
 
 
 def _plain(value: Any) -> str:
@@ -84,7 +94,7 @@ WORDS: dict[str, tuple[str, Callable[[Any], str]]] = {
     "state": ("", lambda state: str(getattr(state, "label", ""))),
     "fold": ("fold", str),
     "orientation": ("", str),
-    "centre": ("at", lambda place: ", ".join(in_lab_units(x) for x in place)),
+    "centre": ("at", _place),
 }
 NOT_SHOWN: dict[
     tuple[str, str], float | str

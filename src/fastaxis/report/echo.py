@@ -64,7 +64,11 @@ def _waist(value: Scalar) -> str:
 
 
 def _place(value: tuple[Scalar, Scalar]) -> str:
-    return f"({length(value[0])}, {length(value[1])})"
+    if is_symbolic(value[0]) or is_symbolic(value[1]):
+        return f"({length(value[0])}, {length(value[1])})"
+    # Both in one unit: "0 m" beside micrometres reads like a mistake.
+    unit, factor = ("mm", 1e3) if max(map(abs, value)) * (1 + 1e-9) >= 1e-4 else ("µm", 1e6)
+    return f"({value[0] * factor:.4g}, {value[1] * factor:.4g}) {unit}"
 
 
 def _extinction(value: Scalar) -> str:
