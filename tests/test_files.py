@@ -1,9 +1,14 @@
 """Files are written whole or not at all."""
 
 import os
+import pickle
+from pathlib import Path
 
 import pytest
 
+import fastaxis as fa
+from fastaxis.camera.bundle import load
+from fastaxis.errors import MissingFileError
 from fastaxis.files import write_whole
 
 
@@ -24,6 +29,22 @@ def test_a_broken_off_write_leaves_the_old_file_and_no_rubbish(tmp_path):
         write_whole(goal, fail)
     assert goal.read_bytes() == b"old"
     assert list(tmp_path.iterdir()) == [goal]
+
+
+def test_a_folder_that_is_not_there_is_named_and_no_temporary_file():
+    with pytest.raises(MissingFileError) as refusal:
+        write_whole(Path("/nonexist/x.npz"), lambda file: None)
+    assert str(refusal.value) == (
+        '/nonexist/x.npz: no folder /nonexist; files are written to a folder that exists (fix: "x.npz")'
+    )
+    assert isinstance(refusal.value, FileNotFoundError)
+    assert pickle.loads(pickle.dumps(refusal.value)).fix == '"x.npz"'
+
+
+@pytest.mark.parametrize("read", [load, fa.Train.load])
+def test_a_file_that_is_not_there_is_told_in_a_sentence(read):
+    with pytest.raises(MissingFileError, match=r"^/nonexist/x.npz: no such file; .*fix: .*save\("):
+        read("/nonexist/x.npz")
 
 
 @pytest.mark.skipif(os.name != "posix", reason="permissions by umask")

@@ -35,7 +35,8 @@ LARGEST_ANGLE = 4 * math.pi  # two turns: a bare 22.5, 45 or 90 lies beyond
 
 
 def _got(part: str, parameter: str, value: object) -> str:
-    return f"{part}: {parameter} = {value!r}" if isinstance(value, str) else f"{part}: {parameter} = {value}"
+    shown = repr(value) if isinstance(value, str) else str(value)
+    return f"{part}: {parameter} = {type(value).__name__ if chr(10) in shown else shown}"
 
 
 def number(part: str, parameter: str, value: Any, *, fix: str) -> Scalar:

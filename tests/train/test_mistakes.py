@@ -101,6 +101,9 @@ MISTAKES = [
     Mistake('train.add(fa.Lens(focal=1.0, name="arm.lens"))', "'arm.lens' as the name of a part; a name is a word without dots",
             'name="arm_lens"'),
     Mistake('train.add(fa.Lens(focal=1.0, name="wavelength"))', "'wavelength' as the name of a part", 'name="wavelength_part"'),
+    # Kinds in files
+    Mistake("""fa.Train.from_text(train.to_text().replace('"Laser"', '"os.system"'))""", "laser: unknown kind 'os.system'",
+            '"kind": "FreeSpace"', fa.FileFormatError),
     # Things that are no parts
     Mistake('train.along("pbs.reflected", 500*mm, "cam2")', "float in place of a part; a train takes parts",
             "fa.FreeSpace(0.5)"),
@@ -159,7 +162,8 @@ def test_the_fix_can_be_pasted_in_place_of_the_mistake(mistake):
 
 @pytest.mark.parametrize("mistake", [m for m in MISTAKES if m not in FIXES], ids=lambda m: m.id)
 def test_a_fix_that_is_a_word_is_valid_code(mistake):
-    code = mistake.fix if not mistake.fix.startswith("name=") else f"dict({mistake.fix})"
+    code = f"dict({mistake.fix})" if mistake.fix.startswith("name=") else mistake.fix
+    code = f"{{{code}}}" if code.startswith('"kind": ') else code
     compile(code, "fix", "eval")
 
 

@@ -55,6 +55,10 @@ def expose(
     angles mean the same whichever way the camera is mounted. ``shots.upright`` sets the picture upright again.
     A detector gives frames of one pixel that hold all the power.
 
+    On a grid, an edge scatters a little light to steeper angles than the samples hold: it is in ``train.power``, in a
+    detector's frames and in ``shots.guard.discarded``, but in no picture of a camera. Above 1 % there is a
+    SamplingWarning that names a finer grid.
+
     Parameters
     ----------
     train : the bench.

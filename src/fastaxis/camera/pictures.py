@@ -128,7 +128,7 @@ def read_pictures(path: str | Path) -> Pictures:
         raise FileFormatError(
             "watts are read from pictures written with their scale",
             got=f"{path.name}: no frame of a '{FORMAT}'",
-            fix='fastaxis.camera.save_tiff(shots, "shots.tiff")',
+            fix='fa.camera.save_tiff(shots, "shots.tiff")',
         ) from problem
 
 

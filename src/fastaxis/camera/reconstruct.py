@@ -194,5 +194,5 @@ def _check_steps(angles: NDArray[np.float64]) -> None:
         raise ParameterError(
             "the harmonics need 5 or more angles in equal steps over whole half turns",
             got=f"plate_harmonics: {len(angles)} angles",
-            fix="fast=np.arange(8) * 180*deg / 8",
+            fix="fast=[k * 22.5*deg for k in range(8)]",
         )

@@ -5,13 +5,14 @@ from __future__ import annotations
 import math
 from collections.abc import Iterable, Mapping
 from dataclasses import MISSING, fields, is_dataclass
+from difflib import get_close_matches
 from typing import Any
 
 import numpy as np
 
 from fastaxis.errors import FastaxisError, FileFormatError
 from fastaxis.maths import is_symbolic
-from fastaxis.train.ports import alike, closest
+from fastaxis.train.ports import closest
 from fastaxis.train.text_expressions import read_expression, write_expression
 
 __all__ = ["Kinds", "build", "known_kind", "read_value", "refused", "write_fields", "write_value"]
@@ -139,7 +140,7 @@ def known_kind(name: Any, where: str, kinds: Kinds) -> type:
     raise refused(
         "a file holds kinds of part and of light that fastaxis knows",
         f"{where}: unknown kind {name!r}",
-        f'"kind": "{alike(str(name), kinds) or "FreeSpace"}"',
+        f'"kind": "{(*get_close_matches(str(name), kinds, 1), "FreeSpace")[0]}"',
     )
 
 
