@@ -1,3 +1,4 @@
+import numpy as np
 import pytest
 import sympy as sp
 
@@ -119,3 +120,20 @@ def test_a_letter_for_the_analyzer_is_said_to_be_one(bench, run):
     clash = run("derive", bench(SWITCH), "--setting", "alpha").err
     assert "caution: alpha is a letter of the bench too: the analyzer turns with it" in clash
     assert run("derive", bench(SWITCH), "--setting", "R").err == ""
+
+
+METER = """\
+train = fa.Train(wavelength=532*nm)
+train.along(fa.Laser(waist=1*mm, state=fa.linear(20*deg), name="laser"), fa.QuarterWavePlate(fast=0*deg, name="qwp"),
+            fa.FreeSpace(1*m), fa.Detector(name="meter"))
+"""
+
+
+def test_at_a_detector_the_powers_that_arrive_confirm_a_form(bench, run, monkeypatch):
+    ran = run("derive", bench(METER))
+    assert ran.code == 0
+    assert "checked: S1 to S3 over S0 within" in ran.out
+    assert "engine=" not in ran.out
+    # H is sent and worked out numerically as V: that must be noticed.
+    monkeypatch.setattr("fastaxis.engines.uniform.UniformField.total_stokes", np.array([1.0, -1.0, 0.0, 0.0]))
+    assert run("derive", bench(METER)).code == 4
