@@ -15,7 +15,7 @@ from fastaxis.maths import free_symbols
 
 __all__ = ["Knobs", "read_knobs"]
 
-EXAMPLE = 'train.sweep({"hwp.fast": np.radians(range(0, 180, 5))}, "cam", fa.SIX_STATES)'
+EXAMPLE = 'train.sweep({"hwp.fast": [k * 5*deg for k in range(36)]}, "cam", fa.SIX_STATES)'
 
 
 @dataclass(frozen=True, eq=False)
