@@ -2,6 +2,9 @@
 
 Each entry states a train, asks it for a form, and puts beside it the number the formula gives at one set of values and
 how closely the numeric laws agree with it at random ones.
+
+Look for: frames that are one squared cosine, lobes that know only differences of angles, leaks that start in second
+order. ``fastaxis derive derivations.py --setting 30deg`` shows the detuned q-plate alone.
 """
 
 from __future__ import annotations
@@ -271,6 +274,8 @@ def faraday():
     yield made
     yield from _vector(made)
 
+
+train = bench(fa.QPlate(q=q, offset=alpha, retardance=delta, name="qp"))  # for fastaxis derive
 
 ENTRIES = (
     Entry("A retarder", "laser H, retarder (fast axis α, retardance δ)",
