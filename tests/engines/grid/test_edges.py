@@ -20,7 +20,7 @@ from fastaxis.elements import (
 from fastaxis.engines import propagate
 from fastaxis.engines.grid.combining import combined
 from fastaxis.errors import SamplingError, SamplingWarning
-from fastaxis.light import D, Gaussian, H, HermiteGauss, Raster
+from fastaxis.light import D, Gaussian, H, HermiteGauss, Raster, SampledMode
 from fastaxis.plan import Grid, make_plan
 from fastaxis.train import Train
 from fastaxis.units import deg, mm, nm, um
@@ -162,6 +162,16 @@ def test_a_small_stop_in_a_wide_beam_sets_the_pitch(gap):
         assert pitch < 1 * mm / 100  # the light outside the hole is never needed
         exact = exp(-2 * (0.1 / 12) ** 2) * (1 - exp(-2 / 144))
         assert train.power("cam") == pytest.approx(exact, rel=1e-3)
+
+
+def test_sampled_light_is_held_whole_though_a_small_stop_follows():
+    """Its samples are scaled to unit power, which a window of the size of the hole would do to the wrong part."""
+    x = (np.arange(256) - 127.5) * 20 * um
+    samples = np.exp(-(x[None, :] ** 2 + x[:, None] ** 2) / WAIST**2)
+    found = arrive(SampledMode(samples, pixel=20 * um), Aperture(radius=0.3 * mm, centre=(10 * um, 0)))
+    whole = arrive(ROUND, Aperture(radius=0.3 * mm, centre=(10 * um, 0)))
+    assert found.power == pytest.approx(whole.power, rel=2e-3)
+    assert found.light.window > 2 * whole.light.window
 
 
 def test_a_stop_narrower_than_its_samples_is_refused_with_the_pitch():
