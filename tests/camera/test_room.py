@@ -29,3 +29,15 @@ def test_the_limit_is_the_memory_there_is(monkeypatch):
 def test_where_the_system_tells_no_memory_nothing_is_refused(monkeypatch):
     monkeypatch.setattr(room, "memory", lambda: None)
     room.check_room("cam", [(10**6, 10**6)])
+
+
+def test_more_frames_at_a_time_than_fit_are_refused_and_one_at_a_time_is_offered(shots, monkeypatch, tmp_path):
+    needed = len(shots) * 8 * shots.stokes[0].size
+    monkeypatch.setattr(room, "memory", lambda: needed)
+    assert len(shots.frames) == len(shots)
+    monkeypatch.setattr(room, "memory", lambda: needed - 1)
+    with pytest.raises(fa.ParameterError, match=r"cam: 6 frames of .* shots.frame\(k\)"):
+        _ = shots.frames
+    monkeypatch.setattr(room, "memory", lambda: needed // 4 - 1)
+    with pytest.raises(fa.ParameterError, match="save_pngs"):
+        shots.save_tiff(tmp_path / "shots.tiff")

@@ -12,6 +12,7 @@ from numpy.typing import NDArray
 
 from fastaxis.camera.mixing import mixed
 from fastaxis.camera.mounting import Mounting
+from fastaxis.camera.room import check_frames
 from fastaxis.camera.rows import Row, row
 from fastaxis.camera.settings import Setting, as_setting, weight_matrix
 from fastaxis.conventions import View, stamp
@@ -86,6 +87,13 @@ class Exposure:
     @property
     def frames(self) -> NDArray[np.float64]:
         """All frames [W per pixel], shape (n, ny, nx); made anew at each call, ``frame(k)`` makes one at a time."""
+        check_frames(
+            self.target,
+            len(self),
+            self.stokes.shape[1:],
+            size=self.stokes.itemsize,
+            fix="for k in range(len(shots)): shots.frame(k)",
+        )
         return self._mixed(self.weights)
 
     def frame(self, which: int | str | Setting | State) -> NDArray[np.float64]:

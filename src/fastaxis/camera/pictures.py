@@ -13,6 +13,7 @@ from PIL import Image, PngImagePlugin, UnidentifiedImageError
 
 from fastaxis.camera.coding import FORMAT, facts, facts_from, to_text
 from fastaxis.camera.exposure import Exposure
+from fastaxis.camera.room import check_frames
 from fastaxis.errors import FileFormatError
 from fastaxis.files import write_whole
 
@@ -85,6 +86,7 @@ def save_tiff(shots: Exposure, path: str | Path) -> Path:
     Raises
     ------
     FileFormatError : another ending.
+    ParameterError : more pages than memory holds.
     """
     path = Path(path)
     if path.suffix.lower() not in _TIFF:
@@ -93,6 +95,8 @@ def save_tiff(shots: Exposure, path: str | Path) -> Path:
             got=f"{path.name}: ends in '{path.suffix}'",
             fix=f'"{path.stem or "shots"}.tiff"',
         )
+    # Pages are written together: 16 bits a pixel.
+    check_frames(shots.target, len(shots), shots.stokes.shape[1:], size=2, fix='shots.save_pngs("frames")')
     scale = _scale(shots)
     first, *rest = (_image(shots, k, scale) for k in range(len(shots)))
     about = {_DESCRIPTION: to_text(_about(shots, scale))}

@@ -8,7 +8,7 @@ from math import isqrt
 
 from fastaxis.errors import ParameterError
 
-__all__ = ["check_room", "memory"]
+__all__ = ["check_frames", "check_room", "memory"]
 
 IMAGES = 8  # of 8 bytes a pixel: four Stokes images, and as much again while they are collected and oriented
 
@@ -40,4 +40,28 @@ def check_room(name: str, shapes: Iterable[tuple[int, int]]) -> None:
             "the pictures of a sensor fit into the memory there is",
             got=f"{name}: about {needed / 1e9:.3g} GB for its pictures, {there / 1e9:.3g} GB there",
             fix=f"shape=({side}, {side})",
+        )
+
+
+def check_frames(name: str, count: int, shape: tuple[int, int], *, size: int, fix: str) -> None:
+    """Refuse to hold more frames at a time than fit.
+
+    Parameters
+    ----------
+    name : of the camera, for the message.
+    count : of frames.
+    shape : (ny, nx) of each.
+    size : bytes a pixel.
+    fix : what to do instead.
+
+    Raises
+    ------
+    ParameterError : they need more memory than there is.
+    """
+    there, needed = memory(), count * size * shape[0] * shape[1]
+    if there is not None and needed > there:
+        raise ParameterError(
+            "frames held at one time fit into the memory there is",
+            got=f"{name}: {count} frames of {needed / 1e9:.3g} GB in all, {there / 1e9:.3g} GB there",
+            fix=fix,
         )

@@ -1,0 +1,1 @@
+"""Figures, cards and tables for people."""
