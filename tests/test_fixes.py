@@ -145,6 +145,12 @@ def pasted(slip, train):
         return eval(code_of(refusal.value.fix), {"fa": fa, "train": train, "shots": shots, **UNITS})
 
 
+@pytest.fixture(autouse=True)
+def _in_an_empty_folder(tmp_path, monkeypatch):
+    """A fix may write a file."""
+    monkeypatch.chdir(tmp_path)
+
+
 @pytest.mark.parametrize("slip", SLIPS, ids=range(len(SLIPS)))
 def test_a_fix_runs_where_it_is_pasted(slip):
     answer = pasted(slip, bench())

@@ -13,7 +13,9 @@ NUMBERS = np.array([0.7 - 0.2j, 0.4 + 0.9j])
 
 TRAINS = {
     "angles": [[QuarterWavePlate(fast=a), QPlate(q=0.5, retardance=2.0), FreeSpace(0.4)] for a in (0.1, 0.8)],
-    "a harmonic dark in one": [[HalfWavePlate(fast=a), QPlate(q=1), FreeSpace(0.3), Polarizer(axis=a)] for a in (0, 0.4)],
+    "a harmonic dark in one": [
+        [HalfWavePlate(fast=a), QPlate(q=1), FreeSpace(0.3), Polarizer(axis=a)] for a in (0, 0.4)
+    ],
     "different light": [[Aperture(radius=a), FreeSpace(0.2)] for a in (0.3 * mm, 0.5 * mm)],
     "cut and not": [[*parts, FreeSpace(0.5), QPlate(q=0.5), FreeSpace(0.2)] for parts in ([QPlate(q=0.5)], [])],
     "in focus": [[QPlate(q=q), Lens(focal=0.3), FreeSpace(0.3)] for q in (0.5, -1)],

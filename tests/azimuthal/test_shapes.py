@@ -39,7 +39,9 @@ def test_a_function_of_rounding_stays_small():
 def test_turning_a_plate_asks_for_no_other_travel(arrive, monkeypatch):
     def through(angle):
         parts = [HalfWavePlate(fast=angle), QPlate(q=0.5, retardance=2.0), FreeSpace(0.2), QPlate(q=1), FreeSpace(0.3)]
-        return arrive(Gaussian(waist=0.5 * mm), *parts, state=elliptical(0.1, 0.2)).at(np.array([0.3 * mm]), np.zeros(1))
+        return arrive(Gaussian(waist=0.5 * mm), *parts, state=elliptical(0.1, 0.2)).at(
+            np.array([0.3 * mm]), np.zeros(1)
+        )
 
     through(10 * deg)
     known = len(shapes._known)

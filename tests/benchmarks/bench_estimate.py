@@ -48,7 +48,10 @@ def main():
             (
                 name,
                 f"{(true <= estimate).sum()} of {count}",
-                *(f"{value:.1e}" for value in (np.median(true), true.max(), np.median(estimate), (true / estimate).max())),
+                *(
+                    f"{value:.1e}"
+                    for value in (np.median(true), true.max(), np.median(estimate), (true / estimate).max())
+                ),
                 f"{time.perf_counter() - begin:.0f} s",
             )
         )

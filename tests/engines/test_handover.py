@@ -13,8 +13,18 @@ from fastaxis.units import deg, mm, nm, um
 RASTER = Raster(30 * um, (48, 50))
 PARTS = {
     "q-plates": [fa.QPlate(q=0.5), fa.FreeSpace(0.4), fa.QPlate(q=0.5, centre=(0.1 * mm, 0)), fa.FreeSpace(0.2)],
-    "spiral": [fa.SpiralPlate(charge=1), fa.FreeSpace(0.3), fa.Lens(focal=0.3, centre=(0.1 * mm, 0)), fa.FreeSpace(0.3)],
-    "hole": [fa.Aperture(radius=0.4 * mm), fa.FreeSpace(0.4), fa.Lens(focal=0.3, centre=(0, 0.1 * mm)), fa.FreeSpace(0.2)],
+    "spiral": [
+        fa.SpiralPlate(charge=1),
+        fa.FreeSpace(0.3),
+        fa.Lens(focal=0.3, centre=(0.1 * mm, 0)),
+        fa.FreeSpace(0.3),
+    ],
+    "hole": [
+        fa.Aperture(radius=0.4 * mm),
+        fa.FreeSpace(0.4),
+        fa.Lens(focal=0.3, centre=(0, 0.1 * mm)),
+        fa.FreeSpace(0.2),
+    ],
 }
 
 pytestmark = pytest.mark.filterwarnings("ignore::fastaxis.errors.SamplingWarning")
