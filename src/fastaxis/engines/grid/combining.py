@@ -47,7 +47,7 @@ class GridSum:
         """The sum as sampled light."""
         light = _sum([field.light for field in self.fields], self.coefficients)
         # Each field fills as many waves as it needs; how many the sum fills is found anew.
-        light = replace(light, filled=None, beyond=self._beyond())
+        light = replace(light, filled=None, waves=None, beyond=self._beyond())
         return GridField(light, self.guard, self.fields[0].grid)
 
     def _beyond(self) -> float:

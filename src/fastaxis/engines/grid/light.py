@@ -8,6 +8,7 @@ from typing import Any, TypeAlias
 import numpy as np
 from numpy.typing import NDArray
 
+from fastaxis.engines.grid.waves import Waves
 from fastaxis.engines.grid.workers import strips
 
 __all__ = ["GridLight", "Samples", "axis", "curve", "inner", "multiply_separable"]
@@ -36,6 +37,7 @@ class GridLight:
     beyond : light that edges scatter beyond the band of the samples, as a share of what the samples hold.
     band_power : largest share of the power met near the edge of the band of the samples.
     filled : waves along a side that hold the light, if known from the travel it comes from; None if not.
+    waves : these, if they are kept.
     """
 
     samples: Samples
@@ -49,6 +51,7 @@ class GridLight:
     beyond: float = 0.0
     band_power: float = 0.0
     filled: int | None = None
+    waves: Waves | None = None
 
     @property
     def count(self) -> int:
@@ -83,7 +86,7 @@ class GridLight:
             return self
         chirp = curve(self.x, self.curvature - curvature, self.wavelength)
         multiply_separable(self.samples, chirp)
-        return replace(self, curvature=curvature)
+        return replace(self, curvature=curvature, waves=None)
 
 
 def axis(count: int, pitch: float) -> NDArray[np.float64]:
