@@ -49,6 +49,10 @@ def test_steps_in_common_end_at_the_first_change(changes, count):
     assert len(plan().steps) == 5
 
 
+def test_light_of_another_precision_is_not_shared():
+    assert shared_steps(plan(), plan().with_precision("single")) == 0
+
+
 def test_other_engines_are_not_stopped_on_the_way():
     train = fa.Train(wavelength=633 * nm).along(
         fa.Laser(mode=fa.PlaneWave(area=1e-6)), fa.HalfWavePlate(fast=0), fa.Camera(pixel=1e-5, name="cam")

@@ -19,6 +19,14 @@ def test_a_plan_says_what_was_fused_which_engine_and_the_samples(bench):
     assert text.splitlines()[-1].startswith("signs: exp(-iwt)")
 
 
+def test_a_plan_lists_its_parts_before_and_after_the_passes(bench):
+    parts = [HalfWavePlate(fast=0.1), QPlate(q=0.5, name="qp"), FreeSpace(0.3), Lens(focal=0.3), Mirror()]
+    lines = str(make_plan(bench(*parts), "cam", engine="grid")).splitlines()
+    assert lines[1] == "  before: plate1 | qp | space1 | lens1 | mirror1 (2 steps)"
+    assert "  after:  plate1 | qp | mirror1 | space1 + lens1 | mirror1" in lines
+    assert "before" not in str(make_plan(bench(QPlate(q=0.5)), "cam", engine="grid"))
+
+
 def test_scalar_parts_and_reflections_are_named(bench):
     parts = [SpiralPlate(charge=-2), Wedge(x=1 * mrad), Aperture(radius=2 * mm), FreeSpace(0.1), Mirror()]
     text = str(make_plan(bench(*parts), "cam", engine="grid"))

@@ -29,7 +29,9 @@ def shared_steps(one: Plan, other: Plan) -> int:
 
 def _shared(one: Branch, other: Branch) -> int:
     a, b = one.sampling, other.sampling
-    if a is None or b is None or (a.grid, a.taper, a.planes[0]) != (b.grid, b.taper, b.planes[0]):
+    if a is None or b is None:
+        return 0
+    if (a.grid, a.taper, a.precision, a.planes[0]) != (b.grid, b.taper, b.precision, b.planes[0]):
         return 0
     if (one.beam, one.wavelength, one.power) != (other.beam, other.wavelength, other.power):
         return 0

@@ -3,7 +3,9 @@
 from __future__ import annotations
 
 import math
+import textwrap
 from collections.abc import Iterator
+from itertools import groupby
 from typing import TYPE_CHECKING
 
 from fastaxis.conventions import stamp
@@ -12,9 +14,11 @@ from fastaxis.laws import AxisLaw, Flip, ScalarLaw, TravelLaw, Turn
 if TYPE_CHECKING:
     from fastaxis.plan.plan import Branch, Plan
     from fastaxis.plan.sampling import Plane
-    from fastaxis.plan.steps import StepLaw
+    from fastaxis.plan.steps import StepLaw, Steps
 
 __all__ = ["explain"]
+
+WIDTH = 110  # of the lists of parts
 
 
 def _said(law: StepLaw) -> str:
@@ -68,10 +72,21 @@ def _branch(branch: Branch) -> Iterator[str]:
             yield f"{line}; {_sampled(sampling.planes[place])}"
 
 
+def _listed(when: str, steps: Steps) -> list[str]:
+    """The parts in the order of the steps, those made one joined by +; one that takes several in a row named once."""
+    runs = [(name, sum(1 for _ in run)) for name, run in groupby(" + ".join(step.names) for step in steps)]
+    parts = [name if count == 1 else f"{name} ({count} steps)" for name, count in runs]
+    text = f"{when + ':':8}{' | '.join(parts)}"
+    return textwrap.wrap(text, WIDTH, initial_indent="  ", subsequent_indent=" " * 10, break_on_hyphens=False)
+
+
 def explain(plan: Plan) -> str:
-    """The plan as text: engine and why, what was fused, and the steps with their samples."""
+    """The plan as text: engine and why, the steps before and after what was fused, and these with their samples."""
     lines = [f"plan for {plan.target}: engine {plan.engine}, because {plan.reason}"]
-    lines += [f"  {note}" for note in plan.notes]
+    passes = [f"  {note}" for note in plan.notes]
+    if plan.declared:
+        passes = [*_listed("before", plan.declared), *passes, *_listed("after", plan.steps)]
+    lines += passes
     for branch in plan.branches:
         lines += _branch(branch)
     return "\n".join([*lines, stamp()])

@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Callable
-from dataclasses import dataclass, replace
+from dataclasses import dataclass, field, replace
 from fractions import Fraction
 from itertools import groupby
 from typing import TYPE_CHECKING
@@ -76,6 +76,7 @@ class Plan:
         meet, each with an engine of its own.
     reason : why this engine.
     notes : what the passes did.
+    declared : the steps of the first branch before any pass changed them; empty if none did.
     """
 
     target: str
@@ -85,6 +86,7 @@ class Plan:
     engine: str = "grid"
     reason: str = ""
     notes: tuple[str, ...] = ()
+    declared: Steps = field(default=(), repr=False, compare=False)
 
     @property
     def steps(self) -> Steps:
@@ -129,7 +131,8 @@ class Plan:
         before, after = len(self.steps), len(branches[0].steps)
         if branches == self.branches:
             return self
-        return replace(self, branches=branches, notes=(*self.notes, f"{note} ({before} -> {after} steps)"))
+        notes, declared = (*self.notes, f"{note} ({before} -> {after} steps)"), self.declared or self.steps
+        return replace(self, branches=branches, notes=notes, declared=declared)
 
     def __str__(self) -> str:
         return explain(self)

@@ -22,7 +22,7 @@ QUIET = 0.99  # share of the light whose phase steps are looked at
 # A frame that holds one part in a thousand is what the slow tails of a hard edge put there in a good window; ten
 # times that would show in a frame. With 20 % the light has come round the edge.
 WARN, REFUSE = 1e-2, 0.2
-# Beside runs four times as dense on windows twice as wide, over some 300 random benches on random grids, pictures were
+# Beside runs four times as dense on windows twice as wide, over about 110 random benches on random grids, pictures were
 # wrong by 1e-3 of their peak from 1.4e-4 near the edge of the window or 4e-6 near that of the band on, and right to
 # 1e-3 below 5e-5 and 8e-7: the field there is the root of the power.
 EDGE_WARN, BAND_WARN = 1e-4, 2e-6
