@@ -14,6 +14,7 @@ from fastaxis.plan.arms import arms
 from fastaxis.plan.at_once import by_network
 from fastaxis.plan.binding import bound, refuse_letters
 from fastaxis.plan.choose import choose
+from fastaxis.plan.closed import closed
 from fastaxis.plan.commute import commute
 from fastaxis.plan.fuse import fuse
 from fastaxis.plan.gather_flips import gather_flips
@@ -141,7 +142,13 @@ def make_plan(
     at_once = None if by_arms else by_network(train, target, asked=engine)
     if at_once is not None:
         return at_once
-    plan = simplified(unfused(train, target))
+    declared = unfused(train, target)
+    if declared.joined and engine == "auto" and grid is None:
+        shaped = [closed(group) for group in declared.groups]
+        if all(shaped):
+            reason = "light comes by several paths, and by each of them its modes stay what they are"
+            return replace(declared, branches=sum(map(tuple, shaped), ()), engine="joined", reason=reason)
+    plan = simplified(declared)
     bucket = power_only or _is_bucket(train, target)
     if plan.joined:
         return _joined(plan, grid, bucket=bucket, asked=engine)

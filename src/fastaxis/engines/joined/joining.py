@@ -10,6 +10,7 @@ from typing import Any, cast
 import numpy as np
 from numpy.typing import NDArray
 
+from fastaxis.engines.combining import combined
 from fastaxis.engines.field import Guard, PlaneField
 from fastaxis.engines.joined.coherence import mixtures
 from fastaxis.engines.joined.extent import Extent
@@ -33,6 +34,10 @@ def joined(arms: Sequence[Branch], found: Sequence[PlaneField]) -> tuple[PlaneFi
     mixed = mixtures(arms)
     if all(arm.engine == "uniform" for arm in arms):
         return tuple(_uniform_sum(cast("Sequence[Any]", found), row) for row in mixed)
+    if all(arm.engine == "modes" for arm in arms):
+        # One sum of many modes is worked out as a whole, in no more time than it takes to look at one.
+        sums = [combined("modes", [(field,) for field in found], row)[0] for row in mixed]
+        return (JoinedField(tuple(sums), np.eye(len(sums), dtype=complex), Extent.of(arms)),)
     return (JoinedField(tuple(found), mixed, Extent.of(arms)),)
 
 

@@ -39,7 +39,7 @@ def total_of_sums(arms: Sequence[PlaneField], mixtures: Complexes, extent: Exten
     """
     shares = np.sum(abs(mixtures) ** 2, axis=0)
     alone = sum(share * total(arm) for share, arm in zip(shares, arms, strict=True))
-    if len(arms) == 1:
+    if np.count_nonzero(mixtures, axis=1).max() == 1:  # each sum has an arm to itself
         return np.asarray(alone)
     x, pitch = places(extent)
     for arm in arms:  # engines that work out a plane as far as they are asked do so once if the corner comes first

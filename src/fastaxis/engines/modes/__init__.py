@@ -1,0 +1,6 @@
+"""The modes engine: sums of Gaussian modes about one axis, each known in closed form behind any ray matrix."""
+
+from fastaxis.engines.modes.running import run
+from fastaxis.engines.modes.summing import ModeSum, combined
+
+__all__ = ["ModeSum", "combined", "run"]
