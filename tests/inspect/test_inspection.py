@@ -121,3 +121,21 @@ def test_power_units_in_words():
     assert watts(5 * mW) == "5 mW"
     assert watts(3e-15) == "3e-15 W"
     assert degrees(-0.0) == "0°"
+
+
+def test_light_on_its_way_back_may_be_blocked_by_the_polarizer_it_came_through():
+    train = fa.Train(wavelength=1064 * nm)
+    train.along(
+        fa.Laser(waist=0.9 * mm, power=50 * mW, state=fa.H, name="laser"),
+        fa.Polarizer(axis=0 * deg, extinction=1e4, name="in"),
+        fa.FaradayRotator(angle=45 * deg, name="rotator"),
+        fa.Polarizer(axis=45 * deg, extinction=1e4, name="out"),
+        fa.Mirror(name="mirror"),
+    )
+    train.along("mirror", "out.back", "rotator.back", "in.back")
+    findings = train.inspect()
+    assert not findings.high
+    assert not [f for f in findings if f.check in ("polarizer", "isolator")]
+    # The same polarizer turned across the light on its way out is still found.
+    turned = train.with_changes({"out.axis": -45 * deg}).inspect()
+    assert [f.element for f in turned.high] == ["out"]

@@ -78,6 +78,11 @@ class Visit:
         return tuple(reversed(visits))
 
     @property
+    def returning(self) -> bool:
+        """Whether this light came through the part before, the other way."""
+        return any((v.name, v.left) == (self.name, self.entered) for v in self.chain()[:-1])
+
+    @property
     def flips(self) -> tuple[int, int]:
         """How often x and y were reversed by reflections on the way here."""
         axes = [law.axis for visit in self.chain()[:-1] for law in visit.laws if isinstance(law, Flip)]

@@ -17,8 +17,8 @@ __all__ = ["axis_fix", "passing", "polarizers"]
 def polarizers(bench: Bench) -> Iterator[Finding]:
     """Share of the light that each polarizer passes, of what it could pass with its axis along the light."""
     for visit in bench.of_kind(Polarizer):
-        if visit.patterned:
-            continue  # a beam of many states is what such a polarizer sorts
+        if visit.patterned or visit.returning:
+            continue  # a beam of many states is what such a polarizer sorts; light on its way back, what it stops
         share = passing(visit)
         if share < 0.9:
             yield _finding(visit, share)
