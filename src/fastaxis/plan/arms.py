@@ -120,7 +120,12 @@ def arms(train: Any, target: str) -> tuple[Route, ...]:
             _follow(graph, inside, end, _Walk(start, _Strength(np.array(states).T)), found)
     if not found:  # a port that is dark by polarization: one of its paths says so
         return tuple(train.routes(target)[:1])
-    return tuple(_route(train, walk) for walk in found)
+    legs = {
+        (a, b): Leg(a[0], a[1], b[1], data["passage"])
+        for a, b, data in graph.edges(data=True)
+        if a in inside and b in inside and data["kind"] == "inside"
+    }
+    return tuple(_route(train, walk, legs) for walk in found)
 
 
 def _follow(graph: Any, inside: set[Node], end: Node, start: _Walk, found: list[_Walk]) -> None:
@@ -163,9 +168,7 @@ def _too_many(end: Node, gain: float) -> SamplingError:
     )
 
 
-def _route(train: Any, walk: _Walk) -> Route:
+def _route(train: Any, walk: _Walk, legs: dict[tuple[Node, Node], Leg]) -> Route:
     nodes = [step.node for step in walk.nodes()][::-1]
-    edges = train.graph.edges
-    pairs = pairwise(nodes)
-    legs = tuple(Leg(a[0], a[1], b[1], edges[a, b]["passage"]) for a, b in pairs if edges[a, b]["kind"] == "inside")
-    return Route(nodes[0][0], train.elements[nodes[0][0]], legs, port_of(nodes[-1]))
+    taken = tuple(legs[pair] for pair in pairwise(nodes) if pair in legs)
+    return Route(nodes[0][0], train.elements[nodes[0][0]], taken, port_of(nodes[-1]))

@@ -3,14 +3,15 @@
 from __future__ import annotations
 
 from collections.abc import Sequence
-from dataclasses import replace
+from dataclasses import dataclass, field, replace
+from itertools import takewhile
 
 from fastaxis.laws import Flip, ScalarLaw, TravelLaw
 from fastaxis.light import Beam
 from fastaxis.light.modes.family import GaussFamily
 from fastaxis.plan.fuse import as_matrix
 from fastaxis.plan.plan import Branch
-from fastaxis.plan.steps import JonesStep, Step, StepLaw
+from fastaxis.plan.steps import JonesStep, Step, StepLaw, Steps
 
 __all__ = ["closed"]
 
@@ -23,34 +24,61 @@ def closed(arms: Sequence[Branch]) -> tuple[Branch, ...] | None:
     """
     if not all(map(_keeps_shape, {id(arm.beam): arm.beam for arm in arms}.values())):
         return None
-    known: dict[int, tuple[StepLaw, ...] | None] = {}
-    folded = [_folded(arm, known) for arm in arms]
-    return tuple(arm for arm in folded if arm is not None) if all(folded) else None
+    folder, folded = _Folder(), []
+    for arm in arms:
+        done = folder.fold(arm.steps)
+        if done is None:
+            return None
+        folded.append(replace(arm, steps=done.steps(arm.steps), engine="modes"))
+    return tuple(folded)
 
 
 def _keeps_shape(beam: Beam) -> bool:
     return all(isinstance(term.mode, GaussFamily) and term.mode.centred for term in beam.terms)
 
 
-def _folded(arm: Branch, known: dict[int, tuple[StepLaw, ...] | None]) -> Branch | None:
-    matrix, section, reversed_axes = JonesStep(), TravelLaw(), set[str]()
-    for step in arm.steps:
-        # Trips pass the same steps again and again.
-        if id(step) not in known:
-            known[id(step)] = _parts(step)
-        parts = known[id(step)]
-        if parts is None:
-            return None
-        for law in parts:
-            if isinstance(law, JonesStep):
-                matrix = matrix.then(law)
-            elif isinstance(law, TravelLaw):
-                section = section.then(law)
-            elif isinstance(law, Flip):
-                reversed_axes ^= {law.axis}
-    names = tuple(dict.fromkeys(name for step in arm.steps for name in step.names))
-    laws = (matrix, section, *map(Flip, sorted(reversed_axes)))
-    return replace(arm, steps=tuple(Step(names, law) for law in laws), engine="modes")
+@dataclass(frozen=True)
+class _Folded:
+    """What some steps do together."""
+
+    matrix: JonesStep = field(default_factory=JonesStep)
+    section: TravelLaw = field(default_factory=TravelLaw)
+    reversed_axes: frozenset[str] = frozenset()
+
+    def past(self, law: StepLaw) -> _Folded:
+        if isinstance(law, JonesStep):
+            return replace(self, matrix=self.matrix.then(law))
+        if isinstance(law, TravelLaw):
+            return replace(self, section=self.section.then(law))
+        assert isinstance(law, Flip)
+        return replace(self, reversed_axes=self.reversed_axes ^ {law.axis})
+
+    def steps(self, origin: Steps) -> Steps:
+        names = tuple(dict.fromkeys(name for step in origin for name in step.names))
+        return tuple(Step(names, law) for law in (self.matrix, self.section, *map(Flip, sorted(self.reversed_axes))))
+
+
+class _Folder:
+    """Folds path after path; where one begins as the path before, as each trip in a cavity does, it goes on there."""
+
+    def __init__(self) -> None:
+        self._known: dict[int, tuple[StepLaw, ...] | None] = {}
+        self._trail: list[tuple[Step, _Folded]] = []
+
+    def fold(self, steps: Steps) -> _Folded | None:
+        shared = sum(1 for _ in takewhile(lambda both: both[0][0] is both[1], zip(self._trail, steps, strict=False)))
+        del self._trail[shared:]
+        done = self._trail[-1][1] if self._trail else _Folded()
+        for step in steps[shared:]:
+            if id(step) not in self._known:
+                self._known[id(step)] = _parts(step)
+            parts = self._known[id(step)]
+            if parts is None:
+                return None
+            for law in parts:
+                done = done.past(law)
+            self._trail.append((step, done))
+        return done
 
 
 def _parts(step: Step) -> tuple[StepLaw, ...] | None:

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from collections import Counter
 from collections.abc import Callable
 from dataclasses import replace
 from fractions import Fraction
@@ -47,7 +48,8 @@ def _asked(train: Any, wavelength: float) -> Callable[[str, str, str], Steps]:
 
 
 def _length(steps: Steps) -> Fraction:
-    return sum((Fraction(step.law.path) for step in steps if isinstance(step.law, TravelLaw)), Fraction(0))
+    times = Counter(step.law.path for step in steps if isinstance(step.law, TravelLaw))
+    return sum((count * Fraction(path) for path, count in times.items()), Fraction(0))
 
 
 def unfused(train: Any, target: str) -> Plan:
@@ -144,10 +146,10 @@ def make_plan(
         return at_once
     declared = unfused(train, target)
     if declared.joined and engine == "auto" and grid is None:
-        shaped = [closed(group) for group in declared.groups]
-        if all(shaped):
-            reason = "light comes by several paths, and by each of them its modes stay what they are"
-            return replace(declared, branches=sum(map(tuple, shaped), ()), engine="joined", reason=reason)
+        kept = closed(declared.branches)
+        if kept is not None:
+            reason = "light comes by several paths, and on each of them its modes stay what they are"
+            return replace(declared, branches=kept, engine="joined", reason=reason)
     plan = simplified(declared)
     bucket = power_only or _is_bucket(train, target)
     if plan.joined:

@@ -25,6 +25,8 @@ def carriers(arms: Sequence[Branch]) -> Complexes:
 def coherence(arms: Sequence[Branch]) -> Complexes:
     """The matrix of complex degrees of coherence, without carriers."""
     line = arms[0].line
+    if line.sharp:
+        return np.ones((len(arms), len(arms)), dtype=complex)
     lengths = [arm.length for arm in arms]
     return np.array([[line.degree(float(a - b)) for b in lengths] for a in lengths], dtype=complex)
 
