@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from dataclasses import fields as fields_of
 from dataclasses import replace
+from functools import reduce
 from typing import TYPE_CHECKING, Any, TypeAlias, overload
 
 import numpy as np
@@ -159,7 +160,7 @@ def recorded(
 def _picture(fields: Sequence[Any], camera: Camera) -> tuple[NDArray[Any], NDArray[Any], NDArray[Any]]:
     cx, cy = camera.centre
     seen = Raster(camera.pixel, camera.seen, (float(cx), float(cy)))
-    stokes = sum(field.stokes_on(seen) for field in fields)
+    stokes = reduce(np.add, (field.stokes_on(seen) for field in fields))
     return np.ascontiguousarray(camera.oriented(stokes)), *_shown_axes(camera, seen)
 
 

@@ -19,7 +19,8 @@ __all__ = ["Collected"]
 Images = NDArray[Any]
 Complexes = NDArray[Any]
 
-ACROSS = 48  # pixels in one product: few enough for the linear algebra library not to start threads inside ours
+# Multiplications in one product: few enough for the linear algebra library not to start threads inside ours.
+PRODUCT = 1 << 18
 OVERLAP = 8  # rows or columns taken at a time, in units of those that have to be taken again
 
 
@@ -85,8 +86,9 @@ def _collect(out: Images, samples: Complexes, rows: list[Block], columns: list[B
 
         def down(block: Block, first: int = first, across: Images = across) -> None:
             near = across[:, block.first - first : block.last - first]
-            for place in range(start, stop, ACROSS):
-                pixels = slice(place, min(place + ACROSS, stop))
+            few = max(PRODUCT // block.matrix.size, 1)
+            for place in range(start, stop, few):
+                pixels = slice(place, min(place + few, stop))
                 out[:, block.pixels, pixels] += block.matrix @ near[:, :, pixels.start - start : pixels.stop - start]
 
         together(down, group)
