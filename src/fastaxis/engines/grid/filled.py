@@ -25,9 +25,9 @@ def marginals(samples: Complexes) -> tuple[Reals, Reals]:
 
     def add(strip: slice) -> Reals:
         real = samples[:, strip].view(samples.real.dtype)
-        power = np.einsum("kij,kij->ij", real, real).reshape(-1, columns, 2).sum(axis=2)
-        down[strip] = power.sum(axis=1)
-        return np.asarray(power.sum(axis=0), dtype=float)
+        squares = np.einsum("kij,kij->ij", real, real)
+        down[strip] = squares.sum(axis=1)
+        return squares.sum(axis=0).reshape(columns, 2).sum(axis=1, dtype=float)
 
     across = sum(strips(add, rows, columns))
     return down, np.asarray(across)

@@ -9,7 +9,7 @@ import numpy as np
 from numpy.typing import NDArray
 from scipy import fft
 
-from fastaxis.engines.grid.workers import WORKERS, strips
+from fastaxis.engines.grid.workers import strips
 
 __all__ = ["Places", "Waves"]
 
@@ -58,16 +58,20 @@ class Waves:
             rows, columns = (self._from_other_end(places, parts) for places in (rows, columns))
         length, width = parts * self.count, self.amplitudes.shape[-1]
         (before_down, after_down), (before, after) = (self._turns(places, parts) for places in (rows, columns))
-        near = self.amplitudes * before_down[:, None]
-        near = fft.fft(near, n=length, axis=1, workers=WORKERS)[:, : rows.count]
-        out = np.empty((len(near), rows.count, columns.count), dtype=self.amplitudes.dtype)
+        near = np.empty((len(self.amplitudes), rows.count, width), dtype=self.amplitudes.dtype)
+        out = np.empty((len(near), rows.count, columns.count), dtype=near.dtype)
+
+        def drop(strip: slice) -> None:
+            for part, some in zip(near, self.amplitudes[:, :, strip], strict=True):
+                part[:, strip] = fft.fft(some * before_down[:, None], n=length, axis=0)[: rows.count]
 
         def fill(strip: slice) -> None:
             samples = near[:, strip] * before
             samples *= after_down[strip, None]
             np.multiply(fft.fft(samples, n=length, axis=2)[:, :, : columns.count], after, out=out[:, strip])
 
-        strips(fill, rows.count, max(length, width))
+        strips(drop, width, length)
+        strips(fill, rows.count, length)
         return np.ascontiguousarray(out[:, ::-1, ::-1]) if self.mirrored else out
 
     def _from_other_end(self, places: Places, parts: int) -> Places:
