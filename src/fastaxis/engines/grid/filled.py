@@ -27,7 +27,7 @@ def marginals(samples: Complexes) -> tuple[Reals, Reals]:
         real = samples[:, strip].view(samples.real.dtype)
         squares = np.einsum("kij,kij->ij", real, real)
         down[strip] = squares.sum(axis=1)
-        return squares.sum(axis=0).reshape(columns, 2).sum(axis=1, dtype=float)
+        return np.asarray(squares.sum(axis=0).reshape(columns, 2).sum(axis=1), dtype=float)
 
     across = sum(strips(add, rows, columns))
     return down, np.asarray(across)
