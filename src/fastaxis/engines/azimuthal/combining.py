@@ -8,14 +8,18 @@ from functools import reduce
 
 import numpy as np
 
+from fastaxis.engines.azimuthal.averaging import LONGEST
 from fastaxis.engines.azimuthal.harmonics import Harmonics
 from fastaxis.engines.azimuthal.panels import Complexes, Profile, Reals
 from fastaxis.engines.azimuthal.plane import AzimuthalField
+from fastaxis.engines.azimuthal.rendering import corner
 from fastaxis.engines.azimuthal.resolving import Settings, resolved
 from fastaxis.errors import ParameterError
+from fastaxis.light import Raster
 
-__all__ = ["combined"]
+__all__ = ["combined", "combined_on"]
 
+ROOM = 1e-9  # a corner may round to a hair beyond itself
 SAME = 1e-12  # of a ray matrix: some thousand roundings of numbers multiplied in another order
 
 
@@ -47,6 +51,13 @@ def combined(fields: Sequence[AzimuthalField], coefficients: Complexes) -> Azimu
     shares = [abs(c) * light.error * light.profile.peak for light, c in zip(lights, coefficients, strict=True)]
     total = replace(total, error=total.error + float(sum(shares)) / peak)
     return replace(fields[0], harmonics=total.without_dark(), _arrivals={}, _tables={})
+
+
+def combined_on(fields: Sequence[AzimuthalField], coefficients: Complexes, raster: Raster) -> AzimuthalField:
+    """The sum of coefficient * field as far as a raster needs it, in the plane of the target, whatever way each came."""
+    reach = corner(raster, LONGEST) * (1 + ROOM)
+    there = [replace(field, harmonics=field.out_to(reach), _arrivals={}, _tables={}) for field in fields]
+    return combined(there, coefficients)
 
 
 def _placed(light: Harmonics, orders: tuple[tuple[int, int], ...]) -> Complexes:

@@ -5,6 +5,7 @@ from __future__ import annotations
 from collections.abc import Sequence
 from dataclasses import dataclass, fields
 from functools import cached_property
+from importlib import import_module
 from typing import Any, cast
 
 import numpy as np
@@ -14,7 +15,7 @@ from fastaxis.engines.combining import combined
 from fastaxis.engines.field import Guard, PlaneField
 from fastaxis.engines.joined.coherence import mixtures
 from fastaxis.engines.joined.extent import Extent
-from fastaxis.engines.joined.nodes import Axis
+from fastaxis.engines.joined.looking import Look, candidates, settled
 from fastaxis.engines.joined.overlap import total_of_sums
 from fastaxis.errors import ParameterError
 from fastaxis.light import Raster, stokes
@@ -37,8 +38,8 @@ def joined(arms: Sequence[Branch], found: Sequence[PlaneField]) -> tuple[PlaneFi
     if all(arm.engine == "modes" for arm in arms):
         # One sum of many modes is worked out as a whole, in no more time than it takes to look at one.
         sums = [combined("modes", [(field,) for field in found], row)[0] for row in mixed]
-        return (JoinedField(tuple(sums), np.eye(len(sums), dtype=complex), Extent.of(arms)),)
-    return (JoinedField(tuple(found), mixed, Extent.of(arms)),)
+        return (JoinedField(tuple(sums), np.eye(len(sums), dtype=complex), Extent.of(arms), ("modes",)),)
+    return (JoinedField(tuple(found), mixed, Extent.of(arms), tuple(arm.engine for arm in arms)),)
 
 
 def _uniform_sum(found: Sequence[Any], numbers: Complexes) -> PlaneField:
@@ -56,11 +57,13 @@ class JoinedField:
     arms : the field of each, as its engine left it.
     mixtures : rows of numbers, one an arm; each row makes a coherent sum, and the powers of the sums add.
     extent : how wide and fine the light is.
+    engines : of each arm, by name.
     """
 
     arms: tuple[PlaneField, ...]
     mixtures: Complexes
     extent: Extent
+    engines: tuple[str, ...]
 
     @property
     def wavelength(self) -> float:
@@ -111,13 +114,25 @@ class JoinedField:
         if raster.shape == (1, 1) and half and raster.pitch / 2 >= half + max(map(abs, raster.centre)):
             return self.total_stokes[:, np.newaxis, np.newaxis]
         reach = max(abs(raster.x).max(), abs(raster.y).max()) + raster.pitch / 2
-        frequency = self.extent.finest(reach)
-        columns = Axis.of(raster.x, raster.pitch, frequency)
-        rows = columns if np.array_equal(raster.x, raster.y) else Axis.of(raster.y, raster.pitch, frequency)
+        if all(engine == "azimuthal" for engine in self.engines):
+            return self._by_harmonics(raster)
+        frequency, finest = self.extent.frequency(reach), self.extent.finest(reach)
+        looks = candidates(raster, frequency, finest)
         # Engines that work out a plane as far as they are asked do so once if the farthest place comes first.
-        corner = np.array([max(abs(axis.places).max() for axis in (rows, columns))]) * (1 + FARTHER)
+        corner = np.array([max(look.farthest for look in looks) * (1 + FARTHER)])
         self._sums(corner, corner)
-        image = np.zeros((4, *raster.shape))
+        return self._seen(settled(raster, finest, looks, self._seen))
+
+    def _by_harmonics(self, raster: Raster) -> Reals:
+        """The harmonics of all arms added and looked at once, for each sum."""
+        engine = import_module("fastaxis.engines.azimuthal")
+        sums = (engine.combined_on(self.arms, numbers, raster) for numbers in self.mixtures)
+        return np.asarray(sum(total.stokes_on(raster) for total in sums))
+
+    def _seen(self, look: Look) -> Reals:
+        """What pixels collect of the light at some places, shape (4, rows, columns)."""
+        columns, rows = look.columns, look.rows
+        image = np.zeros((4, rows.matrix.shape[0], columns.matrix.shape[0]))
         at_once = max(1, BLOCK // len(columns.places))
         for first in range(0, len(rows.places), at_once):
             block = slice(first, first + at_once)

@@ -59,7 +59,7 @@ class Axis:
         Fringes much wider than a pixel are a curve through places further apart than pixels; finer ones are
         integrated inside each pixel.
         """
-        inside = _inside(middles, pixel, frequency)
+        inside = cls.inside(middles, pixel, frequency)
         if frequency <= 0:
             return inside
         step = 1 / (FINER * frequency)
@@ -67,16 +67,17 @@ class Axis:
         wide = step > pixel / 2 and span / step + 2 < len(inside.places)
         return _between(middles, pixel, step) if wide else inside
 
-
-def _inside(middles: Reals, pixel: float, frequency: float) -> Axis:
-    stretches = max(1, math.ceil(pixel * frequency / 4))
-    side = pixel / stretches
-    nodes, weights = np.polynomial.legendre.leggauss(nodes_needed(side * frequency))
-    starts = (np.arange(stretches) - (stretches - 1) / 2) * side
-    offsets = (starts[:, np.newaxis] + nodes * side / 2).ravel()
-    row = np.tile(weights * side / 2, stretches)
-    matrix = sparse.kron(sparse.identity(len(middles)), row[np.newaxis], format="csc")
-    return Axis((middles[:, np.newaxis] + offsets).ravel(), matrix)
+    @classmethod
+    def inside(cls, middles: Reals, pixel: float, frequency: float) -> Axis:
+        """Places inside each pixel by itself; the pixels may lie anywhere."""
+        stretches = max(1, math.ceil(pixel * frequency / 4))
+        side = pixel / stretches
+        nodes, weights = np.polynomial.legendre.leggauss(nodes_needed(side * frequency))
+        starts = (np.arange(stretches) - (stretches - 1) / 2) * side
+        offsets = (starts[:, np.newaxis] + nodes * side / 2).ravel()
+        row = np.tile(weights * side / 2, stretches)
+        matrix = sparse.kron(sparse.identity(len(middles)), row[np.newaxis], format="csc")
+        return cls((middles[:, np.newaxis] + offsets).ravel(), matrix)
 
 
 def _between(middles: Reals, pixel: float, step: float) -> Axis:

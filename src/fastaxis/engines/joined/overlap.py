@@ -4,29 +4,26 @@ from __future__ import annotations
 
 import math
 from collections.abc import Sequence
-from typing import Any
 
 import numpy as np
 from numpy.typing import NDArray
 
 from fastaxis.engines.field import PlaneField
 from fastaxis.engines.joined.extent import Extent
-from fastaxis.light import Raster, stokes
+from fastaxis.light import stokes
 
 __all__ = ["places", "total", "total_of_sums"]
 
 Complexes = NDArray[np.complex128]
 Reals = NDArray[np.float64]
 
-EVERYTHING = Raster(10.0, (1, 1))  # one pixel of 10 m: no table carries a wider beam
 MOST = 4096  # samples along a side; edges and singularities ask for more than pays
 BLOCK = 1 << 18  # places at which fields are held at a time
 
 
-def total(field: Any) -> Reals:
+def total(field: PlaneField) -> Reals:
     """S0 .. S3 of all the light of one field [W]; of a plane wave, on the area its power is counted on."""
-    found = np.asarray(field.stokes_on(EVERYTHING)[:, 0, 0])
-    return np.asarray(found * (field.power / found[0])) if found[0] > 0 else found
+    return np.asarray(field.total_stokes)
 
 
 def total_of_sums(arms: Sequence[PlaneField], mixtures: Complexes, extent: Extent) -> Reals:

@@ -73,6 +73,8 @@ def overlaps(one: Waves, other: Waves) -> Complexes:
     for j, exponent in enumerate(one.exponents):  # one row at a time, which bounds the memory
         square = exponent.conjugate() + other.exponents
         root = np.sqrt(square)
-        products = one.bare(x / root, y / root, j, conjugate=True) * other.bare(x / root, y / root, slice(None), conjugate=False)
+        products = one.bare(x / root, y / root, j, conjugate=True) * other.bare(
+            x / root, y / root, slice(None), conjugate=False
+        )
         found[j] = both @ np.broadcast_to(products, (len(both), len(root))) / square
     return found
