@@ -59,6 +59,28 @@ def test_gannet_stack_shows_two_more_fringes(bench):
     assert np.mean(np.abs(turns)) == pytest.approx(139 * 12e-6 * 2e-3 / 632.8e-9, abs=0.2)
 
 
+def test_gannet_stack_fringes_have_the_period_of_their_angle(bench):
+    train, settings = bench("gannet_stack_fork")
+    shots = train.expose("along", settings)
+    frame = shots.frame(0)
+    # Above the core the spiral adds a turn to the fringes along a row, below it takes one away; the mean has neither.
+    found = [12 * um / _frequency(rows) for rows in (frame[:20], frame[-20:])]
+    assert abs(1 / found[0] - 1 / found[1]) > 100
+    # 0.3164 mm; about six fringes in the beam, whose middle the transform finds to a hundredth of one.
+    assert 2 / (1 / found[0] + 1 / found[1]) == pytest.approx(632.8e-9 / 2e-3, rel=5e-3)
+
+
+def _frequency(rows):
+    """Where the spectrum of some rows peaks [1/pixel], between the frequencies of the frame."""
+    size = 16 * rows.shape[1]
+    bare = (rows - rows.mean(axis=1, keepdims=True)) * np.hanning(rows.shape[1])
+    spectrum = abs(np.fft.rfft(bare, n=size)).sum(axis=0)
+    first = size // 80  # what is slower than 80 pixels is the envelope
+    peak = first + int(np.argmax(spectrum[first:]))
+    left, top, right = np.log(spectrum[peak - 1 : peak + 2])
+    return (peak + (left - right) / (2 * (left - 2 * top + right))) / size
+
+
 def test_sedge_hollow_turns_with_the_analyzer(bench):
     train, settings = bench("sedge_hollow_loop")
     shots = train.expose("cam", settings)

@@ -51,3 +51,13 @@ def test_printed_it_ends_with_the_sum():
     assert "detected             2 mW  meter" in text
     assert "sum of the ends 2 mW" in text
     assert "signs:" in text
+
+
+def test_a_cavity_with_a_stop_says_before_any_trip_that_it_takes_too_many():
+    train = fa.Train(wavelength=633 * nm).along(
+        fa.Laser(waist=0.2 * mm, power=1 * mW, name="laser"), fa.BeamSplitter(reflectance=0.9, name="in"),
+        fa.FreeSpace(0.2), fa.Aperture(radius=0.5 * mm, name="hole"), fa.BeamSplitter(reflectance=0.9, name="out"),
+    )  # fmt: skip
+    train.along("out.reflected", fa.Mirror(name="m1"), fa.Mirror(name="m2"), "in.side")
+    with pytest.raises(fa.SamplingError, match="296 paths through parts that shape the light"):
+        train.ledger()

@@ -85,3 +85,21 @@ def test_one_path_has_no_fringes_to_speak_of():
     with pytest.raises(fa.WiringError, match="fringes need two paths that meet") as caught:
         train.visibility("meter")
     eval(caught.value.fix, {"train": train})
+
+
+def test_a_cavity_has_no_pairs_of_paths():
+    train = fa.Train(wavelength=633 * nm).along(
+        fa.Laser(waist=1 * mm, name="laser"), fa.BeamSplitter(reflectance=0.5, name="left"),
+        fa.BeamSplitter(reflectance=0.5, name="right"),
+    )  # fmt: skip
+    train.along("right.reflected", "left.side")
+    with pytest.raises(fa.WiringError, match="goes round a cavity comes by a new path on each trip") as caught:
+        train.visibility("right.transmitted")
+    eval(caught.value.fix, {"train": train})
+
+
+def test_light_of_several_parts_says_which_is_looked_at(mach_zehnder):
+    laser = fa.Laser(waist=1 * mm, state=fa.UNPOLARIZED, name="laser")
+    found = mach_zehnder(laser).visibility("out.transmitted")
+    assert found.incoherent == 2
+    assert "of the first of 2 parts of the light that do not interfere" in str(found)

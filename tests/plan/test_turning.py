@@ -136,7 +136,8 @@ def test_the_middle_of_the_beam_goes_with_the_picture():
     assert after.slope == pytest.approx((-2e-3, 0.0), abs=1e-18)
 
 
-angles = st.floats(-3.0, 3.0)
+# A whole number of radians is warned about, as degrees without their unit.
+angles = st.floats(-3.0, 3.0).filter(lambda angle: not angle.is_integer())
 parts = st.one_of(
     st.builds(lambda roll: KMirror(roll=roll), angles),
     st.builds(lambda roll: DovePrism(index=1.5, roll=roll), angles),

@@ -73,10 +73,12 @@ class Visibility:
     ----------
     target : where they are.
     pairs : one for each pair of paths.
+    incoherent : parts of the light that do not interfere with each other; the pairs are those of the first.
     """
 
     target: str
     pairs: tuple[PathPair, ...]
+    incoherent: int = 1
 
     @property
     def value(self) -> float:
@@ -85,6 +87,10 @@ class Visibility:
 
     def __str__(self) -> str:
         lines = [f"visibility at {self.target}"]
+        if self.incoherent > 1:
+            lines.append(
+                f"  of the first of {self.incoherent} parts of the light that do not interfere with each other"
+            )
         for pair in self.pairs:
             lines += [f"  {pair.paths[0]}", f"  {pair.paths[1]}", f"    {pair}"]
             lines += [f"    {pair.advice}"] if pair.advice else []
@@ -103,12 +109,12 @@ def visibility(train: Any, target: str, setting: Any = None, *, grid: Any = None
 
     Raises
     ------
-    WiringError : light gets there by one path only.
+    WiringError : light gets there by one path only, or round a cavity.
 
     Notes
     -----
     M. Born and E. Wolf, Principles of Optics, 7th ed. (1999), section 7.2; of several components of a source, the
-    first is looked at.
+    first is looked at, and ``print`` says so.
 
     Examples
     --------
@@ -119,25 +125,33 @@ def visibility(train: Any, target: str, setting: Any = None, *, grid: Any = None
     >>> round(visibility(train, "out.transmitted").value, 3)
     0.801
     """
-    branches, names = _arms(train, target, grid, engine)
+    branches, names, incoherent = _arms(train, target, grid, engine)
     fields = [import_module(f"fastaxis.engines.{branch.engine}").run(branch) for branch in branches]
     seen = _Seen.of(fields, branches, setting)
     bucket = not hasattr(train.elements[target.partition(".")[0]], "pixel")
     pairs = combinations(range(len(branches)), 2)
-    return Visibility(target, tuple(_pair(seen, branches, names, i, j, bucket=bucket) for i, j in pairs))
+    return Visibility(target, tuple(_pair(seen, branches, names, i, j, bucket=bucket) for i, j in pairs), incoherent)
 
 
-def _arms(train: Any, target: str, grid: Any, engine: str) -> tuple[Sequence[Branch], list[str]]:
+def _arms(train: Any, target: str, grid: Any, engine: str) -> tuple[Sequence[Branch], list[str], int]:
     # Arms are looked at one by one, also where a plane wave's would be summed at once.
     plan = make_plan(train, target, grid=grid, engine=engine, by_arms=True)
-    group = next((group for group in plan.groups if len(group) > 1), None)
-    if group is None:
+    groups = [group for group in plan.groups if len(group) > 1]
+    if not groups:
         raise WiringError(
             "fringes need two paths that meet",
             got=f"{target}: light by one path",
             fix=f'print(train.routes("{target}"))',
         )
-    return group, [branch.path for branch in group]
+    group = groups[0]
+    if len(group) > len(train.routes(target)):
+        raise WiringError(
+            "light that goes round a cavity comes by a new path on each trip, and no two of them make its fringes; "
+            "sweep the length or a phase and look at the power",
+            got=f"{target}: {len(group)} paths, trips included",
+            fix=f'train.power("{target}")',
+        )
+    return group, [branch.path for branch in group], len(plan.groups)
 
 
 @dataclass(frozen=True)

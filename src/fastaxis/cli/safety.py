@@ -5,8 +5,9 @@ from __future__ import annotations
 from collections.abc import Mapping
 from typing import Any
 
+from fastaxis.cli.console import tell
 from fastaxis.engines.ledger import powers
-from fastaxis.errors import SymbolError, WiringError
+from fastaxis.errors import SamplingError, SymbolError, WiringError
 from fastaxis.report.prefix import readable
 
 __all__ = ["DARK", "caution", "port_powers"]
@@ -15,9 +16,12 @@ DARK = 1e-9  # of the strongest beam; an ideal port that should be dark is, to r
 
 
 def port_powers(train: Any) -> dict[str, float]:
-    """Power [W] that leaves each port; nothing where letters or meeting paths leave it open."""
+    """Power [W] that leaves each port; nothing where letters or light that cannot be followed leave it open."""
     try:
         return {f"{name}.{face}": power for (name, face), power in powers(train).items()}
+    except SamplingError as error:
+        tell(f"Powers were not worked out: {error}")
+        return {}
     except (SymbolError, WiringError):
         return {}
 

@@ -5,13 +5,15 @@ from __future__ import annotations
 from typing import Any
 
 from fastaxis.engines import propagate
+from fastaxis.errors import SamplingError
 from fastaxis.laws import AxisLaw, CircularLaw, Law, ScalarLaw
-from fastaxis.plan import make_plan
+from fastaxis.plan import Plan, make_plan
 from fastaxis.train.graph import lit_nodes, source_nodes
 
 __all__ = ["lossless", "powers"]
 
 Port = tuple[str, str]
+MOST_PATHS = 64  # each takes some hundredths of a second at each port
 
 
 def lossless(law: Law) -> bool:
@@ -38,7 +40,8 @@ def powers(train: Any, *, engine: str = "auto") -> dict[Port, float]:
     Raises
     ------
     SymbolError : a letter without a value on the way.
-    SamplingError : light that cannot be sampled, or a cavity whose light takes too many trips to fade.
+    SamplingError : light that cannot be sampled, or a cavity whose light takes too many trips to fade; said before any
+        trip is followed.
 
     Examples
     --------
@@ -71,4 +74,18 @@ def powers(train: Any, *, engine: str = "auto") -> dict[Port, float]:
 
 
 def _worked_out(train: Any, port: Port, engine: str) -> float:
-    return sum(field.power for field in propagate(make_plan(train, ".".join(port), power_only=True, engine=engine)))
+    plan = make_plan(train, ".".join(port), power_only=True, engine=engine)
+    _check_paths(plan, ".".join(port))
+    return sum(field.power for field in propagate(plan))
+
+
+def _check_paths(plan: Plan, port: str) -> None:
+    """A ledger asks at every port, which is no time to follow hundreds of round trips through stops and gratings."""
+    followed = sum(branch.engine in ("azimuthal", "grid") for branch in plan.branches)
+    if followed > MOST_PATHS:
+        raise SamplingError(
+            f"the powers of all ports are worked out where light with a shape comes by at most {MOST_PATHS} paths; "
+            "one port may be asked by itself, which takes a while",
+            got=f"{port}: {followed} paths through parts that shape the light carry power",
+            fix=f'train.power("{port}")',
+        )

@@ -54,7 +54,7 @@ def combined(fields: Sequence[AzimuthalField], coefficients: Complexes) -> Azimu
 
 
 def combined_on(fields: Sequence[AzimuthalField], coefficients: Complexes, raster: Raster) -> AzimuthalField:
-    """The sum of coefficient * field as far as a raster needs it, in the plane of the target, whatever way each came."""
+    """The sum of coefficient * field in the plane of the target, as far as a raster needs it."""
     reach = corner(raster, LONGEST) * (1 + ROOM)
     there = [replace(field, harmonics=field.out_to(reach), _arrivals={}, _tables={}) for field in fields]
     return combined(there, coefficients)

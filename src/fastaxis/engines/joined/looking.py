@@ -52,7 +52,7 @@ def candidates(raster: Raster, frequency: float, finest: float) -> list[Look]:
 
 
 def settled(raster: Raster, finest: float, looks: Sequence[Look], image: Callable[[Look], Reals]) -> Look:
-    """The look with the fewest places that give the same pictures as places for the finest fringes do, on some lines of pixels.
+    """The look with the fewest places that shows the same as the finest, on some lines of pixels.
 
     Second moments say little of how fine the light behind a singularity or an edge is: directly behind it there is
     no limit, and some way on there is next to nothing beyond them. Lines through the middle are among those tried,
