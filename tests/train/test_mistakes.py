@@ -85,11 +85,15 @@ MISTAKES = [
     Mistake('train.join("cam2.in", "dump")', "cam2.in (Camera); light cannot leave there", 'train.join("pbs.reflected", "dump.in")'),
     Mistake('train.along("pbs.reflected", "cam2", "dump")', "cam2 (Camera); light cannot leave there", 'train.join("qwp.back", "dump.in")'),
     # Ports used twice
-    Mistake('train.join("laser", "cam2")', "laser.out: already joined to hwp.front; light leaving a port goes to one place",
+    Mistake('train.join("laser", "cam2")', "laser.out: already joined to hwp.front; light leaving a port goes to one place, and pbs.reflected is free",
             'train.join("pbs.reflected", "cam2.in")'),
     Mistake('train.join("mirror", "cam")', "cam.in: already fed by pbs.transmitted; a port is fed by one beam",
             'train.join("mirror.front", "cam2.in")'),
     Mistake('train.along("pbs.reflected", "hwp", "cam2")', "hwp.front: already fed by laser.out", 'train.join("pbs.reflected", "cam2.in")'),
+    Mistake('train.join("pbs.transmitted", "cam2")', "pbs.transmitted: already joined to cam.in; light leaving a port goes to one "
+            "place, and pbs.reflected is free", 'train.join("pbs.reflected", "cam2.in")'),
+    Mistake('train.join("mirror", "pbs.front")', "pbs.front: already fed by hwp.back; a port is fed by one beam, and pbs.side is free",
+            'train.join("mirror.front", "pbs.side")'),
     # Parts joined to themselves
     Mistake('train.join("qwp", "qwp")', "qwp -> qwp; a part cannot be joined to itself", 'train.join("qwp", "cam2.in")'),
     Mistake('train.join("mirror.front", "mirror.front")', "mirror.front -> mirror.front; a part cannot be joined to itself",

@@ -55,7 +55,8 @@ class _Folded:
 
     def steps(self, origin: Steps) -> Steps:
         names = tuple(dict.fromkeys(name for step in origin for name in step.names))
-        return tuple(Step(names, law) for law in (self.matrix, self.section, *map(Flip, sorted(self.reversed_axes))))
+        laws: tuple[StepLaw, ...] = (self.matrix, self.section, *map(Flip, sorted(self.reversed_axes)))
+        return tuple(Step(names, law) for law in laws)
 
 
 class _Folder:

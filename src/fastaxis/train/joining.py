@@ -95,16 +95,34 @@ def _check_free(elements: Elements, joints: Joints, wavelength: Scalar, out_port
     """Each port carries one joint only."""
     for other_out, other_in in joints:
         if other_out == out_port:
-            likely = _other_out_port(elements, joints, wavelength, split(in_port)[0])
+            twin = _twin(elements, joints, wavelength, out_port, "out")
+            likely = twin or _other_out_port(elements, joints, wavelength, split(in_port)[0])
             raise WiringError(
-                "light leaving a port goes to one place; a splitter makes two beams of one",
+                f"light leaving a port goes to one place{_free(likely)}; a splitter makes two beams of one",
                 got=f"{out_port}: already joined to {other_in}",
                 fix=join_code(likely, in_port) if likely else 'train.add(fa.BeamSplitter(name="splitter"))',
             )
         if other_in == in_port:
-            likely = _other_in_port(elements, joints, wavelength, split(out_port)[0])
+            twin = _twin(elements, joints, wavelength, in_port, "in")
+            likely = twin or _other_in_port(elements, joints, wavelength, split(out_port)[0])
             raise WiringError(
-                "a port is fed by one beam; a splitter brings two together",
+                f"a port is fed by one beam{_free(likely)}; a splitter brings two together",
                 got=f"{in_port}: already fed by {other_out}",
                 fix=join_code(out_port, likely) if likely else 'train.add(fa.BeamSplitter(name="combiner"))',
             )
+
+
+def _free(likely: str | None) -> str:
+    return f", and {likely} is free" if likely else ""
+
+
+def _twin(elements: Elements, joints: Joints, wavelength: Scalar, port: str, way: str) -> str | None:
+    """The free face of the same part that light goes to, or comes from, by the same faces: the other of a splitter."""
+    name, face = split(port)
+    here, there = (0, 1) if way == "in" else (1, 0)
+    partners: dict[str, set[str]] = {}
+    for pair in elements[name].passages(wavelength):
+        partners.setdefault(pair[here], set()).add(pair[there])
+    taken = {joint[there] for joint in joints}
+    alike = (other for other in partners if other != face and partners[other] == partners.get(face))
+    return next((f"{name}.{other}" for other in alike if f"{name}.{other}" not in taken), None)

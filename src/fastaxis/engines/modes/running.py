@@ -35,7 +35,7 @@ def run(branch: Branch) -> ModeSum:
         _wave(term.mode, scale * term.number * (matrix @ term.state.jones), section, senses, branch.wavelength)
         for term in branch.beam.terms
     ]
-    return combined(parts, np.ones(len(parts)))
+    return combined(parts, np.ones(len(parts), dtype=complex))
 
 
 def _wave(mode: Any, jones: Any, section: TravelLaw, senses: dict[str, int], wavelength: float) -> ModeSum:

@@ -72,5 +72,9 @@ def combined(fields: Sequence[ModeSum], coefficients: Complexes) -> ModeSum:
 
 
 def _together(alike: list[Waves]) -> Waves:
-    joined = {name: np.concatenate([getattr(w, name) for w in alike]) for name in ("widths", "exponents", "jones")}
-    return replace(alike[0], **joined)
+    return replace(
+        alike[0],
+        widths=np.concatenate([waves.widths for waves in alike]),
+        exponents=np.concatenate([waves.exponents for waves in alike]),
+        jones=np.concatenate([waves.jones for waves in alike]),
+    )
