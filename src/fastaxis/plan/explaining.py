@@ -18,6 +18,8 @@ if TYPE_CHECKING:
 
 __all__ = ["explain"]
 
+MOST_ARMS = 8  # of a cavity the first few trips tell what the rest are
+
 WIDTH = 110  # of the lists of parts
 
 
@@ -87,6 +89,10 @@ def explain(plan: Plan) -> str:
     if plan.declared:
         passes = [*_listed("before", plan.declared), *passes, *_listed("after", plan.steps)]
     lines += passes
-    for branch in plan.branches:
-        lines += _branch(branch)
+    for group in plan.groups:
+        for branch in group[:MOST_ARMS]:
+            lines += _branch(branch)
+        if len(group) > MOST_ARMS:
+            last = 1e3 * float(group[-1].length)
+            lines.append(f"  and {len(group) - MOST_ARMS} longer ways, up to a path of {last:.6g} mm")
     return "\n".join([*lines, stamp()])
