@@ -89,7 +89,9 @@ def test_a_shape_made_of_two_modes_and_two_colours():
     quick, slow = (train.field("out.transmitted", engine=engine)[0] for engine in ("auto", "azimuthal"))
     assert quick.total_stokes == pytest.approx(slow.total_stokes, abs=1e-10)
     raster = Raster(20 * um, (40, 40))
-    assert np.allclose(quick.stokes_on(raster), slow.stokes_on(raster), rtol=0, atol=1e-9 * quick.stokes_on(raster).max())
+    assert np.allclose(
+        quick.stokes_on(raster), slow.stokes_on(raster), rtol=0, atol=1e-9 * quick.stokes_on(raster).max()
+    )
 
 
 def test_the_plan_of_a_cavity_shows_the_first_trips_and_counts_the_others():
