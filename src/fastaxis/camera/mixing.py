@@ -28,6 +28,11 @@ def _pool() -> ThreadPoolExecutor:
     return ThreadPoolExecutor(WORKERS)
 
 
+# A forked process inherits the pool but none of its threads, and would wait for them for ever.
+if hasattr(os, "register_at_fork"):
+    os.register_at_fork(after_in_child=_pool.cache_clear)
+
+
 def mixed(weights: Images, images: Images) -> Images:
     """The products weights . images without negative roundings: (frames, images), (images, pixels) -> (frames, pixels).
 

@@ -23,6 +23,11 @@ def _pool() -> ThreadPoolExecutor:
     return ThreadPoolExecutor(WORKERS)
 
 
+# A forked process inherits the pool but none of its threads, and would wait for them for ever.
+if hasattr(os, "register_at_fork"):
+    os.register_at_fork(after_in_child=_pool.cache_clear)
+
+
 def together(work: Callable[[Job], Done], jobs: Iterable[Job]) -> list[Done]:
     """The results of all jobs, in order; jobs must not hand out work themselves."""
     return list(_pool().map(work, jobs))
