@@ -10,7 +10,7 @@ from fastaxis.cli.bench_file import BenchFile
 from fastaxis.cli.console import say, tell
 from fastaxis.cli.letters import with_letters
 from fastaxis.cli.safety import caution, port_powers
-from fastaxis.cli.targets import recording
+from fastaxis.cli.targets import sensors
 from fastaxis.conventions import View, stamp
 from fastaxis.report.bench import draw_bench, reflections_in_words
 from fastaxis.report.card import card
@@ -34,7 +34,7 @@ def explain(bench: BenchFile, options: Namespace) -> None:
     train.validate()
     for element in train.elements.values() if options.cards else ():
         say(f"\n{card(element, options.view)}")
-    for target in [options.camera] if options.camera else recording(train):
+    for target in [options.camera] if options.camera else sensors(train):
         _explain_target(train, target, options)
     say()
     for port in train.open_ports():

@@ -6,10 +6,10 @@ from typing import Any
 
 from fastaxis.errors import WiringError
 
-__all__ = ["recording", "targets"]
+__all__ = ["sensors", "targets"]
 
 
-def recording(train: Any) -> list[str]:
+def sensors(train: Any) -> list[str]:
     """Cameras and detectors that light reaches: parts that record something of a given shape and let no light out."""
     lit = {port.partition(".")[0] for port in train.lit}
     return [n for n, part in train.elements.items() if n in lit and part.exit is None and hasattr(part, "shape")]
@@ -22,7 +22,7 @@ def targets(train: Any, wanted: str | None) -> list[str]:
     ------
     WiringError : there is none.
     """
-    found = [wanted] if wanted is not None else recording(train)
+    found = [wanted] if wanted is not None else sensors(train)
     if not found:
         train.validate()  # a bench without a laser, say, has a message of its own
         raise WiringError(
