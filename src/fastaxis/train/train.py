@@ -369,7 +369,12 @@ class Train:
         return late("studies.tolerance", "tolerance")(self, errors, figures_of_merit, **options)
 
     def find_fault(self, frames: Any, settings: Any, **options: Any) -> Any:
-        """Which single mistake on the bench would make the frames that were recorded, ranked."""
+        """Which single mistake on the bench would make the frames that were recorded, ranked.
+
+        ``train.find_fault(shots.frames, shots.settings, target="cam", noise=0.01)``, with ``target`` the camera or
+        detector the frames are of (the only camera if left out) and ``noise`` the relative difference of frames, root
+        mean square, that counts as none.
+        """
         return late("studies.fault", "find_fault")(self, frames, settings, **options)
 
     def derive(self, target: str, **options: Any) -> Any:

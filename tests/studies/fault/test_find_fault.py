@@ -43,6 +43,25 @@ def test_a_bench_without_fault(bench):
     report = bench.find_fault(shots.frames, shots.settings)
     assert report.declared.misfit < 1e-12
     assert "nothing needs explaining" in str(report)
+    assert report.declared in report.ties
+    assert "no single mistake" not in str(report)
+
+
+def test_the_bench_as_declared_competes(bench):
+    shots = bench.with_changes({"qwp.fast": 23 * deg}).expose("cam", fa.SIX_STATES)
+    report = bench.find_fault(shots.frames, shots.settings, noise=0.01)
+    assert report.declared not in report.ties
+    assert "as good as any" not in str(report)
+    # Where the camera's noise is greater than what the plate does, nothing says that there is a mistake at all.
+    noisy = shots.frames + 0.3 * shots.frames.max() * np.random.default_rng(1).random(shots.frames.shape)
+    report = bench.find_fault(noisy, shots.settings, noise=0.1)
+    assert report.declared in report.ties
+    assert "the bench as declared is as good as any" in str(report)
+
+
+def test_frames_of_something_else(bench):
+    report = bench.find_fault(np.random.default_rng(2).random((6, 32, 32)), fa.SIX_STATES)
+    assert "no single mistake explains these frames" in str(report)
 
 
 def test_a_tie_names_the_frame_that_parts_it():
@@ -83,3 +102,18 @@ def test_refusals(bench):
         bench.find_fault(np.ones((1, 3, 3)), [fa.H])
     with pytest.raises(fa.ParameterError, match="one camera"):
         fa.Train(wavelength=633 * nm).along(fa.Laser(waist=1 * mm), fa.Detector()).find_fault([1.0], [fa.H])
+
+
+@pytest.mark.parametrize(
+    ("frames", "words"),
+    [
+        (np.zeros((1, 32, 32)), "could be of any bench"),
+        (np.full((1, 32, 32), np.nan), "finite"),
+        ("frames.npz", "array of numbers"),
+        (object(), "array of numbers"),
+        ([[1.0, 2.0], [3.0]], "array of numbers"),
+    ],
+)
+def test_frames_that_say_nothing_are_refused(bench, frames, words):
+    with pytest.raises(fa.ParameterError, match=words):
+        bench.find_fault(frames, [fa.H])

@@ -22,6 +22,7 @@ from fastaxis.studies.fault.watching import Watch
 __all__ = ["FaultReport", "Suspect", "find_fault", "suspects"]
 
 LEAST = math.radians(0.05)  # half a step of the values tried
+EXPLAINS = 0.9  # of the declared misfit; a value fitted to frames of something else gains a few percent by chance
 FURTHER = (*SIX_STATES, *(linear(math.radians(angle)) for angle in range(15, 180, 15) if angle % 45))
 
 
@@ -93,9 +94,10 @@ class FaultReport:
 
     @property
     def ties(self) -> tuple[Suspect, ...]:
-        """The best explanation and all that are as good within the noise."""
-        best = self.ranking[0].misfit
-        return tuple(one for one in self.ranking if one.misfit <= max(best + self.noise, 1.01 * best))
+        """The best explanation and all that are as good within the noise, the bench as declared among them."""
+        every = (self.declared, *self.ranking)
+        best = min(one.misfit for one in every)
+        return tuple(one for one in every if one.misfit <= max(best + self.noise, 1.01 * best))
 
     def separating(self, further: Iterable[Any] = FURTHER) -> tuple[State | Setting, int] | None:
         """The further setting that tells most pairs of equally good explanations apart, and how many pairs.
@@ -115,8 +117,7 @@ class FaultReport:
     def text(self, most: int = 8) -> str:
         """The ranking in words."""
         lines = [f"{self.target}: the frames differ from the bench as declared by {self.declared.misfit:.3g}"]
-        if self.declared.misfit <= self.noise:
-            lines.append("that is within the noise: nothing needs explaining")
+        lines += self._verdicts()
         lines += [f"{n:3}. {one.misfit:.3g}  {one.words}" for n, one in enumerate(self.ranking[:most], start=1)]
         if len(self.ties) > 1:
             found = self.separating()
@@ -125,6 +126,17 @@ class FaultReport:
         return "\n".join([*lines, stamp()])
 
     __str__ = text
+
+    def _verdicts(self) -> Iterator[str]:
+        """What the ranking is worth."""
+        declared = self.declared.misfit
+        if declared <= self.noise:
+            yield "that is within the noise: nothing needs explaining"
+            return
+        if self.declared in self.ties:
+            yield "the bench as declared is as good as any"
+        if not any(one.misfit <= EXPLAINS * declared for one in self.ranking):
+            yield "no single mistake explains these frames"
 
 
 def _told(setting: State | Setting, parted: int, ties: int) -> str:
@@ -160,30 +172,43 @@ def find_fault(
 
     Raises
     ------
-    ParameterError : no target named and not just one camera; frames of another number or shape.
+    ParameterError : no target named and not just one camera; frames of another number or shape, of no light, or with
+        something else than finite numbers.
     """
     camera = _target(train, target)
     analyzers = as_settings(tuple(settings))
-    recorded = np.asarray(frames, float)
-    recorded = recorded[:, None, None] if recorded.ndim == 1 else recorded
-    shape = expose(train, camera, analyzers).frames.shape
-    if recorded.shape != shape:
-        raise ParameterError(
-            f"there is a frame of the camera for each setting: {shape}",
-            got=f"find_fault: frames of shape {recorded.shape}",
-            fix="train.find_fault(shots.frames, shots.settings)",
-        )
+    recorded = _recorded(frames, expose(train, camera, analyzers).frames.shape)
+    whole = float(np.sqrt((recorded**2).sum()))
 
     def misfit(shots: Any) -> float:
         seen = shots.frames
         power = float((seen**2).sum())
         scale = float((seen * recorded).sum()) / power if power else 0.0
-        whole = float(np.sqrt((recorded**2).sum()))
-        return float(np.sqrt(((recorded - scale * seen) ** 2).sum())) / whole if whole else 0.0
+        return float(np.sqrt(((recorded - scale * seen) ** 2).sum())) / whole
 
     watch = Watch(camera, misfit, "shots", analyzers)
     declared = Suspect("as declared", watch.of(train), train)
     return FaultReport(declared, tuple(suspects(train, watch)), camera, analyzers, noise)
+
+
+def _recorded(frames: Any, shape: tuple[int, ...]) -> Any:
+    """Frames as an array of that shape, scaled to 1 at the brightest pixel."""
+
+    def refuse(rule: str, got: str) -> ParameterError:
+        return ParameterError(rule, got=f"find_fault: {got}", fix="train.find_fault(shots.frames, shots.settings)")
+
+    try:
+        recorded = np.asarray(frames, float)
+    except (TypeError, ValueError):
+        raise refuse("frames are an array of numbers", type(frames).__name__) from None
+    recorded = recorded[:, None, None] if recorded.ndim == 1 else recorded
+    if recorded.shape != shape:
+        raise refuse(f"there is a frame of the camera for each setting: {shape}", f"frames of shape {recorded.shape}")
+    if not np.isfinite(recorded).all():
+        raise refuse("frames hold finite numbers only", f"{np.count_nonzero(~np.isfinite(recorded))} that are not")
+    if not recorded.any():
+        raise refuse("frames without light could be of any bench", "all frames zero")
+    return recorded / np.abs(recorded).max()
 
 
 def _target(train: Any, target: str | None) -> str:
