@@ -8,6 +8,7 @@ from fastaxis.engines import propagate
 from fastaxis.errors import SamplingError
 from fastaxis.laws import AxisLaw, CircularLaw, Law, ScalarLaw
 from fastaxis.plan import Plan, make_plan
+from fastaxis.plan.binding import refuse_letters
 from fastaxis.train.graph import lit_nodes, source_nodes
 
 __all__ = ["lossless", "powers"]
@@ -58,6 +59,7 @@ def powers(train: Any, *, engine: str = "auto") -> dict[Port, float]:
     ledger: dict[Port, float] = {}
     waiting = [(name, train.elements[name].exit or "out", "out") for name in train.sources]
     for name, face, _ in waiting:
+        refuse_letters(name, train.elements[name].parameters())
         ledger[name, face] = float(train.elements[name].source.power)
     while waiting:
         here = waiting.pop(0)

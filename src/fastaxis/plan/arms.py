@@ -3,9 +3,9 @@
 from __future__ import annotations
 
 import math
-from collections.abc import Iterator
+from collections.abc import Callable, Iterator
 from dataclasses import dataclass, replace
-from functools import cached_property
+from functools import cache, cached_property, reduce
 from itertools import pairwise
 from typing import Any
 
@@ -14,7 +14,7 @@ from numpy.typing import NDArray
 
 from fastaxis.errors import SamplingError
 from fastaxis.laws import AxisLaw, ScalarLaw
-from fastaxis.plan.binding import bound
+from fastaxis.plan.binding import bound, refuse_letters
 from fastaxis.plan.fuse import as_matrix
 from fastaxis.plan.steps import Step
 from fastaxis.train.graph import Node, lit_nodes, port_of, source_nodes
@@ -27,6 +27,7 @@ __all__ = ["FAINT", "MOST", "arms", "upstream"]
 FAINT = 1e-14
 MOST = 1024  # paths followed; each is propagated, and a camera adds all of them up
 Matrix = NDArray[np.complex128]
+Laws = Callable[[Node, Node], tuple[Any, ...]]
 
 
 @dataclass(frozen=True)
@@ -104,6 +105,7 @@ def arms(train: Any, target: str) -> tuple[Route, ...]:
     ------
     WiringError : no light gets there.
     SamplingError : too many paths carry light, as in a cavity of high finesse.
+    SymbolError : several paths lead there, and a part or a laser on one has a letter without a value.
     """
     graph, sources = train.graph, source_nodes(train.elements)
     lit = lit_nodes(graph, sources)
@@ -111,13 +113,13 @@ def arms(train: Any, target: str) -> tuple[Route, ...]:
     inside = upstream(graph, lit, end)
     if all(sum(before in inside for before in graph.predecessors(node)) < 2 for node in inside):
         return (train.route(target),)
-    found: list[_Walk] = []
+    found, laws = list[_Walk](), _asked(train)
     for start in sources:
         if start in inside:
-            states = [
-                t.state.jones for part in bound(train.elements[start[0]].source).components for t in part.beam.terms
-            ]
-            _follow(graph, inside, end, _Walk(start, _Strength(np.array(states).T)), found)
+            laser = train.elements[start[0]]
+            refuse_letters(start[0], laser.parameters())
+            states = [t.state.jones for part in bound(laser.source).components for t in part.beam.terms]
+            _follow(graph, inside, end, _Walk(start, _Strength(np.array(states).T)), found, laws=laws)
     if not found:  # a port that is dark by polarization: one of its paths says so
         return tuple(train.routes(target)[:1])
     legs = {
@@ -128,7 +130,21 @@ def arms(train: Any, target: str) -> tuple[Route, ...]:
     return tuple(_route(train, walk, legs) for walk in found)
 
 
-def _follow(graph: Any, inside: set[Node], end: Node, start: _Walk, found: list[_Walk]) -> None:
+def _asked(train: Any) -> Laws:
+    """The laws of light between two port states, exact numbers made floats; each pair is asked for once."""
+
+    @cache
+    def laws(here: Node, ahead: Node) -> tuple[Any, ...]:
+        edge = train.graph.edges[here, ahead]
+        if edge["kind"] != "inside":
+            return ()
+        refuse_letters(here[0], train.elements[here[0]].parameters())
+        return tuple(bound(law) for law in edge["passage"].laws)
+
+    return laws
+
+
+def _follow(graph: Any, inside: set[Node], end: Node, start: _Walk, found: list[_Walk], *, laws: Laws) -> None:
     waiting, least = [start], 0.0
     while waiting:
         walk = waiting.pop(0)
@@ -140,16 +156,9 @@ def _follow(graph: Any, inside: set[Node], end: Node, start: _Walk, found: list[
             least = max(least, walk.gain() or 0.0)
         for ahead in graph.successors(walk.node):
             if ahead in inside:
-                there = _Walk(ahead, _through(graph.edges[walk.node, ahead], walk.strength), walk)
+                there = _Walk(ahead, reduce(_Strength.past, laws(walk.node, ahead), walk.strength), walk)
                 if there.strength.amplitude > FAINT:
                     waiting.append(there)
-
-
-def _through(edge: Any, strength: _Strength) -> _Strength:
-    if edge["kind"] == "inside":
-        for law in edge["passage"].laws:
-            strength = strength.past(bound(law))
-    return strength
 
 
 def _too_many(end: Node, gain: float) -> SamplingError:
