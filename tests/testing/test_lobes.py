@@ -1,5 +1,7 @@
 """Lobes, turning and index of a radial beam."""
 
+import pytest
+
 import fastaxis as fa
 import fastaxis.testing as ft
 from fastaxis.units import deg, um
@@ -22,6 +24,13 @@ def test_lobes_astray_name_the_plate(ring, fails):
     error = fails(ft.lobe_angle, ring.with_changes({"hwp.fast": 10 * deg}), "cam", 0 * deg, behind=fa.H)
     assert "2 lobes, at 20 deg" in error.got  # light at 20 deg leaves the q-plate at phi - 20 deg
     assert "hwp.fast stands at 0 deg, -10 deg off" in error.cause
+
+
+def test_bare_degrees_are_refused(ring):
+    with pytest.raises(fa.ParameterError, match="radians"):
+        ft.lobe_angle(ring, "cam", 45, behind=fa.H)
+    with pytest.raises(fa.ParameterError, match="radians"):
+        ft.lobe_angle(ring, "cam", 0 * deg, behind=fa.H, within=20.0)
 
 
 def test_no_lobes_to_measure(ring, fails):

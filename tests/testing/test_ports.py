@@ -44,3 +44,18 @@ def test_half_the_power_is_explained_by_a_detuned_or_turned_plate(line, fails):
 def test_an_unknown_port_is_refused(line):
     with pytest.raises(fa.WiringError):
         ft.port_dark(line, "nowhere")
+
+
+def test_powers_and_depths_that_cannot_be_are_refused(line):
+    for db in (-30.0, float("nan")):
+        with pytest.raises(fa.ParameterError, match="db must be"):
+            ft.port_dark(line, "meter", db=db)
+    for power in (-1 * mW, float("nan")):
+        with pytest.raises(fa.ParameterError, match="power must be"):
+            ft.port_power(line, "hwp", power)
+    with pytest.raises(fa.ParameterError, match="within must be"):
+        ft.port_power(line, "hwp", 4 * mW, within=-0.1)
+
+
+def test_the_room_lists_its_assertions():
+    assert {"port_dark", "state_at", "BenchError"} <= set(dir(ft))

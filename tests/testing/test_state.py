@@ -1,4 +1,5 @@
 import pytest
+import sympy
 
 import fastaxis as fa
 import fastaxis.testing as ft
@@ -47,3 +48,35 @@ def test_linear_light_has_no_hand(line, fails):
 def test_nothing_expected_is_refused(line):
     with pytest.raises(fa.ParameterError, match="azimuth"):
         ft.state_at(line, "hwp")
+
+
+def test_circular_light_has_no_azimuth(circular, fails):
+    error = fails(ft.state_at, circular, "qwp", azimuth=0 * deg)
+    assert error.got.startswith("no azimuth, ellipticity 45 deg")
+    with pytest.raises(fa.ParameterError, match="no long axis"):
+        ft.state_at(circular, "qwp", azimuth=0 * deg, ellipticity=45 * deg)
+
+
+@pytest.mark.parametrize(
+    ("expected", "words"),
+    [
+        ({"azimuth": 45}, r"write degrees as 45\*deg"),
+        ({"azimuth": 22.5}, "radians"),
+        ({"azimuth": float("nan")}, "finite"),
+        ({"ellipticity": 45.0}, "radians"),
+        ({"ellipticity": 50 * deg}, "between -45 and 45 deg"),
+        ({"azimuth": 0 * deg, "within": 30}, "radians"),
+        ({"azimuth": 0 * deg, "within": 0.0}, "positive"),
+        ({"azimuth": sympy.Symbol("a", real=True)}, "must be a number"),
+        ({"helicity": 2}, r"\+1 or -1"),
+        ({"helicity": 0}, r"\+1 or -1"),
+    ],
+)
+def test_what_no_light_can_be_is_refused(line, expected, words):
+    with pytest.raises(fa.ParameterError, match=words):
+        ft.state_at(line, "hwp", **expected)
+
+
+def test_a_few_whole_radians_are_cautioned(line):
+    with pytest.warns(fa.SlipWarning, match="degrees are written"), pytest.raises(ft.BenchError):
+        ft.state_at(line, "hwp", azimuth=10)

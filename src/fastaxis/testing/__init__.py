@@ -55,6 +55,10 @@ _HOME = {name: home for home, names in _HOMES.items() for name in names.split()}
 __all__ = sorted(_HOME)  # noqa: PLE0605 - built from the table above
 
 
+def __dir__() -> list[str]:
+    return list(__all__)
+
+
 def __getattr__(name: str) -> Any:
     if name not in _HOME:
         raise AttributeError(f"module 'fastaxis.testing' has no attribute '{name}'")

@@ -10,6 +10,7 @@ from fastaxis.analysis.lobes import Lobes, lobes
 from fastaxis.analysis.turning import turning as turning_of
 from fastaxis.errors import ParameterError
 from fastaxis.light import linear
+from fastaxis.testing.asked import an_angle, slack
 from fastaxis.testing.failing import Claim, hold
 from fastaxis.testing.words import degrees
 
@@ -69,7 +70,9 @@ def lobe_angle(
     Raises
     ------
     BenchError : no lobe stands there.
+    ParameterError : an angle that is no number, or was meant in degrees.
     """
+    angle, within = an_angle("lobe_angle", "angle", angle), slack("lobe_angle", within)
 
     def misfit(shots: Any) -> float:
         found = _lobes(shots, centre)

@@ -8,6 +8,7 @@ from typing import Any
 import numpy as np
 
 from fastaxis.camera.settings import as_setting, no_analyzer
+from fastaxis.testing.asked import at_least
 from fastaxis.testing.failing import Claim, hold
 from fastaxis.testing.words import watts
 
@@ -27,7 +28,9 @@ def port_dark(train: Any, port: str, *, db: float = 30.0, behind: Any = None) ->
     Raises
     ------
     BenchError : it is brighter.
+    ParameterError : a depth that is negative or no number.
     """
+    db = at_least("port_dark", "db", db, 0.0, fix="db=30")
     weights = (no_analyzer() if behind is None else as_setting(behind)).weights
     sent = sum(train.elements[name].power for name in train.sources)
 
@@ -61,7 +64,10 @@ def port_power(train: Any, port: str, power: float, *, within: float = 0.01, beh
     Raises
     ------
     BenchError : it is another.
+    ParameterError : a power or deviation that is negative or no number.
     """
+    power = at_least("port_power", "power", power, 0.0, fix="2*mW")
+    within = at_least("port_power", "within", within, 0.0, fix="within=0.01")
     weights = (no_analyzer() if behind is None else as_setting(behind)).weights
     slack = within * abs(power) or np.finfo(float).tiny
     hold(
