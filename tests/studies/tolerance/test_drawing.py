@@ -51,6 +51,21 @@ def test_progress_and_checkpoint(malus, tmp_path):
         malus.tolerance(ERRORS, MERITS, draws=100, checkpoint=path)
 
 
+def test_a_damaged_checkpoint_is_told(malus, tmp_path):
+    path = tmp_path / "study.npz"
+    malus.tolerance(ERRORS, MERITS, draws=20, checkpoint=path)
+    whole = path.read_bytes()
+    for kept in range(0, len(whole), 37):
+        path.write_bytes(whole[:kept])
+        with pytest.raises(fa.FileFormatError, match="is an .npz"):
+            malus.tolerance(ERRORS, MERITS, draws=20, checkpoint=path)
+    plain = tmp_path / "plain.npz"
+    with plain.open("wb") as file:
+        np.save(file, np.zeros(3))
+    with pytest.raises(fa.FileFormatError, match="is an .npz"):
+        malus.tolerance(ERRORS, MERITS, draws=20, checkpoint=plain)
+
+
 SLOW = textwrap.dedent("""
     import sys, time, fastaxis as fa
     from fastaxis.studies.tolerance import normal

@@ -222,6 +222,9 @@ REFUSED = [
     ),
     (({"pol.axis": normal(0.1)}, {}), {}, "are named"),
     (({"pol.axis": normal(0.1)}, {"p": power_at("meter")}), {"limits": {"q": (0, 1)}}, "limits belong"),
+    (({"pol.axis": normal(0.1)}, {"p": power_at("meter")}), {"limits": {"p": (2e-3, 1e-3)}}, "in this order"),
+    (({"pol.axis": normal(0.1)}, {"p": power_at("meter")}), {"limits": {"p": (float("nan"), 1)}}, "in this order"),
+    (({"pol.axis": normal(0.1)}, {"p": power_at("meter")}), {"limits": {"p": 1e-3}}, "a lowest and a highest"),
     (({"pol.axis": normal(0.1)}, {"p": power_at("meter")}), {"draws": 0}, "whole number"),
 ]
 

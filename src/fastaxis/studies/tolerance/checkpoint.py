@@ -3,6 +3,8 @@
 from __future__ import annotations
 
 import hashlib
+import zipfile
+import zlib
 from pathlib import Path
 from typing import Any, TypeAlias
 
@@ -15,6 +17,16 @@ from fastaxis.files import write_whole
 __all__ = ["Checkpoint", "fingerprint"]
 
 Reals: TypeAlias = NDArray[np.float64]
+
+
+# What numpy says of a file that was cut off, overwritten or is of another kind.
+DAMAGED = (OSError, ValueError, KeyError, EOFError, zipfile.BadZipFile, zlib.error, SyntaxError, TypeError)
+
+
+def _contents(path: Path) -> tuple[str, Reals, NDArray[np.bool_]]:
+    # Opened here, since numpy leaves a file open that turns out to be cut off.
+    with path.open("rb") as file, np.load(file, allow_pickle=False) as kept:
+        return str(kept["study"]), kept["values"], kept["done"]
 
 
 def fingerprint(*things: Any) -> str:
@@ -45,13 +57,12 @@ class Checkpoint:
 
     def _read(self, path: Path) -> None:
         try:
-            with np.load(path, allow_pickle=False) as kept:
-                study, values, done = str(kept["study"]), kept["values"], kept["done"]
-        except (OSError, ValueError, KeyError, EOFError) as error:
+            study, values, done = _contents(path)
+        except DAMAGED as error:
             raise FileFormatError(
                 "a checkpoint is an .npz file this study wrote", got=f"{path}: {error}", fix='checkpoint="other.npz"'
             ) from error
-        if study != self.study or values.shape != self.values.shape:
+        if study != self.study or values.shape != self.values.shape or done.shape != self.done.shape:
             raise FileFormatError(
                 "a checkpoint goes on with the same train, errors, figures of merit, seed and number of draws",
                 got=f"{path}: written by another study",

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import math
 from collections.abc import Callable, Mapping
 from concurrent.futures import Executor
 from pathlib import Path
@@ -61,7 +62,8 @@ def tolerance(
 
     Raises
     ------
-    ParameterError : no errors or figures of merit, an unknown parameter, limits of something else, no draws.
+    ParameterError : no errors or figures of merit, an unknown parameter, limits of something else or the wrong way
+        round, no draws.
     FileFormatError : the checkpoint is that of another study.
 
     Examples
@@ -116,11 +118,26 @@ def _checked(
                 got=f"tolerance: limits of {name!r}",
                 fix=f'limits={{"{next(iter(merits))}": (None, 1e-3)}}',
             )
+        _check_limits(name, limits[name])
     if isinstance(draws, bool) or not isinstance(draws, int) or draws < 1:
         raise ParameterError(
             "draws is a whole number of 1 or more", got=f"tolerance: draws = {draws!r}", fix="draws=1000"
         )
     return dict(merits), dict(limits)
+
+
+def _check_limits(name: str, limits: Any) -> None:
+    try:
+        low, high = (end if end is None else float(end) for end in limits)
+        good = (-math.inf if low is None else low) <= (math.inf if high is None else high)  # nan is not
+    except (TypeError, ValueError):
+        good = False
+    if not good:
+        raise ParameterError(
+            "limits are a lowest and a highest value, in this order; None for no limit",
+            got=f"tolerance: limits of {name!r} are {limits!r}",
+            fix=f'limits={{"{name}": (None, 1e-3)}}',
+        )
 
 
 def _widths(causes: Causes) -> Reals:
