@@ -15,7 +15,7 @@ from fastaxis.files import require, write_whole
 from fastaxis.loader import late
 from fastaxis.maths import Scalar
 from fastaxis.train import validate as checks
-from fastaxis.train.both_ways import joined_both_ways, looped
+from fastaxis.train.both_ways import looped, returned
 from fastaxis.train.changes import changed_elements, refuse_unpaired
 from fastaxis.train.collected import state_of
 from fastaxis.train.graph import Joints, Node, build, is_source, lit_nodes, port_of, source_nodes
@@ -90,14 +90,17 @@ class Train:
         self.elements = {**self.elements, named.name: named}
         return self
 
-    def join(self, out_port: str, in_port: str) -> Self:
+    def join(self, out_port: Element | str, in_port: Element | str) -> Self:
         """Send the light that leaves one port into another, and return the train.
 
         Parameters
         ----------
         out_port, in_port : "name.face", or "name" for the default face. ``join("mirror", "qwp.back")`` sends
-            the light from a mirror back through a plate it came through.
+            the light from a mirror back through a plate it came through. A new part is added, and joined by its
+            default face.
         """
+        if not (isinstance(out_port, str) and isinstance(in_port, str)):
+            return self.along(out_port, in_port)
         joint = checked_joint(self.elements, self.joints, self.wavelength, out_port, in_port)
         self.joints = (*self.joints, joint)
         return self
@@ -111,9 +114,14 @@ class Train:
         Parameters
         ----------
         items : as for :meth:`along`; the first is where the arm starts, the last what turns the light round. Mirrors
-            in between become two-way: light comes to them from both sides.
+            in between become two-way: light comes to them from both sides. An arm that starts at the laser
+            (``retro("laser", plate, fa.Mirror())``) ends at the part before it, whose port is left open.
+
+        Raises
+        ------
+        WiringError : no port to start from, or a last part that does not turn the light round.
         """
-        self.elements, self.joints = joined_both_ways(self.elements, self.joints, self.wavelength, items)
+        self.elements, self.joints = returned(self.elements, self.joints, self.wavelength, items)
         return self
 
     def loop(self, *items: Element | str) -> Self:
