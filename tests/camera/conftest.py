@@ -65,6 +65,10 @@ class Plan:
 class Bench:
     elements: dict
     name: str = "Low Quay"
+    cameras: tuple = ("cam",)
+
+    def open_ports(self):
+        return []
 
 
 @pytest.fixture

@@ -110,7 +110,7 @@ def test_the_worst_guard_of_all_parts_is_kept():
 def test_only_cameras_and_detectors_take_pictures(bench, light, target):
     bench.elements["hwp"] = object()
     with pytest.raises(
-        ParameterError, match=rf"target '{target}' .*; pictures are taken by a Camera .*fix: train.join"
+        ParameterError, match=rf"target '{target}' .*; pictures are taken by a Camera .*fix: train.expose"
     ):
         expose(bench, target, H)
 

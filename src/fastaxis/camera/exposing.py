@@ -5,6 +5,7 @@ from __future__ import annotations
 from dataclasses import fields as fields_of
 from dataclasses import replace
 from functools import reduce
+from itertools import count
 from typing import TYPE_CHECKING, Any, TypeAlias, overload
 
 import numpy as np
@@ -140,8 +141,20 @@ def sensor_at(train: Any, target: str) -> Camera | Detector:
     raise ParameterError(
         "pictures are taken by a Camera and powers by a Detector",
         got=f"expose: target '{target}' ({'no such part' if sensor is None else type(sensor).__name__})",
-        fix='train.join("pbs.reflected", fa.Camera(pixel=3.45*um, shape=(512, 512), name="cam2"))',
+        fix=_sensor_meant(train, target),
     )
+
+
+def _sensor_meant(train: Any, target: str) -> str:
+    """Code for a camera at the port that was asked; where light goes on from there, for one the train has."""
+    free = train.open_ports()
+    asked = [port for port in free if target in {port, port.split(".", maxsplit=1)[0]}]
+    if not asked and train.cameras:
+        return f'train.expose("{train.cameras[0]}", fa.SIX_STATES)'
+    name = next(f"cam{n}" for n in count(2) if f"cam{n}" not in train.elements)
+    camera = f'fa.Camera(pixel=3.45*um, shape=(512, 512), name="{name}")'
+    ports = asked or free
+    return f'train.along("{ports[0]}", {camera})' if ports else f"train.add({camera})"
 
 
 def recorded(

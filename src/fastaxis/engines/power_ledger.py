@@ -9,6 +9,7 @@ from typing import Any
 from fastaxis.conventions import stamp
 from fastaxis.engines.ledger import powers
 from fastaxis.train.graph import lit_nodes, source_nodes
+from fastaxis.train.validate import check_source
 
 __all__ = ["Ledger", "Row", "power_ledger"]
 
@@ -70,6 +71,7 @@ def power_ledger(train: Any, *, engine: str = "auto") -> Ledger:
 
     Raises
     ------
+    WiringError : no laser.
     SymbolError : a letter without a value on the way.
     SamplingError : light that cannot be sampled, or a cavity whose light takes too many trips to fade.
 
@@ -85,6 +87,7 @@ def power_ledger(train: Any, *, engine: str = "auto") -> Ledger:
     >>> {row.place: round(row.power, 9) for row in ledger.ends}
     {'pbs.reflected': 0.001, 'meter': 0.0001, 'nd': 0.0009}
     """
+    check_source(train.elements, train.name)
     graph, out = train.graph, powers(train, engine=engine)
     edges, ends = [], []
     for (name, face), watts in out.items():
