@@ -134,6 +134,15 @@ def test_a_mount_for_a_part_that_does_not_turn():
     eval(f"dict({caught.value.fix})", {"fa": fa, "deg": deg})  # noqa: S307 - the fix is code to paste
 
 
+@pytest.mark.parametrize(("given", "zero"), [(12 * deg, 12 * deg), ("12 deg", 0.0), (None, 0.0)])
+def test_a_bare_reading_is_no_mount(given, zero):
+    with pytest.raises(fa.ParameterError, match="a mount is given by") as caught:
+        bench().set_sheet(mounts={"hwp": given})
+    fixed = eval(f"dict({caught.value.fix})", {"fa": fa, "deg": deg})  # noqa: S307 - the fix is code to paste
+    # Its degrees are written with six digits.
+    assert fixed["mounts"]["hwp"].zero == pytest.approx(zero, rel=1e-5)
+
+
 def test_letters_are_refused():
     sympy = pytest.importorskip("sympy")
     with pytest.raises(fa.SymbolError):

@@ -172,7 +172,7 @@ def set_sheet(
 
     Raises
     ------
-    ParameterError : a mount for a part that is not there, or that does nothing when it is turned.
+    ParameterError : a mount for a part that is not there, or that does nothing when it is turned; a bare angle for one.
     SymbolError : a letter without a value.
     WiringError : light cannot be followed.
     """
@@ -190,7 +190,7 @@ def set_sheet(
 
 def _check_mounts(train: Any, mounts: Mapping[str, Mount]) -> None:
     turning = [name for name, element in train.elements.items() if turn_of(element) is not None]
-    for name in mounts:
+    for name, mount in mounts.items():
         if name not in turning:
             raise ParameterError(
                 f"mounts turn the parts {', '.join(turning)}"
@@ -199,6 +199,18 @@ def _check_mounts(train: Any, mounts: Mapping[str, Mount]) -> None:
                 got=f"mount for '{name}'",
                 fix=f'mounts={{"{(turning or ["hwp"])[0]}": fa.Mount(zero=0*deg)}}',
             )
+        _check_mount(name, mount)
+
+
+def _check_mount(name: str, mount: Any) -> None:
+    if isinstance(mount, Mount):
+        return
+    zero = f"{math.degrees(mount):g}" if isinstance(mount, int | float) else "0"
+    raise ParameterError(
+        "a mount is given by the reading at which the part's axis is along x: fa.Mount(zero=...)",
+        got=f"mount for '{name}': {mount!r}",
+        fix=f'mounts={{"{name}": fa.Mount(zero={zero}*deg)}}',
+    )
 
 
 def _rows(
