@@ -29,6 +29,11 @@ def test_values_are_found_by_index_value_and_name(swept):
         np.testing.assert_array_equal(swept.frame(which, "H"), swept.frame(2, "H"))
 
 
+def test_negative_indices_count_from_the_end(swept):
+    assert np.array_equal(swept.frame(-1, "H"), swept.frame(6, "H"))
+    assert np.array_equal(swept.frame(-7, -1), swept.frame(0, "L"))
+
+
 def test_settings_are_found_by_label_index_and_themselves(swept):
     for which in ("D", 2, -4, fa.D):
         np.testing.assert_array_equal(swept.frame(1, which), swept.frame(1, 2))
@@ -146,6 +151,7 @@ def test_a_letter_that_is_swept_needs_no_other_value(flat, compare):
     ("which", "setting", "words"),
     [
         (7, "H", "values are counted from 0 to 6"),
+        (-8, "H", "from the end: -1 to -7"),
         (0.1234, "H", "only values that were swept have frames"),
         ({"qwp.fast": 0.1}, "H", "a value of this sweep names hwp.fast"),
         (0, "X", "the settings of this sweep are: H, V, D, A, R, L"),

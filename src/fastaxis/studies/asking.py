@@ -19,7 +19,7 @@ SAME = 1e-14
 
 
 def place_of(knobs: Knobs, which: Any) -> int:
-    """The place in a sweep of an index, of the one value swept, or of {parameter: value}.
+    """The place in a sweep of an index (negative from the end), of the one value swept, or of {parameter: value}.
 
     Raises
     ------
@@ -30,7 +30,7 @@ def place_of(knobs: Knobs, which: Any) -> int:
     if hasattr(which, "__index__") and not isinstance(which, bool):
         if not -len(knobs) <= which < len(knobs):
             raise ParameterError(
-                f"values are counted from 0 to {len(knobs) - 1}",
+                f"values are counted from 0 to {len(knobs) - 1}, or from the end: -1 to {-len(knobs)}",
                 got=f"sweep: value {which}",
                 fix=f"sweep.at({len(knobs) - 1})",
             )
@@ -70,7 +70,7 @@ def _same(one: Any, other: Any) -> bool:
 
 
 def setting_of(settings: Sequence[Setting], which: Any, target: str) -> Setting:
-    """A setting of a sweep by label or index; or any state or setting.
+    """A setting of a sweep by label or index (negative from the end); or any state or setting.
 
     Raises
     ------

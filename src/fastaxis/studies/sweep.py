@@ -140,9 +140,9 @@ class Sweep:
 
         Parameters
         ----------
-        which : index of a value; or the value itself (not a whole number) where one parameter is swept; or
-            {parameter: value}.
-        setting : label or index of a setting of this sweep; or any state or setting.
+        which : index of a value, -1 for the last; or the value itself (not a whole number) where one parameter is
+            swept; or {parameter: value}.
+        setting : label or index (-1 for the last) of a setting of this sweep; or any state or setting.
 
         Raises
         ------
