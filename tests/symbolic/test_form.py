@@ -183,3 +183,12 @@ def test_an_unknown_way_or_basis_or_setting(form):
         made.jones("diagonal")
     with pytest.raises(SymbolError, match="a setting is an angle"):
         made.frame("H")
+
+
+def test_a_form_is_printed_in_a_line(form, letters):
+    """A method printed without its brackets shows the form it belongs to."""
+    made = form(fa.Retarder(fast=letters[0], retardance=letters[2]))
+    assert repr(made).startswith("<Form: light at ")
+    assert str(letters[0]) in repr(made)
+    assert len(str(made.jones)) < 200
+    assert "\n" not in repr(made)

@@ -50,7 +50,7 @@ class Part:
     field: Field
 
 
-@dataclass(frozen=True, eq=False)
+@dataclass(frozen=True, eq=False, repr=False)
 class Form(Shown):
     """The light at a port, exact, as Jones vector, Stokes parameters and frames.
 
@@ -71,6 +71,10 @@ class Form(Shown):
     parts: tuple[Part, ...]
     source_power: Any
     letters: frozenset[Any]
+
+    def __repr__(self) -> str:
+        letters = ", ".join(sorted(str(letter) for letter in self.letters)) or "none"
+        return f"<Form: light at {self.target}, letters {letters}; form.jones(), form.stokes, form.frame(angle)>"
 
     # --- the exact data ---------------------------------------------------------------------------------------------
     @cached_property
