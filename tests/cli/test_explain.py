@@ -41,6 +41,17 @@ def test_open_ports_with_power_and_caution(bench, run):
     assert "Laser caution: power leaves at bs.reflected (2.00 mW)" in ran.err
 
 
+def test_a_port_without_light_but_roundings_is_dark(bench, run):
+    text = """\
+    train = fa.Train(wavelength=532*nm)
+    train.along(fa.Laser(waist=1*mm, power=4*mW, state=fa.linear(0.3), name="laser"), fa.Polarizer(axis=0.3),
+                fa.HalfWavePlate(fast=0.15), fa.PolarizingBeamSplitter(name="pbs"), fa.BeamDump(name="dump"))
+    """
+    ran = run("explain", bench(text), "--format", "png")
+    assert "open: pbs.reflected, dark" in ran.out
+    assert "pbs.reflected" not in ran.err
+
+
 def test_a_wrong_bench_is_drawn_before_it_is_refused(bench, run, tmp_path):
     text = """\
     train = fa.Train(wavelength=532*nm).along(fa.Lens(focal=1*m, name="lens"), fa.Camera(pixel=5*um, name="cam"))

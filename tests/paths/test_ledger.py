@@ -5,6 +5,7 @@ import math
 import pytest
 
 import fastaxis as fa
+from fastaxis.engines.power_ledger import Ledger, Row
 from fastaxis.units import deg, mm, mW, nm
 
 
@@ -51,6 +52,14 @@ def test_printed_it_ends_with_the_sum():
     assert "detected             2 mW  meter" in text
     assert "sum of the ends 2 mW" in text
     assert "signs:" in text
+
+
+def test_roundings_are_printed_as_dark_and_kept_as_they_are():
+    rows = (Row("detected", "meter", 1e-3), Row("open port", "pbs.reflected", 1.5e-35), Row("dumped", "dump", 2e-12))
+    text = str(Ledger(rows, 1e-3))
+    assert [line.split()[-2] for line in text.splitlines()[1:4]] == ["mW", "dark", "mW"]
+    assert text.splitlines()[3].split()[1] == "2e-09"
+    assert rows[1].power == 1.5e-35
 
 
 def test_a_cavity_with_a_stop_says_before_any_trip_that_it_takes_too_many():

@@ -9,12 +9,11 @@ from typing import Any
 from fastaxis.cli.bench_file import BenchFile
 from fastaxis.cli.console import say, tell
 from fastaxis.cli.letters import with_letters
-from fastaxis.cli.safety import caution, port_powers
+from fastaxis.cli.safety import caution, port_powers, watts
 from fastaxis.cli.targets import sensors
 from fastaxis.conventions import View, stamp
 from fastaxis.report.bench import draw_bench, reflections_in_words
 from fastaxis.report.card import card
-from fastaxis.report.prefix import readable
 from fastaxis.report.save import save
 
 __all__ = ["explain"]
@@ -37,8 +36,9 @@ def explain(bench: BenchFile, options: Namespace) -> None:
     for target in [options.camera] if options.camera else sensors(train):
         _explain_target(train, target, options)
     say()
+    most = max(powers.values(), default=0.0)
     for port in train.open_ports():
-        say(f"open: {port}" + (f", {readable(powers[port], 'W')}" if port in powers else ""))
+        say(f"open: {port}" + (f", {watts(powers[port], most)}" if port in powers else ""))
     _say_ledger(train)
     say(stamp(options.view))
     if warning := caution(train, powers):

@@ -7,10 +7,11 @@ from typing import Any
 
 from fastaxis.cli.console import tell
 from fastaxis.engines.ledger import powers
+from fastaxis.engines.power_ledger import DARK as NOTHING
 from fastaxis.errors import SamplingError, SymbolError, WiringError
 from fastaxis.report.prefix import readable
 
-__all__ = ["DARK", "caution", "port_powers"]
+__all__ = ["DARK", "caution", "port_powers", "watts"]
 
 DARK = 1e-9  # of the strongest beam; an ideal port that should be dark is, to roundings
 
@@ -24,6 +25,15 @@ def port_powers(train: Any) -> dict[str, float]:
         return {}
     except (SymbolError, WiringError):
         return {}
+
+
+def watts(power: float, most: float) -> str:
+    """A power as a person reads it; "dark" where it is the rounding of ``most``, the strongest beam.
+
+    >>> watts(1.54e-35, 1e-3), watts(2e-6, 1e-3)
+    ('dark', '2.00 µW')
+    """
+    return "dark" if power <= NOTHING * most else readable(power, "W")
 
 
 def caution(train: Any, powers: Mapping[str, float]) -> str:

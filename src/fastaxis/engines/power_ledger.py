@@ -11,7 +11,9 @@ from fastaxis.engines.ledger import powers
 from fastaxis.train.graph import lit_nodes, source_nodes
 from fastaxis.train.validate import check_source
 
-__all__ = ["Ledger", "Row", "power_ledger"]
+__all__ = ["DARK", "Ledger", "Row", "power_ledger"]
+
+DARK = 1e-12  # of the lasers; some thousand roundings, and below what any crystal or coating reaches
 
 
 @dataclass(frozen=True)
@@ -61,9 +63,12 @@ class Ledger:
     def __str__(self) -> str:
         wide = max(len(row.kind) for row in self.rows)
         lines = [f"power of the lasers {1e3 * self.input:.6g} mW"]
-        lines += [f"  {row.kind:<{wide}}  {1e3 * row.power:12.6g} mW  {row.place}" for row in self.rows]
+        lines += [f"  {row.kind:<{wide}}  {self._told(row.power)}  {row.place}" for row in self.rows]
         lines.append(f"sum of the ends {1e3 * (self.input - self.missing):.6g} mW")
         return "\n".join([*lines, stamp()])
+
+    def _told(self, power: float) -> str:
+        return f"{'dark':>15}" if abs(power) <= DARK * self.input else f"{1e3 * power:12.6g} mW"
 
 
 def power_ledger(train: Any, *, engine: str = "auto") -> Ledger:
