@@ -167,3 +167,39 @@ def test_loops_and_return_arms_are_followed(bench_of):
     assert not [f for f in inspection if f.check == "light runs round"]
     (back,) = [f for f in inspection if f.check == "returning light"]
     assert back.element == "split.front"
+
+
+@pytest.mark.parametrize("off", [15, 30])
+def test_a_missed_focus_is_told_alike_on_both_sides(bench_of, off):
+    for distance in (200 - off, 200 + off):
+        lens = fa.Lens(focal=200 * mm, name="lens")
+        (found,) = checks(bench_of(lens, fa.FreeSpace(distance * mm), CAMERA), "off focus")
+        assert ("behind" in found.got) == (distance > 200)
+
+
+@pytest.mark.parametrize("distance", [150, 250])
+def test_a_camera_far_from_the_focus_was_not_meant_to_be_there(bench_of, distance):
+    lens = fa.Lens(focal=200 * mm, name="lens")
+    assert not checks(bench_of(lens, fa.FreeSpace(distance * mm), CAMERA), "off focus")
+
+
+def test_an_iris_beside_the_beam_is_off_centre_and_its_fix_centres_it(bench_of):
+    train = bench_of(fa.Aperture(radius=1.2 * mm, centre=(1 * mm, 0), name="iris"), METER)
+    (found,) = checks(train, "off centre")
+    assert (found.element, found.severity.value) == ("iris", "medium")
+    assert "1 mm beside the beam" in found.got
+    assert not checks(eval(found.fix, {"train": train, "mm": mm}), "off centre")
+
+
+@pytest.mark.parametrize("stop", [fa.Aperture(radius=0.3 * mm, name="stop"), fa.KnifeEdge(name="stop")])
+def test_a_small_stop_in_the_middle_and_a_knife_edge_are_not_off_centre(bench_of, stop):
+    assert checks(bench_of(stop, METER), "clipped beam")
+    assert not checks(bench_of(stop, METER), "off centre")
+
+
+@pytest.mark.parametrize(("coherence", "told"), [(2.0, 0), (0.02, 1)])
+def test_a_path_difference_that_leaves_the_fringes_alone_is_not_told(bench_of, coherence, told):
+    train = bench_of(fa.BeamSplitter(name="split"), fa.FreeSpace(110 * mm), fa.BeamSplitter(name="join"), CAMERA)
+    train.along("split.reflected", fa.FreeSpace(100 * mm), "join.side").along("join.reflected", fa.BeamDump())
+    line = fa.GaussianLine(coherence_length=coherence)
+    assert len(checks(train.with_changes({"laser.line": line}), "path difference")) == told

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import math
 from collections.abc import Iterator
 from typing import Any
 
@@ -10,16 +11,17 @@ from fastaxis.inspect.bench import Bench, Visit
 from fastaxis.inspect.clear_area import passed
 from fastaxis.inspect.finding import Finding, Severity
 from fastaxis.inspect.words import length, mm, percent, watts
-from fastaxis.laws import Disc, ScalarLaw
+from fastaxis.laws import Annulus, Disc, Rectangle, ScalarLaw
 
 __all__ = ["aperture"]
 
 # A Gaussian of radius w loses exp(-2 a^2/w^2) at a clear radius a: 1 % at 1.5 w, 0.03 % at 2 w.
 NOTICED = 1e-4
+BESIDE = 0.1  # of the light, cut off by the place of a stop rather than by its size
 
 
 def aperture(bench: Bench) -> Iterator[Finding]:
-    """One finding for each part that cuts off more than 0.01 % of the light."""
+    """Parts that cut off more than 0.01 % of the light, and stops that cut off 10 % by where they stand."""
     for visit in bench.visits:
         if not bench.lit(visit):
             continue
@@ -28,6 +30,7 @@ def aperture(bench: Bench) -> Iterator[Finding]:
                 lost = 1 - passed(law.stop, law.centre, visit.widest.spread)
                 if lost > NOTICED:
                     yield _finding(bench, visit, law, lost)
+                    yield from _beside(visit, law, lost)
 
 
 def _finding(bench: Bench, visit: Visit, law: ScalarLaw, lost: float) -> Finding:
@@ -56,6 +59,23 @@ def _finding(bench: Bench, visit: Visit, law: ScalarLaw, lost: float) -> Finding
         else "a stop takes what it is there to take",
         got=got,
         fix=f"compare the beam with the clear area: {_extent(law.stop)}",
+    )
+
+
+def _beside(visit: Visit, law: ScalarLaw, lost: float) -> Iterator[Finding]:
+    """A stop with a middle that would cut off less if it stood in the middle of the beam; edges and slits are moved."""
+    x, y = visit.widest.spread.offset
+    by_place = lost - (1 - passed(law.stop, (x, y), visit.widest.spread))
+    if isinstance(visit.element, Lens) or not isinstance(law.stop, Disc | Annulus | Rectangle) or by_place <= BESIDE:
+        return
+    apart = math.hypot(x - float(law.centre[0]), y - float(law.centre[1]))
+    yield Finding(
+        severity=Severity.MEDIUM,
+        check="off centre",
+        element=visit.name,
+        rule="a stop in the middle of the beam cuts off as little as its size allows",
+        got=f"{visit.name}: middle {length(apart)} beside the beam, which cuts off {percent(by_place)} more",
+        fix=f'train.with_changes({{"{visit.name}.centre": ({x * 1e3:.4g}*mm, {y * 1e3:.4g}*mm)}})',
     )
 
 

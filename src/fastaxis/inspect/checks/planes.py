@@ -14,7 +14,7 @@ from fastaxis.laws import AxisLaw, ScalarLaw, TravelLaw
 __all__ = ["planes", "waist_beyond"]
 
 SHARP = 25.0  # Fresnel number from which a picture shows its own plane rather than diffraction
-NEARLY = 0.15  # of the last distance: so near a focus or an image, it was probably meant
+NEARLY = 0.18  # of the way from the last lens to a focus or an image: a camera so near was probably meant to be there
 
 
 def planes(bench: Bench) -> Iterator[Finding]:
@@ -51,7 +51,7 @@ def _shown(part: Visit, camera: Visit, section: TravelLaw) -> Iterator[Finding]:
             f"{' (turned by 180°)' if a < 0 else ''}",
             fix="nothing to mend",
         )
-    elif through_lens and 0 < abs(off) < NEARLY * _last_distance(camera):
+    elif through_lens and 0 < abs(off) < NEARLY * (_last_distance(camera) + off):
         yield Finding(
             severity=Severity.MEDIUM,
             check="off the image",
@@ -91,7 +91,7 @@ def _focus(camera: Visit) -> Iterator[Finding]:
         return
     ahead, rayleigh = waist_beyond(camera)
     # Half a Rayleigh distance off, a spot is 12 % wider than at the focus.
-    if not 0.5 * rayleigh < abs(ahead) < NEARLY * _last_distance(camera):
+    if not 0.5 * rayleigh < abs(ahead) < NEARLY * (_last_distance(camera) + ahead):
         return
     yield Finding(
         severity=Severity.MEDIUM,
