@@ -52,10 +52,16 @@ def write_expression(value: Any) -> dict[str, Any]:
     aliases = {letter: _alias(letter, index, ordered) for index, letter in enumerate(ordered)}
     described = {alias: {"name": letter.name, **_assumptions(letter)} for letter, alias in aliases.items()}
     written = {"expression": _written(value, aliases), "letters": described}
-    back = read_expression(written)
-    if back != value and _sympy().expand(back - value) != 0:
+    back, meant = read_expression(written), _in_doubles(value)
+    if back != meant and _sympy().expand(back - meant) != 0:
         raise _refused(f"{value}: would read back as {back}")
     return written
+
+
+def _in_doubles(value: Any) -> Any:
+    """The value with what is below the smallest double set to 0: 1e-445, say, a product of two tiny numbers."""
+    floats = value.atoms(_sympy().Float)
+    return value.xreplace({number: _sympy().Integer(0) for number in floats if float(number) == 0})
 
 
 def _alias(letter: Any, index: int, letters: list[Any]) -> str:
