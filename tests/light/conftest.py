@@ -11,30 +11,9 @@ from fastaxis import errors, light, units
 NAMES = {name: getattr(room, name) for room in (light, units) for name in room.__all__}
 
 
-class SympyMaths:
-    """A bare sympy namespace: enough to see that states read the same on symbols."""
-
-    half = sympy.Rational(1, 2)
-
-    def phasor(self, angle):
-        return sympy.exp(sympy.I * angle)
-
-    def cos(self, angle):
-        return sympy.cos(angle)
-
-    def sin(self, angle):
-        return sympy.sin(angle)
-
-    def root(self, power):
-        return sympy.sqrt(power)
-
-    def number(self, value):
-        return sympy.nsimplify(value)
-
-
 @pytest.fixture
-def symbols():
-    return SympyMaths()
+def symbols(letters):
+    return letters
 
 
 @pytest.fixture
