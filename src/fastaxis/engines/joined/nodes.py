@@ -10,6 +10,8 @@ import numpy as np
 from numpy.typing import NDArray
 from scipy import sparse
 
+from fastaxis.light.gauss import gauss_legendre
+
 __all__ = ["Axis", "nodes_needed"]
 
 Reals = NDArray[np.float64]
@@ -72,7 +74,7 @@ class Axis:
         """Places inside each pixel by itself; the pixels may lie anywhere."""
         stretches = max(1, math.ceil(pixel * frequency / 4))
         side = pixel / stretches
-        nodes, weights = np.polynomial.legendre.leggauss(nodes_needed(side * frequency))
+        nodes, weights = gauss_legendre(nodes_needed(side * frequency))
         starts = (np.arange(stretches) - (stretches - 1) / 2) * side
         offsets = (starts[:, np.newaxis] + nodes * side / 2).ravel()
         row = np.tile(weights * side / 2, stretches)
@@ -90,7 +92,7 @@ def _between(middles: Reals, pixel: float, step: float) -> Axis:
     low, high = middles[0] - pixel / 2 - REACH * step, middles[-1] + pixel / 2 + REACH * step
     count = math.ceil((high - low) / step) + 1
     places = (low + high) / 2 + (np.arange(count) - (count - 1) / 2) * step
-    nodes, weights = np.polynomial.legendre.leggauss(nodes_needed(pixel / step))
+    nodes, weights = gauss_legendre(nodes_needed(pixel / step))
     apart = (middles[:, np.newaxis] - places) / step
     kernel = sum(w * _kernel(apart + node * pixel / step / 2) for node, w in zip(nodes, weights, strict=True))
     return Axis(places, np.asarray(kernel * pixel / 2))
