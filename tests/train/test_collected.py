@@ -11,7 +11,7 @@ from fastaxis.units import deg, mm, mW, nm
 
 
 def fields(*stokes):
-    return [SimpleNamespace(power=s[0], stokes_on=lambda raster, s=s: np.array(s)[:, None, None]) for s in stokes]
+    return [SimpleNamespace(total_stokes=np.array(s)) for s in stokes]
 
 
 def test_pure_light_gives_a_state():

@@ -7,20 +7,13 @@ from math import hypot
 from typing import Any
 
 from fastaxis.errors import ParameterError
-from fastaxis.light import Raster, State, StateMixture, from_stokes, partially_polarized
+from fastaxis.light import State, StateMixture, from_stokes, partially_polarized
 
 __all__ = ["state_of"]
 
 # The Stokes powers are sums over a grid of up to 1e7 places, good to about 1e-12; a degree of polarization this
 # close to 1 cannot be told from 1, and one beyond it is no state.
 PURE = 1e-9
-EVERYTHING = Raster(10.0, (1, 1))  # one pixel of 10 m: no table carries a wider beam
-
-
-def _weighed(part: Any) -> Any:
-    """Stokes parameters of one field [W]; of a plane wave, those on the area its power is counted on."""
-    stokes = part.stokes_on(EVERYTHING)[:, 0, 0]
-    return stokes * (part.power / stokes[0]) if stokes[0] > 0 else stokes
 
 
 def state_of(parts: Sequence[Any], target: str) -> State | StateMixture:
@@ -30,7 +23,7 @@ def state_of(parts: Sequence[Any], target: str) -> State | StateMixture:
     ------
     ParameterError : no light arrives.
     """
-    s0, s1, s2, s3 = (float(total) for total in sum(_weighed(part) for part in parts))
+    s0, s1, s2, s3 = (float(total) for total in sum(part.total_stokes for part in parts))
     if s0 <= 0:
         raise ParameterError("the dark has no polarization", got=f"{target}: {s0:g} W", fix=f'train.power("{target}")')
     degree = hypot(s1, s2, s3) / s0
