@@ -106,7 +106,7 @@ def wavelength(part: str, parameter: str, value: Any) -> Scalar:
 
 def _extremes(cells: Pattern) -> tuple[float, float]:
     """Smallest and largest value of a pattern of cells."""
-    ends = [cells.scale * float(end) + cells.shift for end in (cells.source.min(), cells.source.max())]  # type: ignore[union-attr]
+    ends = [cells.scale * float(end) + cells.shift for end in (cells.source.min(), cells.source.max())]  # type: ignore[union-attr]  # an array
     return min(ends), max(ends)
 
 

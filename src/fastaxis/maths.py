@@ -44,7 +44,7 @@ def free_symbols(values: Iterable[object]) -> set[Any]:
         if isinstance(value, tuple | list):
             found |= free_symbols(value)
         elif is_symbolic(value):
-            found |= set(value.free_symbols)  # type: ignore[attr-defined]
+            found |= set(value.free_symbols)  # type: ignore[attr-defined]  # is_symbolic saw it
     return found
 
 

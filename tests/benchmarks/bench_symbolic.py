@@ -102,8 +102,8 @@ def main():
     print("general retarders | in the ring | frame, short | field, Stokes and frame, short | frame by plain sympy")
     for count in (1, 2, 3, 4):
         ring = seconds(lambda: in_the_ring(retarders(count, f"b{count}_")))  # noqa: B023  # called at once
-        short = seconds(lambda: frame_only(retarders(count, f"c{count}_")))  # noqa: B023
-        whole = seconds(lambda: everything(retarders(count, f"d{count}_")))  # noqa: B023
+        short = seconds(lambda: frame_only(retarders(count, f"c{count}_")))  # noqa: B023  # called at once
+        whole = seconds(lambda: everything(retarders(count, f"d{count}_")))  # noqa: B023  # called at once
         text = f"{count:17d} | {ring:9.3f} s | {short:10.3f} s | {whole:28.3f} s"
         if "--plain" in sys.argv and count <= 3:
             plain = plain_seconds(count)

@@ -99,7 +99,7 @@ def test_fixes_that_are_code_mend_what_they_are_for(pairs, check):
     pair = next(p for p in pairs if p.check == check and p.name not in {"stop_beside_the_beam"})
     train = pair.build(True)
     (found,) = [f for f in train.inspect() if f.check == check and f.element == pair.element]
-    mended = eval(found.fix, {"train": train, "mm": mm, "nm": nm, "deg": deg, "um": um, "fa": fa})  # noqa: S307
+    mended = eval(found.fix, {"train": train, "mm": mm, "nm": nm, "deg": deg, "um": um, "fa": fa})  # noqa: S307 - code to paste
     again = [f for f in mended.inspect() if f.check == check and f.element == pair.element]
     assert all(f.severity.rank > found.severity.rank for f in again), again
 

@@ -132,7 +132,7 @@ def test_widths_of_a_gaussian():
     assert 2 * half == pytest.approx(1.17741002, abs=1e-8)
     # At y = 0 the light along x is that of the knife edge times the fixed height across.
     across = math.sqrt(2 / math.pi) / W0
-    left = lambda x: quad(lambda s: abs(beam.amplitude(s * W0, 0.0, HENE)) ** 2 * W0 / across, -6, x)[0]  # noqa: E731
+    left = lambda x: quad(lambda s: abs(beam.amplitude(s * W0, 0.0, HENE)) ** 2 * W0 / across, -6, x)[0]  # noqa: E731 - a formula
     low, high = (brentq(lambda x, share=share: left(x) - share, -3, 3, xtol=1e-11) for share in (0.1, 0.9))
     assert high - low == pytest.approx(1.28155157, abs=1e-8)
     assert left(0.5) - left(-0.5) == pytest.approx(erf(1 / math.sqrt(2)), abs=1e-10)  # 16-84 % is one w
@@ -181,7 +181,7 @@ def test_widths_of_simple_shapes():
 def test_ring_of_a_vortex(l, radius, peak, of_gaussian):
     """r = w sqrt(|l|/2): L. Allen et al., Phys. Rev. A 45, 8185 (1992); Phillips and Andrews (1983); from memory."""
     mode = LaguerreGauss(0, l, W0)
-    light = lambda r: abs(mode.radial(r * W0, HENE)) ** 2 * W0**2  # noqa: E731
+    light = lambda r: abs(mode.radial(r * W0, HENE)) ** 2 * W0**2  # noqa: E731 - a formula
     found = minimize_scalar(lambda r: -light(r), bounds=(0.2, 2), method="bounded", options={"xatol": 1e-9})
     assert found.x == pytest.approx(radius, abs=2e-8)  # a maximum is found to the root of a rounding
     assert light(radius) == pytest.approx(peak, abs=1e-8)
@@ -217,7 +217,7 @@ def test_coupling_of_two_gaussians():
     """H. Kogelnik (1964); W. B. Joyce and B. C. DeLoach, Appl. Opt. 23, 4187 (1984); from memory."""
     beam = Gaussian(W0)
     reach = beam.rayleigh(HENE)
-    coupling = lambda other: abs(beam.overlap(other, HENE)) ** 2  # noqa: E731
+    coupling = lambda other: abs(beam.overlap(other, HENE)) ** 2  # noqa: E731 - a formula
     assert coupling(Gaussian(1.5 * W0)) == pytest.approx(0.85207101, abs=1e-8)
     assert coupling(Gaussian(W0, centre=(W0, 0.0))) == pytest.approx(0.36787944, abs=1e-8)
     assert coupling(beam.moved(reach)) == pytest.approx(0.8, abs=1e-14)

@@ -112,7 +112,7 @@ def test_pictures_of_earlier_values_are_let_go(bench, monkeypatch):
     grid = fa.Grid(samples=128, window=8e-3)
     swept = bench.sweep({"leg.distance": [0.1, 0.12]}, "cam", fa.H, grid=grid)
     first = swept.frame(0, 0)
-    swept.powers  # noqa: B018
+    swept.powers  # noqa: B018 - asks for the rest
     assert swept.propagations == 2
     np.testing.assert_array_equal(swept.frame(0, 0), first)
     assert swept.propagations == 3

@@ -29,7 +29,7 @@ class Folding(Element):
         return ("front", "side") if self.two_way else ("front",)
 
     @property
-    def exit(self) -> str:  # type: ignore[override]
+    def exit(self) -> str:  # type: ignore[override]  # of most parts it is fixed
         return self.faces[-1]
 
     def passages(self, wavelength: Scalar) -> Passages:

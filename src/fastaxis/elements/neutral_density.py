@@ -62,7 +62,7 @@ class NeutralDensity(ThroughElement):
     @property
     def share(self) -> Scalar:
         """Share of the power that passes."""
-        return 10 ** (-self.density) if self.transmission is None else self.transmission  # type: ignore[operator]
+        return 10 ** (-self.density) if self.transmission is None else self.transmission  # type: ignore[operator]  # one is given
 
     def laws(self, wavelength: Scalar) -> tuple[ScalarLaw, ...]:
         return (ScalarLaw(Amplitude(self.share)),)

@@ -8,7 +8,6 @@ from dataclasses import dataclass, field
 from functools import cached_property
 from typing import Any
 
-from fastaxis.elements.base import Element
 from fastaxis.errors import FastaxisError
 from fastaxis.inspect.strands import Strand, total
 from fastaxis.laws import Flip, ScalarLaw, TravelLaw
@@ -24,7 +23,7 @@ class Visit:
 
     Parameters
     ----------
-    element : the part.
+    element : the part; of whichever class, as ``of_kind`` has chosen it.
     entered, left : faces; ``left`` is "" where the light ends.
     laws : what happens in between, at the wavelength of the train.
     before, after : the light that arrives and that leaves; the latter empty where the light ends.
@@ -33,7 +32,7 @@ class Visit:
     source : name of the laser.
     """
 
-    element: Element
+    element: Any
     entered: str
     left: str
     laws: tuple[Any, ...]
@@ -45,7 +44,7 @@ class Visit:
 
     @property
     def name(self) -> str:
-        return self.element.name
+        return str(self.element.name)
 
     @property
     def power(self) -> float:

@@ -69,9 +69,9 @@ def _gather(steps: Steps, _: float) -> Steps:
 
 def _added(turn: Step | None, step: Step, sense: int) -> Step | None:
     """A turn and one more, met through flips that leave or reverse its sense; None once they make whole turns."""
-    angle = sense * step.law.angle  # type: ignore[union-attr]
+    angle = sense * step.law.angle  # type: ignore[union-attr]  # a Turn, by the caller
     if turn is not None:
-        angle, step = angle + turn.law.angle, turn.joined(step, turn.law)  # type: ignore[union-attr]
+        angle, step = angle + turn.law.angle, turn.joined(step, turn.law)  # type: ignore[union-attr]  # both Turns
     return None if NUMBERS.phasor(angle) == 1 else Step(step.names, Turn(angle))
 
 

@@ -141,7 +141,7 @@ def footer(figure: Figure, view: View = View.RECEIVER, *, note: str = "") -> Non
     figure.text(0.01, 0.03 / height, "\n".join(lines), size=FOOT_SIZE, color=SOFT, va="bottom", linespacing=1.15)
     engine = figure.get_layout_engine()
     if engine is not None:
-        engine.set(rect=(0, inches / height, 1, 1 - inches / height), h_pad=0.03, w_pad=0.03)  # type: ignore[call-arg]
+        engine.set(rect=(0, inches / height, 1, 1 - inches / height), h_pad=0.03, w_pad=0.03)  # type: ignore[call-arg]  # its stub lacks rect
 
 
 def foot_height(width: float, view: View = View.RECEIVER, *, note: str = "") -> float:

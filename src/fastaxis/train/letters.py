@@ -18,7 +18,7 @@ __all__ = ["as_symbols", "letters", "substituted", "substituted_element"]
 def letters(value: object) -> set[Any]:
     """All letters in a value: in tuples, in states, modes and terms inside it."""
     if is_symbolic(value):
-        return set(value.free_symbols)  # type: ignore[attr-defined]
+        return set(value.free_symbols)  # type: ignore[attr-defined]  # is_symbolic saw it
     if isinstance(value, tuple | list):
         return set().union(*(letters(item) for item in value))
     if is_dataclass(value) and not isinstance(value, type):

@@ -25,9 +25,9 @@ def test_a_disc_is_even_and_ends_at_its_radius(wavelength):
 @pytest.mark.parametrize("order", [2, 3.5, 6, 20])
 def test_a_soft_edge_has_unit_power_and_the_moments_of_its_light(order, wavelength):
     mode = FlatTop(A, order)
-    field = lambda r: mode.radial(r * A, wavelength).real * A  # noqa: E731
-    slope = lambda r: -order * r ** (order - 1) * field(r)  # noqa: E731
-    around = lambda f: quad(lambda r: f(r) * 2 * np.pi * r, 0, 5, points=[0.8, 1.2], epsabs=1e-12)[0]  # noqa: E731
+    field = lambda r: mode.radial(r * A, wavelength).real * A  # noqa: E731 - a formula
+    slope = lambda r: -order * r ** (order - 1) * field(r)  # noqa: E731 - a formula
+    around = lambda f: quad(lambda r: f(r) * 2 * np.pi * r, 0, 5, points=[0.8, 1.2], epsabs=1e-12)[0]  # noqa: E731 - a formula
     moments = mode.moments(wavelength)
     # quad is asked for 1e-12.
     assert around(lambda r: field(r) ** 2) == pytest.approx(1, abs=1e-11)

@@ -45,7 +45,7 @@ def joined(arms: Sequence[Branch], found: Sequence[PlaneField]) -> tuple[PlaneFi
 def _uniform_sum(found: Sequence[Any], numbers: Complexes) -> PlaneField:
     first = found[0]
     total = sum(number * field.jones for number, field in zip(numbers, found, strict=True))
-    return type(first)(first.wavelength, np.asarray(total), first.area)  # type: ignore[no-any-return]
+    return type(first)(first.wavelength, np.asarray(total), first.area)  # type: ignore[no-any-return]  # the class of the first arm
 
 
 @dataclass(frozen=True, eq=False)

@@ -86,7 +86,7 @@ def centred(poly: Poly) -> tuple[int, Poly]:
 
 def middle(polys: Iterable[Poly]) -> int:
     """The phasor halfway between the extreme exponents of every angle."""
-    ring, low, high, count = None, {}, {}, 0  # type: ignore[var-annotated]
+    ring, low, high, count = None, {}, {}, 0  # type: ignore[var-annotated]  # filled below, letter by letter
     for poly in polys:
         ring = poly.ring
         for key in poly.terms:

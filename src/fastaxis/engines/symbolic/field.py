@@ -111,7 +111,7 @@ class Field:
         """(E_L, E_R) with the waves multiplied in [1/m]."""
         zero = self.place.maths.ring.zero
         parts = [(wave.poly(self.place), pair) for wave, pair in self.pieces]
-        return tuple(reduce(lambda total, part: total + part[0] * part[1][i], parts, zero) for i in (0, 1))  # type: ignore[return-value]
+        return tuple(reduce(lambda total, part: total + part[0] * part[1][i], parts, zero) for i in (0, 1))  # type: ignore[return-value]  # two
 
 
 Key = tuple[Any, Any]

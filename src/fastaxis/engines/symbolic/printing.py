@@ -44,13 +44,13 @@ class _Order:
         return [first, *terms]
 
 
-class _Text(_Order, StrPrinter):  # type: ignore[misc]
+class _Text(_Order, StrPrinter):  # type: ignore[misc]  # sympy has no types
     def _print_hyper(self, e: Any) -> str:
         (a,), (b,) = e.ap, e.bq
         return f"1F1({self._print(a)}; {self._print(b)}; {self._print(e.argument)})"
 
 
-class _Latex(_Order, LatexPrinter):  # type: ignore[misc]
+class _Latex(_Order, LatexPrinter):  # type: ignore[misc]  # sympy has no types
     def _print_hyper(self, e: Any, exp: Any = None) -> str:
         (a,), (b,) = e.ap, e.bq
         inside = r";\, ".join(self._print(part) for part in (a, b, e.argument))

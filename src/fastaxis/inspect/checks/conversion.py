@@ -20,7 +20,7 @@ def conversion(bench: Bench) -> Iterator[Finding]:
             continue
         told.add(visit.name)
         for wavelength in bench.wavelengths:
-            yield from _tuning(visit.element, wavelength)  # type: ignore[arg-type]  # of_kind gives q-plates
+            yield from _tuning(visit.element, wavelength)
 
 
 def _tuning(plate: QPlate, wavelength: float) -> Iterator[Finding]:

@@ -36,7 +36,7 @@ def period(one: Visit, other: Visit) -> float:
 
 
 def _against_pixel(one: Visit, other: Visit) -> Iterator[Finding]:
-    pixels = period(one, other) / one.element.pixel  # type: ignore[attr-defined]  # ends on a camera
+    pixels = period(one, other) / one.element.pixel
     if pixels >= 4:
         return
     yield Finding(

@@ -45,7 +45,7 @@ def _leaking(rotator: Visit, leak: float) -> Finding:
         check="isolator",
         element=rotator.name,
         rule="a Faraday rotator isolates at 45°, where light coming back is turned by 90° in all",
-        got=f"{rotator.name}: angle {degrees(float(rotator.element.angle))}, {percent(leak)} passes backwards",  # type: ignore[attr-defined]
+        got=f"{rotator.name}: angle {degrees(float(rotator.element.angle))}, {percent(leak)} passes backwards",
         fix=f'train.with_changes({{"{rotator.name}.angle": 45*deg}})',
     )
 

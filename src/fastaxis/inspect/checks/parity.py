@@ -32,11 +32,11 @@ def parity(bench: Bench) -> Iterator[Finding]:
 
 def _mirrored(visit: Visit) -> Iterator[Finding]:
     odd = sum(visit.flips) % 2 == 1
-    undone = visit.element.orientation.startswith("mirrored")  # type: ignore[attr-defined]  # of_kind gives cameras
+    undone = visit.element.orientation.startswith("mirrored")
     if not odd and not undone:
         return
     count = sum(visit.flips)
-    told = f"{visit.name}: {count} reflection{'' if count == 1 else 's'}, orientation {visit.element.orientation!r}"  # type: ignore[attr-defined]
+    told = f"{visit.name}: {count} reflection{'' if count == 1 else 's'}, orientation {visit.element.orientation!r}"
     if odd == undone:
         severity = Severity.NOTE
         rule = "the camera's orientation turns the picture back; the light itself keeps R and L exchanged"
@@ -48,7 +48,7 @@ def _mirrored(visit: Visit) -> Iterator[Finding]:
         )
     else:
         severity, rule = Severity.MEDIUM, "the camera mirrors frames that arrive as they left"
-    turn = visit.element.orientation.removeprefix("mirrored").strip(", ")  # type: ignore[attr-defined]
+    turn = visit.element.orientation.removeprefix("mirrored").strip(", ")
     wanted = ("mirrored" if turn in ("", "upright") else f"mirrored, {turn}") if odd else turn or "upright"
     yield Finding(
         severity=severity,

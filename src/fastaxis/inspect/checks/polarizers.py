@@ -35,7 +35,7 @@ def axis_fix(visit: Visit) -> str:
     """Code that turns the axis along the light."""
     met, wanted = float(visit.laws[0].angle), azimuth(total(visit.before))
     sense = -1 if visit.entered == "back" else 1
-    axis = float(visit.element.axis) + sense * (wanted - met)  # type: ignore[attr-defined]
+    axis = float(visit.element.axis) + sense * (wanted - met)
     return f'train.with_changes({{"{visit.name}.axis": {degrees(axis).rstrip("°")}*deg}})'
 
 
@@ -58,7 +58,7 @@ def _finding(visit: Visit, share: float) -> Finding:
             element=visit.name,
             rule=f"of circular light a polarizer passes half, {percent(share)} here, whatever its axis",
             got=got,
-            fix=f"fa.QuarterWavePlate(fast={degrees(float(visit.element.axis)).rstrip('°')}*deg + 45*deg) "  # type: ignore[attr-defined]
+            fix=f"fa.QuarterWavePlate(fast={degrees(float(visit.element.axis)).rstrip('°')}*deg + 45*deg) "
             f"before {visit.name}",
         )
     return Finding(

@@ -21,7 +21,7 @@ def relays(bench: Bench) -> Iterator[Finding]:
         first = _lens_before(visit)
         if first is None:
             continue
-        total = float(first.element.focal) + float(visit.element.focal)  # type: ignore[attr-defined]
+        total = float(first.element.focal) + float(visit.element.focal)
         apart = visit.distance - first.distance
         if total > 0 and SET < abs(apart / total - 1) < NEARLY:
             yield Finding(

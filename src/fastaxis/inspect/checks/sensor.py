@@ -26,10 +26,10 @@ def sensor(bench: Bench) -> Iterator[Finding]:
 
 def _missed(visit: Visit) -> Iterator[Finding]:
     camera = visit.element
-    ny, nx = camera.seen  # type: ignore[attr-defined]  # of_kind gives cameras
-    width, height = nx * camera.pixel, ny * camera.pixel  # type: ignore[attr-defined]
+    ny, nx = camera.seen
+    width, height = nx * camera.pixel, ny * camera.pixel
     spread = visit.widest.spread
-    lost = 1 - passed(Rectangle(width, height), camera.centre, spread)  # type: ignore[attr-defined]
+    lost = 1 - passed(Rectangle(width, height), camera.centre, spread)
     if lost <= 1e-3:
         return
     x, y = spread.offset
@@ -45,7 +45,7 @@ def _missed(visit: Visit) -> Iterator[Finding]:
 
 
 def _small(visit: Visit) -> Iterator[Finding]:
-    pixels = visit.radius / visit.element.pixel  # type: ignore[attr-defined]
+    pixels = visit.radius / visit.element.pixel
     if pixels >= FEWEST:
         return
     yield Finding(

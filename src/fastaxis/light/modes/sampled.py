@@ -88,7 +88,7 @@ class SampledMode:
     @cached_property
     def _splines(self) -> tuple[RectBivariateSpline, RectBivariateSpline]:
         # It takes a quarter of a second to load, and no other mode needs it.
-        from scipy.interpolate import RectBivariateSpline  # noqa: PLC0415
+        from scipy.interpolate import RectBivariateSpline  # noqa: PLC0415  # slow to load, and only sampled modes need it
 
         rows, columns = self.raster.y, self.raster.x
         return (

@@ -164,7 +164,7 @@ def _worst(train: Any, causes: Causes, merit: Merit, each: tuple[Answer, ...], o
         sizes = []
         for error, answer in zip(causes.errors, each, strict=True):
             tried = (0.0, error.limit, -error.limit)
-            sizes.append(max(tried, key=lambda size, a=answer: sign * a.shift(size)))  # type: ignore[misc]
+            sizes.append(max(tried, key=lambda size, a=answer: sign * a.shift(size)))  # type: ignore[misc]  # default binds a
         corners.append(np.array(sizes) @ causes.directions)
     values = prepared(train, causes, np.array(corners), merit, options).values()
     return Range(float(values.min()), float(values.max()))

@@ -47,7 +47,7 @@ class Branches:
         if self.always:
             return f"dark at every {self.angle}"
         text = [
-            f"{self.angle} = {as_text(branch)}" + ("" if condition == True else f" if {_said(condition)}")  # noqa: E712
+            f"{self.angle} = {as_text(branch)}" + ("" if condition == True else f" if {_said(condition)}")  # noqa: E712  # sympy's true
             for branch, condition in zip(self.branches, self.conditions, strict=True)
         ]
         text += [f"or {as_text(other)} = 0 at every {self.angle}" for other in self.others]

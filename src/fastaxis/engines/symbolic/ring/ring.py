@@ -168,7 +168,7 @@ class Ring:
             for place, generator in enumerate(other.generators)
         }
         self._switches |= {places[place] for place in other._switches}  # noqa: SLF001  # another ring's own relations
-        for place, whole in other._wholes.items():  # noqa: SLF001
+        for place, whole in other._wholes.items():  # noqa: SLF001  # another ring's own relations
             if places[place] not in self._wholes:
                 self._wholes[places[place]] = self._moved(whole, places)
         return self._moved(poly, places)
