@@ -55,6 +55,7 @@ class Beam:
 @dataclass
 class Plan:
     wavelength: float = 633e-9
+    joined = False
     source: object = field(default_factory=lambda: SimpleNamespace(power=8.0))
 
     def __str__(self):

@@ -7,6 +7,7 @@ import numpy as np
 import pytest
 
 from fastaxis.camera import no_analyzer, plate_then_polarizer
+from fastaxis.camera.arrival import Arrival
 from fastaxis.camera.bundle import load, save
 from fastaxis.camera.settings import Setting
 from fastaxis.conventions import View
@@ -29,7 +30,7 @@ def rich(shots):
         guard=Guard(1e-9, 0.25, 1e-12),
         orientation="turned 90",
         sent=3.0,
-        arrived=2.5,
+        arrival=Arrival(2.5),
     )
 
 

@@ -8,6 +8,7 @@ from zipfile import BadZipFile
 
 import numpy as np
 
+from fastaxis.camera.arrival import Arrival
 from fastaxis.camera.coding import FORMAT, facts, facts_from, setting_from_json, to_text, view_from
 from fastaxis.camera.exposure import Exposure
 from fastaxis.engines.field import Guard
@@ -69,14 +70,14 @@ def load(path: str | Path) -> Exposure:
 
 
 def _exposure(about: dict[str, Any], arrays: dict[str, Any]) -> Exposure:
-    guard = about["guard"]
+    guard, arrived = about["guard"], about.get("arrived")  # older files have neither this nor what was sent
     return Exposure(
         **arrays,
         settings=tuple(setting_from_json(data) for data in about["settings"]),
         view=view_from(about),
         guard=None if guard is None else Guard(**guard),
-        sent=about.get("sent"),  # older files have neither
-        arrived=about.get("arrived"),
+        sent=about.get("sent"),
+        arrival=None if arrived is None else Arrival(arrived),
         **{name: about[name] for name in ("pixel", "wavelength", "name", "target", "orientation", "plan")},
     )
 

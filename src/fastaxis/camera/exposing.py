@@ -11,6 +11,7 @@ from typing import TYPE_CHECKING, Any, TypeAlias, overload
 import numpy as np
 from numpy.typing import NDArray
 
+from fastaxis.camera.arrival import arrival
 from fastaxis.camera.exposure import Exposure
 from fastaxis.camera.room import check_room
 from fastaxis.camera.settings import Setting, as_settings, weight_matrix
@@ -124,7 +125,7 @@ def _shot(train: Any, target: str, plan: Any, fields: Sequence[Any], analyzers: 
         guard=merge_guards([field.guard for field in fields]),
         plan=str(plan),
         sent=float(plan.source.power),
-        arrived=float(sum(field.power for field in fields)),
+        arrival=arrival(plan, fields, stokes.nbytes),
     )
 
 

@@ -10,6 +10,7 @@ from typing import Any
 import numpy as np
 from numpy.typing import NDArray
 
+from fastaxis.camera.arrival import Arrival
 from fastaxis.camera.mixing import mixed
 from fastaxis.camera.mounting import Mounting
 from fastaxis.camera.room import check_frames
@@ -44,7 +45,7 @@ class Exposure:
     guard : how well the sampling carried the light; None if not known.
     plan : how it was computed, in words.
     sent : power that the laser sends out [W]; None if not known.
-    arrived : power in the plane of the sensor, on it and beside it [W]; None if not known.
+    arrival : the power in the plane of the sensor, on it and beside it; None if not known.
     """
 
     stokes: NDArray[np.float64] = field(repr=False)
@@ -60,7 +61,7 @@ class Exposure:
     guard: Any = field(default=None, repr=False)
     plan: str = field(default="", repr=False)
     sent: float | None = None
-    arrived: float | None = None
+    arrival: Arrival | None = field(default=None, repr=False)
 
     @property
     def stamp(self) -> str:
@@ -129,6 +130,14 @@ class Exposure:
     def total_power(self) -> float:
         """Power on the sensor without an analyzer [W]."""
         return float(self.stokes[0].sum())
+
+    @property
+    def arrived(self) -> float | None:
+        """Power in the plane of the sensor, on it and beside it [W]; None if not known.
+
+        Where several arms meet it is worked out when first asked for, which may take as long as the exposure.
+        """
+        return None if self.arrival is None else self.arrival.power
 
     @property
     def dark_below(self) -> float:
