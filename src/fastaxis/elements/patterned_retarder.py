@@ -8,6 +8,7 @@ from typing import Any, ClassVar
 
 from fastaxis import checks
 from fastaxis.elements.base import Element, ThroughElement
+from fastaxis.elements.warming import REFERENCE, checked_temperatures, warming
 from fastaxis.errors import ParameterError
 from fastaxis.laws import Amplitude, AxisLaw
 from fastaxis.maths import Scalar, Value
@@ -30,10 +31,15 @@ class PatternedRetarder(ThroughElement):
     pixel : side of a cell [m], for arrays.
     centre : (x, y) of the plate's own origin [m].
     transmission : share of the power that passes [0 .. 1].
+    temperature, design_temperature : of the plate, and that at which ``retardance`` holds [K]; both 293.15 (20 degrees
+        Celsius) if left out.
+    drift : share of its retardance that the plate gains in one kelvin [1/K]: the factor
+        1 + drift (temperature - design_temperature). Crystal quartz has about -1e-4, liquid crystals -1e-3 to -1e-2.
 
     Raises
     ------
-    ParameterError : both or neither axis; an array without ``pixel``; a function that does not work on arrays.
+    ParameterError : both or neither axis; an array without ``pixel``; a function that does not work on arrays; a
+        temperature in degrees Celsius.
 
     Notes
     -----
@@ -54,6 +60,9 @@ class PatternedRetarder(ThroughElement):
     pixel: float | None = None
     centre: tuple[Scalar, Scalar] = (0.0, 0.0)
     transmission: Scalar = 1.0
+    temperature: Scalar = REFERENCE
+    design_temperature: Scalar = REFERENCE
+    drift: Scalar = 0.0
 
     stem: ClassVar[str] = "plate"
 
@@ -71,6 +80,7 @@ class PatternedRetarder(ThroughElement):
         self._keep(
             centre=checks.centre(self.label, self.centre),
             transmission=checks.fraction(self.label, "transmission", self.transmission, fix="transmission=0.99"),
+            **checked_temperatures(self.label, self.temperature, self.design_temperature, self.drift),
         )
 
     @property
@@ -78,8 +88,13 @@ class PatternedRetarder(ThroughElement):
         """Angle of the fast axis [rad], however it was declared."""
         return self.slow + (-pi / 2) if self.fast is None else self.fast
 
+    @property
+    def warmed_retardance(self) -> Value:
+        """Retardance [rad] at the plate's temperature."""
+        return self.retardance * warming(self.drift, self.temperature, self.design_temperature)
+
     def laws(self, wavelength: Scalar) -> tuple[AxisLaw, ...]:
-        half = self.retardance / 2
+        half = self.warmed_retardance / 2
         along, across = Amplitude(self.transmission, -half), Amplitude(self.transmission, half)
         return (AxisLaw(along, across, self.fast_axis, centre=self.centre),)
 

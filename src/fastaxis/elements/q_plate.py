@@ -8,6 +8,7 @@ from typing import ClassVar
 
 from fastaxis import checks
 from fastaxis.elements.base import ThroughElement
+from fastaxis.elements.warming import REFERENCE, checked_temperatures, warming
 from fastaxis.errors import FastaxisWarning
 from fastaxis.laws import Amplitude, AxisLaw
 from fastaxis.maths import Scalar
@@ -32,10 +33,15 @@ class QPlate(ThroughElement):
     centre : (x, y) of the singular point of the plate [m].
     transmission : share of the power that passes [0 .. 1].
     design : wavelength [m] for which ``retardance`` holds; the path difference is taken as dispersion-free.
+    temperature, design_temperature : of the plate, and that at which ``retardance`` holds [K]; both 293.15 (20 degrees
+        Celsius) if left out.
+    drift : share of its retardance that the plate gains in one kelvin [1/K]: the factor
+        1 + drift (temperature - design_temperature). Crystal quartz has about -1e-4, liquid crystals -1e-3 to -1e-2.
 
     Raises
     ------
-    ParameterError : q not a multiple of 1/2; a bare angle in degrees; transmission above 1.
+    ParameterError : q not a multiple of 1/2; a bare angle in degrees; transmission above 1; a temperature in degrees
+        Celsius.
 
     Notes
     -----
@@ -55,6 +61,9 @@ class QPlate(ThroughElement):
     centre: tuple[Scalar, Scalar] = (0.0, 0.0)
     transmission: Scalar = 1.0
     design: Scalar | None = None
+    temperature: Scalar = REFERENCE
+    design_temperature: Scalar = REFERENCE
+    drift: Scalar = 0.0
 
     stem: ClassVar[str] = "qplate"
 
@@ -65,13 +74,15 @@ class QPlate(ThroughElement):
             retardance=checks.angle(self.label, "retardance", self.retardance),
             centre=checks.centre(self.label, self.centre),
             transmission=checks.fraction(self.label, "transmission", self.transmission, fix="transmission=0.99"),
+            **checked_temperatures(self.label, self.temperature, self.design_temperature, self.drift),
         )
         if self.design is not None:
             self._keep(design=checks.wavelength(self.label, "design", self.design))
 
     def retardance_at(self, wavelength: Scalar) -> Scalar:
-        """Retardance [rad] at a wavelength [m]."""
-        return self.retardance if self.design is None else self.retardance * (self.design / wavelength)
+        """Retardance [rad] at a wavelength [m] and the plate's temperature."""
+        warmed = self.retardance * warming(self.drift, self.temperature, self.design_temperature)
+        return warmed if self.design is None else warmed * (self.design / wavelength)
 
     def unconverted(self, wavelength: float) -> float:
         """Share of the transmitted power that keeps its hand and its charge, cos^2(d/2); numbers only."""

@@ -15,7 +15,7 @@ __all__ = ["inspect_train"]
 
 NEVER = (
     "saturation and noise: a camera is declared without what it holds",
-    "temperature of plates, thickness, walk-off and tilt inside parts",
+    "temperature of parts other than plates; thickness, walk-off and tilt inside parts",
     "ghosts of parts other than windows",
     "pulsed light, damage thresholds, and laser limits outside 400 to 1400 nm",
     "mechanics: heights, clearances, mounts",

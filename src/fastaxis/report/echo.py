@@ -107,6 +107,14 @@ def _state(value: Any, view: View) -> str:
     return view.rename(value.label) or f"azimuth {degrees(value.azimuth)}, ellipticity {degrees(value.ellipticity)}"
 
 
+def _temperature(value: Scalar) -> str:
+    return str(value) if is_symbolic(value) else f"{value:g} K ({value - 273.15:.4g} °C)"
+
+
+def _drift(value: Scalar) -> str:
+    return str(value) if is_symbolic(value) else f"{value:g} per K"
+
+
 def _mode(value: Any) -> str:
     """A mode by its kind, its orders and its size."""
     orders = [f"{name} = {getattr(value, name)}" for name in ("p", "l", "m", "n") if hasattr(value, name)]
@@ -144,6 +152,8 @@ SPOKEN = (
     (_power, "power"),
     (_index, "index layer"),
     (_nanometres, "design"),
+    (_temperature, "temperature design_temperature"),
+    (_drift, "drift"),
     (_mode, "mode"),
     (_parts, "incoherent"),
     (_rows_and_columns, "shape"),
@@ -166,7 +176,7 @@ def _spoken(parameter: str, value: Any, view: View) -> str:
 # What goes without saying unless it was changed.
 USUAL: dict[str, Any] = {
     "transmission": 1.0, "order": 0, "centre": (0.0, 0.0), "waist_at": 0.0, "x": 0.0, "y": 0.0, "wedge": 0.0,
-    "orientation": "upright",
+    "orientation": "upright", "temperature": 293.15, "design_temperature": 293.15, "drift": 0.0,
     "phase_p": 0.0, "phase_s": 0.0, "phase_t": 0.0, "phase_tp": 0.0, "phase_ts": 0.0,
     "phase_r": pi / 2, "phase_rp": pi / 2, "phase_rs": pi / 2,
 }  # fmt: skip

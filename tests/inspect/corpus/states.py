@@ -23,6 +23,27 @@ def plate_of_tenth_order(wrong):
     return line(fa.HalfWavePlate(fast=20 * deg, order=10 if wrong else 0, design=532 * nm, name="hwp"), METER)
 
 
+@pair("plate temperature", "hwp", "medium")
+def high_order_plate_in_a_warm_room(wrong):
+    order = 20 if wrong else 0
+    warm = {"drift": -1e-4, "temperature": 298.15}
+    plate = fa.HalfWavePlate(fast=20 * deg, order=order, design=532 * nm, name="hwp", **warm)
+    return line(plate, METER)
+
+
+@pair("plate temperature", "qwp", "high")
+def high_order_plate_in_an_oven(wrong):
+    oven = 353.15 if wrong else 294.15
+    plate = fa.QuarterWavePlate(fast=20 * deg, order=10, design=532 * nm, drift=-1e-4, temperature=oven, name="qwp")
+    return line(plate, METER)
+
+
+@pair("plate temperature", "qp", "medium")
+def q_plate_on_a_warm_day(wrong):
+    plate = fa.QPlate(q=0.5, drift=-3e-3, temperature=308.15 if wrong else 293.15, name="qp")
+    return line(plate, CAMERA)
+
+
 @pair("plate name", "hwp", "medium")
 def half_wave_plate_of_a_quarter(wrong):
     return line(fa.HalfWavePlate(fast=20 * deg, retardance=(90 if wrong else 178) * deg, name="hwp"), METER)

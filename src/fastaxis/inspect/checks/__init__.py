@@ -24,6 +24,7 @@ from fastaxis.inspect.checks.relays import relays
 from fastaxis.inspect.checks.sampling import sampling
 from fastaxis.inspect.checks.sensor import sensor
 from fastaxis.inspect.checks.slips import slips
+from fastaxis.inspect.checks.temperatures import temperatures
 from fastaxis.inspect.checks.windows import windows
 from fastaxis.inspect.checks.wiring import wiring
 from fastaxis.inspect.finding import Finding
@@ -32,7 +33,7 @@ __all__ = ["CHECKS", "wiring"]
 
 CHECKS: tuple[Callable[[Bench], Iterator[Finding]], ...] = (
     open_ports, dark, gain, aperture, sensor, patterns, centring, paraxial,
-    plates, conversion, polarizers, isolators, mirrors, idle, extinction,
+    plates, temperatures, conversion, polarizers, isolators, mirrors, idle, extinction,
     parity, planes, relays, windows, fringes, sampling, slips,
 )  # fmt: skip
 """Run on every bench whose light can be followed; wiring comes before, as it decides whether it can."""

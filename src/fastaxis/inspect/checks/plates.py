@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import math
 from collections.abc import Iterator
+from dataclasses import replace
 
 from fastaxis.elements.retarder import HalfWavePlate, QuarterWavePlate, Retarder
 from fastaxis.elements.spiral_plate import SpiralPlate
@@ -20,13 +21,18 @@ def plates(bench: Bench) -> Iterator[Finding]:
     """Retardance of each plate at the wavelengths it meets, against its nominal one."""
     for visit in bench.first_visits():
         if isinstance(visit.element, Retarder):
-            yield from _named(visit.element)
+            plate = _at_design_temperature(visit.element)  # what warmth does is told by a check of its own
+            yield from _named(plate)
             for wavelength in bench.wavelengths:
-                yield from _detuned(visit.element, wavelength)
-            yield from _order(visit.element, bench.wavelength)
+                yield from _detuned(plate, wavelength)
+            yield from _order(plate, bench.wavelength)
         if isinstance(visit.element, SpiralPlate):
             for wavelength in bench.wavelengths:
                 yield from _spiral(visit.element, wavelength)
+
+
+def _at_design_temperature(plate: Retarder) -> Retarder:
+    return replace(plate, temperature=plate.design_temperature)
 
 
 def _named(plate: Retarder) -> Iterator[Finding]:
