@@ -2,6 +2,7 @@ import numpy as np
 import pytest
 
 import fastaxis as fa
+from fastaxis.maths import NUMBERS
 from fastaxis.studies.tolerance.lawtable import law_tables
 from fastaxis.units import deg, mm, nm
 
@@ -43,3 +44,30 @@ def test_other_parameters_are_asked_at_every_value():
 def test_a_place_is_not_a_number_of_the_law():
     values = np.array([[0.0], [0.1 * mm]])
     assert law_tables(fa.QPlate(q=0.5), WAY, LINE, ("centre_x",), values) is None
+
+
+@pytest.mark.parametrize(
+    ("element", "names", "around", "within"),
+    [
+        (fa.Polarizer(axis=0.2, extinction=300), ("axis", "extinction"), [0.2, 300], [0.1, 100]),
+        (fa.QuarterWavePlate(fast=0.3), ("fast", "retardance", "wavelength"), [0.3, 1.5, LINE], [0.1, 0.1, 2 * nm]),
+    ],
+)
+def test_a_few_values_of_a_smooth_parameter_give_all_others(element, names, around, within):
+    values = np.array(around) + np.random.default_rng(2).uniform(-1, 1, (3000, len(names))) * within
+    asked = []
+    law = type(element).laws
+
+    class Counting(type(element)):
+        def laws(self, wavelength):
+            asked.append(wavelength)
+            return law(self, wavelength)
+
+    counting = Counting(**element.parameters())
+    found = law_tables(counting, WAY, LINE, names, values)
+    assert len(asked) < len(values)
+    for row in (1, 1234, -2):
+        changes = dict(zip(names, values[row], strict=True))
+        colour = changes.pop("wavelength", LINE)
+        exact = [law.linear(NUMBERS) for law in element.changed(**changes).laws(colour)]
+        assert [numbers[row].reshape(2, 2) for _, numbers in found] == [pytest.approx(np.array(exact[0]), abs=1e-13)]
