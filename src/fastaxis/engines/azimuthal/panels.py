@@ -25,6 +25,8 @@ _VANDER = np.polynomial.legendre.legvander(NODES, ORDER - 1)
 # c_j = (2j+1)/2 sum_i w_i P_j(x_i) f(x_i): exact for polynomials of the panel, the rule being exact to 2 ORDER - 1.
 _TO_COEFFICIENTS = (_VANDER * WEIGHTS[:, np.newaxis] * (np.arange(ORDER) + 0.5)).T
 
+CHUNK = 1 << 12  # places at a time: a megabyte of polynomials stays in the cache
+
 
 @lru_cache(maxsize=64)
 def _split(count: int) -> tuple[Reals, Reals, Reals]:
@@ -87,11 +89,26 @@ class Profile:
 
     def __call__(self, r: Reals) -> Complexes:
         """Values at any radii [m], shape (functions, len(r)); zero outside the panels."""
+        out = np.empty((len(self.values), len(r)), dtype=complex)
+        for start in range(0, len(r), CHUNK):
+            self._read(r[start : start + CHUNK], out[:, start : start + CHUNK])
+        return out
+
+    def _read(self, r: Reals, out: Complexes) -> None:
         panel = np.clip(np.searchsorted(self.edges, r, side="right") - 1, 0, len(self.edges) - 2)
         low, high = self.edges[panel], self.edges[panel + 1]
-        place = (2 * r - low - high) / (high - low)
-        inside = (r >= self.start) & (r <= self.end)
-        return np.asarray(_clenshaw(self.coefficients[:, :, : self.degree + 1], panel, place) * inside)
+        basis = _legendre(np.clip((2 * r - low - high) / (high - low), -1, 1), self.degree)
+        # Real polynomials times real and imaginary parts, the places on one panel together.
+        columns = np.ascontiguousarray(self.coefficients[:, :, : self.degree + 1]).view(float)
+        columns = columns.reshape(*columns.shape[:2], -1, 2)
+        order = np.argsort(panel, kind="stable")
+        for some in np.split(order, np.flatnonzero(np.diff(panel[order])) + 1):
+            if len(some):
+                rows = basis[:, some].T @ columns[:, panel[some[0]]]
+                out[:, some] = rows.view(complex)[:, :, 0]
+        outside = (r < self.start) | (r > self.end)
+        if outside.any():
+            out[:, outside] = 0
 
     @cached_property
     def degree(self) -> int:
@@ -100,15 +117,20 @@ class Profile:
         return int(np.flatnonzero(size > 1e-14 * size.max(initial=0.0)).max(initial=1))
 
     @cached_property
-    def highest_frequency(self) -> float:
-        """Radial frequency [rad/m] of the functions, from the degrees that the panels need.
+    def frequencies(self) -> Reals:
+        """Highest radial frequency [rad/m] on each panel, from the degree that it needs; 0 on one without width.
 
         exp(i c x) on [-1, 1] has coefficients J_n(c), which fall to 1e-12 at (e c/2n)^n, so c = (2n/e) 10^(-12/n).
         """
-        size = abs(self.coefficients).max(axis=0)
+        size, width = abs(self.coefficients).max(axis=0), np.diff(self.edges)
         degree = ((size > 1e-15 * self.peak) * np.arange(ORDER)).max(axis=1).clip(1)
-        frequency = 2 * degree / np.e * 10 ** (-12 / degree)
-        return float((2 * frequency / np.diff(self.edges)).max())
+        wide = width > 1e-6 * self.end
+        return np.where(wide, 4 * degree / np.e * 10 ** (-12 / degree) / np.where(wide, width, 1), 0.0)
+
+    @property
+    def highest_frequency(self) -> float:
+        """Radial frequency [rad/m] of the functions."""
+        return float(self.frequencies.max())
 
     def refined(self, counts: NDArray[np.int_]) -> tuple[Reals, Reals, Complexes]:
         """Nodes, weights and values with each panel cut into so many equal parts."""
@@ -140,13 +162,14 @@ class Profile:
         return Profile(self.edges * factor, self.values)
 
 
-def _clenshaw(coefficients: Complexes, panel: NDArray[np.intp], place: Reals) -> Complexes:
-    """Sum of Legendre polynomials, from the highest degree down."""
-    last = this = np.zeros((len(coefficients), len(place)), dtype=complex)
-    for j in range(coefficients.shape[2] - 1, 0, -1):
-        step = coefficients[:, panel, j] + (2 * j + 1) / (j + 1) * place * this - (j + 1) / (j + 2) * last
-        last, this = this, step
-    return np.asarray(coefficients[:, panel, 0] + place * this - 0.5 * last)
+def _legendre(place: Reals, degree: int) -> Reals:
+    """P_0 .. P_degree at some places in [-1, 1], shape (degree + 1, places)."""
+    values = np.empty((degree + 1, len(place)))
+    values[0] = 1
+    values[1:2] = place
+    for j in range(1, degree):
+        values[j + 1] = ((2 * j + 1) / (j + 1)) * place * values[j] - (j / (j + 1)) * values[j - 1]
+    return values
 
 
 def nodes_on(edges: Reals) -> Reals:

@@ -3,17 +3,20 @@
 from __future__ import annotations
 
 import math
-from collections.abc import Callable
+from collections.abc import Callable, Sequence
 from typing import Any
 
 import numpy as np
 
 from fastaxis.engines.azimuthal.applying import TO_CIRCULAR
+from fastaxis.engines.azimuthal.carried import behind, edges_for, gathered
 from fastaxis.engines.azimuthal.harmonics import LEFT, RIGHT, Harmonics
 from fastaxis.engines.azimuthal.panels import ORDER, Complexes, Profile, Reals
 from fastaxis.engines.azimuthal.resolving import Settings, extended, resolved
 from fastaxis.errors import SamplingError
 from fastaxis.laws import Annulus, TravelLaw
+from fastaxis.light import Term
+from fastaxis.light.modes.family import GaussFamily
 from fastaxis.plan import Branch, JonesStep
 from fastaxis.plan.steps import Steps
 
@@ -25,12 +28,16 @@ Radial = Callable[[Reals], Complexes]
 def started(branch: Branch, settings: Settings) -> tuple[Harmonics, Steps]:
     """The harmonics where they begin, scaled to the power of the branch, and the steps left to do.
 
-    Most light begins in the plane of the source; a plane wave begins at the first hole, since it changes nothing of
-    itself on the way there.
+    Gaussian modes keep their shape up to the first part that shapes the light, and begin there; other light begins in
+    the plane of the source. A plane wave begins at the first hole, since it changes nothing of itself on the way there.
     """
     if any(term.mode.infinite for term in branch.beam.terms):
         return started_at_stop(branch)
-    return started_at_source(branch, settings), branch.steps
+    section, steps = gathered(branch.beam.terms, branch.steps)
+    terms = branch.beam.terms
+    if section != TravelLaw():
+        terms = tuple(behind(term, section, branch.wavelength) for term in terms)
+    return started_with(terms, branch, settings), steps
 
 
 def started_at_stop(branch: Branch) -> tuple[Harmonics, Steps]:
@@ -73,9 +80,9 @@ def _rim(law: Any) -> float:
     return float(law.stop.outer if isinstance(law.stop, Annulus) else law.stop.radius)
 
 
-def started_at_source(branch: Branch, settings: Settings) -> Harmonics:
-    """The harmonics in the plane of the source."""
-    wavelength, terms = branch.wavelength, branch.beam.terms
+def started_with(terms: Sequence[Term], branch: Branch, settings: Settings) -> Harmonics:
+    """The harmonics of the terms that a beam has where they begin."""
+    wavelength = branch.wavelength
     scale = branch.beam.scale(wavelength) * math.sqrt(branch.power)
     main = max(terms, key=lambda term: abs(term.number)).mode
     curvature = float(main.curvature(wavelength))
@@ -127,6 +134,8 @@ def _harmonics(mode: Any, wavelength: float) -> list[tuple[int, Radial]]:
 
 
 def _profile(modes: list[Any], radials: Radial, wavelength: float, settings: Settings) -> tuple[Profile, float]:
+    if all(isinstance(mode, GaussFamily) for mode in modes):
+        return resolved(radials, edges_for(modes, wavelength, settings.dark), settings)
     hard = [float(mode.radius) for mode in modes if mode.hard]
     if hard:
         # Panels break at each edge; beyond the last edge soft modes go on.

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import math
 from dataclasses import dataclass, replace
 
 import numpy as np
@@ -14,6 +15,8 @@ POINTS = 8  # a cell: polynomials of degree 7, so halving a cell gains a factor 
 CHEBYSHEV: Reals = np.cos(np.pi * (np.arange(POINTS) + 0.5) / POINTS)
 TO_POWERS = np.linalg.inv(np.vander(CHEBYSHEV, increasing=True)).T
 FINEST = 1 << 15
+PHASE = 0.36
+"""Phase [rad] of the highest frequency that a cell carries: (PHASE/2)^8 / (2^7 8!) is SETTLED (DLMF 3.3.4)."""
 SETTLED = 2e-13  # of the peak: twice what the panels themselves are settled to
 
 
@@ -69,7 +72,7 @@ def table_of(profile: Profile, reach: float) -> Table:
     if reach <= profile.start:
         return Table(0.0, reach, np.zeros((len(profile.values), 1, POINTS), dtype=complex))
     start, reach = profile.start, min(reach, profile.end)
-    cells = max(16, 2 * (len(profile.edges) - 1))
+    cells = min(max(16, math.ceil((reach - start) * profile.highest_frequency / PHASE)), FINEST)
     while True:
         table = _at(profile, start, reach, cells)
         # The places where a Chebyshev interpolant is worst, a third of the way off its points.
