@@ -7,7 +7,9 @@ import pytest
 from scipy.integrate import dblquad
 
 import fastaxis as fa
+from fastaxis.engines.joined import JoinedField
 from fastaxis.engines.joined.coherence import coherence, mixtures
+from fastaxis.engines.joined.extent import Extent
 from fastaxis.engines.joined.nodes import Axis, nodes_needed
 from fastaxis.light import Raster
 from fastaxis.units import deg, mm, mrad, nm, um
@@ -67,8 +69,9 @@ def test_the_pictures_of_both_ports_add_up_only_when_one_is_mirrored(mach_zehnde
 
 
 def branch_picture(train, index):
-    field = train.field("transmitted")[0].arms[index]
-    return field.stokes_on(Raster(20 * um, (80, 80)))[0]
+    joined, branch = train.field("transmitted")[0], train.plan("transmitted").branches[index]
+    alone = JoinedField((joined.arms[index],), np.eye(1), Extent.of((branch,)), (branch.engine,))
+    return alone.stokes_on(Raster(20 * um, (80, 80)))[0]
 
 
 def test_a_pixel_holds_the_integral_of_the_fringes(mach_zehnder):
@@ -135,10 +138,14 @@ def test_two_lasers_add_in_power(mach_zehnder):
 
 
 def test_the_plan_names_each_arm(mach_zehnder):
-    text = str(mach_zehnder(other=[fa.FreeSpace(0.25), fa.Wedge(x=1 * mrad)]).plan("out.transmitted"))
+    wedge, slit = [fa.FreeSpace(0.25), fa.Wedge(x=1 * mrad)], [fa.Slit(width=1 * mm)]
+    text = str(mach_zehnder(arm=[fa.SpiralPlate(charge=1)], other=wedge).plan("out.transmitted"))
     assert "engine joined, because light comes by several paths" in text
-    assert "arm laser -> in -> phase -> m1 -> out -> out.transmitted: engine azimuthal, path 0 mm" in text
-    assert "engine grid, path 250 mm" in text
+    first = "arm laser -> in -> phase -> spiral1 -> m1 -> out -> out.transmitted"
+    assert f"{first}: engine azimuthal, path 0 mm" in text
+    assert "engine modes, path 250 mm" in text
+    assert "moved by (0, 0) mm, tilted by (-1, 0) mrad" in text  # the last splitter reflects
+    assert "engine grid, path 250 mm" in str(mach_zehnder(other=[*wedge, *slit]).plan("out.transmitted"))
 
 
 @pytest.mark.parametrize("turns", [0.0, 0.004, 0.1, 0.5, 2.0, 9.0])

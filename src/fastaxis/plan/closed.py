@@ -1,4 +1,4 @@
-"""Arms whose light keeps its shape: one matrix, one section and the reversals are all there is to them."""
+"""Arms whose light keeps its shape: a matrix, a section, reversals and a displacement are all there is to them."""
 
 from __future__ import annotations
 
@@ -9,6 +9,7 @@ from itertools import takewhile
 from fastaxis.laws import Flip, ScalarLaw, TravelLaw
 from fastaxis.light import Beam
 from fastaxis.light.modes.family import GaussFamily
+from fastaxis.plan.displacement import Displacement
 from fastaxis.plan.fuse import as_matrix
 from fastaxis.plan.plan import Branch
 from fastaxis.plan.steps import JonesStep, Step, StepLaw, Steps
@@ -17,10 +18,11 @@ __all__ = ["closed"]
 
 
 def closed(arms: Sequence[Branch]) -> tuple[Branch, ...] | None:
-    """The arms with the engine "modes" and at most four steps each; None if any of them gives its light a shape.
+    """The arms with the engine "modes" and at most five steps each; None if any of them gives its light a shape.
 
-    Gaussian modes on the axis stay what they are through any ray matrix; uniform matrices, centred lenses, travel and
-    reversals may change places, so that an arm of a thousand round trips is as short as one without any.
+    Gaussian modes stay what they are through any ray matrix, and their middle goes where a ray would go. Uniform
+    matrices may change places with lenses, travel, reversals and tilts, and these with each other once they are
+    written for their new place, so that an arm of a thousand round trips is as short as one without any.
     """
     if not all(map(_keeps_shape, {id(arm.beam): arm.beam for arm in arms}.values())):
         return None
@@ -34,28 +36,34 @@ def closed(arms: Sequence[Branch]) -> tuple[Branch, ...] | None:
 
 
 def _keeps_shape(beam: Beam) -> bool:
-    return all(isinstance(term.mode, GaussFamily) and term.mode.centred for term in beam.terms)
+    return all(isinstance(term.mode, GaussFamily) for term in beam.terms)
 
 
 @dataclass(frozen=True)
 class _Folded:
-    """What some steps do together."""
+    """What some steps do together, in this order."""
 
     matrix: JonesStep = field(default_factory=JonesStep)
     section: TravelLaw = field(default_factory=TravelLaw)
     reversed_axes: frozenset[str] = frozenset()
+    displacement: Displacement = field(default_factory=Displacement)
 
     def past(self, law: StepLaw) -> _Folded:
         if isinstance(law, JonesStep):
             return replace(self, matrix=self.matrix.then(law))
         if isinstance(law, TravelLaw):
-            return replace(self, section=self.section.then(law))
+            return replace(self, section=self.section.then(law), displacement=self.displacement.through(law))
+        if isinstance(law, Displacement):
+            return replace(self, displacement=self.displacement.then(law))
         assert isinstance(law, Flip)
-        return replace(self, reversed_axes=self.reversed_axes ^ {law.axis})
+        turned = self.displacement.reversed(law.axis)
+        return replace(self, reversed_axes=self.reversed_axes ^ {law.axis}, displacement=turned)
 
     def steps(self, origin: Steps) -> Steps:
         names = tuple(dict.fromkeys(name for step in origin for name in step.names))
-        laws: tuple[StepLaw, ...] = (self.matrix, self.section, *map(Flip, sorted(self.reversed_axes)))
+        laws: list[StepLaw] = [self.matrix, self.section, *map(Flip, sorted(self.reversed_axes))]
+        if self.displacement != Displacement():
+            laws.append(self.displacement)
         return tuple(Step(names, law) for law in laws)
 
 
@@ -83,12 +91,22 @@ class _Folder:
 
 
 def _parts(step: Step) -> tuple[StepLaw, ...] | None:
-    """A law as matrices, sections and reversals; None if there is more to it."""
+    """A law as matrices, sections, reversals and displacements; None if there is more to it."""
     law, matrix = step.law, as_matrix(step)
     if matrix is not None:
         return (matrix,)
     if isinstance(law, TravelLaw | Flip):
         return (law,)
-    if isinstance(law, ScalarLaw) and replace(law, vergence=0.0).uniform and tuple(law.centre) == (0, 0):
-        return (JonesStep.scale(law.transmission.number()), TravelLaw.lens(law.vergence))
+    if isinstance(law, ScalarLaw) and replace(law, vergence=0.0, tilt=(0.0, 0.0)).uniform:
+        return _bending(law)
     return None
+
+
+def _bending(law: ScalarLaw) -> tuple[StepLaw, ...]:
+    """A lens and a wedge. A lens off the axis is a centred one, a tilt of c/f, and |c|^2/2f less glass on the axis."""
+    number, (x, y) = JonesStep.scale(law.transmission.number()), (float(place) for place in law.centre)
+    v, (tx, ty) = float(law.vergence), (float(tilt) for tilt in law.tilt)
+    turn = Displacement.wedge((tx + v * x, ty + v * y), (x, y))
+    turn = replace(turn, path=turn.path + v * (x * x + y * y) / 2)
+    parts: list[StepLaw] = [number, TravelLaw.lens(law.vergence)]
+    return tuple(parts if turn == Displacement() else [*parts, turn])

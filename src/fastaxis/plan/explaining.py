@@ -10,6 +10,7 @@ from typing import TYPE_CHECKING
 
 from fastaxis.conventions import stamp
 from fastaxis.laws import AxisLaw, Flip, ScalarLaw, TravelLaw, Turn
+from fastaxis.plan.displacement import Displacement
 
 if TYPE_CHECKING:
     from fastaxis.plan.plan import Branch, Plan
@@ -31,6 +32,9 @@ def _said(law: StepLaw) -> str:
         return f"axis law, q = {law.order:g}" if law.order else "patterned axis law"
     if isinstance(law, ScalarLaw):
         return "scalar law" + "".join(_pieces(law))
+    if isinstance(law, Displacement):
+        (x, y), (tx, ty) = ((1e3 * one + 0.0, 1e3 * other + 0.0) for one, other in (law.offset, law.tilt))
+        return f"moved by ({x:.4g}, {y:.4g}) mm, tilted by ({tx:.4g}, {ty:.4g}) mrad"
     if isinstance(law, Turn):
         return f"picture turned by {math.degrees(law.angle):.6g} deg"
     return f"{law.axis} reversed" if isinstance(law, Flip) else "uniform matrix"

@@ -178,14 +178,16 @@ def _sampled(branch: Branch, grid: Grid | None, first: int = 0) -> Branch:
 
 def _joined(plan: Plan, grid: Grid | None, *, bucket: bool, asked: str) -> Plan:
     """Every arm with the engine that suits it."""
-    branches = []
+    branches: list[Branch] = []
     for group in plan.groups:
         alike = bucket and len({_shape(branch.steps) for branch in group}) == 1
         for branch in group:
             source = Source((Component(1.0, branch.beam, branch.wavelength),), branch.power)
             name, _ = choose(branch.steps, source, bucket=alike, asked=asked, sampled=grid is not None)
+            # A wedge alone asks for no samples: a mode stays a mode.
+            kept = closed((branch,)) if name == "grid" and asked == "auto" and grid is None else None
             chosen = replace(branch, engine=name)
-            branches.append(_sampled(chosen, grid) if name == "grid" else chosen)
+            branches += kept or (_sampled(chosen, grid) if name == "grid" else chosen,)
     return replace(plan, branches=tuple(branches), engine="joined", reason="light comes by several paths")
 
 

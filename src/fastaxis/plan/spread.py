@@ -8,6 +8,7 @@ from dataclasses import dataclass, replace
 from fastaxis.laws import Annulus, AxisLaw, Disc, Flip, Rectangle, ScalarLaw, Stop, Strip, TravelLaw, Turn
 from fastaxis.light import Beam, Mode, SampledMode
 from fastaxis.maths import Pattern
+from fastaxis.plan.displacement import Displacement
 from fastaxis.plan.steps import StepLaw
 from fastaxis.plan.turning import turned
 
@@ -79,16 +80,21 @@ class Spread:
         """After any law."""
         if isinstance(law, TravelLaw):
             return self.through(law)
-        if isinstance(law, Flip):
-            return replace(self, offset=_reversed(self.offset, law.axis), slope=_reversed(self.slope, law.axis))
-        if isinstance(law, Turn):
-            return replace(self, offset=turned(self.offset, law.angle), slope=turned(self.slope, law.angle))
+        if isinstance(law, Flip | Turn | Displacement):
+            return self._moved(law)
         if isinstance(law, AxisLaw):
             spread = self if law.order == 0 else self.twisted(2 * law.order, wavelength)
             return spread if law.uniform or law.order != 0 else replace(spread, rough=True)
         if isinstance(law, ScalarLaw):
             return self._past_scalar(law, wavelength)
         return self
+
+    def _moved(self, law: Flip | Turn | Displacement) -> Spread:
+        if isinstance(law, Flip):
+            return replace(self, offset=_reversed(self.offset, law.axis), slope=_reversed(self.slope, law.axis))
+        if isinstance(law, Turn):
+            return replace(self, offset=turned(self.offset, law.angle), slope=turned(self.slope, law.angle))
+        return replace(self, offset=_added(self.offset, law.offset), slope=_added(self.slope, law.tilt))
 
     def _past_scalar(self, law: ScalarLaw, wavelength: float) -> Spread:
         spread = self if law.charge == 0 else self.twisted(law.charge, wavelength)
@@ -123,6 +129,10 @@ class Spread:
         return Spread(
             size, self.curvature, max(self.angle, wavelength / (2 * math.pi * size)), offset, self.slope, True
         )
+
+
+def _added(one: Pair, other: Pair) -> Pair:
+    return (one[0] + other[0], one[1] + other[1])
 
 
 def _reversed(pair: Pair, axis: str) -> Pair:

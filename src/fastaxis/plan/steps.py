@@ -7,6 +7,7 @@ from typing import Any, TypeAlias
 
 from fastaxis.laws import Law
 from fastaxis.maths import NUMBERS, Maths
+from fastaxis.plan.displacement import Displacement
 
 __all__ = ["JonesStep", "Step", "StepLaw", "Steps"]
 
@@ -49,7 +50,7 @@ class JonesStep:
         return self.matrix
 
 
-StepLaw: TypeAlias = Law | JonesStep
+StepLaw: TypeAlias = Law | JonesStep | Displacement
 
 
 @dataclass(frozen=True)

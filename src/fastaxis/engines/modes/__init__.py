@@ -1,4 +1,4 @@
-"""The modes engine: sums of Gaussian modes about one axis, each known in closed form behind any ray matrix."""
+"""The modes engine: sums of Gaussian modes, tilted and displaced or not, each in closed form behind any ray matrix."""
 
 from fastaxis.engines.modes.running import run
 from fastaxis.engines.modes.summing import ModeSum, combined

@@ -5,6 +5,7 @@ from __future__ import annotations
 from collections.abc import Sequence
 from dataclasses import dataclass, replace
 from functools import cached_property
+from typing import Any
 
 import numpy as np
 from numpy.typing import NDArray
@@ -21,7 +22,7 @@ Complexes = NDArray[np.complex128]
 
 @dataclass(frozen=True, eq=False)
 class ModeSum:
-    """Light that is a sum of Gaussian modes about the axis.
+    """Light that is a sum of Gaussian modes.
 
     Parameters
     ----------
@@ -72,9 +73,6 @@ def combined(fields: Sequence[ModeSum], coefficients: Complexes) -> ModeSum:
 
 
 def _together(alike: list[Waves]) -> Waves:
-    return replace(
-        alike[0],
-        widths=np.concatenate([waves.widths for waves in alike]),
-        exponents=np.concatenate([waves.exponents for waves in alike]),
-        jones=np.concatenate([waves.jones for waves in alike]),
-    )
+    parts = ("widths", "exponents", "jones", "middles", "leans")
+    joined: dict[str, Any] = {part: np.concatenate([getattr(waves, part) for waves in alike]) for part in parts}
+    return replace(alike[0], **joined)
