@@ -12,7 +12,7 @@ from fastaxis import units
 @pytest.mark.parametrize(
     ("unit", "value"),
     [("pm", 1e-12), ("nm", 1e-9), ("um", 1e-6), ("mm", 1e-3), ("cm", 1e-2), ("m", 1), ("km", 1e3),
-     ("nW", 1e-9), ("uW", 1e-6), ("mW", 1e-3), ("W", 1), ("rad", 1), ("mrad", 1e-3), ("urad", 1e-6)],
+     ("nW", 1e-9), ("uW", 1e-6), ("mW", 1e-3), ("W", 1), ("s", 1), ("ms", 1e-3), ("us", 1e-6), ("rad", 1), ("mrad", 1e-3), ("urad", 1e-6)],
 )  # fmt: skip
 def test_metric_prefixes(unit, value):
     assert getattr(units, unit) == value

@@ -62,6 +62,7 @@ if TYPE_CHECKING:
         Retarder,
         Rhomb,
         Rotator,
+        Sensor,
         Slit,
         SpiralPlate,
         Wedge,
@@ -125,7 +126,7 @@ _HOMES = {
     "elements": "Annulus Aperture BeamDump BeamSplitter Camera Detector DovePrism FaradayRotator FreeSpace "
     "HalfWavePlate KMirror KnifeEdge Laser Lens Mask MetalMirror Mirror NeutralDensity Obstacle PatternedPolarizer "
     "PatternedRetarder PhaseShift PickOff Polarizer PolarizingBeamSplitter QPlate QuarterWavePlate "
-    "RectangularAperture Retarder Rhomb Rotator Slit SpiralPlate Wedge Window",
+    "RectangularAperture Retarder Rhomb Rotator Sensor Slit SpiralPlate Wedge Window",
     "errors": "FastaxisError FastaxisWarning FileFormatError MissingFileError ParameterError SamplingError "
     "SamplingWarning SlipWarning SymbolError WiringError WiringWarning",
     "inspect": "Mount",

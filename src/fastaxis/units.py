@@ -25,6 +25,10 @@ uW = 1e-6
 mW = 1e-3
 W = 1.0
 
+s = 1.0
+ms = 1e-3
+us = 1e-6
+
 rad = 1.0
 mrad = 1e-3
 urad = 1e-6
@@ -43,13 +47,16 @@ __all__ = [
     "mW",
     "mm",
     "mrad",
+    "ms",
     "nW",
     "nm",
     "pm",
     "rad",
+    "s",
     "turn",
     "uW",
     "um",
     "urad",
+    "us",
     "waves",
 ]  # fmt: skip

@@ -197,6 +197,59 @@ def test_a_small_stop_in_the_middle_and_a_knife_edge_are_not_off_centre(bench_of
     assert not checks(bench_of(stop, METER), "off centre")
 
 
+SENSOR = fa.Sensor(full_well=10_000, quantum_efficiency=0.6)
+
+
+def read(bench_of, exposure_time, **laser):
+    """One pixel that takes a tenth of a microwatt of 532 nm: 1.6e11 electrons a second, full after 62 ns."""
+    camera = fa.Camera(pixel=5 * mm, shape=(1, 1), sensor=SENSOR, exposure_time=exposure_time, name="cam")
+    return [f for f in bench_of(camera, power=1e-7, **laser).inspect() if f.check in ("saturation", "few counts")]
+
+
+def test_a_camera_without_an_exposure_time_is_told_when_it_is_full(bench_of):
+    (found,) = read(bench_of, None)
+    assert found.severity.value == "note"
+    assert "full after 62.2 ns" in found.got  # 1e4 h c/(0.6 * 1e-7 W * 532 nm)
+    assert '"cam.exposure_time": 5e-08' in found.fix
+
+
+def test_an_exposure_too_short_for_a_shutter_is_mended_by_a_filter(bench_of):
+    (found,) = read(bench_of, 1e-6)
+    # 1e-6/62.2e-9 = 16.1; log10(16.1/0.8) = 1.30 and a little
+    assert found.fix == "fa.NeutralDensity(density=1.4) before cam"
+
+
+def test_unpolarized_light_is_brighter_without_an_analyzer(bench_of):
+    (found,) = read(bench_of, 100e-9, state=fa.UNPOLARIZED)
+    assert found.severity.value == "low"
+    assert "without an analyzer the brightest pixel gets 1.61 times what it holds" in found.got
+
+
+def test_a_camera_whose_light_cannot_be_worked_out_is_told_by_sampling_alone():
+    train = fa.Train(wavelength=532 * nm).along(
+        fa.Laser(mode=fa.PlaneWave(area=1e-6), name="laser"), fa.Lens(focal=0.3), fa.FreeSpace(0.3),
+        fa.Camera(pixel=10 * um, sensor=SENSOR, exposure_time=1e-3, name="cam"),
+    )  # fmt: skip
+    assert not checks(train, "saturation")
+    assert checks(train, "sampling")
+
+
+def test_a_temperature_without_a_drift_is_a_note(bench_of):
+    plate = fa.HalfWavePlate(fast=20 * deg, temperature=303.15, name="hwp")
+    (found,) = checks(bench_of(plate, METER), "plate temperature")
+    assert found.severity.value == "note"
+    assert "drift 0" in found.got
+
+
+@pytest.mark.parametrize("retardance", [lambda x, y: np.pi + 0 * x * y, np.full((64, 64), np.pi), np.pi])
+def test_the_drift_of_a_patterned_plate(bench_of, retardance):
+    plate = fa.PatternedRetarder(
+        fast=0.3, retardance=retardance, pixel=100 * um, drift=-2e-3, temperature=303.15, name="plate"
+    )
+    (found,) = checks(bench_of(plate, CAMERA), "plate temperature")
+    assert "10 K above its design temperature, retardance off by -3.6°" in found.got
+
+
 @pytest.mark.parametrize(("coherence", "told"), [(2.0, 0), (0.02, 1)])
 def test_a_path_difference_that_leaves_the_fringes_alone_is_not_told(bench_of, coherence, told):
     train = bench_of(fa.BeamSplitter(name="split"), fa.FreeSpace(110 * mm), fa.BeamSplitter(name="join"), CAMERA)

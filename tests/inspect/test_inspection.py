@@ -89,12 +89,17 @@ def test_an_inspection_hides_no_caution_from_the_train(bench_of):
 
 
 def test_what_is_never_checked_is_said(bench_of):
-    told = " ".join(bench_of(fa.Detector()).inspect().not_checked)
-    for word in ("saturation", "temperature", "ghosts", "pulsed", "heights"):
+    told = " ".join(bench_of(fa.Camera(pixel=10 * um, name="cam")).inspect().not_checked)
+    assert "saturation and noise of cam: no sensor=fa.Sensor(...) is declared" in told
+    for word in ("temperature", "ghosts", "pulsed", "heights"):
         assert word in told
 
 
-@pytest.mark.parametrize("check", ["clipped beam", "off centre", "design wavelength", "bare degrees", "isolator"])
+CODE = ["clipped beam", "off centre", "design wavelength", "bare degrees", "isolator", "plate temperature",
+        "saturation", "few counts"]  # fmt: skip
+
+
+@pytest.mark.parametrize("check", CODE)
 def test_fixes_that_are_code_mend_what_they_are_for(pairs, check):
     pair = next(p for p in pairs if p.check == check and p.name not in {"stop_beside_the_beam"})
     train = pair.build(True)
@@ -102,6 +107,11 @@ def test_fixes_that_are_code_mend_what_they_are_for(pairs, check):
     mended = eval(found.fix, {"train": train, "mm": mm, "nm": nm, "deg": deg, "um": um, "fa": fa})  # noqa: S307 - code to paste
     again = [f for f in mended.inspect() if f.check == check and f.element == pair.element]
     assert all(f.severity.rank > found.severity.rank for f in again), again
+
+
+def test_a_camera_with_a_sensor_is_not_among_what_was_not_checked(pairs):
+    (pair,) = [p for p in pairs if p.name == "exposure_of_seconds_for_milliseconds"]
+    assert "saturation" not in " ".join(pair.build(False).inspect().not_checked)
 
 
 def test_no_example_of_the_project_raises_an_alarm(request):

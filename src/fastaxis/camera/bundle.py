@@ -9,7 +9,7 @@ from zipfile import BadZipFile
 import numpy as np
 
 from fastaxis.camera.arrival import Arrival
-from fastaxis.camera.coding import FORMAT, facts, facts_from, setting_from_json, to_text, view_from
+from fastaxis.camera.coding import FORMAT, facts, facts_from, sensor_from_json, setting_from_json, to_text, view_from
 from fastaxis.camera.exposure import Exposure
 from fastaxis.engines.field import Guard
 from fastaxis.errors import FileFormatError
@@ -70,7 +70,7 @@ def load(path: str | Path) -> Exposure:
 
 
 def _exposure(about: dict[str, Any], arrays: dict[str, Any]) -> Exposure:
-    guard, arrived = about["guard"], about.get("arrived")  # older files have neither this nor what was sent
+    guard, arrived = about["guard"], about.get("arrived")  # older files have less
     return Exposure(
         **arrays,
         settings=tuple(setting_from_json(data) for data in about["settings"]),
@@ -78,6 +78,8 @@ def _exposure(about: dict[str, Any], arrays: dict[str, Any]) -> Exposure:
         guard=None if guard is None else Guard(**guard),
         sent=about.get("sent"),
         arrival=None if arrived is None else Arrival(arrived),
+        sensor=sensor_from_json(about.get("sensor")),
+        exposure_time=about.get("exposure_time"),
         **{name: about[name] for name in ("pixel", "wavelength", "name", "target", "orientation", "plan")},
     )
 

@@ -9,13 +9,23 @@ from typing import Any
 from fastaxis.camera.exposure import Exposure
 from fastaxis.camera.settings import Setting
 from fastaxis.conventions import View
+from fastaxis.elements.sensor import Sensor
 from fastaxis.laws import Amplitude, AxisLaw, CircularLaw, ScalarLaw
 from fastaxis.light.states import State
 
-__all__ = ["FORMAT", "facts", "facts_from", "setting_from_json", "setting_to_json", "to_text", "view_from"]
+__all__ = [
+    "FORMAT",
+    "facts",
+    "facts_from",
+    "sensor_from_json",
+    "setting_from_json",
+    "setting_to_json",
+    "to_text",
+    "view_from",
+]
 
 FORMAT = "fastaxis exposure 1"
-_KINDS = {kind.__name__: kind for kind in (AxisLaw, CircularLaw, ScalarLaw, Amplitude, State, Setting)}
+_KINDS = {kind.__name__: kind for kind in (AxisLaw, CircularLaw, ScalarLaw, Amplitude, State, Setting, Sensor)}
 
 
 def _encode(value: Any) -> Any:
@@ -49,6 +59,14 @@ def setting_from_json(data: dict[str, Any]) -> Setting:
     return setting
 
 
+def sensor_from_json(data: dict[str, Any] | None) -> Sensor | None:
+    """The sensor of a camera again; None without one, as in files that know of none."""
+    sensor = _decode(data)
+    if sensor is not None and not isinstance(sensor, Sensor):
+        raise TypeError(type(sensor).__name__)
+    return sensor
+
+
 def facts(shots: Exposure) -> dict[str, Any]:
     """Everything about an exposure but its arrays."""
     guard = shots.guard
@@ -67,6 +85,8 @@ def facts(shots: Exposure) -> dict[str, Any]:
         "plan": shots.plan,
         "sent": shots.sent,
         "arrived": shots.arrived,
+        "sensor": _encode(shots.sensor),
+        "exposure_time": shots.exposure_time,
     }
 
 

@@ -126,6 +126,8 @@ def _shot(train: Any, target: str, plan: Any, fields: Sequence[Any], analyzers: 
         plan=str(plan),
         sent=float(plan.source.power),
         arrival=arrival(plan, fields, stokes.nbytes),
+        sensor=getattr(sensor, "sensor", None),
+        exposure_time=getattr(sensor, "exposure_time", None),
     )
 
 

@@ -23,7 +23,16 @@ def listing(shots: Exposure) -> str:
     mounted = Mounting(shots.orientation).words if shots.pixel is not None else ""
     notes = [f"  picture {mounted}; states, and angles of lobes in the beam's frame"] if mounted else []
     lines = (f"  {row.label:<{width}}  {_words(row, shots.dark_below)}" for row in rows)
-    return "\n".join([head, *lines, *notes, shots.stamp])
+    return "\n".join([head, *lines, *notes, *_filled(shots), shots.stamp])
+
+
+def _filled(shots: Exposure) -> list[str]:
+    """How full the brightest pixel of all settings gets, where the camera says what it holds."""
+    if shots.sensor is None or not math.isfinite(after := shots.saturates_after):
+        return []
+    full = f"  the brightest pixel is full after {1e3 * after:.3g} ms"
+    time = shots.exposure_time
+    return [full if time is None else f"{full}; at {1e3 * time:.3g} ms it holds {time / after:.3g} of that"]
 
 
 def _words(row: Row, dark_below: float) -> str:

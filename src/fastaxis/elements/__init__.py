@@ -24,6 +24,7 @@ from fastaxis.elements.q_plate import QPlate
 from fastaxis.elements.retarder import HalfWavePlate, QuarterWavePlate, Retarder
 from fastaxis.elements.rhomb import Rhomb
 from fastaxis.elements.rotator import FaradayRotator, Rotator
+from fastaxis.elements.sensor import Sensor
 from fastaxis.elements.spiral_plate import SpiralPlate
 from fastaxis.elements.wedge import Wedge
 from fastaxis.elements.window import Window
@@ -33,6 +34,6 @@ __all__ = [
     "Element", "FaradayRotator", "FreeSpace", "HalfWavePlate", "KMirror", "KnifeEdge", "Laser", "Lens",
     "Mask", "MetalMirror", "Mirror", "NeutralDensity", "Obstacle", "PatternedPolarizer", "PatternedRetarder",
     "PhaseShift", "PickOff", "Polarizer", "PolarizingBeamSplitter", "QPlate", "QuarterWavePlate",
-    "RectangularAperture", "Retarder", "Rhomb", "Rotator", "Slit", "SpiralPlate", "ThroughElement", "Wedge",
+    "RectangularAperture", "Retarder", "Rhomb", "Rotator", "Sensor", "Slit", "SpiralPlate", "ThroughElement", "Wedge",
     "Window",
 ]  # fmt: skip

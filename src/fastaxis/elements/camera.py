@@ -7,8 +7,9 @@ from typing import Any, ClassVar
 
 from fastaxis import checks
 from fastaxis.elements.base import Element
+from fastaxis.elements.sensor import Sensor
 from fastaxis.errors import ParameterError
-from fastaxis.maths import Scalar
+from fastaxis.maths import Scalar, is_symbolic
 
 __all__ = ["ORIENTATIONS", "Camera"]
 
@@ -29,11 +30,13 @@ class Camera(Element):
     centre : (x, y) of the middle of the sensor [m].
     orientation : how its frames stand to the view that faces the source with x to the right and y up: "upright"; or
         "turned 90", "turned 180", "turned 270" counter-clockwise; or "mirrored" left-right, and then turned.
+    sensor : what it makes of the light (:class:`Sensor`); None if only watts are asked for.
+    exposure_time : of a frame [s], above zero.
 
     Raises
     ------
     ParameterError : a pixel that is not positive or lacks its unit; a shape that is not two whole numbers; another
-        word for the orientation.
+        word for the orientation; something else for a sensor; an exposure time that is not above zero.
 
     Examples
     --------
@@ -45,6 +48,8 @@ class Camera(Element):
     shape: tuple[int, int] = (512, 512)
     centre: tuple[Scalar, Scalar] = (0.0, 0.0)
     orientation: str = "upright"
+    sensor: Sensor | None = None
+    exposure_time: float | None = None
 
     stem: ClassVar[str] = "camera"
     faces: ClassVar[tuple[str, ...]] = ("in",)
@@ -62,6 +67,25 @@ class Camera(Element):
                 got=f"{self.label}: orientation = {self.orientation!r}",
                 fix='orientation="upright"',
             )
+        self._check_reading()
+
+    def _check_reading(self) -> None:
+        if self.sensor is not None and not isinstance(self.sensor, Sensor):
+            raise ParameterError(
+                "a sensor is declared by what it holds",
+                got=f"{self.label}: sensor = {self.sensor!r}",
+                fix="sensor=fa.Sensor(full_well=10000, quantum_efficiency=0.6)",
+            )
+        if self.exposure_time is None:
+            return
+        time = checks.number(self.label, "exposure_time", self.exposure_time, fix="exposure_time=1*ms")
+        if is_symbolic(time) or time <= 0:
+            raise ParameterError(
+                "exposure_time is a number of seconds above zero",
+                got=f"{self.label}: exposure_time = {time}",
+                fix="exposure_time=1*ms",
+            )
+        self._keep(exposure_time=time)
 
     def _checked_shape(self) -> tuple[int, int]:
         try:

@@ -14,7 +14,6 @@ from fastaxis.inspect.surveying import survey
 __all__ = ["inspect_train"]
 
 NEVER = (
-    "saturation and noise: a camera is declared without what it holds",
     "temperature of parts other than plates; thickness, walk-off and tilt inside parts",
     "ghosts of parts other than windows",
     "pulsed light, damage thresholds, and laser limits outside 400 to 1400 nm",
@@ -46,7 +45,13 @@ def inspect_train(train: Any) -> Inspection:
     if train.symbols:
         return _with_letters(train, found)
     found += _following_the_light(train)
-    return Inspection(train.name, tuple(found), NEVER)
+    return Inspection(train.name, tuple(found), (*_without_sensor(train), *NEVER))
+
+
+def _without_sensor(train: Any) -> Iterator[str]:
+    bare = [name for name in train.cameras if train.elements[name].sensor is None]
+    if bare:
+        yield f"saturation and noise of {', '.join(bare)}: no sensor=fa.Sensor(...) is declared"
 
 
 def _only_dark(finding: Finding) -> bool:

@@ -6,7 +6,7 @@ import math
 
 from fastaxis.train.lab_values import lab_length
 
-__all__ = ["degrees", "length", "mm", "percent", "watts"]
+__all__ = ["degrees", "length", "mm", "percent", "seconds", "watts"]
 
 PREFIXES = ((1.0, ""), (1e-3, "m"), (1e-6, "µ"), (1e-9, "n"), (1e-12, "p"))
 
@@ -17,11 +17,24 @@ def watts(power: float) -> str:
     >>> watts(0.00125), watts(0.39e-3), watts(0.0)
     ('1.25 mW', '390 µW', '0 W')
     """
-    for factor, prefix in PREFIXES:
+    return _prefixed(power, "W")
+
+
+def seconds(time: float) -> str:
+    """A time to three digits.
+
+    >>> seconds(0.0025), seconds(math.inf)
+    ('2.5 ms', 'inf s')
+    """
+    return _prefixed(time, "s")
+
+
+def _prefixed(value: float, unit: str) -> str:
+    for factor, prefix in PREFIXES if math.isfinite(value) else ():
         # Half of the last of three digits: 0.9996 mW is read as 1 mW.
-        if abs(power) >= 0.9995 * factor:
-            return f"{power / factor:.3g} {prefix}W"
-    return f"{power:.3g} W"
+        if abs(value) >= 0.9995 * factor:
+            return f"{value / factor:.3g} {prefix}{unit}"
+    return f"{value:.3g} {unit}"
 
 
 def length(value: float) -> str:

@@ -111,6 +111,10 @@ def _temperature(value: Scalar) -> str:
     return str(value) if is_symbolic(value) else f"{value:g} K ({value - 273.15:.4g} °C)"
 
 
+def _seconds(value: float) -> str:
+    return readable(value, "s")
+
+
 def _drift(value: Scalar) -> str:
     return str(value) if is_symbolic(value) else f"{value:g} per K"
 
@@ -154,6 +158,7 @@ SPOKEN = (
     (_nanometres, "design"),
     (_temperature, "temperature design_temperature"),
     (_drift, "drift"),
+    (_seconds, "exposure_time"),
     (_mode, "mode"),
     (_parts, "incoherent"),
     (_rows_and_columns, "shape"),

@@ -195,7 +195,15 @@ class Sweep:
             orientation=family.orientation,
             guard=family.guard,
             plan=str(family.plan),
+            **self._reading(which),
         )
+
+    def _reading(self, which: Which) -> dict[str, Any]:
+        """Sensor and exposure time of the camera at one value."""
+        gallery = self.gallery
+        changes = gallery.knobs.at(place_of(gallery.knobs, which))
+        camera = sensor_at(gallery.train.with_changes(changes), gallery.target)
+        return {name: getattr(camera, name, None) for name in ("sensor", "exposure_time")}
 
     def _shared(self, which: Which) -> tuple[Any, Reals]:
         """The family of a value, and what it takes of each of its pictures."""

@@ -26,6 +26,7 @@ LENGTHS = frozenset({
 
 PREFIXES = {"": 1.0, "m": 1e-3, "µ": 1e-6, "n": 1e-9}
 LENGTH_STEPS = ((1.0, ""), (1e-4, "m"), (1e-6, "µ"), (1e-10, "n"))  # a waist is 0.8 mm and not 800 µm
+TIME_STEPS = ((1.0, ""), (1e-3, "m"), (1e-6, "µ"))
 POWER_STEPS = ((0.1, ""), (1e-4, "m"), (1e-7, "µ"), (1e-13, "n"))
 
 
@@ -61,6 +62,8 @@ def _number(parameter: str, value: float) -> str:
         return f"{value * 180 / pi:.6g}°"
     if parameter in LENGTHS:
         return lab_length(value)
+    if parameter == "exposure_time":
+        return _scaled(value, "s", TIME_STEPS)
     return _scaled(value, "W", POWER_STEPS) if parameter == "power" else f"{value:.6g}"
 
 

@@ -3,7 +3,7 @@
 import numpy as np
 
 import fastaxis as fa
-from fastaxis.units import deg, mm, mrad, um
+from fastaxis.units import deg, mm, mrad, mW, nW, um, uW
 
 CAMERA = fa.Camera(pixel=10 * um, shape=(640, 640), name="cam")
 
@@ -97,6 +97,29 @@ def relay_too_short(wrong):
         fa.Lens(focal=200 * mm, name="l1"), fa.FreeSpace((280 if wrong else 300) * mm),
         fa.Lens(focal=100 * mm, name="l2"), fa.FreeSpace(100 * mm), CAMERA,
     )  # fmt: skip
+
+
+SENSOR = fa.Sensor(full_well=10_500, quantum_efficiency=0.62, read_noise=2.4, bit_depth=12)
+
+
+def _read(exposure_time, power):
+    camera = fa.Camera(pixel=10 * um, shape=(640, 640), sensor=SENSOR, exposure_time=exposure_time, name="cam")
+    return line(fa.QPlate(q=0.5, name="qp"), camera, power=power)
+
+
+@pair("saturation", "cam", "high")
+def exposure_of_seconds_for_milliseconds(wrong):
+    return _read(1.0 if wrong else 1e-3, power=20 * nW)
+
+
+@pair("saturation", "cam", "high")
+def density_filter_forgotten(wrong):
+    return _read(20e-6, power=20 * (mW if wrong else uW) / 20)
+
+
+@pair("few counts", "cam", "low")
+def exposure_of_microseconds_for_milliseconds(wrong):
+    return _read(20e-6 if wrong else 20e-3, power=1 * nW)
 
 
 @pair("sampling", "cam", "medium")

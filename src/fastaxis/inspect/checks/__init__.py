@@ -22,6 +22,7 @@ from fastaxis.inspect.checks.plates import plates
 from fastaxis.inspect.checks.polarizers import polarizers
 from fastaxis.inspect.checks.relays import relays
 from fastaxis.inspect.checks.sampling import sampling
+from fastaxis.inspect.checks.saturation import saturation
 from fastaxis.inspect.checks.sensor import sensor
 from fastaxis.inspect.checks.slips import slips
 from fastaxis.inspect.checks.temperatures import temperatures
@@ -32,7 +33,7 @@ from fastaxis.inspect.finding import Finding
 __all__ = ["CHECKS", "wiring"]
 
 CHECKS: tuple[Callable[[Bench], Iterator[Finding]], ...] = (
-    open_ports, dark, gain, aperture, sensor, patterns, centring, paraxial,
+    open_ports, dark, gain, aperture, sensor, saturation, patterns, centring, paraxial,
     plates, temperatures, conversion, polarizers, isolators, mirrors, idle, extinction,
     parity, planes, relays, windows, fringes, sampling, slips,
 )  # fmt: skip

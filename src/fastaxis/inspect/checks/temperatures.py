@@ -50,7 +50,6 @@ def _drifted(plate: Any, wavelength: float) -> Iterator[Finding]:
     kelvin = float(plate.temperature - plate.design_temperature)
     order = getattr(plate, "order", 0)
     told = f"order {order}, " if order else ""
-    zero = f', or with {{"{plate.name}.order": 0}}' if order else ""
     severity = Severity.LOW if abs(error) < math.radians(2) else Severity.MEDIUM
     yield Finding(
         severity=Severity.HIGH if abs(error) > math.radians(20) else severity,
@@ -59,7 +58,7 @@ def _drifted(plate: Any, wavelength: float) -> Iterator[Finding]:
         rule="the whole path difference of a plate drifts, its whole waves included: a zero-order plate stands still",
         got=f"{plate.name}: {told}{abs(kelvin):.3g} K {'above' if kelvin > 0 else 'below'} its design temperature, "
         f"retardance off by {degrees(error)}",
-        fix=f'train.with_changes({{"{plate.name}.temperature": {float(plate.design_temperature):g}}}){zero}',
+        fix=f'train.with_changes({{"{plate.name}.temperature": {float(plate.design_temperature):g}}})',
     )
 
 

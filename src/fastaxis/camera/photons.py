@@ -1,0 +1,87 @@
+"""From watts on a pixel to electrons in it."""
+
+from __future__ import annotations
+
+from typing import TYPE_CHECKING, Any
+
+import numpy as np
+from numpy.typing import NDArray
+from scipy.constants import c, h
+
+from fastaxis.errors import ParameterError
+
+if TYPE_CHECKING:
+    from fastaxis.camera.exposure import Exposure
+    from fastaxis.elements.sensor import Sensor
+
+__all__ = ["electrons_of", "fills_well_after", "photons_per_joule", "read_with", "signal_to_noise"]
+
+QUANTIZATION = 1 / 12  # counts squared, of rounding to whole counts
+
+
+def photons_per_joule(wavelength: float) -> float:
+    """Photons in a joule of light, wavelength/(h c).
+
+    h and c are exact since the SI of 2019.
+
+    >>> f"{photons_per_joule(1.0):.8e}"
+    '5.03411657e+24'
+    """
+    return wavelength / (h * c)
+
+
+def electrons_of(power: Any, sensor: Sensor, *, wavelength: float, exposure_time: float) -> Any:
+    """Electrons that a power [W] on a pixel frees on average, those of the dark included; a well without an end."""
+    light = sensor.quantum_efficiency * photons_per_joule(wavelength) * power
+    return (light + sensor.dark_current) * exposure_time
+
+
+def read_with(shots: Exposure, sensor: Sensor | None, exposure_time: float | None) -> tuple[Sensor, float]:
+    """The sensor and the exposure time [s] to read with: those given, or those of the camera.
+
+    Raises
+    ------
+    ParameterError : neither given nor declared with the camera; a time that is not above zero.
+    """
+    sensor = shots.sensor if sensor is None else sensor
+    if sensor is None:
+        raise ParameterError(
+            "electrons and counts need the sensor's data, declared with the camera",
+            got=f"{shots.target}: no sensor",
+            fix=f'train.with_changes({{"{shots.target or "cam"}.sensor": '
+            "fa.Sensor(full_well=10000, quantum_efficiency=0.6)})",
+        )
+    time = shots.exposure_time if exposure_time is None else exposure_time
+    if time is None:
+        raise ParameterError(
+            "electrons and counts need an exposure time, given here or declared with the camera",
+            got=f"{shots.target}: no exposure_time",
+            fix=f'shots.counts("{shots.labels[0]}", exposure_time=1*ms)',
+        )
+    if not (isinstance(time, int | float) and time > 0):
+        raise ParameterError(
+            "exposure_time is in seconds, above zero",
+            got=f"{shots.target}: exposure_time = {time}",
+            fix=f'shots.counts("{shots.labels[0]}", exposure_time=1*ms)',
+        )
+    return sensor, float(time)
+
+
+def fills_well_after(peak: float, sensor: Sensor, wavelength: float) -> float:
+    """Exposure time [s] at which a pixel of this power [W] is saturated; infinite in the dark."""
+    rate = electrons_of(peak, sensor, wavelength=wavelength, exposure_time=1.0)
+    return float(sensor.most_electrons / rate) if rate > 0 else float("inf")
+
+
+def signal_to_noise(electrons: Any, sensor: Sensor, exposure_time: float) -> NDArray[np.float64]:
+    """Mean signal over its temporal noise: N/sqrt(N + dark + read_noise^2 + 1/(12 gain^2)), N electrons of light.
+
+    Parameters
+    ----------
+    electrons : on average, those of the dark included.
+    sensor, exposure_time : as they are read.
+    """
+    electrons = np.asarray(electrons, dtype=float)
+    quantization = QUANTIZATION / sensor.counts_per_electron**2
+    light = electrons - sensor.dark_current * exposure_time
+    return np.asarray(light / np.sqrt(electrons + sensor.read_noise**2 + quantization))
