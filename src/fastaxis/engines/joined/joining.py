@@ -13,6 +13,7 @@ from numpy.typing import NDArray
 
 from fastaxis.engines.combining import combined
 from fastaxis.engines.field import Guard, PlaneField
+from fastaxis.engines.joined.blockwise import blockwise
 from fastaxis.engines.joined.coherence import mixtures
 from fastaxis.engines.joined.extent import Extent
 from fastaxis.engines.joined.looking import Look, candidates, settled
@@ -116,12 +117,24 @@ class JoinedField:
         reach = max(abs(raster.x).max(), abs(raster.y).max()) + raster.pitch / 2
         if all(engine == "azimuthal" for engine in self.engines):
             return self._by_harmonics(raster)
+        if "grid" not in self.engines and "azimuthal" in self.engines:
+            self._reached(reach)
+            image = blockwise(self._images, raster, self.extent.spreads)
+            if image is not None:
+                return image
         frequency, finest = self.extent.frequency(reach), self.extent.finest(reach)
         looks = candidates(raster, frequency, finest)
-        # Engines that work out a plane as far as they are asked do so once if the farthest place comes first.
-        corner = np.array([max(look.farthest for look in looks) * (1 + FARTHER)])
-        self._sums(corner, corner)
+        self._reached(max(look.farthest for look in looks))
         return self._seen(settled(raster, finest, looks, self._seen))
+
+    def _reached(self, farthest: float) -> None:
+        """Engines that work out a plane as far as they are asked do so once if the farthest place comes first."""
+        corner = np.array([farthest * (1 + FARTHER)])
+        self._sums(corner, corner)
+
+    def _images(self, x: Reals, y: Reals) -> Reals:
+        """S0 .. S3 [W/m^2] at columns x and rows y, shape (4, ny, nx)."""
+        return np.asarray(np.sum([stokes(one) for one in self._sums(x, y)], axis=0))
 
     def _by_harmonics(self, raster: Raster) -> Reals:
         """The harmonics of all arms added and looked at once, for each sum."""
@@ -136,7 +149,6 @@ class JoinedField:
         at_once = max(1, BLOCK // len(columns.places))
         for first in range(0, len(rows.places), at_once):
             block = slice(first, first + at_once)
-            sums = self._sums(columns.places, rows.places[block])
-            for index, values in enumerate(np.sum([stokes(one) for one in sums], axis=0)):
+            for index, values in enumerate(self._images(columns.places, rows.places[block])):
                 image[index] += rows.matrix[:, block] @ (columns.matrix @ values.T).T
         return image

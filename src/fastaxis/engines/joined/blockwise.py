@@ -1,0 +1,53 @@
+"""Pictures of joined light that are polynomials on blocks of pixels."""
+
+from __future__ import annotations
+
+from collections.abc import Callable, Sequence
+from importlib import import_module
+from typing import Any
+
+import numpy as np
+from numpy.typing import NDArray
+
+from fastaxis.light import Raster
+from fastaxis.plan.spread import Spread
+
+__all__ = ["blockwise"]
+
+Reals = NDArray[np.float64]
+
+BESIDE = 0.02  # of a pixel: how close the axis is passed, where directly behind a plate there may be a jump of phase
+
+
+def blockwise(images: Callable[[Reals, Reals], Reals], raster: Raster, spreads: Sequence[Spread]) -> Reals | None:
+    """Watts per pixel of S0 .. S3, shape (4, ny, nx); None where even one pixel is no polynomial of a few degrees.
+
+    How many nodes each block needs is tried on lines: from the axis to the corner, about which the light with
+    singularities and rims lies, and through each beam, which may be a narrow one beside the axis.
+
+    Parameters
+    ----------
+    images : S0 .. S3 at columns x and rows y [m], shape (4, rows, columns).
+    spreads : of the beams that meet.
+    """
+    blocks: Any = import_module("fastaxis.engines.azimuthal.blocks")
+    x, y = raster.x, raster.y
+    few_x, few_y = (_lines(blocks.lines_across(p), spreads, side, raster) for side, p in enumerate((x, y)))
+    peak = float(images(x, few_y)[0].max())
+    columns = blocks.blocks_along(lambda places: images(places, few_y), x, raster.pitch, peak)
+    if columns is None:
+        return None
+    rows = blocks.blocks_along(lambda places: images(few_x, places).swapaxes(1, 2), y, raster.pitch, peak)
+    if rows is None:
+        return None
+    out = np.empty((4, *raster.shape))
+    blocks.collected(images, rows, columns, raster.pitch**2, out)
+    return out
+
+
+def _lines(across: Reals, spreads: Sequence[Spread], side: int, raster: Raster) -> Reals:
+    """Lines to be tried, those through the middle and the flanks of each beam and past the axis among them."""
+    beams = [spread.offset[side] + flank * spread.size for spread in spreads for flank in (-1, 0, 1)]
+    low, high = ((raster.y if side else raster.x)[[0, -1]] + np.array([-0.5, 0.5]) * raster.pitch).tolist()
+    inside = [place for place in (*beams, BESIDE * raster.pitch) if low <= place <= high]
+    return np.unique(np.concatenate([across, inside]))
