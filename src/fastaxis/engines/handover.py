@@ -11,7 +11,6 @@ from numpy.typing import NDArray
 from fastaxis.engines import azimuthal, grid
 from fastaxis.engines.grid.guard import edge_watched
 from fastaxis.engines.grid.light import GridLight, axis, curve, multiply_separable
-from fastaxis.engines.grid.reading import GridField
 from fastaxis.plan import Branch
 
 if TYPE_CHECKING:
@@ -26,7 +25,7 @@ Complexes = NDArray[np.complex128]
 SAME_STATE = 1e-13  # of the peak: what the harmonics themselves are settled to
 
 
-def run(branch: Branch) -> GridField:
+def run(branch: Branch) -> grid.GridField | grid.FarField:
     """The light of a branch at its target."""
     return finished(continued(begun(branch), branch, 0, len(branch.steps)), branch)
 
@@ -49,7 +48,7 @@ def continued(light: GridLight, branch: Branch, first: int, end: int) -> GridLig
     return grid.continued(light, _rest(branch), max(first - done, 0), max(end - done, 0))
 
 
-def finished(light: GridLight, branch: Branch) -> GridField:
+def finished(light: GridLight, branch: Branch) -> grid.GridField | grid.FarField:
     """Light at the target of a branch, looked over."""
     return grid.finished(light, _rest(branch))
 

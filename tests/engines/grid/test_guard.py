@@ -1,8 +1,10 @@
+from dataclasses import replace
+
 import numpy as np
 import pytest
 
 import fastaxis as fa
-from fastaxis.engines.grid.guard import check, edge_watched, phase_step
+from fastaxis.engines.grid.guard import check, edge_watched, phase_step, rim_of, rim_share, steps_of
 from fastaxis.engines.grid.light import GridLight, axis
 from fastaxis.errors import SamplingError, SamplingWarning
 from fastaxis.plan import Grid
@@ -39,15 +41,29 @@ def test_phase_steps_are_those_where_the_light_is():
     assert step == pytest.approx(1.29 * at_one_width, rel=0.05)
 
 
+def test_both_figures_are_known_before_the_last_transform():
+    """Light that fills its near plane evenly is everywhere in the far one; a beam 20 times narrower is at its middle."""
+    from fastaxis.engines.grid.far import FarField
+    from fastaxis.engines.grid.single import travel_single
+    from fastaxis.laws import TravelLaw
+
+    near = light(1e-3, curvature=0.1, ahead=TravelLaw(1.0, 2.56e-2 * 0.1e-3 / 500e-9, 0.0, 1.0, 0.0))
+    field = FarField(near, None)
+    far = travel_single(replace(near, samples=near.samples.copy(), ahead=None), near.ahead)
+    # The least phase step that is told apart is that of one wave, 2 pi/256; lines of waves are one in two.
+    assert steps_of(*field.marginals) == pytest.approx(phase_step(far), abs=2 * np.pi / 256 + 0.02)
+    assert rim_of(*field.waves.profiles(64)) == pytest.approx(rim_share(far.samples), rel=0.05)
+
+
 def test_good_light_passes_silently():
-    assert check(light(1e-3), ("cam",), GRID).edge_power == 0
+    assert check(light(1e-3), 0.1, ("cam",), GRID).edge_power == 0
 
 
 def test_light_near_the_edge_is_warned_about_and_then_refused():
     with pytest.warns(SamplingWarning, match=r"lens: 5.00% of the power near the edge"):
-        check(light(1e-3, edge_power=0.05), ("lens",), GRID)
+        check(light(1e-3, edge_power=0.05), 0.1, ("lens",), GRID)
     with pytest.raises(SamplingError, match=r"30.00% cut off by the band limit.*samples=512, window=0.0512"):
-        check(light(1e-3, discarded=0.3), ("lens",), GRID)
+        check(light(1e-3, discarded=0.3), 0.1, ("lens",), GRID)
 
 
 def test_a_grid_set_by_hand_is_told_when_it_is_coarse():
@@ -61,6 +77,6 @@ def test_a_grid_set_by_hand_is_told_when_it_is_coarse():
 
 
 def test_light_near_the_edge_is_said_earlier_where_the_grid_was_set_by_hand():
-    assert check(light(1e-3, edge_power=1e-3), ("lens",), GRID).edge_power == 1e-3
+    assert check(light(1e-3, edge_power=1e-3), 0.1, ("lens",), GRID).edge_power == 1e-3
     with pytest.warns(SamplingWarning, match="0.10% of the power near the edge"):
-        check(light(1e-3, edge_power=1e-3), ("lens",), GRID, by_hand=True)
+        check(light(1e-3, edge_power=1e-3), 0.1, ("lens",), GRID, by_hand=True)

@@ -2,10 +2,12 @@
 
 from __future__ import annotations
 
+from dataclasses import replace
 from typing import cast
 
 from fastaxis.engines.grid.combining import combined
-from fastaxis.engines.grid.guard import check, edge_watched
+from fastaxis.engines.grid.far import KEPT, FarField, arriving
+from fastaxis.engines.grid.guard import check, edge_watched, phase_step
 from fastaxis.engines.grid.light import GridLight
 from fastaxis.engines.grid.pointwise import flipped, past_axis, past_matrix, past_scalar
 from fastaxis.engines.grid.reading import GridField
@@ -19,10 +21,10 @@ from fastaxis.plan.fuse import as_matrix
 from fastaxis.plan.sampling import Hop, Sampling
 from fastaxis.plan.steps import StepLaw
 
-__all__ = ["GridField", "begun", "combined", "continued", "finished", "run"]
+__all__ = ["FarField", "GridField", "begun", "combined", "continued", "finished", "run"]
 
 
-def run(branch: Branch) -> GridField:
+def run(branch: Branch) -> GridField | FarField:
     """The light of a branch at its target, on the samples its plan chose."""
     return finished(continued(begun(branch), branch, 0, len(branch.steps)), branch)
 
@@ -33,19 +35,30 @@ def begun(branch: Branch) -> GridLight:
 
 
 def continued(light: GridLight, branch: Branch, first: int, end: int) -> GridLight:
-    """Light before step ``first`` of a branch taken to before step ``end``; may use up the samples it is given."""
-    sampling = cast("Sampling", branch.sampling)
-    last = max((i for i, step in enumerate(branch.steps) if isinstance(step.law, TravelLaw)), default=0)
+    """Light before step ``first`` of a branch taken to before step ``end``; may use up the samples it is given.
+
+    A single transform is put off until something asks for the samples behind it; what looks at the light may not.
+    """
+    steps, sampling = branch.steps, cast("Sampling", branch.sampling)
+    last = max((i for i, step in enumerate(steps) if isinstance(step.law, TravelLaw)), default=0)
     for index in range(first, end):
-        step = branch.steps[index]
-        light = _past(light, as_matrix(step) or step.law, sampling.hop(index), last=index == last)
+        law, hop = as_matrix(steps[index]) or steps[index].law, sampling.hop(index)
+        if light.ahead and not isinstance(law, JonesStep | Flip):  # these commute with travel
+            light = edge_watched(travel_single(replace(light, ahead=None), light.ahead))
+        if isinstance(law, TravelLaw) and hop and hop.kernel == "single" and light.count <= KEPT:
+            light = replace(light, ahead=law)
+        else:
+            light = _past(light, law, hop, last=index == last)
     return light
 
 
-def finished(light: GridLight, branch: Branch) -> GridField:
+def finished(light: GridLight, branch: Branch) -> GridField | FarField:
     """Light at the target of a branch, looked over."""
     names, sampling = branch.steps[-1].names if branch.steps else (), cast("Sampling", branch.sampling)
-    return GridField(light, check(light, names, sampling.grid, by_hand=sampling.chosen == "by hand"), sampling.grid)
+    by_hand = sampling.chosen == "by hand"
+    if light.ahead:
+        return arriving(light, names, sampling.grid, by_hand=by_hand)
+    return GridField(light, check(light, phase_step(light), names, sampling.grid, by_hand=by_hand), sampling.grid)
 
 
 def _past(light: GridLight, law: StepLaw, hop: Hop | None, *, last: bool) -> GridLight:

@@ -19,7 +19,8 @@ __all__ = ["Collected"]
 Images = NDArray[Any]
 Complexes = NDArray[Any]
 
-# Multiplications in one product: few enough for the linear algebra library not to start threads inside ours.
+# Multiplications in one product: few enough for the linear algebra library not to start threads inside ours, which on
+# a busy machine wait for each other. Many are asked for in one call, so that our threads don't queue for Python.
 PRODUCT = 1 << 18
 OVERLAP = 8  # rows or columns taken at a time, in units of those that have to be taken again
 
@@ -46,13 +47,13 @@ class Collected:
         """Watts per pixel of S0 .. S3, shape (4, ny, nx)."""
         kind = self.samples.real.dtype
         shape = (self.rows[-1].pixels.stop, self.columns[-1].pixels.stop)
-        out = np.zeros((4 if self.jones is None else 1, *shape), dtype=kind)
+        out = np.empty((4 if self.jones is None else 1, *shape), dtype=kind)
         rows = [[block.every(self.parts, part, kind) for block in self.rows] for part in range(self.parts)]
         for across, moved in _moved(self.samples, self.parts, axis=2):
             for columns in _groups([block.every(self.parts, across, kind) for block in self.columns]):
                 near = _wrapped(moved, columns[0].first, columns[-1].last, axis=2)
                 for down, samples in _moved(near, self.parts, axis=1):
-                    _collect(out, samples, rows[down], columns)
+                    _collect(out, samples, rows[down], columns, more=bool(across or down))
         return out if self.jones is None else np.multiply.outer(stokes(self.jones).astype(kind), out[0])
 
 
@@ -77,8 +78,8 @@ def _turn(count: int, part: float) -> NDArray[np.complex128]:
     return turn
 
 
-def _collect(out: Images, samples: Complexes, rows: list[Block], columns: list[Block]) -> None:
-    """Add what some columns of pixels collect from samples that begin with the first that they need."""
+def _collect(out: Images, samples: Complexes, rows: list[Block], columns: list[Block], *, more: bool) -> None:
+    """What some columns of pixels collect from samples that begin with the first that they need; added if more."""
     start, stop = columns[0].pixels.start, columns[-1].pixels.stop
     for group in _groups(rows):
         first, last = group[0].first, group[-1].last
@@ -86,12 +87,30 @@ def _collect(out: Images, samples: Complexes, rows: list[Block], columns: list[B
 
         def down(block: Block, first: int = first, across: Images = across) -> None:
             near = across[:, block.first - first : block.last - first]
-            few = max(PRODUCT // block.matrix.size, 1)
-            for place in range(start, stop, few):
-                pixels = slice(place, min(place + few, stop))
-                out[:, block.pixels, pixels] += block.matrix @ near[:, :, pixels.start - start : pixels.stop - start]
+            _multiply(block.matrix, near, out[:, block.pixels, start:stop], more=more)
 
         together(down, group)
+
+
+def _multiply(matrix: Images, near: Images, out: Images, *, more: bool) -> None:
+    """The matrix times each image, in place or added, as one call for many products of some columns."""
+    few = max(PRODUCT // matrix.size, 1)
+    whole = near.shape[-1] // few * few
+    for part, width in ((slice(whole), few), (slice(whole, None), near.shape[-1] - whole)):
+        if width:
+            ahead, behind = (_side_by_side(images[..., part], width) for images in (near, out))
+            if more:
+                behind += matrix @ ahead
+            else:
+                np.matmul(matrix, ahead, out=behind)
+
+
+def _side_by_side(images: Images, width: int) -> Images:
+    """(images, rows, columns) as (images, n, rows, width): the same memory, cut into strips of columns."""
+    count, rows, columns = images.shape
+    depth, down, along = images.strides
+    shape, strides = (count, columns // width, rows, width), (depth, width * along, down, along)
+    return np.lib.stride_tricks.as_strided(images, shape, strides)
 
 
 def _groups(blocks: list[Block]) -> Iterator[list[Block]]:

@@ -13,6 +13,7 @@ from numpy.typing import NDArray
 from fastaxis.engines.field import Guard
 from fastaxis.engines.grid.collecting import Collected
 from fastaxis.engines.grid.edges import watch_frame
+from fastaxis.engines.grid.far import FarField
 from fastaxis.engines.grid.light import GridLight
 from fastaxis.engines.grid.reading import GridField
 from fastaxis.errors import SamplingError
@@ -34,7 +35,7 @@ class GridSum:
     coefficients : one complex number a field.
     """
 
-    fields: Sequence[GridField]
+    fields: Sequence[GridField | FarField]
     coefficients: Complexes
 
     @property
@@ -43,16 +44,22 @@ class GridSum:
         return self.fields[0].wavelength
 
     @cached_property
-    def whole(self) -> GridField:
-        """The sum as sampled light."""
-        light = _sum([field.light for field in self.fields], self.coefficients)
+    def whole(self) -> GridField | FarField:
+        """The sum as sampled light; before the last travel, where all have the same ahead of them."""
+        ways = {(light.count, light.pitch, light.curvature, light.ahead) for light in self._carried}
+        lights = self._carried if len(ways) == 1 else [field.light for field in self.fields]
+        light = _sum(lights, self.coefficients)
         # Each field fills as many waves as it needs; how many the sum fills is found anew.
-        light = replace(light, filled=None, waves=None, beyond=self._beyond())
-        return GridField(light, self.guard, self.fields[0].grid)
+        light = replace(light, filled=None, beyond=self._beyond())
+        return (FarField if light.ahead else GridField)(light, self.guard, self.fields[0].grid)
+
+    @property
+    def _carried(self) -> list[GridLight]:
+        return [field.carried for field in self.fields]
 
     def _beyond(self) -> float:
         """What edges scattered, of all fields together; as a share, for light that cancels takes its own along."""
-        lights, weights = [field.light for field in self.fields], abs(self.coefficients) ** 2
+        lights, weights = self._carried, abs(self.coefficients) ** 2
         shares = [light.beyond for light in lights]
         if not any(shares):
             return 0.0
@@ -84,21 +91,29 @@ class GridSum:
         """Watts per pixel of S0 .. S3, shape (4, ny, nx); each field is brought to the pixels once for all sums."""
         if raster.shape != (1, 1):
             for field in self.fields:
-                watch_frame(field.light, field.grid)
-        parts = [field.collected_by(raster) for field in self.fields]
+                watch_frame(field.carried, field.grid)
+        parts = self._collected_by(raster)
         if any((part.rows, part.columns) != (parts[0].rows, parts[0].columns) for part in parts):
             return self.whole.stokes_on(raster)
         return _sum(parts, self.coefficients).stokes()
 
+    def _collected_by(self, raster: Raster) -> list[Collected]:
+        far = [field for field in self.fields if isinstance(field, FarField)]
+        down, across = (max((field.orders[axis] for field in far), default=0) for axis in (0, 1))
+        return [
+            field.collected_by(raster, (down, across)) if isinstance(field, FarField) else field.collected_by(raster)
+            for field in self.fields
+        ]
 
-def combined(fields: Sequence[GridField], coefficients: Complexes) -> GridSum:
+
+def combined(fields: Sequence[GridField | FarField], coefficients: Complexes) -> GridSum:
     """The sum of coefficient * field, of light at one target.
 
     Raises
     ------
     SamplingError : the fields are not on the same samples.
     """
-    _check_samples([field.light for field in fields])
+    _check_samples([field.places for field in fields])
     return GridSum(fields, coefficients)
 
 
@@ -125,8 +140,8 @@ def _total(arrays: list[Complexes], coefficients: Complexes) -> Complexes:
     return out
 
 
-def _check_samples(lights: list[GridLight]) -> None:
-    places = {(light.count, light.pitch, light.curvature) for light in lights}
+def _check_samples(found: list[tuple[int, float, float]]) -> None:
+    places = set(found)
     if len(places) > 1:
         pitches = ", ".join(f"{count} of {pitch * 1e6:.6g} um" for count, pitch, _ in sorted(places))
         raise SamplingError(

@@ -7,6 +7,7 @@ from dataclasses import replace
 from typing import Any
 
 import numpy as np
+from numpy.typing import NDArray
 
 from fastaxis.engines.field import Guard
 from fastaxis.engines.grid.edges import beyond_share
@@ -15,7 +16,9 @@ from fastaxis.engines.grid.workers import strips
 from fastaxis.errors import SamplingError, SamplingWarning, caution
 from fastaxis.plan import Grid
 
-__all__ = ["check", "edge_watched", "phase_step", "rim_share"]
+__all__ = ["LINES", "check", "edge_watched", "phase_step", "rim_of", "rim_share", "steps_of"]
+
+Reals = NDArray[np.float64]
 
 FRAME = 1 / 16  # of half the side
 QUIET = 0.99  # share of the light whose phase steps are looked at
@@ -84,11 +87,38 @@ def _quantile(products: Samples) -> float:
     return float(steps[order[np.searchsorted(below, QUIET * below[-1])]]) if steps.size else 0.0
 
 
-def check(light: GridLight, names: tuple[str, ...], grid: Grid, *, by_hand: bool = False) -> Guard:
+def rim_of(down: Reals, across: Reals) -> float:
+    """Share of the power in the outermost samples, from the power of each row and each column.
+
+    Corners count twice: a little more than there is, where light has come that far.
+    """
+    margin = math.ceil(len(down) * FRAME / 2)
+    shares = [(line[:margin].sum() + line[-margin:].sum()) / line.sum() for line in (down, across) if line.any()]
+    return min(float(sum(shares)), 1.0)
+
+
+def steps_of(down: Reals, across: Reals) -> float:
+    """Phase step [rad] between neighbouring samples that all but 1 % of the light stays below, from its waves.
+
+    A wave j of n across the window turns by 2 pi j/n from one sample to the next.
+
+    Parameters
+    ----------
+    down, across : power of the waves of each order along either side, the order 0 in the middle.
+    """
+    count = len(down)
+    steps = 2 * np.pi * abs(np.arange(count) - (count - 1) / 2) / count
+    order = np.argsort(steps)
+    below = np.cumsum((down + across)[order])
+    return float(steps[order[np.searchsorted(below, QUIET * below[-1])]]) if below[-1] else 0.0
+
+
+def check(light: GridLight, step: float, names: tuple[str, ...], grid: Grid, *, by_hand: bool = False) -> Guard:
     """The guard of finished light; warned about or refused where it is bad.
 
     Parameters
     ----------
+    step : its steepest phase step [rad].
     names : parts of the last step.
     grid : the samples at the source; twice as wide or twice as fine is the remedy named.
     by_hand : whether the grid was set by hand. The automatic one keeps its own distance from the edges of window and
@@ -110,7 +140,7 @@ def check(light: GridLight, names: tuple[str, ...], grid: Grid, *, by_hand: bool
         if worst > REFUSE:
             raise SamplingError(**message)
         caution(SamplingWarning(**message))
-    return Guard(light.edge_power, phase_step(light), light.discarded + beyond_share(light))
+    return Guard(light.edge_power, step, light.discarded + beyond_share(light))
 
 
 def _message(light: GridLight, names: tuple[str, ...], grid: Grid, *, coarse: bool) -> dict[str, Any]:

@@ -4,85 +4,67 @@ from __future__ import annotations
 
 import math
 from dataclasses import dataclass
-from typing import Any
 
-from numpy.typing import NDArray
+from scipy import fft
 
-from fastaxis.engines.grid.kernel import Block, blocks
-from fastaxis.engines.grid.waves import Places, Waves
+from fastaxis.engines.grid.kernel import Block, blocks, reach_for
+from fastaxis.engines.grid.waves import Places
 from fastaxis.light import Raster
 
-__all__ = ["Landed", "landed"]
+__all__ = ["Line", "landing_length", "lines"]
 
-# Dense samples over those of the window, at most: beyond, moving the samples of the window by parts of one is as fast
-# and holds less at a time.
-MOST = 2
-
-
-@dataclass(frozen=True, eq=False)
-class Landed:
-    """The field near a camera, and how its pixels collect irradiance from there.
-
-    Parameters
-    ----------
-    samples : (components, rows, columns).
-    rows, columns : blocks of pixels.
-    """
-
-    samples: NDArray[Any]
-    rows: tuple[Block, ...]
-    columns: tuple[Block, ...]
-
-
-def landed(waves: Waves, pitch: float, raster: Raster, parts: int, reach: int) -> Landed | None:
-    """The field where a raster looks; None if that is beyond the window or too much to hold at once.
-
-    Parameters
-    ----------
-    pitch : of the samples of the window [m].
-    parts : samples from one of these to the next.
-    reach : half width of the kernel that pixels collect with, in the dense samples.
-    """
-    step, last = pitch / parts, parts * (waves.count - 1)
-    lines = [
-        _Line(pixels, raster.pitch / step, middle / step + last / 2, reach)
-        for pixels, middle in zip(raster.shape, reversed(raster.centre), strict=True)
-    ]
-    rows, columns = (line.places for line in lines)
-    if any(places.first < 0 or places.first + places.count > last + 1 for places in (rows, columns)):
-        return None
-    if rows.count * columns.count > MOST * waves.count**2:
-        return None
-    down, across = (line.blocks(step) for line in lines)
-    return Landed(waves.at(rows, columns, parts), down, across)
+# Places over the waves of irradiance: more of them make the kernel of a pixel shorter and the transforms longer.
+SPARE = 1.5
 
 
 @dataclass(frozen=True)
-class _Line:
-    """The pixels along one side of a raster, in dense samples.
+class Line:
+    """The pixels along one side of a raster, and the places in the window that they collect from.
 
     Parameters
     ----------
-    pixels, side, middle : number of pixels, their side, the place of their middle counted from the first sample.
-    reach : half width of the kernel.
+    places : as dense as irradiance asks for, from what the first pixel needs to what the last one does.
+    blocks : of pixels.
     """
 
-    pixels: int
-    side: float
-    middle: float
-    reach: int
+    places: Places
+    blocks: tuple[Block, ...]
 
-    @property
-    def places(self) -> Places:
-        """What the pixels collect from, and one place more at either end for what is rounded."""
-        half = self.pixels * self.side / 2
-        first = math.floor(self.middle - half) - self.reach - 1
-        return Places(first, math.ceil(self.middle + half) + self.reach + 2 - first)
 
-    def blocks(self, step: float) -> tuple[Block, ...]:
-        """How the pixels collect from these places."""
-        count = self.places.count
-        return blocks(
-            count=count, pitch=step, parts=1, reach=self.reach, pixels=self.pixels, pixel=self.side * step,
-            middle=(self.middle - self.places.first - (count - 1) / 2) * step,
-        )  # fmt: skip
+def landing_length(order: int) -> int:
+    """Places across a window that hold irradiance of this highest order, a number that transforms fast.
+
+    >>> landing_length(500)
+    1500
+    """
+    return int(fft.next_fast_len(math.ceil(SPARE * 2 * order)))
+
+
+def lines(raster: Raster, window: float, lengths: tuple[int, int], orders: tuple[int, int]) -> tuple[Line, Line]:
+    """Rows and columns of a raster.
+
+    Parameters
+    ----------
+    window : its side [m]; beyond it is dark.
+    lengths : places across the window, for rows and columns.
+    orders : highest of irradiance, in cycles a window.
+    """
+    sides = zip(raster.shape, reversed(raster.centre), lengths, orders, strict=True)
+    down, across = (
+        _line(pixels, raster.pitch, float(middle), window / length, length, reach_for(length / (2 * order)))
+        for pixels, middle, length, order in sides
+    )
+    return down, across
+
+
+def _line(pixels: int, pixel: float, middle: float, step: float, length: int, reach: int) -> Line:  # noqa: PLR0917
+    half, centre = pixels * pixel / 2 / step, middle / step + (length - 1) / 2
+    # One place more at either end for what is rounded.
+    first, last = math.floor(centre - half) - reach - 1, math.ceil(centre + half) + reach + 2
+    if first < 0 or last > length:
+        first, last = 0, length  # near the edge of the window its other end counts too, and pixels beyond are dark
+    found = blocks(
+        count=last - first, pitch=step, parts=1, reach=reach, pixels=pixels, pixel=pixel,
+        middle=(centre - first - (last - first - 1) / 2) * step,
+    )  # fmt: skip
+    return Line(Places(first, last - first, length), found)

@@ -8,8 +8,8 @@ from typing import Any, TypeAlias
 import numpy as np
 from numpy.typing import NDArray
 
-from fastaxis.engines.grid.waves import Waves
 from fastaxis.engines.grid.workers import strips
+from fastaxis.laws import TravelLaw
 
 __all__ = ["GridLight", "Samples", "axis", "curve", "inner", "multiply_separable"]
 
@@ -37,7 +37,7 @@ class GridLight:
     beyond : light that edges scatter beyond the band of the samples, as a share of what the samples hold.
     band_power : largest share of the power met near the edge of the band of the samples.
     filled : waves along a side that hold the light, if known from the travel it comes from; None if not.
-    waves : these, if they are kept.
+    ahead : a last travel that is left to whoever looks at the light; None if there is none.
     """
 
     samples: Samples
@@ -51,7 +51,7 @@ class GridLight:
     beyond: float = 0.0
     band_power: float = 0.0
     filled: int | None = None
-    waves: Waves | None = None
+    ahead: TravelLaw | None = None
 
     @property
     def count(self) -> int:
@@ -86,7 +86,7 @@ class GridLight:
             return self
         chirp = curve(self.x, self.curvature - curvature, self.wavelength)
         multiply_separable(self.samples, chirp)
-        return replace(self, curvature=curvature, waves=None)
+        return replace(self, curvature=curvature)
 
 
 def axis(count: int, pitch: float) -> NDArray[np.float64]:
@@ -102,8 +102,12 @@ def curve(x: NDArray[np.float64], curvature: float, wavelength: float) -> NDArra
 def inner(one: Samples, other: Samples) -> complex:
     """The sum of conj(one) other over all samples, added up in double precision."""
 
+    # Not by the linear algebra library: its threads inside ours wait for each other, for seconds on a busy machine.
     def add(strip: slice) -> complex:
-        return complex(np.vdot(*(part[:, strip].astype(np.complex128, copy=False) for part in (one, other))))
+        if one is other:
+            parts = one[:, strip].view(one.real.dtype)
+            return complex(np.einsum("kij,kij->", parts, parts, dtype=float))
+        return complex(np.einsum("kij,kij->", one[:, strip].conj(), other[:, strip], dtype=complex))
 
     return complex(sum(strips(add, *one.shape[-2:])))
 

@@ -34,9 +34,9 @@ def past_matrix(light: GridLight, law: JonesStep) -> GridLight:
     if strengths[1] <= RANK_ONE * strengths[0]:
         samples = np.empty_like(light.samples[:1])
         _mix(samples, light.samples, right[:1])
-        return replace(light, samples=samples, jones=left[:, 0] * strengths[0], waves=None)
+        return replace(light, samples=samples, jones=left[:, 0] * strengths[0])
     _mix(light.samples, light.samples, matrix)
-    return replace(light, waves=None)
+    return light
 
 
 def _mix(out: NDArray[Any], samples: NDArray[Any], matrix: NDArray[np.complex128]) -> None:
@@ -88,7 +88,7 @@ def past_axis(light: GridLight, law: AxisLaw) -> GridLight:
         x, y = np.broadcast_arrays(x, y)
         phi = np.arctan2(y, x) if law.order else 0.0
         _apply(samples, light, law.linear(NUMBERS, phi, x, y))
-        return replace(light, samples=samples, jones=None, filled=None, waves=None)
+        return replace(light, samples=samples, jones=None, filled=None)
     start = NUMBERS.phasor(2 * law.angle)
 
     def turn(strip: slice) -> None:
@@ -100,7 +100,7 @@ def past_axis(light: GridLight, law: AxisLaw) -> GridLight:
         )
 
     strips(turn, light.count, light.count)
-    return replace(light, samples=samples, jones=None, filled=None, waves=None)
+    return replace(light, samples=samples, jones=None, filled=None)
 
 
 def _apply(out: NDArray[Any], light: GridLight, matrix: Any) -> None:
@@ -144,7 +144,7 @@ def past_scalar(light: GridLight, law: ScalarLaw) -> GridLight:
         work = partial(_shape, light, law, (x, y))
         lost = sum(strips(work, light.count, light.count))
         light = replace(light, beyond=_beyond(light, law.stop, lost))
-    return replace(light, periodic=light.periodic and law.stop is None, filled=None, waves=None)
+    return replace(light, periodic=light.periodic and law.stop is None, filled=None)
 
 
 def _multiply(light: GridLight, factor: Any) -> None:
@@ -184,4 +184,4 @@ def _coverage(depth: Any, pitch: float) -> Reals:
 def flipped(light: GridLight, law: Flip) -> GridLight:
     """Places reversed along x or y: the order of columns or rows, exactly."""
     samples = light.samples[:, :, ::-1] if law.axis == "x" else light.samples[:, ::-1]
-    return replace(light, samples=np.ascontiguousarray(samples), waves=None)
+    return replace(light, samples=np.ascontiguousarray(samples))

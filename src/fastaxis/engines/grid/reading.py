@@ -15,7 +15,6 @@ from fastaxis.engines.grid.edges import watch_frame
 from fastaxis.engines.grid.filled import filled
 from fastaxis.engines.grid.interpolant import value_matrix
 from fastaxis.engines.grid.kernel import blocks, reach_for
-from fastaxis.engines.grid.landing import landed
 from fastaxis.engines.grid.light import GridLight, Samples, curve, inner
 from fastaxis.engines.grid.nearby import nearby
 from fastaxis.engines.grid.transforms import forward
@@ -48,6 +47,16 @@ class GridField:
     def wavelength(self) -> float:
         """Vacuum wavelength [m]."""
         return self.light.wavelength
+
+    @property
+    def carried(self) -> GridLight:
+        """The light as it is kept."""
+        return self.light
+
+    @property
+    def places(self) -> tuple[int, float, float]:
+        """Samples along a side, their pitch [m], the curvature kept apart [1/m]."""
+        return self.light.count, self.light.pitch, self.light.curvature
 
     @property
     def power(self) -> float:
@@ -109,10 +118,6 @@ class GridField:
             samples = np.stack([_complex_sandwich(left, part, right) for part in light.samples])
             return Collected(samples.astype(light.samples.dtype), light.jones, 1, rows.blocks(), columns.blocks())
         reach = reach_for(max(min(parts * light.count / (2 * waves), MOST_SPARE), SPARE))
-        if light.waves and parts > 1:
-            near = landed(light.waves, light.pitch, raster, parts, reach)
-            if near:
-                return Collected(near.samples, light.jones, 1, near.rows, near.columns)
         down, across = (
             blocks(
                 count=light.count, pitch=light.pitch, parts=parts, reach=reach,

@@ -48,5 +48,5 @@ def travel_scaled(light: GridLight, travel: TravelLaw, *, measured: bool = False
     if near < 0:
         samples = np.ascontiguousarray(samples[:, ::-1, ::-1])
     pitch, curvature = light.pitch * abs(near), far / near
-    light = replace(light, samples=samples, pitch=pitch, curvature=curvature, filled=waves, waves=None)
+    light = replace(light, samples=samples, pitch=pitch, curvature=curvature, filled=waves)
     return replace(light, discarded=discarded, band_power=band)

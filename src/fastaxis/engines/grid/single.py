@@ -9,12 +9,24 @@ import numpy as np
 from fastaxis.engines.grid.filled import filled
 from fastaxis.engines.grid.light import GridLight, Samples, curve, multiply_separable
 from fastaxis.engines.grid.transforms import forward
-from fastaxis.engines.grid.waves import Waves
 from fastaxis.laws import TravelLaw
 
-__all__ = ["travel_single"]
+__all__ = ["far_pitch", "near_chirp", "scale", "travel_single"]
 
-KEPT = 2048  # samples along a side up to which the waves are kept: beyond, memory counts for more than time
+
+def far_pitch(light: GridLight, travel: TravelLaw) -> float:
+    """Pitch [m] of the samples behind the travel: wavelength |B| / (n pitch)."""
+    return float(light.wavelength * abs(travel.b) / (light.count * light.pitch))
+
+
+def near_chirp(light: GridLight, travel: TravelLaw) -> Samples:
+    """exp(i k (A'/B) x^2/2) along a side, with A' = A + B K."""
+    return curve(light.x, (travel.a + travel.b * light.curvature) / travel.b, light.wavelength)
+
+
+def scale(light: GridLight, travel: TravelLaw) -> complex:
+    """-i pitch^2/(wavelength B): of a sum over the samples, for the integral of Collins."""
+    return complex(-1j * light.pitch**2 / (light.wavelength * travel.b))
 
 
 def travel_single(light: GridLight, travel: TravelLaw, *, measured: bool = False) -> GridLight:
@@ -28,34 +40,20 @@ def travel_single(light: GridLight, travel: TravelLaw, *, measured: bool = False
     exp(-2 pi i (j - c)(m - c)/n) is a plain transform between two factors exp(2 pi i c j/n).
 
     Near and far plane are each other's spectrum: with ``measured``, how far the light reaches out here tells how much
-    of the band it fills there, and the waves are kept for whoever reads between the samples.
+    of the band it fills there.
     """
-    count, pitch, wavelength, b = light.count, light.pitch, light.wavelength, travel.b
+    count = light.count
     middle = (count - 1) / 2
     # Counted in whole turns over n so that the phase of a far sample is not rounded.
     turns = np.mod(middle * np.arange(count), count) / count
     shift = np.exp(2j * np.pi * turns)
-    chirp = curve(light.x, (travel.a + b * light.curvature) / b, wavelength)
-    scale = -1j * pitch**2 / (wavelength * b)
     samples = light.samples
     wide = filled(samples, np.arange(count) - middle) if measured else None
-    waves = _kept(samples, min(wide, count), chirp, scale, mirrored=b < 0) if wide and count <= KEPT else None
-    multiply_separable(samples, chirp * shift)
+    multiply_separable(samples, near_chirp(light, travel) * shift)
     out = forward(samples)
     corner = np.exp(-2j * np.pi * np.mod(middle * middle, count) / count)
     factor = shift * corner
-    multiply_separable(out, factor, scale * factor)
-    if b < 0:
+    multiply_separable(out, factor, scale(light, travel) * factor)
+    if travel.b < 0:
         out = np.ascontiguousarray(out[:, ::-1, ::-1])
-    pitch = wavelength * abs(b) / (count * pitch)
-    return replace(light, samples=out, pitch=pitch, curvature=travel.d / b, filled=wide, waves=waves)
-
-
-def _kept(samples: Samples, wide: int, chirp: Samples, scale: complex, *, mirrored: bool) -> Waves:
-    """The middle of a chirped field as waves of its far side."""
-    count = samples.shape[-1]
-    first = (count - wide) // 2
-    middle = slice(first, first + wide)
-    amplitudes = samples[:, middle, middle].copy()
-    multiply_separable(amplitudes, chirp[middle], scale * chirp[middle])
-    return Waves(amplitudes, first, count, mirrored)
+    return replace(light, samples=out, pitch=far_pitch(light, travel), curvature=travel.d / travel.b, filled=wide)

@@ -35,7 +35,7 @@ def turned(light: GridLight, law: Turn) -> GridLight:
         across = math.tan(rest / 2)
         for axis, slope in ((2, across), (1, -math.sin(rest)), (2, across)):
             samples = _sheared(samples, slope, axis)
-    return replace(light, samples=samples, waves=None)
+    return replace(light, samples=samples)
 
 
 def _sheared(samples: Samples, slope: float, axis: int) -> Samples:

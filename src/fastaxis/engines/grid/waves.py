@@ -1,9 +1,9 @@
-"""The waves a far plane is made of, kept so that it can be sampled again, more densely, where a camera looks."""
+"""The waves a far plane is made of: light one transform before its target, read where a camera looks."""
 
 from __future__ import annotations
 
 from dataclasses import dataclass
-from typing import Any
+from typing import Any, TypeAlias
 
 import numpy as np
 from numpy.typing import NDArray
@@ -13,79 +13,119 @@ from fastaxis.engines.grid.workers import strips
 
 __all__ = ["Places", "Waves"]
 
-Samples = NDArray[Any]
+Samples: TypeAlias = NDArray[Any]
+Reals: TypeAlias = NDArray[np.float64]
 
 
 @dataclass(frozen=True)
 class Places:
-    """Neighbouring places ``parts`` times as dense as samples.
+    """Neighbouring places of a line, ``length`` of which fill the window symmetrically about its middle.
 
     Parameters
     ----------
-    first : the first one, counted in parts of a sample from the first sample.
-    count : how many.
+    first, count : the first of them, counted from the first in the window, and how many.
+    length : places in the window.
     """
 
     first: int
     count: int
+    length: int
+
+    @property
+    def from_other_end(self) -> Places:
+        """The same places counted from the other end of the window."""
+        return Places(self.length - self.first - self.count, self.count, self.length)
 
 
 @dataclass(frozen=True, eq=False)
 class Waves:
-    """A field as waves across its window: the sum of amplitude[j] exp(-2 pi i (j0 + j - c) (m - c)/n), c = (n - 1)/2.
+    """A field as waves across its window: the sum of amplitude[j] exp(-2 pi i (j0 + j - c) t), c = (count - 1)/2.
 
-    That is the field at sample m of n along a side, for whole m and for any m in between.
+    That is the field at t windows from the middle. Amplitudes left out at either end are zero.
 
     Parameters
     ----------
-    amplitudes : (components, waves, waves).
-    first : j0, along either side.
-    count : n.
-    mirrored : whether m counts from the other end.
+    amplitudes : (components, rows, columns).
+    first : j0 of the rows and of the columns.
+    count : waves along a side, those left out included.
+    mirrored : whether places count from the other end.
     """
 
     amplitudes: Samples
-    first: int
+    first: tuple[int, int]
     count: int
     mirrored: bool = False
 
-    def at(self, rows: Places, columns: Places, parts: int) -> Samples:
-        """(components, rows, columns): the field at places between the samples.
+    def at(self, rows: Places, columns: Places) -> Samples:
+        """(components, rows, columns): the field at some places.
 
         Transforms over a window filled up with zeros, first of all columns, then of the rows asked for.
         """
         if self.mirrored:
-            rows, columns = (self._from_other_end(places, parts) for places in (rows, columns))
-        length, width = parts * self.count, self.amplitudes.shape[-1]
-        (before_down, after_down), (before, after) = (self._turns(places, parts) for places in (rows, columns))
+            rows, columns = rows.from_other_end, columns.from_other_end
+        height, width = self.amplitudes.shape[1:]
+        before_down, after_down = self._turns(rows, self.first[0], height)
+        before, after = self._turns(columns, self.first[1], width)
         near = np.empty((len(self.amplitudes), rows.count, width), dtype=self.amplitudes.dtype)
         out = np.empty((len(near), rows.count, columns.count), dtype=near.dtype)
 
         def drop(strip: slice) -> None:
             for part, some in zip(near, self.amplitudes[:, :, strip], strict=True):
-                part[:, strip] = fft.fft(some * before_down[:, None], n=length, axis=0)[: rows.count]
+                turned = some * before_down[:, None]
+                part[:, strip] = fft.fft(turned, n=rows.length, axis=0, overwrite_x=True)[: rows.count]
 
         def fill(strip: slice) -> None:
             samples = near[:, strip] * before
             samples *= after_down[strip, None]
-            np.multiply(fft.fft(samples, n=length, axis=2)[:, :, : columns.count], after, out=out[:, strip])
+            samples = fft.fft(samples, n=columns.length, axis=2, overwrite_x=True)[:, :, : columns.count]
+            np.multiply(samples, after, out=out[:, strip])
 
-        strips(drop, width, length)
-        strips(fill, rows.count, length)
+        strips(drop, width, rows.length)
+        strips(fill, rows.count, columns.length)
         return np.ascontiguousarray(out[:, ::-1, ::-1]) if self.mirrored else out
 
-    def _from_other_end(self, places: Places, parts: int) -> Places:
-        return Places(parts * (self.count - 1) - (places.first + places.count - 1), places.count)
-
-    def _turns(self, places: Places, parts: int) -> tuple[Samples, ...]:
+    def _turns(self, places: Places, first: int, waves: int) -> tuple[Samples, Samples]:
         """Factors of the waves before, and of the places after, a transform that counts both from 0.
 
-        With places m = (first + e)/parts: (j0 + j - c)(m - c)/n is j e/(parts n), j (first/parts - c)/n, and the rest,
-        that of wave 0. Counted in whole turns so that the phase of a far sample is not rounded.
+        At place k of L, t = (2k - L + 1)/2L. With k = first + e, (j0 + j - c) t is j e/L, a part of j alone, and the
+        rest, that of wave 0. Counted in whole turns so that the phase of a far place is not rounded.
         """
-        n, kind = self.count, self.amplitudes.dtype
-        waves = np.arange(self.amplitudes.shape[-1])
-        zero, lowest = 2 * places.first - parts * (n - 1), 2 * self.first - (n - 1)
-        before = np.mod(waves * zero, 2 * parts * n) / (2 * parts * n)
-        after = np.mod(lowest * (zero + 2 * np.arange(places.count)), 4 * parts * n) / (4 * parts * n)
-        return tuple(np.exp(-2j * np.pi * turns).astype(kind) for turns in (before, after))
+        length = places.length
+        zero, lowest = 2 * places.first - (length - 1), 2 * first - (self.count - 1)
+        before = np.mod(np.arange(waves) * zero, 2 * length) / (2 * length)
+        after = np.mod(lowest * (zero + 2 * np.arange(places.count)), 4 * length) / (4 * length)
+        kind = self.amplitudes.dtype
+        return np.exp(-2j * np.pi * before).astype(kind), np.exp(-2j * np.pi * after).astype(kind)
+
+    def anywhere(self, rows: Reals, columns: Reals) -> Samples:
+        """(components, rows, columns): the field at places given in windows from the middle."""
+        down, across = (
+            self._matrix(-places if self.mirrored else places, first, waves)
+            for places, first, waves in zip((rows, columns), self.first, self.amplitudes.shape[1:], strict=True)
+        )
+        found: Samples = (
+            (down @ self.amplitudes) @ across.T if len(down) <= len(across) else down @ (self.amplitudes @ across.T)
+        )
+        return found
+
+    def _matrix(self, places: Reals, first: int, waves: int) -> Samples:
+        order = first + np.arange(waves) - (self.count - 1) / 2
+        return np.asarray(np.exp(-2j * np.pi * np.mod(np.outer(places, order), 1.0)))
+
+    def profiles(self, lines: int) -> tuple[Reals, Reals]:
+        """Power at each of ``count`` rows and columns of the window, from so many lines of waves only.
+
+        The power in a row of the window is the sum over all columns of waves of what each sends there; columns are
+        alike enough that a share of them tells where the light goes.
+        """
+        down, across = (self._profile(axis, lines) for axis in (1, 2))
+        return down, across
+
+    def _profile(self, axis: int, lines: int) -> Reals:
+        other = 3 - axis
+        stride = max(self.amplitudes.shape[other] // lines, 1)
+        some = self.amplitudes[:, :, ::stride] if axis == 1 else self.amplitudes[:, ::stride]
+        before, _ = self._turns(Places(0, self.count, self.count), self.first[axis - 1], some.shape[axis])
+        spectrum = fft.fft(some * (before[:, None] if axis == 1 else before), n=self.count, axis=axis, overwrite_x=True)
+        profile: Reals = np.sum(spectrum.real**2 + spectrum.imag**2, axis=(0, other), dtype=float)
+        return profile[::-1] if self.mirrored else profile

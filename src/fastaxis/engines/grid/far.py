@@ -1,0 +1,181 @@
+"""Light one transform before its target: the far plane is worked out where it is looked at."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass, field, replace
+from functools import cached_property
+from typing import cast
+
+import numpy as np
+from numpy.typing import NDArray
+
+from fastaxis.engines.field import Guard
+from fastaxis.engines.grid.collecting import Collected
+from fastaxis.engines.grid.edges import watch_frame
+from fastaxis.engines.grid.filled import beat, lit, marginals
+from fastaxis.engines.grid.guard import LINES, check, rim_of, steps_of
+from fastaxis.engines.grid.landing import landing_length, lines
+from fastaxis.engines.grid.light import GridLight, curve, multiply_separable
+from fastaxis.engines.grid.reading import GridField
+from fastaxis.engines.grid.single import far_pitch, near_chirp, scale, travel_single
+from fastaxis.engines.grid.waves import Waves
+from fastaxis.laws import TravelLaw
+from fastaxis.light import Raster
+from fastaxis.plan import Grid
+
+__all__ = ["KEPT", "FarField", "arriving"]
+
+Reals = NDArray[np.float64]
+Complexes = NDArray[np.complex128]
+
+KEPT = 2048  # samples along a side up to which light waits here: beyond, memory counts for more than time
+MOST = 2  # places looked at over the samples of the window, at most: beyond, a plane at a time holds less
+
+
+@dataclass(frozen=True, eq=False)
+class FarField:
+    """Light before a last travel by a single transform, in the plane of a target.
+
+    Near and far plane are each other's spectrum: each sample here is a wave across the window there, and how far the
+    light reaches out here tells how fine its irradiance is there. Beyond the window it is dark.
+
+    Parameters
+    ----------
+    near : the light before, with its travel ahead.
+    guard : how close it came to the limits of its samples.
+    grid : the samples at the source.
+    """
+
+    near: GridLight
+    guard: Guard
+    grid: Grid | None = field(default=None, repr=False)
+    _read: dict[tuple[Raster, tuple[int, int]], Collected] = field(default_factory=dict, repr=False)
+
+    @property
+    def _ahead(self) -> TravelLaw:
+        return cast("TravelLaw", self.near.ahead)
+
+    @property
+    def wavelength(self) -> float:
+        """Vacuum wavelength [m]."""
+        return self.near.wavelength
+
+    @property
+    def power(self) -> float:
+        """Power [W]: in the window, and scattered by edges beyond the band of the samples; no travel changes it."""
+        near, (down, _) = self.near, self.marginals
+        total = float(down.sum()) * near.pitch**2 * (1 + near.beyond)
+        return total if near.jones is None else total * float(np.vdot(near.jones, near.jones).real)
+
+    @property
+    def total_stokes(self) -> Reals:
+        """S0 .. S3 of all the light [W], shape (4,); no travel changes them."""
+        return GridField(self.near, self.guard).total_stokes
+
+    @property
+    def carried(self) -> GridLight:
+        """The light as it is kept."""
+        return self.near
+
+    @property
+    def places(self) -> tuple[int, float, float]:
+        """Samples along a side of the window, their pitch [m], the curvature kept apart [1/m]."""
+        return self.near.count, far_pitch(self.near, self._ahead), self._ahead.d / self._ahead.b
+
+    @cached_property
+    def light(self) -> GridLight:
+        """The light on the samples of the far window."""
+        near = replace(self.near, samples=self.near.samples.copy(), ahead=None)
+        return travel_single(near, self._ahead, measured=True)
+
+    @cached_property
+    def marginals(self) -> tuple[Reals, Reals]:
+        """Power of each row and of each column of the near plane."""
+        return marginals(self.near.samples)
+
+    @cached_property
+    def waves(self) -> Waves:
+        """What is lit of the near plane, as waves across the far one."""
+        return self._waves(*(lit(line, self.near.samples.dtype) for line in self.marginals))
+
+    def _waves(self, rows: slice, columns: slice) -> Waves:
+        near, travel = self.near, self._ahead
+        amplitudes = near.samples[:, rows, columns].copy()
+        chirp = near_chirp(near, travel)
+        multiply_separable(amplitudes, chirp[columns], scale(near, travel) * chirp[rows])
+        return Waves(amplitudes, (rows.start, columns.start), near.count, mirrored=travel.b < 0)
+
+    @cached_property
+    def orders(self) -> tuple[int, int]:
+        """Highest orders of irradiance down and across, in cycles a window."""
+        kind = self.near.samples.dtype
+        down, across = (beat(line, kind) for line in self.marginals)
+        return down, across
+
+    def at(self, x: Reals, y: Reals) -> Complexes:
+        """(Ex, Ey) [sqrt(W)/m] at columns x and rows y [m], shape (2, ny, nx)."""
+        count, pitch, curvature = self.places
+        columns, rows = (np.atleast_1d(np.asarray(places, dtype=float)) for places in (x, y))
+        whole = slice(0, count)  # a field is asked for to more digits than what is lit holds
+        values = self._waves(whole, whole).anywhere(rows / (count * pitch), columns / (count * pitch))
+        across, down = (
+            curve(line, curvature, self.wavelength) * (abs(line) <= count * pitch / 2) for line in (columns, rows)
+        )
+        values = values * (down[:, None] * across)
+        return values if self.near.jones is None else self.near.jones[:, None, None] * values[0]
+
+    def stokes_on(self, raster: Raster) -> Reals:
+        """Watts per pixel of S0 .. S3, shape (4, ny, nx): the integral of the band-limited curve over each pixel.
+
+        Irradiance holds the beats of all waves; so many places hold it exactly, and what a pixel of any size collects
+        is a fixed sum of them. Light that edges scattered to steeper angles is in ``power`` and in
+        ``guard.discarded``, not here.
+
+        Warns
+        -----
+        SamplingWarning : that light is more than 1 % of the power.
+        """
+        if raster.shape != (1, 1):
+            watch_frame(self.near, self.grid)
+        return self.collected_by(raster, self.orders, keep=False).stokes()
+
+    def collected_by(self, raster: Raster, orders: tuple[int, int], *, keep: bool = True) -> Collected:
+        """The light as pixels collect it; kept for the last raster, since sums of this field are read alike.
+
+        Parameters
+        ----------
+        raster : the pixels.
+        orders : highest of irradiance to be held: those of a sum are those of its finest field.
+        keep : whether it will be asked for again.
+        """
+        known = self._read.get((raster, orders)) or self._collected_by(raster, orders)
+        if keep:
+            self._read.clear()
+            self._read[raster, orders] = known
+        return known
+
+    def _collected_by(self, raster: Raster, orders: tuple[int, int]) -> Collected:
+        count, pitch, _ = self.places
+        down, across = orders
+        rows, columns = lines(raster, count * pitch, (landing_length(down), landing_length(across)), orders)
+        if rows.places.count * columns.places.count > MOST * count**2:
+            return GridField(self.light, self.guard).collected_by(raster)
+        samples = self.waves.at(rows.places, columns.places)
+        return Collected(samples, self.near.jones, 1, rows.blocks, columns.blocks)
+
+
+def arriving(near: GridLight, names: tuple[str, ...], grid: Grid, *, by_hand: bool) -> FarField:
+    """Light that has a single transform ahead, looked over at its target.
+
+    Warns
+    -----
+    SamplingWarning, and raises SamplingError, where the light comes close to the limits of its samples.
+    """
+    unseen = FarField(near, Guard(0.0, 0.0, 0.0), grid)
+    rim = 0.0 if near.periodic else rim_of(*unseen.waves.profiles(LINES))
+    seen = replace(near, edge_power=max(near.edge_power, rim))
+    guard = check(seen, steps_of(*unseen.marginals), names, grid, by_hand=by_hand)
+    done = FarField(seen, guard, grid)
+    # What looking it over has found is not worked out again.
+    vars(done).update({name: vars(unseen)[name] for name in ("marginals", "waves")})
+    return done
