@@ -5,6 +5,7 @@ import pytest
 
 import fastaxis as fa
 from fastaxis.engines.joined import blockwise as room
+from fastaxis.engines.joined.sight import sight
 from fastaxis.light import Raster, stokes
 from fastaxis.light.gauss import gauss_legendre
 from fastaxis.units import deg, mm, mrad, um
@@ -16,6 +17,12 @@ def pixel_integrals(field, raster, rows, columns, nodes=12):
     x, y = ((p[:, np.newaxis] + t * raster.pitch / 2).ravel() for p in (raster.x[columns], raster.y[rows]))
     values = stokes(field.at(x, y)).reshape(4, len(rows), nodes, len(columns), nodes)
     return np.einsum("kiajb,a,b->kij", values, weights, weights) * raster.pitch**2 / 4
+
+
+def blockwise(field, raster):
+    seen = sight(field.arms, field.mixtures, 3 * mm)
+    image = room.blockwise(seen.images, raster, field.extent.spreads)
+    return None if image is None else seen.polarized(image)
 
 
 ARMS = {
@@ -31,8 +38,9 @@ def test_pixels_hold_the_integral_of_what_is_there(mach_zehnder, name):
     (field,) = train.field("out.transmitted")
     assert set(field.engines) == {"azimuthal", "modes"}
     raster = Raster(20 * um, (90, 120), (0.1 * mm, -0.05 * mm))
-    seen = room.blockwise(field._images, raster, field.extent.spreads)
-    assert np.array_equal(seen, field.stokes_on(raster))
+    seen = blockwise(field, raster)
+    # Out to another radius the harmonics are worked out on other panels.
+    assert abs(seen - field.stokes_on(raster)).max() < 1e-11 * seen[0].max()
     rows, columns = np.array([0, 17, 44, 45, 89]), np.array([0, 31, 55, 60, 118])
     # Blocks are settled to 3e-12 of the peak on the lines that are tried, and their neighbours to a few times that.
     expected = pixel_integrals(field, raster, rows, columns)
@@ -43,9 +51,9 @@ def test_a_narrow_beam_between_the_lines_is_not_overlooked(mach_zehnder):
     place = (0.83 * mm, -0.57 * mm)
     spot = fa.Laser(mode=fa.Gaussian(waist=0.05 * mm, centre=place), power=0.5, name="laser")
     train = mach_zehnder(spot, arm=[fa.Wedge(x=2 * mrad)])
-    arms, spreads = train.field("out.transmitted")[0], train.field("out.transmitted")[0].extent.spreads
+    (arms,) = train.field("out.transmitted")
     raster = Raster(10 * um, (200, 200))
-    seen = room.blockwise(arms._images, raster, spreads)
+    seen = blockwise(arms, raster)
     assert seen[0].sum() == pytest.approx(arms.power, abs=1e-11)
     rows, columns = np.array([43, 42, 99]), np.array([183, 185, 99])
     expected = pixel_integrals(arms, raster, rows, columns)
@@ -57,7 +65,7 @@ def test_what_is_no_polynomial_is_read_in_another_way(mach_zehnder, part):
     train = mach_zehnder(arm=[part], other=[fa.Wedge(x=2 * mrad)])
     (field,) = train.field("out.transmitted")
     raster = Raster(50 * um, (120, 120))
-    assert room.blockwise(field._images, raster, field.extent.spreads) is None
+    assert blockwise(field, raster) is None
     # A hard rim is seen as finely as places inside each pixel tell, some 1e-2 of a pixel that it cuts.
     assert field.stokes_on(raster)[0].sum() == pytest.approx(field.power, rel=1e-3)
 

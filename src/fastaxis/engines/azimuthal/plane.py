@@ -16,6 +16,7 @@ from fastaxis.engines.azimuthal.harmonics import LEFT, RIGHT, Harmonics
 from fastaxis.engines.azimuthal.panels import Profile, Reals
 from fastaxis.engines.azimuthal.rendering import circular_field, corner, smooth_images
 from fastaxis.engines.azimuthal.resolving import Settings
+from fastaxis.engines.azimuthal.scalar import ScalarHarmonics
 from fastaxis.engines.azimuthal.shapes import Shapes, remembered
 from fastaxis.engines.azimuthal.table import Table, table_of
 from fastaxis.engines.azimuthal.travelling import arrived
@@ -100,12 +101,23 @@ class AzimuthalField:
             return self.total_stokes
         return square_stokes(self.out_to(side / math.sqrt(2)), side)
 
+    def _around(self, farthest: float) -> Harmonics:
+        """The harmonics out to a place, itself included.
+
+        The axis alone still needs panels, which have a width; and the farthest place may round to a hair beyond its
+        own distance, where the table would read nothing.
+        """
+        return self.out_to(max(farthest, 1e-3 * self.wavelength) * (1 + 1e-9))
+
+    def scalar(self, reach: float) -> ScalarHarmonics | None:
+        """The field out to a radius [m] as one state times a scalar; None if its polarization varies."""
+        arrival = self._around(reach)
+        return ScalarHarmonics.of(arrival, self._table(arrival))
+
     def at(self, x: NDArray[np.float64], y: NDArray[np.float64]) -> NDArray[np.complex128]:
         """(Ex, Ey) [sqrt(W)/m] at columns x and rows y [m], shape (2, ny, nx)."""
         x, y = np.atleast_1d(np.asarray(x, dtype=float)), np.atleast_1d(np.asarray(y, dtype=float))
-        # An axis place alone still needs panels, which have a width.
-        # The farthest place may round to a hair beyond its own distance, where the table would read nothing.
-        arrival = self.out_to(max(math.hypot(abs(x).max(), abs(y).max()), 1e-3 * self.wavelength) * (1 + 1e-9))
+        arrival = self._around(math.hypot(abs(x).max(), abs(y).max()))
         table, bend = self._table(arrival), self.harmonics.wavenumber * arrival.curvature / 2
         across, down = (np.exp(1j * bend * side**2) for side in (x, y))
         out = np.empty((2, len(y), len(x)), dtype=complex)

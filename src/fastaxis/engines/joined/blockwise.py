@@ -20,29 +20,37 @@ BESIDE = 0.02  # of a pixel: how close the axis is passed, where directly behind
 
 
 def blockwise(images: Callable[[Reals, Reals], Reals], raster: Raster, spreads: Sequence[Spread]) -> Reals | None:
-    """Watts per pixel of S0 .. S3, shape (4, ny, nx); None where even one pixel is no polynomial of a few degrees.
+    """What each pixel collects, shape (images, ny, nx); None where even one pixel is no polynomial of a few degrees.
 
     How many nodes each block needs is tried on lines: from the axis to the corner, about which the light with
     singularities and rims lies, and through each beam, which may be a narrow one beside the axis.
 
     Parameters
     ----------
-    images : S0 .. S3 at columns x and rows y [m], shape (4, rows, columns).
+    images : pictures at columns x and rows y [m], shape (images, rows, columns), the first of them the brightest.
     spreads : of the beams that meet.
     """
     blocks: Any = import_module("fastaxis.engines.azimuthal.blocks")
     x, y = raster.x, raster.y
     few_x, few_y = (_lines(blocks.lines_across(p), spreads, side, raster) for side, p in enumerate((x, y)))
-    peak = float(images(x, few_y)[0].max())
-    columns = blocks.blocks_along(lambda places: images(places, few_y), x, raster.pitch, peak)
+    bright = images(x, few_y)
+    peak = float(bright[0].max())
+    columns = blocks.blocks_along(lambda places: _both(images(places, few_y), places), x, raster.pitch, peak)
     if columns is None:
         return None
-    rows = blocks.blocks_along(lambda places: images(few_x, places).swapaxes(1, 2), y, raster.pitch, peak)
+    rows = blocks.blocks_along(
+        lambda places: _both(images(few_x, places).swapaxes(1, 2), places), y, raster.pitch, peak
+    )
     if rows is None:
         return None
-    out = np.empty((4, *raster.shape))
+    out = np.empty((len(bright), *raster.shape))
     blocks.collected(images, rows, columns, raster.pitch**2, out)
     return out
+
+
+def _both(lines: Reals, places: Reals) -> Reals:
+    """Lines and their mirror images, where places have them: nodes symmetric about the axis share their radii."""
+    return np.stack([lines, lines[..., ::-1]]) if np.array_equal(places, -places[::-1]) else lines
 
 
 def _lines(across: Reals, spreads: Sequence[Spread], side: int, raster: Raster) -> Reals:

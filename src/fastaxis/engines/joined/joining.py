@@ -18,8 +18,9 @@ from fastaxis.engines.joined.coherence import mixtures
 from fastaxis.engines.joined.extent import Extent
 from fastaxis.engines.joined.looking import Look, candidates, settled
 from fastaxis.engines.joined.overlap import total_of_sums
+from fastaxis.engines.joined.sight import Sight, sight
 from fastaxis.errors import ParameterError
-from fastaxis.light import Raster, stokes
+from fastaxis.light import Raster
 from fastaxis.plan import Branch
 
 __all__ = ["JoinedField", "joined"]
@@ -27,7 +28,6 @@ __all__ = ["JoinedField", "joined"]
 Reals = NDArray[np.float64]
 Complexes = NDArray[np.complex128]
 
-FARTHER = 1e-6  # a few roundings would do
 BLOCK = 1 << 18  # places at which the arms are held at a time
 
 
@@ -95,16 +95,9 @@ class JoinedField:
                 got=f"{len(self.arms)} paths of different length, and a line of some width",
                 fix='train.with_changes({"laser.line": fa.Monochromatic()})',
             )
-        return np.asarray(self._sums(np.atleast_1d(x), np.atleast_1d(y))[0])
-
-    def _sums(self, x: Reals, y: Reals) -> Complexes:
-        """Every coherent sum at columns x and rows y, shape (sums, 2, ny, nx)."""
-        total = np.zeros((len(self.mixtures), 2, len(y), len(x)), dtype=complex)
-        for arm, numbers in zip(self.arms, self.mixtures.T, strict=True):
-            field = arm.at(x, y)
-            for index, number in enumerate(numbers):
-                total[index] += number * field
-        return total
+        columns, rows = np.atleast_1d(x), np.atleast_1d(y)
+        first, *rest = (n * arm.at(columns, rows) for n, arm in zip(self.mixtures[0], self.arms, strict=True))
+        return np.asarray(sum(rest, first))
 
     def stokes_on(self, raster: Raster) -> Reals:
         """Watts per pixel of S0 .. S3, integrated over each pixel, shape (4, ny, nx).
@@ -114,27 +107,19 @@ class JoinedField:
         half = self.extent.half_window
         if raster.shape == (1, 1) and half and raster.pitch / 2 >= half + max(map(abs, raster.centre)):
             return self.total_stokes[:, np.newaxis, np.newaxis]
-        reach = max(abs(raster.x).max(), abs(raster.y).max()) + raster.pitch / 2
         if all(engine == "azimuthal" for engine in self.engines):
             return self._by_harmonics(raster)
+        reach = max(abs(raster.x).max(), abs(raster.y).max()) + raster.pitch / 2
         if "grid" not in self.engines and "azimuthal" in self.engines:
-            self._reached(reach)
-            image = blockwise(self._images, raster, self.extent.spreads)
+            seen = sight(self.arms, self.mixtures, reach)
+            image = blockwise(seen.images, raster, self.extent.spreads)
             if image is not None:
-                return image
+                return seen.polarized(image)
         frequency, finest = self.extent.frequency(reach), self.extent.finest(reach)
         looks = candidates(raster, frequency, finest)
-        self._reached(max(look.farthest for look in looks))
-        return self._seen(settled(raster, finest, looks, self._seen))
-
-    def _reached(self, farthest: float) -> None:
-        """Engines that work out a plane as far as they are asked do so once if the farthest place comes first."""
-        corner = np.array([farthest * (1 + FARTHER)])
-        self._sums(corner, corner)
-
-    def _images(self, x: Reals, y: Reals) -> Reals:
-        """S0 .. S3 [W/m^2] at columns x and rows y, shape (4, ny, nx)."""
-        return np.asarray(np.sum([stokes(one) for one in self._sums(x, y)], axis=0))
+        seen = sight(self.arms, self.mixtures, max(look.farthest for look in looks))
+        image = _collected(seen, settled(raster, finest, looks, lambda look: _collected(seen, look)))
+        return seen.polarized(image)
 
     def _by_harmonics(self, raster: Raster) -> Reals:
         """The harmonics of all arms added and looked at once, for each sum."""
@@ -142,13 +127,14 @@ class JoinedField:
         sums = (engine.combined_on(self.arms, numbers, raster) for numbers in self.mixtures)
         return np.asarray(sum(total.stokes_on(raster) for total in sums))
 
-    def _seen(self, look: Look) -> Reals:
-        """What pixels collect of the light at some places, shape (4, rows, columns)."""
-        columns, rows = look.columns, look.rows
-        image = np.zeros((4, rows.matrix.shape[0], columns.matrix.shape[0]))
-        at_once = max(1, BLOCK // len(columns.places))
-        for first in range(0, len(rows.places), at_once):
-            block = slice(first, first + at_once)
-            for index, values in enumerate(self._images(columns.places, rows.places[block])):
-                image[index] += rows.matrix[:, block] @ (columns.matrix @ values.T).T
-        return image
+
+def _collected(seen: Sight, look: Look) -> Reals:
+    """What pixels collect of the light at some places, shape (images, rows, columns)."""
+    columns, rows = look.columns, look.rows
+    image: Any = 0.0
+    at_once = max(1, BLOCK // len(columns.places))
+    for first in range(0, len(rows.places), at_once):
+        block = slice(first, first + at_once)
+        across = [(columns.matrix @ one.T).T for one in seen.images(columns.places, rows.places[block])]
+        image = image + np.stack([rows.matrix[:, block] @ one for one in across])
+    return np.asarray(image)

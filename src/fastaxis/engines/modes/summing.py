@@ -11,6 +11,7 @@ import numpy as np
 from numpy.typing import NDArray
 
 from fastaxis.engines.field import CLEAN, Guard
+from fastaxis.engines.modes.scalar import ScalarModes
 from fastaxis.engines.modes.waves import Waves, overlaps
 from fastaxis.light import Raster
 
@@ -52,6 +53,10 @@ class ModeSum:
     def guard(self) -> Guard:
         """Nothing is sampled."""
         return CLEAN
+
+    def scalar(self, reach: float) -> ScalarModes | None:
+        """The field as one state times a scalar, known however far one looks; None if its polarization varies."""
+        return ScalarModes.of(self.wavelength, self.waves)
 
     def at(self, x: Reals, y: Reals) -> Complexes:
         """(Ex, Ey) [sqrt(W)/m] at columns x and rows y [m], shape (2, ny, nx)."""

@@ -26,7 +26,7 @@ class Waves:
     senses : +1 or -1 for x and y.
     widths : w [m], shape (n,).
     exponents : 1/w^2 - i k/2R [1/m^2], shape (n,).
-    jones : (Ex, Ey) [sqrt(W)] in the middle, Gouy phases included, shape (n, 2).
+    jones : (Ex, Ey) [sqrt(W)] in the middle, Gouy phases included, shape (n, 2); (n, 1) of a scalar field.
     middles : (x, y) [m], shape (n, 2).
     leans : k times the tilt along x and y [1/m], shape (n, 2).
     """
@@ -39,26 +39,25 @@ class Waves:
     middles: Reals
     leans: Reals
 
-    def at(self, x: Reals, y: Reals) -> Complexes:
-        """Their sum [sqrt(W)/m] at columns x and rows y, shape (2, ny, nx)."""
-        across, down = (self._along(side, places) for side, places in enumerate((x, y)))
+    def at(self, x: Reals, y: Reals, bend: float = 0.0) -> Complexes:
+        """Their sum [sqrt(W)/m] times exp(-i bend r^2) at columns x and rows y, shape (2, ny, nx)."""
+        across, down = (self._along(side, places, bend) for side, places in enumerate((x, y)))
         amplitudes = self.jones / self.widths[:, np.newaxis]
         if self.mode.degree == 0:
             level = complex(self.mode.polynomial(0.0, 0.0))
             return np.stack([level * (down.T * part) @ across for part in amplitudes.T])
-        total = np.zeros((2, len(y), len(x)), dtype=complex)
+        total = np.zeros((self.jones.shape[1], len(y), len(x)), dtype=complex)
         scales = np.sqrt(2) / self.widths
         for scale, amplitude, (mx, my), column, row in zip(scales, amplitudes, self.middles, across, down, strict=True):
             shape = self._polynomial(scale * (x[np.newaxis, :] - mx), scale * (y[:, np.newaxis] - my))
             total += np.multiply.outer(amplitude, shape * (row[:, np.newaxis] * column))
         return total
 
-    def _along(self, side: int, places: Reals) -> Complexes:
+    def _along(self, side: int, places: Reals, bend: float) -> Complexes:
         """The exponential along one side, shape (n, places)."""
         apart = places - self.middles[:, side, np.newaxis]
-        return np.asarray(
-            np.exp(apart * (1j * self.leans[:, side, np.newaxis] - self.exponents[:, np.newaxis] * apart))
-        )
+        along = apart * (1j * self.leans[:, side, np.newaxis] - self.exponents[:, np.newaxis] * apart)
+        return np.asarray(np.exp(along - 1j * bend * places**2))
 
     def _polynomial(self, u: Any, v: Any, *, conjugate: bool = False) -> Any:
         return self.mode.polynomial(self.senses[0] * u, self.senses[1] * v, conjugate=conjugate)
