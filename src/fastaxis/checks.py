@@ -277,19 +277,19 @@ def usual(part: str, parameter: str, value: Any, most: float, *, fix: str) -> li
     ]
 
 
-def whole_radians(part: str, parameter: str, value: Any) -> list[FastaxisWarning]:
-    """A caution for an angle of 4, 5, 10 ... radians exactly: small enough to pass, but it was meant in degrees."""
-    whole = isinstance(value, int | float) and value == round(value)
-    return [_degrees_meant(part, parameter, value)] if whole and math.pi < abs(value) <= LARGEST_ANGLE else []
+def whole_radians(part: str, parameter: str, value: Any, *, least: float = 0.0) -> list[FastaxisWarning]:
+    """A caution for an angle of 3, 5, 10 ... radians exactly: small enough to pass, but it was meant in degrees.
+
+    Angles up to ``least`` [rad] are taken as they are.
+    """
+    whole = isinstance(value, int | float) and not isinstance(value, bool) and value == round(value)
+    return [_degrees_meant(part, parameter, value)] if whole and least < abs(value) <= LARGEST_ANGLE else []
 
 
 def degrees_missed(part: str, parameter: str, value: Any) -> None:
-    """The same caution said at once, of 1, 2 and 3 as well, for an angle typed without a point.
-
-    A float such as 3.0 is as likely the answer of some calculation.
-    """
-    if isinstance(value, int) and not isinstance(value, bool) and 0 < abs(value) <= LARGEST_ANGLE:
-        caution(_degrees_meant(part, parameter, value))
+    """The same caution said at once, for what no train asks for its cautions."""
+    for warning in () if is_symbolic(value) else whole_radians(part, parameter, value):
+        caution(warning)
 
 
 def _degrees_meant(part: str, parameter: str, value: float) -> SlipWarning:

@@ -211,7 +211,8 @@ def test_changed_values_are_checked_too():
         ("QPlate", {"q": 0.5, "offset": -12}, "offset=-12*deg"),
         ("Slit", {"width": 1e-3, "angle": 9}, "angle=9*deg"),
         ("Rotator", {"angle": 7}, "angle=7*deg"),
-        ("Laser", {"waist": 1e-3, "state": light.State(5.0)}, "state=fa.linear(5.0*deg)"),
+        ("HalfWavePlate", {"fast": 3.0}, "fast=3*deg"),
+        ("Polarizer", {"axis": -1.0}, "axis=-1*deg"),
     ],
 )
 def test_a_few_whole_radians_are_a_caution(kind, given, fix):
@@ -227,6 +228,10 @@ def test_a_few_whole_radians_are_a_caution(kind, given, fix):
         (lambda: parts.HalfWavePlate(fast=3), "fast=3*deg"),
         (lambda: parts.Polarizer(axis=0).changed(axis=-1), "axis=-1*deg"),
         (lambda: light.State(2), "azimuth=2*deg"),
+        (lambda: light.State(2.0), "azimuth=2*deg"),
+        (lambda: light.linear(5.0), "angle=5*deg"),
+        (lambda: fa.Mount(12.0), "zero=12*deg"),
+        (lambda: fa.polarizer_at(1.0), "axis=1*deg"),
         (lambda: light.linear(5), "angle=5*deg"),
         (lambda: light.elliptical(1, 0.1), "azimuth=1*deg"),
         (lambda: fa.Mount(12), "zero=12*deg"),
@@ -234,10 +239,12 @@ def test_a_few_whole_radians_are_a_caution(kind, given, fix):
         (lambda: fa.plate_then_polarizer(slow=7), "slow=7*deg"),
     ],
 )
-def test_angles_typed_without_a_point_are_a_caution_at_once(make, fix):
+def test_angles_typed_without_a_unit_are_a_caution_at_once(make, fix):
     with pytest.warns(SlipWarning) as found:
-        make()
+        made = make()
     assert [warning.message.fix for warning in found] == [fix]
+    # What has been said is not said again by the train.
+    assert not isinstance(made, parts.Element) or made.cautions(5e-7) == []
 
 
 def test_a_few_whole_radians_read_as_a_sentence():
@@ -247,6 +254,11 @@ def test_a_few_whole_radians_read_as_a_sentence():
     )
 
 
-@pytest.mark.parametrize("fast", [0, 1.0, -3.0, 4.5, sympy.Symbol("a"), math.pi])
+@pytest.mark.parametrize("fast", [0, 0.5, -2.5, 4.5, sympy.Symbol("a"), math.pi])
 def test_other_angles_are_none(fast):
     assert parts.HalfWavePlate(fast=fast).cautions(5e-7) == []
+
+
+def test_a_retardance_of_two_radians_is_a_plate():
+    assert parts.Retarder(fast=0.1, retardance=2.0).cautions(5e-7) == []
+    assert parts.Retarder(fast=0.1, retardance=4.0).cautions(5e-7) != []

@@ -128,7 +128,7 @@ class TestStops:
     def test_a_radius_of_30_centimetres_is_a_caution(self):
         (caution,) = Aperture(radius=0.3).cautions(WAVELENGTH)
         assert caution.fix == "radius=0.3*mm"
-        assert KnifeEdge(angle=3.0).cautions(WAVELENGTH) == []
+        assert KnifeEdge(angle=2.5).cautions(WAVELENGTH) == []
 
 
 class TestSpiralPlate:

@@ -256,3 +256,38 @@ def test_a_path_difference_that_leaves_the_fringes_alone_is_not_told(bench_of, c
     train.along("split.reflected", fa.FreeSpace(100 * mm), "join.side").along("join.reflected", fa.BeamDump())
     line = fa.GaussianLine(coherence_length=coherence)
     assert len(checks(train.with_changes({"laser.line": line}), "path difference")) == told
+
+
+def mach_zehnder(bench_of, state=fa.H):
+    train = bench_of(fa.BeamSplitter(name="split"), fa.Mirror(name="m1"), fa.BeamSplitter(name="join"), state=state)
+    train.along("split.reflected", fa.Mirror(name="m2"), fa.PhaseShift(phase=90 * deg), "join.side")
+    train.along("join.transmitted", CAMERA).along("join.reflected", fa.BeamDump(name="dump"))
+    return train
+
+
+@pytest.mark.parametrize(("state", "severity"), [(fa.H, "low"), (fa.D, "medium")])
+def test_a_mirrored_picture_is_told_once_of_both_arms(bench_of, state, severity):
+    (found,) = checks(mach_zehnder(bench_of, state), "mirrored picture")
+    assert found.severity.value == severity  # H on a round beam is its own mirror image
+    assert "1 and 3 reflections" in found.got
+
+
+def test_a_beam_beside_the_axis_is_not_its_own_mirror_image(bench_of):
+    train = bench_of(fa.Wedge(x=1e-3, name="wedge"), fa.FreeSpace(100 * mm), fa.Mirror(name="m1"), CAMERA)
+    (found,) = checks(train, "mirrored picture")
+    assert found.severity.value == "medium"
+
+
+@pytest.mark.parametrize(
+    ("camera", "fixed"),
+    [
+        (fa.Camera(pixel=10 * um, shape=(100, 100), name="cam"), "cam.shape"),
+        (fa.Camera(pixel=10 * um, shape=(640, 640), centre=(4 * mm, 0), name="cam"), "cam.centre"),
+        (fa.Camera(pixel=10 * um, shape=(640, 120), name="cam"), "cam.shape"),
+    ],
+)
+def test_the_fix_of_a_sensor_makes_it_larger_or_moves_it(bench_of, camera, fixed):
+    train = bench_of(camera)
+    (found,) = checks(train, "sensor too small")
+    assert fixed in found.fix
+    assert not checks(eval(found.fix, {"train": train, "mm": mm}), "sensor too small")

@@ -43,6 +43,10 @@ def test_text_tells_rule_got_fix_and_what_was_not_checked():
     assert str(MIXED.high[0]) == "[high] slip: a value; a rule (fix: a fix)"
 
 
+def test_several_notes_are_counted_in_the_plural():
+    assert Inspection("bench", MIXED.notes * 3 + MIXED.low * 2).summary() == "2 low, 3 notes"
+
+
 def test_json_reads_back():
     data = json.loads(MIXED.json())
     assert data["passed"] is False

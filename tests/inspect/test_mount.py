@@ -23,7 +23,10 @@ def test_the_four_kinds_of_scale():
     )
 
 
-@given(st.floats(-6, 6), st.sampled_from([1, -1]), st.sampled_from(["receiver", "source"]), st.floats(-6, 6))
+radians = st.floats(-6, 6).filter(lambda angle: angle == 0 or angle != round(angle))  # whole ones are cautioned
+
+
+@given(radians, st.sampled_from([1, -1]), st.sampled_from(["receiver", "source"]), st.floats(-6, 6))
 def test_dialling_gives_the_angle_back(zero, sense, side, angle):
     mount = Mount(zero, sense=sense, seen_from=side)
     assert 0 <= mount.scale(angle) < 2 * math.pi

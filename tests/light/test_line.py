@@ -8,7 +8,7 @@ from scipy.integrate import quad
 
 import fastaxis as fa
 from fastaxis.light.line import SPEED_OF_LIGHT
-from fastaxis.units import mm
+from fastaxis.units import mm, nm
 
 SIGMA = 1 / (2 * math.sqrt(2 * math.log(2)))
 
@@ -57,6 +57,9 @@ def test_an_uneven_comb_has_a_complex_degree():
         (lambda: fa.GaussianLine(), "neither given"),
         (lambda: fa.LorentzianLine(fwhm=1.0, coherence_length=1.0), "both given"),
         (lambda: fa.GaussianLine(coherence_length=0.0), "coherence_length = 0.0; a line has a width above zero"),
+        (lambda: fa.GaussianLine(fwhm=2e-9), "GaussianLine: fwhm = 2e-09; the width of a line is a frequency in hertz"),
+        (lambda: fa.LorentzianLine(fwhm=2e-9), "LorentzianLine: fwhm = 2e-09; the width of a line is a frequency"),
+        (lambda: fa.Comb(spacing=2e-9, weights=(1,)), "Comb: spacing = 2e-09; the spacing of a comb is a frequency"),
         (lambda: fa.Comb(spacing=0.0, weights=(1.0,)), "the teeth of a comb stand apart"),
         (lambda: fa.Comb(spacing=1e9, weights=(0.5, 0.6)), "add up to 1"),
         (lambda: fa.Laser(waist=1 * mm, line=0.2), "line is the shape of a spectral line"),
@@ -71,3 +74,13 @@ def test_a_line_survives_the_text_form():
     line = fa.Comb(spacing=5e8, weights=(0.25, 0.75), tooth=fa.LorentzianLine(fwhm=1e6))
     train = fa.Train(wavelength=633e-9).along(fa.Laser(waist=1 * mm, line=line, name="laser"))
     assert fa.Train.from_text(train.to_text()).elements["laser"].line == line
+
+
+def test_the_fix_of_a_width_in_nanometres_is_that_width_in_hertz():
+    """c 2 nm/(532 nm)^2 = 2.12 THz; over a path of 100 um that leaves exp(-(pi fwhm d/c)^2/(4 ln 2))."""
+    with pytest.raises(fa.ParameterError) as refusal:
+        fa.GaussianLine(fwhm=2 * nm)
+    line = fa.GaussianLine(**eval(f"dict({refusal.value.fix})", {"nm": nm}))
+    assert line.fwhm == pytest.approx(2.1185e12, rel=1e-4)
+    # The same in wavelengths: fwhm d/c is 2 nm * 100 um/(532 nm)^2 = 0.70665 periods of beat.
+    assert line.degree(1e-4) == pytest.approx(math.exp(-((math.pi * 0.70665) ** 2) / (4 * math.log(2))), rel=1e-4)

@@ -63,7 +63,7 @@ def test_charge_is_reversed_and_gains_the_phase_of_twice_the_roll(roll):
 
 TRAINS = [
     [fa.FreeSpace(0.2), fa.KMirror(roll=0.35), fa.QPlate(q=0.5, offset=0.2, retardance=2.0), fa.FreeSpace(0.3)],
-    [fa.QPlate(q=1, retardance=2.0), fa.DovePrism(index=1.515, roll=-0.6), fa.Mirror(), fa.KMirror(roll=1.0), fa.FreeSpace(0.3)],
+    [fa.QPlate(q=1, retardance=2.0), fa.DovePrism(index=1.515, roll=-0.6), fa.Mirror(), fa.KMirror(roll=1.1), fa.FreeSpace(0.3)],
 ]  # fmt: skip
 
 

@@ -39,17 +39,20 @@ class Element:
     faces: ClassVar[tuple[str, ...]] = ()
     entry: ClassVar[str | None] = None  # face met by default
     exit: ClassVar[str | None] = None  # face left by default
+    _told: ClassVar[frozenset[str]] = frozenset()  # angles cautioned when the part was made
 
     def __new__(cls, *_: Any, **given: Any) -> Self:
         """Parameters are looked at by name before they are taken, so that a wrong one is told with the right ones."""
         unknown = sorted(given.keys() - {f.name for f in fields(cls) if f.init})
         if unknown:
             raise cls._no_parameter(given.get("name") or cls.__name__, unknown[0], given[unknown[0]])
-        for angle in given.keys() & TYPED:
-            # Of larger ones the train warns, which knows the part by its name.
-            if not isinstance(given[angle], int) or abs(given[angle]) <= pi:
-                checks.degrees_missed(given.get("name") or cls.__name__, angle, given[angle])
-        return super().__new__(cls)
+        part = super().__new__(cls)
+        # Of what was typed with a point the train warns, and of larger ones: it knows the part by its name.
+        typed = {angle for angle in given.keys() & TYPED if isinstance(given[angle], int) and abs(given[angle]) <= pi}
+        for angle in sorted(typed):
+            checks.degrees_missed(given.get("name") or cls.__name__, angle, given[angle])
+        object.__setattr__(part, "_told", frozenset(typed))
+        return part
 
     @classmethod
     def _no_parameter(cls, label: str, wrong: str, value: Any) -> ParameterError:
@@ -75,9 +78,15 @@ class Element:
 
     def passages(self, wavelength: Scalar) -> Passages:
         """All passages at a wavelength [m], the ways back included."""
-        forward = dict(self.forward(wavelength))
-        backward = {(out, into): way.backward() for (into, out), way in forward.items()}
-        return backward | forward
+        # A plan asks each part some ten times, and a part is frozen. A letter and a number may be equal, not the same.
+        known = self.__dict__.get("_passages")
+        if known is None or type(known[0]) is not type(wavelength) or known[0] != wavelength:
+            forward = dict(self.forward(wavelength))
+            backward = {(out, into): way.backward() for (into, out), way in forward.items()}
+            known = (wavelength, backward | forward)
+            self._keep(_passages=known)
+        passages: Passages = known[1]
+        return passages
 
     def parameters(self) -> dict[str, Any]:
         """The declared values, without the name."""
@@ -101,8 +110,12 @@ class Element:
 
     def cautions(self, wavelength: Scalar) -> list[FastaxisWarning]:
         """What is possible but looks like a slip at a wavelength [m]; the train shows these."""
-        given = self.parameters()
-        return [c for name in ANGLES if name in given for c in checks.whole_radians(self.label, name, given[name])]
+        given = {name: value for name, value in self.parameters().items() if name in ANGLES and name not in self._told}
+        return [
+            c
+            for name, value in given.items()
+            for c in checks.whole_radians(self.label, name, value, least=0.0 if name in TYPED else pi)
+        ]
 
     def _keep(self, **checked: Any) -> None:
         """Put checked values into this frozen part, while it is being made."""

@@ -201,12 +201,4 @@ class Laser(Element):
                     fix=f"power={self.power:g}*mW",
                 )
             )
-        return found + self._whole_radians()
-
-    def _whole_radians(self) -> list[FastaxisWarning]:
-        if not isinstance(self.state, light.State):
-            return []
-        azimuth, ellipticity = self.state.azimuth, self.state.ellipticity
-        found = checks.whole_radians(self.label, "state.azimuth", azimuth)
-        fix = f"state=fa.elliptical({azimuth}*deg, {ellipticity})" if ellipticity else f"state=fa.linear({azimuth}*deg)"
-        return [SlipWarning(one.rule, got=one.got, fix=fix) for one in found]
+        return found

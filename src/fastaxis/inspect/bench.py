@@ -10,7 +10,7 @@ from typing import Any
 
 from fastaxis.errors import FastaxisError
 from fastaxis.inspect.strands import Strand, total
-from fastaxis.laws import Flip, ScalarLaw, TravelLaw
+from fastaxis.laws import AxisLaw, Flip, ScalarLaw, TravelLaw
 
 __all__ = ["DARK", "Bench", "Visit"]
 
@@ -80,6 +80,15 @@ class Visit:
     def returning(self) -> bool:
         """Whether this light came through the part before, the other way."""
         return any((v.name, v.left) == (self.name, self.entered) for v in self.chain()[:-1])
+
+    @property
+    def shapes(self) -> bool:
+        """Whether the part gives the beam a shape: a pattern, a charge or an axis that turns."""
+        return any(
+            (isinstance(law, AxisLaw) and not law.uniform)
+            or (isinstance(law, ScalarLaw) and (law.charge or not law.transmission.uniform))
+            for law in self.laws
+        )
 
     @property
     def flips(self) -> tuple[int, int]:

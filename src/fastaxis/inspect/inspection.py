@@ -91,7 +91,7 @@ class Inspection:
     def summary(self) -> str:
         """How many findings of each severity."""
         counts = Counter(finding.severity for finding in self.findings)
-        told = [f"{counts[severity]} {severity.value}" for severity in Severity if counts[severity]]
+        told = [_counted(counts[severity], severity) for severity in Severity if counts[severity]]
         return ", ".join(told) or "nothing found"
 
     def as_data(self) -> dict[str, Any]:
@@ -130,3 +130,8 @@ class Inspection:
         raise FileFormatError(
             "an inspection is written as pdf, png, json or txt", got=str(path), fix='"inspection.pdf"'
         )
+
+
+def _counted(number: int, severity: Severity) -> str:
+    """A number and a severity: 3 high, 3 low, but 3 notes."""
+    return f"{number} {severity.value}{'s' if severity is Severity.NOTE and number > 1 else ''}"

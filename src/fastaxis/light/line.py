@@ -9,11 +9,12 @@ from typing import Any
 
 from fastaxis import checks
 from fastaxis.errors import ParameterError
-from fastaxis.maths import Scalar
+from fastaxis.maths import Scalar, is_symbolic
 
 __all__ = ["MONOCHROMATIC", "SPEED_OF_LIGHT", "Comb", "GaussianLine", "Line", "LorentzianLine", "Monochromatic"]
 
 SPEED_OF_LIGHT = 299792458.0  # [m/s], exact by definition of the metre
+NARROWEST = 1e-3  # [Hz]
 
 
 @dataclass(frozen=True, kw_only=True)
@@ -81,7 +82,20 @@ class _Width(Line):
                 got=f"{kind}: {name} = {value}",
                 fix="line=fa.Monochromatic()",
             )
+        if name == "fwhm":
+            _refuse_length(f"{kind}: fwhm = {value:g}", "the width of a line", "fwhm", value)
         object.__setattr__(self, name, value)
+
+
+def _refuse_length(got: str, what: str, parameter: str, value: Scalar) -> None:
+    """No source has a line narrower than a millihertz: a difference of wavelengths was given."""
+    if is_symbolic(value) or value >= NARROWEST:
+        return
+    raise ParameterError(
+        f"{what} is a frequency in hertz: c/wavelength**2 times the difference of wavelengths",
+        got=got,
+        fix=f"{parameter}={SPEED_OF_LIGHT:.0f} * {value:g} / (532*nm)**2",
+    )
 
 
 @dataclass(frozen=True, kw_only=True)
@@ -96,7 +110,7 @@ class GaussianLine(_Width):
 
     Raises
     ------
-    ParameterError : none or both given, or not above zero.
+    ParameterError : none or both given, or not above zero; a width given as a difference of wavelengths.
 
     Examples
     --------
@@ -127,7 +141,7 @@ class LorentzianLine(_Width):
 
     Raises
     ------
-    ParameterError : none or both given, or not above zero.
+    ParameterError : none or both given, or not above zero; a width given as a difference of wavelengths.
 
     Examples
     --------
@@ -161,7 +175,8 @@ class Comb(Line):
 
     Raises
     ------
-    ParameterError : a spacing that is not above zero; weights that are negative or do not add up to 1.
+    ParameterError : a spacing that is not above zero, or is a difference of wavelengths; weights that are negative or
+        do not add up to 1.
 
     Examples
     --------
@@ -190,6 +205,7 @@ class Comb(Line):
                 got=f"Comb: weights = {weights}",
                 fix="weights=(0.25, 0.5, 0.25)",
             )
+        _refuse_length(f"Comb: spacing = {spacing:g}", "the spacing of a comb", "spacing", spacing)
         object.__setattr__(self, "spacing", spacing)
         object.__setattr__(self, "weights", weights)
 

@@ -28,7 +28,7 @@ def linear(angle: Scalar, *, label: str = "") -> State:
     """
     checks.degrees_missed("linear", "angle", angle)
     angle = checks.angle("linear", "angle", angle)
-    return State(angle, label=label or _degrees(angle))
+    return State.spoken_for(angle, 0.0, label or _degrees(angle))
 
 
 def elliptical(azimuth: Scalar, ellipticity: Scalar, *, label: str = "") -> State:
@@ -41,7 +41,7 @@ def elliptical(azimuth: Scalar, ellipticity: Scalar, *, label: str = "") -> Stat
     checks.degrees_missed("elliptical", "azimuth", azimuth)
     azimuth = checks.angle("elliptical", "azimuth", azimuth)
     ellipticity = checks.angle("elliptical", "ellipticity", ellipticity)
-    return State(azimuth, ellipticity, label=label or f"{_degrees(azimuth)}, {_degrees(ellipticity)}")
+    return State.spoken_for(azimuth, ellipticity, label or f"{_degrees(azimuth)}, {_degrees(ellipticity)}")
 
 
 def helicity(sign: int) -> State:

@@ -50,9 +50,21 @@ class State:
     phase: Scalar = 0.0
     label: str = field(default="", compare=False)
 
+    @classmethod
+    def spoken_for(cls, azimuth: Scalar, ellipticity: Scalar, label: str) -> State:
+        """A state of angles whose missing degrees have been cautioned under the name they were given by."""
+        state = object.__new__(cls)
+        for name, value in (("azimuth", azimuth), ("ellipticity", ellipticity), ("phase", 0.0), ("label", label)):
+            object.__setattr__(state, name, value)
+        state._check()
+        return state
+
     def __post_init__(self) -> None:
+        checks.degrees_missed(self.label or "state", "azimuth", self.azimuth)
+        self._check()
+
+    def _check(self) -> None:
         part = self.label or "state"
-        checks.degrees_missed(part, "azimuth", self.azimuth)
         for angle in ("azimuth", "ellipticity", "phase"):
             object.__setattr__(self, angle, checks.angle(part, angle, getattr(self, angle)))
         # 1e-12: degrees times pi/180 carries three roundings.

@@ -1,5 +1,7 @@
 """Mistakes of plates, polarizers and mirrors."""
 
+import warnings
+
 import fastaxis as fa
 from fastaxis.units import deg, mm, nm, um
 
@@ -139,13 +141,19 @@ def weak_polarizer(wrong):
 @pair("mirrored picture", "cam", "medium")
 def one_mirror_too_few(wrong):
     folds = [fa.Mirror(name="m1")] if wrong else [fa.Mirror(name="m1"), fa.Mirror(name="m2")]
+    return line(fa.QPlate(q=0.5, name="qp"), *folds, CAMERA)
+
+
+@pair("mirrored picture", "cam", "low")
+def one_mirror_too_few_for_a_round_beam(wrong):
+    folds = [fa.Mirror(name="m1")] if wrong else [fa.Mirror(name="m1"), fa.Mirror(name="m2")]
     return line(*folds, CAMERA)
 
 
 @pair("mirrored picture", "cam", "medium")
 def orientation_mirrored_for_nothing(wrong):
     camera = fa.Camera(pixel=10 * um, orientation="mirrored" if wrong else "upright", name="cam")
-    return line(camera)
+    return line(camera, state=fa.D)
 
 
 @pair("turned picture", "cam", "low")
@@ -169,7 +177,10 @@ def three_radians(wrong):
 
 @pair("bare degrees", "laser", "medium")
 def azimuth_of_two_radians(wrong):
-    return line(METER, state=fa.State(2.0 if wrong else 2 * deg))
+    with warnings.catch_warnings():
+        warnings.simplefilter("ignore")  # a caution when it is typed
+        state = fa.State(2.0 if wrong else 2 * deg)
+    return line(METER, state=state)
 
 
 @pair("mirror polarization", "gold", "medium")

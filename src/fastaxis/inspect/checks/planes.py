@@ -9,7 +9,7 @@ from fastaxis.elements.lens import Lens
 from fastaxis.inspect.bench import Bench, Visit, ray_matrix
 from fastaxis.inspect.finding import Finding, Severity
 from fastaxis.inspect.words import length, mm
-from fastaxis.laws import AxisLaw, ScalarLaw, TravelLaw
+from fastaxis.laws import TravelLaw
 
 __all__ = ["planes", "waist_beyond"]
 
@@ -22,17 +22,9 @@ def planes(bench: Bench) -> Iterator[Finding]:
     for visit in bench.of_kind(Camera):
         chain = visit.chain()
         for index, part in enumerate(chain[:-1]):
-            if _gives_shape(part):
+            if part.shapes:
                 yield from _shown(part, visit, ray_matrix(chain[index + 1 : -1]))
         yield from _focus(visit)
-
-
-def _gives_shape(visit: Visit) -> bool:
-    return any(
-        (isinstance(law, AxisLaw) and not law.uniform)
-        or (isinstance(law, ScalarLaw) and (law.charge or not law.transmission.uniform))
-        for law in visit.laws
-    )
 
 
 def _shown(part: Visit, camera: Visit, section: TravelLaw) -> Iterator[Finding]:

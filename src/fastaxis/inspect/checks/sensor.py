@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import math
 from collections.abc import Iterator
 
 from fastaxis.elements.camera import Camera
@@ -33,15 +34,30 @@ def _missed(visit: Visit) -> Iterator[Finding]:
     if lost <= 1e-3:
         return
     x, y = spread.offset
+    beside = passed(Rectangle(width, height), (x, y), spread) - (1 - lost)
     yield Finding(
         severity=Severity.HIGH if lost > 0.5 else Severity.MEDIUM if lost > 0.02 else Severity.LOW,
         check="sensor too small",
         element=visit.name,
-        rule=f"what falls beside a sensor of {length(width)} x {length(height)} is in no frame",
+        rule=f"what falls beside a sensor of {length(width)} x {length(height)} is in no frame: "
+        + ("it stands beside the beam" if beside > lost / 2 else "it is small for the beam"),
         got=f"{visit.name}: beam radius {length(visit.radius)}, middle at ({length(x)}, {length(y)}), "
         f"about {percent(lost)} beside the sensor",
-        fix=f"focus the beam, or move the sensor: centre=({x * 1e3:.4g}*mm, {y * 1e3:.4g}*mm)",
+        fix=_moved(visit, x, y) if beside > lost / 2 else _larger(visit),
     )
+
+
+def _moved(visit: Visit, x: float, y: float) -> str:
+    """Code for a sensor in the middle of the beam."""
+    return f'train.with_changes({{"{visit.name}.centre": ({x * 1e3:.4g}*mm, {y * 1e3:.4g}*mm)}})'
+
+
+def _larger(visit: Visit) -> str:
+    """Code for a sensor that holds a Gaussian beam to 2 w, all but 0.03 % of it."""
+    camera, (x, y), (cx, cy) = visit.element, visit.widest.spread.offset, visit.element.centre
+    apart = max(abs(x - float(cx)), abs(y - float(cy)))
+    side = 2 * math.ceil((2 * visit.radius + apart) / camera.pixel)
+    return f'train.with_changes({{"{visit.name}.shape": ({side}, {side})}})'
 
 
 def _small(visit: Visit) -> Iterator[Finding]:
