@@ -9,6 +9,7 @@ from typing import Any
 import numpy as np
 from numpy.typing import NDArray
 from scipy import sparse
+from scipy.special import i0
 
 from fastaxis.light.gauss import gauss_legendre
 
@@ -93,12 +94,15 @@ def _between(middles: Reals, pixel: float, step: float) -> Axis:
     count = math.ceil((high - low) / step) + 1
     places = (low + high) / 2 + (np.arange(count) - (count - 1) / 2) * step
     nodes, weights = gauss_legendre(nodes_needed(pixel / step))
-    apart = (middles[:, np.newaxis] - places) / step
+    half = (len(middles) + 1) // 2
+    apart = (middles[:half, np.newaxis] - places) / step
     kernel = sum(w * _kernel(apart + node * pixel / step / 2) for node, w in zip(nodes, weights, strict=True))
-    return Axis(places, np.asarray(kernel * pixel / 2))
+    # Pixels and places lie symmetric about the middle of the camera.
+    rest = np.flip(kernel[: len(middles) - half])
+    return Axis(places, np.concatenate([kernel, rest]) * (pixel / 2))
 
 
 def _kernel(t: Reals) -> Reals:
     inside = np.clip(1 - (t / REACH) ** 2, 0.0, None)
     steep = math.pi * REACH / 2
-    return np.asarray(np.where(inside > 0, np.sinc(t) * np.i0(steep * np.sqrt(inside)) / np.i0(steep), 0.0))
+    return np.asarray(np.where(inside > 0, np.sinc(t) * i0(steep * np.sqrt(inside)) / i0(steep), 0.0))
