@@ -4,6 +4,7 @@ import math
 
 import numpy as np
 import pytest
+import sympy as sp
 from scipy.optimize import brentq
 
 import fastaxis as fa
@@ -104,6 +105,18 @@ def test_fabry_perot_on_resonance_returns_nothing():
     """Born and Wolf, section 7.6.2: equal mirrors let all light through, and send none back."""
     train = fabry_perot(0.9, -math.pi / 2)
     assert train.power("left.reflected") < 1e-13
+
+
+def test_finesse_of_the_derived_form():
+    """Born and Wolf, section 7.6, from memory: F = 4R/(1 - R)^2, half width pi/finesse, finesse = pi sqrt(F)/2."""
+    R, psi = sp.symbols("R psi", positive=True)
+    through = fabry_perot(R, psi).derive("out").power
+    F = 4 * R / (1 - R) ** 2
+    # The trip is twice the scan and, of both mirrors' i sqrt(R), half a wave.
+    assert sp.simplify(sp.expand(1 / through - 1 - F * sp.cos(psi) ** 2, trig=True)) == 0
+    half = sp.nsolve((through - sp.Rational(1, 2)).subs(R, sp.Rational(99, 100)), psi, (1.55, 1.57), solver="bisect")
+    # pi sqrt(F)/2 takes sin(x) for x: wrong by x^2/6 with x = 0.005, half the width of the peak.
+    assert float(sp.pi / (2 * (sp.pi / 2 - half))) == pytest.approx(math.pi * math.sqrt(39600) / 2, rel=5e-6)
 
 
 def test_fabry_perot_of_a_wide_gaussian_beam_is_that_of_a_plane_wave():

@@ -48,7 +48,8 @@ def check(form: Form, *, points: int = 24, seed: int = 1) -> Check:
     """
     generator = np.random.default_rng(seed)
     routes = form.train.routes(form.target)
-    travels = any(isinstance(law, TravelLaw) for route in routes for _, law in route.steps())
+    # Of a loop the routes are only the first trips.
+    travels = form.looped or any(isinstance(law, TravelLaw) for route in routes for _, law in route.steps())
     numeric = _propagated if travels else _direct
     function = form.to_function("stokes", absolute=True)
     worst, scale = 0.0, 0.0

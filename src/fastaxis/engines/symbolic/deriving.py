@@ -6,6 +6,7 @@ from typing import Any
 
 import sympy as sp
 
+from fastaxis.engines.symbolic.circulating import circulating, has_loop
 from fastaxis.engines.symbolic.coordinates import check_letters
 from fastaxis.engines.symbolic.form import Form, Part
 from fastaxis.engines.symbolic.letters import Letters
@@ -21,7 +22,7 @@ def derive(train: Any, target: str) -> Form:
     """The light at a port as an exact form, with the letters of the train left as letters.
 
     Light that comes by several paths is summed, each path with the phase of its length beyond the first one's; light
-    of several lasers adds up in power.
+    of several lasers adds up in power. Plane waves that go round a cavity or a ring are summed over all their trips.
 
     Parameters
     ----------
@@ -30,7 +31,7 @@ def derive(train: Any, target: str) -> Form:
 
     Raises
     ------
-    SymbolError : a letter named r or phi or not real; a part without a closed form; a loop on the way.
+    SymbolError : a letter named r or phi or not real; a part without a closed form; a beam that goes round a loop.
     WiringError : no light there.
 
     Examples
@@ -51,10 +52,12 @@ def derive(train: Any, target: str) -> Form:
     maths = ExactMaths(Ring())
     names = Letters({str(letter) for letter in letters} | {"r", "phi"})
     total = sum((exactly(source.power) for source in sources.values()), sp.S.Zero)
-    parts = []
+    parts, loop = [], has_loop(train, target)
     for name, source in sources.items():
         for component in source.components:
             place = Place(maths, names, exactly(component.wavelength_or(train.wavelength)))
-            field = joined(component, routes[name], place)
+            field = (
+                circulating(train, component, name, target, place) if loop else joined(component, routes[name], place)
+            )
             parts.append(Part(exactly(component.weight) * exactly(source.power) / total, component.beam, field))
-    return Form(train, target, tuple(parts), total, frozenset(letters))
+    return Form(train, target, tuple(parts), total, frozenset(letters), loop)

@@ -64,6 +64,7 @@ class Form(Shown):
     parts : mutually incoherent parts.
     source_power : of the laser [W].
     letters : the user's letters.
+    looped : whether light comes back to where it was on its way, so that all its trips are summed.
     """
 
     train: Any
@@ -71,6 +72,7 @@ class Form(Shown):
     parts: tuple[Part, ...]
     source_power: Any
     letters: frozenset[Any]
+    looped: bool = False
 
     def __repr__(self) -> str:
         letters = ", ".join(sorted(str(letter) for letter in self.letters)) or "none"

@@ -20,6 +20,7 @@ from fastaxis.engines.symbolic.presentations.reality import is_real, made_real, 
 from fastaxis.engines.symbolic.presentations.shortness import content_out, doubled, length, one_number
 from fastaxis.engines.symbolic.presentations.splitting import best_split, by_amplitude
 from fastaxis.engines.symbolic.ring import Poly, Ring
+from fastaxis.engines.symbolic.ring.division import in_lowest_terms
 from fastaxis.engines.symbolic.ring.ring import ANGLE
 
 __all__ = ["compact"]
@@ -36,7 +37,7 @@ def compact(poly: Poly) -> Any:
     """A polynomial as a short product or sum of products."""
     known, name = _KNOWN.setdefault(poly.ring, {}), (frozenset(poly.terms.items()), poly.den)
     if name not in known:
-        known[name] = _shortest(poly) if poly else sp.S.Zero
+        known[name] = _shortest(in_lowest_terms(poly)) if poly else sp.S.Zero
     return known[name]
 
 

@@ -24,10 +24,11 @@ def vanishes(poly: Poly) -> bool:
 
 def _denominators_cleared(poly: Poly) -> Poly:
     ring = poly.ring
+    sums = {place for place, _ in ring.sums()}
     lowest: dict[int, int] = {}
     for key in poly.terms:
         for place, exponent in ring.exponents(key)[1].items():
-            if isinstance(ring.generators[place].expression, sp.Add):
+            if place in sums:
                 lowest[place] = min(lowest.get(place, 0), exponent)
     factor = ring.pack(0, {place: -(exponent // UNIT) * UNIT for place, exponent in lowest.items() if exponent < 0})
     return Poly.made(ring, {key + factor: value for key, value in poly.terms.items()}, poly.den) if factor else poly

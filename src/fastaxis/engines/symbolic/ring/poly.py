@@ -118,7 +118,7 @@ class Poly:
 
     @property
     def is_rational(self) -> bool:
-        return set(self.terms) <= {0}
+        return not self.terms or (len(self.terms) == 1 and 0 in self.terms)
 
     @property
     def value(self) -> Fraction:

@@ -160,6 +160,10 @@ class Ring:
         self._wholes.setdefault(self.generator(REAL, expression), whole)
         return self.amplitude(expression, Fraction(1, 2))
 
+    def sums(self) -> list[tuple[int, Poly]]:
+        """(place, polynomial) of every generator that stands for a sum."""
+        return [(place, whole) for place, whole in self._wholes.items() if not whole.is_rational]
+
     def adopted(self, poly: Poly) -> Poly:
         """A polynomial of another ring, with the same generators found or made here."""
         other = poly.ring
