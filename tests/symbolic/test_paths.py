@@ -81,6 +81,28 @@ def test_a_loop_has_no_closed_form():
         derive(train, "bs.reflected")
 
 
+def test_a_line_of_some_width_is_refused_where_paths_differ_in_length():
+    train = interferometer([], lengths=(0.1, 0.2)).with_changes({"wavelength": 633e-9})
+    wide = train.with_changes({"laser1.line": fa.GaussianLine(coherence_length=0.05)})
+    with pytest.raises(SymbolError, match="of a line of some width they are partly coherent") as caught:
+        derive(wide, "second.transmitted")
+    fixed = eval(caught.value.fix, {"train": wide, "fa": fa})
+    assert derive(fixed, "second.transmitted").power == derive(train, "second.transmitted").power
+    equal = interferometer([fa.PhaseShift(phase=p)]).with_changes(
+        {"laser1.line": fa.GaussianLine(coherence_length=0.05)}
+    )
+    assert derive(equal, "second.transmitted").power.has(p)
+
+
+def test_light_of_two_wavelengths_meets_plates_as_each_wavelength_does():
+    beam = fa.Beam((fa.Term(1, fa.PlaneWave(area=1e-6), fa.H),))
+    laser = fa.Laser(incoherent=[(0.5, beam, 633e-9), (0.5, beam, 500e-9)], power=1.0)
+    train = fa.Train(wavelength=633e-9).along(
+        laser, fa.Retarder(fast=0.5, retardance=1.2, design=633e-9), fa.Polarizer(axis=0.0), fa.Detector(name="out")
+    )
+    assert float(derive(train, "out").power) == pytest.approx(train.power("out"), rel=1e-13)
+
+
 def test_an_analyzer_erases_what_marks_the_paths():
     """M. O. Scully, K. Druehl, Phys. Rev. A 25, 2208 (1982), in classical light: none without, full fringes at 45 deg."""
     made = derive(interferometer([fa.PhaseShift(phase=p), fa.HalfWavePlate(fast=sp.pi / 4)]), "second.transmitted")

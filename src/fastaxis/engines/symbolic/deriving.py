@@ -57,7 +57,9 @@ def derive(train: Any, target: str) -> Form:
         for component in source.components:
             place = Place(maths, names, exactly(component.wavelength_or(train.wavelength)))
             field = (
-                circulating(train, component, name, target, place) if loop else joined(component, routes[name], place)
+                circulating(train, component, name, target, place)
+                if loop
+                else joined(train, component, routes[name], place)
             )
             parts.append(Part(exactly(component.weight) * exactly(source.power) / total, component.beam, field))
     return Form(train, target, tuple(parts), total, frozenset(letters), loop)
