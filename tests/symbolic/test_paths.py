@@ -101,6 +101,7 @@ def test_light_of_two_wavelengths_meets_plates_as_each_wavelength_does():
         laser, fa.Retarder(fast=0.5, retardance=1.2, design=633e-9), fa.Polarizer(axis=0.0), fa.Detector(name="out")
     )
     assert float(derive(train, "out").power) == pytest.approx(train.power("out"), rel=1e-13)
+    assert derive(train, "out").check().roundings < 100
 
 
 def test_an_analyzer_erases_what_marks_the_paths():

@@ -9,6 +9,7 @@ from typing import TYPE_CHECKING, Any
 import numpy as np
 from numpy.typing import NDArray
 
+from fastaxis.engines.symbolic.paths import laws_at
 from fastaxis.laws import AxisLaw, CircularLaw, Flip, Law, ScalarLaw, TravelLaw, Turn
 from fastaxis.maths import NUMBERS
 from fastaxis.train.letters import letters
@@ -141,19 +142,22 @@ def _direct(train: Any, target: str, r: float, phi: float) -> NDArray[np.float64
         source = ways[0].laser.source
         for component in source.components:
             wavelength = component.wavelength_or(train.wavelength)
-            vectors = [_along(route, component.beam, wavelength, r, phi) for route in ways]
+            vectors = [
+                _along([law for _, law in laws_at(train, route, wavelength)], component.beam, wavelength, r, phi)
+                for route in ways
+            ]
             ex, ey = np.sum(vectors, axis=0)
             total += float(component.weight) * float(source.power) * _stokes(ex, ey)
     return total
 
 
-def _along(route: Any, beam: Any, wavelength: float, r: float, phi: float) -> NDArray[Any]:
-    """(Ex, Ey) by one route. Places are followed from the port back to the source, so that reflections find the
+def _along(laws: list[Law], beam: Any, wavelength: float, r: float, phi: float) -> NDArray[Any]:
+    """(Ex, Ey) behind some laws. Places are followed from the port back to the source, so that reflections find the
     place a ray started from.
     """
     x, y = r * math.cos(phi), r * math.sin(phi)
     places = []
-    for _, law in reversed(route.steps()):
+    for law in reversed(laws):
         if isinstance(law, Flip):
             x, y = (-x, y) if law.axis == "x" else (x, -y)
         if isinstance(law, Turn):
@@ -161,7 +165,7 @@ def _along(route: Any, beam: Any, wavelength: float, r: float, phi: float) -> ND
             x, y = cosine * x + sine * y, cosine * y - sine * x
         places.append((x, y))
     vector = np.asarray(beam.field(x, y, wavelength), complex)
-    for (_, law), (px, py) in zip(route.steps(), reversed(places), strict=True):
+    for law, (px, py) in zip(laws, reversed(places), strict=True):
         vector = _matrix(law, px, py, wavelength) @ vector
     return vector
 

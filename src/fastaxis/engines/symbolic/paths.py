@@ -15,7 +15,7 @@ from fastaxis.errors import SymbolError
 from fastaxis.laws import Law, TravelLaw
 from fastaxis.light import Component
 
-__all__ = ["joined", "open_routes"]
+__all__ = ["joined", "laws_at", "open_routes"]
 
 
 def open_routes(train: Any, target: str) -> dict[str, list[Any]]:
@@ -33,7 +33,7 @@ def joined(train: Any, component: Component, routes: list[Any], place: Place) ->
     ------
     SymbolError : paths of different length, and a line of some width.
     """
-    ways = [_laws(train, route, component.wavelength_or(train.wavelength)) for route in routes]
+    ways = [laws_at(train, route, component.wavelength_or(train.wavelength)) for route in routes]
     ahead = [sp.cancel(_length(laws) - _length(ways[0])) for laws in ways]
     _check_line(routes[0], ahead)
     total: Field | None = None
@@ -48,7 +48,7 @@ def joined(train: Any, component: Component, routes: list[Any], place: Place) ->
     return total
 
 
-def _laws(train: Any, route: Any, wavelength: Any) -> list[tuple[str, Law]]:
+def laws_at(train: Any, route: Any, wavelength: Any) -> list[tuple[str, Law]]:
     """(name of the part, law) at the wavelength of the light, which need not be the train's."""
     passages = ((leg, train.elements[leg.element_name].passages(wavelength)) for leg in route.legs)
     return [(leg.element_name, law) for leg, ways in passages for law in ways[leg.entered, leg.left].steps()]
