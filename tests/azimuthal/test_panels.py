@@ -44,6 +44,11 @@ def test_a_cut_falls_exactly_on_its_radius(polynomial):
     assert np.all(polynomial.clipped(3.0, 4.0).powers() == 0)
 
 
+def test_clipping_beyond_the_ends_clips_nothing(polynomial):
+    whole = polynomial.clipped(polynomial.start - 1.0, polynomial.end + 1.0)
+    assert np.array_equal(whole.edges, polynomial.edges)
+
+
 def test_stretching_and_combining(polynomial):
     r = np.linspace(0, 3.9, 11)
     assert np.allclose(polynomial.stretched(2.0)(r), polynomial(r / 2), atol=1e-14)

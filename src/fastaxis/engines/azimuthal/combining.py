@@ -17,7 +17,7 @@ from fastaxis.engines.azimuthal.resolving import Settings, resolved
 from fastaxis.errors import ParameterError
 from fastaxis.light import Raster
 
-__all__ = ["combined", "combined_on"]
+__all__ = ["combined", "combined_on", "same_way", "shared_edges"]
 
 ROOM = 1e-9  # a corner may round to a hair beyond itself
 SAME = 1e-12  # of a ray matrix: some thousand roundings of numbers multiplied in another order
@@ -94,18 +94,27 @@ def _resampled(total: Harmonics, lights: list[Harmonics], matrices: list[Complex
             out += matrix @ (light.profile(r) * (np.exp(1j * bend * r**2) * end))
         return out
 
-    edges = reduce(np.union1d, (light.profile.edges for light in lights))
-    # Borders that two fields share but for a rounding make no panel.
-    edges = edges[np.concatenate([[True], np.diff(edges) > 1e-9 * edges[-1]])]
-    profile, rest = resolved(values, edges, settings)
+    profile, rest = resolved(values, shared_edges(lights), settings)
     return replace(total, profile=profile, taper=None, error=rest)
 
 
-def _check_sections(lights: list[Harmonics]) -> None:
+def shared_edges(lights: list[Harmonics]) -> Reals:
+    """Borders of the panels of all; those that two share but for a rounding make no panel."""
+    edges = reduce(np.union1d, (light.profile.edges for light in lights))
+    return np.asarray(edges[np.concatenate([[True], np.diff(edges) > 1e-9 * edges[-1]])])
+
+
+def same_way(lights: list[Harmonics]) -> bool:
+    """Whether fields have the same section still to go."""
     sections = np.array([[s.a, s.b, s.c, s.d] for s in (light.section for light in lights)], dtype=float)
-    if (abs(sections - sections[0]) > SAME * abs(sections[0]) + 1e-300).any():
+    return bool((abs(sections - sections[0]) <= SAME * abs(sections[0]) + 1e-300).all())
+
+
+def _check_sections(lights: list[Harmonics]) -> None:
+    if not same_way(lights):
+        reaches = sorted({float(light.section.b) for light in lights})
         raise ParameterError(
             "fields add where they have the same way still to go",
-            got="sections " + ", ".join(f"b = {b:.6g} m" for b in sorted(set(sections[:, 1]))),
+            got="sections " + ", ".join(f"b = {b:.6g} m" for b in reaches),
             fix='train.expose("cam", [fa.H, fa.V])',
         )

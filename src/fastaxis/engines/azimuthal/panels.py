@@ -151,8 +151,8 @@ class Profile:
 
     def clipped(self, start: float, end: float) -> Profile:
         """The part between two radii, the panels cut exactly there."""
-        inner = self.edges[(self.edges > start) & (self.edges < end)]
-        edges = np.concatenate([[max(start, self.start)], inner, [min(end, self.end)]])
+        first, last = max(start, self.start), min(end, self.end)
+        edges = np.concatenate([[first], self.edges[(self.edges > first) & (self.edges < last)], [last]])
         if edges[-1] <= edges[0]:
             return Profile(np.array([start, end]), np.zeros((len(self.values), 1, ORDER), dtype=complex))
         return sampled(self, edges)

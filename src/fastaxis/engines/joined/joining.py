@@ -74,7 +74,7 @@ class JoinedField:
     @cached_property
     def total_stokes(self) -> Reals:
         """S0 .. S3 of all the light [W], shape (4,)."""
-        return total_of_sums(self.arms, self.mixtures, self.extent)
+        return total_of_sums(self.arms, self.mixtures, self.extent, self.engines)
 
     @property
     def power(self) -> float:
@@ -110,7 +110,7 @@ class JoinedField:
         if all(engine == "azimuthal" for engine in self.engines):
             return self._by_harmonics(raster)
         reach = max(abs(raster.x).max(), abs(raster.y).max()) + raster.pitch / 2
-        if "grid" not in self.engines and "azimuthal" in self.engines:
+        if any(engine != "modes" for engine in self.engines):
             seen = sight(self.arms, self.mixtures, reach)
             image = blockwise(seen.images, raster, self.extent.spreads)
             if image is not None:

@@ -21,6 +21,7 @@ Complexes = NDArray[np.complex128]
 SAME_STATE = 1e-13  # of two unit vectors: a hundred roundings each
 FARTHER = 1e-6  # a few roundings would do
 PLACES = 1 << 14  # at a time: a quarter of a megabyte a component, which stays in the cache
+SAMPLED = 1 << 18  # of samples, for which each strip asks for matrices of its own
 
 
 class Sight(Protocol):
@@ -42,7 +43,8 @@ class _Fields:
 
     def images(self, x: Reals, y: Reals) -> Reals:
         out = np.empty((4, len(y), len(x)))
-        for rows in _strips(y, len(x)):
+        places = PLACES if all(hasattr(arm, "scalar") for arm in self.arms) else SAMPLED
+        for rows in _strips(y, len(x), places):
             fields = [arm.at(x, y[rows]) for arm in self.arms]
             out[:, rows] = sum(stokes(_sum(numbers, fields)) for numbers in self.mixtures)
         return out
@@ -62,7 +64,7 @@ class _OneState:
     def images(self, x: Reals, y: Reals) -> Reals:
         # Irradiance does not ask which front it is relative to; the one of the first arm saves that a product.
         front, out = self.scalars[0].curvature, np.empty((1, len(y), len(x)))
-        for rows in _strips(y, len(x)):
+        for rows in _strips(y, len(x), PLACES):
             fields = [scalar.on(x, y[rows], front) for scalar in self.scalars]
             out[0, rows] = sum(_power(_sum(numbers, fields)) for numbers in self.mixtures)
         return out
@@ -108,9 +110,9 @@ def _power(field: Complexes) -> Reals:
     return np.asarray(field.real**2 + field.imag**2)
 
 
-def _strips(y: Reals, columns: int) -> list[Any]:
+def _strips(y: Reals, columns: int, places: int) -> list[Any]:
     """Rows to be done at a time; of rows symmetric about the axis each with its mirror image, which shares radii."""
-    count, at_once = len(y), max(1, PLACES // columns)
+    count, at_once = len(y), max(1, places // columns)
     if not np.array_equal(y, -y[::-1]):
         return [slice(first, first + at_once) for first in range(0, count, at_once)]
     pairs, half = max(1, at_once // 2), count // 2
