@@ -60,13 +60,18 @@ def test_other_engines_are_not_stopped_on_the_way():
     assert shared_steps(train.plan("cam"), train.plan("cam")) == 0
 
 
+def assert_alike(found, right):
+    """But for some roundings: a plate and the matrix behind it are multiplied first, unless a prefix ends there."""
+    np.testing.assert_allclose(found, right, rtol=0, atol=8 * np.finfo(float).eps * abs(right).max())
+
+
 @pytest.mark.parametrize("count", range(6))
 def test_going_on_from_a_prefix_changes_nothing(count):
     (whole,), kept = propagate(plan()), Prefix.of(plan(), count)
     for _ in range(2):  # what is kept outlives its use
         (field,) = kept.propagate(plan())
-        np.testing.assert_array_equal(field.light.samples, whole.light.samples)
-        assert field.guard == whole.guard
+        assert_alike(field.light.samples, whole.light.samples)
+        assert vars(field.guard) == pytest.approx(vars(whole.guard), rel=1e-12)
 
 
 def test_a_relay_gives_what_each_plan_gives_alone():
@@ -76,7 +81,7 @@ def test_a_relay_gives_what_each_plan_gives_alone():
         plans = [plan(leg_distance=length, hwp_fast=angle) for angle in angles]
         for each, (field,) in zip(plans, relay.propagate(plans), strict=True):
             (alone,) = propagate(each)
-            np.testing.assert_array_equal(field.light.samples, alone.light.samples)
+            assert_alike(field.light.samples, alone.light.samples)
 
 
 def test_a_relay_takes_common_steps_once(monkeypatch):

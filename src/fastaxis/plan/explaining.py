@@ -67,7 +67,8 @@ def _branch(branch: Branch) -> Iterator[str]:
         yield f"  {sampling.grid.samples} x {sampling.grid.samples} samples ({sampling.chosen}){precision}"
         yield "  margin: of room or pitch over what the light needs; 1 or more is enough"
         if not branch.harmonic_steps:
-            yield f"    0. source: {_sampled(sampling.planes[0])}"
+            begins = f"{', '.join(branch.opening)} in closed form" if branch.opening else "source"
+            yield f"    0. {begins}: {_sampled(sampling.planes[0])}"
     for index, step in enumerate(branch.steps, start=1):
         line, place = f"    {index}. {', '.join(step.names)}: {_said(step.law)}", index - branch.harmonic_steps
         if sampling is None or place < 0:

@@ -11,6 +11,7 @@ from typing import Any
 
 from fastaxis.laws import TravelLaw
 from fastaxis.light import Component, Source
+from fastaxis.plan.advance import advance
 from fastaxis.plan.arms import arms
 from fastaxis.plan.at_once import by_network
 from fastaxis.plan.binding import bound, refuse_letters
@@ -162,7 +163,7 @@ def make_plan(
         name, reason = "handover", f"{reason}, but up to there all is round about the axis"
     if name in {"grid", "handover"}:
         plan = replace(plan, branches=tuple(_sampled(branch, grid, first) for branch in plan.branches))
-    return replace(plan, engine=name, reason=reason)
+    return advance(replace(plan, engine=name, reason=reason))
 
 
 def _sampled(branch: Branch, grid: Grid | None, first: int = 0) -> Branch:
@@ -181,14 +182,17 @@ def _joined(plan: Plan, grid: Grid | None, *, bucket: bool, asked: str) -> Plan:
     branches: list[Branch] = []
     for group in plan.groups:
         alike = bucket and len({_shape(branch.steps) for branch in group}) == 1
-        for branch in group:
-            source = Source((Component(1.0, branch.beam, branch.wavelength),), branch.power)
-            name, _ = choose(branch.steps, source, bucket=alike, asked=asked, sampled=grid is not None)
-            # A wedge alone asks for no samples: a mode stays a mode.
-            kept = closed((branch,)) if name == "grid" and asked == "auto" and grid is None else None
-            chosen = replace(branch, engine=name)
-            branches += kept or (_sampled(chosen, grid) if name == "grid" else chosen,)
-    return replace(plan, branches=tuple(branches), engine="joined", reason="light comes by several paths")
+        chosen = [replace(b, engine=_engine(b, grid, bucket=alike, asked=asked)) for b in group]
+        for branch in chosen:
+            # Modes that stay modes are known at any place sooner than samples or harmonics.
+            kept = closed((branch,)) if asked == "auto" and grid is None and branch.engine != "uniform" else None
+            branches += kept or (_sampled(branch, grid) if branch.engine == "grid" else branch,)
+    return advance(replace(plan, branches=tuple(branches), engine="joined", reason="light comes by several paths"))
+
+
+def _engine(branch: Branch, grid: Grid | None, *, bucket: bool, asked: str) -> str:
+    source = Source((Component(1.0, branch.beam, branch.wavelength),), branch.power)
+    return choose(branch.steps, source, bucket=bucket, asked=asked, sampled=grid is not None)[0]
 
 
 def _shape(steps: Steps) -> tuple[Any, ...]:

@@ -41,6 +41,7 @@ class Branch:
     feed : place in the network where the light begins.
     path : parts of an arm, as text.
     harmonic_steps : so many steps are done by harmonics before samples take over; ``sampling`` begins there.
+    opening : parts whose travel is in ``beam`` already; ``sampling`` begins behind them.
     """
 
     beam: Beam
@@ -56,6 +57,7 @@ class Branch:
     feed: int = 0
     path: str = ""
     harmonic_steps: int = 0
+    opening: tuple[str, ...] = ()
 
 
 def _in_precision(branch: Branch, precision: str) -> Branch:

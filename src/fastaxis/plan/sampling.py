@@ -68,12 +68,12 @@ def _plane(samples: int, window: float, spread: Spread, wavelength: float, hop: 
 
 @dataclass(frozen=True)
 class Sampling:
-    """The samples at the source and at every step.
+    """The samples where they begin and at every step.
 
     Parameters
     ----------
-    grid : at the source.
-    planes : after each step; ``planes[0]`` is the source itself.
+    grid : at the source, whether or not there is any need for them there.
+    planes : after each step; ``planes[0]`` is where samples begin, most often the source itself.
     taper : whether a plane wave fades out smoothly at the window's edge, where an open stop does not bound it.
     chosen : "automatic" or "by hand".
     precision : "double", or "single" for half the memory and six digits.

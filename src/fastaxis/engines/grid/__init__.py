@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from collections.abc import Iterator
 from dataclasses import replace
 from typing import cast
 
@@ -9,7 +10,7 @@ from fastaxis.engines.grid.combining import combined
 from fastaxis.engines.grid.far import KEPT, FarField, arriving
 from fastaxis.engines.grid.guard import check, edge_watched, phase_step
 from fastaxis.engines.grid.light import GridLight
-from fastaxis.engines.grid.pointwise import flipped, past_axis, past_matrix, past_scalar
+from fastaxis.engines.grid.pointwise import flipped, passes_one_state, past_axis, past_matrix, past_scalar
 from fastaxis.engines.grid.reading import GridField
 from fastaxis.engines.grid.scaled import travel_scaled
 from fastaxis.engines.grid.single import travel_single
@@ -41,15 +42,25 @@ def continued(light: GridLight, branch: Branch, first: int, end: int) -> GridLig
     """
     steps, sampling = branch.steps, cast("Sampling", branch.sampling)
     last = max((i for i, step in enumerate(steps) if isinstance(step.law, TravelLaw)), default=0)
-    for index in range(first, end):
-        law, hop = as_matrix(steps[index]) or steps[index].law, sampling.hop(index)
+    for index, law, after in _visits([as_matrix(step) or step.law for step in steps[:end]], first):
+        hop = sampling.hop(index)
         if light.ahead and not isinstance(law, JonesStep | Flip):  # these commute with travel
             light = edge_watched(travel_single(replace(light, ahead=None), light.ahead))
         if isinstance(law, TravelLaw) and hop and hop.kernel == "single" and light.count <= KEPT:
             light = replace(light, ahead=law)
         else:
-            light = _past(light, law, hop, last=index == last)
+            light = _past(light, law, hop, after, last=index == last)
     return light
+
+
+def _visits(laws: list[StepLaw], first: int) -> Iterator[tuple[int, StepLaw, JonesStep | None]]:
+    """Laws from the first one on with their numbers; a plate takes the matrix behind it along, in one go."""
+    index = first
+    while index < len(laws):
+        law, after = laws[index], laws[index + 1] if index + 1 < len(laws) else None
+        together = isinstance(law, AxisLaw) and isinstance(after, JonesStep) and not passes_one_state(after)
+        yield index, law, cast("JonesStep", after) if together else None
+        index += 1 + together
 
 
 def finished(light: GridLight, branch: Branch) -> GridField | FarField:
@@ -61,7 +72,7 @@ def finished(light: GridLight, branch: Branch) -> GridField | FarField:
     return GridField(light, check(light, phase_step(light), names, sampling.grid, by_hand=by_hand), sampling.grid)
 
 
-def _past(light: GridLight, law: StepLaw, hop: Hop | None, *, last: bool) -> GridLight:
+def _past(light: GridLight, law: StepLaw, hop: Hop | None, after: JonesStep | None, *, last: bool) -> GridLight:
     if isinstance(law, TravelLaw):
         return _travelled(light, law, cast("Hop", hop), last=last)
     if isinstance(law, ScalarLaw):
@@ -70,7 +81,7 @@ def _past(light: GridLight, law: StepLaw, hop: Hop | None, *, last: bool) -> Gri
         return flipped(light, law)
     if isinstance(law, Turn):
         return edge_watched(turned(light, law))
-    return past_axis(light, law) if isinstance(law, AxisLaw) else past_matrix(light, cast("JonesStep", law))
+    return past_axis(light, law, after) if isinstance(law, AxisLaw) else past_matrix(light, cast("JonesStep", law))
 
 
 def _travelled(light: GridLight, travel: TravelLaw, hop: Hop, *, last: bool) -> GridLight:

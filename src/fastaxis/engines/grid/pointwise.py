@@ -17,7 +17,7 @@ from fastaxis.plan import JonesStep
 from fastaxis.plan.merge import split_lens
 from fastaxis.plan.spread import closed
 
-__all__ = ["flipped", "past_axis", "past_matrix", "past_scalar"]
+__all__ = ["flipped", "passes_one_state", "past_axis", "past_matrix", "past_scalar"]
 
 Reals = NDArray[np.float64]
 
@@ -30,13 +30,19 @@ def past_matrix(light: GridLight, law: JonesStep) -> GridLight:
     matrix = np.array(law.matrix, dtype=complex)
     if light.jones is not None:
         return replace(light, jones=matrix @ light.jones)
-    left, strengths, right = np.linalg.svd(matrix)
-    if strengths[1] <= RANK_ONE * strengths[0]:
+    if passes_one_state(law):
+        left, strengths, right = np.linalg.svd(matrix)
         samples = np.empty_like(light.samples[:1])
         _mix(samples, light.samples, right[:1])
         return replace(light, samples=samples, jones=left[:, 0] * strengths[0])
     _mix(light.samples, light.samples, matrix)
     return light
+
+
+def passes_one_state(law: JonesStep) -> bool:
+    """Whether a matrix leaves one scalar field, whatever comes to it."""
+    strengths = np.linalg.svd(np.array(law.matrix, dtype=complex), compute_uv=False)
+    return bool(strengths[1] <= RANK_ONE * strengths[0])
 
 
 def _mix(out: NDArray[Any], samples: NDArray[Any], matrix: NDArray[np.complex128]) -> None:
@@ -77,41 +83,76 @@ def _power(ray: NDArray[np.complex128], times: int) -> NDArray[np.complex128]:
     return square * ray if times % 2 else square
 
 
-def past_axis(light: GridLight, law: AxisLaw) -> GridLight:
-    """After a patterned plate or polarizer; from here on (Ex, Ey) differ from place to place."""
-    x, y = _places(light, law.centre)
+def past_axis(light: GridLight, law: AxisLaw, after: JonesStep | None = None) -> GridLight:
+    """After a patterned plate or polarizer; from here on (Ex, Ey) differ from place to place.
+
+    Parameters
+    ----------
+    after : a uniform matrix that follows, done in the same go.
+    """
     samples = light.samples
     if light.jones is not None:
         samples = np.empty((2, *samples.shape[1:]), dtype=samples.dtype)
     if _patterned(law):
-        # A pattern may be any function of all places, so it is asked for the whole plane at once.
-        x, y = np.broadcast_arrays(x, y)
-        phi = np.arctan2(y, x) if law.order else 0.0
-        _apply(samples, light, law.linear(NUMBERS, phi, x, y))
-        return replace(light, samples=samples, jones=None, filled=None)
-    start = NUMBERS.phasor(2 * law.angle)
-
-    def turn(strip: slice) -> None:
-        twice = start * _turns(x, y[strip], 2 * law.order)
-        _apply(
-            samples[:, strip],
-            replace(light, samples=light.samples[:, strip]),
-            law.with_axis(NUMBERS, twice.real, twice.imag),
-        )
-
-    strips(turn, light.count, light.count)
+        _past_pattern(samples, light, law)
+        light = replace(light, samples=samples, jones=None, filled=None)
+        return past_matrix(light, after) if after else light
+    _past_turning(samples, light, law, np.eye(2) if after is None else np.array(after.matrix))
     return replace(light, samples=samples, jones=None, filled=None)
 
 
-def _apply(out: NDArray[Any], light: GridLight, matrix: Any) -> None:
-    (a, b), (c, d) = matrix
+def _past_pattern(out: NDArray[Any], light: GridLight, law: AxisLaw) -> None:
+    """A pattern may be any function of all places, so it is asked for the whole plane at once."""
+    x, y = np.broadcast_arrays(*_places(light, law.centre))
+    phi = np.arctan2(y, x) if law.order else 0.0
+    rows = law.linear(NUMBERS, phi, x, y)
     if light.jones is None:
         ex, ey = light.samples
-        out[0], out[1] = a * ex + b * ey, c * ex + d * ey
+        out[0], out[1] = [a * ex + b * ey for a, b in rows]
         return
     jx, jy = light.jones
-    np.multiply(a * jx + b * jy, light.samples[0], out=out[0], casting="same_kind")
-    np.multiply(c * jx + d * jy, light.samples[0], out=out[1], casting="same_kind")
+    for place, (a, b) in zip(out, rows, strict=True):
+        np.multiply(a * jx + b * jy, light.samples[0], out=place, casting="same_kind")
+
+
+def _past_turning(out: NDArray[Any], light: GridLight, law: AxisLaw, later: NDArray[Any]) -> None:
+    """An axis at q phi + angle: its matrix is M0 + M1 cos + M2 sin of twice that, asked for at three angles only."""
+    level, cosine, sine = (np.array(law.with_axis(NUMBERS, c, s), dtype=complex) for c, s in ((0, 0), (1, 0), (0, 1)))
+    parts = [later @ level, later @ (cosine - level), later @ (sine - level)]
+    if light.jones is not None:
+        parts = [part @ light.jones for part in parts]
+    parts = [part.astype(out.dtype) for part in parts]
+    (x, y), start = _places(light, law.centre), NUMBERS.phasor(2 * law.angle)
+    kind = out.real.dtype
+
+    def turn(strip: slice) -> None:
+        twice = start * _turns(x, y[strip], 2 * law.order)
+        near = light.samples[:, strip], twice.real.astype(kind), twice.imag.astype(kind)
+        (_turned if light.jones is None else _spread)(out[:, strip], parts, *near)
+
+    strips(turn, light.count, light.count)
+
+
+def _spread(out: NDArray[Any], parts: list[NDArray[Any]], before: NDArray[Any], cosine: Reals, sine: Reals) -> None:
+    """One scalar field times a Jones vector that changes from place to place."""
+    for k, (level, of_cosine, of_sine) in enumerate(zip(*parts, strict=True)):
+        np.multiply(cosine, of_cosine, out=out[k])
+        out[k] += sine * of_sine
+        out[k] += level
+        out[k] *= before[0]
+
+
+def _turned(out: NDArray[Any], parts: list[NDArray[Any]], before: NDArray[Any], cosine: Reals, sine: Reals) -> None:
+    """Two components, possibly in place, times a matrix that changes from place to place."""
+    ex, ey = before
+    made = []
+    for i in (0, 1):
+        a, b = (parts[0][i, j] + parts[1][i, j] * cosine + parts[2][i, j] * sine for j in (0, 1))
+        a *= ex
+        b *= ey
+        a += b
+        made.append(a)
+    out[0], out[1] = made
 
 
 def _patterned(law: AxisLaw) -> bool:

@@ -23,8 +23,8 @@ FADE = 0.125  # width of a plane wave's fading, as a share of the window
 
 
 def start(branch: Branch, sampling: Sampling) -> GridLight:
-    """The field at the source, scaled to the power of the branch; one scalar field if all terms share a state."""
-    count, pitch = sampling.grid.samples, sampling.grid.pitch
+    """The field where samples begin, scaled to the power of the branch; one scalar field if all terms share a state."""
+    count, pitch = sampling.planes[0].samples, sampling.planes[0].pitch
     x = axis(count, pitch)
     terms, scale = branch.beam.terms, branch.beam.scale(branch.wavelength) * np.sqrt(branch.power)
     curvature = sampling.planes[0].spread.curvature
