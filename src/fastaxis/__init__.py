@@ -52,6 +52,7 @@ if TYPE_CHECKING:
         Obstacle,
         PatternedPolarizer,
         PatternedRetarder,
+        PhaseModulator,
         PhaseShift,
         PickOff,
         Polarizer,
@@ -125,7 +126,7 @@ _HOMES = {
     "conventions": "View stamp",
     "elements": "Annulus Aperture BeamDump BeamSplitter Camera Detector DovePrism FaradayRotator FreeSpace "
     "HalfWavePlate KMirror KnifeEdge Laser Lens Mask MetalMirror Mirror NeutralDensity Obstacle PatternedPolarizer "
-    "PatternedRetarder PhaseShift PickOff Polarizer PolarizingBeamSplitter QPlate QuarterWavePlate "
+    "PatternedRetarder PhaseModulator PhaseShift PickOff Polarizer PolarizingBeamSplitter QPlate QuarterWavePlate "
     "RectangularAperture Retarder Rhomb Rotator Sensor Slit SpiralPlate Wedge Window",
     "errors": "FastaxisError FastaxisWarning FileFormatError MissingFileError ParameterError SamplingError "
     "SamplingWarning SlipWarning SymbolError WiringError WiringWarning",

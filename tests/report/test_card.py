@@ -70,6 +70,8 @@ ALL = [
     e.Window(index=1.515),
     e.Window(index=1.52, layer=1.38, wedge=0.5 * deg, design=532 * nm),
     e.BeamSplitter(Rp=0.47, Rs=0.52, phase_rs=90 * deg, transmittance=0.45),
+    e.PhaseModulator(axis=30 * deg, phase=0.5 * waves, expects=light.D),
+    e.PhaseModulator(axis=theta, phase=delta),
 ]
 
 
@@ -190,6 +192,11 @@ def test_ports_of_a_splitter_are_added_up():
     lossy = e.PolarizingBeamSplitter(Tp=0.9, Rp=0.05, Ts=0.01, Rs=0.99)
     assert told(lossy, "power")[-1] == "95 % of p and 100 % of s leaves"
     assert told(e.BeamSplitter(), "power")[-1] == "all of it leaves"
+
+
+def test_a_part_says_what_it_expects():
+    assert told(e.HalfWavePlate(fast=0.1, expects=light.D), "expects") == ["D"]
+    assert told(e.HalfWavePlate(fast=0.1), "expects") == []
 
 
 def test_what_goes_without_saying_is_left_out():

@@ -16,6 +16,7 @@ from fastaxis.elements.mirror import Mirror
 from fastaxis.elements.neutral_density import NeutralDensity
 from fastaxis.elements.patterned_polarizer import PatternedPolarizer
 from fastaxis.elements.patterned_retarder import PatternedRetarder
+from fastaxis.elements.phase_modulator import PhaseModulator
 from fastaxis.elements.phase_shift import PhaseShift
 from fastaxis.elements.pick_off import PickOff
 from fastaxis.elements.polarizer import Polarizer
@@ -33,7 +34,7 @@ __all__ = [
     "ORIENTATIONS", "Annulus", "Aperture", "BeamDump", "BeamSplitter", "Camera", "Detector", "DovePrism",
     "Element", "FaradayRotator", "FreeSpace", "HalfWavePlate", "KMirror", "KnifeEdge", "Laser", "Lens",
     "Mask", "MetalMirror", "Mirror", "NeutralDensity", "Obstacle", "PatternedPolarizer", "PatternedRetarder",
-    "PhaseShift", "PickOff", "Polarizer", "PolarizingBeamSplitter", "QPlate", "QuarterWavePlate",
+    "PhaseModulator", "PhaseShift", "PickOff", "Polarizer", "PolarizingBeamSplitter", "QPlate", "QuarterWavePlate",
     "RectangularAperture", "Retarder", "Rhomb", "Rotator", "Sensor", "Slit", "SpiralPlate", "ThroughElement", "Wedge",
     "Window",
 ]  # fmt: skip

@@ -54,7 +54,7 @@ class _StopElement(ThroughElement):
         return (ScalarLaw(stop=self.clear, centre=self.centre),)
 
     def cautions(self, wavelength: Scalar) -> list[FastaxisWarning]:
-        lengths = [(n, v) for n, v in self.parameters().items() if n not in ("centre", "angle")]
+        lengths = [(n, v) for n, v in self.parameters().items() if n not in ("centre", "angle", "expects")]
         found = [c for n, v in lengths for c in checks.usual(self.label, n, v, 0.1, fix=f"{n}={v}*mm")]
         return super().cautions(wavelength) + found
 

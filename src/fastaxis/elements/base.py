@@ -11,11 +11,13 @@ from typing import Any, ClassVar, Self
 from fastaxis import checks
 from fastaxis.errors import FastaxisWarning, ParameterError
 from fastaxis.laws import Law, Passage
+from fastaxis.light import State
 from fastaxis.loader import late
 from fastaxis.maths import Scalar, free_symbols
 
 __all__ = ["Element", "ThroughElement"]
 
+COMMON = ("name", "expects")  # parameters of all parts
 # Of these a few whole radians were meant as degrees.
 ANGLES = ("fast", "slow", "axis", "offset", "angle", "retardance", "roll")
 TYPED = set(ANGLES) - {"retardance"}  # 2 degrees would be no plate, 2 radians is one
@@ -31,9 +33,12 @@ class Element:
     ----------
     name : how the part is called in the train, in ports ("pbs.reflected") and in changes ("hwp.fast");
         left empty, the train gives one.
+    expects : polarization of the light that should arrive at the part, for inspections; it does nothing to the light.
+        For light that meets it as drawn; None if any will do.
     """
 
     name: str = ""
+    expects: State | None = None
 
     stem: ClassVar[str] = "part"  # names are made of it: plate1, plate2
     faces: ClassVar[tuple[str, ...]] = ()
@@ -46,6 +51,12 @@ class Element:
         unknown = sorted(given.keys() - {f.name for f in fields(cls) if f.init})
         if unknown:
             raise cls._no_parameter(given.get("name") or cls.__name__, unknown[0], given[unknown[0]])
+        if not isinstance(given.get("expects"), State | None):
+            raise ParameterError(
+                "a part expects a state of polarization",
+                got=f"{given.get('name') or cls.__name__}: expects = {given['expects']!r}",
+                fix="expects=fa.H",
+            )
         part = super().__new__(cls)
         # Of what was typed with a point the train warns, and of larger ones: it knows the part by its name.
         typed = {angle for angle in given.keys() & TYPED if isinstance(given[angle], int) and abs(given[angle]) <= pi}
@@ -56,16 +67,21 @@ class Element:
 
     @classmethod
     def _no_parameter(cls, label: str, wrong: str, value: Any) -> ParameterError:
-        known = [f.name for f in fields(cls) if f.init and f.name != "name"]
+        known = [f.name for f in fields(cls) if f.init and f.name not in COMMON]
         # An angle is an angle, however a part calls it.
         angles = [name for name in known if name in ANGLES and name != "retardance"] if wrong in TURNS else []
-        likely = (*get_close_matches(wrong, known, 1), *angles, *known, "name")[0]
+        likely = (*get_close_matches(wrong, [*known, "expects"], 1), *angles, *known, "name")[0]
         plain = value if isinstance(value, int | float | complex | str | tuple) else None
         return ParameterError(
             f"{cls.__name__} has the parameters {', '.join(known) or '(none)'}",
             got=f"{label}: no parameter '{wrong}'",
             fix=f"{likely}={plain!r}",
         )
+
+    @property
+    def expected(self) -> State | None:
+        """The polarization that should arrive, declared or by the nature of the part; None if any will do."""
+        return self.expects
 
     @property
     def label(self) -> str:
@@ -90,7 +106,8 @@ class Element:
 
     def parameters(self) -> dict[str, Any]:
         """The declared values, without the name."""
-        return {f.name: getattr(self, f.name) for f in fields(self) if f.name != "name"}
+        own = {f.name: getattr(self, f.name) for f in fields(self) if f.name not in COMMON}
+        return own | {"expects": self.expects}
 
     def changed(self, **changes: Any) -> Element:
         """A copy with some parameters changed; the same checks apply."""
@@ -100,9 +117,10 @@ class Element:
             changes["centre"] = (changes.pop("centre_x", x), changes.pop("centre_y", y))
         for parameter in changes:
             if parameter not in known and parameter != "name":
-                likely = (*get_close_matches(parameter, known, 1), *known, "name")[0]
+                own = [name for name in known if name not in COMMON]
+                likely = (*get_close_matches(parameter, known, 1), *own, "name")[0]
                 raise ParameterError(
-                    f"{type(self).__name__} has the parameters {', '.join(known) or '(none)'}",
+                    f"{type(self).__name__} has the parameters {', '.join(own) or '(none)'}",
                     got=f"{self.label}: no parameter '{parameter}'",
                     fix=f'"{self.label}.{likely}"',
                 )

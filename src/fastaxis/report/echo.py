@@ -169,8 +169,8 @@ _SPEAKER = {parameter: speak for speak, parameters in SPOKEN for parameter in pa
 def _spoken(parameter: str, value: Any, view: View) -> str:
     if isinstance(value, Pattern):
         return _cells(value)
-    if parameter in ("state", "beam"):
-        return _state(value, view) if parameter == "state" else _beam(value, view)
+    if parameter in ("state", "beam", "expects"):
+        return _beam(value, view) if parameter == "beam" else _state(value, view)
     if parameter in _SPEAKER:
         return str(_SPEAKER[parameter](value))
     if isinstance(value, bool):

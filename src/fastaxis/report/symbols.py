@@ -175,6 +175,7 @@ SYMBOLS: dict[str, Callable[[], list[Patch]]] = {
     "SpiralPlate": _spiral,
     "Wedge": _wedge,
     "NeutralDensity": _filter,
+    "PhaseModulator": _window,
     "PhaseShift": _window,
     "Window": _window,
     "DovePrism": _dove,

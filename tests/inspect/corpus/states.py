@@ -192,3 +192,38 @@ def gold_mirror_for_diagonal_light(wrong):
 @pair("parallel window", "window", "medium")
 def parallel_window_before_the_camera(wrong):
     return line(fa.Window(index=1.52, wedge=(0 if wrong else 0.5) * deg, name="window"), CAMERA)
+
+
+@pair("input state", "cell", "high")
+def modulator_across_the_light(wrong):
+    cell = fa.PhaseModulator(axis=(90 if wrong else 0) * deg, phase=60 * deg, name="cell")
+    return line(cell, METER)
+
+
+@pair("input state", "slm", "medium")
+def modulator_behind_a_plate_turned_too_little(wrong):
+    plate = fa.HalfWavePlate(fast=(15 if wrong else 22.5) * deg, name="hwp")
+    slm = fa.PhaseModulator(axis=45 * deg, phase=lambda x, y: 1e3 * x + 0 * y, name="slm")
+    return line(plate, fa.FreeSpace(50 * mm), slm, CAMERA)
+
+
+@pair("input state", "cell", "medium")
+def amplitude_modulator_along_the_light(wrong):
+    cell = fa.PhaseModulator(axis=0 * deg, phase=90 * deg, expects=fa.D, name="cell")
+    return line(cell, fa.Polarizer(axis=-45 * deg, extinction=1e5), METER, state=fa.H if wrong else fa.D)
+
+
+@pair("input state", "in", "medium")
+def isolator_turned_away_from_the_laser(wrong):
+    return line(
+        fa.Polarizer(axis=(30 if wrong else 0) * deg, extinction=1e5, name="in"),
+        fa.FaradayRotator(angle=45 * deg, name="rotator"),
+        fa.Polarizer(axis=(75 if wrong else 45) * deg, extinction=1e5, name="out"),
+        METER,
+    )
+
+
+@pair("input state", "qp", "high")
+def circular_light_of_the_other_hand(wrong):
+    plate = fa.QuarterWavePlate(fast=(45 if wrong else -45) * deg, name="qwp")
+    return line(plate, fa.QPlate(q=0.5, expects=fa.L, name="qp"), CAMERA)

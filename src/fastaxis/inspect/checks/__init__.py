@@ -7,6 +7,7 @@ from fastaxis.inspect.checks.aperture import aperture
 from fastaxis.inspect.checks.centring import centring
 from fastaxis.inspect.checks.conversion import conversion
 from fastaxis.inspect.checks.dark import dark
+from fastaxis.inspect.checks.expectations import expectations
 from fastaxis.inspect.checks.extinction import extinction
 from fastaxis.inspect.checks.fringes import fringes
 from fastaxis.inspect.checks.gain import gain
@@ -34,7 +35,7 @@ __all__ = ["CHECKS", "wiring"]
 
 CHECKS: tuple[Callable[[Bench], Iterator[Finding]], ...] = (
     open_ports, dark, gain, aperture, sensor, saturation, patterns, centring, paraxial,
-    plates, temperatures, conversion, polarizers, isolators, mirrors, idle, extinction,
+    plates, temperatures, conversion, polarizers, isolators, expectations, mirrors, idle, extinction,
     parity, planes, relays, windows, fringes, sampling, slips,
 )  # fmt: skip
 """Run on every bench whose light can be followed; wiring comes before, as it decides whether it can."""

@@ -6,11 +6,10 @@ from collections.abc import Iterator
 
 import numpy as np
 
-from fastaxis.elements.polarizer import Polarizer
-from fastaxis.elements.rotator import FaradayRotator
 from fastaxis.inspect.bench import Bench, Visit
 from fastaxis.inspect.checks.polarizers import axis_fix, passing
 from fastaxis.inspect.finding import Finding, Severity
+from fastaxis.inspect.isolating import isolators_of
 from fastaxis.inspect.words import degrees, percent
 from fastaxis.laws import AxisLaw, CircularLaw
 from fastaxis.maths import NUMBERS
@@ -21,10 +20,8 @@ __all__ = ["backward_leak", "isolators"]
 
 def isolators(bench: Bench) -> Iterator[Finding]:
     """Forward loss at the output polarizer and light let through backwards."""
-    for visit in bench.of_kind(Polarizer):
-        trio = _trio(visit)
-        if trio is None or visit.returning:
-            continue  # met on the way back it is there to block
+    for trio in isolators_of(bench):
+        visit = trio[2]
         share, leak = passing(visit), backward_leak(trio, bench.wavelength)
         if share < 0.95:
             yield Finding(
@@ -48,22 +45,6 @@ def _leaking(rotator: Visit, leak: float) -> Finding:
         got=f"{rotator.name}: angle {degrees(float(rotator.element.angle))}, {percent(leak)} passes backwards",
         fix=f'train.with_changes({{"{rotator.name}.angle": 45*deg}})',
     )
-
-
-def _trio(visit: Visit) -> tuple[Visit, Visit, Visit] | None:
-    """(input polarizer, rotator, output polarizer) when the three follow one another, with free space at most."""
-    rotator = _part_before(visit)
-    first = _part_before(rotator) if rotator is not None and isinstance(rotator.element, FaradayRotator) else None
-    if rotator is None or first is None or not isinstance(first.element, Polarizer):
-        return None
-    return first, rotator, visit
-
-
-def _part_before(visit: Visit) -> Visit | None:
-    before = visit.previous
-    while before is not None and type(before.element).__name__ == "FreeSpace":
-        before = before.previous
-    return before
 
 
 def backward_leak(trio: tuple[Visit, ...], wavelength: float) -> float:

@@ -6,6 +6,7 @@ from collections.abc import Iterator
 
 from fastaxis.elements.polarizer import Polarizer
 from fastaxis.inspect.bench import Bench, Visit
+from fastaxis.inspect.checks.expectations import expectation, inputs_of
 from fastaxis.inspect.finding import Finding, Severity
 from fastaxis.inspect.strands import azimuth, degree, state_in_words, total
 from fastaxis.inspect.words import degrees, percent
@@ -16,9 +17,12 @@ __all__ = ["axis_fix", "passing", "polarizers"]
 
 def polarizers(bench: Bench) -> Iterator[Finding]:
     """Share of the light that each polarizer passes, of what it could pass with its axis along the light."""
+    expecting = inputs_of(bench)
     for visit in bench.of_kind(Polarizer):
         if visit.patterned or visit.returning:
             continue  # a beam of many states is what such a polarizer sorts; light on its way back, what it stops
+        if expectation(visit, expecting) is not None:
+            continue  # told by the check of expectations
         share = passing(visit)
         if share < 0.9:
             yield _finding(visit, share)
