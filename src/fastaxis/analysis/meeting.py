@@ -134,7 +134,9 @@ def _looked_at(parts: Sequence[Sequence[Branch]], fields: Sequence[Sequence[Any]
     rows = max(1, BLOCK // len(x))
     for first in range(0, len(x), rows):
         some = x[first : first + rows]
-        yield pitch * np.array([[field.at(x, some).reshape(2, -1) for field in row] for row in fields], dtype=complex)
+        values = np.array([[field.at(x, some).reshape(2, -1) for field in row] for row in fields], dtype=complex)
+        values *= pitch
+        yield values
 
 
 class _Sums:
