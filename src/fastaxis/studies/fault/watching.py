@@ -16,7 +16,8 @@ from fastaxis.studies.sweep import sweep
 from fastaxis.studies.tolerance.causes import read_causes
 from fastaxis.studies.tolerance.distributions import normal
 from fastaxis.studies.tolerance.merits import power_at
-from fastaxis.studies.tolerance.working import Summed, light_at, prepared
+from fastaxis.studies.tolerance.preparing import summed
+from fastaxis.studies.tolerance.reading import light_at, readings
 
 __all__ = ["Watch"]
 
@@ -46,7 +47,7 @@ class Watch:
     def look(self, train: Any) -> Any:
         """What is seen of a train."""
         if self.kind == "stokes":
-            return light_at(train, power_at(self.target), {})[0].sum(axis=(1, 2))
+            return light_at(train, self.target, "powers", {})[0].sum(axis=(1, 2))
         return expose(train, self.target, self.settings) if self.kind == "shots" else train
 
     def of(self, train: Any) -> float:
@@ -94,8 +95,9 @@ class Watch:
         if self.kind == "stokes":
             causes = read_causes(mistake.train, {mistake.knob: normal(0.0)})
             offsets = (mistake.values - mistake.nominal)[:, None]
-            work = prepared(mistake.train, causes, offsets, power_at(self.target), {"grid": None, "engine": "auto"})
-            return work.stokes()[:, 0].__getitem__ if isinstance(work, Summed) else None
+            (reading,) = readings([power_at(self.target)])
+            work = summed(mistake.train, causes, offsets, reading, {"grid": None, "engine": "auto"})
+            return None if work is None else work.stokes()[:, 0].__getitem__
         if self.kind == "shots":
             swept = sweep(mistake.train, {mistake.knob: mistake.values}, self.target, self.settings)
             return swept.exposure if not swept.gallery.stiff else None

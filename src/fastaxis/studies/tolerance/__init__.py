@@ -15,10 +15,11 @@ from fastaxis.studies.tolerance.merits import (
 )
 from fastaxis.studies.tolerance.result import Contribution, Range, Tolerance
 from fastaxis.studies.tolerance.study import tolerance
+from fastaxis.studies.tolerance.surface import Surface
 from fastaxis.studies.tolerance.yields import Yield, wilson
 
 __all__ = [
-    "Contribution", "Range", "Tolerance", "Yield", "azimuth_error", "correlated", "ellipticity_error",
+    "Contribution", "Range", "Surface", "Tolerance", "Yield", "azimuth_error", "correlated", "ellipticity_error",
     "extinction_ratio", "frame_correlation", "lobe_angle", "measured", "normal", "power_at", "ring_radius",
     "stokes_component", "together", "tolerance", "triangular", "uniform", "wilson", "worst_case",
 ]  # fmt: skip

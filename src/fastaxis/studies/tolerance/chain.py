@@ -52,7 +52,9 @@ class Chain:
         return copy
 
 
-def make_chain(train: Any, target: str, names: tuple[str, ...], values: Reals) -> Chain | None:
+def make_chain(
+    train: Any, target: str, names: tuple[str, ...], values: Reals, wavelengths: Reals | None = None
+) -> Chain | None:
     """Follow the laws from source to target at every row of values.
 
     Neighbouring uniform laws are multiplied to one matrix, since what stands between them acts on both components
@@ -63,6 +65,7 @@ def make_chain(train: Any, target: str, names: tuple[str, ...], values: Reals) -
     train, target : with numbers everywhere.
     names : parameters, "part.parameter".
     values : (rows, names).
+    wavelengths : (rows,) [m], for the matrix of the last uniform parts; that of the light if left out.
 
     Returns
     -------
@@ -78,14 +81,22 @@ def make_chain(train: Any, target: str, names: tuple[str, ...], values: Reals) -
     stiff = {"wavelength", route.source_name, *([end] if train.elements[end].exit is None else [])}
     if parts & stiff or len(lines) > 1:
         return None
-    return _Follower(train, route, names, values, lines.pop()).followed()
+    line = lines.pop()
+    chain = _Follower(train, route, (names, values), {}, line).followed()
+    if chain is None or wavelengths is None:
+        return chain
+    # What stands in front of the last pattern is propagated at every wavelength; the last parts are not.
+    return _Follower(train, route, (names, values), dict.fromkeys(chain.removed, wavelengths), line).followed()
 
 
 class _Follower:
     """Walks along a route once and gathers columns."""
 
-    def __init__(self, train: Any, route: Any, names: tuple[str, ...], values: Reals, wavelength: float) -> None:
-        self.train, self.route, self.names, self.values, self.wavelength = train, route, names, values, wavelength
+    def __init__(
+        self, train: Any, route: Any, rows: tuple[tuple[str, ...], Reals], colours: dict[str, Reals], wavelength: float
+    ) -> None:
+        self.names, self.values = rows
+        self.train, self.route, self.wavelength, self.colours = train, route, wavelength, colours
         self.columns: Complexes | None = None
         self.matrix = np.eye(2, dtype=complex)[None]
         self.removable: list[str] = []
@@ -116,11 +127,14 @@ class _Follower:
     def _tables(self, leg: Any) -> list[Any] | None:
         """The numbers of each law of a leg at every row; None for a law that stays."""
         own = [k for k, name in enumerate(self.names) if name.partition(".")[0] == leg.element_name]
-        if not own:
+        short = tuple(self.names[k].partition(".")[2] for k in own)
+        values = self.values[:, own]
+        if leg.element_name in self.colours:
+            short, values = (*short, "wavelength"), np.column_stack([values, self.colours[leg.element_name]])
+        if not short:
             return [None] * len(self._laws(leg))
         element, faces = self.train.elements[leg.element_name], (leg.entered, leg.left)
-        short = tuple(self.names[k].partition(".")[2] for k in own)
-        found = law_tables(element, faces, self.wavelength, short, self.values[:, own])
+        found = law_tables(element, faces, self.wavelength, short, values)
         return None if found is None else [numbers for _, numbers in found]
 
     def _take(self, law: Any, table: Complexes | None) -> None:

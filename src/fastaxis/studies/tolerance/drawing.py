@@ -30,7 +30,8 @@ def batch_size(works: Sequence[Work]) -> int:
 
 def batch(parts: Sequence[Work]) -> Reals:
     """The figures of merit (draws, merits) of one batch; runs anywhere, since all it needs comes along."""
-    return np.stack([part.values() for part in parts], axis=1)
+    columns = np.concatenate([part.reading.columns for part in parts]).astype(int)
+    return np.concatenate([part.values() for part in parts], axis=1)[:, np.argsort(columns)]
 
 
 def work_off(
@@ -51,7 +52,7 @@ def work_off(
             progress(int(kept.done.sum()), draws)
 
     def parts(start: int) -> list[Work]:
-        return [work.part(start, min(start + size, draws)) for work in works]
+        return [work.rows(slice(start, min(start + size, draws))) for work in works]
 
     if executor is None:
         for start in starts:

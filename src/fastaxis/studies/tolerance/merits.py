@@ -16,11 +16,12 @@ from fastaxis.camera.settings import as_setting, no_analyzer, weight_matrix
 from fastaxis.errors import ParameterError
 
 __all__ = [
-    "PictureMerit", "StokesMerit", "azimuth_error", "ellipticity_error", "extinction_ratio", "frame_correlation",
-    "lobe_angle", "measured", "power_at", "ring_radius", "stokes_component",
+    "Merit", "PictureMerit", "StokesMerit", "azimuth_error", "ellipticity_error", "extinction_ratio",
+    "frame_correlation", "lobe_angle", "measured", "power_at", "ring_radius", "stokes_component",
 ]  # fmt: skip
 
 Reals: TypeAlias = NDArray[np.float64]
+Merit: TypeAlias = Any  # StokesMerit, PictureMerit, or a function of a train
 
 
 @dataclass(frozen=True, eq=False)
@@ -51,10 +52,22 @@ class StokesMerit:
         """The number for light (..., steps, 4) [W]; shape (...)."""
         return np.asarray(_read(self, stokes.reshape(*stokes.shape[:-2], -1) @ self.rows.T))
 
+    def apart(self, one: Reals, other: Reals) -> Reals:
+        """How far values are apart; an azimuth is the same after half a turn."""
+        return _apart(one, other, math.pi if self.reading == "azimuth" else math.inf)
+
     def slope(self, stokes: Reals, change: Reals) -> float:
         """Its derivative where the light (steps, 4) changes at this rate, by the chain rule."""
         seen, moved = self.rows @ stokes.ravel(), self.rows @ change.ravel()
         return float(_gradient(self, seen) @ moved)
+
+
+def _apart(one: Reals, other: Reals, period: float) -> Reals:
+    """Absolute differences; 0 where neither could be read, infinite where one could not."""
+    off = np.abs(one - other)
+    off = np.minimum(off, np.abs(period - off)) if math.isfinite(period) else off
+    alike = (np.isnan(one) & np.isnan(other)) | (one == other)
+    return np.where(alike, 0.0, np.where(np.isfinite(off), off, np.inf))
 
 
 def _read(merit: StokesMerit, seen: Reals) -> Any:
@@ -202,6 +215,11 @@ class PictureMerit:
         assert self.reference is not None
         norm = math.sqrt(float((frame**2).sum() * (self.reference**2).sum()))
         return float((frame * self.reference).sum()) / norm if norm else math.nan
+
+    def apart(self, one: Reals, other: Reals) -> Reals:
+        """How far values are apart; lobes are the same after their spacing."""
+        lobed = self.reading == "lobe angle" and self.count
+        return _apart(one, other, 2 * math.pi / self.count if lobed else math.inf)
 
 
 def _weights(behind: Any) -> Reals:

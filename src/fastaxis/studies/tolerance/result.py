@@ -17,6 +17,7 @@ from fastaxis.files import write_whole
 from fastaxis.loader import late
 from fastaxis.studies.tolerance.causes import Causes
 from fastaxis.studies.tolerance.slopes import Slope
+from fastaxis.studies.tolerance.surface import Surface
 from fastaxis.studies.tolerance.yields import Yield, wilson
 
 __all__ = ["Contribution", "Range", "Tolerance"]
@@ -69,6 +70,8 @@ class Tolerance:
     offsets : (draws, parameters), the errors drawn.
     values : (draws, merits).
     seed : of the draws.
+    surfaces : name -> the response surface it was read off, or that was tried and not good enough; those without one
+        were read exactly at every draw.
     """
 
     train: Any = field(repr=False)
@@ -82,6 +85,7 @@ class Tolerance:
     offsets: Reals = field(repr=False)
     values: Reals = field(repr=False)
     seed: int
+    surfaces: Mapping[str, Surface] = field(default_factory=dict)
 
     @property
     def samples(self) -> dict[str, Reals]:
@@ -167,6 +171,7 @@ class Tolerance:
             f"  drawn: 5 % {low:.6g}, 50 % {middle:.6g}, 95 % {high:.6g}; standard deviation {spread:.4g}",
             f"  worst case: {self.worst[name].low:.6g} to {self.worst[name].high:.6g}",
         ]
+        lines += [f"  {self.surfaces[name]}"] if name in self.surfaces else []
         unread = len(values) - len(read)
         lines += [f"  {unread} draws could not be read"] if unread else []
         lines += [f"  {100 * one.share:5.1f} %  {one.cause} (alone {one.sigma:.3g})" for one in self.rankings[name]]

@@ -11,10 +11,10 @@ from numpy.typing import NDArray
 
 from fastaxis.elements.base import ANGLES
 from fastaxis.studies.tolerance.causes import Causes
-from fastaxis.studies.tolerance.merits import StokesMerit
-from fastaxis.studies.tolerance.working import Merit, Summed, prepared
+from fastaxis.studies.tolerance.preparing import summed
+from fastaxis.studies.tolerance.reading import Reading
 
-__all__ = ["Answer", "Slope", "answers", "slopes"]
+__all__ = ["Answer", "Slope", "answer_rows", "answers", "difference", "difference_rows", "exact_slopes"]
 
 Reals: TypeAlias = NDArray[np.float64]
 
@@ -62,42 +62,36 @@ class Answer:
         return self.slope * error + self.curvature * error**2 / 2
 
 
-def slopes(train: Any, causes: Causes, merit: Merit, widths: Reals, options: dict[str, Any]) -> dict[str, Slope]:
-    """The derivative with respect to each parameter.
+def exact_slopes(train: Any, causes: Causes, reading: Reading, options: dict[str, Any]) -> tuple[dict[str, Slope], ...]:
+    """For each figure of merit, derivatives by angles of powers that are trigonometric sums of them.
 
-    Parameters
-    ----------
-    widths : typical size of the error of each parameter; differences are taken over half and a quarter of it.
+    Angles that refuse a full turn, or whose powers are found to be other than such sums, are left out.
     """
-    exact = _exact(train, causes, merit, options) if isinstance(merit, StokesMerit) else {}
-    rest = [k for k, name in enumerate(causes.names) if name not in exact]
-    differences = _differences(train, causes, merit, rest=rest, widths=widths, options=options) if rest else {}
-    return {name: exact.get(name) or differences[name] for name in causes.names}
-
-
-def _exact(train: Any, causes: Causes, merit: StokesMerit, options: dict[str, Any]) -> dict[str, Slope]:
-    """Derivatives by angles, of powers that are trigonometric sums of the angle and were shown to be."""
     angles = [k for k, name in enumerate(causes.names) if name.partition(".")[2] in ANGLES]
-    if not angles:
-        return {}
+    found: tuple[dict[str, Slope], ...] = tuple({} for _ in reading.merits)
+    if not angles or reading.kind != "powers":
+        return found
     tried = np.concatenate([ANGLES_TRIED, BETWEEN])
-    rows = np.zeros((len(angles), len(tried), len(causes.names)))
-    for place, k in enumerate(angles):
-        rows[place, :, k] = tried
+    # Only angles are turned: what else is in error stays as declared.
+    turned = Causes((), {causes.names[k]: causes.nominal[causes.names[k]] for k in angles})
+    rows = np.zeros((len(angles), len(tried), len(angles)))
+    for place in range(len(angles)):
+        rows[place, :, place] = tried
     try:
-        work = prepared(train, causes, rows.reshape(-1, len(causes.names)), merit, options)
+        work = summed(train, turned, rows.reshape(-1, len(angles)), reading, options)
     except ValueError:
-        return {}  # some part refuses a full turn
-    if not isinstance(work, Summed):
-        return {}
+        return found  # some part refuses a full turn
+    if work is None:
+        return found
     stokes = work.stokes().reshape(len(angles), len(tried), -1, 4)
-    found = {}
-    for place, k in enumerate(angles):
+    for place, name in enumerate(turned.names):
         here, between = stokes[place, :COUNT], stokes[place, COUNT:]
         guess = np.tensordot(_kernel(BETWEEN), here, axes=1)
         if np.abs(guess - between).max() <= EXACT * max(np.abs(here).max(), 1e-300):
-            value = merit.slope(here[COUNT // 2], np.tensordot(_derivative(), here, axes=1))
-            found[causes.names[k]] = Slope(value, 0.0 if math.isfinite(value) else math.nan, exact=True)
+            moved = np.tensordot(_derivative(), here, axes=1)
+            for slopes, merit in zip(found, work.reading.merits, strict=True):
+                value = merit.slope(here[COUNT // 2], moved)
+                slopes[name] = Slope(value, 0.0 if math.isfinite(value) else math.nan, exact=True)
     return found
 
 
@@ -114,34 +108,41 @@ def _derivative() -> Reals:
     return np.asarray(2 * (orders * np.sin(np.multiply.outer(ANGLES_TRIED, orders))).sum(axis=1) / COUNT)
 
 
-def _differences(
-    train: Any, causes: Causes, merit: Merit, *, rest: list[int], widths: Reals, options: dict[str, Any]
-) -> dict[str, Slope]:
-    """Central differences over two steps, extrapolated to a step of zero; their difference gives the error."""
-    steps = np.array([0.5, -0.5, 0.25, -0.25])
-    rows = np.zeros((len(rest), 4, len(causes.names)))
-    for place, k in enumerate(rest):
-        rows[place, :, k] = steps * widths[k]
-    values = prepared(train, causes, rows.reshape(-1, len(causes.names)), merit, options).values().reshape(-1, 4)
-    found = {}
-    for k, (a, b, c, d) in zip(rest, values, strict=True):
-        if widths[k] == 0:
-            found[causes.names[k]] = Slope(math.nan, math.nan, exact=False)
-            continue
-        wide, narrow = (a - b) / widths[k], 2 * (c - d) / widths[k]
-        # What is left of a central difference falls with the square of the step.
-        found[causes.names[k]] = Slope(float((4 * narrow - wide) / 3), float(abs(narrow - wide) / 3), exact=False)
-    return found
+STEPS = np.array([0.5, -0.5, 0.25, -0.25])  # standard deviations
 
 
-def answers(train: Any, causes: Causes, merit: Merit, options: dict[str, Any]) -> tuple[float, tuple[Answer, ...]]:
-    """The merit as declared, and what each independent error does over about its own standard deviation."""
+def difference_rows(widths: Reals) -> Reals:
+    """Offsets that derivatives are told from by differences, four rows for each parameter."""
+    return np.concatenate([np.outer(STEPS, row) for row in np.diag(widths)])
+
+
+def difference(values: Reals, width: float) -> Slope:
+    """Central differences over two steps, extrapolated to a step of zero; their difference gives the error.
+
+    Parameters
+    ----------
+    values : of the figure of merit at its four rows.
+    width : standard deviation of the parameter.
+    """
+    if width == 0:
+        return Slope(math.nan, math.nan, exact=False)
+    a, b, c, d = values.tolist()
+    wide, narrow = (a - b) / width, 2 * (c - d) / width
+    # What is left of a central difference falls with the square of the step.
+    return Slope((4 * narrow - wide) / 3, abs(narrow - wide) / 3, exact=False)
+
+
+def answer_rows(causes: Causes) -> Reals:
+    """Offsets that say what each independent error does: none, then each one up, then each one down."""
+    moved = causes.directions * np.array([error.sigma for error in causes.errors])[:, None]
+    return np.concatenate([np.zeros((1, len(causes.names))), moved, -moved])
+
+
+def answers(causes: Causes, values: Reals) -> tuple[Answer, ...]:
+    """What each independent error does over about its own standard deviation, from the values at those rows."""
     sigmas = np.array([error.sigma for error in causes.errors])
-    moved = causes.directions * sigmas[:, None]
-    rows = np.concatenate([np.zeros((1, len(causes.names))), moved, -moved])
-    values = prepared(train, causes, rows, merit, options).values()
     start, above, below = values[0], *np.split(values[1:], 2)
     with np.errstate(invalid="ignore", divide="ignore"):
         first = np.where(sigmas > 0, (above - below) / (2 * sigmas), 0.0)
         second = np.where(sigmas > 0, (above - 2 * start + below) / sigmas**2, 0.0)
-    return float(start), tuple(Answer(float(a), float(c)) for a, c in zip(first, second, strict=True))
+    return tuple(Answer(float(a), float(c)) for a, c in zip(first, second, strict=True))
