@@ -183,9 +183,10 @@ def _joined(plan: Plan, grid: Grid | None, *, bucket: bool, asked: str) -> Plan:
     for group in plan.groups:
         alike = bucket and len({_shape(branch.steps) for branch in group}) == 1
         chosen = [replace(b, engine=_engine(b, grid, bucket=alike, asked=asked)) for b in group]
+        # Where not all arms are round, modes that stay modes are known at any place sooner than samples or harmonics.
+        free = asked == "auto" and grid is None and any(branch.engine == "grid" for branch in chosen)
         for branch in chosen:
-            # Modes that stay modes are known at any place sooner than samples or harmonics.
-            kept = closed((branch,)) if asked == "auto" and grid is None and branch.engine != "uniform" else None
+            kept = closed((branch,)) if free else None
             branches += kept or (_sampled(branch, grid) if branch.engine == "grid" else branch,)
     return advance(replace(plan, branches=tuple(branches), engine="joined", reason="light comes by several paths"))
 

@@ -107,14 +107,14 @@ class JoinedField:
         half = self.extent.half_window
         if raster.shape == (1, 1) and half and raster.pitch / 2 >= half + max(map(abs, raster.centre)):
             return self.total_stokes[:, np.newaxis, np.newaxis]
-        if all(engine == "azimuthal" for engine in self.engines):
-            return self._by_harmonics(raster)
         reach = max(abs(raster.x).max(), abs(raster.y).max()) + raster.pitch / 2
         if any(engine != "modes" for engine in self.engines):
             seen = sight(self.arms, self.mixtures, reach)
             image = blockwise(seen.images, raster, self.extent.spreads)
             if image is not None:
                 return seen.polarized(image)
+        if all(engine == "azimuthal" for engine in self.engines):
+            return self._by_harmonics(raster)
         frequency, finest = self.extent.frequency(reach), self.extent.finest(reach)
         looks = candidates(raster, frequency, finest)
         seen = sight(self.arms, self.mixtures, max(look.farthest for look in looks))

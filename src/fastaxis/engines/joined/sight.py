@@ -62,8 +62,8 @@ class _OneState:
     state: Complexes
 
     def images(self, x: Reals, y: Reals) -> Reals:
-        # Irradiance does not ask which front it is relative to; the one of the first arm saves that a product.
-        front, out = self.scalars[0].curvature, np.empty((1, len(y), len(x)))
+        # Irradiance does not ask which front it is relative to; the most curved one saves harmonics a product.
+        front, out = max((s.curvature for s in self.scalars), key=abs), np.empty((1, len(y), len(x)))
         for rows in _strips(y, len(x), PLACES):
             fields = [scalar.on(x, y[rows], front) for scalar in self.scalars]
             out[0, rows] = sum(_power(_sum(numbers, fields)) for numbers in self.mixtures)
