@@ -129,7 +129,10 @@ class Exposure:
         return mixed(weights, self.stokes.reshape(4, -1)).reshape(-1, *self.stokes.shape[1:])
 
     def power(self, which: int | str | Setting | State) -> float:
-        """Power on the sensor behind this setting [W]; ``which`` as in :meth:`frame`."""
+        """Power on the sensor behind this setting [W]; ``which`` as in :meth:`frame`.
+
+        Light that passes beside the sensor is not in it; ``train.power("cam")`` is all the light in the camera's plane.
+        """
         return float(self.frame(which).sum())
 
     @property

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Mapping, Sequence
+from collections.abc import Callable, Mapping, Sequence
 from typing import Any
 
 from fastaxis.loader import late
@@ -23,7 +23,11 @@ class Questions:
         return late("engines", "propagate")(self.plan(target, grid=grid, engine=engine))
 
     def power(self, target: str, *, grid: Any = None, engine: str = "auto") -> float:
-        """Power [W] at a camera or leaving a port."""
+        """Power [W] at a camera or leaving a port: of all the light that gets there.
+
+        ``train.expose("cam", ...).power(...)`` counts what falls on the sensor and passes the setting; light beside the
+        sensor is in this one alone. ``shots.total_power`` over this is the share that the sensor catches.
+        """
         return float(sum(part.power for part in self._collected(target, grid, engine)))
 
     def ledger(self, *, engine: str = "auto") -> Any:
@@ -63,22 +67,72 @@ class Questions:
         """Camera frames for many values of some parameters: {"hwp.fast": angles, "qp.retardance": values}."""
         return late("studies.sweep", "sweep")(self, values, target, settings, zipped=zipped, **options)
 
-    def tolerance(self, errors: Mapping[Any, Any], figures_of_merit: Mapping[str, Any], **options: Any) -> Any:
+    def tolerance(
+        self,
+        errors: Mapping[Any, Any],
+        figures_of_merit: Mapping[str, Any],
+        *,
+        limits: Mapping[str, tuple[float | None, float | None]] | None = None,
+        draws: int = 10_000,
+        seed: int = 0,
+        executor: Any = None,
+        checkpoint: Any = None,
+        progress: Callable[[int, int], None] | None = None,
+        batch: int | None = None,
+        accuracy: float = 0.02,
+        grid: Any = None,
+        engine: str = "auto",
+    ) -> Any:
         """How errors of parameters spread: sensitivities, ranked contributions, worst case, draws and yield.
 
         ``train.tolerance({"hwp.fast": normal(0.5*deg)}, {"leak": power_at("pbs.reflected")}, draws=10_000, seed=0)``,
         with errors and figures of merit from ``fastaxis.studies.tolerance``.
-        """
-        return late("studies.tolerance", "tolerance")(self, errors, figures_of_merit, **options)
 
-    def find_fault(self, frames: Any, settings: Any, **options: Any) -> Any:
+        Parameters
+        ----------
+        errors : {"part.parameter": normal(...)}, or uniform, triangular, worst_case; several parameters in a tuple
+            with ``together(...)`` or ``correlated(...)``.
+        figures_of_merit : name -> ``power_at(...)`` and the like, or any function of a train that gives a number.
+        limits : name -> (lowest, highest) that is good, None for no limit; they make the yield.
+        draws, seed : of the Monte Carlo.
+        executor : any ``concurrent.futures.Executor``; in this thread if left out.
+        checkpoint : path of an .npz file, written after each batch; a study that was stopped goes on from there.
+        progress : called as progress(draws done, draws) after each batch.
+        batch : draws in a batch.
+        accuracy : error of a response surface that is good enough, as a share of the spread of a figure of merit; such
+            a surface stands for draws in places, distances, focal lengths, the wavelength and the source, and its error
+            is measured and told. 0 propagates every draw.
+        grid, engine : as in ``train.expose``.
+        """
+        return late("studies.tolerance", "tolerance")(
+            self,
+            errors,
+            figures_of_merit,
+            limits=limits,
+            draws=draws,
+            seed=seed,
+            executor=executor,
+            checkpoint=checkpoint,
+            progress=progress,
+            batch=batch,
+            accuracy=accuracy,
+            grid=grid,
+            engine=engine,
+        )
+
+    def find_fault(self, frames: Any, settings: Any, *, target: str | None = None, noise: float = 0.01) -> Any:
         """Which single mistake on the bench would make the frames that were recorded, ranked.
 
-        ``train.find_fault(shots.frames, shots.settings, target="cam", noise=0.01)``, with ``target`` the camera or
-        detector the frames are of (the only camera if left out) and ``noise`` the relative difference of frames, root
-        mean square, that counts as none.
+        ``train.find_fault(shots.frames, shots.settings, target="cam", noise=0.01)``.
+
+        Parameters
+        ----------
+        frames : recorded, (settings, ny, nx); powers (settings,) of a detector. A scale common to all is free.
+        settings : of the frames.
+        target : camera or detector the frames are of; the only camera if left out.
+        noise : relative difference of frames, root mean square, that counts as none.
         """
-        return late("studies.fault", "find_fault")(self, frames, settings, **options)
+        return late("studies.fault", "find_fault")(self, frames, settings, target=target, noise=noise)
 
     def derive(self, target: str, **options: Any) -> Any:
         """The light at a target as a formula, with the letters of the train left as letters."""

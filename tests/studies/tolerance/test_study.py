@@ -242,3 +242,35 @@ def test_more_refusals():
         correlated([[1.0, 2.0], [0.0, 1.0]])
     with pytest.raises(fa.ParameterError, match="1, 2 and 3"):
         stokes_component("cam", 0)
+
+
+def test_the_question_to_a_train_spells_out_every_option():
+    import inspect
+
+    from fastaxis.studies.fault import find_fault
+    from fastaxis.studies.tolerance import tolerance
+
+    for asked, answered in ((fa.Train.tolerance, tolerance), (fa.Train.find_fault, find_fault)):
+        options = [
+            {
+                name: one.default
+                for name, one in inspect.signature(each).parameters.items()
+                if one.kind is one.KEYWORD_ONLY
+            }
+            for each in (asked, answered)
+        ]
+        assert options[0] == options[1]
+        assert all(f"{name}" in asked.__doc__ for name in options[0])
+
+
+def test_power_at_a_camera_counts_light_beside_the_sensor():
+    small = fa.Train(wavelength=633e-9, name="Tern").along(
+        fa.Laser(waist=1 * mm, power=1e-3, state=fa.H, name="laser"),
+        fa.Polarizer(axis=0.0, name="pol"),
+        fa.Camera(pixel=50 * um, shape=(16, 16), name="cam"),
+    )
+    found = small.tolerance({"pol.axis": normal(1 * deg)}, {"all": power_at("cam")}, draws=1)
+    assert found.nominal["all"] == pytest.approx(small.power("cam"), rel=1e-12)
+    # A square of 0.8 mm over a waist of 1 mm: erf(0.4 sqrt 2)^2.
+    share = small.expose("cam", [fa.no_analyzer()]).power(0) / small.power("cam")
+    assert share == pytest.approx(math.erf(0.4 * math.sqrt(2)) ** 2, rel=1e-3)

@@ -106,7 +106,11 @@ def _gradient(merit: StokesMerit, seen: Reals) -> Reals:
 
 
 def power_at(target: str, behind: Any = None) -> StokesMerit:
-    """Power [W] at a port, camera or detector; ``behind`` a state or an analyzer if one is given."""
+    """Power [W] of all light at a port, camera or detector; ``behind`` a state or an analyzer if one is given.
+
+    At a camera that is all light in its plane, as ``train.power`` tells it, beside the sensor too; ``shots.power`` of
+    an exposure is what falls on the sensor.
+    """
     weights = weight_matrix([no_analyzer() if behind is None else as_setting(behind)])
     return StokesMerit(target, "power", weights, unit="W")
 
