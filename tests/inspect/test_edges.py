@@ -265,6 +265,12 @@ def mach_zehnder(bench_of, state=fa.H):
     return train
 
 
+def test_a_sensor_too_small_is_told_once_of_both_arms(bench_of):
+    train = mach_zehnder(bench_of).with_changes({"cam.shape": (150, 150)})
+    (found,) = checks(train, "sensor too small")
+    assert "middle at (0 m, 0 m)" in found.got
+
+
 @pytest.mark.parametrize(("state", "severity"), [(fa.H, "low"), (fa.D, "medium")])
 def test_a_mirrored_picture_is_told_once_of_both_arms(bench_of, state, severity):
     (found,) = checks(mach_zehnder(bench_of, state), "mirrored picture")

@@ -1,7 +1,7 @@
 """Mistakes of joining."""
 
 import fastaxis as fa
-from fastaxis.units import deg, mm, mW, um
+from fastaxis.units import deg, mm, mrad, mW, um
 
 
 @pair("wiring", "second", "high")
@@ -71,6 +71,59 @@ def unequal_arms(wrong):
 @pair("path difference", "cam", "high")
 def arms_beyond_the_coherence_length(wrong):
     return _two_arms(tilt=0.001, longer=40 * mm, coherence=(10 if wrong else 2000) * mm)
+
+
+@pair("arm polarization", "cam", "medium")
+def half_wave_plate_in_one_arm(wrong):
+    return _meeting([fa.HalfWavePlate(fast=(45 if wrong else 0) * deg, name="hwp")], [])
+
+
+@pair("arm polarization", "cam", "low")
+def polarizing_splitter_without_an_analyzer(wrong):
+    train = line(fa.PolarizingBeamSplitter(name="split"), fa.Mirror(name="m1"), state=fa.D, waist=0.3 * mm)
+    analyzer = [] if wrong else [fa.Polarizer(axis=45 * deg, extinction=1e5, name="analyzer")]
+    train.along("m1", fa.BeamSplitter(name="join")).along("split.reflected", fa.Mirror(name="m2"), "join.side")
+    train.along("join.transmitted", *analyzer, fa.Camera(pixel=5 * um, shape=(640, 640), name="cam"))
+    return train.along("join.reflected", fa.BeamDump(name="dump"))
+
+
+@pair("mirrored arms", "cam", "medium")
+def spiral_met_by_its_mirror_image(wrong):
+    folds = [fa.Mirror(name=f"fold{n}") for n in range(1 if wrong else 2)]
+    return _meeting(folds, [], before=[fa.SpiralPlate(charge=1, name="spiral")])
+
+
+@pair("arm overlap", "cam", "medium")
+def telescope_in_one_arm(wrong):
+    lenses = [fa.Lens(focal=50 * mm), fa.FreeSpace(200 * mm), fa.Lens(focal=150 * mm)]
+    return _meeting(lenses if wrong else [fa.FreeSpace(200 * mm)], [fa.FreeSpace(200 * mm)])
+
+
+@pair("arm overlap", "cam", "medium")
+def wedge_in_one_arm(wrong):
+    wedge = fa.Wedge(x=(4 if wrong else 0.2) * mrad, name="wedge")
+    return _meeting([wedge, fa.FreeSpace(200 * mm)], [fa.FreeSpace(200 * mm)])
+
+
+@pair("arm curvature", "cam", "low")
+def lens_in_one_arm(wrong):
+    return _meeting([fa.Lens(focal=1000 * mm, name="lens")] if wrong else [], [], waist=1.2 * mm)
+
+
+@pair("arm curvature", "cam", "high")
+def short_lens_in_one_arm(wrong):
+    lenses = [fa.Lens(focal=40 * mm, name="lens"), fa.FreeSpace(80 * mm)]
+    even = [fa.FreeSpace(80 * mm)]
+    return _meeting(lenses if wrong else even, even, waist=1.2 * mm, pixel=10 * um)
+
+
+def _meeting(one, other, before=(), waist=0.3 * mm, pixel=5 * um):
+    """Two arms with a mirror each, and what else stands in them."""
+    train = line(*before, fa.BeamSplitter(name="split"), *one, fa.Mirror(name="m1"), waist=waist)
+    train.along("m1", fa.PhaseShift(phase=1.5, name="tuning"), fa.BeamSplitter(name="join"))
+    train.along("split.reflected", *other, fa.Mirror(name="m2"), "join.side")
+    camera = fa.Camera(pixel=pixel, shape=(1024, 1024), name="cam")
+    return train.along("join.reflected", camera).along("join.transmitted", fa.BeamDump(name="dump"))
 
 
 def _two_arms(tilt, longer, coherence=None, pixel=5 * um):

@@ -4,6 +4,7 @@ from collections.abc import Callable, Iterator
 
 from fastaxis.inspect.bench import Bench
 from fastaxis.inspect.checks.aperture import aperture
+from fastaxis.inspect.checks.arms import arms
 from fastaxis.inspect.checks.centring import centring
 from fastaxis.inspect.checks.conversion import conversion
 from fastaxis.inspect.checks.dark import dark
@@ -36,6 +37,6 @@ __all__ = ["CHECKS", "wiring"]
 CHECKS: tuple[Callable[[Bench], Iterator[Finding]], ...] = (
     open_ports, dark, gain, aperture, sensor, saturation, patterns, centring, paraxial,
     plates, temperatures, conversion, polarizers, isolators, expectations, mirrors, idle, extinction,
-    parity, planes, relays, windows, fringes, sampling, slips,
+    parity, planes, relays, windows, fringes, arms, sampling, slips,
 )  # fmt: skip
 """Run on every bench whose light can be followed; wiring comes before, as it decides whether it can."""

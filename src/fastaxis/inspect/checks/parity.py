@@ -27,9 +27,10 @@ def parity(bench: Bench) -> Iterator[Finding]:
     cameras: dict[tuple[str, bool], list[Visit]] = defaultdict(list)
     for visit in bench.of_kind(Camera):
         cameras[visit.name, sum(visit.flips) % 2 == 1].append(visit)
-    for (_, odd), visits in cameras.items():
-        yield from _mirrored(bench, visits, odd=odd)
-        yield from _turned(visits)
+    for (name, odd), visits in cameras.items():
+        if (name, not odd) not in cameras:  # pictures and mirror images that meet are told by the check of arms
+            yield from _mirrored(bench, visits, odd=odd)
+            yield from _turned(visits)
     mirrored = {name for name, odd in cameras if odd}
     upright = {name for name, odd in cameras if not odd} - mirrored
     if mirrored and upright:

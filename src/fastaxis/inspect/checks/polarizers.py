@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from collections import defaultdict
 from collections.abc import Iterator
 
 from fastaxis.elements.polarizer import Polarizer
@@ -17,15 +18,24 @@ __all__ = ["axis_fix", "passing", "polarizers"]
 
 def polarizers(bench: Bench) -> Iterator[Finding]:
     """Share of the light that each polarizer passes, of what it could pass with its axis along the light."""
-    expecting = inputs_of(bench)
+    expecting, meeting = inputs_of(bench), _where_states_meet(bench)
     for visit in bench.of_kind(Polarizer):
         if visit.patterned or visit.returning:
             continue  # a beam of many states is what such a polarizer sorts; light on its way back, what it stops
-        if expectation(visit, expecting) is not None:
-            continue  # told by the check of expectations
+        if expectation(visit, expecting) is not None or visit.name in meeting:
+            continue  # told by the check of expectations; there to bring paths of two polarizations together
         share = passing(visit)
         if share < 0.9:
             yield _finding(visit, share)
+
+
+def _where_states_meet(bench: Bench) -> set[str]:
+    """Polarizers that light of several polarizations comes to by several paths, forwards."""
+    states: dict[str, set[str]] = defaultdict(set)
+    for visit in bench.of_kind(Polarizer):
+        if not visit.returning:
+            states[visit.name].add(state_in_words(visit.before))
+    return {name for name, several in states.items() if len(several) > 1}
 
 
 def passing(visit: Visit) -> float:

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import math
+from collections import defaultdict
 from collections.abc import Iterator
 
 from fastaxis.elements.camera import Camera
@@ -18,28 +19,37 @@ FEWEST = 3  # pixels in a beam radius; below, a ring and its dark centre share a
 
 
 def sensor(bench: Bench) -> Iterator[Finding]:
-    """Light that misses the sensor, and spots of a few pixels."""
+    """Light that misses the sensor, and spots of a few pixels; of several paths to a camera the one that fits worst."""
+    cameras: dict[str, list[Visit]] = defaultdict(list)
     for visit in bench.of_kind(Camera):
         if not visit.widest.spread.infinite:
-            yield from _missed(visit)
-            yield from _small(visit)
+            cameras[visit.name].append(visit)
+    for visits in cameras.values():
+        yield from _missed(max(visits, key=_lost))
+        yield from _small(min(visits, key=lambda visit: visit.radius))
+
+
+def _lost(visit: Visit) -> float:
+    """Share of the light beside the sensor."""
+    return 1 - passed(_area(visit.element), visit.element.centre, visit.widest.spread)
+
+
+def _area(camera: Camera) -> Rectangle:
+    ny, nx = camera.seen
+    return Rectangle(nx * camera.pixel, ny * camera.pixel)
 
 
 def _missed(visit: Visit) -> Iterator[Finding]:
-    camera = visit.element
-    ny, nx = camera.seen
-    width, height = nx * camera.pixel, ny * camera.pixel
-    spread = visit.widest.spread
-    lost = 1 - passed(Rectangle(width, height), camera.centre, spread)
+    lost, area, spread = _lost(visit), _area(visit.element), visit.widest.spread
     if lost <= 1e-3:
         return
-    x, y = spread.offset
-    beside = passed(Rectangle(width, height), (x, y), spread) - (1 - lost)
+    x, y = (place + 0.0 for place in spread.offset)
+    beside = passed(area, (x, y), spread) - (1 - lost)
     yield Finding(
         severity=Severity.HIGH if lost > 0.5 else Severity.MEDIUM if lost > 0.02 else Severity.LOW,
         check="sensor too small",
         element=visit.name,
-        rule=f"what falls beside a sensor of {length(width)} x {length(height)} is in no frame: "
+        rule=f"what falls beside a sensor of {length(area.width)} x {length(area.height)} is in no frame: "
         + ("it stands beside the beam" if beside > lost / 2 else "it is small for the beam"),
         got=f"{visit.name}: beam radius {length(visit.radius)}, middle at ({length(x)}, {length(y)}), "
         f"about {percent(lost)} beside the sensor",
