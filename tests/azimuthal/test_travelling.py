@@ -67,3 +67,29 @@ def test_a_smooth_field_arrives_whole():
 def test_behind_a_hole_only_the_hole_is_filled(vortex_light):
     there = arrived(vortex_light.through(TravelLaw.free(RAYLEIGH)), SETTINGS, start=0.1 * mm, end=0.4 * mm)
     assert (there.profile.start, there.profile.end) == pytest.approx((0.1 * mm, 0.4 * mm))
+
+
+def test_far_out_the_tail_is_followed_on_its_own_front(vortex_light, vortex):
+    """At 0.1 of the Rayleigh range the beam's front and the wave from the axis part by 660 rad within eight waists."""
+    distance = 0.1 * RAYLEIGH
+    there = arrived(vortex_light.through(TravelLaw.free(distance)), SETTINGS, end=8 * W)
+    assert there.curvature == pytest.approx(1 / distance, rel=1e-12)
+    # On the front of the beam it takes four times as many.
+    assert len(there.profile.nodes) <= 900
+    radii = np.array([0.3, 1.0, 3.0, 7.5]) * W
+    unit = np.sqrt(2 / np.pi) / W  # of unit power, where the light here peaks at 1
+    exact = vortex(1, W, 1.0, distance, 1.0, radii) / unit
+    ours = there.profile(radii)[0] * np.exp(0.5j * K * there.curvature * radii**2)
+    assert abs(ours - exact).max() < 1e-12 * abs(exact).max()
+
+
+def test_near_the_axis_the_front_is_that_of_the_beam(vortex_light):
+    near = arrived(vortex_light.through(TravelLaw.free(0.1 * RAYLEIGH)), SETTINGS, end=2 * W)
+    assert 0 < near.curvature < 0.2 / (0.1 * RAYLEIGH)
+
+
+def test_light_without_a_tail_keeps_its_front_far_out():
+    profile = sampled(lambda r: (r / W * np.exp(-((r / W) ** 2)))[np.newaxis], np.linspace(0, 6 * W, 4))
+    ring = Harmonics(orders=((LEFT, 1),), profile=profile, curvature=0.0, wavenumber=K)
+    there = arrived(ring.through(TravelLaw.free(0.1 * RAYLEIGH)), SETTINGS, end=10 * W)
+    assert 0 < there.curvature < 0.2 / (0.1 * RAYLEIGH)

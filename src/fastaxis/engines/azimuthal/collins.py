@@ -12,17 +12,20 @@ from __future__ import annotations
 
 from collections import OrderedDict
 from dataclasses import dataclass, replace
+from typing import Any
 
 import numpy as np
 
 from fastaxis.engines.azimuthal.bessel import bessel
-from fastaxis.engines.azimuthal.panels import Complexes, Profile, Reals
+from fastaxis.engines.azimuthal.panels import ORDER, Complexes, Profile, Reals
 from fastaxis.engines.azimuthal.taper import Taper
 from fastaxis.laws import TravelLaw
 
 __all__ = ["Collins", "turn"]
 
 BLOCK = 1 << 20  # kernel values at a time: 8 MB stay in the cache
+WHOLE = 0.4  # share of the phase of a part that an uncut panel may carry
+AT_RISK, NEARLY = 2, 9  # panels, places
 TURNS = (1, 1j, -1, -1j)
 
 _kernels: OrderedDict[tuple[object, ...], Reals] = OrderedDict()
@@ -122,14 +125,33 @@ class Collins:
         rows = [_kernel(order, scale, nodes, r[i : i + step]) @ columns for i in range(0, len(r), step)]
         return np.asarray(np.ascontiguousarray(np.concatenate(rows)).view(complex).T)
 
-    def parts(self, reach: float) -> np.ndarray[tuple[int], np.dtype[np.int_]]:
+    def _phases(self, reach: Reals) -> Reals:
+        """Kernel phase [rad] on each panel for some output radii, shape (radii, panels).
+
+        The outer end of a panel has the most fringes, and its parts are equally wide.
+        """
+        edges, flat = self.profile.edges, self.flat
+        ends = abs(flat.a) * edges[1:] + np.asarray(reach)[..., np.newaxis]
+        return np.asarray(self.wavenumber / abs(flat.b) * ends * np.diff(edges))
+
+    def parts(self, reach: float | Reals) -> np.ndarray[Any, np.dtype[np.int_]]:
         """Into how many parts each panel is cut, for output radii up to ``reach``."""
-        edges, flat, k = self.profile.edges, self.flat, self.wavenumber
-        # The outer end of a panel has the most fringes, and its parts are equally wide.
-        phase = k * (abs(flat.a) * edges[1:] + reach) / abs(flat.b) * np.diff(edges)
+        phase = self._phases(np.asarray(reach, dtype=float))
         # One part carries the panel's own polynomial too, so it may carry less of the kernel's phase.
-        whole = 0.4 * self.phase
-        parts = np.where(phase <= whole, 1, np.maximum(2, np.ceil(phase / self.phase)))
+        parts = np.where(phase <= WHOLE * self.phase, 1, np.maximum(2, np.ceil(phase / self.phase)))
         if self.taper:
-            parts = np.where(edges[1:] > self.taper.start, np.maximum(parts, 4), parts)
+            parts = np.where(self.profile.edges[1:] > self.taper.start, np.maximum(parts, 4), parts)
         return np.asarray(parts, dtype=int)
+
+    def hardest(self, r: Reals) -> list[int]:
+        """Which of some output radii the nodes carry worst: for each of the panels most at risk, its own.
+
+        Gauss-Legendre nodes err as the (2 ORDER)-th power of the phase that a part of a panel has. The very worst place
+        may be done in one block with further ones, which cut its panels finer; so some that are nearly as bad as well.
+        """
+        parts = self.parts(r)
+        load = self._phases(r) / np.where(parts == 1, WHOLE, parts)
+        light = abs(self.profile.values).max(axis=(0, 2)) + np.finfo(float).tiny
+        risk = np.log(light) + 2 * ORDER * np.log(load.max(axis=0))
+        worst = np.argsort(risk)[: -1 - AT_RISK : -1]
+        return [int(place) for panel in worst for place in np.argsort(load[:, panel])[: -1 - NEARLY : -4]]

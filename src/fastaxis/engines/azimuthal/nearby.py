@@ -41,7 +41,8 @@ def suits(section: Collins) -> bool:
     flat, profile = section.flat, section.profile
     if flat.a == 0 or profile.start > 0 or max(abs(l) for l in section.charges) > MOST_CHARGE:
         return False
-    ends = section.taper is not None or abs(profile.values[:, -1]).max() <= 1e-12 * profile.peak
+    # The last four nodes, for one alone may stand at a dark ring.
+    ends = section.taper is not None or abs(profile.values[:, -1, -4:]).max() <= 1e-12 * profile.peak
     root = math.sqrt(section.wavenumber * abs(flat.a / flat.b) / 2)
     shift = profile.highest_frequency / (2 * root)
     return bool(ends and shift < SMOOTH)
@@ -57,6 +58,10 @@ class Nearby:
     def finer(self) -> Nearby:
         """Wider windows, nodes closer together."""
         return Nearby(self.section.finer(), self.margin * 1.3)
+
+    def hardest(self, r: Reals) -> list[int]:
+        """Which of some output radii are carried worst: of those near the axis, if there are any."""
+        return self.core.hardest(r[: max(1, np.count_nonzero(r <= self.inner * abs(self.section.flat.a)))])
 
     def phases(self, reach: float) -> float:
         """Phases [rad] within the windows only: the large ones cancel before they are rounded."""
@@ -87,19 +92,20 @@ class Nearby:
         near = r <= self.inner * abs(self.section.flat.a)
         out = np.empty((len(self.section.charges), len(r)), dtype=complex)
         if near.any():
-            out[:, near] = self._core(r[near])
+            out[:, near] = self.core(r[near])
         for some in np.array_split(np.flatnonzero(~near), 1 + np.count_nonzero(~near) // 1024):
             if len(some):
                 out[:, some] = self._image(r[some]) + self._axis_wave(r[some])
         return out
 
-    def _core(self, r: Reals) -> Complexes:
+    @cached_property
+    def core(self) -> Collins:
+        """The section that places near the axis are reached by: all of the light around it, up to a soft end."""
         start = self.inner + (self.middle - EDGE) / self.root
         end = start + 2 * EDGE / self.root
-        profile = self.section.profile
         if self.section.taper and self.section.taper.start < end:
-            return self.section(r)
-        return replace(self.section, profile=profile.clipped(0.0, end), taper=Taper(start, end))(r)
+            return self.section
+        return replace(self.section, profile=self.section.profile.clipped(0.0, end), taper=Taper(start, end))
 
     def _image(self, r: Reals) -> Complexes:
         """The window about the geometric image, by the branch of the Bessel function that is stationary there."""

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import math
+from dataclasses import dataclass
 
 import numpy as np
 
@@ -16,31 +17,69 @@ __all__ = ["Orders", "circular_field", "corner", "smooth_images", "stokes_of"]
 Orders = tuple[tuple[int, int], ...]
 
 
-def _halves(x: Reals) -> tuple[Reals, np.ndarray[tuple[int], np.dtype[np.intp]]]:
-    """Distinct |x| and where each x finds its own: a picture about the axis needs a quarter of the radii."""
-    if len(x) > 1 and np.array_equal(x, -x[::-1]):
-        half = x[len(x) // 2 :]
-        place = np.arange(len(x)) - len(x) // 2
-        return half, np.where(place < 0, -place - 1 + len(x) % 2, place)
-    return x, np.arange(len(x))
+@dataclass(frozen=True)
+class _Side:
+    """Places along an axis that are those of the positive side, as they are or mirrored: out[into] = sign * x[of]."""
+
+    sign: int
+    into: slice
+    of: slice
+
+
+WHOLE = slice(None)
+
+
+def _sides(x: Reals) -> tuple[Reals, list[_Side]]:
+    """Distinct |x| and who has them: a picture about the axis needs a quarter of the radii."""
+    half, odd = divmod(len(x), 2)
+    if not half or not np.array_equal(x, -x[::-1]):
+        return x, [_Side(1, WHOLE, WHOLE)]
+    return x[half:], [_Side(1, slice(half, None), WHOLE), _Side(-1, slice(half - 1, None, -1), slice(odd, None))]
 
 
 def circular_field(table: Table, orders: Orders, x: Reals, y: Reals) -> Complexes:
-    """(E_L, E_R) at columns x and rows y [m], relative to the reference front; shape (2, ny, nx)."""
-    (xs, column), (ys, row) = _halves(x), _halves(y)
-    r = np.hypot(xs, ys[:, np.newaxis])
-    values = table(r)
-    unit = x + 1j * y[:, np.newaxis]
-    unit /= np.where(unit == 0, 1, abs(unit))
-    turns = _powers(unit, {l for _, l in orders})
-    field = np.zeros((2, len(y), len(x)), dtype=complex)
-    for value, (hand, l) in zip(values, orders, strict=True):
-        full = value.take(column, axis=1).take(row, axis=0) if value.shape != field.shape[1:] else value
-        field[hand] += full if l == 0 else full * turns[l]
-    return field
+    """(E_L, E_R) at columns x and rows y [m], relative to the reference front; shape (2, ny, nx).
+
+    Where x changes its sign exp(i l phi) becomes (-1)^l exp(-i l phi), and exp(-i l phi) where y does: two sums, one
+    with each sense of phi, and one more of each for odd l, make all four quarters.
+    """
+    (xs, across), (ys, down) = _sides(x), _sides(y)
+    senses = (1,) if len(across) == len(down) == 1 else (1, -1)
+    sums = _sums(table, orders, xs + 1j * ys[:, np.newaxis], senses)
+    out = (np.empty if sums else np.zeros)((2, len(y), len(x)), dtype=complex)
+    for column in across:
+        for row in down:
+            place, quarter = out[:, row.into, column.into], (WHOLE, row.of, column.of)
+            for count, (parity, fields) in enumerate(sums.items()):
+                field, sign = fields[senses.index(column.sign * row.sign)][quarter], column.sign**parity
+                np.add(place, sign * field, out=place) if count else np.multiply(sign, field, out=place)
+    return out
 
 
-def _powers(unit: Complexes, charges: set[int]) -> dict[int, Complexes]:
+def _sums(table: Table, orders: Orders, places: Complexes, senses: tuple[int, ...]) -> dict[int, Complexes]:
+    """For each parity of l: (E_L, E_R) of these harmonics at places x + i y, phi counted in each sense.
+
+    Shapes times turns are made once, and one matrix product adds them up, shape (senses, 2, ny, nx).
+    """
+    r: Reals = np.abs(places)
+    shapes, turns = table.shapes(r), _turns(places / np.where(r == 0, 1, r), {l * s for _, l in orders for s in senses})
+    parts = [
+        (hand, l, j, row[j]) for (hand, l), row in zip(orders, table.parts(), strict=True) for j in row.nonzero()[0]
+    ]
+    sums = {}
+    for parity in sorted({l % 2 for _, l, _, _ in parts}):
+        some = [part for part in parts if part[1] % 2 == parity]
+        column = {key: i for i, key in enumerate(sorted({(j, l * s) for _, l, j, _ in some for s in senses}))}
+        waves = np.stack([shapes[j] * turns[l] if l else shapes[j] for j, l in column])
+        matrix = np.zeros((len(senses), 2, len(column)), dtype=complex)
+        for hand, l, j, number in some:
+            for i, sense in enumerate(senses):
+                matrix[i, hand, column[j, l * sense]] += number
+        sums[parity] = np.tensordot(matrix, waves, axes=1)
+    return sums
+
+
+def _turns(unit: Complexes, charges: set[int]) -> dict[int, Complexes]:
     """exp(i l phi) by products, each |l| from the one before."""
     out, power = {}, np.ones_like(unit)
     for l in range(1, max((abs(l) for l in charges), default=0) + 1):

@@ -22,21 +22,23 @@ SETTLED = 2e-13  # of the peak: twice what the panels themselves are settled to
 
 @dataclass(frozen=True, eq=False)
 class Table:
-    """Polynomials on equal cells from ``start`` to ``reach``.
+    """Polynomials on equal cells from ``start`` to ``reach``, and functions that are combinations of them.
 
     Parameters
     ----------
     start : innermost radius [m].
     reach : outermost radius [m].
-    powers : coefficients of 1, t, t^2 ... with t in [-1, 1] on each cell, shape (functions, cells, POINTS).
+    powers : coefficients of 1, t, t^2 ... with t in [-1, 1] on each cell, shape (shapes, cells, POINTS).
+    numbers : what each function takes of each shape, (functions, shapes); None if the shapes are the functions.
     """
 
     start: float
     reach: float
     powers: Complexes
+    numbers: Complexes | None = None
 
-    def __call__(self, r: Reals) -> Complexes:
-        """Values at radii [m], shape (functions, *r.shape); zero inside ``start`` and outside ``reach``."""
+    def shapes(self, r: Reals) -> Complexes:
+        """Shapes at radii [m], shape (shapes, *r.shape); zero inside ``start`` and outside ``reach``."""
         cells = self.powers.shape[1]
         place = (r - self.start) * (cells / (self.reach - self.start))
         cell = np.clip(place.astype(np.intp), 0, cells - 1)
@@ -47,9 +49,18 @@ class Table:
             values[:, dark] = 0
         return values
 
+    def __call__(self, r: Reals) -> Complexes:
+        """Functions at radii [m], shape (functions, *r.shape)."""
+        shapes = self.shapes(r)
+        return shapes if self.numbers is None else np.tensordot(self.numbers, shapes, axes=1)
+
     def combined(self, matrix: Complexes) -> Table:
         """Linear combinations: row i of the matrix gives new function i."""
-        return replace(self, powers=np.tensordot(matrix, self.powers, axes=1))
+        return replace(self, numbers=matrix if self.numbers is None else matrix @ self.numbers)
+
+    def parts(self) -> Complexes:
+        """What each function takes of each shape, (functions, shapes)."""
+        return np.eye(len(self.powers), dtype=complex) if self.numbers is None else self.numbers
 
 
 def _horner(rows: Complexes, t: Reals) -> Complexes:

@@ -21,6 +21,9 @@ __all__ = ["arrived", "images", "section_for", "share_of_error"]
 SAFETY = 10.0  # a dozen places seldom meet the worst one
 ROUNDING = 4 * np.finfo(float).eps
 
+MOST_LOOKED_AT = 256
+LOOKED_AT = (np.arange(6) + 0.5) / 6  # shares of a length
+
 TAPER = 0.7
 NEGLIGIBLE = 1e-12
 """Phase [rad] of diffraction that changes nothing, at the highest frequency, which has 1e-12 of the amplitude or less.
@@ -50,9 +53,17 @@ class _Arrival:
 
 @dataclass(frozen=True)
 class _Waist:
-    """A Gaussian beam about as wide as the light, behind the section: where to look and on which front."""
+    """A Gaussian beam about as wide as the light, behind the section: where to look and on which front.
+
+    Parameters
+    ----------
+    radius : that holds 86 % of the power [m].
+    reach : where it gets as dark as the light before the section is at its end [m].
+    curvature : of its front [1/m].
+    """
 
     radius: float
+    reach: float
     curvature: float
 
 
@@ -63,7 +74,23 @@ def _waist_behind(field: Harmonics) -> _Waist:
     radius = math.hypot(flat.a * inside, flat.b * spread)
     # Re 1/q behind the section, for a flat waist in front of it.
     curvature = (flat.a * flat.c * inside**2 + flat.b * flat.d * spread**2) / radius**2
-    return _Waist(radius, curvature)
+    return _Waist(radius, radius * field.profile.end / inside, curvature)
+
+
+def _front(field: Harmonics, waist: _Waist, settings: Settings, end: float) -> float:
+    """Curvature [1/m] of the front on which the light out to a radius [m] has the fewest fringes.
+
+    The beam has its own. A singular axis and rims send out a tail whose front is that of a wave from the axis, d/b;
+    far out only the tail is left, and on the front of the beam it would have k |difference| r^2/2 of fringes.
+    """
+    if end <= waist.reach:
+        return waist.curvature
+    flat = TravelLaw.lens(-field.curvature).then(field.section)
+    axis = flat.d / flat.b
+    places = np.concatenate([LOOKED_AT * waist.radius, (1 - 0.03 * LOOKED_AT) * end])
+    sizes = abs(section_for(field, axis, settings)(places)).max(axis=0)
+    tail = sizes[len(LOOKED_AT) :].max() > settings.settled * sizes.max()
+    return axis if tail else waist.curvature
 
 
 def _radius(profile: Profile) -> float:
@@ -95,7 +122,9 @@ def share_of_error(section: Collins | Nearby, profile: Profile) -> float:
     """
     nodes = profile.nodes
     # Golden steps through the nodes, weighted to the inside where the light is: no regularity to fall in with.
-    after = np.unique(((len(nodes) - 1) * ((0.618034 * np.arange(1, 14)) % 1) ** 2).astype(int))
+    after = ((len(nodes) - 1) * ((0.618034 * np.arange(1, 14)) % 1) ** 2).astype(int)
+    spread = np.linspace(0, len(nodes) - 2, MOST_LOOKED_AT).astype(int)
+    after = np.unique([*after, *spread[section.hardest(nodes[spread])]])
     places = (nodes[after] + nodes[after + 1]) / 2
     seen = abs(section.finer()(places) - profile(places)).max() / max(profile.peak, 1e-300)
     return SAFETY * float(seen) + ROUNDING * section.phases(profile.end)
@@ -123,7 +152,8 @@ def arrived(field: Harmonics, settings: Settings, *, start: float = 0.0, end: fl
 
 def _travelled(field: Harmonics, settings: Settings, start: float, end: float | None) -> _Arrival:
     waist = _waist_behind(field)
-    section = section_for(field, waist.curvature, settings)
+    curvature = waist.curvature if end is None else _front(field, waist, settings, end)
+    section = section_for(field, curvature, settings)
     if end is None:
         edges = _first_edges(start, max(4 * waist.radius, 2 * start))
         profile, rest, cut = extended(section, edges, settings)
@@ -131,7 +161,7 @@ def _travelled(field: Harmonics, settings: Settings, start: float, end: float | 
         profile, rest = resolved(section, _first_edges(start, end), settings)
         cut = False
     taper = Taper(TAPER * profile.end, profile.end) if cut else None
-    return _Arrival(profile, waist.curvature, taper, max(rest, settings.settled) + share_of_error(section, profile))
+    return _Arrival(profile, curvature, taper, max(rest, settings.settled) + share_of_error(section, profile))
 
 
 def _balanced(before: Harmonics, behind: Harmonics) -> Harmonics:
