@@ -16,6 +16,7 @@ from __future__ import annotations
 
 import statistics
 import time
+import warnings
 
 import numpy as np
 from scipy import fft
@@ -182,6 +183,8 @@ def main():
         [(name, *over(clock, name), *over(busy, name), wanted[name]) for name in ways],
     )
     print(f"  library and careful script differ by {apart:.1e} of the peak (means over pixels against their middles)\n")
+    # Grids of any size are timed below, some of them too coarse for their light.
+    warnings.simplefilter("ignore", fa.SamplingWarning)
     growth("samples and pixels, 6 settings", [
         (f"{n} x {n}", n * n, lambda n=n: library(bench(n), settings(6), n)) for n in (256, 512, 1024, 2048)
     ])  # fmt: skip

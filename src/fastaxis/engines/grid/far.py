@@ -172,8 +172,8 @@ def arriving(near: GridLight, names: tuple[str, ...], grid: Grid, *, by_hand: bo
     SamplingWarning, and raises SamplingError, where the light comes close to the limits of its samples.
     """
     unseen = FarField(near, Guard(0.0, 0.0, 0.0), grid)
-    rim = 0.0 if near.periodic else rim_of(*unseen.waves.profiles(LINES))
-    seen = replace(near, edge_power=max(near.edge_power, rim))
+    rims = () if near.periodic else (rim_of(*unseen.marginals), rim_of(*unseen.waves.profiles(LINES)))
+    seen = replace(near, edge_power=max(near.edge_power, *rims, 0.0))
     guard = check(seen, steps_of(*unseen.marginals), names, grid, by_hand=by_hand)
     done = FarField(seen, guard, grid)
     # What looking it over has found is not worked out again.
