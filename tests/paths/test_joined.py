@@ -160,3 +160,12 @@ def test_pixels_hold_the_integral_of_a_fringe(turns):
 
 def test_wide_fringes_need_fewer_places_than_pixels():
     assert len(Axis.of(np.arange(500.0), 1.0, 0.01).places) < 70
+
+
+@pytest.mark.parametrize("count", [1, 2, 7, 200])
+def test_places_wider_than_pixels_hold_the_integral_whatever_the_number_of_pixels(count):
+    middles, turns = (np.arange(count) - (count - 1) / 2) * 0.3 + 5.0, 0.01
+    axis = Axis.of(middles, 0.3, turns / 0.3)
+    found = axis.matrix @ np.cos(2 * np.pi * turns / 0.3 * axis.places + 0.3)
+    expected = 0.3 * np.sinc(turns) * np.cos(2 * np.pi * turns / 0.3 * middles + 0.3)
+    assert found == pytest.approx(expected, abs=1e-11)  # the kernel is good to 3e-12

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import math
 from dataclasses import dataclass
+from functools import lru_cache
 from typing import Any
 
 import numpy as np
@@ -62,18 +63,17 @@ class Axis:
         Fringes much wider than a pixel are a curve through places further apart than pixels; finer ones are
         integrated inside each pixel.
         """
-        inside = cls.inside(middles, pixel, frequency)
-        if frequency <= 0:
-            return inside
-        step = 1 / (FINER * frequency)
-        span = middles[-1] - middles[0] + pixel + 2 * REACH * step
-        wide = step > pixel / 2 and span / step + 2 < len(inside.places)
-        return _between(middles, pixel, step) if wide else inside
+        if frequency > 0:
+            step = _rounded(1 / (FINER * frequency * pixel))
+            count = len(middles) / step + 2 * REACH + 2
+            if step > 1 / 2 and count < len(middles) * _nodes_inside(pixel * frequency):
+                return _between(middles, pixel, step)
+        return cls.inside(middles, pixel, frequency)
 
     @classmethod
     def inside(cls, middles: Reals, pixel: float, frequency: float) -> Axis:
         """Places inside each pixel by itself; the pixels may lie anywhere."""
-        stretches = max(1, math.ceil(pixel * frequency / 4))
+        stretches = _stretches(pixel * frequency)
         side = pixel / stretches
         nodes, weights = gauss_legendre(nodes_needed(side * frequency))
         starts = (np.arange(stretches) - (stretches - 1) / 2) * side
@@ -83,23 +83,40 @@ class Axis:
         return cls((middles[:, np.newaxis] + offsets).ravel(), matrix)
 
 
+def _stretches(turns: float) -> int:
+    return max(1, math.ceil(turns / 4))
+
+
+def _nodes_inside(turns: float) -> int:
+    return _stretches(turns) * nodes_needed(turns / _stretches(turns))
+
+
+def _rounded(step: float) -> float:
+    """A little less, in steps of an eighth of an octave: beams much alike are read at the same places."""
+    return float(2 ** (math.floor(8 * math.log2(step)) / 8))
+
+
 def _between(middles: Reals, pixel: float, step: float) -> Axis:
-    """The integral over each pixel of the curve through equally spaced places about the camera.
+    """The integral over each pixel of the curve through places so many pixels apart about the camera."""
+    places, matrix = _interpolated(len(middles), step)
+    return Axis((middles[0] + middles[-1]) / 2 + places * pixel, matrix * pixel)
+
+
+@lru_cache(maxsize=16)
+def _interpolated(count: int, step: float) -> tuple[Reals, Any]:
+    """Places about a row of pixels and the matrix to means over each, all in pixels.
 
     The kernel is sinc(t) I0(b sqrt(1 - (t/REACH)^2))/I0(b) with b = pi REACH/2, t in places: for a curve of half the
     band of the places it interpolates to exp(-b). J. F. Kaiser and R. W. Schafer, IEEE Trans. Acoust. Speech Signal
     Process. 28, 105 (1980), for the window.
     """
-    low, high = middles[0] - pixel / 2 - REACH * step, middles[-1] + pixel / 2 + REACH * step
-    count = math.ceil((high - low) / step) + 1
-    places = (low + high) / 2 + (np.arange(count) - (count - 1) / 2) * step
-    nodes, weights = gauss_legendre(nodes_needed(pixel / step))
-    half = (len(middles) + 1) // 2
+    many = math.ceil(count / step + 2 * REACH) + 1
+    places, middles = ((np.arange(n) - (n - 1) / 2) * apart for n, apart in ((many, step), (count, 1.0)))
+    nodes, weights = gauss_legendre(nodes_needed(1 / step))
+    half = (count + 1) // 2  # pixels and places lie symmetric about the middle of the camera
     apart = (middles[:half, np.newaxis] - places) / step
-    kernel = sum(w * _kernel(apart + node * pixel / step / 2) for node, w in zip(nodes, weights, strict=True))
-    # Pixels and places lie symmetric about the middle of the camera.
-    rest = np.flip(kernel[: len(middles) - half])
-    return Axis(places, np.concatenate([kernel, rest]) * (pixel / 2))
+    kernel: Any = sum(w / 2 * _kernel(apart + node / step / 2) for node, w in zip(nodes, weights, strict=True))
+    return np.asarray(places), np.concatenate([kernel, np.flip(kernel[: count - half])])
 
 
 def _kernel(t: Reals) -> Reals:
