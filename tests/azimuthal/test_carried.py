@@ -10,12 +10,13 @@ from fastaxis.elements import (
 )  # fmt: skip
 from fastaxis.engines.azimuthal import AzimuthalField, Settings
 from fastaxis.engines.azimuthal.applying import apply
-from fastaxis.engines.azimuthal.carried import behind, edges_for, gathered
+from fastaxis.engines.azimuthal.carried import edges_for, gathered
 from fastaxis.engines.azimuthal.panels import sampled
 from fastaxis.engines.azimuthal.starting import started, started_with
 from fastaxis.laws import TravelLaw
 from fastaxis.light import Beam, FlatTop, Gaussian, H, HermiteGauss, L, LaguerreGauss, Raster, Term, elliptical
 from fastaxis.plan import make_plan
+from fastaxis.plan.advance import carried
 from fastaxis.units import deg, mm, nm, um
 
 WAVELENGTH = 632.8 * nm
@@ -86,7 +87,7 @@ def test_a_reference_beam_behind_a_lens():
     """A collimated beam of w in a lens has its focus w_f = lambda f/(pi w) and a quarter turn of Gouy phase."""
     term = Term(1, Gaussian(waist=1 * mm), H)
     focal = 0.25
-    there = behind(term, TravelLaw.lens(1 / focal).then(TravelLaw.free(focal)), WAVELENGTH)
+    there = carried(term, TravelLaw.lens(1 / focal).then(TravelLaw.free(focal)), WAVELENGTH)
     assert there.mode.width(WAVELENGTH) == pytest.approx(WAVELENGTH * focal / (math.pi * 1 * mm), rel=1e-14)
     # As from the lens: flat only if the waist had been a focal length in front of it.
     assert there.mode.curvature(WAVELENGTH) == pytest.approx(1 / focal, rel=1e-14)

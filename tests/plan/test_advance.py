@@ -11,7 +11,7 @@ import fastaxis as fa
 from fastaxis.engines import propagate
 from fastaxis.laws import TravelLaw
 from fastaxis.light import Beam, Gaussian, HermiteGauss, LaguerreGauss, Raster, Term
-from fastaxis.plan.advance import _carried, advance
+from fastaxis.plan.advance import carried, advance
 from fastaxis.plan.making import simplified, unfused
 from fastaxis.plan.proposing import sampling_for
 from fastaxis.plan.spread import of_beam
@@ -42,7 +42,7 @@ def plate():
 def test_a_mode_carried_through_a_section_is_what_free_travel_makes_of_it(mode, before, focal, after):
     """Beside the free travel of the family itself, which knows nothing of sections, and the thin lens on its field."""
     section = TravelLaw(1.0, before, 0.0, 1.0, before).then(TravelLaw(1.0, 0.0, -1 / focal, 1.0, 0.0))
-    term = _carried(Term(0.6 + 0.8j, mode, fa.H), section, WAVELENGTH)
+    term = carried(Term(0.6 + 0.8j, mode, fa.H), section, WAVELENGTH)
     x = np.linspace(-1, 1, 7) * mm
     y = x[:, None] * 0.7
     lens = np.exp(-1j * np.pi * (x**2 + y**2) / (WAVELENGTH * focal))
@@ -51,7 +51,7 @@ def test_a_mode_carried_through_a_section_is_what_free_travel_makes_of_it(mode, 
     # A lens turns the phase by up to some 30 rad here, of which the waist behind it keeps 13 digits.
     assert np.allclose(found, right, rtol=0, atol=1e-12 * abs(right).max())
     # Behind the lens it travels on as a mode of its own.
-    on = _carried(term, TravelLaw(1.0, after, 0.0, 1.0, after), WAVELENGTH)
+    on = carried(term, TravelLaw(1.0, after, 0.0, 1.0, after), WAVELENGTH)
     free = term.number * term.mode.moved(after).amplitude(x, y, WAVELENGTH)
     assert np.allclose(on.number * on.mode.amplitude(x, y, WAVELENGTH), free, rtol=0, atol=1e-12 * abs(free).max())
 

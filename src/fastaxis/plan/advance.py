@@ -16,7 +16,7 @@ from fastaxis.plan.plan import Branch, Plan
 from fastaxis.plan.sampling import Sampling
 from fastaxis.plan.steps import Step, Steps
 
-__all__ = ["advance"]
+__all__ = ["advance", "carried"]
 
 
 def advance(plan: Plan) -> Plan:
@@ -44,7 +44,7 @@ def _advanced(branch: Branch) -> Branch:
     end = travels[-1] + 1
     moving, kept = _parted(steps[:end])
     section = reduce(TravelLaw.then, (step.law for step in moving if isinstance(step.law, TravelLaw)))
-    beam = Beam(tuple(_carried(term, section, branch.wavelength) for term in branch.beam.terms))
+    beam = Beam(tuple(carried(term, section, branch.wavelength) for term in branch.beam.terms))
     names = tuple(dict.fromkeys(name for step in moving for name in step.names))
     sampling = _from(branch.sampling, end, len(kept))
     return replace(branch, beam=beam, steps=kept + steps[end:], sampling=sampling, opening=names)
@@ -69,7 +69,7 @@ def _from(sampling: Sampling, end: int, kept: int) -> Sampling:
     return replace(sampling, planes=(replace(here, hop=None), *[replace(here, hop=None)] * kept, *rest))
 
 
-def _carried(term: Term, section: TravelLaw, wavelength: float) -> Term:
+def carried(term: Term, section: TravelLaw, wavelength: float) -> Term:
     """A mode behind a section: of the same family, with another waist elsewhere and a phase.
 
     With 1/q = 1/R + i wavelength/(pi w^2) of the source and s = a + b/q, the width is w |s|, 1/q behind is

@@ -2,11 +2,9 @@
 
 from __future__ import annotations
 
-import cmath
 import math
 from collections.abc import Sequence
 from dataclasses import replace
-from typing import Any
 
 import numpy as np
 
@@ -17,7 +15,7 @@ from fastaxis.light.modes.family import GaussFamily
 from fastaxis.plan import JonesStep
 from fastaxis.plan.steps import Step, Steps
 
-__all__ = ["behind", "edges_for", "gathered"]
+__all__ = ["edges_for", "gathered"]
 
 
 def gathered(terms: Sequence[Term], steps: Steps) -> tuple[TravelLaw, Steps]:
@@ -40,21 +38,6 @@ def gathered(terms: Sequence[Term], steps: Steps) -> tuple[TravelLaw, Steps]:
         else:
             return section, (*left, *steps[place:])
     return section, tuple(left)
-
-
-def behind(term: Term, section: TravelLaw, wavelength: float) -> Term:
-    """A term whose mode is a Gaussian one, behind a section: the mode with another waist, and a phase.
-
-    1/q' = (c + d/q)/s with s = a + b/q, and each of the N = degree + 1 of the Gouy phase grows by arg s; a negative a
-    turns the light over, which that phase has in it. A. E. Siegman, Lasers (1986), section 20.4.
-    """
-    mode: Any = term.mode
-    before = mode.curvature(wavelength) + 1j * wavelength / (math.pi * mode.width(wavelength) ** 2)
-    stretch = section.a + section.b * before
-    after = stretch / (section.c + section.d * before)  # q = z - i rayleigh, z from the waist
-    moved = replace(mode, waist=math.sqrt(-after.imag * wavelength / math.pi), waist_at=-after.real)
-    turn = mode.gouy(wavelength) + cmath.phase(stretch) - moved.gouy(wavelength)
-    return replace(term, amplitude=term.number * cmath.exp(-1j * (mode.degree + 1) * turn), mode=moved)
 
 
 def edges_for(modes: Sequence[GaussFamily], wavelength: float, dark: float) -> Reals:

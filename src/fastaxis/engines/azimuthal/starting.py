@@ -9,7 +9,7 @@ from typing import Any
 import numpy as np
 
 from fastaxis.engines.azimuthal.applying import TO_CIRCULAR
-from fastaxis.engines.azimuthal.carried import behind, edges_for, gathered
+from fastaxis.engines.azimuthal.carried import edges_for, gathered
 from fastaxis.engines.azimuthal.harmonics import LEFT, RIGHT, Harmonics
 from fastaxis.engines.azimuthal.panels import ORDER, Complexes, Profile, Reals
 from fastaxis.engines.azimuthal.resolving import Settings, extended, resolved
@@ -18,6 +18,7 @@ from fastaxis.laws import Annulus, TravelLaw
 from fastaxis.light import Term
 from fastaxis.light.modes.family import GaussFamily
 from fastaxis.plan import Branch, JonesStep
+from fastaxis.plan.advance import carried
 from fastaxis.plan.steps import Steps
 
 __all__ = ["started"]
@@ -36,7 +37,7 @@ def started(branch: Branch, settings: Settings) -> tuple[Harmonics, Steps]:
     section, steps = gathered(branch.beam.terms, branch.steps)
     terms = branch.beam.terms
     if section != TravelLaw():
-        terms = tuple(behind(term, section, branch.wavelength) for term in terms)
+        terms = tuple(carried(term, section, branch.wavelength) for term in terms)
     return started_with(terms, branch, settings), steps
 
 
