@@ -2,13 +2,14 @@
 
 from __future__ import annotations
 
-from collections.abc import Callable, Sequence
+from collections.abc import Sequence
 from importlib import import_module
 from typing import Any
 
 import numpy as np
 from numpy.typing import NDArray
 
+from fastaxis.engines.joined.sight import Sight
 from fastaxis.light import Raster
 from fastaxis.plan.spread import Spread
 
@@ -19,7 +20,7 @@ Reals = NDArray[np.float64]
 BESIDE = 0.02  # of a pixel: how close the axis is passed, where directly behind a plate there may be a jump of phase
 
 
-def blockwise(images: Callable[[Reals, Reals], Reals], raster: Raster, spreads: Sequence[Spread]) -> Reals | None:
+def blockwise(seen: Sight, raster: Raster, spreads: Sequence[Spread]) -> Reals | None:
     """What each pixel collects, shape (images, ny, nx); None where even one pixel is no polynomial of a few degrees.
 
     How many nodes each block needs is tried on lines: from the axis to the corner, about which the light with
@@ -27,11 +28,12 @@ def blockwise(images: Callable[[Reals, Reals], Reals], raster: Raster, spreads: 
 
     Parameters
     ----------
-    images : pictures at columns x and rows y [m], shape (images, rows, columns), the first of them the brightest.
+    seen : the light, out to the corners of the raster.
+    raster : the camera.
     spreads : of the beams that meet.
     """
     blocks: Any = import_module("fastaxis.engines.azimuthal.blocks")
-    x, y = raster.x, raster.y
+    images, x, y = seen.images, raster.x, raster.y
     few_x, few_y = (_lines(blocks.lines_across(p), spreads, side, raster) for side, p in enumerate((x, y)))
     bright = images(x, few_y)
     peak = float(bright[0].max())
@@ -43,8 +45,12 @@ def blockwise(images: Callable[[Reals, Reals], Reals], raster: Raster, spreads: 
     )
     if rows is None:
         return None
-    out = np.empty((len(bright), *raster.shape))
-    blocks.collected(images, rows, columns, raster.pitch**2, out)
+    out, half = np.empty((len(bright), *raster.shape)), len(y) // 2
+    if not seen.even or raster.centre != (0.0, 0.0) or len(y) % 2:
+        blocks.collected(images, rows, columns, raster.pitch**2, out)
+    else:
+        blocks.collected(images, [b for b in rows if b.pixels.start >= half], columns, raster.pitch**2, out)
+        out[:, :half] = out[:, : half - 1 : -1, ::-1]
     return out
 
 

@@ -110,7 +110,7 @@ class JoinedField:
         reach = max(abs(raster.x).max(), abs(raster.y).max()) + raster.pitch / 2
         if any(engine != "modes" for engine in self.engines):
             seen = sight(self.arms, self.mixtures, reach)
-            image = blockwise(seen.images, raster, self.extent.spreads)
+            image = blockwise(seen, raster, self.extent.spreads)
             if image is not None:
                 return seen.polarized(image)
         if all(engine == "azimuthal" for engine in self.engines):

@@ -27,6 +27,10 @@ SAMPLED = 1 << 18  # of samples, for which each strip asks for matrices of its o
 class Sight(Protocol):
     """What is looked at."""
 
+    @property
+    def even(self) -> bool:
+        """Whether half a turn about the axis changes nothing."""
+
     def images(self, x: Reals, y: Reals) -> Reals:
         """Real pictures at columns x and rows y, shape (images, ny, nx), the first of them S0 or a share of it."""
 
@@ -40,6 +44,7 @@ class _Fields:
 
     arms: Sequence[PlaneField]
     mixtures: Complexes
+    even: bool
 
     def images(self, x: Reals, y: Reals) -> Reals:
         out = np.empty((4, len(y), len(x)))
@@ -60,6 +65,7 @@ class _OneState:
     scalars: Sequence[Any]
     mixtures: Complexes
     state: Complexes
+    even: bool
 
     def images(self, x: Reals, y: Reals) -> Reals:
         # Irradiance does not ask which front it is relative to; the most curved one saves harmonics a product.
@@ -85,11 +91,17 @@ def sight(arms: Sequence[Any], mixtures: Complexes, farthest: float) -> Sight:
     scalars: list[Any] = [arm.scalar(math.sqrt(2) * reach) if hasattr(arm, "scalar") else None for arm in arms]
     shares = None if any(scalar is None for scalar in scalars) else _shares([scalar.state for scalar in scalars])
     if shares is not None:
-        return _OneState(scalars, mixtures * shares, scalars[0].state)
+        return _OneState(scalars, mixtures * shares, scalars[0].state, _even(arms))
     corner = np.array([reach])
     for arm in arms:  # engines that work out a plane as far as they are asked do so once if the corner comes first
         arm.at(corner, corner)
-    return _Fields(arms, mixtures)
+    return _Fields(arms, mixtures, _even(arms))
+
+
+def _even(arms: Sequence[Any]) -> bool:
+    """Harmonics that half a turn changes alike, exp(i l pi), keep their irradiance."""
+    charges = [arm.harmonics.charges if hasattr(arm, "harmonics") else (0, 1) for arm in arms]
+    return len({l % 2 for some in charges for l in some}) == 1
 
 
 def _shares(states: Sequence[Complexes]) -> Complexes | None:
