@@ -107,6 +107,31 @@ def _read(exposure_time, power):
     return line(fa.QPlate(q=0.5, name="qp"), camera, power=power)
 
 
+@pair("relay spacing", "l2", "medium")
+def relay_100_mm_too_long(wrong):
+    return _relay(400 + (100 if wrong else 0), 200)
+
+
+@pair("relay spacing", "cam", "medium")
+def camera_100_mm_behind_a_relay(wrong):
+    return _relay(400, 300 if wrong else 200)
+
+
+@pair("relay spacing", "qp", "low")
+def plate_too_close_to_a_relay(wrong):
+    return _relay(400, 200, before=100 if wrong else 200)
+
+
+def _relay(apart, behind, before=200):
+    """A plate, lenses of 200 mm, a camera; distances in millimetres."""
+    return line(
+        fa.QPlate(q=0.5, name="qp"),
+        fa.FreeSpace(before * mm), fa.Lens(focal=200 * mm, name="l1"),
+        fa.FreeSpace(apart * mm), fa.Lens(focal=200 * mm, name="l2"),
+        fa.FreeSpace(behind * mm), CAMERA, waist=0.5 * mm,
+    )  # fmt: skip
+
+
 @pair("saturation", "cam", "high")
 def exposure_of_seconds_for_milliseconds(wrong):
     return _read(1.0 if wrong else 1e-3, power=20 * nW)
