@@ -23,7 +23,9 @@ Reals: TypeAlias = NDArray[np.float64]
 RANDOM, FARTHEST = 12, 4
 SPREAD = 200  # draws that the spread is judged from; that knows it to 5 %
 MORE = 8  # times as many points as a polynomial begins with, at most
-SLOWER = 0.7  # of the error is left after as many points more; else they are lost on it
+# A surface is given up when so many times as many points as it began with have not taken a tenth off its error: even
+# then they are few beside the draws.
+PATIENCE, BETTER = 2, 0.9
 # Samples off the axis are good to 1e-3 or so: a millionth of what is read, or of a radian, is nothing to improve on.
 NOTHING = 1e-6
 
@@ -85,15 +87,13 @@ def _tried(made: Responding, exact: Anew, stiff: tuple[str, ...], wish: Wish) ->
     if len(start) > most or not all(map(made.take, start)):
         return None
     check = _Check(made, exact, wish)
-    before, last = np.inf, len(start)
-    while not check.good.all() and len(made.polynomials) < most:
-        if len(made.polynomials) >= last:
-            if check.worst > SLOWER * before:
-                break
-            before, last = check.worst, last + len(start)
+    best, since = check.worst, len(start)
+    while not check.good.all() and len(made.polynomials) < min(most, since + PATIENCE * len(start)):
         if not all(map(made.take, made.polynomials.next())):
             return None
         check.look()
+        if check.worst < BETTER * best:
+            best, since = check.worst, len(made.polynomials)
     return check.result(exact, stiff)
 
 
