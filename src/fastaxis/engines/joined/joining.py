@@ -18,6 +18,7 @@ from fastaxis.engines.joined.coherence import mixtures
 from fastaxis.engines.joined.extent import Extent
 from fastaxis.engines.joined.looking import Look, candidates, settled
 from fastaxis.engines.joined.overlap import total_of_sums
+from fastaxis.engines.joined.sampled import on_samples
 from fastaxis.engines.joined.sight import Sight, sight
 from fastaxis.errors import ParameterError
 from fastaxis.light import Raster
@@ -108,6 +109,9 @@ class JoinedField:
         if raster.shape == (1, 1) and half and raster.pitch / 2 >= half + max(map(abs, raster.centre)):
             return self.total_stokes[:, np.newaxis, np.newaxis]
         reach = max(abs(raster.x).max(), abs(raster.y).max()) + raster.pitch / 2
+        image = on_samples(self.arms, self.engines, self.mixtures, self.extent.spreads, raster)
+        if image is not None:
+            return image
         if any(engine != "modes" for engine in self.engines):
             seen = sight(self.arms, self.mixtures, reach)
             image = blockwise(seen, raster, self.extent.spreads)
