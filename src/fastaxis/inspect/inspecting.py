@@ -44,7 +44,7 @@ def inspect_train(train: Any) -> Inspection:
         return Inspection(train.name, tuple(found), ("all that follows the light: mend the wiring first", *NEVER))
     if train.symbols:
         return _with_letters(train, found)
-    found += _following_the_light(train)
+    found += dict.fromkeys(_following_the_light(train))  # of paths that are alike each finding once
     return Inspection(train.name, tuple(found), (*_without_sensor(train), *NEVER))
 
 

@@ -6,7 +6,7 @@ import math
 
 from fastaxis.train.lab_values import lab_length
 
-__all__ = ["degrees", "length", "mm", "percent", "seconds", "watts"]
+__all__ = ["degrees", "length", "many", "mm", "percent", "seconds", "watts"]
 
 PREFIXES = ((1.0, ""), (1e-3, "m"), (1e-6, "µ"), (1e-9, "n"), (1e-12, "p"))
 
@@ -71,3 +71,15 @@ def mm(value: float) -> str:
     '2.54*mm'
     """
     return f"{value * 1e3:.4g}*mm"
+
+
+def many(number: float) -> str:
+    """A large number to three digits.
+
+    >>> many(78123.4), many(8.2e8), many(3.27)
+    ('78100', '8.2e8', '3.27')
+    """
+    if abs(number) >= 1e6:
+        mantissa, exponent = f"{number:.2e}".split("e")
+        return f"{float(mantissa):g}e{int(exponent)}"
+    return f"{float(f'{number:.3g}'):g}" if abs(number) < 1e4 else f"{float(f'{number:.3g}'):.0f}"

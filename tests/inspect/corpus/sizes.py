@@ -112,6 +112,16 @@ def relay_100_mm_too_long(wrong):
     return _relay(400 + (100 if wrong else 0), 200)
 
 
+@pair("relay spacing", "l2", "low")
+def relay_too_long_behind_a_slit(wrong):
+    apart = (520 if wrong else 400) * mm
+    return line(
+        fa.Slit(width=0.8 * mm, name="slit"), fa.FreeSpace(200 * mm), fa.Lens(focal=200 * mm, name="l1"),
+        fa.FreeSpace(apart), fa.Lens(focal=200 * mm, name="l2"), fa.FreeSpace(200 * mm), fa.HalfWavePlate(fast=0),
+        fa.FreeSpace((70 if wrong else 0) * mm), CAMERA, waist=0.5 * mm,
+    )  # fmt: skip
+
+
 @pair("relay spacing", "cam", "medium")
 def camera_100_mm_behind_a_relay(wrong):
     return _relay(400, 300 if wrong else 200)

@@ -67,7 +67,7 @@ def _seen(part: Visit, camera: Visit, image: Image) -> str:
 
 def _instead(camera: Visit) -> str:
     plane = plane_shown(camera)
-    return f"; it shows {plane}" if plane else ""
+    return f"; {camera.name} shows {plane}" if plane else ""
 
 
 def waist_beyond(visit: Visit) -> tuple[float, float]:

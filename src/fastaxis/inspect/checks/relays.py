@@ -11,11 +11,13 @@ from fastaxis.inspect.bench import Bench, Visit
 from fastaxis.inspect.finding import Finding, Severity
 from fastaxis.inspect.imaging import image_of, image_words, plane_shown
 from fastaxis.inspect.words import length, mm
+from fastaxis.laws import ScalarLaw
 
 __all__ = ["relays"]
 
 # Lens positions on a rail are good to about a millimetre in 300.
 SET, NEARLY = 0.004, 0.15
+PERHAPS = 0.35  # of the spacing of a relay that has one of its ends right
 MEANT = 0.01  # of a focal length: a distance so close to it was chosen for it
 
 
@@ -63,7 +65,7 @@ class _Relay:
             return ""
         image = image_of(self.part, self.camera)
         shown = "" if image.sharp else plane_shown(self.camera)
-        return f"; {image_words(self.part, self.camera)}" + (f"; it shows {shown}" if shown else "")
+        return f"; {image_words(self.part, self.camera)}" + (f"; {self.camera.name} shows {shown}" if shown else "")
 
 
 def relays(bench: Bench) -> Iterator[Finding]:
@@ -81,17 +83,19 @@ def relays(bench: Bench) -> Iterator[Finding]:
 
 def _judged(relay: _Relay) -> Iterator[Finding]:
     off = abs(relay.apart / relay.total - 1)
-    both = relay.meant(relay.object_off, relay.first) and relay.meant(relay.camera_off, relay.second)
-    if SET < off < NEARLY or (off >= NEARLY and both):
-        yield _spacing(relay)
+    ends = relay.meant(relay.object_off, relay.first) + relay.meant(relay.camera_off, relay.second)
+    if SET < off < NEARLY or (off >= NEARLY and ends == 2):
+        yield _spacing(relay, Severity.MEDIUM)
+    elif NEARLY <= off < PERHAPS and ends == 1:
+        yield _spacing(relay, Severity.LOW)
     elif off <= SET:
         yield from _one_end(relay)
 
 
-def _spacing(relay: _Relay) -> Finding:
+def _spacing(relay: _Relay, severity: Severity) -> Finding:
     first, second = relay.first.name, relay.second.name
     return Finding(
-        severity=Severity.MEDIUM,
+        severity=severity,
         check="relay spacing",
         element=second,
         rule="two lenses pass a collimated beam on as one, and phase fronts unbent, when they stand f1 + f2 apart",
@@ -138,10 +142,10 @@ def _lens_before(visit: Visit) -> Visit | None:
 
 
 def _part_before(first: Visit) -> Visit | None:
-    """The last part that gives the beam a shape, with no lens on the way."""
+    """The last part that gives the beam a shape or stops some of it, with no lens on the way."""
     before = first.previous
     while before is not None and not isinstance(before.element, Lens):
-        if before.shapes:
+        if before.shapes or any(isinstance(law, ScalarLaw) and law.stop is not None for law in before.laws):
             return before
         before = before.previous
     return None

@@ -16,7 +16,7 @@ from fastaxis.elements.sensor import Sensor
 from fastaxis.errors import FastaxisError
 from fastaxis.inspect.bench import Bench
 from fastaxis.inspect.finding import Finding, Severity
-from fastaxis.inspect.words import percent, seconds
+from fastaxis.inspect.words import many, percent, seconds
 
 __all__ = ["peaks", "saturation"]
 
@@ -69,12 +69,12 @@ def _told(shots: Exposure, sensor: Sensor, time: float | None) -> Iterator[Findi
             f"its pixels hold {sensor.most_electrons:.0f} electrons: expose for less, or put a neutral density of "
             f"{_density(fill):g} before it",
             got=f"{_electrons(brightest, shots, sensor, time)} electrons in the brightest pixel after {seconds(time)}, "
-            f"{fill:.3g} times as many as it holds", fix=_dimmer(shots, time, fill),
+            f"{many(fill)} times as many as it holds", fix=_dimmer(shots, time, fill),
         )  # fmt: skip
     elif (bare_fill := time / fills_well_after(bare, sensor, shots.wavelength)) > 1:
         yield _finding(
             shots, Severity.LOW, "saturation", "an analyzer takes part of the light: a frame without one is brighter",
-            got=f"without an analyzer the brightest pixel gets {bare_fill:.3g} times what it holds in {seconds(time)}",
+            got=f"in {seconds(time)} without an analyzer the brightest pixel gets {many(bare_fill)} times its fill",
             fix=_dimmer(shots, time, bare_fill),
         )  # fmt: skip
     elif fill < DIM:
@@ -92,7 +92,7 @@ def _finding(shots: Exposure, severity: Severity, check: str, rule: str, *, got:
 
 
 def _electrons(power: float, shots: Exposure, sensor: Sensor, time: float) -> str:
-    return f"{electrons_of(power, sensor, wavelength=shots.wavelength, exposure_time=time):.3g}"
+    return many(float(electrons_of(power, sensor, wavelength=shots.wavelength, exposure_time=time)))
 
 
 def _time(shots: Exposure, time: float) -> str:
