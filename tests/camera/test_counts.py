@@ -171,3 +171,15 @@ def test_the_fix_for_a_camera_without_a_sensor_gives_it_one():
         train.expose("cam", [fa.H]).counts("H", exposure_time=1 * ms)
     better = eval(refusal.value.fix, {"train": train, "fa": fa})
     assert better.expose("cam", [fa.H]).counts("H", exposure_time=1 * ms).counts.any()
+
+
+def test_a_detector_is_read_with_a_sensor_given():
+    train = fa.Train(wavelength=633e-9).along(
+        fa.Laser(waist=1e-3, power=1e-12, name="laser"), fa.Detector(name="meter")
+    )
+    shots = train.expose("meter", [fa.H])
+    with pytest.raises(ParameterError) as refusal:
+        shots.electrons("H")
+    read = eval(refusal.value.fix, {"shots": shots, "fa": fa, "ms": ms})
+    # 1 pW for 1 ms at 633 nm: 3187 photons, 0.6 of them
+    assert read.electrons.sum() == pytest.approx(1912, abs=1)

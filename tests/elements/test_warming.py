@@ -54,6 +54,16 @@ def test_warmer_by_t_is_the_plate_of_another_wavelength(jones):
     assert jones(warm) == pytest.approx(jones(cold, wavelength=532 * nm / factor), abs=1e-13)
 
 
+def test_two_crossed_plates_of_one_material_drift_as_their_difference(jones):
+    """The usual zero-order plate: 10.25 waves and 10 waves crossed are a quarter wave and drift as one."""
+    warm = {"design": 532 * nm, "drift": QUARTZ, "temperature": 343.15}
+    pair = jones(Retarder(fast=90 * deg, retardance=0, order=10, **warm)) @ jones(
+        Retarder(fast=0, retardance=90 * deg, order=10, **warm)
+    )
+    assert pair == pytest.approx(jones(plate(0, 343.15)), abs=1e-13)
+    assert pair != pytest.approx(jones(plate(10, 343.15)), abs=0.1)
+
+
 def test_q_plates_and_patterned_plates_follow_too(jones):
     warm = {"drift": -2e-3, "temperature": 303.15}
     assert QPlate(q=0.5, **warm).unconverted(532 * nm) == pytest.approx(math.sin(0.01 * math.pi) ** 2, rel=1e-12)

@@ -84,3 +84,8 @@ def test_a_turned_q_plate(q, g):
 
 def test_turning_a_q_plate_of_q_1_does_nothing():
     assert turn_of(fa.QPlate(q=1, offset=10 * deg)) is None
+
+
+def test_an_even_modulator_is_turned_by_its_axis():
+    assert turn_of(fa.PhaseModulator(axis=30 * deg, phase=0.5)).angle == 30 * deg
+    assert turn_of(fa.PhaseModulator(axis=30 * deg, phase=lambda x, y: x + y)) is None

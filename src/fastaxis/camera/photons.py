@@ -45,11 +45,14 @@ def read_with(shots: Exposure, sensor: Sensor | None, exposure_time: float | Non
     """
     sensor = shots.sensor if sensor is None else sensor
     if sensor is None:
+        told = "fa.Sensor(full_well=10000, quantum_efficiency=0.6)"
         raise ParameterError(
-            "electrons and counts need the sensor's data, declared with the camera",
+            "electrons and counts need the sensor's data, declared with the camera or given here",
             got=f"{shots.target}: no sensor",
-            fix=f'train.with_changes({{"{shots.target or "cam"}.sensor": '
-            "fa.Sensor(full_well=10000, quantum_efficiency=0.6)})",
+            # A detector has none to be declared.
+            fix=f'shots.counts("{shots.labels[0]}", exposure_time=1*ms, sensor={told})'
+            if shots.pixel is None
+            else f'train.with_changes({{"{shots.target or "cam"}.sensor": {told}}})',
         )
     time = shots.exposure_time if exposure_time is None else exposure_time
     if time is None:

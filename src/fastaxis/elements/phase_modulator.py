@@ -9,7 +9,7 @@ from fastaxis import checks
 from fastaxis.elements.base import ThroughElement
 from fastaxis.laws import Amplitude, AxisLaw
 from fastaxis.light import State, linear
-from fastaxis.maths import Scalar
+from fastaxis.maths import Pattern, Scalar
 
 __all__ = ["PhaseModulator"]
 
@@ -70,6 +70,11 @@ class PhaseModulator(ThroughElement):
     @property
     def expected(self) -> State:
         return linear(self.axis) if self.expects is None else self.expects
+
+    @property
+    def uniform(self) -> bool:
+        """Whether the phase is the same all over the part."""
+        return not isinstance(self.phase, Pattern)
 
     def laws(self, wavelength: Scalar) -> tuple[AxisLaw, ...]:
         along, across = Amplitude(self.transmission, self.phase), Amplitude(self.transmission)

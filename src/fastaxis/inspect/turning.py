@@ -7,6 +7,7 @@ from dataclasses import dataclass
 
 from fastaxis.elements.apertures import KnifeEdge, Slit
 from fastaxis.elements.base import Element
+from fastaxis.elements.phase_modulator import PhaseModulator
 from fastaxis.elements.polarizer import Polarizer
 from fastaxis.elements.q_plate import QPlate
 from fastaxis.elements.retarder import Retarder
@@ -41,7 +42,7 @@ def turn_of(element: Element) -> Turn | None:
     if isinstance(element, Retarder):
         parameter = "fast" if element.slow is None else "slow"
         return _plain(parameter, float(getattr(element, parameter)), math.pi)
-    if isinstance(element, Polarizer):
+    if isinstance(element, Polarizer) or (isinstance(element, PhaseModulator) and element.uniform):
         return _plain("axis", float(element.axis), math.pi)
     if isinstance(element, QPlate) and element.q != 1:
         gearing = 1 - float(element.q)
