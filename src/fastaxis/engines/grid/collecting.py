@@ -2,27 +2,31 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterator
+from collections.abc import Callable, Iterator
 from dataclasses import dataclass
-from typing import Any
+from functools import partial
+from typing import Any, TypeAlias
 
 import numpy as np
 from numpy.typing import NDArray
 from scipy import fft
 
 from fastaxis.engines.grid.kernel import Block
+from fastaxis.engines.grid.waves import FarRows
 from fastaxis.engines.grid.workers import WORKERS, strips, together
 from fastaxis.light import stokes
 
-__all__ = ["Collected"]
+__all__ = ["Collected", "stokes_from"]
 
-Images = NDArray[Any]
-Complexes = NDArray[Any]
+Images: TypeAlias = NDArray[Any]
+Complexes: TypeAlias = NDArray[Any]
+Rows: TypeAlias = Callable[[int, int], Complexes]
+"""Samples from one row to before another; rows beyond an end are those of the other end."""
 
 # Multiplications in one product: few enough for the linear algebra library not to start threads inside ours, which on
 # a busy machine wait for each other. Many are asked for in one call, so that our threads don't queue for Python.
 PRODUCT = 1 << 18
-OVERLAP = 8  # rows or columns taken at a time, in units of those that have to be taken again
+OVERLAP = 16  # rows or columns taken at a time, in units of those that have to be taken again
 
 
 @dataclass(frozen=True, eq=False)
@@ -45,16 +49,54 @@ class Collected:
 
     def stokes(self) -> Images:
         """Watts per pixel of S0 .. S3, shape (4, ny, nx)."""
-        kind = self.samples.real.dtype
-        shape = (self.rows[-1].pixels.stop, self.columns[-1].pixels.stop)
-        out = np.empty((4 if self.jones is None else 1, *shape), dtype=kind)
-        rows = [[block.every(self.parts, part, kind) for block in self.rows] for part in range(self.parts)]
-        for across, moved in _moved(self.samples, self.parts, axis=2):
-            for columns in _groups([block.every(self.parts, across, kind) for block in self.columns]):
+        if self.parts == 1:
+            return stokes_from(self.samples, self.jones, self.rows, self.columns)
+        out = _images(len(self.samples), self.samples.dtype, self.rows, self.columns)
+        self._collect_moved(self.samples, out)
+        return _polarized(out, self.jones)
+
+    def _collect_moved(self, samples: Complexes, out: Images) -> None:
+        """From samples and from these moved by each part of one, some columns at a time."""
+        rows = [[block.every(self.parts, part, out.dtype) for block in self.rows] for part in range(self.parts)]
+        for across, moved in _moved(samples, self.parts, axis=2):
+            for columns in _groups([block.every(self.parts, across, out.dtype) for block in self.columns]):
                 near = _wrapped(moved, columns[0].first, columns[-1].last, axis=2)
-                for down, samples in _moved(near, self.parts, axis=1):
-                    _collect(out, samples, rows[down], columns, more=bool(across or down))
-        return out if self.jones is None else np.multiply.outer(stokes(self.jones).astype(kind), out[0])
+                for down, there in _moved(near, self.parts, axis=1):
+                    _collect(out, partial(_wrapped, there, axis=1), rows[down], columns, more=bool(across or down))
+
+
+def stokes_from(
+    samples: Complexes | FarRows,
+    jones: NDArray[np.complex128] | None,
+    rows: tuple[Block, ...],
+    columns: tuple[Block, ...],
+) -> Images:
+    """Watts per pixel of S0 .. S3, shape (4, ny, nx), from samples as dense as irradiance asks for.
+
+    Parameters
+    ----------
+    samples : as of :class:`Collected`; or what gives them row by row, with any phase that both components share.
+    """
+    kind = np.empty(0, samples.dtype).real.dtype
+    out = _images(1 if jones is not None else 2, samples.dtype, rows, columns)
+    own = [[block.every(1, 0, kind) for block in line] for line in (rows, columns)]
+    _collect(out, partial(_near, samples, own[1]), *own, more=False)
+    return _polarized(out, jones)
+
+
+def _images(components: int, kind: np.dtype[Any], rows: tuple[Block, ...], columns: tuple[Block, ...]) -> Images:
+    shape = (rows[-1].pixels.stop, columns[-1].pixels.stop)
+    return np.empty((4 if components == 2 else 1, *shape), dtype=np.empty(0, kind).real.dtype)
+
+
+def _polarized(images: Images, jones: NDArray[np.complex128] | None) -> Images:
+    return images if jones is None else np.multiply.outer(stokes(jones).astype(images.dtype), images[0])
+
+
+def _near(samples: Complexes | FarRows, columns: list[Block], first: int, last: int) -> Complexes:
+    """Some rows, from the first sample that some columns of pixels need to the last one."""
+    rows = samples.rows(first, last) if isinstance(samples, FarRows) else _wrapped(samples, first, last, axis=1)
+    return _wrapped(rows, columns[0].first, columns[-1].last, axis=2)
 
 
 def _moved(samples: Complexes, parts: int, axis: int) -> Iterator[tuple[int, Complexes]]:
@@ -78,12 +120,13 @@ def _turn(count: int, part: float) -> NDArray[np.complex128]:
     return turn
 
 
-def _collect(out: Images, samples: Complexes, rows: list[Block], columns: list[Block], *, more: bool) -> None:
+def _collect(out: Images, samples: Rows, rows: list[Block], columns: list[Block], *, more: bool) -> None:
     """What some columns of pixels collect from samples that begin with the first that they need; added if more."""
     start, stop = columns[0].pixels.start, columns[-1].pixels.stop
     for group in _groups(rows):
         first, last = group[0].first, group[-1].last
-        across = _across(samples, first, last, columns)
+        across = np.empty((len(out), last - first, stop - start), dtype=out.dtype)
+        _fill(across, samples, first, columns)
 
         def down(block: Block, first: int = first, across: Images = across) -> None:
             near = across[:, block.first - first : block.last - first]
@@ -126,21 +169,18 @@ def _groups(blocks: list[Block]) -> Iterator[list[Block]]:
         yield group
 
 
-def _across(samples: Complexes, first: int, last: int, columns: list[Block]) -> Images:
+def _fill(across: Images, samples: Rows, first: int, columns: list[Block]) -> None:
     """Irradiance in some rows of samples, collected along the rows: (images, rows, pixels)."""
-    left, start, stop = columns[0].first, columns[0].pixels.start, columns[-1].pixels.stop
-    images = 1 if len(samples) == 1 else 4
-    across = np.empty((images, last - first, stop - start), dtype=samples.real.dtype)
+    left, start, (images, height, _) = columns[0].first, columns[0].pixels.start, across.shape
 
     def fill(strip: slice) -> None:
-        irradiance = _irradiance(_wrapped(samples, first + strip.start, first + strip.stop, axis=1))
+        irradiance = _irradiance(samples(first + strip.start, first + strip.stop))
         for block in columns:
             near = irradiance[..., block.first - left : block.last - left]
             pixels = slice(block.pixels.start - start, block.pixels.stop - start)
             np.matmul(near, block.matrix.T, out=across[:, strip, pixels])
 
-    strips(fill, last - first, samples.shape[-1])
-    return across
+    strips(fill, height, columns[-1].last - left, times=images * columns[0].matrix.shape[1])
 
 
 def _wrapped(array: Images, first: int, last: int, axis: int) -> Images:

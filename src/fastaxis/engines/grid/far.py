@@ -10,11 +10,11 @@ import numpy as np
 from numpy.typing import NDArray
 
 from fastaxis.engines.field import Guard
-from fastaxis.engines.grid.collecting import Collected
+from fastaxis.engines.grid.collecting import Collected, stokes_from
 from fastaxis.engines.grid.edges import watch_frame
 from fastaxis.engines.grid.filled import beat, lit, marginals
 from fastaxis.engines.grid.guard import LINES, check, rim_of, steps_of
-from fastaxis.engines.grid.landing import landing_length, lines
+from fastaxis.engines.grid.landing import Line, landing_length, lines
 from fastaxis.engines.grid.light import GridLight, curve, multiply_separable
 from fastaxis.engines.grid.reading import GridField
 from fastaxis.engines.grid.single import far_pitch, near_chirp, scale, travel_single
@@ -137,28 +137,35 @@ class FarField:
         """
         if raster.shape != (1, 1):
             watch_frame(self.near, self.grid)
-        return self.collected_by(raster, self.orders, keep=False).stokes()
+        rows, columns = self._lines(raster, self.orders)
+        if self._too_many(rows, columns):
+            return GridField(self.light, self.guard).stokes_on(raster)
+        samples = self.waves.rows_at(rows.places, columns.places)
+        return stokes_from(samples, self.near.jones, rows.blocks, columns.blocks)
 
-    def collected_by(self, raster: Raster, orders: tuple[int, int], *, keep: bool = True) -> Collected:
+    def collected_by(self, raster: Raster, orders: tuple[int, int]) -> Collected:
         """The light as pixels collect it; kept for the last raster, since sums of this field are read alike.
 
         Parameters
         ----------
         raster : the pixels.
         orders : highest of irradiance to be held: those of a sum are those of its finest field.
-        keep : whether it will be asked for again.
         """
-        known = self._read.get((raster, orders)) or self._collected_by(raster, orders)
-        if keep:
+        if (raster, orders) not in self._read:
             self._read.clear()
-            self._read[raster, orders] = known
-        return known
+            self._read[raster, orders] = self._collected_by(raster, orders)
+        return self._read[raster, orders]
+
+    def _lines(self, raster: Raster, orders: tuple[int, int]) -> tuple[Line, Line]:
+        (count, pitch, _), (down, across) = self.places, orders
+        return lines(raster, count * pitch, (landing_length(down), landing_length(across)), orders)
+
+    def _too_many(self, rows: Line, columns: Line) -> bool:
+        return rows.places.count * columns.places.count > MOST * self.near.count**2
 
     def _collected_by(self, raster: Raster, orders: tuple[int, int]) -> Collected:
-        count, pitch, _ = self.places
-        down, across = orders
-        rows, columns = lines(raster, count * pitch, (landing_length(down), landing_length(across)), orders)
-        if rows.places.count * columns.places.count > MOST * count**2:
+        rows, columns = self._lines(raster, orders)
+        if self._too_many(rows, columns):
             return GridField(self.light, self.guard).collected_by(raster)
         samples = self.waves.at(rows.places, columns.places)
         return Collected(samples, self.near.jones, 1, rows.blocks, columns.blocks)

@@ -14,7 +14,7 @@ from fastaxis.light import Raster
 __all__ = ["Line", "landing_length", "lines"]
 
 # Places over the waves of irradiance: more of them make the kernel of a pixel shorter and the transforms longer.
-SPARE = 1.5
+SPARE = 1.45
 
 
 @dataclass(frozen=True)
@@ -32,12 +32,12 @@ class Line:
 
 
 def landing_length(order: int) -> int:
-    """Places across a window that hold irradiance of this highest order, a number that transforms fast.
+    """Places across a window that hold irradiance of this highest order; 2, 3 and 5 only divide them, for speed.
 
     >>> landing_length(500)
-    1500
+    1458
     """
-    return int(fft.next_fast_len(math.ceil(SPARE * 2 * order)))
+    return int(fft.next_fast_len(math.ceil(SPARE * 2 * order), real=True))
 
 
 def lines(raster: Raster, window: float, lengths: tuple[int, int], orders: tuple[int, int]) -> tuple[Line, Line]:

@@ -9,12 +9,14 @@ import numpy as np
 from numpy.typing import NDArray
 from scipy import fft
 
-from fastaxis.engines.grid.workers import strips
+from fastaxis.engines.grid.workers import strips, together
 
-__all__ = ["Places", "Waves"]
+__all__ = ["FarRows", "Places", "Waves"]
 
 Samples: TypeAlias = NDArray[Any]
 Reals: TypeAlias = NDArray[np.float64]
+
+TRANSFORM = 10  # times a transform takes up each sample: about log2 of its length
 
 
 @dataclass(frozen=True)
@@ -35,6 +37,40 @@ class Places:
     def from_other_end(self) -> Places:
         """The same places counted from the other end of the window."""
         return Places(self.length - self.first - self.count, self.count, self.length)
+
+
+@dataclass(frozen=True, eq=False)
+class FarRows:
+    """Rows of a far plane, worked out as they are asked for; the phase that all components share is left out.
+
+    Parameters
+    ----------
+    near : (components, rows, waves), each row still to be transformed.
+    before : factors of the waves.
+    columns : places of the columns.
+    mirrored : whether rows and columns count from the other end.
+    """
+
+    near: Samples
+    before: Samples
+    columns: Places
+    mirrored: bool
+
+    @property
+    def dtype(self) -> np.dtype[Any]:
+        """Of the samples."""
+        return self.near.dtype
+
+    def rows(self, first: int, last: int) -> Samples:
+        """(components, last - first, columns); rows beyond an end are those of the other end."""
+        count = self.near.shape[1]
+        rows = np.arange(count - 1 - first, count - 1 - last, -1) if self.mirrored else np.arange(first, last)
+        if first >= 0 and last <= count and not self.mirrored:
+            samples = self.near[:, first:last] * self.before
+        else:
+            samples = self.near[:, rows % count] * self.before
+        found = fft.fft(samples, n=self.columns.length, axis=2, overwrite_x=True)[:, :, : self.columns.count]
+        return found[:, :, ::-1] if self.mirrored else found
 
 
 @dataclass(frozen=True, eq=False)
@@ -63,16 +99,10 @@ class Waves:
         """
         if self.mirrored:
             rows, columns = rows.from_other_end, columns.from_other_end
-        height, width = self.amplitudes.shape[1:]
-        before_down, after_down = self._turns(rows, self.first[0], height)
-        before, after = self._turns(columns, self.first[1], width)
-        near = np.empty((len(self.amplitudes), rows.count, width), dtype=self.amplitudes.dtype)
+        near = self._dropped(rows)
+        before, after = self._turns(columns, self.first[1], near.shape[2])
+        _, after_down = self._turns(rows, self.first[0], 0)
         out = np.empty((len(near), rows.count, columns.count), dtype=near.dtype)
-
-        def drop(strip: slice) -> None:
-            for part, some in zip(near, self.amplitudes[:, :, strip], strict=True):
-                turned = some * before_down[:, None]
-                part[:, strip] = fft.fft(turned, n=rows.length, axis=0, overwrite_x=True)[: rows.count]
 
         def fill(strip: slice) -> None:
             samples = near[:, strip] * before
@@ -80,9 +110,30 @@ class Waves:
             samples = fft.fft(samples, n=columns.length, axis=2, overwrite_x=True)[:, :, : columns.count]
             np.multiply(samples, after, out=out[:, strip])
 
-        strips(drop, width, rows.length)
-        strips(fill, rows.count, columns.length)
+        strips(fill, rows.count, columns.length, times=TRANSFORM)
         return np.ascontiguousarray(out[:, ::-1, ::-1]) if self.mirrored else out
+
+    def rows_at(self, rows: Places, columns: Places) -> FarRows:
+        """The field at some places but for a phase that its components share, row by row."""
+        if self.mirrored:
+            rows, columns = rows.from_other_end, columns.from_other_end
+        near = self._dropped(rows)
+        before, _ = self._turns(columns, self.first[1], near.shape[2])
+        return FarRows(near, before, columns, self.mirrored)
+
+    def _dropped(self, rows: Places) -> Samples:
+        """Transforms of all columns, at the rows asked for."""
+        height, width = self.amplitudes.shape[1:]
+        before, _ = self._turns(rows, self.first[0], height)
+        near = np.empty((len(self.amplitudes), rows.count, width), dtype=self.amplitudes.dtype)
+
+        def drop(strip: slice) -> None:
+            for part, some in zip(near, self.amplitudes[:, :, strip], strict=True):
+                turned = some * before[:, None]
+                part[:, strip] = fft.fft(turned, n=rows.length, axis=0, overwrite_x=True)[: rows.count]
+
+        strips(drop, width, rows.length, times=TRANSFORM)
+        return near
 
     def _turns(self, places: Places, first: int, waves: int) -> tuple[Samples, Samples]:
         """Factors of the waves before, and of the places after, a transform that counts both from 0.
@@ -118,7 +169,7 @@ class Waves:
         The power in a row of the window is the sum over all columns of waves of what each sends there; columns are
         alike enough that a share of them tells where the light goes.
         """
-        down, across = (self._profile(axis, lines) for axis in (1, 2))
+        down, across = together(lambda axis: self._profile(axis, lines), (1, 2))
         return down, across
 
     def _profile(self, axis: int, lines: int) -> Reals:

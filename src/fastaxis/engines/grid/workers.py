@@ -33,8 +33,13 @@ def together(work: Callable[[Job], Done], jobs: Iterable[Job]) -> list[Done]:
     return list(_pool().map(work, jobs))
 
 
-def strips(work: Callable[[slice], Done], rows: int, columns: int) -> list[Done]:
-    """The results of some work on every strip of rows of a plane, in order."""
+def strips(work: Callable[[slice], Done], rows: int, columns: int, *, times: int = 1) -> list[Done]:
+    """The results of some work on every strip of rows of a plane, in order.
+
+    Parameters
+    ----------
+    times : how often each sample is taken up, for work of more than a few multiplications.
+    """
     height = max(STRIP // columns, 1)
     jobs = [slice(start, min(start + height, rows)) for start in range(0, rows, height)]
-    return [work(job) for job in jobs] if rows * columns < ALONE else together(work, jobs)
+    return [work(job) for job in jobs] if rows * columns * times < ALONE else together(work, jobs)
