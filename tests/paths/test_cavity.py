@@ -61,15 +61,24 @@ def test_energy_closes_in_a_cavity_whose_beam_spreads():
     assert total == pytest.approx(1, abs=1e-12)
 
 
-def test_a_fine_cavity_is_refused_for_beams_and_the_fix_answers_for_waves():
+def two_mirrors(reflectance, *parts):
     train = fa.Train(wavelength=633 * nm).along(
-        fa.Laser(waist=1 * mm, power=1.0, name="laser"), fa.BeamSplitter(reflectance=0.99, name="left"),
-        fa.BeamSplitter(reflectance=0.99, name="right"),
+        fa.Laser(waist=1 * mm, power=1.0, name="laser"), fa.BeamSplitter(reflectance=reflectance, name="left"), *parts,
+        fa.BeamSplitter(reflectance=reflectance, name="right"),
     )  # fmt: skip
-    train.along("right.reflected", "left.side")
+    return train.along("right.reflected", *(f"{part.name}.back" for part in parts), "left.side")
+
+
+def test_a_fine_cavity_of_beams_is_that_of_waves_where_nothing_spreads():
+    # Anti-resonant: F = 39600.
+    assert two_mirrors(0.99).power("right") == pytest.approx(1 / (1 + 39600), rel=1e-9)
+
+
+def test_a_fine_cavity_that_is_not_round_is_refused_and_the_fix_answers_for_waves():
+    slit = fa.Slit(width=20 * mm, name="slit")
     with pytest.raises(fa.SamplingError, match="after a round trip, which takes 3208 trips to fade") as caught:
-        train.power("right")
-    assert eval(caught.value.fix, {"train": train}) == pytest.approx(1 / (1 + 39600), rel=1e-9)  # anti-resonant
+        two_mirrors(0.99, slit).power("right")
+    assert eval(caught.value.fix, {"train": two_mirrors(0.99)}) == pytest.approx(1 / (1 + 39600), rel=1e-9)
 
 
 def test_a_closed_ring_that_no_light_enters_stays_dark():

@@ -62,11 +62,27 @@ def test_roundings_are_printed_as_dark_and_kept_as_they_are():
     assert rows[1].power == 1.5e-35
 
 
-def test_a_cavity_with_a_stop_says_before_any_trip_that_it_takes_too_many():
+def ring_with(*parts, reflectance=0.9):
     train = fa.Train(wavelength=633 * nm).along(
-        fa.Laser(waist=0.2 * mm, power=1 * mW, name="laser"), fa.BeamSplitter(reflectance=0.9, name="in"),
-        fa.FreeSpace(0.2), fa.Aperture(radius=0.5 * mm, name="hole"), fa.BeamSplitter(reflectance=0.9, name="out"),
+        fa.Laser(waist=0.2 * mm, power=1 * mW, name="laser"), fa.BeamSplitter(reflectance=reflectance, name="in"),
+        fa.FreeSpace(0.2), *parts, fa.BeamSplitter(reflectance=reflectance, name="out"),
     )  # fmt: skip
-    train.along("out.reflected", fa.Mirror(name="m1"), fa.Mirror(name="m2"), "in.side")
-    with pytest.raises(fa.SamplingError, match="296 paths through parts that shape the light"):
+    return train.along("out.reflected", fa.Mirror(name="m1"), fa.Mirror(name="m2"), "in.side")
+
+
+def test_a_cavity_that_is_not_round_says_before_any_trip_that_it_takes_too_many(monkeypatch):
+    monkeypatch.setattr("fastaxis.engines.ledger.MOST_PATHS", 8)
+    train = ring_with(fa.QPlate(q=0.5, centre=(0.1 * mm, 0.0), name="qp"), reflectance=0.1)
+    with pytest.raises(fa.SamplingError, match="13 paths through parts that shape the light"):
         train.ledger()
+
+
+def test_a_cavity_with_a_round_stop_has_a_ledger():
+    ledger = ring_with(fa.Aperture(radius=0.5 * mm, name="hole")).ledger()
+    assert ledger.missing == pytest.approx(0, abs=1e-15)
+    # What is clipped is the difference of what comes and goes; the edges tell it too: in, hole, and what is reflected.
+    edges = ledger.of("edge")
+    before = next(watts for place, watts in edges.items() if place.endswith("hole.front"))
+    behind = next(watts for place, watts in edges.items() if place.startswith("hole.back"))
+    assert ledger.of("clipped")["hole"] == pytest.approx(before - behind, rel=1e-9)
+    assert behind == pytest.approx(ledger.of("open port")["out.transmitted"] / 0.1, rel=1e-9)

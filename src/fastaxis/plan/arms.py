@@ -20,7 +20,7 @@ from fastaxis.plan.steps import Step
 from fastaxis.train.graph import Node, lit_nodes, port_of, source_nodes
 from fastaxis.train.routes import Leg, Route, lit_target
 
-__all__ = ["FAINT", "MOST", "arms", "upstream"]
+__all__ = ["FAINT", "MOST", "Strength", "arms", "upstream"]
 
 # Amplitude of a path over that of the source at which it is left out: its power is 1e-28, and what it changes by
 # interference is 1e-14, a few roundings. Ways that a polarizer or splitter closes exactly go the same way.
@@ -31,7 +31,7 @@ Laws = Callable[[Node, Node], tuple[Any, ...]]
 
 
 @dataclass(frozen=True)
-class _Strength:
+class Strength:
     """The largest amplitude that any state of the source can still have: exact while parts are uniform.
 
     Parameters
@@ -51,13 +51,13 @@ class _Strength:
         largest = np.linalg.norm(self.states, axis=0).max() if self.known else np.linalg.norm(self.states, 2)
         return self.scale * float(largest)
 
-    def past(self, law: Any) -> _Strength:
+    def past(self, law: Any) -> Strength:
         matrix = as_matrix(Step((), law))
         if matrix is not None:
             return replace(self, states=np.array(matrix.matrix) @ self.states)
         if isinstance(law, AxisLaw):
             most = max(_most(law.along.power), _most(law.across.power))
-            return _Strength(np.eye(2, dtype=complex), self.amplitude * math.sqrt(most), known=False)
+            return Strength(np.eye(2, dtype=complex), self.amplitude * math.sqrt(most), known=False)
         if isinstance(law, ScalarLaw):
             return replace(self, scale=self.scale * math.sqrt(_most(law.transmission.power)))
         return self
@@ -72,7 +72,7 @@ class _Walk:
     """Light on its way: where it is, how it came, how strong it may be."""
 
     node: Node
-    strength: _Strength
+    strength: Strength
     before: _Walk | None = None
 
     def nodes(self) -> Iterator[_Walk]:
@@ -119,7 +119,7 @@ def arms(train: Any, target: str) -> tuple[Route, ...]:
             laser = train.elements[start[0]]
             refuse_letters(start[0], laser.parameters())
             states = [t.state.jones for part in bound(laser.source).components for t in part.beam.terms]
-            _follow(graph, inside, end, _Walk(start, _Strength(np.array(states).T)), found, laws=laws)
+            _follow(graph, inside, end, _Walk(start, Strength(np.array(states).T)), found, laws=laws)
     if not found:  # a port that is dark by polarization: one of its paths says so
         return tuple(train.routes(target)[:1])
     legs = {
@@ -156,7 +156,7 @@ def _follow(graph: Any, inside: set[Node], end: Node, start: _Walk, found: list[
             least = max(least, walk.gain() or 0.0)
         for ahead in graph.successors(walk.node):
             if ahead in inside:
-                there = _Walk(ahead, reduce(_Strength.past, laws(walk.node, ahead), walk.strength), walk)
+                there = _Walk(ahead, reduce(Strength.past, laws(walk.node, ahead), walk.strength), walk)
                 if there.strength.amplitude > FAINT:
                     waiting.append(there)
 

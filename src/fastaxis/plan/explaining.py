@@ -61,6 +61,9 @@ def _branch(branch: Branch) -> Iterator[str]:
     yield f"  {branch.wavelength * 1e9:.6g} nm, {branch.power * 1e3:.6g} mW"
     if branch.path:
         yield f"  arm {branch.path}: engine {branch.engine}, path {float(branch.length) * 1e3:.6g} mm"
+    if branch.round_trip is not None:
+        yield from _round(branch)
+        return
     sampling = branch.sampling
     if sampling is not None:
         precision = "" if sampling.precision == "double" else f", {sampling.precision} precision"
@@ -77,6 +80,16 @@ def _branch(branch: Branch) -> Iterator[str]:
             yield f"{line}; by harmonics, handed over to samples: {_sampled(sampling.planes[0])}"
         else:
             yield f"{line}; {_sampled(sampling.planes[place])}"
+
+
+def _round(branch: Branch) -> Iterator[str]:
+    """The ways of light that goes round: in, once round, out."""
+    assert branch.round_trip is not None
+    entry, once = branch.round_trip.entries[0].steps, branch.round_trip.rounds[0].steps
+    out = branch.steps[len(branch.steps) - branch.last :]
+    for title, steps in (("in", entry), ("round", once), ("out", out)):
+        for index, step in enumerate(steps, start=1):
+            yield f"    {title} {index}. {', '.join(step.names)}: {_said(step.law)}"
 
 
 def _listed(when: str, steps: Steps) -> list[str]:

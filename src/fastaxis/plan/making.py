@@ -15,6 +15,7 @@ from fastaxis.plan.advance import advance
 from fastaxis.plan.arms import arms
 from fastaxis.plan.at_once import by_network
 from fastaxis.plan.binding import bound, refuse_letters
+from fastaxis.plan.cavity import by_trips
 from fastaxis.plan.choose import choose
 from fastaxis.plan.closed import closed
 from fastaxis.plan.commute import commute
@@ -145,6 +146,9 @@ def make_plan(
     at_once = None if by_arms else by_network(train, target, asked=engine)
     if at_once is not None:
         return at_once
+    followed = None if by_arms or grid is not None else by_trips(train, target, asked=engine, passes=simplified)
+    if followed is not None:
+        return followed
     declared = unfused(train, target)
     if declared.joined and engine == "auto" and grid is None:
         kept = closed(declared.branches)

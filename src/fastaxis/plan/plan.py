@@ -15,6 +15,7 @@ from fastaxis.plan.sampling import Sampling
 from fastaxis.plan.steps import Steps
 
 if TYPE_CHECKING:
+    from fastaxis.plan.cavity import RoundTrip
     from fastaxis.plan.network import Network
 
 __all__ = ["Branch", "Plan"]
@@ -41,6 +42,8 @@ class Branch:
     feed : place in the network where the light begins.
     path : parts of an arm, as text.
     harmonic_steps : so many steps are done by harmonics before samples take over; ``sampling`` begins there.
+    round_trip : of light that goes round and is followed trip by trip.
+    last : of such light, how many of the steps lead out to the target; those before show how wide it gets.
     opening : parts whose travel is in ``beam`` already; ``sampling`` begins behind them.
     """
 
@@ -58,6 +61,8 @@ class Branch:
     path: str = ""
     harmonic_steps: int = 0
     opening: tuple[str, ...] = ()
+    round_trip: RoundTrip | None = None
+    last: int = 0
 
 
 def _in_precision(branch: Branch, precision: str) -> Branch:

@@ -1,0 +1,234 @@
+"""Plans for beams that go round through parts that shape them: the ways in, once round, and out."""
+
+from __future__ import annotations
+
+import math
+from collections.abc import Callable, Iterable
+from dataclasses import dataclass, replace
+from fractions import Fraction
+from functools import reduce
+from itertools import pairwise
+from typing import Any
+
+import numpy as np
+
+from fastaxis.laws import TravelLaw
+from fastaxis.light import Component, Source
+from fastaxis.plan.arms import FAINT, MOST, Strength, upstream
+from fastaxis.plan.binding import bound, refuse_letters
+from fastaxis.plan.closed import closed
+from fastaxis.plan.covariant import covariance_reason
+from fastaxis.plan.plan import Branch, Plan
+from fastaxis.plan.spread import of_beam
+from fastaxis.plan.steps import Step, Steps
+from fastaxis.train.graph import Node, lit_nodes, source_nodes
+from fastaxis.train.routes import lit_target
+
+__all__ = ["LEFT_OVER", "MOST_TRIPS", "RoundTrip", "by_trips"]
+
+LEFT_OVER = 1e-12  # amplitude of all trips not followed, of the sum: what each trip is exact to
+MOST_TRIPS = 4096
+FEW = 8  # trips that are as soon done by themselves
+MOST_WAYS = 16
+WIDER = 1.1  # beams that fit stay as wide as they are but for roundings
+LOOKED_AT = 16  # trips over which a beam that does not fit is widest
+
+Passes = Callable[[Plan], Plan]
+
+
+@dataclass(frozen=True)
+class RoundTrip:
+    """Light at the one place that all its trips pass.
+
+    Parameters
+    ----------
+    entries : ways from the laser to that place.
+    rounds : ways once round.
+    left : most of the amplitude that a round trip can leave.
+    """
+
+    entries: tuple[Branch, ...]
+    rounds: tuple[Branch, ...]
+    left: float
+
+
+def by_trips(train: Any, target: str, *, asked: str, passes: Passes) -> Plan | None:
+    """The plan that sums trip by trip; None where there are no loops, few trips, or light that is not round.
+
+    Parameters
+    ----------
+    train, target : what is asked.
+    asked : engine, "auto" or by name.
+    passes : what shortens the steps of each way.
+    """
+    if asked not in ("auto", "azimuthal"):
+        return None
+    bench = _Bench.of(train, target)
+    place, lasers = bench.place(), [node for node in source_nodes(train.elements) if node in bench.inside]
+    if place is None or len(lasers) > 1 or not train.elements[lasers[0][0]].line.sharp:
+        return None
+    ways = bench.ways(lasers[0], place)
+    return None if ways is None else _plan(train, target, lasers[0][0], ways, passes)
+
+
+Walk = tuple[Node, ...]
+
+
+@dataclass(frozen=True)
+class _Ways:
+    """Lists of port states: past the place that all trips pass, to it, from it to itself and to the end."""
+
+    direct: list[Walk]
+    entries: list[Walk]
+    rounds: list[Walk]
+    exits: list[Walk]
+
+
+@dataclass(frozen=True)
+class _Bench:
+    """The port states that light passes on its way to a target."""
+
+    graph: Any
+    inside: set[Node]
+    end: Node
+
+    @classmethod
+    def of(cls, train: Any, target: str) -> _Bench:
+        graph = train.graph
+        lit = lit_nodes(graph, source_nodes(train.elements))
+        end = lit_target(train.elements, graph, lit, target)
+        return cls(graph, upstream(graph, lit, end), end)
+
+    def place(self) -> Node | None:
+        """Where light comes together that every trip passes; None if there is no such place, or no loop."""
+        meeting = sorted(node for node in self.inside if len(self._before(node)) > 1)
+        return next((node for node in meeting if self._loops() and not self._loops(node)), None)
+
+    def _before(self, node: Node) -> list[Node]:
+        return [before for before in self.graph.predecessors(node) if before in self.inside]
+
+    def _loops(self, without: Node | None = None) -> bool:
+        left = self.inside - {without}
+        while free := {node for node in left if left.isdisjoint(self._before(node))}:
+            left -= free
+        return bool(left)
+
+    def ways(self, start: Node, place: Node) -> _Ways | None:
+        """All ways; None if there are too many."""
+        found = _Ways(
+            self._walks(start, self.end, place), self._walks(start, place, place),
+            self._walks(place, place, place), self._walks(place, self.end, place),
+        )  # fmt: skip
+        lists = (found.direct, found.entries, found.rounds, found.exits)
+        return None if max(map(len, lists)) > MOST_WAYS or not found.entries else found
+
+    def _walks(self, start: Node, end: Node, barred: Node) -> list[Walk]:
+        """Walks of at least one step, or of none from a place to itself; none goes on from the barred place."""
+        if start == end != barred:
+            return [(start,)]
+        found, waiting = list[Walk](), list[Walk]([(start,)])
+        while waiting and len(found) <= MOST_WAYS:
+            walk = waiting.pop()
+            for ahead in self.graph.successors(walk[-1]):
+                if ahead == end:
+                    found.append((*walk, ahead))
+                elif ahead in self.inside and ahead != barred:
+                    waiting.append((*walk, ahead))
+        return found
+
+
+def _plan(train: Any, target: str, name: str, ways: _Ways, passes: Passes) -> Plan | None:
+    laser = train.elements[name]
+    refuse_letters(name, laser.parameters())
+    refuse_letters(train.name, {"wavelength": train.wavelength})
+    source: Source = bound(laser.source)
+    if any(term.mode.infinite for part in source.components for term in part.beam.terms):
+        return None
+    branches: list[Branch] = []
+    left = 0.0
+    for group, part in enumerate(source.components):
+        wavelength = float(part.wavelength_or(train.wavelength))
+        light = Branch(part.beam, wavelength, float(source.power * part.weight), (), group=group, line=laser.line)
+        lists = (ways.direct, ways.entries, ways.rounds, ways.exits)
+        direct, entries, rounds, exits = ([_way(train, light, walk, passes) for walk in walks] for walks in lists)
+        left = sum(_most_left(way.steps) for way in rounds)
+        every = [*direct, *entries, *rounds, *exits]
+        if not _worth_it(left, every) or any(covariance_reason(way.steps, source) for way in every):
+            return None
+        trip = RoundTrip(tuple(entries), tuple(rounds), left)
+        branches += [replace(way, engine="azimuthal", path=f"{way.path} -> {target}") for way in direct]
+        branches += [_out(way, trip, target) for way in exits]
+    alone = len(branches) == len(source.components)
+    if alone:
+        branches = [replace(branch, group=None) for branch in branches]
+    reason = "light goes round through parts that shape it, and is followed trip by trip"
+    engine, notes = "azimuthal" if alone else "joined", (_said(ways.rounds, left),)
+    return Plan(target, float(train.wavelength), source, tuple(branches), engine=engine, reason=reason, notes=notes)
+
+
+def _way(train: Any, light: Branch, walk: Walk, passes: Passes) -> Branch:
+    steps: list[Step] = []
+    names = [walk[0][0]]
+    for here, there in pairwise(walk):
+        if here[2] == "in" and here[0] == there[0]:
+            element = train.elements[here[0]]
+            refuse_letters(here[0], element.parameters())
+            passage = element.passages(light.wavelength)[here[1], there[1]]
+            steps += [Step((here[0],), bound(law)) for law in passage.steps()]
+            names.append(here[0])
+    length = sum((Fraction(step.law.path) for step in steps if isinstance(step.law, TravelLaw)), Fraction(0))
+    source = Source((Component(1.0, light.beam, light.wavelength),), light.power)
+    plan = passes(Plan("", light.wavelength, source, (replace(light, steps=tuple(steps)),)))
+    return replace(plan.branches[0], length=length, path=" -> ".join(names))
+
+
+def _out(way: Branch, trip: RoundTrip, target: str) -> Branch:
+    entry = trip.entries[0]
+    before = entry.steps + _widest(entry, trip.rounds[0].steps, way)
+    path = f"{entry.path} -> round and round -> {way.path.partition(' -> ')[2] or way.path} -> {target}"
+    return replace(
+        way, steps=before + way.steps, length=entry.length + way.length, engine="azimuthal", round_trip=trip, path=path,
+        last=len(way.steps),
+    )  # fmt: skip
+
+
+def _widest(entry: Branch, once: Steps, way: Branch) -> Steps:
+    """As many trips as make the light widest at the target, among the first ones: what holds it holds all."""
+    spread = of_beam(entry.beam, entry.wavelength)
+    spread = reduce(lambda s, step: s.past(step.law, entry.wavelength), entry.steps, spread)
+    sizes = []
+    for _ in range(LOOKED_AT):
+        there = reduce(lambda s, step: s.past(step.law, entry.wavelength), way.steps, spread)
+        sizes.append(there.half_window)
+        spread = reduce(lambda s, step: s.past(step.law, entry.wavelength), once, spread)
+    trips = sizes.index(max(sizes))
+    return once * trips if sizes[trips] > WIDER * sizes[0] else ()
+
+
+def _most_left(steps: Steps) -> float:
+    """The largest amplitude that light of any state can keep."""
+    strength = Strength(np.eye(2, dtype=complex), known=False)
+    for step in steps:
+        strength = strength.past(step.law)
+    return strength.amplitude
+
+
+def _worth_it(left: float, ways: Iterable[Branch]) -> bool:
+    trips = _trips(left, FAINT)
+    return trips > (MOST if closed(tuple(ways)) else FEW)
+
+
+def _trips(left: float, rest: float) -> float:
+    if left >= 1 - 1e-12:  # a few roundings a part
+        return math.inf
+    return math.ceil(math.log(rest) / math.log(left)) if left > 0 else 1
+
+
+def _said(rounds: list[Walk], left: float) -> str:
+    parts = ", ".join(dict.fromkeys(node[0] for walk in rounds for node in walk))
+    trips = _trips(left, LEFT_OVER)
+    most = f"at most {trips} trips" if trips < math.inf else f"no more than {MOST_TRIPS} trips"
+    return (
+        f"round {parts}: up to {left:.4g} of the amplitude is left after a trip; followed until all later trips "
+        f"add less than {LEFT_OVER:g} of it, {most}"
+    )
