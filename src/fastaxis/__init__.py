@@ -69,6 +69,7 @@ if TYPE_CHECKING:
         Wedge,
         Window,
     )
+    from fastaxis.engines.memory import forget_light, remember_light
     from fastaxis.errors import (
         FastaxisError,
         FastaxisWarning,
@@ -128,6 +129,7 @@ _HOMES = {
     "HalfWavePlate KMirror KnifeEdge Laser Lens Mask MetalMirror Mirror NeutralDensity Obstacle PatternedPolarizer "
     "PatternedRetarder PhaseModulator PhaseShift PickOff Polarizer PolarizingBeamSplitter QPlate QuarterWavePlate "
     "RectangularAperture Retarder Rhomb Rotator Sensor Slit SpiralPlate Wedge Window",
+    "engines.memory": "forget_light remember_light",
     "errors": "FastaxisError FastaxisWarning FileFormatError MissingFileError ParameterError SamplingError "
     "SamplingWarning SlipWarning SymbolError WiringError WiringWarning",
     "inspect": "Mount",

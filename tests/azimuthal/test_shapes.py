@@ -4,9 +4,9 @@ import numpy as np
 import pytest
 
 from fastaxis.elements import FreeSpace, HalfWavePlate, QPlate
-from fastaxis.engines.azimuthal import shapes
 from fastaxis.engines.azimuthal.panels import ORDER, Profile
-from fastaxis.engines.azimuthal.shapes import Shapes
+from fastaxis.engines.azimuthal.shapes import ROWS, Shapes, remembered
+from fastaxis.engines.memory import LIGHT, forget_light
 from fastaxis.light import Gaussian, elliptical
 from fastaxis.units import deg, mm
 
@@ -36,7 +36,7 @@ def test_a_function_of_rounding_stays_small():
     assert abs(found.profile.values[1]).max() <= 1.0001e-13
 
 
-def test_turning_a_plate_asks_for_no_other_travel(arrive, monkeypatch):
+def test_turning_a_plate_asks_for_no_other_travel(arrive):
     def through(angle):
         parts = [HalfWavePlate(fast=angle), QPlate(q=0.5, retardance=2.0), FreeSpace(0.2), QPlate(q=1), FreeSpace(0.3)]
         return arrive(Gaussian(waist=0.5 * mm), *parts, state=elliptical(0.1, 0.2)).at(
@@ -44,15 +44,18 @@ def test_turning_a_plate_asks_for_no_other_travel(arrive, monkeypatch):
         )
 
     through(10 * deg)
-    known = len(shapes._known)
+    known = len(LIGHT)
     warm = through(70 * deg)
-    assert len(shapes._known) == known
-    monkeypatch.setattr(shapes, "_known", type(shapes._known)())
+    assert len(LIGHT) == known
+    forget_light()
     assert warm == pytest.approx(through(70 * deg), rel=1e-12)
 
 
-def test_few_are_kept(arrive, monkeypatch):
-    monkeypatch.setattr(shapes, "KEPT", 3)
-    for distance in np.linspace(0.1, 0.2, 5):
-        arrive(Gaussian(waist=0.5 * mm), QPlate(q=0.5), FreeSpace(distance), QPlate(q=0.5))
-    assert len(shapes._known) <= 3
+def test_what_differs_by_its_shapes_alone_takes_turns():
+    forget_light()
+    made = []
+    bases = [Shapes.of(Profile(EDGES, rough(1)), (1,)) for _ in range(ROWS + 1)]
+    for base in [*bases, bases[-1], bases[0]]:
+        remembered(("key",), base, lambda base=base: made.append(base) or base.profile.values)
+    # The latest is still known, the first is not.
+    assert made == [*bases, bases[0]]

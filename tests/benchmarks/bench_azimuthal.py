@@ -17,7 +17,7 @@ from fastaxis.elements import (
     Aperture, Camera, FreeSpace, HalfWavePlate, Laser, Lens, QPlate, QuarterWavePlate, Retarder,
 )  # fmt: skip
 from fastaxis.engines import propagate
-from fastaxis.engines.azimuthal import collins, shapes
+from fastaxis.engines.memory import forget_light
 from fastaxis.errors import SamplingWarning
 from fastaxis.light import Gaussian, H, Raster, elliptical
 from fastaxis.plan import Grid, make_plan
@@ -73,8 +73,7 @@ def frame(train, engine, grid=None):
 
 def forgotten():
     """A frame with nothing remembered, neither kernels nor light."""
-    collins._kernels.clear()
-    shapes._known.clear()
+    forget_light()
     return frame(bench(512), "azimuthal")
 
 

@@ -4,10 +4,17 @@ import pytest
 
 from fastaxis.elements import Camera, Laser
 from fastaxis.engines import propagate
+from fastaxis.engines.memory import forget_light
 from fastaxis.light import H
 from fastaxis.plan import make_plan
 from fastaxis.train import Train
 from fastaxis.units import nm, um
+
+
+@pytest.fixture(autouse=True)
+def nothing_remembered():
+    """What a test works out is its own."""
+    forget_light()
 
 
 @pytest.fixture

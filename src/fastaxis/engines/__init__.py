@@ -3,9 +3,10 @@
 from __future__ import annotations
 
 from importlib import import_module
+from typing import Any
 
 from fastaxis.engines.field import Guard, PlaneField
-from fastaxis.plan import Plan
+from fastaxis.plan import Branch, Plan
 
 __all__ = ["Guard", "PlaneField", "propagate"]
 
@@ -13,7 +14,8 @@ __all__ = ["Guard", "PlaneField", "propagate"]
 def propagate(plan: Plan) -> tuple[PlaneField, ...]:
     """The light at the target of a plan: one field for each incoherent part of the source.
 
-    The engine's room is loaded on first use.
+    The engine's room is loaded on first use. Sampled light goes on from where an earlier question, alike up to there,
+    has left it.
 
     Warns
     -----
@@ -35,6 +37,16 @@ def propagate(plan: Plan) -> tuple[PlaneField, ...]:
     """
     found: list[PlaneField] = []
     for group in plan.groups:
-        fields = [import_module(f"fastaxis.engines.{b.engine or plan.engine}").run(b) for b in group]
+        fields = [_run(branch.engine or plan.engine, branch) for branch in group]
         found += fields if len(group) == 1 else import_module("fastaxis.engines.joined").joined(group, fields)
     return tuple(found)
+
+
+def _run(name: str, branch: Branch) -> PlaneField:
+    engine: Any = import_module(f"fastaxis.engines.{name}")
+    if not hasattr(engine, "continued"):
+        field: PlaneField = engine.run(branch)
+        return field
+    remembering = import_module("fastaxis.engines.remembering")
+    seen: PlaneField = engine.finished(remembering.light_before(engine, branch, len(branch.steps)), branch)
+    return seen

@@ -9,6 +9,7 @@ from typing import Any
 
 from fastaxis.engines import propagate
 from fastaxis.engines.field import PlaneField
+from fastaxis.engines.remembering import light_before
 from fastaxis.plan import Branch, Plan
 
 __all__ = ["Prefix", "Relay", "shared_steps"]
@@ -64,10 +65,10 @@ class Prefix:
     @classmethod
     def of(cls, plan: Plan, count: int, after: Prefix | None = None) -> Prefix:
         """The first steps of a plan, taken on from a shorter prefix if that leads to it."""
+        if after is not None and after.count <= count and after.leads_to(plan):
+            return cls(plan, count, tuple(after.continued(plan, count)))
         engine = import_module(f"fastaxis.engines.{plan.engine}")
-        if after is None or after.count > count or not after.leads_to(plan):
-            after = cls(plan, 0, tuple(engine.begun(branch) for branch in plan.branches))
-        return cls(plan, count, tuple(after._continued(plan, count)))
+        return cls(plan, count, tuple(light_before(engine, branch, count) for branch in plan.branches))
 
     def leads_to(self, plan: Plan) -> bool:
         """Whether a plan begins with these steps."""
@@ -76,10 +77,11 @@ class Prefix:
     def propagate(self, plan: Plan) -> tuple[PlaneField, ...]:
         """The light at the target of a plan that this leads to."""
         engine = import_module(f"fastaxis.engines.{plan.engine}")
-        lights = self._continued(plan, len(plan.steps))
+        lights = self.continued(plan, len(plan.steps))
         return tuple(engine.finished(light, branch) for light, branch in zip(lights, plan.branches, strict=True))
 
-    def _continued(self, plan: Plan, end: int) -> Iterator[Any]:
+    def continued(self, plan: Plan, end: int) -> Iterator[Any]:
+        """The light of each branch before step ``end`` of a plan that this leads to."""
         engine = import_module(f"fastaxis.engines.{plan.engine}")
         for light, branch in zip(self.lights, plan.branches, strict=True):
             # Engines work in place; what is kept must outlive its use.

@@ -10,7 +10,6 @@ which is a lens before and a lens behind the section and so only changes the mat
 
 from __future__ import annotations
 
-from collections import OrderedDict
 from dataclasses import dataclass, replace
 from typing import Any
 
@@ -19,6 +18,7 @@ import numpy as np
 from fastaxis.engines.azimuthal.bessel import bessel
 from fastaxis.engines.azimuthal.panels import ORDER, Complexes, Profile, Reals
 from fastaxis.engines.azimuthal.taper import Taper
+from fastaxis.engines.memory import Memory
 from fastaxis.laws import TravelLaw
 
 __all__ = ["Collins", "turn"]
@@ -28,19 +28,17 @@ WHOLE = 0.4  # share of the phase of a part that an uncut panel may carry
 AT_RISK, NEARLY = 2, 9  # panels, places
 TURNS = (1, 1j, -1, -1j)
 
-_kernels: OrderedDict[tuple[object, ...], Reals] = OrderedDict()
-KEPT = 64  # blocks: half a gigabyte at most
+KERNELS = Memory(0.25)
 
 
 def _kernel(order: int, scale: float, r_in: Reals, r_out: Reals) -> Reals:
     """J_order(scale r' r), shape (out, in); the last ones are kept, since turning a plate changes none of them."""
     key = (order, scale, r_in.tobytes(), r_out.tobytes())
-    if key not in _kernels:
-        _kernels[key] = bessel(order, np.multiply.outer(scale * r_out, r_in))
-        if len(_kernels) > KEPT:
-            _kernels.popitem(last=False)
-    _kernels.move_to_end(key)
-    return _kernels[key]
+    kernel: Reals | None = KERNELS.get(key)
+    if kernel is None:
+        kernel = bessel(order, np.multiply.outer(scale * r_out, r_in))
+        KERNELS.put(key, kernel, kernel.nbytes)
+    return kernel
 
 
 def turn(charge: int, b: float) -> complex:

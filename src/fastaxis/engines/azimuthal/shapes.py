@@ -6,18 +6,16 @@ Turning a plate changes how much light each harmonic has, seldom how it is sprea
 from __future__ import annotations
 
 import math
-from collections import OrderedDict
 from collections.abc import Callable, Hashable
 from dataclasses import dataclass
-from typing import Any, TypeVar, cast
+from typing import Protocol, TypeVar
 
 import numpy as np
 
 from fastaxis.engines.azimuthal.panels import Complexes, Profile
+from fastaxis.engines.memory import LIGHT
 
 __all__ = ["Shapes", "remembered"]
-
-Answer = TypeVar("Answer")
 
 ALIKE = 32 * np.finfo(float).eps
 """Of the peak: some dozen products and sums of numbers of order one have gone into each function."""
@@ -70,22 +68,13 @@ def _number(row: Complexes, peak: float, highest: float) -> complex:
     return complex(row[abs(row).argmax()]) / level
 
 
-@dataclass(frozen=True, eq=False)
-class _Known:
-    key: Hashable
-    shapes: Shapes
-    answer: Any
-
-    def answers(self, key: Hashable, shapes: Shapes) -> bool:
-        return (
-            self.key == key
-            and self.shapes.charges == shapes.charges
-            and bool(abs(self.shapes.profile.values - shapes.profile.values).max() <= ALIKE)
-        )
+class _Sized(Protocol):
+    @property
+    def nbytes(self) -> int: ...
 
 
-_known: OrderedDict[int, _Known] = OrderedDict()
-KEPT = 96  # answers: with the panels that fields usually need, some ten megabytes
+Answer = TypeVar("Answer", bound=_Sized)
+ROWS = 4  # answers to questions that differ by the shapes alone
 
 
 def remembered(key: tuple[Hashable, ...], shapes: Shapes, make: Callable[[], Answer]) -> Answer:
@@ -95,13 +84,12 @@ def remembered(key: tuple[Hashable, ...], shapes: Shapes, make: Callable[[], Ans
     ----------
     key : all that the answer depends on beside the shapes.
     """
-    key = (*key, shapes.profile.edges.tobytes())
-    for number, known in reversed(_known.items()):
-        if known.answers(key, shapes):
-            _known.move_to_end(number)
-            return cast("Answer", known.answer)
+    key, values = (*key, shapes.charges, shapes.profile.edges.tobytes()), shapes.profile.values
+    known: tuple[tuple[Complexes, Answer], ...] = LIGHT.get(key) or ()
+    for earlier, answer in known:
+        if abs(earlier - values).max() <= ALIKE:
+            return answer
     answer = make()
-    _known[max(_known, default=0) + 1] = _Known(key, shapes, answer)
-    while len(_known) > KEPT:
-        _known.popitem(last=False)
+    rows = ((values, answer), *known)[:ROWS]
+    LIGHT.put(key, rows, sum(earlier.nbytes + one.nbytes for earlier, one in rows))
     return answer

@@ -37,6 +37,11 @@ class Table:
     powers: Complexes
     numbers: Complexes | None = None
 
+    @property
+    def nbytes(self) -> int:
+        """Size of the polynomials."""
+        return self.powers.nbytes
+
     def shapes(self, r: Reals) -> Complexes:
         """Shapes at radii [m], shape (shapes, *r.shape); zero inside ``start`` and outside ``reach``."""
         cells = self.powers.shape[1]

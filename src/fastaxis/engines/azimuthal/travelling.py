@@ -50,6 +50,10 @@ class _Arrival:
     taper: Taper | None
     error: float
 
+    @property
+    def nbytes(self) -> int:
+        return self.profile.values.nbytes
+
 
 @dataclass(frozen=True)
 class _Waist:
