@@ -9,6 +9,8 @@ from hypothesis import strategies as st
 
 import fastaxis as fa
 from fastaxis.engines import propagate
+from fastaxis.engines.grid import begun, continued, finished
+from fastaxis.engines.grid.source import _reach
 from fastaxis.laws import TravelLaw
 from fastaxis.light import Beam, Gaussian, HermiteGauss, LaguerreGauss, Raster, Term
 from fastaxis.plan.advance import carried, advance
@@ -17,7 +19,7 @@ from fastaxis.plan.proposing import sampling_for
 from fastaxis.plan.spread import of_beam
 from fastaxis.units import deg, mm, nm, um
 
-WAVELENGTH = 633 * nm
+WAVELENGTH, GRID = 633 * nm, fa.Grid(samples=1024, window=12 * mm)
 modes = st.sampled_from([
     Gaussian(waist=0.5 * mm),
     Gaussian(waist=0.4 * mm, waist_at=0.7),
@@ -110,3 +112,42 @@ def test_two_modes_keep_their_phase():
     assert stopped.plan("cam", engine="grid").branches[0].opening == ("space1",)
     sampled, right = stopped.expose("cam", fa.H, engine="grid"), free.expose("cam", fa.H, engine="azimuthal")
     assert np.allclose(sampled.stokes, right.stokes, rtol=0, atol=1e-9 * right.stokes.max())
+
+
+@pytest.mark.filterwarnings(
+    "ignore::fastaxis.errors.SamplingWarning"
+)  # of the axis of the plate, the same on both sides
+@pytest.mark.parametrize(
+    "mode", [Gaussian(waist=0.3 * mm), LaguerreGauss(p=2, l=3, waist=0.2 * mm), HermiteGauss(4, 1, 0.2 * mm)]
+)
+def test_dark_samples_are_not_carried_and_change_nothing(mode):
+    """Near travel fills the window up again, a single transform does not; all rounding of the power is kept."""
+    near, far = (train(mode, fa.FreeSpace(0.1), plate(), fa.FreeSpace(d)) for d in (20 * mm, 2.0))
+    for bench in (near, far):
+        branch = bench.plan("cam", engine="grid", grid=GRID).branches[0]
+        light = begun(branch)
+        assert light.count < light.full == 1024
+        # The samples left out hold 1e-25 of the power, the rest is known to a sum of 1e5 roundings.
+        assert light.power == pytest.approx(branch.power, rel=1e-12)
+        (found,) = propagate(bench.plan("cam", engine="grid", grid=GRID))
+        right = finished(continued(light.filled_up(), branch, 0, len(branch.steps)), branch)
+        x = np.linspace(-0.8, 0.9, 9) * mm
+        # 3e-13 of the field were left out.
+        assert np.allclose(found.at(x, x), right.at(x, x), rtol=0, atol=1e-12 * abs(right.at(x, x)).max())
+
+
+def test_beyond_its_reach_a_mode_holds_rounding_only():
+    """Beside its samples on a wide window, for modes of many rings and of many lines."""
+    for mode in (
+        LaguerreGauss(p=0, l=8, waist=0.3 * mm),
+        LaguerreGauss(p=6, l=1, waist=0.3 * mm),
+        HermiteGauss(9, 0, 0.3 * mm),
+    ):
+        branch = train(mode, fa.FreeSpace(0.1), plate(), fa.FreeSpace(2.0)).plan("cam", engine="grid").branches[0]
+        reach = _reach(branch)
+        x = np.linspace(-1.5, 1.5, 801) * reach
+        power = abs(branch.beam.terms[0].mode.amplitude(x, x[:, None], WAVELENGTH)) ** 2
+        outside = (abs(x) > reach) | (abs(x[:, None]) > reach)
+        assert power[outside].sum() <= 1e-25 * power.sum()
+        tighter = (abs(x) > 0.75 * reach) | (abs(x[:, None]) > 0.75 * reach)
+        assert power[tighter].sum() > 1e-25 * power.sum()

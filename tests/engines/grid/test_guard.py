@@ -51,7 +51,7 @@ def test_both_figures_are_known_before_the_last_transform():
     field = FarField(near, None)
     far = travel_single(replace(near, samples=near.samples.copy(), ahead=None), near.ahead)
     # The least phase step that is told apart is that of one wave, 2 pi/256; lines of waves are one in two.
-    assert steps_of(*field.marginals) == pytest.approx(phase_step(far), abs=2 * np.pi / 256 + 0.02)
+    assert steps_of(*field.marginals, 256) == pytest.approx(phase_step(far), abs=2 * np.pi / 256 + 0.02)
     assert rim_of(*field.waves.profiles(64)) == pytest.approx(rim_share(far.samples), rel=0.05)
 
 

@@ -45,8 +45,8 @@ def continued(light: GridLight, branch: Branch, first: int, end: int) -> GridLig
     for index, law, after in _visits([as_matrix(step) or step.law for step in steps[:end]], first):
         hop = sampling.hop(index)
         if light.ahead and not isinstance(law, JonesStep | Flip):  # these commute with travel
-            light = edge_watched(travel_single(replace(light, ahead=None), light.ahead))
-        if isinstance(law, TravelLaw) and hop and hop.kernel == "single" and light.count <= KEPT:
+            light = edge_watched(travel_single(replace(light.filled_up(), ahead=None), light.ahead))
+        if isinstance(law, TravelLaw) and hop and hop.kernel == "single" and light.full <= KEPT:
             light = replace(light, ahead=law)
         else:
             light = _past(light, law, hop, after, last=index == last)
@@ -69,18 +69,19 @@ def finished(light: GridLight, branch: Branch) -> GridField | FarField:
     by_hand = sampling.chosen == "by hand"
     if light.ahead:
         return arriving(light, names, sampling.grid, by_hand=by_hand)
+    light = light.filled_up()
     return GridField(light, check(light, phase_step(light), names, sampling.grid, by_hand=by_hand), sampling.grid)
 
 
 def _past(light: GridLight, law: StepLaw, hop: Hop | None, after: JonesStep | None, *, last: bool) -> GridLight:
     if isinstance(law, TravelLaw):
-        return _travelled(light, law, cast("Hop", hop), last=last)
+        return _travelled(light.filled_up(), law, cast("Hop", hop), last=last)
     if isinstance(law, ScalarLaw):
         return past_scalar(light, law)
     if isinstance(law, Flip):
         return flipped(light, law)
     if isinstance(law, Turn):
-        return edge_watched(turned(light, law))
+        return edge_watched(turned(light.filled_up(), law))
     return past_axis(light, law, after) if isinstance(law, AxisLaw) else past_matrix(light, cast("JonesStep", law))
 
 

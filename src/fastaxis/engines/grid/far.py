@@ -80,12 +80,15 @@ class FarField:
     @property
     def places(self) -> tuple[int, float, float]:
         """Samples along a side of the window, their pitch [m], the curvature kept apart [1/m]."""
-        return self.near.count, far_pitch(self.near, self._ahead), self._ahead.d / self._ahead.b
+        return self.near.full, far_pitch(self.near, self._ahead), self._ahead.d / self._ahead.b
 
     @cached_property
     def light(self) -> GridLight:
         """The light on the samples of the far window."""
-        near = replace(self.near, samples=self.near.samples.copy(), ahead=None)
+        near = self.near.filled_up()
+        if near is self.near:
+            near = replace(near, samples=near.samples.copy())
+        near = replace(near, ahead=None)
         return travel_single(near, self._ahead, measured=True)
 
     @cached_property
@@ -103,7 +106,7 @@ class FarField:
         amplitudes = near.samples[:, rows, columns].copy()
         chirp = near_chirp(near, travel)
         multiply_separable(amplitudes, chirp[columns], scale(near, travel) * chirp[rows])
-        return Waves(amplitudes, (rows.start, columns.start), near.count, mirrored=travel.b < 0)
+        return Waves(amplitudes, (rows.start or 0, columns.start or 0), near.count, mirrored=travel.b < 0)
 
     @cached_property
     def orders(self) -> tuple[int, int]:
@@ -116,7 +119,7 @@ class FarField:
         """(Ex, Ey) [sqrt(W)/m] at columns x and rows y [m], shape (2, ny, nx)."""
         count, pitch, curvature = self.places
         columns, rows = (np.atleast_1d(np.asarray(places, dtype=float)) for places in (x, y))
-        whole = slice(0, count)  # a field is asked for to more digits than what is lit holds
+        whole = slice(None)  # a field is asked for to more digits than what is lit holds
         values = self._waves(whole, whole).anywhere(rows / (count * pitch), columns / (count * pitch))
         across, down = (
             curve(line, curvature, self.wavelength) * (abs(line) <= count * pitch / 2) for line in (columns, rows)
@@ -161,7 +164,7 @@ class FarField:
         return lines(raster, count * pitch, (landing_length(down), landing_length(across)), orders)
 
     def _too_many(self, rows: Line, columns: Line) -> bool:
-        return rows.places.count * columns.places.count > MOST * self.near.count**2
+        return rows.places.count * columns.places.count > MOST * self.near.full**2
 
     def _collected_by(self, raster: Raster, orders: tuple[int, int]) -> Collected:
         rows, columns = self._lines(raster, orders)
@@ -179,9 +182,10 @@ def arriving(near: GridLight, names: tuple[str, ...], grid: Grid, *, by_hand: bo
     SamplingWarning, and raises SamplingError, where the light comes close to the limits of its samples.
     """
     unseen = FarField(near, Guard(0.0, 0.0, 0.0), grid)
-    rims = () if near.periodic else (rim_of(*unseen.marginals), rim_of(*unseen.waves.profiles(LINES)))
+    here = unseen.marginals if near.full == near.count else ()  # else there are dark samples all round
+    rims = () if near.periodic else [rim_of(*lines) for lines in (here, unseen.waves.profiles(LINES)) if lines]
     seen = replace(near, edge_power=max(near.edge_power, *rims, 0.0))
-    guard = check(seen, steps_of(*unseen.marginals), names, grid, by_hand=by_hand)
+    guard = check(seen, steps_of(*unseen.marginals, near.full), names, grid, by_hand=by_hand)
     done = FarField(seen, guard, grid)
     # What looking it over has found is not worked out again.
     vars(done).update({name: vars(unseen)[name] for name in ("marginals", "waves")})

@@ -9,7 +9,7 @@ from numpy.typing import NDArray
 
 from fastaxis.engines.grid.workers import strips
 
-__all__ = ["beat", "filled", "lit", "marginals"]
+__all__ = ["EMPTY", "beat", "filled", "lit", "marginals"]
 
 Reals = NDArray[np.float64]
 Complexes = NDArray[np.complexfloating[Any, Any]]

@@ -97,7 +97,7 @@ def rim_of(down: Reals, across: Reals) -> float:
     return min(float(sum(shares)), 1.0)
 
 
-def steps_of(down: Reals, across: Reals) -> float:
+def steps_of(down: Reals, across: Reals, room: int) -> float:
     """Phase step [rad] between neighbouring samples that all but 1 % of the light stays below, from its waves.
 
     A wave j of n across the window turns by 2 pi j/n from one sample to the next.
@@ -105,9 +105,10 @@ def steps_of(down: Reals, across: Reals) -> float:
     Parameters
     ----------
     down, across : power of the waves of each order along either side, the order 0 in the middle.
+    room : n.
     """
     count = len(down)
-    steps = 2 * np.pi * abs(np.arange(count) - (count - 1) / 2) / count
+    steps = 2 * np.pi * abs(np.arange(count) - (count - 1) / 2) / room
     order = np.argsort(steps)
     below = np.cumsum((down + across)[order])
     return float(steps[order[np.searchsorted(below, QUIET * below[-1])]]) if below[-1] else 0.0

@@ -37,6 +37,7 @@ class GridLight:
     beyond : light that edges scatter beyond the band of the samples, as a share of what the samples hold.
     band_power : largest share of the power met near the edge of the band of the samples.
     filled : waves along a side that hold the light, if known from the travel it comes from; None if not.
+    room : samples along a side of its window, if those kept are the middle of it and all others dark; None if all are.
     ahead : a last travel that is left to whoever looks at the light; None if there is none.
     """
 
@@ -51,6 +52,7 @@ class GridLight:
     beyond: float = 0.0
     band_power: float = 0.0
     filled: int | None = None
+    room: int | None = None
     ahead: TravelLaw | None = None
 
     @property
@@ -59,9 +61,22 @@ class GridLight:
         return int(self.samples.shape[-1])
 
     @property
+    def full(self) -> int:
+        """Samples along a side of its window, dark ones included."""
+        return self.room or self.count
+
+    @property
     def window(self) -> float:
         """Side of the sampled square [m]."""
-        return self.count * self.pitch
+        return self.full * self.pitch
+
+    def filled_up(self) -> GridLight:
+        """The same light with the dark samples of its window."""
+        if self.full == self.count:
+            return self
+        margin = (self.full - self.count) // 2
+        samples = np.pad(self.samples, ((0, 0), (margin, margin), (margin, margin)))
+        return replace(self, samples=samples, room=None)
 
     @property
     def x(self) -> NDArray[np.float64]:

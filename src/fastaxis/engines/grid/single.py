@@ -16,7 +16,7 @@ __all__ = ["far_pitch", "near_chirp", "scale", "travel_single"]
 
 def far_pitch(light: GridLight, travel: TravelLaw) -> float:
     """Pitch [m] of the samples behind the travel: wavelength |B| / (n pitch)."""
-    return float(light.wavelength * abs(travel.b) / (light.count * light.pitch))
+    return float(light.wavelength * abs(travel.b) / light.window)
 
 
 def near_chirp(light: GridLight, travel: TravelLaw) -> Samples:

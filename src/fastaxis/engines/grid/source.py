@@ -2,17 +2,20 @@
 
 from __future__ import annotations
 
+import math
 from collections.abc import Iterable, Sequence
 from typing import Any
 
 import numpy as np
 from numpy.typing import NDArray
 from scipy.ndimage import binary_dilation
-from scipy.special import erf
+from scipy.special import erf, gammainccinv
 
+from fastaxis.engines.grid.filled import EMPTY
 from fastaxis.engines.grid.light import GridLight, Samples, axis, curve, inner, multiply_separable
 from fastaxis.engines.grid.workers import strips
 from fastaxis.light import SampledMode
+from fastaxis.light.modes.family import GaussFamily
 from fastaxis.plan import Branch
 from fastaxis.plan.sampling import Sampling
 
@@ -24,8 +27,9 @@ FADE = 0.125  # width of a plane wave's fading, as a share of the window
 
 def start(branch: Branch, sampling: Sampling) -> GridLight:
     """The field where samples begin, scaled to the power of the branch; one scalar field if all terms share a state."""
-    count, pitch = sampling.planes[0].samples, sampling.planes[0].pitch
-    x = axis(count, pitch)
+    room, pitch = sampling.planes[0].samples, sampling.planes[0].pitch
+    dark = max(math.floor(room / 2 - _reach(branch) / pitch), 0) if branch.opening else 0
+    x = axis(room - 2 * dark, pitch)
     terms, scale = branch.beam.terms, branch.beam.scale(branch.wavelength) * np.sqrt(branch.power)
     curvature = sampling.planes[0].spread.curvature
     kind = np.dtype(np.complex64 if sampling.precision == "single" else np.complex128)
@@ -40,7 +44,22 @@ def start(branch: Branch, sampling: Sampling) -> GridLight:
     infinite = any(term.mode.infinite for term in terms)
     if sampling.taper:
         multiply_separable(samples, _fading(x, sampling.grid.window))
-    return GridLight(samples, jones, pitch, curvature, branch.wavelength, periodic=infinite and not sampling.taper)
+    periodic = infinite and not sampling.taper
+    return GridLight(samples, jones, pitch, curvature, branch.wavelength, periodic=periodic, room=room)
+
+
+def _reach(branch: Branch) -> float:
+    """Radius [m] beyond which the modes of a beam hold no more than rounding of their power.
+
+    With t = 2 r^2/w^2 the irradiance of a mode of degree N is exp(-t) times a polynomial, at most t^N 2^N/N! far out:
+    what is beyond is below 2^N Q(N + 1, t), the incomplete gamma function.
+    """
+    rounding = EMPTY[np.dtype(np.complex128)]
+    modes = [term.mode for term in branch.beam.terms if isinstance(term.mode, GaussFamily)]
+    return max(
+        mode.width(branch.wavelength) * math.sqrt(gammainccinv(mode.degree + 1, rounding / 2**mode.degree) / 2)
+        for mode in modes
+    )
 
 
 def _sum(shapes: Iterable[Samples], vectors: Sequence[NDArray[np.complex128]]) -> Samples:
