@@ -11,9 +11,10 @@ import statistics
 from timing import machine, seconds, table
 
 import fastaxis as fa
-from fastaxis.units import mm, mrad, nm
+from fastaxis.units import deg, mm, mrad, nm
 
 ROUNDS = 3
+SLIT = fa.Slit(width=0.6 * mm, name="slit")
 SPIRAL, HOLE = fa.SpiralPlate(charge=2, name="spiral"), fa.Aperture(radius=0.7 * mm, name="hole")
 CASES = {
     "like arms": ([], []),
@@ -24,6 +25,10 @@ CASES = {
     "two spirals": ([SPIRAL], [fa.SpiralPlate(charge=-2, name="other")]),
     "spiral, tilt": ([SPIRAL], [fa.Wedge(x=2 * mrad, name="wedge")]),
     "hole, tilt": ([HOLE], [fa.Wedge(x=1 * mrad, name="wedge")]),
+    "hole": ([HOLE], []),
+    "hole, plate, tilt": ([HOLE, fa.HalfWavePlate(fast=20 * deg, name="hwp")], [fa.Wedge(x=1 * mrad, name="wedge")]),
+    "slit, tilt": ([SLIT], [fa.Wedge(x=1 * mrad, name="wedge")]),
+    "slit, hole": ([SLIT], [HOLE]),
 }
 
 

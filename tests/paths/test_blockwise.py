@@ -90,6 +90,27 @@ def test_round_arms_look_the_same_after_half_a_turn_if_their_charges_are_alike(m
     assert turned == 0 if name == "even" else turned > 0.1
 
 
+@pytest.mark.parametrize("power", [1e-24, 1e-16, 1e-8])
+def test_a_dark_port_is_not_looked_at_for_ever(mach_zehnder, power, monkeypatch):
+    """What two like holes leave at the dark port is roundings, or as much as a phase lets through."""
+    parts = ([fa.FreeSpace(0.1), fa.FreeSpace(0.1)], [fa.FreeSpace(0.2)])
+    hole = [fa.Aperture(radius=0.5 * mm), fa.FreeSpace(0.3)]
+    train = mach_zehnder(arm=[*parts[0], *hole], other=[*parts[1], *hole])
+    (field,) = train.with_changes({"phase.phase": 2 * np.sqrt(power)}).field("out.transmitted")
+    seen, places = sight(field.arms, field.mixtures, 2 * mm), []
+    monkeypatch.setattr(
+        type(seen),
+        "images",
+        lambda self, x, y, images=type(seen).images: places.append(len(x) * len(y)) or images(self, x, y),
+    )
+    image = room.blockwise(seen, Raster(20 * um, (128, 128)), field.extent.spreads)
+    assert sum(places) < 1e6
+    assert image is not None
+    # Both fields are right to 1e-13 of their peaks.
+    expected = power * (1 - np.exp(-0.5))
+    assert seen.polarized(image)[0].sum() == pytest.approx(expected, rel=0.05, abs=1e-24)
+
+
 def test_fork_and_samples_agree(mach_zehnder):
     train = mach_zehnder(
         arm=[fa.SpiralPlate(charge=2), fa.FreeSpace(0.3)], other=[fa.FreeSpace(0.2), fa.Wedge(x=2 * mrad)]

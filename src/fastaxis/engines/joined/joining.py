@@ -114,7 +114,7 @@ class JoinedField:
             return image
         if any(engine != "modes" for engine in self.engines):
             seen = sight(self.arms, self.mixtures, reach)
-            image = blockwise(seen, raster, self.extent.spreads)
+            image = blockwise(seen, raster, self.extent.spreads, anywhere="grid" in self.engines)
             if image is not None:
                 return seen.polarized(image)
         if all(engine == "azimuthal" for engine in self.engines):

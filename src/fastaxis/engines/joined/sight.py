@@ -20,7 +20,7 @@ Complexes = NDArray[np.complex128]
 
 SAME_STATE = 1e-13  # of two unit vectors: a hundred roundings each
 FARTHER = 1e-6  # a few roundings would do
-PLACES = 1 << 14  # at a time: a quarter of a megabyte a component, which stays in the cache
+PLACES = 1 << 15  # at a time: half a megabyte a component, which stays in the cache
 SAMPLED = 1 << 18  # of samples, for which each strip asks for matrices of its own
 
 
@@ -33,6 +33,9 @@ class Sight(Protocol):
 
     def images(self, x: Reals, y: Reals) -> Reals:
         """Real pictures at columns x and rows y, shape (images, ny, nx), the first of them S0 or a share of it."""
+
+    def apart(self, x: Reals, y: Reals) -> Reals:
+        """The first picture as it would be without interference, shape (ny, nx)."""
 
     def polarized(self, images: Reals) -> Reals:
         """S0 .. S3, shape (4, ...), from such pictures or from sums of their pixels."""
@@ -54,6 +57,10 @@ class _Fields:
             out[:, rows] = sum(stokes(_sum(numbers, fields)) for numbers in self.mixtures)
         return out
 
+    def apart(self, x: Reals, y: Reals) -> Reals:
+        powers = [_power(arm.at(x, y)).sum(axis=0) for arm in self.arms]
+        return np.tensordot(_shares_of(self.mixtures), powers, axes=1)
+
     def polarized(self, images: Reals) -> Reals:
         return images
 
@@ -74,6 +81,10 @@ class _OneState:
             fields = [scalar.on(x, y[rows], front) for scalar in self.scalars]
             out[0, rows] = sum(_power(_sum(numbers, fields)) for numbers in self.mixtures)
         return out
+
+    def apart(self, x: Reals, y: Reals) -> Reals:
+        powers = [_power(scalar.on(x, y, scalar.curvature)) for scalar in self.scalars]
+        return np.tensordot(_shares_of(self.mixtures), powers, axes=1)
 
     def polarized(self, images: Reals) -> Reals:
         return np.asarray(np.multiply.outer(stokes(self.state), images[0]))
@@ -116,6 +127,10 @@ def _shares(states: Sequence[Complexes]) -> Complexes | None:
 def _sum(numbers: Complexes, fields: Sequence[Complexes]) -> Complexes:
     first, *rest = (field if number == 1 else number * field for number, field in zip(numbers, fields, strict=True))
     return np.asarray(sum(rest, first))
+
+
+def _shares_of(mixtures: Complexes) -> Reals:
+    return np.asarray(np.sum(abs(mixtures) ** 2, axis=0))
 
 
 def _power(field: Complexes) -> Reals:
