@@ -182,3 +182,51 @@ def test_letters_stay_letters():
     texts = words(draw_bench(bench(fa.HalfWavePlate(fast=alpha, name="hwp"), fa.FreeSpace(d), camera())))
     assert "fast alpha" in texts
     assert "d" in texts
+
+
+def cavity(*between, end=None):
+    """Two splitters as mirrors, light between them coming back to the side of the first."""
+    train = bench(
+        fa.BeamSplitter(reflectance=0.9, name="m1"), *between, fa.BeamSplitter(reflectance=0.9, name="m2"), *(end or ())
+    )
+    return train.along("m2.reflected", *(f"{part.name}.back" for part in between[::-1]), "m1.side")
+
+
+@pytest.mark.parametrize(
+    "between",
+    [
+        (),
+        (fa.FreeSpace(10 * mm, name="gap"),),
+        (fa.FreeSpace(10 * mm, name="gap"), fa.PhaseShift(phase=0.1, name="tuning")),
+    ],
+)
+def test_light_between_two_mirrors_comes_back_along_its_own_line(between):
+    powers = {"m1.transmitted": 0.01, "m2.reflected": 0.009} | {f"{part.name}.front": 0.009 for part in between}
+    figure = draw_bench(cavity(*between), powers=powers)
+    assert not any("bent for the drawing only" in text for text in words(figure))
+    assert any("\N{LEFTWARDS ARROW} 9.00 mW" in text for text in words(figure))
+    # All beams of a laser, a cavity and an open end lie on one row.
+    rows = {round(float(y), 6) for line in figure.axes[0].lines for y in line.get_ydata() if line.get_color() == BEAM}
+    assert len(rows) == 1
+
+
+@pytest.mark.parametrize(
+    ("train", "told"),
+    [
+        (cavity(end=[fa.Detector(name="out")]), "round and round: no reflection, 2 more each trip; upright"),
+        (
+            bench(fa.BeamSplitter(name="bs"), *(fa.Mirror(name=f"m{n}") for n in range(2))).along(
+                "m1", "bs.side").along("bs.reflected", fa.Detector(name="out")),
+            "round and round: 1 or 2 reflections, 3 more each trip; upright and mirrored in turn",
+        ),
+    ],
+)  # fmt: skip
+def test_of_light_that_goes_round_the_reflections_of_a_trip_are_told(train, told):
+    assert reflections_in_words(train, "out") == told
+
+
+def test_of_coupled_cavities_only_the_first_way_is_told():
+    train = cavity(end=[fa.BeamSplitter(reflectance=0.5, name="m3"), fa.Detector(name="out")]).along(
+        "m3.reflected", "m2.side"
+    )
+    assert reflections_in_words(train, "out") == "round and round: at first no reflection"

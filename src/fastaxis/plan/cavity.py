@@ -12,7 +12,7 @@ from typing import Any
 
 import numpy as np
 
-from fastaxis.laws import TravelLaw
+from fastaxis.laws import Flip, TravelLaw
 from fastaxis.light import Component, Source
 from fastaxis.plan.arms import FAINT, MOST, Strength, upstream
 from fastaxis.plan.binding import bound, refuse_letters
@@ -24,7 +24,7 @@ from fastaxis.plan.steps import Step, Steps
 from fastaxis.train.graph import Node, lit_nodes, source_nodes
 from fastaxis.train.routes import lit_target
 
-__all__ = ["LEFT_OVER", "MOST_TRIPS", "RoundTrip", "by_trips"]
+__all__ = ["LEFT_OVER", "MOST_TRIPS", "RoundTrip", "by_trips", "reflections_round"]
 
 LEFT_OVER = 1e-12  # amplitude of all trips not followed, of the sum: what each trip is exact to
 MOST_TRIPS = 4096
@@ -71,6 +71,25 @@ def by_trips(train: Any, target: str, *, asked: str, passes: Passes) -> Plan | N
     return None if ways is None else _plan(train, target, lasers[0][0], ways, passes)
 
 
+def reflections_round(train: Any, target: str) -> set[int] | None:
+    """How often light that goes round on its way to a target is reflected on a trip; None where none goes round.
+
+    Empty where loops are tangled, so that no one place is passed on every trip.
+    """
+    bench = _Bench.of(train, target)
+    if not bench.loops():
+        return None
+    place = bench.place()
+    walks = bench.walks(place, place, place) if place else []
+    return {_reflections(train, walk) for walk in walks}
+
+
+def _reflections(train: Any, walk: Walk) -> int:
+    edges = (train.graph.edges[way] for way in pairwise(walk))
+    laws = [law for edge in edges if edge["kind"] == "inside" for law in edge["passage"].steps()]
+    return sum(isinstance(law, Flip) for law in laws)
+
+
 Walk = tuple[Node, ...]
 
 
@@ -102,12 +121,13 @@ class _Bench:
     def place(self) -> Node | None:
         """Where light comes together that every trip passes; None if there is no such place, or no loop."""
         meeting = sorted(node for node in self.inside if len(self._before(node)) > 1)
-        return next((node for node in meeting if self._loops() and not self._loops(node)), None)
+        return next((node for node in meeting if self.loops() and not self.loops(node)), None)
 
     def _before(self, node: Node) -> list[Node]:
         return [before for before in self.graph.predecessors(node) if before in self.inside]
 
-    def _loops(self, without: Node | None = None) -> bool:
+    def loops(self, without: Node | None = None) -> bool:
+        """Whether light goes round, also if it does not go on from a place."""
         left = self.inside - {without}
         while free := {node for node in left if left.isdisjoint(self._before(node))}:
             left -= free
@@ -116,13 +136,13 @@ class _Bench:
     def ways(self, start: Node, place: Node) -> _Ways | None:
         """All ways; None if there are too many."""
         found = _Ways(
-            self._walks(start, self.end, place), self._walks(start, place, place),
-            self._walks(place, place, place), self._walks(place, self.end, place),
+            self.walks(start, self.end, place), self.walks(start, place, place),
+            self.walks(place, place, place), self.walks(place, self.end, place),
         )  # fmt: skip
         lists = (found.direct, found.entries, found.rounds, found.exits)
         return None if max(map(len, lists)) > MOST_WAYS or not found.entries else found
 
-    def _walks(self, start: Node, end: Node, barred: Node) -> list[Walk]:
+    def walks(self, start: Node, end: Node, barred: Node) -> list[Walk]:
         """Walks of at least one step, or of none from a place to itself; none goes on from the barred place."""
         if start == end != barred:
             return [(start,)]

@@ -9,7 +9,7 @@ from matplotlib.axes import Axes
 
 from fastaxis.report.boxes import Point
 from fastaxis.report.layout import Layout
-from fastaxis.report.lines import PART, Line, comes_in, stub_line
+from fastaxis.report.lines import PART, Line, comes_in, returning, stub_line
 from fastaxis.report.prefix import readable
 from fastaxis.report.style import SOFT, WARN
 from fastaxis.report.walk import is_space
@@ -84,12 +84,14 @@ def write_stubs(sheet: Sheet, plan: Layout, powers: Powers) -> None:
             sheet.ahead(words, end, stub.heading)
 
 
-def write_ports(sheet: Sheet, plan: Layout, train: Any) -> None:
+def write_ports(sheet: Sheet, plan: Layout, lines: Sequence[Line], train: Any) -> None:
     """Name the faces of each part that has more than a front and a back, where light takes them."""
+    back = returning(plan, lines)
     for port in sorted({port for link in plan.links for port in (link.out_port, link.in_port)}):
         name, _, face = port.partition(".")
         if len(train.elements[name].faces) > 2:
-            place, (wx, wy), words = plan.places[name], plan.exits[name, face], Words(face, 5.5)
+            place, words = plan.places[name], Words(face, 5.5)
+            wx, wy = back.get(port) or plan.exits[name, face]
             room = words.extent[0 if wx else 1] + 0.04
             start = (place.x + wx * PART / 2, place.y + wy * PART / 2)
             sheet.at_line(words, start, (start[0] + wx * room, start[1] + wy * room), (0.5, 0.8, 1.1))

@@ -78,7 +78,7 @@ def _written(
     boxes = part_boxes(plan, train)
     sheet = Sheet([*boxes.values(), *(box for line in lines for box in line.boxes)])
     sheet.solid += [box for stub in plan.stubs for box in line_boxes(stub_line(plan, stub), 0.16)]
-    write_ports(sheet, plan, train)
+    write_ports(sheet, plan, lines, train)
     write_stubs(sheet, plan, powers)
     write_labels(sheet, plan, words, boxes)
     write_powers(sheet, lines, train, powers)

@@ -12,7 +12,7 @@ from fastaxis.report.layout import Layout, Link, Stub
 from fastaxis.report.routing import bent_line
 from fastaxis.report.walk import is_space
 
-__all__ = ["PART", "Line", "comes_in", "lines_of", "part_boxes", "stub_line"]
+__all__ = ["PART", "Line", "comes_in", "lines_of", "part_boxes", "returning", "stub_line"]
 
 PART = 0.72  # [steps] the square that a part and its outline need
 WIDTH = 0.07
@@ -21,6 +21,7 @@ BACK = 0.33  # light back out of a port is drawn longer, beside the light that c
 LANE = 0.1
 ARROW = 0.12
 ASIDE = 0.16
+BACK_BY = ("front", "reflected")  # where light leaves that comes back: a plate, a space or the next mirror
 
 
 @dataclass(frozen=True)
@@ -76,7 +77,9 @@ def lines_of(plan: Layout, train: Any) -> list[Line]:
 
 
 def _both_ways(plan: Layout) -> Iterator[tuple[Link, Link | None]]:
-    pending = {(link.out_port, link.in_port): link for link in plan.links}
+    # Straight ones first: light that comes back along one needs no line of its own.
+    links = sorted(plan.links, key=lambda link: link.out_port in plan.bent)
+    pending = {(link.out_port, link.in_port): link for link in links}
     while pending:
         (out_port, in_port), link = next(iter(pending.items()))
         del pending[out_port, in_port]
@@ -87,12 +90,32 @@ def _both_ways(plan: Layout) -> Iterator[tuple[Link, Link | None]]:
 
 
 def _returns(plan: Layout, link: Link, other: Link) -> bool:
-    """Whether light runs back along a straight line, by other faces of the same two parts."""
+    """Whether light runs back along a straight line, by other faces of the same two parts.
+
+    Light from between two mirrors comes back to the side of the first, the face that it left having two names.
+    """
     way, back = plan.exits[_node(link.out_port)], plan.exits[_node(other.out_port)]
     parts = {_node(port)[0] for port in (link.out_port, link.in_port)}
     same = parts == {_node(port)[0] for port in (other.out_port, other.in_port)}
-    straight = not {link.out_port, other.out_port} & plan.bent and not link.wrapped and not other.wrapped
-    return same and straight and way == (-back[0], -back[1])
+    straight = link.out_port not in plan.bent and not link.wrapped and not other.wrapped
+    opposite = way == (-back[0], -back[1])
+    return same and straight and (_between_mirrors(link, other) if other.out_port in plan.bent else opposite)
+
+
+def _between_mirrors(link: Link, other: Link) -> bool:
+    """Whether light comes back to the splitter it was let in by, straight from the next part or splitter."""
+    face = _node(other.out_port)[1]
+    return _node(link.out_port)[1] == "transmitted" and _node(other.in_port)[1] == "side" and face in BACK_BY
+
+
+def returning(plan: Layout, lines: Sequence[Line]) -> dict[str, tuple[int, int]]:
+    """The faces that light comes back from and to along the line it left by, with the way there from the part."""
+    found: dict[str, tuple[int, int]] = {}
+    for there, back in ((line.there, line.back) for line in lines):
+        if back is not None and back.out_port in plan.bent:
+            x, y = plan.exits[_node(there.out_port)]
+            found |= {back.in_port: (x, y), back.out_port: (-x, -y)}
+    return found
 
 
 def _line(plan: Layout, there: Link, back: Link | None) -> Line:
