@@ -234,6 +234,14 @@ def test_a_camera_whose_light_cannot_be_worked_out_is_told_by_sampling_alone():
     assert checks(train, "sampling")
 
 
+@pytest.mark.parametrize("time", [None, 1e-3])
+def test_a_sensor_that_the_light_misses_is_told_by_its_size_alone(bench_of, time):
+    camera = fa.Camera(pixel=5 * um, shape=(8, 8), centre=(200 * mm, 0), sensor=SENSOR, exposure_time=time, name="cam")
+    found = [f.check for f in bench_of(camera).inspect() if f.element == "cam"]
+    assert "sensor too small" in found
+    assert not {"saturation", "few counts"} & set(found)
+
+
 def test_a_temperature_without_a_drift_is_a_note(bench_of):
     plate = fa.HalfWavePlate(fast=20 * deg, temperature=303.15, name="hwp")
     (found,) = checks(bench_of(plate, METER), "plate temperature")
