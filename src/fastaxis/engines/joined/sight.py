@@ -1,4 +1,4 @@
-"""Joined light at places: a scalar field where all of it has one state, else both components."""
+"""Joined light at places: by scalar fields where each arm has one state, else by both components."""
 
 from __future__ import annotations
 
@@ -66,25 +66,52 @@ class _Fields:
 
 
 @dataclass(frozen=True, eq=False)
-class _OneState:
-    """Scalar fields, whose sums have one state."""
+class _Scalars:
+    """Scalar fields, each with a state of its own."""
 
     scalars: Sequence[Any]
     mixtures: Complexes
-    state: Complexes
     even: bool
 
     def images(self, x: Reals, y: Reals) -> Reals:
-        # Irradiance does not ask which front it is relative to; the most curved one saves harmonics a product.
-        front, out = max((s.curvature for s in self.scalars), key=abs), np.empty((1, len(y), len(x)))
+        out = np.empty((4, len(y), len(x)))
+        states = np.array([scalar.state for scalar in self.scalars]).T
         for rows in _strips(y, len(x), PLACES):
-            fields = [scalar.on(x, y[rows], front) for scalar in self.scalars]
+            fields = self._fields(x, y[rows])
+            out[:, rows] = sum(
+                stokes(np.stack([_sum(numbers * one, fields) for one in states])) for numbers in self.mixtures
+            )
+        return out
+
+    def _fields(self, x: Reals, y: Reals) -> list[Complexes]:
+        # Irradiance does not ask which front it is relative to; the most curved one saves harmonics a product.
+        front = max((scalar.curvature for scalar in self.scalars), key=abs)
+        return [scalar.on(x, y, front) for scalar in self.scalars]
+
+    def apart(self, x: Reals, y: Reals) -> Reals:
+        sizes = [np.linalg.norm(scalar.state) ** 2 for scalar in self.scalars]
+        powers = [size * _power(field) for size, field in zip(sizes, self._fields(x, y), strict=True)]
+        return np.tensordot(_shares_of(self.mixtures), powers, axes=1)
+
+    def polarized(self, images: Reals) -> Reals:
+        return images
+
+
+@dataclass(frozen=True, eq=False)
+class _OneState(_Scalars):
+    """Scalar fields whose sums have one state; their numbers are multiples of it."""
+
+    state: Complexes
+
+    def images(self, x: Reals, y: Reals) -> Reals:
+        out = np.empty((1, len(y), len(x)))
+        for rows in _strips(y, len(x), PLACES):
+            fields = self._fields(x, y[rows])
             out[0, rows] = sum(_power(_sum(numbers, fields)) for numbers in self.mixtures)
         return out
 
     def apart(self, x: Reals, y: Reals) -> Reals:
-        powers = [_power(scalar.on(x, y, scalar.curvature)) for scalar in self.scalars]
-        return np.tensordot(_shares_of(self.mixtures), powers, axes=1)
+        return np.tensordot(_shares_of(self.mixtures), [_power(field) for field in self._fields(x, y)], axes=1)
 
     def polarized(self, images: Reals) -> Reals:
         return np.asarray(np.multiply.outer(stokes(self.state), images[0]))
@@ -100,9 +127,11 @@ def sight(arms: Sequence[Any], mixtures: Complexes, farthest: float) -> Sight:
     """
     reach = farthest * (1 + FARTHER)
     scalars: list[Any] = [arm.scalar(math.sqrt(2) * reach) if hasattr(arm, "scalar") else None for arm in arms]
-    shares = None if any(scalar is None for scalar in scalars) else _shares([scalar.state for scalar in scalars])
-    if shares is not None:
-        return _OneState(scalars, mixtures * shares, scalars[0].state, _even(arms))
+    if all(scalar is not None for scalar in scalars):
+        shares = _shares([scalar.state for scalar in scalars])
+        if shares is None:
+            return _Scalars(scalars, mixtures, _even(arms))
+        return _OneState(scalars, mixtures * shares, _even(arms), scalars[0].state)
     corner = np.array([reach])
     for arm in arms:  # engines that work out a plane as far as they are asked do so once if the corner comes first
         arm.at(corner, corner)
