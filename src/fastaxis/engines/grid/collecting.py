@@ -125,11 +125,11 @@ def _collect(out: Images, samples: Rows, rows: list[Block], columns: list[Block]
     start, stop = columns[0].pixels.start, columns[-1].pixels.stop
     for group in _groups(rows):
         first, last = group[0].first, group[-1].last
-        across = np.empty((len(out), last - first, stop - start), dtype=out.dtype)
+        across = np.empty((last - first, len(out), stop - start), dtype=out.dtype)
         _fill(across, samples, first, columns)
 
         def down(block: Block, first: int = first, across: Images = across) -> None:
-            near = across[:, block.first - first : block.last - first]
+            near = across[block.first - first : block.last - first].swapaxes(0, 1)
             _multiply(block.matrix, near, out[:, block.pixels, start:stop], more=more)
 
         together(down, group)
@@ -170,15 +170,19 @@ def _groups(blocks: list[Block]) -> Iterator[list[Block]]:
 
 
 def _fill(across: Images, samples: Rows, first: int, columns: list[Block]) -> None:
-    """Irradiance in some rows of samples, collected along the rows: (images, rows, pixels)."""
-    left, start, (images, height, _) = columns[0].first, columns[0].pixels.start, across.shape
+    """Irradiance in some rows of samples, collected along the rows: (rows, images, pixels)."""
+    left, start, (height, images, pixels) = columns[0].first, columns[0].pixels.start, across.shape
+    few = max(PRODUCT // max(block.matrix.size for block in columns) // images, 1)
 
     def fill(strip: slice) -> None:
-        irradiance = _irradiance(samples(first + strip.start, first + strip.stop))
-        for block in columns:
-            near = irradiance[..., block.first - left : block.last - left]
-            pixels = slice(block.pixels.start - start, block.pixels.stop - start)
-            np.matmul(near, block.matrix.T, out=across[:, strip, pixels])
+        for begin in range(strip.start, strip.stop, few):
+            end = min(begin + few, strip.stop)
+            # The images of a row lie side by side, so that all of some rows go through one product.
+            irradiance = _irradiance(samples(first + begin, first + end)).reshape(images * (end - begin), -1)
+            here = across[begin:end].reshape(images * (end - begin), pixels)
+            for block in columns:
+                near = irradiance[:, block.first - left : block.last - left]
+                np.matmul(near, block.matrix.T, out=here[:, block.pixels.start - start : block.pixels.stop - start])
 
     strips(fill, height, columns[-1].last - left, times=images * columns[0].matrix.shape[1])
 
@@ -191,15 +195,15 @@ def _wrapped(array: Images, first: int, last: int, axis: int) -> Images:
 
 
 def _irradiance(samples: Complexes) -> Images:
-    """S0 .. S3 of two components; |u|^2 of one."""
+    """S0 .. S3 of two components, |u|^2 of one: (rows, images, columns)."""
     if len(samples) == 1:
-        return np.asarray(samples.real**2 + samples.imag**2)
+        return np.asarray(samples.real**2 + samples.imag**2).swapaxes(0, 1)
     (xr, yr), (xi, yi) = samples.real, samples.imag
-    images = np.empty((4, *xr.shape), dtype=xr.dtype)
+    images = np.empty((len(xr), 4, xr.shape[1]), dtype=xr.dtype)
     px, py = xr * xr + xi * xi, yr * yr + yi * yi
-    np.add(px, py, out=images[0])
-    np.subtract(px, py, out=images[1])
-    np.add(xr * yr, xi * yi, out=images[2])
-    np.subtract(xi * yr, xr * yi, out=images[3])
-    images[2:] *= 2
+    np.add(px, py, out=images[:, 0])
+    np.subtract(px, py, out=images[:, 1])
+    np.add(xr * yr, xi * yi, out=images[:, 2])
+    np.subtract(xi * yr, xr * yi, out=images[:, 3])
+    images[:, 2:] *= 2
     return images
