@@ -2,8 +2,9 @@
 
 Eight parts, three spaces, a q-plate off the axis; 1024 x 1024 samples in double precision, a camera of 1024 x 1024
 pixels, 72 settings of a turning plate before a polarizer. All ways take turns, so that a busy machine slows all, and
-what each gives is freed before the next. Seconds are those of a clock and those of the processor, all threads together:
-where other work keeps the cores busy only the second are worth comparing, and threads get nothing for what they cost.
+what each gives is freed before the next; the library forgets the light of earlier rounds. Seconds are those of a clock
+and those of the processor, all threads together: where other work keeps the cores busy only the second are worth
+comparing, and threads get nothing for what they cost.
 
 * careful: numpy, both components, one propagation, transfer functions made once, each setting by its 2 x 2 matrix on
   the field, its frame put into one array; a frame is irradiance in the middles of the pixels;
@@ -52,6 +53,7 @@ def settings(count=72):
 
 def library(train, analyzers, samples=SAMPLES, **options):
     grid = fa.Grid(samples=samples, window=SAMPLES * PIXEL)
+    fa.forget_light()  # of the round before
     return train.expose("cam", analyzers, grid=grid, engine="grid", **options).frames
 
 
