@@ -19,6 +19,7 @@ __all__ = ["blockwise"]
 Reals = NDArray[np.float64]
 
 FIELD = 5e-13  # of its peak that the field of an arm is right to, twice what its table is settled to
+AT_ONCE = 1 << 22  # nodes: 128 MB of four pictures
 EVERYWHERE = 24  # lines
 BESIDE = 0.02  # of a pixel: how close the axis is passed, where directly behind a plate there may be a jump of phase
 
@@ -54,12 +55,19 @@ def blockwise(seen: Sight, raster: Raster, spreads: Sequence[Spread], *, anywher
     if rows is None:
         return None
     out, half = np.empty((len(bright), *raster.shape)), len(y) // 2
-    if not seen.even or raster.centre != (0.0, 0.0) or len(y) % 2:
-        blocks.collected(images, rows, columns, raster.pitch**2, out)
-    else:
-        blocks.collected(images, [b for b in rows if b.pixels.start >= half], columns, raster.pitch**2, out)
+    turned = seen.even and raster.centre == (0.0, 0.0) and len(y) % 2 == 0
+    for some in _groups([b for b in rows if not turned or b.pixels.start >= half], columns):
+        blocks.collected(images, some, columns, raster.pitch**2, out)
+    if turned:
         out[:, :half] = out[:, : half - 1 : -1, ::-1]
     return out
+
+
+def _groups(rows: list[Any], columns: list[Any]) -> list[list[Any]]:
+    """Blocks of rows to be read at a time: all, unless fringes are so fine that their nodes would fill the memory."""
+    across = sum(len(block.nodes) for block in columns)
+    ends = np.cumsum([len(block.nodes) * across for block in rows]) // AT_ONCE
+    return [[block for block, end in zip(rows, ends, strict=True) if end == group] for group in np.unique(ends)]
 
 
 def _peak(bright: float, apart: float, settled: float) -> float:
