@@ -4,23 +4,43 @@ from __future__ import annotations
 
 import math
 from collections.abc import Iterator
-from dataclasses import dataclass, field
+from dataclasses import dataclass, field, replace
+from itertools import pairwise
 from typing import Any
 
 import numpy as np
 from numpy.typing import NDArray
 
-from fastaxis.elements import Camera, HalfWavePlate, Laser, Mirror, QPlate, Retarder, SpiralPlate
+from fastaxis.elements import (
+    Camera,
+    DovePrism,
+    FaradayRotator,
+    HalfWavePlate,
+    KMirror,
+    Laser,
+    Mirror,
+    Polarizer,
+    QPlate,
+    Retarder,
+    Rotator,
+    SpiralPlate,
+)
 from fastaxis.elements.base import ThroughElement
 from fastaxis.errors import FastaxisError
 from fastaxis.laws import Law
 from fastaxis.light import State
 from fastaxis.maths import is_symbolic
 
-__all__ = ["Mistake", "mistakes"]
+__all__ = ["Mistake", "met", "mistakes"]
 
 AXES = ("fast", "slow", "axis", "offset", "roll", "angle")
 STEP = 0.1  # [deg] between the values of a knob that are tried; mounts are read to about that
+# Plates that lie in the same drawer: those sold, and what they are from behind.
+DRAWER_Q = (0.5, 1.0, 1.5, 2.0, -0.5, -1.0, -1.5, -2.0)
+DRAWER_CHARGES = (1, 2, 3, 4, -1, -2, -3, -4)
+QUARTER, HALF = math.pi / 2, math.pi
+LIKE = math.radians(20)  # a retardance nearer than that to a half or a quarter wave is meant as one
+ORDERED = (Retarder, QPlate, SpiralPlate, Polarizer, Rotator, FaradayRotator, DovePrism, KMirror)
 LEFT_OUT = ("HalfWavePlate", "QuarterWavePlate", "Polarizer", "QPlate", "Rotator", "FaradayRotator", "SpiralPlate")
 
 
@@ -67,15 +87,16 @@ def mistakes(train: Any, target: str) -> Iterator[Mistake]:
     train : as declared.
     target : camera, detector or port that is looked at; only parts that its light meets are tried.
     """
-    names = _met(train, target)
+    names = met(train, target)
     for name in names:
         yield from _of_part(train, name)
+    yield from _out_of_order(train, names)
     yield from _extra(train, target)
     for name in names:
         yield from _knobs(train, name)
 
 
-def _met(train: Any, target: str) -> list[str]:
+def met(train: Any, target: str) -> list[str]:
     """Parts on the way to a target, in order."""
     legs = [leg.element_name for route in train.routes(target) for leg in route.legs]
     sources = [route.source_name for route in train.routes(target)]
@@ -88,7 +109,7 @@ def _number(value: Any) -> bool:
 
 def _of_part(train: Any, name: str) -> Iterator[Mistake]:
     part = train.elements[name]
-    for words, values in (*_of_axes(part), *_of_charge(part), *_of_ends(part)):
+    for words, values in (*_of_axes(part), *_of_charge(part), *_of_retardance(part), *_of_ends(part)):
         try:
             yield Mistake(f"{name}: {words}", train.with_changes({f"{name}.{k}": v for k, v in values.items()}))
         except FastaxisError:
@@ -110,10 +131,43 @@ def _of_axes(part: Any) -> Iterator[tuple[str, dict[str, Any]]]:
 
 
 def _of_charge(part: Any) -> Iterator[tuple[str, dict[str, Any]]]:
-    if isinstance(part, QPlate):
+    """The sign, and the other plates of the drawer."""
+    if isinstance(part, QPlate) and _number(part.q):
         yield "sign of q (the plate stands back to front)", {"q": -part.q}
-    if isinstance(part, SpiralPlate):
+        for q in DRAWER_Q:
+            if abs(q) != abs(part.q):
+                yield f"another plate, of q = {q:g}", {"q": q}
+    if isinstance(part, SpiralPlate) and _number(part.charge):
         yield "sign of the charge (the plate stands back to front)", {"charge": -part.charge}
+        for charge in DRAWER_CHARGES:
+            if abs(charge) != abs(part.charge):
+                yield f"another plate, of charge {charge:+d}", {"charge": charge}
+
+
+def _of_retardance(part: Any) -> Iterator[tuple[str, dict[str, Any]]]:
+    """A half-wave plate in place of a quarter-wave plate, and the other way round."""
+    given: Any = part.parameters().get("retardance")
+    if not isinstance(part, Retarder | QPlate) or not _number(given):
+        return
+    for meant, taken, words in ((QUARTER, HALF, "half"), (HALF, QUARTER, "quarter")):
+        if abs(given - meant) < LIKE:
+            yield f"a {words}-wave plate in its place", {"retardance": taken}
+
+
+def _out_of_order(train: Any, names: list[str]) -> Iterator[Mistake]:
+    """Neighbouring parts in each other's place, whatever travel lies between them."""
+    parts = [name for name in names if isinstance(train.elements[name], ORDERED)]
+    for first, second in pairwise(parts):
+        one, other = train.elements[first], train.elements[second]
+        if _renamed(one, "") == _renamed(other, ""):
+            continue
+        copy = train.copy()
+        copy.elements = {**copy.elements, first: _renamed(other, first), second: _renamed(one, second)}
+        yield Mistake(f"{first} and {second} in each other's place", copy)
+
+
+def _renamed(part: Any, name: str) -> Any:
+    return replace(part, name=name)
 
 
 def _of_ends(part: Any) -> Iterator[tuple[str, dict[str, Any]]]:
