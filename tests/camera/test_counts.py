@@ -156,10 +156,12 @@ def test_a_train_hands_its_sensor_to_exposures_files_and_sweeps(tmp_path):
 
 
 def test_the_listing_says_how_full_the_brightest_pixel_is():
-    shots = bench(sensor=SENSOR, exposure_time=1 * ms).expose("cam", [fa.H])
+    shots = bench(sensor=SENSOR, exposure_time=0.2 * ms).expose("cam", [fa.H])
     share = shots.electrons("H").max() / 1e4
-    full = f"  the brightest pixel is full after {1 / share:.3g} ms"
-    assert f"{full}; at 1 ms it holds {share:.3g} of that" in str(shots).split("\n")
+    assert 0 < share < 1
+    full = f"  the brightest pixel is full after {0.2 / share:.3g} ms"
+    assert f"{full}; at 0.2 ms it holds {share:.3g} of that" in str(shots).split("\n")
+    assert f"{full}; at 2 ms it is saturated" in str(replace(shots, exposure_time=2 * ms)).split("\n")
     assert full in str(replace(shots, exposure_time=None)).split("\n")
     assert "full" not in str(replace(shots, sensor=None))
     assert "full" not in str(replace(shots, stokes=0 * shots.stokes, sensor=replace(SENSOR, dark_current=0.0)))

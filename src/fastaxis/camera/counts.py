@@ -8,7 +8,7 @@ from typing import TYPE_CHECKING, Any
 import numpy as np
 from numpy.typing import NDArray
 
-from fastaxis.camera.photons import electrons_of, read_with, signal_to_noise
+from fastaxis.camera.photons import electrons_of, read_with, signal_to_noise, time_words
 from fastaxis.elements.sensor import Sensor
 from fastaxis.errors import ParameterError
 
@@ -59,7 +59,7 @@ class Counts:
         pixels = int(self.saturated.sum())
         told = f"{pixels} of {self.saturated.size} pixels saturated" if pixels else "none saturated"
         return (
-            f"{where}: {self.exposure_time * 1e3:.4g} ms, brightest {int(self.counts.max())} of "
+            f"{where}: {time_words(self.exposure_time)}, brightest {int(self.counts.max())} of "
             f"{self.sensor.largest_count} counts, {100 * self.fill:.3g} % of the well, {told}, "
             f"signal to noise up to {float(self.signal_to_noise[~self.saturated].max(initial=0.0)):.3g}"
         )

@@ -231,7 +231,7 @@ class Exposure:
         >>> print(shots.counts("H", seed=1))
         cam H: 0.5 ms, brightest 2365 of 4095 counts, 55.8 % of the well, none saturated, signal to noise up to 76.5
         >>> f"{shots.saturates_after / ms:.3f} ms"
-        '0.894 ms'
+        '0.895 ms'
         """
         return counts(self, self._setting(which), exposure_time=exposure_time, seed=seed, noise=noise, sensor=sensor)
 

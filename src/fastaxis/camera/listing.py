@@ -6,6 +6,7 @@ import math
 from typing import TYPE_CHECKING
 
 from fastaxis.camera.mounting import Mounting
+from fastaxis.camera.photons import time_words
 
 if TYPE_CHECKING:
     from fastaxis.camera.exposure import Exposure, Row
@@ -30,9 +31,12 @@ def _filled(shots: Exposure) -> list[str]:
     """How full the brightest pixel of all settings gets, where the camera says what it holds."""
     if shots.sensor is None or not math.isfinite(after := shots.saturates_after):
         return []
-    full = f"  the brightest pixel is full after {1e3 * after:.3g} ms"
+    full = f"  the brightest pixel is full after {time_words(after)}"
     time = shots.exposure_time
-    return [full if time is None else f"{full}; at {1e3 * time:.3g} ms it holds {time / after:.3g} of that"]
+    if time is None:
+        return [full]
+    held = f"holds {time / after:.3g} of that" if time <= after else "is saturated"
+    return [f"{full}; at {time_words(time)} it {held}"]
 
 
 def _words(row: Row, dark_below: float) -> str:

@@ -14,8 +14,9 @@ if TYPE_CHECKING:
     from fastaxis.camera.exposure import Exposure
     from fastaxis.elements.sensor import Sensor
 
-__all__ = ["electrons_of", "fills_well_after", "photons_per_joule", "read_with", "signal_to_noise"]
+__all__ = ["electrons_of", "fills_well_after", "photons_per_joule", "read_with", "signal_to_noise", "time_words"]
 
+TIMES = ((0.1, 1.0, "s"), (1e-4, 1e-3, "ms"), (1e-7, 1e-6, "us"), (0.0, 1e-9, "ns"))  # from, unit; exposures go by ms
 QUANTIZATION = 1 / 12  # counts squared, of rounding to whole counts
 
 
@@ -88,3 +89,13 @@ def signal_to_noise(electrons: Any, sensor: Sensor, exposure_time: float) -> NDA
     quantization = QUANTIZATION / sensor.counts_per_electron**2
     light = electrons - sensor.dark_current * exposure_time
     return np.asarray(light / np.sqrt(electrons + sensor.read_noise**2 + quantization))
+
+
+def time_words(time: float) -> str:
+    """An exposure time.
+
+    >>> time_words(0.5e-3), time_words(4.95e-7)
+    ('0.5 ms', '0.495 us')
+    """
+    _, unit, name = next(step for step in TIMES if time >= step[0])
+    return f"{time / unit:.3g} {name}"
