@@ -8,7 +8,7 @@ from fastaxis import checks
 from fastaxis.errors import ParameterError
 from fastaxis.maths import is_symbolic
 
-__all__ = ["an_angle", "at_least", "real", "slack"]
+__all__ = ["a_place", "an_angle", "at_least", "positive", "real", "slack", "whole"]
 
 
 def real(assertion: str, parameter: str, value: Any, *, fix: str) -> float:
@@ -39,6 +39,38 @@ def at_least(assertion: str, parameter: str, value: Any, least: float, *, fix: s
             f"{parameter} must be {least:g} or more", got=f"{assertion}: {parameter} = {value}", fix=fix
         )
     return found
+
+
+def positive(assertion: str, parameter: str, value: Any, *, fix: str) -> float:
+    """A finite number above zero: how far off something may be, or a length."""
+    found = real(assertion, parameter, value, fix=fix)
+    if not found > 0:
+        raise ParameterError(f"{parameter} must be positive", got=f"{assertion}: {parameter} = {value}", fix=fix)
+    return found
+
+
+def whole(assertion: str, parameter: str, value: Any, *, fix: str) -> int:
+    """A whole number.
+
+    >>> whole("charge", "charge", -1.0, fix="charge=-1")
+    -1
+    """
+    found = real(assertion, parameter, value, fix=fix)
+    if found != round(found):
+        raise ParameterError(f"{parameter} must be a whole number", got=f"{assertion}: {parameter} = {value}", fix=fix)
+    return int(found)
+
+
+def a_place(assertion: str, value: Any) -> tuple[float, float]:
+    """A place (x, y) [m]."""
+    try:
+        x, y = value
+    except (TypeError, ValueError):
+        raise ParameterError(
+            "centre is a place (x, y) in metres", got=f"{assertion}: centre = {value!r}", fix="centre=(0.1*mm, 0)"
+        ) from None
+    first, second = (real(assertion, "centre", one, fix="centre=(0.1*mm, 0)") for one in (x, y))
+    return first, second
 
 
 def slack(assertion: str, value: Any) -> float:

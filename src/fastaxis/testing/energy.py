@@ -4,6 +4,8 @@ from __future__ import annotations
 
 from typing import Any
 
+from fastaxis.errors import ParameterError
+from fastaxis.testing.asked import at_least, positive
 from fastaxis.testing.failing import BenchError
 from fastaxis.testing.words import watts
 
@@ -22,7 +24,16 @@ def energy_closes(train: Any, *, absorbed: float = 0.0, within: float = 1e-6) ->
     Raises
     ------
     BenchError : power is missing, or there is too much.
+    ParameterError : a share absorbed that is not between 0 and 1; a deviation that is not positive.
     """
+    absorbed = at_least("energy_closes", "absorbed", absorbed, 0.0, fix="absorbed=0.25")
+    within = positive("energy_closes", "within", within, fix="within=1e-6")
+    if absorbed > 1:
+        raise ParameterError(
+            "what parts absorb is a share of the power, 0 to 1",
+            got=f"energy_closes: absorbed = {absorbed:g}",
+            fix="absorbed=0.25",
+        )
     sent = float(sum(train.elements[name].power for name in train.sources))
     ends = [f"{name}.{part.entry}" for name, part in train.elements.items() if part.exit is None and part.entry]
     ports = [*train.open_ports(), *(port for port in ends if port in train.lit)]

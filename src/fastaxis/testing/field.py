@@ -7,6 +7,7 @@ from typing import Any
 import numpy as np
 
 from fastaxis.errors import ParameterError
+from fastaxis.testing.asked import positive
 from fastaxis.testing.failing import Claim, hold
 
 __all__ = ["field_equal"]
@@ -26,8 +27,10 @@ def field_equal(train: Any, port: str, expected: Any, *, x: Any, y: Any, within:
     Raises
     ------
     BenchError : it is another field.
-    ParameterError : the light has parts that do not interfere; the shapes differ.
+    ParameterError : the light has parts that do not interfere; the shapes differ; the expected field is dark or not
+        of finite numbers; a deviation that is not positive.
     """
+    within = positive("field_equal", "within", within, fix="within=1e-3")
     columns, rows = np.asarray(x, float), np.asarray(y, float)
     wanted = _field(expected, port, columns, rows) if hasattr(expected, "elements") else np.asarray(expected, complex)
     if wanted.shape != (2, rows.size, columns.size):
@@ -35,6 +38,13 @@ def field_equal(train: Any, port: str, expected: Any, *, x: Any, y: Any, within:
             "a field is (Ex, Ey) at all columns and rows",
             got=f"field_equal: {wanted.shape} for {rows.size} rows and {columns.size} columns",
             fix="np.stack([ex, ey])",
+        )
+
+    if not np.isfinite(wanted).all() or not wanted.any():
+        raise ParameterError(
+            "the expected field has light and finite numbers",
+            got=f"field_equal: {'darkness' if np.isfinite(wanted).all() else 'numbers that are not finite'}",
+            fix=f'port_dark(train, "{port}")',
         )
 
     def off(bench: Any) -> float:

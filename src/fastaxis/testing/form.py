@@ -6,6 +6,7 @@ from typing import Any
 
 import numpy as np
 
+from fastaxis.errors import ParameterError
 from fastaxis.testing.failing import BenchError
 
 __all__ = ["form_equal"]
@@ -31,8 +32,10 @@ def form_equal(train: Any, target: str, expected: Any, *, behind: Any) -> None:
     Raises
     ------
     BenchError : it is another.
+    ParameterError : what is expected is no expression.
     """
     derived = train.derive(target).frame(behind)
+    expected = _expression(derived, expected)
     difference = derived - expected
     letters = sorted(derived.free_symbols | expected.free_symbols, key=str)
     generator = np.random.default_rng(20)
@@ -48,6 +51,18 @@ def form_equal(train: Any, target: str, expected: Any, *, behind: Any) -> None:
             got=f"{derived}, which differs by up to {worst:.2g} at random points",
             cause=_cause(derived, expected, letters),
         )
+
+
+def _expression(derived: Any, expected: Any) -> Any:
+    """What is expected as an expression; a plain number is one."""
+    try:
+        return 0 * derived + expected
+    except TypeError:
+        raise ParameterError(
+            "a form is compared with a sympy expression in the letters of the train",
+            got=f"form_equal: {expected!r:.60}",
+            fix='form_equal(train, "cam", sympy.cos(theta)**2, behind=fa.H)',
+        ) from None
 
 
 def _cause(derived: Any, expected: Any, letters: list[Any]) -> str:

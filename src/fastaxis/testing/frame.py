@@ -7,7 +7,9 @@ from typing import Any
 import numpy as np
 from numpy.typing import NDArray
 
+from fastaxis.camera.exposing import sensor_at
 from fastaxis.errors import ParameterError
+from fastaxis.testing.asked import positive
 from fastaxis.testing.failing import Claim, hold
 
 __all__ = ["frame_matches", "likeness"]
@@ -42,15 +44,23 @@ def frame_matches(
     Raises
     ------
     BenchError : it looks otherwise.
-    ParameterError : it has another shape.
+    ParameterError : it has another shape, or numbers that are not finite; a deviation that is not positive; no
+        camera or detector of that name.
     """
+    within = positive("frame_matches", "within", within, fix="within=0.02")
     wanted = np.asarray(recorded, float)
-    shape = train.elements[camera.partition(".")[0]].shape
+    shape = getattr(sensor_at(train, camera), "shape", (1, 1))
     if wanted.shape != tuple(shape):
         raise ParameterError(
             f"the recorded frame has the shape of the camera's: {tuple(shape)}",
             got=f"frame_matches: {wanted.shape}",
             fix='shots.frame("H")',
+        )
+    if not np.isfinite(wanted).all():
+        raise ParameterError(
+            "a recorded frame holds finite numbers only",
+            got=f"frame_matches: {np.count_nonzero(~np.isfinite(wanted))} that are not",
+            fix="np.nan_to_num(frame)",
         )
     free = [word for word, is_free in (("scale", scale), ("shift", shift), ("flip", flip)) if is_free]
 

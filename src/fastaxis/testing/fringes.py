@@ -8,7 +8,8 @@ import numpy as np
 
 from fastaxis.analysis.visibility import visibility as visibility_of
 from fastaxis.camera.settings import as_setting, no_analyzer
-from fastaxis.errors import WiringError
+from fastaxis.errors import ParameterError, WiringError
+from fastaxis.testing.asked import at_least, positive
 from fastaxis.testing.failing import Claim, hold
 
 __all__ = ["visibility"]
@@ -36,7 +37,17 @@ def visibility(
     ------
     BenchError : they are deeper or shallower.
     WiringError : no knob, and not two paths.
+    ParameterError : a visibility that is not between 0 and 1; a deviation that is not positive; a knob that has no
+        number.
     """
+    expected = at_least("visibility", "expected", expected, 0.0, fix="expected=0.9")
+    within = positive("visibility", "within", within, fix="within=0.01")
+    if expected > 1:
+        raise ParameterError(
+            "a visibility lies between 0 and 1", got=f"visibility: expected = {expected:g}", fix="expected=0.9"
+        )
+    if knob is not None:
+        _check_knob(train, knob)
 
     def found(bench: Any) -> tuple[float, str]:
         return _of_paths(bench, target, behind) if knob is None else _stepped(bench, target, behind, knob)
@@ -51,6 +62,20 @@ def visibility(
             "train",
         ),
     )
+
+
+def _check_knob(train: Any, knob: str) -> None:
+    part, _, parameter = knob.partition(".")
+    element = train.elements.get(part)
+    known = {} if element is None else element.parameters()
+    value = known.get(parameter)
+    if isinstance(value, bool) or not isinstance(value, int | float):
+        phases = [f"{name}.phase" for name, one in train.elements.items() if "phase" in one.parameters()]
+        raise ParameterError(
+            "a knob is a parameter with a number that is stepped through a turn",
+            got=f"visibility: knob = {knob!r}",
+            fix=f'knob="{(*phases, "shift.phase")[0]}"',
+        )
 
 
 def _of_paths(train: Any, target: str, behind: Any) -> tuple[float, str]:

@@ -10,7 +10,7 @@ from fastaxis.analysis.lobes import Lobes, lobes
 from fastaxis.analysis.turning import turning as turning_of
 from fastaxis.errors import ParameterError
 from fastaxis.light import linear
-from fastaxis.testing.asked import an_angle, slack
+from fastaxis.testing.asked import a_place, an_angle, at_least, positive, real, slack, whole
 from fastaxis.testing.failing import Claim, hold
 from fastaxis.testing.words import degrees
 
@@ -35,7 +35,10 @@ def lobe_count(train: Any, camera: str, count: int, *, behind: Any, centre: tupl
     Raises
     ------
     BenchError : there are more or fewer.
+    ParameterError : a count that is negative or not whole.
     """
+    count, centre = whole("lobe_count", "count", count, fix="2"), a_place("lobe_count", centre)
+    at_least("lobe_count", "count", count, 0, fix="2")
 
     def found(shots: Any) -> int:
         return _lobes(shots, centre).count
@@ -73,6 +76,7 @@ def lobe_angle(
     ParameterError : an angle that is no number, or was meant in degrees.
     """
     angle, within = an_angle("lobe_angle", "angle", angle), slack("lobe_angle", within)
+    centre = a_place("lobe_angle", centre)
 
     def misfit(shots: Any) -> float:
         found = _lobes(shots, centre)
@@ -114,7 +118,16 @@ def turning(
     Raises
     ------
     BenchError : they turn at another rate, or there are none.
+    ParameterError : a rate that is no number; a deviation that is not positive; fewer than two analyzers.
     """
+    rate = real("turning", "rate", rate, fix="+1")
+    within, centre = positive("turning", "within", within, fix="within=0.05"), a_place("turning", centre)
+    if len(tuple(analyzers)) < 2:
+        raise ParameterError(
+            "lobes turn from one analyzer to the next",
+            got=f"turning: {len(tuple(analyzers))} analyzers",
+            fix="analyzers=[fa.linear(0*deg), fa.linear(15*deg)]",
+        )
 
     def misfit(shots: Any) -> float:
         return abs(turning_of(shots, centre=centre).rate - rate) / within

@@ -6,6 +6,7 @@ from typing import Any
 
 from fastaxis.analysis.widths import ring_radius as radius_of
 from fastaxis.camera.settings import no_analyzer
+from fastaxis.testing.asked import a_place, at_least, positive
 from fastaxis.testing.failing import Claim, hold
 from fastaxis.testing.words import microns
 
@@ -35,7 +36,10 @@ def ring_radius(
     Raises
     ------
     BenchError : the ring is wider, narrower, or a spot.
+    ParameterError : a radius that is negative or no number; a deviation that is not positive.
     """
+    radius = at_least("ring_radius", "radius", radius, 0.0, fix="90*um")
+    within, centre = positive("ring_radius", "within", within, fix="within=0.02"), a_place("ring_radius", centre)
     setting = no_analyzer() if behind is None else behind
 
     def found(shots: Any) -> float:

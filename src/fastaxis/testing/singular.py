@@ -8,6 +8,7 @@ from typing import Any
 from fastaxis.analysis.singular import polarization_index
 from fastaxis.camera.settings import no_analyzer
 from fastaxis.errors import ParameterError
+from fastaxis.testing.asked import a_place, positive, real, whole
 from fastaxis.testing.failing import Claim, hold
 
 __all__ = ["singular_index"]
@@ -28,7 +29,10 @@ def singular_index(
     Raises
     ------
     BenchError : the index is another, or the circle crosses darkness or circular light.
+    ParameterError : an index that is no multiple of 1/2; a radius that is not positive.
     """
+    whole("singular_index", "twice the index", 2 * real("singular_index", "index", index, fix="+1"), fix="+1/2")
+    radius, centre = positive("singular_index", "radius", radius, fix="radius=80*um"), a_place("singular_index", centre)
 
     def found(shots: Any) -> float | str:
         seen = shots.upright  # a mirrored picture flips the places alone

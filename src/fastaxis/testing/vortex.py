@@ -12,6 +12,7 @@ from fastaxis.engines import propagate
 from fastaxis.errors import ParameterError
 from fastaxis.light import State
 from fastaxis.plan import make_plan
+from fastaxis.testing.asked import a_place, positive, real, whole
 from fastaxis.testing.failing import Claim, hold
 
 __all__ = ["charge"]
@@ -44,7 +45,15 @@ def charge(
     Raises
     ------
     BenchError : another charge prevails.
+    ParameterError : a charge that is not whole, or beyond what the points on the circle tell; a radius that is not
+        positive; a share that is not between 0 and 1.
     """
+    charge = whole("charge", "charge", charge, fix="+1")
+    if not abs(charge) < POINTS // 2:
+        raise ParameterError(
+            f"a charge is told up to {POINTS // 2 - 1}, either way", got=f"charge: charge = {charge}", fix="+1"
+        )
+    radius, centre = positive("charge", "radius", radius, fix="radius=0.5*mm"), a_place("charge", centre)
     across = np.conj(behind.jones)
 
     def content(bench: Any) -> NDArray[np.float64]:
@@ -73,6 +82,7 @@ def charge(
 
 
 def _check(share: float) -> None:
+    share = real("charge", "share", share, fix="share=0.9")
     if not 0 < share < 1:
         raise ParameterError("a share lies between 0 and 1", got=f"charge: share = {share!r}", fix="share=0.9")
 
