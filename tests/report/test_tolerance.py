@@ -56,3 +56,14 @@ def test_saving(found, tmp_path):
     assert "hwp.fast" in text.read_text(encoding="utf-8")
     with pytest.raises(fa.FileFormatError, match="pdf, png or txt"):
         found.save(tmp_path / "study.doc")
+
+
+def test_what_a_figure_was_read_off_stands_beside_it():
+    train = fa.Train(wavelength=532 * nm, name="Cinder").along(
+        fa.Laser(waist=0.4 * mm, power=1e-3, state=fa.H, name="laser"),
+        fa.Aperture(radius=0.3 * mm, name="iris"),
+    )
+    study = train.tolerance({"laser.waist": normal(0.01 * mm)}, {"through": power_at("iris")}, draws=100)
+    said = " ".join(text.get_text() for page in draw_tolerance(study) for one in page.axes for text in one.texts)
+    assert "read off a response surface in laser.waist" in said
+    assert "fresh draws" in said

@@ -29,6 +29,7 @@ class Study(Protocol):
     nominal: Any
     rankings: Any
     seed: int
+    surfaces: Any
 
     @property
     def samples(self) -> Any: ...
@@ -44,7 +45,7 @@ def draw_tolerance(study: Study) -> tuple[Figure, ...]:
         sheets = [blank()]
         _head(sheets[0], study)
         for name in study.merits:
-            needed = HIGH + 0.5 + (FRAME + 0.6 if _camera(study, name) else 0)
+            needed = HIGH + 0.5 + (0.25 if name in study.surfaces else 0) + (FRAME + 0.6 if _camera(study, name) else 0)
             if sheets[-1].room < needed:
                 sheets.append(blank())
             _draw(sheets[-1], study, name)
@@ -62,6 +63,8 @@ def _draw(sheet: Sheet, study: Study, name: str) -> None:
     sheet.y += 0.12
     sheet.rule()
     sheet.write(name, size=10, bold=True)
+    if name in study.surfaces:
+        sheet.write(str(study.surfaces[name]), size=7, colour=SOFT)
     width = sheet.width - 2 * MARGIN
     _bars(_axes(sheet, MARGIN + 1.45, width / 2 - 1.6, HIGH), study.rankings[name])
     _histogram(_axes(sheet, MARGIN + width / 2 + 0.4, width / 2 - 0.4, HIGH), study, name)

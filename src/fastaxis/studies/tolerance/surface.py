@@ -42,4 +42,4 @@ class Surface:
         if not self.used:
             return f"every draw propagated: a response surface was {off}"
         made = f"{self.points} points, {self.propagations} propagations"
-        return f"a response surface in {', '.join(self.parameters)} ({made}) is {off}"
+        return f"read off a response surface in {', '.join(self.parameters)} ({made}), {off}"
