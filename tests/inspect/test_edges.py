@@ -381,3 +381,18 @@ def test_arms_that_are_alike_give_each_finding_once(bench_of):
     train.along("split.reflected", "join.side").along("join.reflected", CAMERA)
     train.along("join.transmitted", fa.BeamDump(name="dump"))
     assert len(checks(train, "plane shown")) == 1
+
+
+@pytest.mark.parametrize(("angle", "faces"), [(42, ""), (-42, ""), (42, ".back"), (-40, ".back")])
+def test_the_fix_of_an_isolator_sets_rotator_and_output_right(bench_of, angle, faces):
+    train = bench_of(state=fa.linear(20 * deg) if not faces else fa.linear(-20 * deg))
+    train.add(fa.Polarizer(axis=20 * deg, extinction=1e5, name="in"))
+    train.add(fa.FaradayRotator(angle=angle * deg, name="rotator"))
+    train.add(fa.Polarizer(axis=(20 + angle) * deg, extinction=1e5, name="out"))
+    train.along("laser", f"in{faces}", f"rotator{faces}", f"out{faces}").along(
+        "out.front" if faces else "out.back", fa.Detector(name="meter")
+    )
+    (found,) = checks(train, "isolator")
+    mended = eval(found.fix, {"train": train, "deg": deg})
+    assert not checks(mended, "isolator")
+    assert mended.power("meter") == pytest.approx(1e-3, rel=1e-9)

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import math
 from collections.abc import Iterator
 
 import numpy as np
@@ -9,7 +10,7 @@ import numpy as np
 from fastaxis.inspect.bench import Bench, Visit
 from fastaxis.inspect.checks.polarizers import axis_fix, passing
 from fastaxis.inspect.finding import Finding, Severity
-from fastaxis.inspect.isolating import isolators_of
+from fastaxis.inspect.isolating import Isolator, isolators_of
 from fastaxis.inspect.words import degrees, percent
 from fastaxis.laws import AxisLaw, CircularLaw
 from fastaxis.maths import NUMBERS
@@ -33,18 +34,29 @@ def isolators(bench: Bench) -> Iterator[Finding]:
                 fix=axis_fix(visit),
             )
         elif leak > 1e-3:
-            yield _leaking(trio[1], leak)
+            yield _leaking(trio, leak)
 
 
-def _leaking(rotator: Visit, leak: float) -> Finding:
+def _leaking(trio: Isolator, leak: float) -> Finding:
+    rotator = trio[1]
     return Finding(
         severity=Severity.HIGH if leak > 0.1 else Severity.MEDIUM,
         check="isolator",
         element=rotator.name,
         rule="a Faraday rotator isolates at 45°, where light coming back is turned by 90° in all",
         got=f"{rotator.name}: angle {degrees(float(rotator.element.angle))}, {percent(leak)} passes backwards",
-        fix=f'train.with_changes({{"{rotator.name}.angle": 45*deg}})',
+        fix=_set_right(*trio),
     )
+
+
+def _set_right(first: Visit, rotator: Visit, last: Visit) -> str:
+    """Code for a rotator of 45 degrees in its own sense, and the output polarizer where that turns the light to."""
+    turn = math.copysign(45.0, float(rotator.element.angle))
+    # As met: from behind an axis stands mirrored, and the rotator turns the other way.
+    met = float(first.laws[0].angle) + math.radians(turn if rotator.entered == "front" else -turn)
+    axis = met if last.entered == "front" else -met
+    told = f'"{rotator.name}.angle": {turn:g}*deg, "{last.name}.axis": {degrees(axis).rstrip("°")}*deg'
+    return f"train.with_changes({{{told}}})"
 
 
 def backward_leak(trio: tuple[Visit, ...], wavelength: float) -> float:

@@ -70,9 +70,7 @@ def _mirrored(bench: Bench, visits: list[Visit], *, odd: bool) -> Iterator[Findi
         element=camera.name,
         rule=rule,
         got=f"{camera.name}: {_reflections(visits)}, orientation {camera.orientation!r}",
-        fix="nothing to mend"
-        if odd == undone
-        else f'train.with_changes({{"{camera.name}.orientation": "{wanted}"}}), or one more mirror',
+        fix="nothing to mend" if odd == undone else f'train.with_changes({{"{camera.name}.orientation": "{wanted}"}})',
     )
 
 
@@ -104,7 +102,7 @@ def _round(mode: Any) -> bool:
 
 def _turned(visits: list[Visit]) -> Iterator[Finding]:
     turning = [visit.flips for visit in visits if visit.flips[0] % 2 and visit.flips[1] % 2]
-    if turning:
+    if turning and visits[0].element.orientation != "turned 180":
         x, y = turning[0]
         name = visits[0].name
         yield Finding(

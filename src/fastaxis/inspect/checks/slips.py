@@ -52,23 +52,30 @@ def _cautions(element: Element, wavelength: float) -> Iterator[Finding]:
 
 def _whole_radians(name: str, element: Element) -> Iterator[Finding]:
     """Angles of whole radians: 3 written for 3 deg; multiples of pi are never whole."""
-    for parameter, value in _angles(element):
+    for parameter, value, change in _angles(element):
         if is_symbolic(value) or not isinstance(value, int | float) or value == 0 or value != round(value):
             continue
         yield _slip(
             name, "bare degrees", got=f"{parameter} = {value:g} rad = {degrees(value)}",
             rule="angles are in radians, and whole numbers of radians are rare",
-            fix=f'train.with_changes({{"{name}.{parameter}": {value:g}*deg}})',
+            fix=f'train.with_changes({{"{name}.{change}}})',
         )  # fmt: skip
 
 
-def _angles(element: Element) -> Iterator[tuple[str, Any]]:
+def _angles(element: Element) -> Iterator[tuple[str, Any, str]]:
+    """(name, value, the change that makes degrees of it) of each angle of a part and of the states it holds."""
     for field in fields(element):
         value = getattr(element, field.name)
-        if field.name in ANGLES and not isinstance(value, State):
-            yield field.name, value
         if isinstance(value, State):
-            yield from ((angle, getattr(value, angle)) for angle in ("azimuth", "ellipticity"))
+            yield from _of_state(field.name, value)
+        elif field.name in ANGLES and not is_symbolic(value) and isinstance(value, int | float):
+            yield field.name, value, f'{field.name}": {value:g}*deg'
+
+
+def _of_state(parameter: str, state: State) -> Iterator[tuple[str, Any, str]]:
+    azimuth, ellipticity = state.azimuth, state.ellipticity
+    made = f"fa.elliptical({azimuth}*deg, {ellipticity})" if ellipticity != 0 else f"fa.linear({azimuth}*deg)"
+    yield f"{parameter}.azimuth", azimuth, f'{parameter}": {made}'
 
 
 def _sizes(element: Element) -> Iterator[Finding]:
