@@ -33,9 +33,10 @@ def derive(bench: BenchFile, options: Namespace) -> int:
     for target in targets(train, options.camera):
         form = train.derive(target)
         say(f"{train.name}, {target}: light relative to its envelope [sqrt(W)/m]")
-        for name, value in _quantities(form, options.setting, options.view):
+        quantities = dict(_quantities(form, options.setting, options.view))
+        for name, value in quantities.items():
             say(f"  {name} = {form.show(value, latex=options.latex)}")
-        for name, meaning in form.meanings.items():
+        for name, meaning in form.names_in(quantities.values()).items():
             say(f"    with {form.show(name, latex=options.latex)} = {form.show(meaning, latex=options.latex)}")
         for line in form.assumptions[1:]:  # the first is the stamp, which closes the answer
             say(f"  assumed: {line}")

@@ -12,13 +12,14 @@ from typing import Any
 
 import numpy as np
 
-from fastaxis.laws import Flip, TravelLaw
+from fastaxis.laws import Flip, Stop, TravelLaw
 from fastaxis.light import Component, Source
 from fastaxis.plan.arms import FAINT, MOST, Strength, upstream
 from fastaxis.plan.binding import bound, refuse_letters
 from fastaxis.plan.closed import closed
 from fastaxis.plan.covariant import covariance_reason
 from fastaxis.plan.plan import Branch, Plan
+from fastaxis.plan.spread import closed as closed_stop
 from fastaxis.plan.spread import of_beam
 from fastaxis.plan.steps import Step, Steps
 from fastaxis.train.graph import Node, lit_nodes, source_nodes
@@ -119,9 +120,19 @@ class _Bench:
         return cls(graph, upstream(graph, lit, end), end)
 
     def place(self) -> Node | None:
-        """Where light comes together that every trip passes; None if there is no such place, or no loop."""
+        """Where light comes together that every trip passes; None if there is no such place, or no loop.
+
+        Directly behind a hole light ends at the rim; elsewhere its tails are followed as far as they matter.
+        """
+        if not self.loops():
+            return None
         meeting = sorted(node for node in self.inside if len(self._before(node)) > 1)
-        return next((node for node in meeting if self.loops() and not self.loops(node)), None)
+        return next((node for node in (*self._holes(), *meeting) if not self.loops(node)), None)
+
+    def _holes(self) -> list[Node]:
+        edges = [(out, d) for into, out, d in self.graph.edges(data=True) if {into, out} <= self.inside]
+        inner = [(out, d["passage"].laws) for out, d in edges if d["kind"] == "inside"]
+        return sorted(out for out, laws in inner if any(_clear(getattr(law, "stop", None)) for law in laws))
 
     def _before(self, node: Node) -> list[Node]:
         return [before for before in self.graph.predecessors(node) if before in self.inside]
@@ -157,13 +168,21 @@ class _Bench:
         return found
 
 
+def _clear(stop: Stop | None) -> bool:
+    return stop is not None and closed_stop(stop)
+
+
+def _cut(way: Branch) -> bool:
+    """Whether a hole gives the light an end."""
+    return any(_clear(getattr(step.law, "stop", None)) for step in way.steps)
+
+
 def _plan(train: Any, target: str, name: str, ways: _Ways, passes: Passes) -> Plan | None:
     laser = train.elements[name]
     refuse_letters(name, laser.parameters())
     refuse_letters(train.name, {"wavelength": train.wavelength})
     source: Source = bound(laser.source)
-    if any(term.mode.infinite for part in source.components for term in part.beam.terms):
-        return None
+    endless = any(term.mode.infinite for part in source.components for term in part.beam.terms)
     branches: list[Branch] = []
     left = 0.0
     for group, part in enumerate(source.components):
@@ -173,7 +192,11 @@ def _plan(train: Any, target: str, name: str, ways: _Ways, passes: Passes) -> Pl
         direct, entries, rounds, exits = ([_way(train, light, walk, passes) for walk in walks] for walks in lists)
         left = sum(_most_left(way.steps) for way in rounds)
         every = [*direct, *entries, *rounds, *exits]
-        if not _worth_it(left, every) or any(covariance_reason(way.steps, source) for way in every):
+        begin = entries[0].steps
+        whole = [*(way.steps for way in (*direct, *entries)), *(begin + way.steps for way in (*rounds, *exits))]
+        if endless and (direct or not all(map(_cut, entries))):
+            return None
+        if not _worth_it(left, every) or any(covariance_reason(steps, source) for steps in whole):
             return None
         trip = RoundTrip(tuple(entries), tuple(rounds), left)
         branches += [replace(way, engine="azimuthal", path=f"{way.path} -> {target}") for way in direct]

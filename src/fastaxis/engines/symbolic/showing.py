@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from collections.abc import Iterable
 from typing import Any
 
 import sympy as sp
@@ -67,6 +68,10 @@ class Shown:
         """An expression of the form with every name replaced by what it stands for."""
         assert self.meanings is not None  # writing the waves down gives their names
         return self.parts[0].field.place.letters.spelled_out(expression)
+
+    def names_in(self, values: Iterable[Any]) -> dict[Any, Any]:
+        """The names that occur in some expressions of the form, with what they stand for."""
+        return self._explained(sp.Tuple(*values))
 
     def _value(self, quantity: str, *arguments: Any, **options: Any) -> Any:
         if quantity not in QUANTITIES:
