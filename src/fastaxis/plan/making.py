@@ -141,7 +141,7 @@ def make_plan(
     ... )
     >>> plan = make_plan(train, "space2", engine="grid")
     >>> plan.engine, [step.names for step in plan.steps]
-    ('grid', [('plate1',), ('space1',), ('qplate1',), ('space2',)])
+    ('grid', [('plate1',), ('qplate1',), ('space2',)])
     """
     at_once = None if by_arms else by_network(train, target, asked=engine)
     if at_once is not None:
