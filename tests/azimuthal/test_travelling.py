@@ -1,10 +1,12 @@
 import numpy as np
 import pytest
 
+from fastaxis.engines.azimuthal import travelling
 from fastaxis.engines.azimuthal.harmonics import LEFT, Harmonics
 from fastaxis.engines.azimuthal.panels import sampled
 from fastaxis.engines.azimuthal.resolving import Settings
 from fastaxis.engines.azimuthal.travelling import arrived, images
+from fastaxis.engines.memory import forget_light
 from fastaxis.laws import TravelLaw
 from fastaxis.units import mm, nm
 
@@ -93,3 +95,19 @@ def test_light_without_a_tail_keeps_its_front_far_out():
     ring = Harmonics(orders=((LEFT, 1),), profile=profile, curvature=0.0, wavenumber=K)
     there = arrived(ring.through(TravelLaw.free(0.1 * RAYLEIGH)), SETTINGS, end=10 * W)
     assert 0 < there.curvature < 0.2 / (0.1 * RAYLEIGH)
+
+
+@pytest.mark.parametrize("reach", [0.5, 2, 4, 8, 30])
+def test_panels_are_foreseen_and_few_have_to_be_halved(vortex_light, reach, monkeypatch):
+    forget_light()
+    asked = []
+    first = travelling.resolved
+    monkeypatch.setattr(
+        travelling, "resolved", lambda f, edges, settings: asked.append(len(edges) - 1) or first(f, edges, settings)
+    )
+    there = arrived(vortex_light.through(TravelLaw.free(0.1 * RAYLEIGH)), SETTINGS, end=reach * W)
+    found = len(there.profile.edges) - 1
+    assert there.profile.edges[0] == 0
+    assert there.profile.edges[-1] == reach * W
+    assert found <= asked[0] * 1.6 + 1
+    assert there.error < 1e-11

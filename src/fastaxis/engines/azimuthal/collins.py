@@ -23,7 +23,7 @@ from fastaxis.laws import TravelLaw
 
 __all__ = ["Collins", "turn"]
 
-BLOCK = 1 << 20  # kernel values at a time: 8 MB stay in the cache
+BLOCK = 1 << 16  # kernel values at a time: half a megabyte stays in the cache of a core
 WHOLE = 0.4  # share of the phase of a part that an uncut panel may carry
 AT_RISK, NEARLY = 2, 9  # panels, places
 TURNS = (1, 1j, -1, -1j)

@@ -24,6 +24,9 @@ ROUNDING = 4 * np.finfo(float).eps
 MOST_LOOKED_AT = 256
 LOOKED_AT = (np.arange(6) + 0.5) / 6  # shares of a length
 
+CARRIED = 16.0  # phase [rad] of a panel of 32 nodes with an envelope of its own: 2.5 fringes, less what that takes
+RIM = 1e-12  # of the peak: where a field ends in the dark
+
 TAPER = 0.7
 NEGLIGIBLE = 1e-12
 """Phase [rad] of diffraction that changes nothing, at the highest frequency, which has 1e-12 of the amplitude or less.
@@ -162,7 +165,8 @@ def _travelled(field: Harmonics, settings: Settings, start: float, end: float | 
         edges = _first_edges(start, max(4 * waist.radius, 2 * start))
         profile, rest, cut = extended(section, edges, settings)
     else:
-        profile, rest = resolved(section, _first_edges(start, end), settings)
+        edges = _first_edges(start, end) if start else _foreseen(field, waist, curvature, end, settings.most)
+        profile, rest = resolved(section, edges, settings)
         cut = False
     taper = Taper(TAPER * profile.end, profile.end) if cut else None
     return _Arrival(profile, curvature, taper, max(rest, settings.settled) + share_of_error(section, profile))
@@ -174,6 +178,31 @@ def _balanced(before: Harmonics, behind: Harmonics) -> Harmonics:
         return behind
     missing = [max(b - a, 0.0) + c for b, a, c in zip(before.powers, behind.powers, before.beyond, strict=True)]
     return replace(behind, beyond=(missing[0], missing[1]))
+
+
+def _foreseen(field: Harmonics, waist: _Waist, curvature: float, end: float, most: int) -> Reals:
+    """Panels with about as many fringes each as they carry, so that few have to be halved.
+
+    On a front of its own a beam takes some panels for each charge that widens it. With the wave from a singular axis it
+    has fringes, whichever of both fronts it is on; and a lit rim sends out waves of k rim/b. Beyond the beam the tail
+    is smooth in log r.
+    """
+    flat = TravelLaw.lens(-field.curvature).then(field.section)
+    core = abs(field.profile(np.zeros(1))[np.array(field.charges) != 0]).max(initial=0.0)
+    other = flat.d / flat.b if core > RIM * field.profile.peak else curvature
+    rim = abs(field.profile.values[:, -1, -4:]).max() > RIM * field.profile.peak
+    near = end if rim else min(end, waist.reach)
+    bend = field.wavenumber * abs(other - waist.curvature) / 2
+    slope = 1.5 * CARRIED * (1 + max(abs(l) for l in field.charges)) / waist.reach
+    if rim:
+        slope = max(slope, field.wavenumber * field.profile.end / abs(flat.b))
+    whole = near * (slope + bend * near)
+    phase = np.linspace(0, whole, min(max(2, math.ceil(whole / CARRIED)), most) + 1)
+    inner = 2 * phase / (slope + np.sqrt(slope**2 + 4 * bend * phase))
+    inner[-1] = near
+    outer = near * (end / near) ** np.linspace(0, 1, max(1, math.ceil(math.log2(end / near))) + 1)
+    outer[-1] = end
+    return inner if near == end else np.concatenate([inner, outer[1:]])
 
 
 def _first_edges(start: float, end: float) -> Reals:
