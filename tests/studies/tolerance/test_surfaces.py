@@ -1,10 +1,20 @@
 """Errors that move more than polarization: a response surface beside brute force."""
 
+from concurrent.futures import ProcessPoolExecutor
+
 import numpy as np
 import pytest
 
 import fastaxis as fa
-from fastaxis.studies.tolerance import lobe_angle, normal, power_at, ring_radius, stokes_component, uniform
+from fastaxis.studies.tolerance import (
+    lobe_angle,
+    normal,
+    power_at,
+    ring_radius,
+    stokes_component,
+    together,
+    uniform,
+)
 from fastaxis.studies.tolerance.polynomials import Polynomials, nodes
 from fastaxis.units import deg, mm, nm, um
 
@@ -167,6 +177,34 @@ def test_a_wavelength_moves_the_plates_behind_the_last_pattern_too(clipped):
     assert found.samples["p"][row] == pytest.approx(bench.power("cam"), abs=2 * found.surfaces["p"].largest)
     # The power of a radial beam behind a turned plate does not depend on either: nothing but roundings is left.
     assert found.samples["lobe"].std() > 100 * found.surfaces["lobe"].error
+
+
+def test_an_error_of_nothing_moves_nothing(clipped):
+    errors = {"laser.waist": normal(0.0), "hwp.fast": normal(1 * deg)}
+    found = clipped.tolerance(errors, {"p": power_at("iris", fa.D)}, draws=100)
+    assert found.surfaces["p"].points == 1
+    row = int(np.argmax(np.abs(found.offsets[:, 1])))
+    light = clipped.with_changes(found.causes.changes(found.offsets[row])).field("iris")
+    assert found.values[row, 0] == pytest.approx(sum(one.total_stokes for one in light)[[0, 2]].sum() / 2, rel=1e-7)
+
+
+def test_any_executor_reads_the_surface(clipped):
+    errors = {"space.distance": normal(10 * mm), "qp.retardance": normal(1 * deg)}
+    alone = clipped.tolerance(errors, {"p": power_at("iris")}, draws=120)
+    with ProcessPoolExecutor(1) as pool:
+        pooled = clipped.tolerance(errors, {"p": power_at("iris")}, draws=120, executor=pool, batch=50)
+    assert pooled.surfaces["p"].used
+    assert pooled.values == pytest.approx(alone.values, rel=1e-12)
+
+
+def test_parameters_that_move_together_are_one(clipped):
+    errors = {("space.distance", "rest.distance"): together(normal(5 * mm), factors=(1, -1))}
+    found = clipped.tolerance(errors, {"ring": ring_radius("cam")}, draws=100)
+    assert found.surfaces["ring"].used
+    row = int(np.argmax(np.abs(found.offsets[:, 0])))
+    shots = clipped.with_changes(found.causes.changes(found.offsets[row])).expose("cam", [fa.no_analyzer()])
+    exact = MERITS["ring"].value(shots.frame(0), shots.x, shots.y)
+    assert found.values[row, 0] == pytest.approx(exact, abs=1.01 * found.surfaces["ring"].largest)
 
 
 def test_an_accuracy_is_a_share(clipped):

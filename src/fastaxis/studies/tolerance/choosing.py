@@ -89,7 +89,10 @@ def _tried(made: Responding, exact: Anew, stiff: tuple[str, ...], wish: Wish) ->
     check = _Check(made, exact, wish)
     best, since = check.worst, len(start)
     while not check.good.all() and len(made.polynomials) < min(most, since + PATIENCE * len(start)):
-        if not all(map(made.take, made.polynomials.next())):
+        further = made.polynomials.next()
+        if not further:
+            break
+        if not all(map(made.take, further)):
             return None
         check.look()
         if check.worst < BETTER * best:

@@ -45,7 +45,7 @@ class Polynomials:
 
     Parameters
     ----------
-    numbers : how many.
+    numbers : how many; with none at all it is the light at its one point.
     """
 
     def __init__(self, numbers: int) -> None:
@@ -67,7 +67,7 @@ class Polynomials:
 
     def point(self, index: Index) -> Reals:
         """Where an index stands, each number in -1 .. 1."""
-        return np.array([nodes(max(index) + 1)[order] for order in index])
+        return np.array([nodes(max(index, default=0) + 1)[order] for order in index])
 
     def take(self, index: Index, size: float) -> None:
         """Add an index, with the size of its surplus."""
@@ -78,6 +78,8 @@ class Polynomials:
 
         From the third order of a number on they come in pairs: a node more at one end alone makes the other end worse.
         """
+        if not self.numbers:
+            return []
         best = self._likeliest()
         place = int(np.argmax(best))
         paired = _raised(best, place, 1)
@@ -101,7 +103,7 @@ class Polynomials:
 
     def values(self, places: Reals) -> Reals:
         """H of every index taken, (rows, indices), at places (rows, numbers)."""
-        most = max(map(max, self.sizes), default=0)
+        most = max((max(index, default=0) for index in self.sizes), default=0)
         one = np.ones((most + 1, *places.shape))
         known = nodes(most + 1)
         for order in range(1, most + 1):
