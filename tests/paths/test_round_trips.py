@@ -63,7 +63,7 @@ def two_mirrors(laser, reflectance=0.04):
 @pytest.mark.parametrize(
     ("laser", "ports"),
     [
-        (fa.Laser(waist=0.25 * mm, name="laser"), ["behind", "m1.reflected", "gap.front"]),
+        (fa.Laser(waist=0.25 * mm, name="laser"), ["behind", "m1.reflected", "gap.front", "hole.back", "hole.front"]),
         (fa.Laser(mode=fa.PlaneWave(area=1 * mm**2), name="laser"), ["behind"]),
     ],
     ids=["beam", "plane wave"],

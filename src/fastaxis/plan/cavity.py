@@ -12,25 +12,23 @@ from typing import Any
 
 import numpy as np
 
-from fastaxis.laws import Flip, Stop, TravelLaw
+from fastaxis.laws import TravelLaw
 from fastaxis.light import Component, Source
-from fastaxis.plan.arms import FAINT, MOST, Strength, upstream
+from fastaxis.plan.arms import FAINT, MOST, Strength
 from fastaxis.plan.binding import bound, refuse_letters
 from fastaxis.plan.closed import closed
 from fastaxis.plan.covariant import covariance_reason
+from fastaxis.plan.loops import Loops, Walk, Ways, has_hole
 from fastaxis.plan.plan import Branch, Plan
-from fastaxis.plan.spread import closed as closed_stop
 from fastaxis.plan.spread import of_beam
 from fastaxis.plan.steps import Step, Steps
-from fastaxis.train.graph import Node, lit_nodes, source_nodes
-from fastaxis.train.routes import lit_target
+from fastaxis.train.graph import source_nodes
 
-__all__ = ["LEFT_OVER", "MOST_TRIPS", "RoundTrip", "by_trips", "reflections_round"]
+__all__ = ["LEFT_OVER", "MOST_TRIPS", "RoundTrip", "by_trips"]
 
 LEFT_OVER = 1e-12  # amplitude of all trips not followed, of the sum: what each trip is exact to
 MOST_TRIPS = 4096
 FEW = 8  # trips that are as soon done by themselves
-MOST_WAYS = 16
 WIDER = 1.1  # beams that fit stay as wide as they are but for roundings
 LOOKED_AT = 16  # trips over which a beam that does not fit is widest
 
@@ -64,7 +62,7 @@ def by_trips(train: Any, target: str, *, asked: str, passes: Passes) -> Plan | N
     """
     if asked not in ("auto", "azimuthal"):
         return None
-    bench = _Bench.of(train, target)
+    bench = Loops.of(train, target)
     place, lasers = bench.place(), [node for node in source_nodes(train.elements) if node in bench.inside]
     if place is None or len(lasers) > 1 or not train.elements[lasers[0][0]].line.sharp:
         return None
@@ -72,112 +70,12 @@ def by_trips(train: Any, target: str, *, asked: str, passes: Passes) -> Plan | N
     return None if ways is None else _plan(train, target, lasers[0][0], ways, passes)
 
 
-def reflections_round(train: Any, target: str) -> set[int] | None:
-    """How often light that goes round on its way to a target is reflected on a trip; None where none goes round.
-
-    Empty where loops are tangled, so that no one place is passed on every trip.
-    """
-    bench = _Bench.of(train, target)
-    if not bench.loops():
-        return None
-    place = bench.place()
-    walks = bench.walks(place, place, place) if place else []
-    return {_reflections(train, walk) for walk in walks}
-
-
-def _reflections(train: Any, walk: Walk) -> int:
-    edges = (train.graph.edges[way] for way in pairwise(walk))
-    laws = [law for edge in edges if edge["kind"] == "inside" for law in edge["passage"].steps()]
-    return sum(isinstance(law, Flip) for law in laws)
-
-
-Walk = tuple[Node, ...]
-
-
-@dataclass(frozen=True)
-class _Ways:
-    """Lists of port states: past the place that all trips pass, to it, from it to itself and to the end."""
-
-    direct: list[Walk]
-    entries: list[Walk]
-    rounds: list[Walk]
-    exits: list[Walk]
-
-
-@dataclass(frozen=True)
-class _Bench:
-    """The port states that light passes on its way to a target."""
-
-    graph: Any
-    inside: set[Node]
-    end: Node
-
-    @classmethod
-    def of(cls, train: Any, target: str) -> _Bench:
-        graph = train.graph
-        lit = lit_nodes(graph, source_nodes(train.elements))
-        end = lit_target(train.elements, graph, lit, target)
-        return cls(graph, upstream(graph, lit, end), end)
-
-    def place(self) -> Node | None:
-        """Where light comes together that every trip passes; None if there is no such place, or no loop.
-
-        Directly behind a hole light ends at the rim; elsewhere its tails are followed as far as they matter.
-        """
-        if not self.loops():
-            return None
-        meeting = sorted(node for node in self.inside if len(self._before(node)) > 1)
-        return next((node for node in (*self._holes(), *meeting) if not self.loops(node)), None)
-
-    def _holes(self) -> list[Node]:
-        edges = [(out, d) for into, out, d in self.graph.edges(data=True) if {into, out} <= self.inside]
-        inner = [(out, d["passage"].laws) for out, d in edges if d["kind"] == "inside"]
-        return sorted(out for out, laws in inner if any(_clear(getattr(law, "stop", None)) for law in laws))
-
-    def _before(self, node: Node) -> list[Node]:
-        return [before for before in self.graph.predecessors(node) if before in self.inside]
-
-    def loops(self, without: Node | None = None) -> bool:
-        """Whether light goes round, also if it does not go on from a place."""
-        left = self.inside - {without}
-        while free := {node for node in left if left.isdisjoint(self._before(node))}:
-            left -= free
-        return bool(left)
-
-    def ways(self, start: Node, place: Node) -> _Ways | None:
-        """All ways; None if there are too many."""
-        found = _Ways(
-            self.walks(start, self.end, place), self.walks(start, place, place),
-            self.walks(place, place, place), self.walks(place, self.end, place),
-        )  # fmt: skip
-        lists = (found.direct, found.entries, found.rounds, found.exits)
-        return None if max(map(len, lists)) > MOST_WAYS or not found.entries else found
-
-    def walks(self, start: Node, end: Node, barred: Node) -> list[Walk]:
-        """Walks of at least one step, or of none from a place to itself; none goes on from the barred place."""
-        if start == end != barred:
-            return [(start,)]
-        found, waiting = list[Walk](), list[Walk]([(start,)])
-        while waiting and len(found) <= MOST_WAYS:
-            walk = waiting.pop()
-            for ahead in self.graph.successors(walk[-1]):
-                if ahead == end:
-                    found.append((*walk, ahead))
-                elif ahead in self.inside and ahead != barred:
-                    waiting.append((*walk, ahead))
-        return found
-
-
-def _clear(stop: Stop | None) -> bool:
-    return stop is not None and closed_stop(stop)
-
-
 def _cut(way: Branch) -> bool:
     """Whether a hole gives the light an end."""
-    return any(_clear(getattr(step.law, "stop", None)) for step in way.steps)
+    return any(has_hole(getattr(step.law, "stop", None)) for step in way.steps)
 
 
-def _plan(train: Any, target: str, name: str, ways: _Ways, passes: Passes) -> Plan | None:
+def _plan(train: Any, target: str, name: str, ways: Ways, passes: Passes) -> Plan | None:
     laser = train.elements[name]
     refuse_letters(name, laser.parameters())
     refuse_letters(train.name, {"wavelength": train.wavelength})

@@ -5,7 +5,7 @@ from __future__ import annotations
 from typing import Any
 
 from fastaxis.errors import FastaxisError
-from fastaxis.plan.cavity import reflections_round
+from fastaxis.plan.loops import reflections_round
 
 __all__ = ["reflections_in_words"]
 
