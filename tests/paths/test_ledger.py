@@ -86,3 +86,7 @@ def test_a_cavity_with_a_round_stop_has_a_ledger():
     behind = next(watts for place, watts in edges.items() if place.startswith("hole.back"))
     assert ledger.of("clipped")["hole"] == pytest.approx(before - behind, rel=1e-9)
     assert behind == pytest.approx(ledger.of("open port")["out.transmitted"] / 0.1, rel=1e-9)
+    # The splitter loses nothing of what comes from the laser and from the ring; both outputs are sums of their own.
+    into = 1 * mW + next(watts for place, watts in edges.items() if place.endswith("in.side"))
+    inside = next(watts for place, watts in edges.items() if place.startswith("in.transmitted"))
+    assert inside + ledger.of("open port")["in.reflected"] == pytest.approx(into, rel=1e-9)
