@@ -98,11 +98,12 @@ def test_a_ring_is_dark_where_its_loss_is_what_the_splitter_lets_in():
 
 def test_a_plate_between_mirrors_makes_two_combs_of_resonances():
     """Born and Wolf, section 7.6, for each axis of the plate by itself; light along one axis sees that one only."""
-    train = cavity(R, R, p, fa.Retarder(fast=b, retardance=d, name="plate"))
-    form = train.derive("out")
-    combs = [(1 - R) ** 2 / (1 + R**2 + 2 * R * sp.cos(2 * p + sign * d)) for sign in (-1, 1)]
+    plate, half = fa.Retarder(fast=b, retardance=d, name="plate"), sp.Rational(1, 2)
+    combs = [half**2 / (1 + half**2 + 2 * half * sp.cos(2 * p + sign * d)) for sign in (-1, 1)]
+    form = cavity(0.5, 0.5, p, plate).derive("out")
     assert vanishes(form.power - sp.cos(b) ** 2 * combs[0] - sp.sin(b) ** 2 * combs[1])
-    assert vanishes(form.power.subs(b, 0) - combs[0])
+    straight = cavity(R, R, p, fa.Retarder(fast=0.0, retardance=d, name="plate")).derive("out")
+    assert vanishes(straight.power - (1 - R) ** 2 / (1 + R**2 + 2 * R * sp.cos(2 * p - d)))
 
 
 ROUND = {
@@ -116,8 +117,7 @@ ROUND = {
 def test_energy_closes_identically_with_a_part_inside(part):
     train = cavity(R1, R2, p, ROUND[part]())
     assert sum_is_one(train.derive("out"), train.derive("m1.reflected"))
-    for mirrors in (3, 4):
-        assert sum_is_one(ring(R, p, ROUND[part](), mirrors=mirrors, laser=wave(fa.D)).derive("bs.reflected"))
+    assert sum_is_one(ring(R, p, ROUND[part](), laser=wave(fa.D)).derive("bs.reflected"))
 
 
 @pytest.mark.parametrize("port", ["out", "m1.reflected", "m2.reflected"])
