@@ -29,7 +29,9 @@ Reals = NDArray[np.float64]
 Complexes = NDArray[np.complex128]
 
 KEPT = 2048  # samples along a side up to which light waits here: beyond, memory counts for more than time
-MOST = 2  # places looked at over the samples of the window, at most: beyond, a plane at a time holds less
+# Places looked at over the samples of the window, at most: beyond, a plane at a time holds less. A window of fewer
+# samples than SMALL along a side counts as one of so many: what it takes is no burden.
+MOST, SMALL = 2, 1024
 
 
 @dataclass(frozen=True, eq=False)
@@ -164,7 +166,7 @@ class FarField:
         return lines(raster, count * pitch, (landing_length(down), landing_length(across)), orders)
 
     def _too_many(self, rows: Line, columns: Line) -> bool:
-        return rows.places.count * columns.places.count > MOST * self.near.full**2
+        return rows.places.count * columns.places.count > MOST * max(self.near.full, SMALL) ** 2
 
     def _collected_by(self, raster: Raster, orders: tuple[int, int]) -> Collected:
         rows, columns = self._lines(raster, orders)
