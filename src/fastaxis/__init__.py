@@ -16,9 +16,11 @@ Names load on first use, so importing the package stays light.
 """
 
 from importlib import import_module
-from typing import TYPE_CHECKING, Any
 
+TYPE_CHECKING = False  # typing takes longer than all the rest here, and Ctrl-C is not caught before the command starts
 if TYPE_CHECKING:
+    from typing import Any
+
     from fastaxis.camera import (
         SIX_STATES,
         Exposure,
@@ -145,7 +147,7 @@ _HOME = {name: home for home, names in _HOMES.items() for name in names.split()}
 __all__ = sorted([*_HOME, "__version__"])  # noqa: PLE0605 - built from the table above
 
 
-def __getattr__(name: str) -> Any:
+def __getattr__(name: str) -> "Any":
     if name not in _HOME:
         raise AttributeError(f"module 'fastaxis' has no attribute {name!r}")
     value = getattr(import_module(f"fastaxis.{_HOME[name]}"), name)

@@ -3,7 +3,10 @@
 from __future__ import annotations
 
 import sys
-from collections.abc import Sequence
+
+TYPE_CHECKING = False  # nothing loads before main is called that can wait
+if TYPE_CHECKING:
+    from collections.abc import Sequence
 
 __all__ = ["INTERRUPTED", "main"]
 
