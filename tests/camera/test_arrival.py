@@ -1,5 +1,7 @@
 """The power beside a sensor: asked for once, and only when somebody wants to know."""
 
+import pickle
+
 import pytest
 
 import fastaxis as fa
@@ -24,6 +26,13 @@ def test_a_question_is_asked_once():
     power = Arrival(lambda: asked.append(1) or 0.25)
     assert not asked
     assert (power.power, power.power, len(asked)) == (0.25, 0.25, 1)
+
+
+def test_an_exposure_of_two_arms_goes_to_another_process(gannet_stack):
+    shots = gannet_stack.expose("cam", fa.H)
+    there = pickle.loads(pickle.dumps(shots))
+    assert there.arrived == shots.arrived
+    assert (there.frames == shots.frames).all()
 
 
 def test_an_exposure_of_two_arms_asks_for_their_overlap_when_it_is_wanted(gannet_stack, monkeypatch):

@@ -27,9 +27,14 @@ class Arrival:
     @property
     def power(self) -> float:
         """[W]."""
-        if callable(self._power):
-            self._power = self._power()  # what the question held is let go
-        return float(self._power)
+        asked = self._power  # by several threads, perhaps
+        if callable(asked):
+            self._power = asked = asked()  # what the question held is let go
+        return float(asked)
+
+    def __reduce__(self) -> tuple[type[Arrival], tuple[float]]:
+        """Only the answer goes to another process: a question holds whole planes of light."""
+        return Arrival, (self.power,)
 
 
 def arrival(plan: Any, fields: Sequence[Any], room: int) -> Arrival:
