@@ -169,3 +169,11 @@ def test_places_wider_than_pixels_hold_the_integral_whatever_the_number_of_pixel
     found = axis.matrix @ np.cos(2 * np.pi * turns / 0.3 * axis.places + 0.3)
     expected = 0.3 * np.sinc(turns) * np.cos(2 * np.pi * turns / 0.3 * middles + 0.3)
     assert found == pytest.approx(expected, abs=1e-11)  # the kernel is good to 3e-12
+
+
+def test_a_large_camera_takes_memory_for_each_pixel_not_for_each_pair():
+    middles = np.arange(2048) - 1023.5
+    fine = Axis.of(middles, 1.0, 0.3)
+    assert len(fine.places) > len(middles)  # fringes of three pixels
+    # Twice the reach of 17 places, and those that a pixel of up to two of them adds.
+    assert fine.matrix.nnz <= 38 * len(middles)

@@ -111,12 +111,21 @@ def _interpolated(count: int, step: float) -> tuple[Reals, Any]:
     Process. 28, 105 (1980), for the window.
     """
     many = math.ceil(count / step + 2 * REACH) + 1
-    places, middles = ((np.arange(n) - (n - 1) / 2) * apart for n, apart in ((many, step), (count, 1.0)))
+    places = (np.arange(many) - (many - 1) / 2) * step
     nodes, weights = gauss_legendre(nodes_needed(1 / step))
-    half = (count + 1) // 2  # pixels and places lie symmetric about the middle of the camera
-    apart = (middles[:half, np.newaxis] - places) / step
+    middles = np.arange((count + 1) // 2) - (count - 1) / 2  # and their mirror images
+    # A row holds only the places within reach of its pixel: all of them would fill the memory of a large camera.
+    far = REACH + 1 / (2 * step)
+    width = math.floor(2 * far) + 1
+    first = np.clip(np.ceil(middles / step + (many - 1) / 2 - far).astype(int), 0, many - width)
+    near = first[:, np.newaxis] + np.arange(width)
+    apart = (middles[:, np.newaxis] - places[near]) / step
     kernel: Any = sum(w / 2 * _kernel(apart + node / step / 2) for node, w in zip(nodes, weights, strict=True))
-    return np.asarray(places), np.concatenate([kernel, np.flip(kernel[: count - half])])
+    turned = slice(count // 2 - 1, None, -1) if count > 1 else slice(0)
+    values = np.concatenate([kernel, kernel[turned]])
+    columns = np.concatenate([near, many - 1 - near[turned]])
+    rows: Any = (values.ravel(), columns.ravel(), width * np.arange(count + 1))
+    return np.asarray(places), sparse.csr_array(rows, shape=(count, many)).tocsc()
 
 
 def _kernel(t: Reals) -> Reals:
