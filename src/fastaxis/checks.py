@@ -307,7 +307,7 @@ def near_design(part: str, design: Scalar | None, wavelength: Scalar) -> list[Fa
     return [
         SlipWarning(
             f"a plate made for {design * 1e9:.4g} nm is far off its nominal values at {wavelength * 1e9:.4g} nm",
-            got=f"{part}: design = {design:g}",
+            got=f"{part}: design = {design * 1e9:.6g}*nm",
             fix=f"design={wavelength * 1e9:.6g}*nm",
         )
     ]

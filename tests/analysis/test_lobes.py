@@ -97,7 +97,7 @@ def test_a_single_pixel_has_no_lobes():
 
 def test_a_centre_outside_the_picture_is_refused(plane):
     with pytest.raises(
-        ParameterError, match=r"centre = \(9, 0\) m, .*; the centre lies inside the picture \(fix: centre="
+        ParameterError, match=r"centre = \(9 m, 0 m\), .*; the centre lies inside the picture \(fix: centre="
     ):
         lobes(np.ones((81, 101)), **plane.axes, centre=(9.0, 0.0))
 

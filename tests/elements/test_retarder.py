@@ -82,7 +82,7 @@ def test_far_from_design_is_a_caution():
     (caution,) = plate.cautions(532 * nm)
     assert isinstance(caution, SlipWarning)
     assert str(caution) == (
-        "qwp: design = 6.33e-07; a plate made for 633 nm is far off its nominal values at 532 nm (fix: design=532*nm)"
+        "qwp: design = 633*nm; a plate made for 633 nm is far off its nominal values at 532 nm (fix: design=532*nm)"
     )
     assert plate.changed(**eval(f"dict({caution.fix})", {"nm": nm})).cautions(532 * nm) == []
 

@@ -9,6 +9,7 @@ from numpy.typing import NDArray
 from scipy.ndimage import map_coordinates
 
 from fastaxis.errors import ParameterError
+from fastaxis.train.lab_values import lab_length
 
 __all__ = ["checked", "inscribed_radius", "on_circles"]
 
@@ -41,9 +42,10 @@ def inscribed_radius(x: Reals, y: Reals, centre: tuple[float, float]) -> float:
     """
     radius = min(centre[0] - x[0], x[-1] - centre[0], centre[1] - y[0], y[-1] - centre[1])
     if not radius > 0:
+        told = [lab_length(float(place)) for place in (*centre, x[0], x[-1], y[0], y[-1])]
         raise ParameterError(
             "the centre lies inside the picture",
-            got=f"centre = ({centre[0]:g}, {centre[1]:g}) m, picture {x[0]:g} .. {x[-1]:g} by {y[0]:g} .. {y[-1]:g} m",
+            got=f"centre = ({told[0]}, {told[1]}), picture {told[2]} .. {told[3]} by {told[4]} .. {told[5]}",
             fix="centre=(0*mm, 0*mm)",
         )
     return float(radius)

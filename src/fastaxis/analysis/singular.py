@@ -9,6 +9,7 @@ import numpy as np
 from fastaxis.analysis.places import checked, inscribed_radius, on_circles
 from fastaxis.analysis.widths import radial_profile
 from fastaxis.errors import ParameterError
+from fastaxis.train.lab_values import lab_length
 
 __all__ = ["l_line_radius", "polarization_index"]
 
@@ -52,8 +53,8 @@ def polarization_index(
     if not 0 < radius <= room:
         raise ParameterError(
             "the circle stays inside the picture",
-            got=f"polarization_index: radius = {radius:g} m, room for {room:g} m",
-            fix=f"radius={room / 2:g}",
+            got=f"polarization_index: radius = {lab_length(radius)}, room for {lab_length(room)}",
+            fix=f"radius={room * 500:.4g}*mm",
         )
     s1, s2 = (on_circles(stokes[k], x, y, centre=centre, radii=np.array([radius]), count=_POINTS)[0] for k in (1, 2))
     axis = s1 + 1j * s2
@@ -62,8 +63,8 @@ def polarization_index(
     if np.abs(axis).min() <= 1e-6 * stokes[0].max() or np.abs(steps).max() > np.pi / 2:
         raise ParameterError(
             "the circle avoids places that are dark or circular: there the ellipse has no axis to follow",
-            got=f"polarization_index: radius = {radius:g} m",
-            fix=f"radius={radius / 2:g}",
+            got=f"polarization_index: radius = {lab_length(radius)}",
+            fix=f"radius={radius * 500:.4g}*mm",
         )
     return float(np.round(steps.sum() / (2 * np.pi))) / 2
 

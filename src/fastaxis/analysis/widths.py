@@ -11,6 +11,7 @@ from numpy.typing import NDArray
 
 from fastaxis.analysis.places import checked, inscribed_radius, on_circles
 from fastaxis.errors import ParameterError
+from fastaxis.train.lab_values import lab_length
 
 __all__ = ["Widths", "fwhm", "radial_profile", "ring_radius", "widths"]
 
@@ -171,7 +172,7 @@ def fwhm(frame: Any, *, x: Any, y: Any, centre: tuple[float, float] = _ON_AXIS) 
     if last == len(means) - 1:
         raise ParameterError(
             "a half-maximum width needs the picture to fall to half inside the sensor",
-            got=f"fwhm: {means[-1] / means.max():.2f} of the maximum at r = {radii[-1]:g} m",
+            got=f"fwhm: {means[-1] / means.max():.2f} of the maximum at r = {lab_length(radii[-1])}",
             fix="fa.Camera(pixel=6.9*um, shape=(1024, 1024))",
         )
     share = (means[last] - half) / (means[last] - means[last + 1])

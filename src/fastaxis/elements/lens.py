@@ -71,7 +71,7 @@ class Lens(ThroughElement):
             found.append(
                 SlipWarning(
                     "a thin lens is paraxial and a clear radius above half the focal length is not",
-                    got=f"{self.label}: radius = {self.radius:g}, focal = {self.focal:g}",
+                    got=f"{self.label}: radius = {self.radius * 1e3:.4g}*mm, focal = {self.focal * 1e3:.4g}*mm",
                     fix=f"radius={abs(self.focal) * 250:.4g}*mm",
                 )
             )

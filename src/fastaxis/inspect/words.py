@@ -56,12 +56,12 @@ def degrees(angle: float) -> str:
 
 
 def percent(share: float) -> str:
-    """A share in per cent.
+    """A share in per cent; what is left of rounding is none.
 
-    >>> percent(0.0076), percent(1e-7)
-    ('0.76 %', '1e-05 %')
+    >>> percent(0.0076), percent(1e-7), percent(1e-16)
+    ('0.76 %', '1e-05 %', '0 %')
     """
-    return f"{100 * share:.3g} %"
+    return f"{100 * round(share, 14) + 0.0:.3g} %"
 
 
 def mm(value: float) -> str:

@@ -12,7 +12,7 @@ from fastaxis.elements.laser import Laser
 from fastaxis.elements.lens import Lens
 from fastaxis.inspect.bench import Bench
 from fastaxis.inspect.finding import Finding, Severity, from_message
-from fastaxis.inspect.words import degrees, length
+from fastaxis.inspect.words import degrees, length, watts
 from fastaxis.light import State
 from fastaxis.maths import is_symbolic
 from fastaxis.train.lab_values import ANGLES
@@ -88,7 +88,7 @@ def _sizes(element: Element) -> Iterator[Finding]:
         )  # fmt: skip
     if isinstance(element, Laser) and float(element.power) < 1e-6:
         yield _slip(
-            element.name, "unit", got=f"power {float(element.power):.3g} W", rule="lasers give a microwatt or more",
+            element.name, "unit", got=f"power {watts(float(element.power))}", rule="lasers give a microwatt or more",
             fix=f'train.with_changes({{"{element.name}.power": 5*mW}})', severity=Severity.LOW,
         )  # fmt: skip
 

@@ -6,6 +6,7 @@ import math
 
 from fastaxis.errors import ParameterError
 from fastaxis.inspect.laser_safety.table import COVERED, ROWS
+from fastaxis.inspect.words import length
 
 __all__ = [
     "CLASSES",
@@ -60,7 +61,9 @@ def readings(laser_class: str, wavelength: float) -> tuple[float, ...]:
         )
     if not covered(wavelength):
         raise ParameterError(
-            "the table of limits covers 400 to 1400 nm", got=f"wavelength = {wavelength:g}", fix="wavelength=532*nm"
+            "the table of limits covers 400 to 1400 nm",
+            got=f"wavelength = {length(wavelength)}",
+            fix="wavelength=532*nm",
         )
     return tuple(
         row.watts * math.prod(correction(factor, wavelength) for factor in row.factors)
