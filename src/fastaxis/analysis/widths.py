@@ -9,7 +9,8 @@ from typing import Any
 import numpy as np
 from numpy.typing import NDArray
 
-from fastaxis.analysis.places import checked, inscribed_radius, on_circles
+from fastaxis.analysis.circles import means_on_circles
+from fastaxis.analysis.places import checked, inscribed_radius
 from fastaxis.errors import ParameterError
 from fastaxis.train.lab_values import lab_length
 
@@ -121,7 +122,7 @@ def radial_profile(
     frame, x, y = checked(frame, x, y)
     step = (x[1] - x[0]) / 4
     radii = np.arange(0, inscribed_radius(x, y, centre), step)
-    return radii, on_circles(frame, x, y, centre=centre, radii=radii, count=count).mean(axis=1)
+    return radii, means_on_circles(frame, x, y, centre=centre, radii=radii, count=count)
 
 
 def ring_radius(frame: Any, *, x: Any, y: Any, centre: tuple[float, float] = _ON_AXIS) -> float:
