@@ -4,7 +4,7 @@ import pytest
 import sympy as sp
 
 from fastaxis.engines.symbolic.presentations import compact
-from fastaxis.engines.symbolic.ring import ExactMaths, Ring
+from fastaxis.engines.symbolic.ring import ExactMaths, Ring, division
 from fastaxis.engines.symbolic.ring.division import divided, in_lowest_terms
 from fastaxis.engines.symbolic.ring.reading import read
 
@@ -42,6 +42,17 @@ def test_long_quotients_are_given_up():
     # (1 - R^n)/(1 - R) has n terms.
     assert divided(read(ring, 1 - R**40), read(ring, 1 - R)) is not None
     assert divided(read(ring, 1 - R**4000), read(ring, 1 - R)) is None
+
+
+def test_a_remainder_is_seen_before_the_quotient_runs_on(monkeypatch):
+    ring = Ring()
+    # The largest monomial of the divisor comes before beta in the order, so that beta never falls below it.
+    divisor, poly = read(ring, sp.exp(sp.I * a) - sp.Rational(1, 3)), read(ring, sp.exp(sp.I * b) + 1)
+    rounds, number = [], division._coefficient
+    monkeypatch.setattr(division, "_coefficient", lambda *args: rounds.append(1) or number(*args))
+    assert divided(poly, divisor) is None
+    # One for the divisor, and one for each power of exp(i alpha) from the divisor's down to none.
+    assert len(rounds) <= 3
 
 
 def test_quotients_are_brought_to_lowest_terms_before_they_are_written():

@@ -2,8 +2,10 @@
 
 from __future__ import annotations
 
+from dataclasses import dataclass
+
 from fastaxis.engines.symbolic.ring.poly import Poly
-from fastaxis.engines.symbolic.ring.ring import UNIT
+from fastaxis.engines.symbolic.ring.ring import UNIT, Ring
 
 __all__ = ["divided", "in_lowest_terms"]
 
@@ -26,17 +28,64 @@ def divided(poly: Poly, divisor: Poly) -> Poly | None:
     if not poly:
         return poly
     ring, leading, top = poly.ring, _inverse_of_leading(divisor), _top(divisor)
-    lowest = _bottom(poly) - _bottom(divisor)
+    lowest, room = _bottom(poly) - _bottom(divisor), _Room.of(poly, divisor)
     found, rest, work = ring.zero, poly, 0
     while rest and leading is not None:
         first, work = _top(rest), work + len(rest) + len(divisor)
-        if first - top < lowest or work > MOST_WORK:
+        if first - top < lowest or not room.holds(first - top) or work > MOST_WORK:
             return None
         part = _coefficient(rest, first) * leading * ring.poly({first - top: 1})
         found, rest = found + part, rest - part * divisor
         if rest and _top(rest) >= first:  # a relation of the ring put something in its place
             return None
     return found if leading is not None and found * divisor == poly else None
+
+
+@dataclass(frozen=True)
+class _Room:
+    """Exponents that a quotient may have in each generator by itself.
+
+    A division that leaves a remainder runs on for ever in a generator that comes late in the order, with numbers of
+    ever more digits.
+
+    Parameters
+    ----------
+    ring : of both.
+    least, most : by the place of the generator; those not in them have none, those tied to others are not looked at.
+    tied : places of generators whose powers are something else.
+    """
+
+    ring: Ring
+    least: dict[int, int]
+    most: dict[int, int]
+    tied: frozenset[int]
+
+    @classmethod
+    def of(cls, poly: Poly, divisor: Poly) -> _Room:
+        (low, high), (small, large) = _extent(poly), _extent(divisor)
+        places = low.keys() | small.keys()
+        return cls(
+            poly.ring,
+            {place: low.get(place, 0) - large.get(place, 0) for place in places},
+            {place: high.get(place, 0) - small.get(place, 0) for place in places},
+            poly.ring.tied,
+        )
+
+    def holds(self, key: int) -> bool:
+        exponents = self.ring.exponents(key)[1]
+        return all(
+            place in self.tied or self.least.get(place, 0) <= exponent <= self.most.get(place, 0)
+            for place, exponent in exponents.items()
+        )
+
+
+def _extent(poly: Poly) -> tuple[dict[int, int], dict[int, int]]:
+    """Lowest and highest exponent of each generator, and 0."""
+    low, high = dict[int, int](), dict[int, int]()
+    for key in poly.terms:
+        for place, exponent in poly.ring.exponents(key)[1].items():
+            low[place], high[place] = min(low.get(place, 0), exponent), max(high.get(place, 0), exponent)
+    return low, high
 
 
 def _bare(poly: Poly, key: int) -> int:

@@ -164,6 +164,11 @@ class Ring:
         """(place, polynomial) of every generator that stands for a sum."""
         return [(place, whole) for place, whole in self._wholes.items() if not whole.is_rational]
 
+    @property
+    def tied(self) -> frozenset[int]:
+        """Places of generators of which some power is something else: roots and switches."""
+        return frozenset(self._wholes) | frozenset(self._switches)
+
     def adopted(self, poly: Poly) -> Poly:
         """A polynomial of another ring, with the same generators found or made here."""
         other = poly.ring
