@@ -5,10 +5,12 @@ import pytest
 
 from fastaxis.engines.field import CLEAN
 from fastaxis.engines.grid import workers
+from fastaxis.engines.grid.far import FarField
 from fastaxis.engines.grid.filled import filled
 from fastaxis.engines.grid.interpolant import integral_matrix
 from fastaxis.engines.grid.light import GridLight
 from fastaxis.engines.grid.reading import GridField
+from fastaxis.laws import TravelLaw
 from fastaxis.light import Raster, stokes
 
 COUNT, PITCH = 96, 0.1e-3
@@ -57,3 +59,20 @@ def test_what_the_light_fills_is_measured_on_its_waves():
     spectrum = np.fft.fft2(noise(0.5))
     assert filled(spectrum, np.fft.fftfreq(COUNT, 1 / COUNT)) == 48
     assert filled(np.zeros((1, 8, 8), complex), np.arange(8)) == 2
+
+
+class Taken(dict):
+    """Of one raster, in the moment when another thread has asked for a second one."""
+
+    def __setitem__(self, key, value):
+        super().__setitem__(key, value)
+        self.clear()
+
+
+def test_two_threads_may_look_at_one_field():
+    raster = Raster(0.4e-3, (25, 30))
+    field = GridField(GridLight(noise(0.3), None, PITCH, 0.0, 633e-9), CLEAN, _read=Taken())
+    assert field.collected_by(raster).stokes().shape == (4, 25, 30)
+    travel = TravelLaw(b=1.5, d=1.0)
+    ahead = FarField(GridLight(noise(0.3), None, PITCH, 0.0, 633e-9, ahead=travel), CLEAN, _read=Taken())
+    assert ahead.collected_by(raster, ahead.orders).stokes().shape == (4, 25, 30)

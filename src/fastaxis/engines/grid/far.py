@@ -156,10 +156,12 @@ class FarField:
         raster : the pixels.
         orders : highest of irradiance to be held: those of a sum are those of its finest field.
         """
-        if (raster, orders) not in self._read:
+        found = self._read.get((raster, orders))
+        if found is None:
+            found = self._collected_by(raster, orders)
             self._read.clear()
-            self._read[raster, orders] = self._collected_by(raster, orders)
-        return self._read[raster, orders]
+            self._read[raster, orders] = found
+        return found
 
     def _lines(self, raster: Raster, orders: tuple[int, int]) -> tuple[Line, Line]:
         (count, pitch, _), (down, across) = self.places, orders

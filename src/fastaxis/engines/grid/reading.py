@@ -101,10 +101,12 @@ class GridField:
 
     def collected_by(self, raster: Raster) -> Collected:
         """The light as pixels collect it; kept for the last raster, since sums of this field are read alike."""
-        if raster not in self._read:
+        found = self._read.get(raster)
+        if found is None:
+            found = self._collected_by(raster)
             self._read.clear()
-            self._read[raster] = self._collected_by(raster)
-        return self._read[raster]
+            self._read[raster] = found
+        return found
 
     def _collected_by(self, raster: Raster) -> Collected:
         light = self.light
