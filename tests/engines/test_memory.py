@@ -92,3 +92,10 @@ def test_a_lock_held_while_the_process_is_forked_does_not_last(small):
         with ThreadPoolExecutor(1) as pool:
             pool.submit(small.put, "a", "A", 1).result(timeout=5)
     assert small.get("a") == "A"
+
+
+def test_an_answer_that_was_being_kept_when_the_process_was_forked_is_counted_once(small):
+    small.put("a", "A", 20)
+    small.size -= 20  # where the fork met the thread
+    small.unlock()
+    assert small.size == 20

@@ -87,8 +87,9 @@ class Memory:
             self.size -= self._kept.popitem(last=False)[1][1]
 
     def unlock(self) -> None:
-        """A lock that another thread held when the process was forked would never open again."""
+        """A lock that another thread held when the process was forked would never open again; nor would it count on."""
         self._lock = threading.RLock()
+        self.size = sum(size for _, size in self._kept.values())
 
 
 LIGHT = Memory(0.75)
