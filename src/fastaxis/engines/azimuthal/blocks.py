@@ -12,7 +12,7 @@ import numpy as np
 from fastaxis.engines.azimuthal.panels import Reals
 from fastaxis.light.gauss import gauss_legendre
 
-__all__ = ["Block", "blocks_along", "collected"]
+__all__ = ["SETTLED", "Block", "Images", "blocks_along", "collected", "lines_across"]
 
 Images = Callable[[Reals, Reals], Reals]
 """Columns x and rows y [m] to pictures (images, rows, columns)."""
