@@ -117,3 +117,35 @@ def test_light_that_runs_round_is_not_compared_with_itself(bench_of):
     cavity.along("gap", fa.BeamSplitter(reflectance=0.9, name="b"), CAMERA)
     cavity.along("b.reflected", "gap.back", "a.side")
     assert not list(arms(survey(cavity)))
+
+
+def michelson(*, wrong, end, line=None):
+    laser = fa.Laser(waist=1 * mm, state=fa.H, line=line or fa.GaussianLine(coherence_length=100 * mm), name="laser")
+    train = fa.Train(wavelength=633e-9, name="Withy Eyot").along(laser, fa.BeamSplitter(name="bs"))
+    train.retro("bs.transmitted", fa.FreeSpace(200 * mm, name="short"), fa.Mirror(name="m1"))
+    train.retro("bs.reflected", fa.FreeSpace(200 * mm + wrong, name="long"), fa.Mirror(name="m2"))
+    return train.along("bs.side", end)
+
+
+@pytest.mark.parametrize("end", [fa.Detector(name="meter"), CAMERA])
+def test_a_path_difference_is_told_at_a_detector_too_and_its_fix_mends_it(end):
+    train = michelson(wrong=60 * mm, end=end)
+    (finding,) = (f for f in train.inspect().findings if f.check == "path difference")
+    assert finding.severity.value == "medium"
+    # There and back: 120 mm, of 100 mm coherence length, exp(-1.44) = 0.237.
+    assert "120 mm" in finding.got
+    assert "0.237" in finding.got
+    assert finding.fix == 'train.with_changes({"short.distance": 260*mm})'
+    mended = eval(finding.fix, {"train": train, "mm": mm})  # noqa: S307 - the fix is code to paste
+    assert not [f for f in mended.inspect().findings if f.check == "path difference"]
+
+
+def test_paths_of_crossed_polarization_are_not_held_to_a_coherence_length(bench_of):
+    end = fa.Detector(name="meter")
+    line = fa.GaussianLine(coherence_length=10 * mm)
+    severities = []
+    for plate in ([], [fa.HalfWavePlate(fast=45 * deg)]):
+        train = meeting(bench_of, [*plate, fa.FreeSpace(100 * mm)], [], end=end)
+        train = train.with_changes({f"{train.sources[0]}.line": line})
+        severities += [f.severity.value for f in train.inspect().findings if f.check == "path difference"]
+    assert severities == ["high", "medium"]
