@@ -132,8 +132,10 @@ def test_what_is_missing_is_told_with_a_fix():
     with pytest.raises(ParameterError, match="cam: no exposure_time; electrons and counts need an exposure") as told:
         timeless.electrons("H")
     assert eval(told.value.fix, {"shots": timeless, "ms": ms}).counts.shape == (SIDE, SIDE)
-    with pytest.raises(ParameterError, match="exposure_time = -1; exposure_time is in seconds, above zero"):
-        shots.counts("H", exposure_time=-1)
+    for time in (-1, 0.0, float("inf"), float("nan"), True, "1 ms"):
+        with pytest.raises(ParameterError, match=f"exposure_time = {time}; exposure_time is in seconds, above zero"):
+            shots.counts("H", exposure_time=time)
+    assert shots.electrons("H", exposure_time=np.float32(0.25))[0, 0] == shots.electrons("H", exposure_time=0.25)[0, 0]
     with pytest.raises(ParameterError, match="counts: seed = -1; seed is a whole number, 0 or more"):
         shots.counts("H", seed=-1)
 

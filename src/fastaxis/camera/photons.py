@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+from math import inf
+from numbers import Real
 from typing import TYPE_CHECKING, Any
 
 import numpy as np
@@ -42,7 +44,7 @@ def read_with(shots: Exposure, sensor: Sensor | None, exposure_time: float | Non
 
     Raises
     ------
-    ParameterError : neither given nor declared with the camera; a time that is not above zero.
+    ParameterError : neither given nor declared with the camera; a time that is not a number above zero.
     """
     sensor = shots.sensor if sensor is None else sensor
     if sensor is None:
@@ -62,7 +64,7 @@ def read_with(shots: Exposure, sensor: Sensor | None, exposure_time: float | Non
             got=f"{shots.target}: no exposure_time",
             fix=f'shots.counts("{shots.labels[0]}", exposure_time=1*ms)',
         )
-    if not (isinstance(time, int | float) and time > 0):
+    if isinstance(time, bool) or not (isinstance(time, Real) and 0 < time < inf):
         raise ParameterError(
             "exposure_time is in seconds, above zero",
             got=f"{shots.target}: exposure_time = {time}",
