@@ -396,3 +396,17 @@ def test_the_fix_of_an_isolator_sets_rotator_and_output_right(bench_of, angle, f
     mended = eval(found.fix, {"train": train, "deg": deg})
     assert not checks(mended, "isolator")
     assert mended.power("meter") == pytest.approx(1e-3, rel=1e-9)
+
+
+def test_a_dark_fringe_is_told_from_blocked_light(bench_of):
+    train = bench_of(fa.BeamSplitter(name="split"), fa.Mirror(name="m1"), fa.BeamSplitter(name="join"))
+    train.along("split.reflected", fa.Mirror(name="m2"), "join.side")
+    # r and t of a splitter are a quarter wave apart: twice reflected light meets twice transmitted light inverted.
+    train.along("join.transmitted", fa.Detector(name="dark")).along("join.reflected", fa.Detector(name="bright"))
+    (found,) = checks(train, "dark port")
+    assert (found.element, found.severity.value) == ("dark", "low")
+    assert "2 paths with light end here and cancel" in found.got
+    assert "PhaseShift" in found.fix
+    blocked = bench_of(fa.Polarizer(axis=90 * deg, name="pol"), fa.Detector(name="meter"))
+    (found,) = checks(blocked, "dark port")
+    assert found.severity.value == "medium"
