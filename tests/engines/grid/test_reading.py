@@ -100,6 +100,21 @@ def test_matrices_are_the_sums_of_waves_they_stand_for():
     assert np.allclose(integral_matrix(edges, count, pitch) @ waves.T, right.T)
 
 
+def test_places_on_samples_and_a_hair_beside_them():
+    count, pitch = 16, 0.1e-3
+    x = axis(count, pitch)
+    # On a sample a place may be a rounding beside it, and so is what it takes of the neighbours.
+    assert np.allclose(value_matrix(x, count, pitch), np.eye(count), rtol=0, atol=2e-15)
+    hair = 1e-9 * pitch
+    # The slope of the curve of one sample at another is at most pi a sample.
+    assert np.allclose(value_matrix(x + hair, count, pitch)[:-1], np.eye(count)[:-1], rtol=0, atol=np.pi * 1e-9)
+    # The window's two ends are one place, half a sample beyond the first and the last.
+    ends = value_matrix(np.array([-8, 8]) * pitch, count, pitch)
+    assert np.allclose(ends[0], ends[1], rtol=0, atol=2e-15)
+    assert ends.sum(axis=1) == pytest.approx(1)
+    assert not value_matrix(np.array([8.001 * pitch]), count, pitch).any()
+
+
 @pytest.mark.parametrize("pixel", [5e-6, 30e-6, 0.15e-3])
 def test_reading_near_a_small_camera_is_reading_from_the_whole_window(pixel, monkeypatch):
     rng = np.random.default_rng(3)
