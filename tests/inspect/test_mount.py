@@ -45,6 +45,8 @@ def test_zero_is_shown_as_zero_and_not_as_a_whole_turn():
         ({"sense": 0}, "sense is \\+1"),
         ({"seen_from": "above"}, "facing the source"),
         ({"zero": 45}, "in radians"),
+        ({"zero": math.nan}, "finite"),
+        ({"zero": math.inf}, "finite"),
     ],
 )
 def test_refusals(bad, words):

@@ -51,8 +51,9 @@ class Mount:
     seen_from: str = "receiver"
 
     def __post_init__(self) -> None:
+        zero = checks.angle("mount", "zero", self.zero)
         checks.degrees_missed("mount", "zero", self.zero)
-        object.__setattr__(self, "zero", checks.angle("mount", "zero", self.zero))
+        object.__setattr__(self, "zero", zero)
         if self.sense not in (1, -1):
             raise ParameterError(
                 "sense is +1 for a scale that grows counter-clockwise and -1 for one that grows clockwise",
