@@ -192,3 +192,22 @@ def test_the_frames_on_paper_are_those_of_the_camera(sheet):
     assert len(pictures) == 2
     peak = max(sheet.shots["cam"].frame(k).max() for k in range(2))
     assert max(picture.max() for picture in pictures) == pytest.approx(peak)
+
+
+@pytest.mark.parametrize(
+    ("given", "words"),
+    [
+        ({"rail_start": 50}, "unit is probably missing"),
+        ({"rail_start": float("nan")}, "finite"),
+        ({"heights": 75}, "unit is probably missing"),
+        ({"heights": "75 mm"}, "finite"),
+        ({"heights": {"hwp": 75}}, "height of hwp is in metres"),
+        ({"heights": {"hpw": 75 * mm}}, "heights are those of the parts laser, "),
+        ({"mounts": Mount(12 * deg)}, "by the name of the part"),
+    ],
+)
+def test_places_without_units_and_unknown_names(given, words):
+    with pytest.raises(fa.ParameterError, match=words) as caught:
+        bench().set_sheet(**given)
+    fixed = eval(f"dict({caught.value.fix})", {"mm": mm})  # noqa: S307 - the fix is code to paste
+    assert bench().set_sheet(**fixed, settings=(fa.H,)).rows

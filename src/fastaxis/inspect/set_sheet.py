@@ -11,6 +11,7 @@ from os import PathLike
 from pathlib import Path
 from typing import Any
 
+from fastaxis import checks
 from fastaxis.camera import SIX_STATES
 from fastaxis.camera.exposing import expose
 from fastaxis.conventions import stamp
@@ -32,6 +33,7 @@ __all__ = ["HEADINGS", "Row", "SetSheet", "set_sheet"]
 
 HEADINGS = ("part", "kind", "leaves by", "position [mm]", "height [mm]", "angle", "dial", "same at", "w [mm]",
             "power", "state behind it", "picture")  # fmt: skip
+FARTHEST = 10.0  # [m]; rails and beam heights beyond it are millimetres whose unit is missing
 
 
 @dataclass(frozen=True)
@@ -172,13 +174,16 @@ def set_sheet(
 
     Raises
     ------
-    ParameterError : a mount for a part that is not there, or that does nothing when it is turned; a bare angle for one.
+    ParameterError : a mount for a part that is not there, or that does nothing when it is turned; a bare angle for one;
+        a rail start or a height without its unit; a height of a part that is not there.
     SymbolError : a letter without a value.
     WiringError : light cannot be followed.
     """
     for name, element in train.elements.items():
         refuse_letters(name, element.parameters())
     _check_mounts(train, mounts)
+    _check_place("rail_start", rail_start, "rail_start={}")
+    _check_heights(train, heights)
     train.validate()
     bench = survey(train)
     shots, remarks = _frames(train, tuple(SIX_STATES) if settings is None else tuple(settings))
@@ -188,7 +193,36 @@ def set_sheet(
     return SetSheet(train.name, bench.wavelength, rows, shots, (*remarks, *cautions, *deferring))
 
 
-def _check_mounts(train: Any, mounts: Mapping[str, Mount]) -> None:
+def _check_place(parameter: str, value: Any, fix: str) -> None:
+    """A length of either sign, in metres."""
+    millimetres = f"{value:g}*mm" if isinstance(value, int | float) and math.isfinite(value) else "75*mm"
+    fix = fix.format(millimetres)
+    place = checks.number("set_sheet", parameter, value, fix=fix)
+    checks.length("set_sheet", parameter, abs(place), zero=True, most=FARTHEST, fix=fix)
+
+
+def _check_heights(train: Any, heights: Any) -> None:
+    if not isinstance(heights, Mapping):
+        if heights is not None:
+            _check_place("heights", heights, "heights={}")
+        return
+    for name, height in heights.items():
+        if name not in train.elements:
+            raise ParameterError(
+                f"heights are those of the parts {', '.join(train.elements)}",
+                got=f"set_sheet: height of '{name}'",
+                fix=f'heights={{"{next(iter(train.elements))}": 75*mm}}',
+            )
+        _check_place(f"height of {name}", height, f'heights={{{{"{name}": {{}}}}}}')
+
+
+def _check_mounts(train: Any, mounts: Any) -> None:
+    if not isinstance(mounts, Mapping):
+        raise ParameterError(
+            "mounts are given by the name of the part they turn",
+            got=f"set_sheet: mounts = {mounts!r}",
+            fix="mounts={}",
+        )
     turning = [name for name, element in train.elements.items() if turn_of(element) is not None]
     for name, mount in mounts.items():
         if name not in turning:
