@@ -51,3 +51,16 @@ def test_a_bench_may_keep_parts_in_a_file_beside_it(bench, tmp_path):
     (tmp_path / "drawer_of_parts.py").write_text("NAME = 'from the drawer'")
     path = bench("from drawer_of_parts import NAME\ntrain = fa.Train(wavelength=532*nm, name=NAME)")
     assert read_bench(path).train.name == "from the drawer"
+
+
+def test_bytes_that_are_no_text(tmp_path):
+    path = tmp_path / "bench.py"
+    path.write_bytes(b"train = 1\x00")
+    with pytest.raises(BenchFileError) as caught:
+        read_bench(path)
+    assert str(caught.value).startswith(f"{path}: ")
+
+
+def test_a_bench_that_is_not_there(tmp_path):
+    with pytest.raises(BenchFileError, match=r"gone\.py: there is no such file; a bench is a Python file"):
+        read_bench(tmp_path / "gone.py")

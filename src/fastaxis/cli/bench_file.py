@@ -33,9 +33,11 @@ def read_bench(path: Path) -> BenchFile:
 
     Raises
     ------
-    BenchFileError : the file has an error; the message holds the line of it.
+    BenchFileError : there is no such file, or it has an error; the message holds the line of it.
     WiringError : it runs, but ``train`` is missing or is no train.
     """
+    if not path.is_file():
+        raise BenchFileError(f"{path}: there is no such file; a bench is a Python file that defines train")
     names = _run(path)
     train = names.get("train")
     if not isinstance(train, Train):
@@ -52,7 +54,8 @@ def _run(path: Path) -> dict[str, Any]:
     try:
         return runpy.run_path(str(path), run_name="fastaxis_bench")
     except SyntaxError as error:
-        raise BenchFileError(f"{error.filename}:{error.lineno}: {error.msg}") from error
+        place = f"{error.filename}:{error.lineno}" if error.filename else str(path)  # bytes that are no text have none
+        raise BenchFileError(f"{place}: {error.msg}") from error
     except (Exception, SystemExit) as error:
         raise BenchFileError(f"{_place(path, error)}: {_sentence(error)}") from error
     finally:
