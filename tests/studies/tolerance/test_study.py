@@ -1,6 +1,7 @@
 """Draws, slopes, rankings and limits against brute force and closed forms."""
 
 import math
+import re
 
 import numpy as np
 import pytest
@@ -225,7 +226,12 @@ REFUSED = [
     (({"pol.axis": normal(0.1)}, {"p": power_at("meter")}), {"limits": {"p": (2e-3, 1e-3)}}, "in this order"),
     (({"pol.axis": normal(0.1)}, {"p": power_at("meter")}), {"limits": {"p": (float("nan"), 1)}}, "in this order"),
     (({"pol.axis": normal(0.1)}, {"p": power_at("meter")}), {"limits": {"p": 1e-3}}, "a lowest and a highest"),
-    (({"pol.axis": normal(0.1)}, {"p": power_at("meter")}), {"draws": 0}, "whole number"),
+    (({"pol.axis": normal(0.1)}, {"p": power_at("meter")}), {"draws": 0}, "draws is a whole number of 1"),
+    (({"pol.axis": normal(0.1)}, {"p": power_at("meter")}), {"seed": -1}, "seed is a whole number of 0"),
+    (({"pol.axis": normal(0.1)}, {"p": power_at("meter")}), {"batch": 0}, "batch is a whole number of 1"),
+    (({"pol.axis": normal(0.1)}, {"p": power_at("meter")}), {"executor": 3}, "concurrent.futures"),
+    (({"pol.axis": normal(0.1)}, {"p": power_at("meter")}), {"limits": (0, 1)}, "by the name of the figure"),
+    (({"pol.axis": normal(0.1)}, {"p": lambda train: "dark"}), {"draws": 3}, "gave 'dark'"),
 ]
 
 
@@ -233,6 +239,19 @@ REFUSED = [
 def test_refusals(malus, arguments, options, words):
     with pytest.raises((fa.ParameterError, fa.WiringError), match=words):
         malus.tolerance(*arguments, **options)
+
+
+@pytest.mark.parametrize("error", [normal(2), uniform(2), together(normal(2))])
+def test_an_error_meant_in_degrees_is_told(malus, error):
+    causes = {("pol.axis",): error} if not isinstance(error, type(normal(1))) else {"pol.axis": error}
+    with pytest.warns(fa.SlipWarning, match="2 rad is 114.6 deg") as caught:
+        malus.tolerance(causes, {"p": power_at("meter")}, draws=3)
+    assert re.search(r"fix: (normal|uniform)\(2\*deg\)", str(caught[0].message))
+
+
+def test_whole_numbers_of_numpy_will_do(malus):
+    found = malus.tolerance({"pol.axis": normal(0.1)}, {"p": power_at("meter")}, draws=np.int64(3), seed=np.int32(1))
+    assert len(found.values) == 3
 
 
 def test_more_refusals():

@@ -9,10 +9,12 @@ from typing import Any, TypeAlias
 import numpy as np
 from numpy.typing import NDArray
 
-from fastaxis.errors import ParameterError
+from fastaxis.checks import whole_radians
+from fastaxis.elements.base import ANGLES
+from fastaxis.errors import ParameterError, SlipWarning, caution
 from fastaxis.studies.tolerance.distributions import Distribution, normal
 
-__all__ = ["Cause", "Causes", "Correlated", "Together", "correlated", "read_causes", "together"]
+__all__ = ["Cause", "Causes", "Correlated", "Together", "caution_bare", "correlated", "read_causes", "together"]
 
 Reals: TypeAlias = NDArray[np.float64]
 EXAMPLE = 'train.tolerance({"hwp.fast": normal(0.5*deg)}, {"leak": power_at("pbs.reflected")})'
@@ -147,6 +149,22 @@ def read_causes(train: Any, errors: Mapping[Any, Any]) -> Causes:
     causes = tuple(_cause(key, error) for key, error in errors.items())
     names = dict.fromkeys(name for cause in causes for name in cause.names)
     return Causes(causes, {name: _nominal(train, name) for name in names})
+
+
+def caution_bare(causes: Causes) -> None:
+    """A caution for an error of 1, 2, 5 ... radians of an angle: small enough to pass, but it was meant in degrees."""
+    for cause in causes.causes:
+        if len(cause.errors) == 1 and all(name.rpartition(".")[2] in ANGLES for name in cause.names):
+            (error,) = cause.errors
+            if whole_radians(cause.label, "error", error.width):
+                caution(
+                    SlipWarning(
+                        f"errors of angles are in radians and {error.width:g} rad is {np.degrees(error.width):.1f} deg:"
+                        " degrees are written 10*deg",
+                        got=f"tolerance: {cause.label}: {error}",
+                        fix=f"{error.kind}({error.width:g}*deg)",
+                    )
+                )
 
 
 def _cause(key: Any, error: Any) -> Cause:

@@ -5,6 +5,7 @@ from __future__ import annotations
 import math
 from collections.abc import Callable, Mapping
 from concurrent.futures import Executor
+from numbers import Integral
 from pathlib import Path
 from typing import Any, TypeAlias
 
@@ -13,7 +14,7 @@ from numpy.typing import NDArray
 
 from fastaxis.checks import number
 from fastaxis.errors import FileFormatError, ParameterError
-from fastaxis.studies.tolerance.causes import EXAMPLE, Causes, read_causes
+from fastaxis.studies.tolerance.causes import EXAMPLE, Causes, caution_bare, read_causes
 from fastaxis.studies.tolerance.checkpoint import Checkpoint, fingerprint
 from fastaxis.studies.tolerance.drawing import batch_size, shares, work_off
 from fastaxis.studies.tolerance.looking import Looked
@@ -71,8 +72,12 @@ def tolerance(
     Raises
     ------
     ParameterError : no errors or figures of merit, an unknown parameter, limits of something else or the wrong way
-        round, no draws, a negative accuracy.
+        round, no draws, a negative seed or accuracy; a function that gives something else than a number.
     FileFormatError : the checkpoint is that of another study.
+
+    Warns
+    -----
+    SlipWarning : the error of an angle is a whole number of radians, which was probably meant in degrees.
 
     Examples
     --------
@@ -86,7 +91,12 @@ def tolerance(
     (-1.0, 'pol.axis')
     """
     causes = read_causes(train, errors)
-    merits, wanted = _checked(figures_of_merit, limits or {}, draws)
+    caution_bare(causes)
+    _check_whole("draws", draws, least=1, fix="draws=1000")
+    _check_whole("seed", seed, least=0, fix="seed=0")
+    _check_whole("batch", 1 if batch is None else batch, least=1, fix="batch=100")
+    _check_executor(executor)
+    merits, wanted = _checked(figures_of_merit, {} if limits is None else limits)
     share = _accuracy(accuracy)
     options = {"grid": grid, "engine": engine}
     offsets = causes.offsets(shares(draws, len(causes.errors), seed))
@@ -112,15 +122,35 @@ def tolerance(
     )
 
 
-def _checked(
-    merits: Mapping[str, Merit], limits: Mapping[str, Limits], draws: int
-) -> tuple[dict[str, Merit], dict[str, Limits]]:
+def _check_whole(parameter: str, value: Any, *, least: int, fix: str) -> None:
+    if isinstance(value, bool) or not isinstance(value, Integral) or value < least:
+        raise ParameterError(
+            f"{parameter} is a whole number of {least} or more", got=f"tolerance: {parameter} = {value!r}", fix=fix
+        )
+
+
+def _check_executor(executor: Any) -> None:
+    if executor is not None and not hasattr(executor, "submit"):
+        raise ParameterError(
+            "an executor is one of concurrent.futures",
+            got=f"tolerance: executor = {executor!r}",
+            fix="executor=concurrent.futures.ThreadPoolExecutor(2)",
+        )
+
+
+def _checked(merits: Mapping[str, Merit], limits: Mapping[str, Limits]) -> tuple[dict[str, Merit], dict[str, Limits]]:
     known = isinstance(merits, Mapping) and bool(merits)
     if not known or not all(isinstance(m, StokesMerit | PictureMerit) or callable(m) for m in merits.values()):
         raise ParameterError(
             "figures of merit are named, and each is power_at(...) or another of its kind, or a function of a train",
             got=f"tolerance: {merits!r}",
             fix=EXAMPLE,
+        )
+    if not isinstance(limits, Mapping):
+        raise ParameterError(
+            "limits are given by the name of the figure of merit they belong to",
+            got=f"tolerance: limits = {limits!r}",
+            fix=f'limits={{"{next(iter(merits))}": (None, 1e-3)}}',
         )
     for name in limits:
         if name not in merits:
@@ -130,10 +160,6 @@ def _checked(
                 fix=f'limits={{"{next(iter(merits))}": (None, 1e-3)}}',
             )
         _check_limits(name, limits[name])
-    if isinstance(draws, bool) or not isinstance(draws, int) or draws < 1:
-        raise ParameterError(
-            "draws is a whole number of 1 or more", got=f"tolerance: draws = {draws!r}", fix="draws=1000"
-        )
     return dict(merits), dict(limits)
 
 

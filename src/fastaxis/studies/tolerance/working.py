@@ -10,6 +10,7 @@ import numpy as np
 from numpy.typing import NDArray
 
 from fastaxis.camera.mixing import mixed
+from fastaxis.errors import ParameterError
 from fastaxis.studies.tolerance.reading import Reading, light_at
 
 __all__ = ["Anew", "Summed", "Work"]
@@ -115,7 +116,7 @@ class Anew:
     def _values(self, change: dict[str, float]) -> list[float]:
         train, reading = self.train.with_changes(change), self.reading
         if reading.kind == "train":
-            return [float(merit(train)) for merit in reading.merits]
+            return [_as_number(merit, merit(train)) for merit in reading.merits]
         turned = _turned(train, reading, change)
         looks = [light_at(one, reading.target, reading.kind, self.options) for one in turned]
         if reading.kind == "powers":
@@ -126,6 +127,17 @@ class Anew:
 
 
 Work: TypeAlias = Summed | Anew
+
+
+def _as_number(merit: Any, value: Any) -> float:
+    try:
+        return float(value)
+    except (TypeError, ValueError):
+        raise ParameterError(
+            "a figure of merit that is a function of a train gives a number",
+            got=f"tolerance: {getattr(merit, '__name__', type(merit).__name__)} gave {value!r}",
+            fix='lambda train: train.power("cam")',
+        ) from None
 
 
 def _turned(train: Any, reading: Reading, change: dict[str, float]) -> Iterator[Any]:
