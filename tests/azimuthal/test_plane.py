@@ -74,7 +74,7 @@ def test_the_guard_names_light_outside_a_cut(arrive):
 @pytest.mark.parametrize("rows", [1, 2, 7, 8])
 @pytest.mark.parametrize("shift", [0.0, 0.1 * mm])
 def test_strips_are_the_whole(arrive, monkeypatch, rows, shift):
-    from fastaxis.engines.azimuthal import plane
+    from fastaxis.engines.azimuthal import rendering
 
     field = arrive(BEAM, QPlate(q=0.5, retardance=2.0), FreeSpace(0.3), state=elliptical(0.3, 0.4))
     x, y = np.linspace(-1, 1, 5) * mm, (np.arange(rows) - (rows - 1) / 2) * 0.2 * mm + shift
@@ -82,5 +82,5 @@ def test_strips_are_the_whole(arrive, monkeypatch, rows, shift):
     each = np.concatenate([field.at(x, y[i : i + 1]) for i in range(rows)], axis=1)
     # Radii, and with them places in the tables, may differ by a rounding; the field is settled to 1e-13.
     assert abs(whole - each).max() < 1e-12 * abs(whole).max()
-    monkeypatch.setattr(plane, "PLACES", 10)
+    monkeypatch.setattr(rendering, "PLACES", 10)
     assert abs(field.at(x, y) - whole).max() < 1e-14 * abs(whole).max()

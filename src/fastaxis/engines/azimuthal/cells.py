@@ -8,7 +8,7 @@ import numpy as np
 
 from fastaxis.engines.azimuthal.averaging import LONGEST, averaged, taps
 from fastaxis.engines.azimuthal.panels import Reals
-from fastaxis.engines.azimuthal.rendering import Orders, circular_field, stokes_of
+from fastaxis.engines.azimuthal.rendering import Orders, circular_field, stokes_of, strips
 from fastaxis.engines.azimuthal.table import Table
 from fastaxis.light import Raster
 from fastaxis.light.gauss import gauss_legendre
@@ -25,7 +25,9 @@ def cell_images(table: Table, orders: Orders, raster: Raster) -> Reals:
     reach, parts = _cells(table, orders, raster)
     ny, nx = raster.shape
     cells = Raster(raster.pitch / parts, (ny * parts + 2 * reach, nx * parts + 2 * reach), raster.centre)
-    samples = stokes_of(circular_field(table, orders, cells.x, cells.y))
+    samples = np.empty((4, *cells.shape))
+    for rows in strips(*cells.shape):
+        samples[:, rows] = stokes_of(circular_field(table, orders, cells.x, cells.y[rows]))
     return averaged(samples, reach, parts) * raster.pitch**2
 
 

@@ -14,7 +14,7 @@ from fastaxis.engines.azimuthal.bucket import square_stokes
 from fastaxis.engines.azimuthal.cells import cell_images
 from fastaxis.engines.azimuthal.harmonics import LEFT, RIGHT, Harmonics
 from fastaxis.engines.azimuthal.panels import Profile, Reals
-from fastaxis.engines.azimuthal.rendering import circular_field, corner, smooth_images
+from fastaxis.engines.azimuthal.rendering import circular_field, corner, smooth_images, strips
 from fastaxis.engines.azimuthal.resolving import Settings
 from fastaxis.engines.azimuthal.scalar import ScalarHarmonics
 from fastaxis.engines.azimuthal.shapes import Shapes, remembered
@@ -24,8 +24,6 @@ from fastaxis.engines.field import Guard
 from fastaxis.light import Raster
 
 __all__ = ["AzimuthalField"]
-
-PLACES = 1 << 15  # at a time: half a megabyte a component
 
 
 @dataclass(frozen=True, eq=False)
@@ -121,20 +119,11 @@ class AzimuthalField:
         table, bend = self._table(arrival), self.harmonics.wavenumber * arrival.curvature / 2
         across, down = (np.exp(1j * bend * side**2) for side in (x, y))
         out = np.empty((2, len(y), len(x)), dtype=complex)
-        for rows in _strips(len(y), len(x)):
+        for rows in strips(len(y), len(x)):
             circular = circular_field(table, arrival.orders, x, y[rows])
             circular *= across * down[rows, np.newaxis]
             out[:, rows] = np.tensordot(TO_CIRCULAR.conj().T, circular, axes=1)
         return out
-
-
-def _strips(rows: int, columns: int) -> list[NDArray[np.intp]]:
-    """Rows to be done at a time, so few that they stay in the cache; with each its mirror image, which shares radii."""
-    order = np.arange(rows)
-    pairs = max(1, PLACES // (2 * columns))
-    upper = [order[i : min(i + pairs, rows // 2)] for i in range(0, rows // 2, pairs)]
-    strips = [np.concatenate([some, rows - 1 - some[::-1]]) for some in upper]
-    return [*strips, order[rows // 2 : rows // 2 + 1]] if rows % 2 else strips
 
 
 def _same_charge(harmonics: Harmonics) -> complex:

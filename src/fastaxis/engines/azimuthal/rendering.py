@@ -7,6 +7,7 @@ from dataclasses import dataclass, replace
 from functools import partial
 
 import numpy as np
+from numpy.typing import NDArray
 
 from fastaxis.engines.azimuthal.blocks import SETTLED, Block, Images, blocks_along, collected, lines_across
 from fastaxis.engines.azimuthal.core import FREE, core_means, near_axis
@@ -14,7 +15,7 @@ from fastaxis.engines.azimuthal.panels import Complexes, Profile, Reals
 from fastaxis.engines.azimuthal.table import Table
 from fastaxis.light import Raster
 
-__all__ = ["Orders", "circular_field", "corner", "smooth_images", "stokes_of"]
+__all__ = ["Orders", "circular_field", "corner", "smooth_images", "stokes_of", "strips"]
 
 Orders = tuple[tuple[int, int], ...]
 
@@ -29,6 +30,7 @@ class _Side:
 
 
 WHOLE = slice(None)
+PLACES = 1 << 15  # at a time: half a megabyte a component
 NONE = slice(0, 0)
 CORE = 1 / 64  # of a pixel, where harmonics are asked how they go to the axis
 LEFT_OVER = 1e-11  # of the peak of the field: what pixels of a hundredth of the beam leave of a harmonic without a core
@@ -94,6 +96,15 @@ def _turns(unit: Complexes, charges: set[int]) -> dict[int, Complexes]:
         if -l in charges:
             out[-l] = power.conj()
     return out
+
+
+def strips(rows: int, columns: int) -> list[NDArray[np.intp]]:
+    """Rows to be done at a time, so few that they stay in the cache; with each its mirror image, which shares radii."""
+    order = np.arange(rows)
+    pairs = max(1, PLACES // (2 * columns))
+    upper = [order[i : min(i + pairs, rows // 2)] for i in range(0, rows // 2, pairs)]
+    strips = [np.concatenate([some, rows - 1 - some[::-1]]) for some in upper]
+    return [*strips, order[rows // 2 : rows // 2 + 1]] if rows % 2 else strips
 
 
 def stokes_of(circular: Complexes) -> Reals:
