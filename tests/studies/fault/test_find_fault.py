@@ -4,7 +4,7 @@ import numpy as np
 import pytest
 
 import fastaxis as fa
-from fastaxis.studies.fault.finding import _nearest
+from fastaxis.studies.fault.suspects import _nearest
 from fastaxis.units import deg, mm, mW, nm, um
 
 
