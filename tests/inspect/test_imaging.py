@@ -7,7 +7,7 @@ from hypothesis import strategies as st
 
 import fastaxis as fa
 from fastaxis.inspect.bench import ray_matrix
-from fastaxis.inspect.imaging import image_of, image_words, magnification_words, plane_shown
+from fastaxis.inspect.imaging import image_of, image_words, magnification_words, moved, plane_shown
 from fastaxis.inspect.surveying import survey
 from fastaxis.units import deg, mm, um
 
@@ -71,8 +71,8 @@ def test_the_plane_shown_is_imaged_on_the_camera(before, apart, behind):
     if "before l1" not in told:
         return
     where = eval(told.split(" before l1")[0].removeprefix("the plane ").replace(" mm", "*1e-3").replace(" m", ""))
-    moved = ends(train.with_changes({"d1.distance": where}))
-    section = ray_matrix(moved[1].chain()[1:-1])
+    there = ends(train.with_changes({"d1.distance": where}))
+    section = ray_matrix(there[1].chain()[1:-1])
     # Told to four digits: half of the last is up to 5e-4 of the distance, through a magnification.
     assert section.b == pytest.approx(0, abs=5e-4 * where * abs(section.a))
     assert f"magnification {section.a:+.2g}"[:14] == told.split(", ")[1][:14]
@@ -150,3 +150,26 @@ def test_numbers_of_a_note_about_diffraction():
     found = [f for f in relay(behind=400).inspect() if f.check == "plane shown"]
     assert "the image of qp lies 300 mm before cam, magnification -0.5 (turned by 180°)" in found[0].got
     assert np.isfinite(image_of(*ends(relay(behind=400))).fresnel)
+
+
+@pytest.mark.parametrize(
+    ("built", "check", "space"),
+    [
+        (relay(apart=330), "relay spacing", '"d2.distance": 300*mm'),
+        (relay(behind=108), "off the image", '"d3.distance": 100*mm'),
+    ],
+)
+def test_a_part_is_moved_by_the_space_before_it(built, check, space):
+    (found,) = (f for f in built.inspect() if f.check == check)
+    assert space in found.fix
+    mended = eval(found.fix, {"train": built, "mm": mm})  # noqa: S307 - the fix is code to paste
+    assert not [f for f in mended.inspect() if f.check == check]
+
+
+def test_without_room_before_it_a_part_is_moved_by_hand():
+    built = bench(
+        fa.FreeSpace(200 * mm), fa.Lens(focal=100 * mm, name="l"), fa.FreeSpace(190 * mm), fa.FreeSpace(1 * mm)
+    )
+    _, camera = ends(built)
+    assert moved(camera, -9 * mm) == "move cam by -9*mm along the beam"
+    assert moved(camera, 9 * mm) == f'train.with_changes({{"{camera.previous.name}.distance": 10*mm}})'

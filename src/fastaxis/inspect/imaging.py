@@ -8,10 +8,20 @@ from dataclasses import dataclass
 from fastaxis.elements.free_space import FreeSpace
 from fastaxis.elements.lens import Lens
 from fastaxis.inspect.bench import Visit, ray_matrix
-from fastaxis.inspect.words import length
+from fastaxis.inspect.words import length, mm
 from fastaxis.laws import TravelLaw
 
-__all__ = ["NEARLY", "SHARP", "Image", "image_of", "image_words", "last_distance", "magnification_words", "plane_shown"]
+__all__ = [
+    "NEARLY",
+    "SHARP",
+    "Image",
+    "image_of",
+    "image_words",
+    "last_distance",
+    "magnification_words",
+    "moved",
+    "plane_shown",
+]
 
 SHARP = 25.0  # Fresnel number from which a picture shows its own plane rather than diffraction
 NEARLY = 0.18  # of the way from the last lens to a focus or an image: a camera so near was probably meant to be there
@@ -54,6 +64,20 @@ def last_distance(camera: Visit) -> float:
     """Distance from the last lens, or from the laser, to the camera [m]."""
     lenses = [visit.distance for visit in camera.chain() if isinstance(visit.element, Lens)]
     return camera.distance - (lenses[-1] if lenses else 0.0)
+
+
+def moved(visit: Visit, by: float) -> str:
+    """Code that moves a part, and all behind it, along the beam, where a space of its own before it has the room."""
+    space = visit.previous
+    if space is not None and isinstance(space.element, FreeSpace) and not _passed_again(space):
+        distance = float(space.element.distance) + by
+        if distance >= 0:
+            return f'train.with_changes({{"{space.name}.distance": {distance * 1e3:.5g}*mm}})'
+    return f"move {visit.name} by {'+' if by > 0 else '-'}{mm(abs(by))} along the beam"
+
+
+def _passed_again(space: Visit) -> bool:
+    return sum(visit.name == space.name for visit in space.chain()) > 1
 
 
 def image_of(part: Visit, camera: Visit) -> Image:

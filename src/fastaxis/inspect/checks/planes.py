@@ -15,9 +15,10 @@ from fastaxis.inspect.imaging import (
     image_words,
     last_distance,
     magnification_words,
+    moved,
     plane_shown,
 )
-from fastaxis.inspect.words import length, mm
+from fastaxis.inspect.words import length
 
 __all__ = ["planes", "waist_beyond"]
 
@@ -42,7 +43,7 @@ def _shown(part: Visit, camera: Visit) -> Finding:
             rule=f"the image of {part.name} is sharp where B of the ray matrix vanishes",
             got=f"{camera.name}: {length(abs(off))} {'before' if off > 0 else 'behind'} the image of {part.name}, "
             f"{magnification_words(image.magnification)}{_instead(camera)}",
-            fix=f"move {camera.name} by {'+' if off > 0 else '-'}{mm(abs(off))} along the beam",
+            fix=moved(camera, off),
         )
     return Finding(
         severity=Severity.NOTE,
@@ -91,5 +92,5 @@ def _focus(camera: Visit) -> Iterator[Finding]:
         rule="a camera at the focus stands within half a Rayleigh distance of it",
         got=f"{camera.name}: {length(abs(ahead))} {'before' if ahead > 0 else 'behind'} the focus, "
         f"Rayleigh distance {length(rayleigh)}",
-        fix=f"move {camera.name} by {'+' if ahead > 0 else '-'}{mm(abs(ahead))} along the beam",
+        fix=moved(camera, ahead),
     )

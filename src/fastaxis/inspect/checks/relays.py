@@ -9,7 +9,7 @@ from fastaxis.elements.camera import Camera
 from fastaxis.elements.lens import Lens
 from fastaxis.inspect.bench import Bench, Visit
 from fastaxis.inspect.finding import Finding, Severity
-from fastaxis.inspect.imaging import image_of, image_words, plane_shown
+from fastaxis.inspect.imaging import image_of, image_words, moved, plane_shown
 from fastaxis.inspect.words import length, mm
 from fastaxis.laws import ScalarLaw
 
@@ -100,7 +100,7 @@ def _spacing(relay: _Relay, severity: Severity) -> Finding:
         element=second,
         rule="two lenses pass a collimated beam on as one, and phase fronts unbent, when they stand f1 + f2 apart",
         got=f"{first} and {second}: {length(relay.apart)} apart, f1 + f2 = {length(relay.total)}{relay.picture}",
-        fix=_move(second, relay.total - relay.apart),
+        fix=moved(relay.second, relay.total - relay.apart),
     )
 
 
@@ -126,12 +126,10 @@ def _end(relay: _Relay, end: Visit, lens: Visit, *, by: float, severity: Severit
         element=end.name,
         rule="a relay of two lenses images the plane f1 before the first to f2 behind the second",
         got=f"{end.name}: {length(away)} {side} {lens.name}, f = {length(float(lens.element.focal))}{relay.picture}",
-        fix=_move(end.name, by),
+        fix=moved(end, by)
+        if end is relay.camera
+        else f"move {end.name} by {'+' if by > 0 else '-'}{mm(abs(by))} along the beam",
     )
-
-
-def _move(name: str, by: float) -> str:
-    return f"move {name} by {'+' if by > 0 else '-'}{mm(abs(by))} along the beam"
 
 
 def _lens_before(visit: Visit) -> Visit | None:
