@@ -55,7 +55,7 @@ def _drifted(plate: Any, wavelength: float) -> Iterator[Finding]:
         severity=Severity.HIGH if abs(error) > math.radians(20) else severity,
         check="plate temperature",
         element=plate.name,
-        rule="the whole path difference of a plate drifts, its whole waves included: a zero-order plate stands still",
+        rule="the whole path difference of a plate drifts, its whole waves included: a zero-order plate drifts least",
         got=f"{plate.name}: {told}{abs(kelvin):.3g} K {'above' if kelvin > 0 else 'below'} its design temperature, "
         f"retardance off by {degrees(error)}",
         fix=f'train.with_changes({{"{plate.name}.temperature": {float(plate.design_temperature):g}}})',
