@@ -47,6 +47,23 @@ def test_two_turns_are_the_largest_angle():
         checks.angle("it", "n", 13)
 
 
+@pytest.mark.parametrize(
+    ("value", "fix"), [(22.5, "n=22.5*deg"), (-720, "n=-720*deg"), (721, "n=4.71687"), (-1e6, "n=-5.92562")]
+)
+def test_the_fix_of_an_angle_is_an_angle_itself(value, fix):
+    with pytest.raises(ParameterError, match="in radians") as refusal:
+        checks.angle("it", "n", value)
+    assert refusal.value.fix == fix
+    amount = eval(fix.removeprefix("n="), {"deg": math.radians(1)})
+    assert checks.angle("it", "n", amount) == amount
+
+
+def test_an_endless_angle_makes_no_endless_sentence():
+    with pytest.raises(ParameterError) as refusal:
+        checks.angle("it", "n", 1e300)
+    assert len(str(refusal.value)) < 150
+
+
 @pytest.mark.parametrize(("value", "fix"), [(532, "w=532*nm"), (0, "w=532*nm"), (2, "w=532*nm")])
 def test_wavelengths(value, fix):
     with pytest.raises(ParameterError) as refusal:

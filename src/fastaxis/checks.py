@@ -62,11 +62,13 @@ def angle(part: str, parameter: str, value: Value, *, patterned: bool = False) -
         return value
     value = number(part, parameter, value, fix=f"{parameter}=22.5*deg")
     if not is_symbolic(value) and abs(value) > LARGEST_ANGLE:
+        degrees = abs(value) <= math.degrees(LARGEST_ANGLE)
+        turns = f"{value / (2 * math.pi):{'.1f' if degrees else '.3g'}}"
+        meant = "write degrees as 45*deg" if degrees else "pairs of whole turns change nothing and are left out"
         raise ParameterError(
-            f"{parameter} is in radians and {value:g} rad is {value / (2 * math.pi):.1f} turns:"
-            " write degrees as 45*deg",
+            f"{parameter} is in radians and {value:g} rad is {turns} turns: {meant}",
             got=_got(part, parameter, value),
-            fix=f"{parameter}={value:g}*deg",
+            fix=f"{parameter}={value:g}*deg" if degrees else f"{parameter}={math.fmod(value, LARGEST_ANGLE):g}",
         )
     return value
 
