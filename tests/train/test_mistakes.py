@@ -117,6 +117,12 @@ MISTAKES = [
     Mistake('train.add(fa.Lens(focal=1.0, name="a/b"))', "'a/b' as the name of a part; a name is a word without dots, slashes",
             'name="a_b"'),
     Mistake("train.with_changes([1])", "changes = [1]; changes are written", '{"wavelength": 633*nm}', fa.ParameterError),
+    # Things that are no ports
+    Mistake('train.route(train.elements["pbs"])', "PolarizingBeamSplitter in place of a port; a port is the name", '"pbs"'),
+    Mistake("train.route(3)", "int in place of a port; a port is the name of a part", '"cam2"'),
+    # Loops
+    Mistake('train.loop("pbs.reflected", fa.Mirror(name="m1"), "pbs.reflected")', "loop: pbs.reflected at both ends",
+            'train.retro("pbs.reflected", fa.Mirror())'),
     # A splitter in the middle of a path
     Mistake('train.along("mirror", "pbs.reflected", "cam2")', "pbs.reflected: 2 ways on from this face",
             'train.along("mirror", "pbs.reflected")'),

@@ -99,4 +99,10 @@ def looped(
                 got=f"loop: {name} at an end",
                 fix='train.loop("pbs.transmitted", fa.Mirror(name="m1"), fa.Mirror(name="m2"), "pbs.reflected")',
             )
+    if items[0] == items[-1]:
+        raise WiringError(
+            "a loop ends at another port than it starts from; light that comes back to the same one runs along an arm",
+            got=f"loop: {items[0]} at both ends",
+            fix=f'train.retro("{items[0]}", fa.Mirror())',
+        )
     return joined_both_ways(elements, joints, wavelength, items)

@@ -70,6 +70,8 @@ def named(elements: Elements, name: str) -> Element:
 
 def read_port(elements: Elements, port: str) -> tuple[str, str]:
     """Name and face of a port of this train; the face stays "" when the default is meant."""
+    if not isinstance(port, str):
+        raise _no_port(elements, port)
     name, face = split(port)
     element = named(elements, name)
     if face and face not in element.faces:
@@ -79,3 +81,14 @@ def read_port(elements: Elements, port: str) -> tuple[str, str]:
             fix=f'"{name}.{closest(face, element.faces)}"',
         )
     return name, face
+
+
+def _no_port(elements: Elements, given: object) -> WiringError:
+    """What to say of something else in place of a port: of a part of the train, its name."""
+    own = next((name for name, part in elements.items() if part is given), None)
+    last = next(reversed(list(elements)), None)
+    return WiringError(
+        'a port is the name of a part, with a face where it has several ("pbs.reflected")',
+        got=f"{type(given).__name__} in place of a port",
+        fix=f'"{own or last}"' if elements else "print(train)",
+    )
