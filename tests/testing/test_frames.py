@@ -79,3 +79,10 @@ def test_field_up_to_a_phase(ring, fails):
     mixed = ring.with_changes({"laser.state": fa.UNPOLARIZED})
     with pytest.raises(fa.ParameterError, match="one field"):
         ft.field_equal(mixed, "hwp", field.at(axis, axis), x=axis, y=axis)
+
+
+def test_what_is_not_tried_is_not_ruled_out(ring, fails):
+    axis = np.linspace(-0.2, 0.2, 9) * mm
+    error = fails(ft.field_equal, ring, "hwp", ring.with_changes({"hwp.fast": 3 * deg}), x=axis, y=axis)
+    assert error.cause.endswith("; errors of angles and retardances by degrees were not tried")
+    assert "not tried" not in fails(ft.ring_radius, ring, "cam", 100 * um).cause

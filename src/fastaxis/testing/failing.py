@@ -92,7 +92,9 @@ def blame(train: Any, watch: Watch) -> str:
     except FastaxisError as error:
         return f"not looked for: {error}"
     if not found:
-        return "no single mistake of the usual list explains it"
+        # Each value of a knob would be a propagation of its own.
+        untried = "; errors of angles and retardances by degrees were not tried" if watch.kind == "train" else ""
+        return f"no single mistake of the usual list explains it{untried}"
     told = "; or ".join(one.words for one in _likeliest(found)[:NAMED])
     more = len(found) - NAMED
     return f"{told}; or {more} more" if more > 0 else told
