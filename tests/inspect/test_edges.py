@@ -410,3 +410,12 @@ def test_a_dark_fringe_is_told_from_blocked_light(bench_of):
     blocked = bench_of(fa.Polarizer(axis=90 * deg, name="pol"), fa.Detector(name="meter"))
     (found,) = checks(blocked, "dark port")
     assert found.severity.value == "medium"
+
+
+def test_the_analyzer_of_a_modulator_takes_whatever_comes(bench_of):
+    """At the middle of its swing an amplitude modulator gives circular light: nothing to mend."""
+    parts = (fa.HalfWavePlate(fast=22.5 * deg), fa.Polarizer(axis=-45 * deg, name="pol"), METER)
+    cell = fa.PhaseModulator(axis=0 * deg, phase=90 * deg, expects=fa.linear(45 * deg), name="cell")
+    assert not checks(bench_of(parts[0], cell, *parts[1:]), "polarizer")
+    plate = fa.QuarterWavePlate(slow=0 * deg)
+    assert checks(bench_of(parts[0], plate, *parts[1:]), "polarizer")

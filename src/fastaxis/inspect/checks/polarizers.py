@@ -5,6 +5,7 @@ from __future__ import annotations
 from collections import defaultdict
 from collections.abc import Iterator
 
+from fastaxis.elements.phase_modulator import PhaseModulator
 from fastaxis.elements.polarizer import Polarizer
 from fastaxis.inspect.bench import Bench, Visit
 from fastaxis.inspect.checks.expectations import expectation, inputs_of
@@ -22,11 +23,18 @@ def polarizers(bench: Bench) -> Iterator[Finding]:
     for visit in bench.of_kind(Polarizer):
         if visit.patterned or visit.returning:
             continue  # a beam of many states is what such a polarizer sorts; light on its way back, what it stops
+        if _analyzes_a_modulator(visit):
+            continue  # its light swings between all and nothing
         if expectation(visit, expecting) is not None or visit.name in meeting:
             continue  # told by the check of expectations; there to bring paths of two polarizations together
         share = passing(visit)
         if share < 0.9:
             yield _finding(visit, share)
+
+
+def _analyzes_a_modulator(visit: Visit) -> bool:
+    """Whether the light was modulated in polarization on its way: by a modulator that is declared to expect it."""
+    return any(isinstance(v.element, PhaseModulator) and v.element.expects is not None for v in visit.chain())
 
 
 def _where_states_meet(bench: Bench) -> set[str]:
