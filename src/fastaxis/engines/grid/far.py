@@ -164,8 +164,9 @@ class FarField:
         return found
 
     def _lines(self, raster: Raster, orders: tuple[int, int]) -> tuple[Line, Line]:
-        (count, pitch, _), (down, across) = self.places, orders
-        return lines(raster, count * pitch, (landing_length(down), landing_length(across)), orders)
+        count, pitch, _ = self.places
+        down, across = map(landing_length, orders, self.waves.amplitudes.shape[1:])
+        return lines(raster, count * pitch, (down, across), orders)
 
     def _too_many(self, rows: Line, columns: Line) -> bool:
         return rows.places.count * columns.places.count > MOST * max(self.near.full, SMALL) ** 2

@@ -31,13 +31,15 @@ class Line:
     blocks: tuple[Block, ...]
 
 
-def landing_length(order: int) -> int:
+def landing_length(order: int, waves: int) -> int:
     """Places across a window that hold irradiance of this highest order; 2, 3 and 5 only divide them, for speed.
 
-    >>> landing_length(500)
-    1458
+    No fewer than there are waves: a transform of fewer places would leave some of them out.
+
+    >>> landing_length(500, waves=500), landing_length(20, waves=500)
+    (1458, 500)
     """
-    return int(fft.next_fast_len(math.ceil(SPARE * 2 * order), real=True))
+    return int(fft.next_fast_len(max(math.ceil(SPARE * 2 * order), waves), real=True))
 
 
 def lines(raster: Raster, window: float, lengths: tuple[int, int], orders: tuple[int, int]) -> tuple[Line, Line]:
