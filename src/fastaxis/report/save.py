@@ -17,7 +17,8 @@ __all__ = ["DPI", "FORMATS", "save"]
 
 FORMATS = ("png", "pdf")
 DPI = 160
-PACKED: dict[str, dict[str, Any]] = {"png": {"pil_kwargs": {"optimize": True}}, "pdf": {}}
+# Packed harder a PNG takes twice the time and 3 % less room.
+PACKED: dict[str, dict[str, Any]] = {"png": {"pil_kwargs": {"compress_level": 6}}, "pdf": {}}
 
 
 def save(
