@@ -64,6 +64,13 @@ def ring() -> Train:
     return train.along("m1", fa.Mirror(name="m2"), "bs.side")
 
 
+def full() -> Train:
+    """Light of one splitter meets again in another, and every port that it leaves by is taken."""
+    train = empty().along(fa.Laser(waist=1 * mm, name="laser"), fa.BeamSplitter(name="bs1"), fa.Mirror(name="m1"))
+    train.along("m1", fa.BeamSplitter(name="bs2"), fa.Detector(name="d1"))
+    return train.along("bs1.reflected", fa.Mirror(name="m2"), "bs2.side").along("bs2.reflected", fa.Detector(name="d2"))
+
+
 MISTAKES = [
     # Names
     Mistake('train.join("lazer", "cam2")', "'lazer': no part of this name; the train has the parts laser, hwp", '"laser"'),
@@ -94,6 +101,13 @@ MISTAKES = [
             "place, and pbs.reflected is free", 'train.join("pbs.reflected", "cam2.in")'),
     Mistake('train.join("mirror", "pbs.front")', "pbs.front: already fed by hwp.back; a port is fed by one beam, and pbs.side is free",
             'train.join("mirror.front", "pbs.side")'),
+    Mistake('train.along("pbs.transmitted", fa.Lens(focal=1.0), fa.Mirror())', "place, and pbs.reflected is free", '"pbs.reflected"'),
+    Mistake('train.retro("pbs.transmitted", fa.Mirror())', "place, and pbs.reflected is free", '"pbs.reflected"'),
+    Mistake('train.along("mirror", fa.Lens(focal=1.0), "cam")', "one beam, and cam2.in is free", '"cam2.in"'),
+    Mistake('train.along("bs2.reflected", fa.Detector(name="d3"))', "d2.in; light leaving a port goes to one place; a splitter",
+            'train.add(fa.BeamSplitter(name="splitter"))', train=full),
+    Mistake('train.along("m1", "bs2.side")', "m1.front: already joined to bs2.front; light leaving a port goes to one place; a",
+            'train.add(fa.BeamSplitter(name="splitter"))', train=full),
     # Parts joined to themselves
     Mistake('train.join("qwp", "qwp")', "qwp -> qwp; a part cannot be joined to itself", 'train.join("qwp", "cam2.in")'),
     Mistake('train.join("mirror.front", "mirror.front")', "mirror.front -> mirror.front; a part cannot be joined to itself",

@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+from collections.abc import Set as AbstractSet
+
 from fastaxis.elements.base import Element
 from fastaxis.errors import WiringError
 from fastaxis.maths import Scalar
@@ -16,23 +18,29 @@ def _default(element: Element, way: str) -> str:
     return (element.exit if way == "out" else element.entry) or ""
 
 
-def _other_in_port(elements: Elements, joints: Joints, wavelength: Scalar, besides: str) -> str | None:
+def _other_in_port(
+    elements: Elements, joints: Joints, wavelength: Scalar, besides: str, new: AbstractSet[str] = frozenset()
+) -> str | None:
     """A free default entry of another part, the last declared first."""
     taken = {into for _, into in joints}
-    for name in reversed(list(elements)):
+    for name in reversed([name for name in elements if name != besides and name not in new]):
         face = _default(elements[name], "in")
-        if name != besides and face in in_faces(elements[name], wavelength) and f"{name}.{face}" not in taken:
+        if face in in_faces(elements[name], wavelength) and f"{name}.{face}" not in taken:
             return f"{name}.{face}"
     return None
 
 
-def _other_out_port(elements: Elements, joints: Joints, wavelength: Scalar, besides: str) -> str | None:
-    """The free out-port nearest to a part, one with light before one without."""
+def _other_out_port(
+    elements: Elements, joints: Joints, wavelength: Scalar, besides: str, new: AbstractSet[str] = frozenset()
+) -> str | None:
+    """The free out-port nearest to a part: one with light, else the exit of a part that may get some."""
     graph = build(elements, joints, wavelength)
-    free = open_out(graph, set(graph))
+    sources = source_nodes(elements)
+    free = [node for node in open_out(graph, set(graph)) if node[0] not in new]
+    lit = lit_nodes(graph, sources)
     exits = [node for node in free if elements[node[0]].exit == node[1]]
-    lit = open_out(graph, lit_nodes(graph, source_nodes(elements)))
-    found = nearest(elements, lit, besides) or nearest(elements, exits or free, besides)
+    found = nearest(elements, [node for node in free if node in lit], besides)
+    found = found or nearest(elements, exits or (() if sources else free), besides)
     return port_of(found) if found else None
 
 
@@ -75,9 +83,18 @@ def _swapped(
 
 
 def checked_joint(
-    elements: Elements, joints: Joints, wavelength: Scalar, out_port: str, in_port: str
+    elements: Elements,
+    joints: Joints,
+    wavelength: Scalar,
+    out_port: str,
+    in_port: str,
+    *,
+    new: AbstractSet[str] = frozenset(),
 ) -> tuple[str, str]:
-    """The joint with full port names, after every rule for a single joint was applied."""
+    """The joint with full port names, after every rule for a single joint was applied.
+
+    Parts that are ``new`` are not yet in the user's train: a fix cannot name them, and is the other port alone.
+    """
     out, into = read_port(elements, out_port), read_port(elements, in_port)
     if out[0] == into[0]:
         likely = _other_in_port(elements, joints, wavelength, out[0])
@@ -87,29 +104,39 @@ def checked_joint(
             fix=join_code(out_port, likely) if likely else f'train.along("{out_port}", fa.BeamDump())',
         )
     full_out, full_in = _directed(elements, joints, wavelength, out, into)
-    _check_free(elements, joints, wavelength, full_out, full_in)
+    _check_free(elements, joints, wavelength, full_out, full_in, new=new)
     return full_out, full_in
 
 
-def _check_free(elements: Elements, joints: Joints, wavelength: Scalar, out_port: str, in_port: str) -> None:
+def _check_free(
+    elements: Elements, joints: Joints, wavelength: Scalar, out_port: str, in_port: str, *, new: AbstractSet[str]
+) -> None:
     """Each port carries one joint only."""
+    known = split(out_port)[0] not in new and split(in_port)[0] not in new
     for other_out, other_in in joints:
         if other_out == out_port:
             twin = _twin(elements, joints, wavelength, out_port, "out")
-            likely = twin or _other_out_port(elements, joints, wavelength, split(in_port)[0])
+            likely = twin or _other_out_port(elements, joints, wavelength, split(in_port)[0], new)
             raise WiringError(
                 f"light leaving a port goes to one place{_free(likely)}; a splitter makes two beams of one",
                 got=f"{out_port}: already joined to {other_in}",
-                fix=join_code(likely, in_port) if likely else 'train.add(fa.BeamSplitter(name="splitter"))',
+                fix=_instead(likely, join_code(likely or "", in_port) if known else "", "splitter"),
             )
         if other_in == in_port:
             twin = _twin(elements, joints, wavelength, in_port, "in")
-            likely = twin or _other_in_port(elements, joints, wavelength, split(out_port)[0])
+            likely = twin or _other_in_port(elements, joints, wavelength, split(out_port)[0], new)
             raise WiringError(
                 f"a port is fed by one beam{_free(likely)}; a splitter brings two together",
                 got=f"{in_port}: already fed by {other_out}",
-                fix=join_code(out_port, likely) if likely else 'train.add(fa.BeamSplitter(name="combiner"))',
+                fix=_instead(likely, join_code(out_port, likely or "") if known else "", "combiner"),
             )
+
+
+def _instead(likely: str | None, joint: str, splitter: str) -> str:
+    """The likely port, in a joint if there is one, or the splitter that is missing."""
+    if not likely:
+        return f'train.add(fa.BeamSplitter(name="{splitter}"))'
+    return joint or f'"{likely}"'
 
 
 def _free(likely: str | None) -> str:

@@ -33,7 +33,10 @@ def joined_along(
         if here not in elements:
             _refuse_end(parts, wavelength, here)
         out_port = here if index == 0 else _way_out(parts, joints, wavelength, stops, index)
-        joints = (*joints, checked_joint(parts, joints, wavelength, out_port, there))
+        joints = (
+            *joints,
+            checked_joint(parts, joints, wavelength, out_port, there, new=parts.keys() - elements.keys()),
+        )
     return parts, joints
 
 
