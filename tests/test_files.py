@@ -56,3 +56,13 @@ def test_the_file_has_the_permissions_of_an_ordinary_one(tmp_path, mask, mode):
     finally:
         os.umask(before)
     assert path.stat().st_mode & 0o777 == mode
+
+
+def test_a_folder_that_lets_nobody_write_names_the_goal(tmp_path, monkeypatch):
+    def refuse(dir, prefix):
+        raise PermissionError(13, "Permission denied", f"{dir}/{prefix}x1y2z3")
+
+    monkeypatch.setattr("fastaxis.files.tempfile.mkstemp", refuse)
+    with pytest.raises(PermissionError) as caught:
+        write_whole(tmp_path / "a.bin", lambda file: file.write(b"light"))
+    assert caught.value.filename == str(tmp_path / "a.bin")

@@ -31,12 +31,16 @@ def write_whole(path: Path, write: Callable[[IO[bytes]], object]) -> Path:
     Raises
     ------
     MissingFileError : no such folder.
+    OSError : the folder lets nobody write; it names the goal.
     """
     if not path.parent.is_dir():
         raise MissingFileError(
             "files are written to a folder that exists", got=f"{path}: no folder {path.parent}", fix=f'"{path.name}"'
         )
-    handle, temporary = tempfile.mkstemp(dir=path.parent, prefix=f".{path.name}.")
+    try:
+        handle, temporary = tempfile.mkstemp(dir=path.parent, prefix=f".{path.name}.")
+    except OSError as error:
+        raise OSError(error.errno, error.strerror, str(path)) from error
     try:
         with os.fdopen(handle, "w+b") as file:
             write(file)

@@ -64,3 +64,10 @@ def test_bytes_that_are_no_text(tmp_path):
 def test_a_bench_that_is_not_there(tmp_path):
     with pytest.raises(BenchFileError, match=r"gone\.py: there is no such file; a bench is a Python file"):
         read_bench(tmp_path / "gone.py")
+
+
+def test_a_file_that_may_not_be_read_is_named_once(bench):
+    path = bench("open('gone.csv')")
+    with pytest.raises(BenchFileError) as caught:
+        read_bench(path)
+    assert str(caught.value) == f"{path}:3: gone.csv cannot be read or written: No such file or directory"

@@ -71,4 +71,6 @@ def _place(path: Path, error: BaseException) -> str:
 def _sentence(error: BaseException) -> str:
     if isinstance(error, FastaxisError):
         return str(error)
+    if isinstance(error, OSError) and error.strerror and error.filename:
+        return f"{Path(error.filename).name} cannot be read or written: {error.strerror}"
     return f"{type(error).__name__}: {error}".replace("\n", " ")
