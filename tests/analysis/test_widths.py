@@ -59,7 +59,7 @@ def test_means_over_circles_lose_the_lobes(plane):
 
 
 def test_a_picture_that_does_not_fall_to_a_half_has_no_such_width(plane):
-    with pytest.raises(ParameterError, match=r"fwhm: 1.00 of the maximum .*; a half-maximum width needs"):
+    with pytest.raises(ParameterError, match=r"fwhm: 1.00 of the maximum at r = 2\..* m; a half-maximum width needs"):
         fwhm(np.ones((81, 101)), **plane.axes)
 
 

@@ -10,6 +10,7 @@ import fastaxis as fa
 from fastaxis.inspect.checks.isolators import backward_leak
 from fastaxis.inspect.checks.planes import waist_beyond
 from fastaxis.inspect.checks.polarizers import passing
+from fastaxis.inspect.laser_safety.limits import limit
 from fastaxis.inspect.strands import state_in_words
 from fastaxis.inspect.surveying import survey
 from fastaxis.units import deg, mm, nm, um
@@ -419,3 +420,19 @@ def test_the_analyzer_of_a_modulator_takes_whatever_comes(bench_of):
     assert not checks(bench_of(parts[0], cell, *parts[1:]), "polarizer")
     plate = fa.QuarterWavePlate(slow=0 * deg)
     assert checks(bench_of(parts[0], plate, *parts[1:]), "polarizer")
+
+
+@pytest.mark.parametrize(("asked", "got"), [(1550 * nm, "wavelength = 1.55 µm;"), (532.0, "wavelength = 532 m;")])
+def test_a_wavelength_beyond_the_limits_is_told_in_its_unit(asked, got):
+    with pytest.raises(fa.FastaxisError, match="the table of limits covers 400 to 1400 nm") as told:
+        limit("3R", asked)
+    assert str(told.value).startswith(got)
+
+
+def test_values_of_slips_are_in_the_units_of_the_lab():
+    train = fa.Train(wavelength=532 * nm).along(
+        fa.Laser(waist=1 * mm, power=2e-8, name="laser"), fa.Lens(focal=20 * mm, radius=12.7 * mm, name="lens"), METER
+    )
+    told = [finding.got for finding in train.inspect()]
+    assert "laser: power 20 nW" in told
+    assert "lens: radius = 12.7*mm, focal = 20*mm" in told
