@@ -211,3 +211,9 @@ def test_places_without_units_and_unknown_names(given, words):
         bench().set_sheet(**given)
     fixed = eval(f"dict({caught.value.fix})", {"mm": mm})  # noqa: S307 - the fix is code to paste
     assert bench().set_sheet(**fixed, settings=(fa.H,)).rows
+
+
+@pytest.mark.parametrize("settings", ["H", [5], []])
+def test_settings_that_are_none_are_refused_before_the_sheet_is_made(settings):
+    with pytest.raises(fa.ParameterError, match="setting"):
+        bench().set_sheet(settings=settings)

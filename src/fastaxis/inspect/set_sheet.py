@@ -14,6 +14,7 @@ from typing import Any
 from fastaxis import checks
 from fastaxis.camera import SIX_STATES
 from fastaxis.camera.exposing import expose
+from fastaxis.camera.settings import as_settings
 from fastaxis.conventions import stamp
 from fastaxis.elements.camera import Camera
 from fastaxis.elements.free_space import FreeSpace
@@ -175,7 +176,7 @@ def set_sheet(
     Raises
     ------
     ParameterError : a mount for a part that is not there, or that does nothing when it is turned; a bare angle for one;
-        a rail start or a height without its unit; a height of a part that is not there.
+        a rail start or a height without its unit; a height of a part that is not there; settings that are none.
     SymbolError : a letter without a value.
     WiringError : light cannot be followed.
     """
@@ -184,9 +185,10 @@ def set_sheet(
     _check_mounts(train, mounts)
     _check_place("rail_start", rail_start, "rail_start={}")
     _check_heights(train, heights)
+    analyzers = as_settings(SIX_STATES if settings is None else settings)
     train.validate()
     bench = survey(train)
-    shots, remarks = _frames(train, tuple(SIX_STATES) if settings is None else tuple(settings))
+    shots, remarks = _frames(train, analyzers)
     cautions = [f"Laser caution: {caution.got}." for caution in laser_cautions(bench)]
     deferring = [f"Laser cautions are no clearance: {DEFERS}."] if cautions else []
     rows = tuple(_rows(bench, mounts, rail_start, heights))
