@@ -145,7 +145,8 @@ def test_exact_numbers_of_a_symbol_library_are_numbers():
         (lambda: Setting("far", (TravelLaw.free(1.0),)), "far: TravelLaw varies"),
         (lambda: as_settings(()), "no settings; a camera needs at least one"),
         (lambda: as_settings("HV"), "settings = 'HV'; settings are states or analyzers, not their labels"),
-        (lambda: as_settings(["H"]), "setting 'H'; a setting is a state that passes"),
+        (lambda: as_settings(["H"]), r"setting 'H'; a setting is a state that passes.*fix: fa\.H\)"),
+        (lambda: as_setting("horizontal"), r"setting 'horizontal'; .*fix: fa\.linear\(30\*deg\)\)"),
         (lambda: as_settings(7), "settings = 7; settings are states"),
     ],
 )

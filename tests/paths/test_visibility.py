@@ -82,9 +82,24 @@ def test_a_dark_arm_says_so(mach_zehnder):
 
 def test_one_path_has_no_fringes_to_speak_of():
     train = fa.Train(wavelength=633 * nm).along(fa.Laser(waist=1 * mm, name="laser"), fa.Detector(name="meter"))
-    with pytest.raises(fa.WiringError, match="fringes need two paths that meet") as caught:
+    with pytest.raises(fa.WiringError, match="fringes need two paths from one laser that meet") as caught:
         train.visibility("meter")
     eval(caught.value.fix, {"train": train})
+
+
+def test_lasers_that_meet_make_no_fringes_with_each_other():
+    train = fa.Train(wavelength=633 * nm).along(
+        fa.Laser(waist=1 * mm), fa.BeamSplitter(name="bs"), fa.Detector(name="d")
+    )
+    train.along(fa.Laser(waist=1 * mm, name="other"), "bs.side")
+    with pytest.raises(fa.WiringError, match="fringes need two paths from one laser that meet"):
+        train.visibility("d")
+
+
+def test_the_label_of_an_analyzer_is_told_by_the_state_meant(mach_zehnder):
+    with pytest.raises(fa.ParameterError, match="setting 'D'; a setting is a state") as refusal:
+        mach_zehnder().visibility("out", "D")
+    assert refusal.value.fix == "fa.D"
 
 
 def test_a_cavity_has_no_pairs_of_paths():

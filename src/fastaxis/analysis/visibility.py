@@ -142,7 +142,7 @@ def _lights(train: Any, target: str, grid: Any, engine: str) -> list[list[Sequen
             found.setdefault(tuple(branch.path for branch in group), []).append(group)
     if not found:
         raise WiringError(
-            "fringes need two paths that meet",
+            "fringes need two paths from one laser that meet",
             got=f"{target}: light by one path",
             fix=f'print(train.routes("{target}"))',
         )

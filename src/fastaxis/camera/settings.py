@@ -31,6 +31,7 @@ __all__ = [
 ]
 
 Laws = tuple[AxisLaw | CircularLaw | ScalarLaw, ...]
+_NAMED = ("H", "V", "D", "A", "R", "L")  # states of this name stand in fastaxis itself
 _FIX = 'train.expose("cam", fa.SIX_STATES)'
 
 
@@ -254,8 +255,8 @@ def as_setting(setting: Setting | State) -> Setting:
         return Setting(setting.label or _state_label(setting), state=setting)
     raise ParameterError(
         "a setting is a state that passes (fa.H, fa.linear(30*deg)) or an analyzer (fa.plate_then_polarizer(...))",
-        got=f"expose: setting {setting!r}",
-        fix=_FIX,
+        got=f"setting {setting!r}",
+        fix=f"fa.{setting}" if isinstance(setting, str) and setting in _NAMED else "fa.linear(30*deg)",
     )
 
 
