@@ -8,6 +8,7 @@ import pytest
 import sympy as sp
 
 import fastaxis as fa
+from fastaxis.engines.azimuthal.circulating import Circulation
 from fastaxis.engines import propagate
 from fastaxis.plan import make_plan
 from fastaxis.units import deg, mm, nm, um
@@ -175,3 +176,16 @@ def test_light_that_fades_too_slowly_is_refused_with_its_loss_and_the_fix_adds_s
 def test_light_that_loses_next_to_nothing_is_refused_too():
     with pytest.raises(fa.SamplingError, match="1 of the amplitude is left after a trip, which takes no end of trips"):
         closed_loop(1 - 1e-11).power("bs.reflected")
+
+
+def test_a_fine_cavity_that_nothing_cuts_is_refused_after_a_few_trips(monkeypatch):
+    """Mirrors of 0.9999: 1e-12 (1 - 0.9999) of the sum is left after ln(1e-16)/ln(0.9999) = 368396 trips."""
+    trips, step = [], Circulation.step
+    monkeypatch.setattr(Circulation, "step", lambda self, rounds: (trips.append(1), step(self, rounds))[1])
+    train = fa.Train(wavelength=850 * nm).along(
+        fa.Laser(waist=0.3 * mm), fa.BeamSplitter(reflectance=0.9999, name="m1"), fa.FreeSpace(10 * mm, name="gap"),
+        fa.BeamSplitter(reflectance=0.9999, name="m2"), fa.Detector(name="out"),
+    ).along("m2.reflected", "gap.back", "m1.side")  # fmt: skip
+    with pytest.raises(fa.SamplingError, match=r"takes 368396 trips to fade.*in the loop, behind m1"):
+        train.power("out")
+    assert len(trips) < 16

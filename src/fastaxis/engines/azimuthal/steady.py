@@ -19,7 +19,7 @@ from fastaxis.plan.network import carrier_turns
 __all__ = ["Steady", "steady"]
 
 SETTLING = 8  # trips after which the loss of the last one tells that of the next
-SETTLED = 256  # and after which it tells whether there is an end
+SETTLED = 256  # and after which it tells whether there is an end, where stops may still take more from trip to trip
 ROUNDINGS = 1e-9  # of a trip of some ten parts, whose own error is 1e-12 of the peak
 
 
@@ -56,6 +56,7 @@ def steady(trip: RoundTrip, settings: Settings) -> Steady:
     first = trip.entries[0].length
     going = circulation([(way, _carrier(way.length - first, wavelength)) for way in trip.entries], settings)
     rounds = [(way.steps, _carrier(way.length, wavelength)) for way in trip.rounds]
+    cut = any(getattr(step.law, "stop", None) is not None for way in trip.rounds for step in way.steps)
     before = began = going.amplitudes[0]
     for trips in count(1):
         going.step(rounds)
@@ -66,7 +67,7 @@ def steady(trip: RoundTrip, settings: Settings) -> Steady:
         to_come = now * kept / (1 - kept) if kept < 1 else math.inf
         if now == 0 or to_come <= LEFT_OVER * max(whole, began):
             return Steady(going.sum, trips, left, to_come / whole if whole else 0.0)
-        if trips >= SETTLED and _needed(left) > MOST_TRIPS:
+        if trips >= (SETTLED if cut else SETTLING) and _needed(left) > MOST_TRIPS:
             raise _endless(trip, left)
         before = now
     raise AssertionError
@@ -82,11 +83,12 @@ def _needed(left: float) -> float:
 
 
 def _endless(trip: RoundTrip, left: float) -> SamplingError:
-    parts = ", ".join(dict.fromkeys(name for way in trip.rounds for name in way.path.split(" -> ")))
+    names = list(dict.fromkeys(name for way in trip.rounds for name in way.path.split(" -> ")))
+    parts = ", ".join(names)
     needed = _needed(left)
     told = f"takes {needed if needed < math.inf else 'no end of'} trips to fade"
     return SamplingError(
         f"light with a shape is followed round at most {MOST_TRIPS} times",
         got=f"round {parts}: {left:.6g} of the amplitude is left after a trip, which {told}",
-        fix='fa.NeutralDensity(transmission=0.9, name="loss")',
+        fix=f'fa.NeutralDensity(transmission=0.9, name="loss")  # in the loop, behind {names[0]}',
     )
