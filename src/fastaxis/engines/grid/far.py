@@ -14,7 +14,7 @@ from fastaxis.engines.grid.collecting import Collected, stokes_from
 from fastaxis.engines.grid.edges import watch_frame
 from fastaxis.engines.grid.filled import beat, lit, marginals
 from fastaxis.engines.grid.guard import LINES, check, rim_of, steps_of
-from fastaxis.engines.grid.landing import Line, landing_length, lines
+from fastaxis.engines.grid.landing import KEPT, Line, landing_length, lines
 from fastaxis.engines.grid.light import GridLight, curve, multiply_separable
 from fastaxis.engines.grid.reading import GridField
 from fastaxis.engines.grid.single import far_pitch, near_chirp, scale, travel_single
@@ -28,7 +28,6 @@ __all__ = ["KEPT", "FarField", "arriving"]
 Reals = NDArray[np.float64]
 Complexes = NDArray[np.complex128]
 
-KEPT = 2048  # samples along a side up to which light waits here: beyond, memory counts for more than time
 # Places looked at over the samples of the window, at most: beyond, a plane at a time holds less. A window of fewer
 # samples than SMALL along a side counts as one of so many: what it takes is no burden.
 MOST, SMALL = 2, 1024

@@ -11,10 +11,11 @@ from fastaxis.engines.grid.kernel import Block, blocks, reach_for
 from fastaxis.engines.grid.waves import Places
 from fastaxis.light import Raster
 
-__all__ = ["Line", "landing_length", "lines"]
+__all__ = ["KEPT", "Line", "landing_length", "lines"]
 
 # Places over the waves of irradiance: more of them make the kernel of a pixel shorter and the transforms longer.
 SPARE = 1.45
+KEPT = 2048  # samples along a side up to which light is read from its waves: beyond, memory counts for more than time
 
 
 @dataclass(frozen=True)

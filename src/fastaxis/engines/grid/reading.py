@@ -10,13 +10,15 @@ from numpy.typing import NDArray
 from scipy import fft
 
 from fastaxis.engines.field import Guard
-from fastaxis.engines.grid.collecting import Collected
+from fastaxis.engines.grid.collecting import Collected, stokes_from
 from fastaxis.engines.grid.edges import watch_frame
-from fastaxis.engines.grid.filled import filled
+from fastaxis.engines.grid.filled import beat, filled
 from fastaxis.engines.grid.interpolant import value_matrix
 from fastaxis.engines.grid.kernel import blocks, reach_for
+from fastaxis.engines.grid.landing import KEPT, landing_length, lines
 from fastaxis.engines.grid.light import GridLight, Samples, curve, inner
-from fastaxis.engines.grid.nearby import nearby
+from fastaxis.engines.grid.nearby import Nearby, nearby
+from fastaxis.engines.grid.sampled_waves import waves_of
 from fastaxis.engines.grid.transforms import forward
 from fastaxis.light import Raster, stokes
 from fastaxis.plan import Grid
@@ -27,6 +29,7 @@ Reals = NDArray[np.float64]
 Complexes = NDArray[np.complex128]
 
 
+ROOM = 1 << 28  # bytes that the waves of the rows a camera looks at may take
 SPARE = 1.25  # density of samples over what irradiance needs, at least: room for a kernel to fall off
 MOST_SPARE = 5.0  # beyond it the kernel gets no shorter to speak of
 
@@ -97,7 +100,27 @@ class GridField:
         """
         if raster.shape != (1, 1):
             watch_frame(self.light, self.grid)
-        return (self._read.get(raster) or self._collected_by(raster)).stokes()
+        known = self._read.get(raster)
+        images = None if known else self._by_rows(raster)
+        return images if images is not None else (known or self._collected_by(raster)).stokes()
+
+    def _by_rows(self, raster: Raster) -> Reals | None:
+        """Read from the waves of the samples, row by row; None where another way is better or that takes much room."""
+        light = self.light
+        if light.count > KEPT or (light.filled and _parts(light, light.filled) == 1) or all(self._nearby(raster, 2)):
+            return None
+        waves, (down, across) = waves_of(light)
+        order = beat(down, light.samples.dtype), beat(across, light.samples.dtype)
+        lengths = map(landing_length, order, waves.amplitudes.shape[1:])
+        rows, columns = lines(raster, light.window, tuple(lengths), order)  # type: ignore[arg-type]  # of two
+        if rows.places.count * waves.amplitudes.shape[2] * waves.amplitudes[:, 0, 0].nbytes > ROOM:
+            return None
+        samples = waves.rows_at(rows.places, columns.places)
+        return np.asarray(stokes_from(samples, light.jones, rows.blocks, columns.blocks))
+
+    def _nearby(self, raster: Raster, parts: int) -> list[Nearby | None]:
+        light = self.light
+        return [nearby(places, raster.pitch, light.count, light.pitch, parts) for places in (raster.y, raster.x)]
 
     def collected_by(self, raster: Raster) -> Collected:
         """The light as pixels collect it; kept for the last raster, since sums of this field are read alike."""
@@ -111,10 +134,8 @@ class GridField:
     def _collected_by(self, raster: Raster) -> Collected:
         light = self.light
         waves = light.filled or filled(forward(light.samples.copy()), fft.fftfreq(light.count, 1 / light.count))
-        parts = math.ceil(SPARE * 2 * min(waves, light.count) / light.count)
-        rows, columns = (
-            nearby(places, raster.pitch, light.count, light.pitch, parts) for places in (raster.y, raster.x)
-        )
+        parts = _parts(light, waves)
+        rows, columns = self._nearby(raster, parts)
         if rows and columns:
             left, right = rows.values(), columns.values().T
             samples = np.stack([_complex_sandwich(left, part, right) for part in light.samples])
@@ -128,6 +149,11 @@ class GridField:
             for pixels, middle in zip(raster.shape, reversed(raster.centre), strict=True)
         )  # fmt: skip
         return Collected(light.samples, light.jones, parts, down, across)
+
+
+def _parts(light: GridLight, waves: int) -> int:
+    """Samples as many times as dense as irradiance asks for."""
+    return math.ceil(SPARE * 2 * min(waves, light.count) / light.count)
 
 
 def _complex_sandwich(left: Reals, middle: Samples, right: Reals) -> Complexes:
