@@ -163,7 +163,7 @@ SPOKEN = (
     (_parts, "incoherent"),
     (_rows_and_columns, "shape"),
 )
-_SPEAKER = {parameter: speak for speak, parameters in SPOKEN for parameter in parameters.split()}
+_SAID_BY = {parameter: speak for speak, parameters in SPOKEN for parameter in parameters.split()}
 
 
 def _spoken(parameter: str, value: Any, view: View) -> str:
@@ -171,8 +171,8 @@ def _spoken(parameter: str, value: Any, view: View) -> str:
         return _cells(value)
     if parameter in ("state", "beam", "expects"):
         return _beam(value, view) if parameter == "beam" else _state(value, view)
-    if parameter in _SPEAKER:
-        return str(_SPEAKER[parameter](value))
+    if parameter in _SAID_BY:
+        return str(_SAID_BY[parameter](value))
     if isinstance(value, bool):
         return "yes" if value else "no"
     return f"{value:g}" if isinstance(value, int | float) else str(value)
