@@ -7,7 +7,6 @@ from fastaxis.engines.field import CLEAN
 from fastaxis.engines.grid import workers
 from fastaxis.engines.grid.far import FarField
 from fastaxis.engines.grid.filled import filled
-from fastaxis.engines.grid.interpolant import integral_matrix
 from fastaxis.engines.grid.light import GridLight
 from fastaxis.engines.grid.reading import GridField
 from fastaxis.laws import TravelLaw
@@ -26,7 +25,7 @@ def noise(share):
     return np.fft.ifft2(spectrum)
 
 
-def by_matrices(samples, raster):
+def by_matrices(samples, raster, integral_matrix):
     """Irradiance on four times as many samples by zeros in the spectrum; then the whole window for every pixel."""
     wide = np.zeros((2, 4 * COUNT, 4 * COUNT), complex)
     low, high = slice(0, COUNT // 2), slice(-COUNT // 2, None)
@@ -44,13 +43,13 @@ def by_matrices(samples, raster):
 
 @pytest.mark.parametrize(("share", "parts"), [(0.3, 1), (0.7, 2), (0.95, 3)])
 @pytest.mark.parametrize("raster", [Raster(0.07e-3, (90, 70), (1e-3, 0.2e-3)), Raster(0.4e-3, (25, 30))])
-def test_any_share_of_the_band_is_collected_exactly(share, parts, raster, monkeypatch):
+def test_any_share_of_the_band_is_collected_exactly(integral_matrix, share, parts, raster, monkeypatch):
     monkeypatch.setattr(workers, "ALONE", 0)
     monkeypatch.setattr(workers, "STRIP", 7 * COUNT)
     monkeypatch.setattr("fastaxis.engines.grid.reading.nearby", lambda *_: None)
     field = GridField(GridLight(noise(share), None, PITCH, 0.0, 633e-9), CLEAN)
     assert field.collected_by(raster).parts == parts
-    right = by_matrices(field.light.samples, raster)
+    right = by_matrices(field.light.samples, raster, integral_matrix)
     # Sums of 1e2 terms a side, and the kernel's 2e-14 on each side.
     assert np.allclose(field.stokes_on(raster), right, rtol=0, atol=1e-12 * right[0].max())
 
@@ -58,11 +57,11 @@ def test_any_share_of_the_band_is_collected_exactly(share, parts, raster, monkey
 @pytest.mark.parametrize(("share", "kind", "error"), [(0.7, complex, 1e-12), (0.95, complex, 1e-12), (1.1, complex, 1e-12),
                                                       (0.7, np.complex64, 1e-5)])  # fmt: skip
 @pytest.mark.parametrize("raster", [Raster(0.07e-3, (90, 70), (1e-3, 0.2e-3)), Raster(0.4e-3, (25, 30))])
-def test_row_by_row_it_is_the_same(share, kind, error, raster, monkeypatch):
+def test_row_by_row_it_is_the_same(integral_matrix, share, kind, error, raster, monkeypatch):
     """Also where the highest wave is lit, which both signs share; in single precision a hundred roundings of 6e-8."""
     monkeypatch.setattr("fastaxis.engines.grid.reading.nearby", lambda *_: None)
     field = GridField(GridLight(noise(share).astype(kind), None, PITCH, 0.0, 633e-9), CLEAN)
-    found, right = field._by_rows(raster), by_matrices(field.light.samples.astype(complex), raster)
+    found, right = field._by_rows(raster), by_matrices(field.light.samples.astype(complex), raster, integral_matrix)
     assert found.dtype == field.light.samples.real.dtype
     if share < 1:  # by matrices the shared wave counts with one sign only
         assert np.allclose(found, right, rtol=0, atol=error * right[0].max())

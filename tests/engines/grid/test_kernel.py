@@ -3,7 +3,6 @@
 import numpy as np
 import pytest
 
-from fastaxis.engines.grid.interpolant import integral_matrix
 from fastaxis.engines.grid.kernel import blocks, reach_for
 
 COUNT, PITCH = 256, 0.7
@@ -21,7 +20,7 @@ def dense(found, pixels):
 @pytest.mark.parametrize(
     ("pixels", "pixel", "middle"), [(50, 0.3, 3.3), (100, 0.7, 0.0), (40, 7.0, 10.0), (1, 1e4, 0.0)]
 )
-def test_near_samples_give_the_integral_of_the_curve_through_all(spare, pixels, pixel, middle):
+def test_near_samples_give_the_integral_of_the_curve_through_all(integral_matrix, spare, pixels, pixel, middle):
     rng = np.random.default_rng(0)
     orders = np.arange(1, int(COUNT / 2 / spare))
     places = (np.arange(COUNT) - (COUNT - 1) / 2) / COUNT

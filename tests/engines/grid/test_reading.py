@@ -6,7 +6,7 @@ from scipy.special import erf
 
 from fastaxis.engines.field import CLEAN
 from fastaxis.engines.grid import reading
-from fastaxis.engines.grid.interpolant import integral_matrix, value_matrix
+from fastaxis.engines.grid.interpolant import value_matrix
 from fastaxis.engines.grid.light import GridLight, axis
 from fastaxis.engines.grid.reading import GridField
 from fastaxis.light import Raster, stokes
@@ -88,7 +88,7 @@ def test_the_field_between_samples_is_the_field():
     assert np.allclose(field.at(x, y), np.array([0.6, 0.8j])[:, None, None] * shape, atol=1e-13)
 
 
-def test_matrices_are_the_sums_of_waves_they_stand_for():
+def test_matrices_are_the_sums_of_waves_they_stand_for(integral_matrix):
     count, pitch = 10, 0.3
     x = axis(count, pitch)
     m = np.arange(1, 4)[:, None]

@@ -21,8 +21,7 @@ __all__ = ["apply"]
 TO_CIRCULAR = np.array([[1, -1j], [1, 1j]]) / np.sqrt(2)
 
 
-# Every law is given the settings, though only some laws need to arrive in their plane.
-# ruff: noqa: ARG001
+# ruff: noqa: ARG001 - every law is given the settings, though only some need them to arrive in their plane
 @singledispatch
 def apply(law: Any, field: Harmonics, settings: Settings) -> Harmonics:
     """The field behind a law."""

@@ -7,8 +7,9 @@ from dataclasses import replace
 from typing import cast
 
 from fastaxis.engines.grid.combining import combined
-from fastaxis.engines.grid.far import KEPT, FarField, arriving
+from fastaxis.engines.grid.far import FarField, arriving
 from fastaxis.engines.grid.guard import check, edge_watched, phase_step
+from fastaxis.engines.grid.landing import KEPT
 from fastaxis.engines.grid.light import GridLight
 from fastaxis.engines.grid.pointwise import flipped, passes_one_state, past_axis, past_matrix, past_scalar
 from fastaxis.engines.grid.reading import GridField

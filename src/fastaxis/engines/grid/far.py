@@ -14,7 +14,7 @@ from fastaxis.engines.grid.collecting import Collected, stokes_from
 from fastaxis.engines.grid.edges import watch_frame
 from fastaxis.engines.grid.filled import beat, lit, marginals
 from fastaxis.engines.grid.guard import LINES, check, rim_of, steps_of
-from fastaxis.engines.grid.landing import KEPT, Line, landing_length, lines
+from fastaxis.engines.grid.landing import Line, landing_length, lines
 from fastaxis.engines.grid.light import GridLight, curve, multiply_separable
 from fastaxis.engines.grid.reading import GridField
 from fastaxis.engines.grid.single import far_pitch, near_chirp, scale, travel_single
@@ -23,7 +23,7 @@ from fastaxis.laws import TravelLaw
 from fastaxis.light import Raster
 from fastaxis.plan import Grid
 
-__all__ = ["KEPT", "FarField", "arriving"]
+__all__ = ["FarField", "arriving"]
 
 Reals = NDArray[np.float64]
 Complexes = NDArray[np.complex128]

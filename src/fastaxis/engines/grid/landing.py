@@ -60,7 +60,7 @@ def lines(raster: Raster, window: float, lengths: tuple[int, int], orders: tuple
     return down, across
 
 
-def _line(pixels: int, pixel: float, middle: float, step: float, length: int, reach: int) -> Line:  # noqa: PLR0917
+def _line(pixels: int, pixel: float, middle: float, step: float, length: int, reach: int) -> Line:  # noqa: PLR0917 - six numbers of one line
     half, centre = pixels * pixel / 2 / step, middle / step + (length - 1) / 2
     # One place more at either end for what is rounded.
     first, last = math.floor(centre - half) - reach - 1, math.ceil(centre + half) + reach + 2

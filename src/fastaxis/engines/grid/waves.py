@@ -97,21 +97,21 @@ class Waves:
 
         Transforms over a window filled up with zeros, first of all columns, then of the rows asked for.
         """
-        if self.mirrored:
-            rows, columns = rows.from_other_end, columns.from_other_end
-        near = self._dropped(rows)
-        before, after = self._turns(columns, self.first[1], near.shape[2])
-        _, after_down = self._turns(rows, self.first[0], 0)
-        out = np.empty((len(near), rows.count, columns.count), dtype=near.dtype)
+        found = self.rows_at(rows, columns)
+        down, across = (self._after(places, first) for places, first in zip((rows, columns), self.first, strict=True))
+        out = np.empty((len(self.amplitudes), rows.count, columns.count), dtype=found.dtype)
 
         def fill(strip: slice) -> None:
-            samples = near[:, strip] * before
-            samples *= after_down[strip, None]
-            samples = fft.fft(samples, n=columns.length, axis=2, overwrite_x=True)[:, :, : columns.count]
-            np.multiply(samples, after, out=out[:, strip])
+            np.multiply(found.rows(strip.start, strip.stop), down[strip, None] * across, out=out[:, strip])
 
         strips(fill, rows.count, columns.length, times=TRANSFORM)
-        return np.ascontiguousarray(out[:, ::-1, ::-1]) if self.mirrored else out
+        return out
+
+    def _after(self, places: Places, first: int) -> Samples:
+        """The phase that all components share at some places along a side."""
+        if self.mirrored:
+            return self._turns(places.from_other_end, first, 0)[1][::-1]
+        return self._turns(places, first, 0)[1]
 
     def rows_at(self, rows: Places, columns: Places) -> FarRows:
         """The field at some places but for a phase that its components share, row by row."""
