@@ -14,6 +14,7 @@ from fastaxis.maths import Pattern, Scalar, Value, is_symbolic
 
 __all__ = [
     "angle",
+    "at_least",
     "centre",
     "degrees_missed",
     "extinction",
@@ -23,6 +24,7 @@ __all__ = [
     "near_design",
     "number",
     "pattern",
+    "real",
     "usual",
     "wavelength",
     "whole",
@@ -54,6 +56,27 @@ def number(part: str, parameter: str, value: Any, *, fix: str) -> Scalar:
             f"{parameter} must be one real, finite number or a symbol", got=_got(part, parameter, value), fix=fix
         )
     return real
+
+
+def real(part: str, parameter: str, value: Any, *, fix: str) -> float:
+    """A finite number, where a letter has no meaning.
+
+    >>> real("port_power", "power", 2, fix="power=2*mW")
+    2.0
+    """
+    found = number(part, parameter, value, fix=fix)
+    if is_symbolic(found):
+        raise ParameterError(f"{parameter} must be a number", got=f"{part}: {parameter} = {value}", fix=fix)
+    return float(found)
+
+
+def at_least(part: str, parameter: str, value: Any, least: float, *, fix: str, rule: str = "") -> float:
+    """A finite number that is not too small; ``rule`` says why, where there is more to it."""
+    found = real(part, parameter, value, fix=fix)
+    if found < least:
+        rule = rule or f"{parameter} must be {least:g} or more"
+        raise ParameterError(rule, got=f"{part}: {parameter} = {value}", fix=fix)
+    return found
 
 
 def angle(part: str, parameter: str, value: Value, *, patterned: bool = False) -> Value:

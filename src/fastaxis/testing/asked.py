@@ -5,22 +5,10 @@ from __future__ import annotations
 from typing import Any
 
 from fastaxis import checks
+from fastaxis.checks import at_least, real
 from fastaxis.errors import ParameterError
-from fastaxis.maths import is_symbolic
 
 __all__ = ["a_place", "an_angle", "at_least", "positive", "real", "slack", "whole"]
-
-
-def real(assertion: str, parameter: str, value: Any, *, fix: str) -> float:
-    """A finite number.
-
-    >>> real("port_power", "power", 2, fix="power=2*mW")
-    2.0
-    """
-    found = checks.number(assertion, parameter, value, fix=fix)
-    if is_symbolic(found):
-        raise ParameterError(f"{parameter} must be a number", got=f"{assertion}: {parameter} = {value}", fix=fix)
-    return float(found)
 
 
 def an_angle(assertion: str, parameter: str, value: Any) -> float:
@@ -28,16 +16,6 @@ def an_angle(assertion: str, parameter: str, value: Any) -> float:
     found = real(assertion, parameter, value, fix=f"{parameter}=22.5*deg")
     checks.angle(assertion, parameter, found)
     checks.degrees_missed(assertion, parameter, value)
-    return found
-
-
-def at_least(assertion: str, parameter: str, value: Any, least: float, *, fix: str) -> float:
-    """A finite number that is not too small."""
-    found = real(assertion, parameter, value, fix=fix)
-    if found < least:
-        raise ParameterError(
-            f"{parameter} must be {least:g} or more", got=f"{assertion}: {parameter} = {value}", fix=fix
-        )
     return found
 
 

@@ -9,7 +9,7 @@ import numpy as np
 
 from fastaxis.camera.exposing import expose
 from fastaxis.camera.settings import as_settings
-from fastaxis.checks import number
+from fastaxis.checks import at_least
 from fastaxis.errors import ParameterError
 from fastaxis.studies.fault.centring import displaced
 from fastaxis.studies.fault.mistakes import met
@@ -74,14 +74,8 @@ def find_fault(
 
 
 def _noise(noise: Any) -> float:
-    found = number("find_fault", "noise", noise, fix="noise=0.01")
-    if not found >= 0:
-        raise ParameterError(
-            "noise is the relative difference of frames that counts as none, zero or more",
-            got=f"find_fault: noise = {found:g}",
-            fix="noise=0.01",
-        )
-    return float(found)
+    rule = "noise is the relative difference of frames that counts as none, zero or more"
+    return at_least("find_fault", "noise", noise, 0.0, fix="noise=0.01", rule=rule)
 
 
 def _recorded(frames: Any, shape: tuple[int, ...]) -> Any:

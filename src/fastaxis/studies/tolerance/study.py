@@ -12,7 +12,7 @@ from typing import Any, TypeAlias
 import numpy as np
 from numpy.typing import NDArray
 
-from fastaxis.checks import number
+from fastaxis.checks import at_least
 from fastaxis.errors import FileFormatError, ParameterError
 from fastaxis.studies.tolerance.causes import EXAMPLE, Causes, caution_bare, read_causes
 from fastaxis.studies.tolerance.checkpoint import Checkpoint, fingerprint
@@ -178,14 +178,8 @@ def _check_limits(name: str, limits: Any) -> None:
 
 
 def _accuracy(accuracy: Any) -> float:
-    share = number("tolerance", "accuracy", accuracy, fix="accuracy=0.02")
-    if not share >= 0:
-        raise ParameterError(
-            "accuracy is a share of the spread of a figure of merit, zero or more",
-            got=f"tolerance: accuracy = {share:g}",
-            fix="accuracy=0.02",
-        )
-    return float(share)
+    rule = "accuracy is a share of the spread of a figure of merit, zero or more"
+    return at_least("tolerance", "accuracy", accuracy, 0.0, fix="accuracy=0.02", rule=rule)
 
 
 def _ranked(causes: Causes, each: tuple[Answer, ...]) -> tuple[Contribution, ...]:
