@@ -1,7 +1,8 @@
 """Memory of a train on 4096 x 4096 samples, reading onto a camera of as many pixels included.
 
 ``python tests/benchmarks/bench_memory.py``: each case runs in a process of its own; counted are the arrays asked for
-(tracemalloc) and the largest resident size of the process above that before the work (resource).
+(tracemalloc; memory of frames is asked of the system and is not in it) and the largest resident size of the process
+above that before the work (resource), which has everything in it.
 """
 
 from __future__ import annotations

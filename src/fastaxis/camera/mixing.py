@@ -10,6 +10,8 @@ from typing import Any
 import numpy as np
 from numpy.typing import NDArray
 
+from fastaxis.camera.recycled import empty
+
 __all__ = ["mixed"]
 
 Images = NDArray[Any]
@@ -19,6 +21,7 @@ WORKERS = os.cpu_count() or 1
 # each other out. And the linear algebra library does not start threads of its own inside ours, which on a busy machine
 # wait for each other for seconds.
 PIXELS, FRAMES = 8192, 8
+STRETCH = 8  # products along a frame before the next few frames: pages of memory are then met one after the other
 ALONE = 1 << 22  # multiplications below which handing out the work takes longer than it saves
 
 
@@ -39,25 +42,29 @@ def mixed(weights: Images, images: Images) -> Images:
     """
     pixels = images.shape[1]
     weights = np.ascontiguousarray(weights, dtype=images.dtype)
-    frames = np.empty((len(weights), pixels), dtype=images.dtype)
-    share = 1 if weights.size * pixels < ALONE else WORKERS
+    frames: Images = empty((len(weights), pixels), dtype=images.dtype)
 
-    def fill(first: int) -> None:
-        for start in range(first * PIXELS, pixels, share * PIXELS):
-            _fill(frames[:, start : start + PIXELS], weights, images[:, start : start + PIXELS])
+    def fill(start: int) -> None:
+        stretch = slice(start, start + STRETCH * PIXELS)
+        _fill(frames[:, stretch], weights, images[:, stretch])
 
-    if share == 1:
-        fill(0)
+    jobs = range(0, pixels, STRETCH * PIXELS)
+    if weights.size * pixels < ALONE:
+        for start in jobs:
+            fill(start)
     else:
-        list(_pool().map(fill, range(share)))
+        list(_pool().map(fill, jobs))
     return frames
 
 
 def _fill(frames: Images, weights: Images, images: Images) -> None:
     """Some pixels of all frames, a few frames at a time."""
     for first in range(0, len(weights), FRAMES):
-        part = frames[first : first + FRAMES]
-        np.matmul(weights[first : first + FRAMES], images, out=part)
-        # To look is cheaper than to write: in most places no analyzer takes the light to the last rounding.
-        if part.min() < 0:
-            np.maximum(part, 0, out=part)
+        few = slice(first, first + FRAMES)
+        for start in range(0, frames.shape[1], PIXELS):
+            here = slice(start, start + PIXELS)
+            part = frames[few, here]
+            np.matmul(weights[few], images[:, here], out=part)
+            # To look is cheaper than to write: in most places no analyzer takes the light to the last rounding.
+            if part.min() < 0:
+                np.maximum(part, 0, out=part)

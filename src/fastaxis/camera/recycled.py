@@ -1,0 +1,82 @@
+"""Memory for frames that earlier frames no longer need: new memory costs as long to get as frames take to fill it.
+
+The system clears new memory before it hands it out. A camera looked at again and again, while knobs are turned, asks
+for as much each time; so memory of frames that nobody holds any more is offered back to the system, which takes it when
+it needs it, and is used for the next frames if it did not.
+"""
+
+from __future__ import annotations
+
+import mmap
+import weakref
+from collections import deque
+from typing import Any
+
+import numpy as np
+from numpy.typing import DTypeLike, NDArray
+
+__all__ = ["empty"]
+
+PAGE = 1 << 21  # bytes of the system's large pages
+SMALLEST = 2 * PAGE  # below this much numpy's own memory is as fast
+KEPT = 1 << 30  # bytes offered back, in all
+
+# Only where the system can be offered memory without losing it at once.
+OFFERED = getattr(mmap, "MADV_FREE", None)
+
+_free: deque[mmap.mmap] = deque()
+
+
+class _Held:
+    """A stretch of memory as long as any array looks at it; views of views of it keep this alone alive."""
+
+    __slots__ = ("__array_interface__", "__weakref__", "_memory")
+
+    def __init__(self, memory: mmap.mmap, shape: tuple[int, ...], dtype: np.dtype[Any]) -> None:
+        self._memory = np.frombuffer(memory, dtype=np.uint8)
+        place = self._memory.ctypes.data, False
+        self.__array_interface__ = {"shape": shape, "typestr": dtype.str, "data": place, "version": 3}
+
+
+def empty(shape: tuple[int, ...], dtype: DTypeLike = float) -> NDArray[Any]:
+    """An array with anything in it, as of ``numpy.empty``, in memory used before if there is such.
+
+    >>> empty((3, 2)).shape
+    (3, 2)
+    """
+    kind = np.dtype(dtype)
+    size = int(np.prod(shape)) * kind.itemsize
+    if size < SMALLEST or OFFERED is None:
+        return np.empty(shape, dtype=kind)
+    memory = _taken(-(-size // PAGE) * PAGE)
+    held = _Held(memory, shape, kind)
+    weakref.finalize(held, _give_back, memory).atexit = False
+    return np.asarray(held)
+
+
+def _taken(size: int) -> mmap.mmap:
+    """Memory of exactly this size, so that few frames never hold the memory of many."""
+    for _ in range(len(_free)):
+        try:
+            memory = _free.popleft()
+        except IndexError:  # another thread took it
+            break
+        if len(memory) == size:
+            return memory
+        _free.append(memory)
+    memory = mmap.mmap(-1, size, flags=mmap.MAP_PRIVATE | mmap.MAP_ANONYMOUS)
+    if hasattr(mmap, "MADV_HUGEPAGE"):
+        memory.madvise(mmap.MADV_HUGEPAGE)
+    return memory
+
+
+def _give_back(memory: mmap.mmap) -> None:
+    """Offer memory to the system; what was longest unused goes for good beyond ``KEPT``.
+
+    Called wherever the last array goes, in any thread and amid any work: a deque needs no lock.
+    """
+    if OFFERED is not None and len(memory) <= KEPT:
+        memory.madvise(OFFERED)
+        _free.append(memory)
+    while sum(map(len, list(_free))) > KEPT:
+        _free.popleft()

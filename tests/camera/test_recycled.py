@@ -1,0 +1,95 @@
+"""Memory that frames leave behind."""
+
+import gc
+import mmap
+import pickle
+from collections import deque
+
+import numpy as np
+import pytest
+
+from fastaxis.camera import recycled
+from fastaxis.camera.recycled import PAGE, SMALLEST, empty
+
+offered = pytest.mark.skipif(recycled.OFFERED is None, reason="this system takes memory back at once")
+BIG = (2 * SMALLEST // 8,)
+
+
+@pytest.fixture(autouse=True)
+def nothing_free(monkeypatch):
+    """Each test with memory of its own."""
+    monkeypatch.setattr(recycled, "_free", deque())
+
+
+def place(array):
+    return array.__array_interface__["data"][0]
+
+
+@pytest.mark.parametrize("shape", [(0, 3), (3,), (2, SMALLEST // 8), (SMALLEST // 8 + 1,)])
+@pytest.mark.parametrize("kind", [np.float64, np.float32])
+def test_it_is_an_array_like_any_other(shape, kind):
+    array = empty(shape, kind)
+    assert type(array) is np.ndarray and array.shape == shape and array.dtype == kind
+    assert array.flags.c_contiguous and array.flags.writeable and array.flags.aligned
+    array[...] = 3
+    assert (pickle.loads(pickle.dumps(array)) == 3).all() and (array.copy() == 3).all()
+
+
+@offered
+def test_memory_nobody_holds_is_used_again():
+    first = empty(BIG)
+    where = place(first)
+    del first
+    assert place(empty(BIG)) == where
+
+
+@offered
+@pytest.mark.parametrize(
+    "view", [lambda a: a[5:9], lambda a: a.reshape(2, -1).T, memoryview, lambda a: a.view(np.int64)]
+)
+def test_memory_somebody_still_looks_at_is_not_used_again(view):
+    first = empty(BIG)
+    first[:] = 7
+    kept, where = view(first), place(first)
+    del first
+    gc.collect()
+    second = empty(BIG)
+    second[:] = 0
+    assert place(second) != where and np.asarray(kept).any()
+
+
+@offered
+def test_few_frames_never_hold_the_memory_of_many():
+    many = empty((4 * BIG[0],))
+    del many
+    few = empty(BIG)
+    assert len(recycled._free) == 1
+    del few
+    assert sorted(map(len, recycled._free)) == [2 * SMALLEST, 8 * SMALLEST]
+
+
+@offered
+def test_no_more_than_so_much_is_kept(monkeypatch):
+    monkeypatch.setattr(recycled, "KEPT", 5 * SMALLEST)
+    arrays = [empty(BIG) for _ in range(4)]
+    places = [place(array) for array in arrays]
+    while arrays:
+        arrays.pop(0)
+    assert len(recycled._free) == 2
+    arrays = [empty(BIG) for _ in range(2)]
+    assert [place(array) for array in arrays] == places[2:]  # those that waited longest are gone
+    arrays.clear()
+    huge = empty((6 * SMALLEST // 8,))
+    del huge
+    assert len(recycled._free) == 2
+
+
+def test_systems_that_take_memory_at_once_get_plain_arrays(monkeypatch):
+    monkeypatch.setattr(recycled, "OFFERED", None)
+    assert empty(BIG).flags.owndata
+
+
+@offered
+def test_sizes_are_whole_pages():
+    odd = empty((SMALLEST // 8 + 1,))
+    assert len(odd.base._memory) == SMALLEST + PAGE and isinstance(odd.base._memory.base.obj, mmap.mmap)
