@@ -5,7 +5,7 @@ import pytest
 
 from fastaxis.elements import FreeSpace, QPlate
 from fastaxis.engines.azimuthal.core import core_means, near_axis
-from fastaxis.engines.azimuthal.rendering import smooth_images
+from fastaxis.engines.azimuthal.smooth import smooth_images
 from fastaxis.light import Gaussian, H, L, Raster
 from fastaxis.units import mm, um
 

@@ -10,6 +10,7 @@ from itertools import pairwise
 import numpy as np
 
 from fastaxis.engines.azimuthal.panels import Reals
+from fastaxis.engines.azimuthal.products import multiplied
 from fastaxis.light.gauss import gauss_legendre
 
 __all__ = ["SETTLED", "Block", "Images", "blocks_along", "collected", "lines_across"]
@@ -111,10 +112,10 @@ def collected(images: Images, rows: list[Block], columns: list[Block], scale: fl
     start = 0
     for block in columns:
         stop = start + len(block.nodes)
-        np.matmul(values[:, :, start:stop], scale * block.means.T, out=across[:, :, block.pixels])
+        multiplied(values[:, :, start:stop], scale * block.means.T, out=across[:, :, block.pixels])
         start = stop
     start = 0
     for block in rows:
         stop = start + len(block.nodes)
-        np.matmul(block.means, across[:, start:stop], out=out[:, block.pixels])
+        multiplied(block.means, across[:, start:stop], out=out[:, block.pixels])
         start = stop

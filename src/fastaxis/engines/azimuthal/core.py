@@ -16,7 +16,7 @@ from fastaxis.engines.azimuthal.panels import Complexes, Reals
 from fastaxis.light import Raster
 from fastaxis.light.gauss import gauss_legendre
 
-__all__ = ["FREE", "core_means", "near_axis"]
+__all__ = ["FREE", "core_means", "near_axis", "near_places"]
 
 NEAR = 1.4  # pixels from the axis to a middle; those beyond are nearly a pixel away, and polynomials again
 FREE = NEAR - 0.5
@@ -28,13 +28,14 @@ Images = Callable[[Complexes], Reals]
 
 def near_axis(raster: Raster) -> tuple[slice, slice] | None:
     """Rows and columns of the pixels about the axis; None where it passes the camera by."""
-    spans = []
-    for places in (raster.y, raster.x):
-        near = np.flatnonzero(abs(places) < NEAR * raster.pitch)
-        if not len(near):
-            return None
-        spans.append(slice(int(near[0]), int(near[-1]) + 1))
-    return spans[0], spans[1]
+    rows, columns = (near_places(side, raster.pitch) for side in (raster.y, raster.x))
+    return (rows, columns) if rows and columns else None
+
+
+def near_places(places: Reals, pitch: float) -> slice | None:
+    """Which of some pixel centres [m] along a side are near the axis."""
+    near = np.flatnonzero(abs(places) < NEAR * pitch)
+    return slice(int(near[0]), int(near[-1]) + 1) if len(near) else None
 
 
 def core_means(images: Images, x: Reals, y: Reals, pitch: float, settled: float) -> Reals | None:

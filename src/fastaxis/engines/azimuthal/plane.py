@@ -14,10 +14,12 @@ from fastaxis.engines.azimuthal.bucket import square_stokes
 from fastaxis.engines.azimuthal.cells import cell_images
 from fastaxis.engines.azimuthal.harmonics import LEFT, RIGHT, Harmonics
 from fastaxis.engines.azimuthal.panels import Profile, Reals
-from fastaxis.engines.azimuthal.rendering import circular_field, corner, smooth_images, strips
+from fastaxis.engines.azimuthal.quarter import centred_images
+from fastaxis.engines.azimuthal.rendering import circular_field, corner, strips
 from fastaxis.engines.azimuthal.resolving import Settings
 from fastaxis.engines.azimuthal.scalar import ScalarHarmonics
 from fastaxis.engines.azimuthal.shapes import Shapes, remembered
+from fastaxis.engines.azimuthal.smooth import smooth_images
 from fastaxis.engines.azimuthal.table import Table, table_of
 from fastaxis.engines.azimuthal.travelling import arrived
 from fastaxis.engines.field import Guard
@@ -41,7 +43,7 @@ class AzimuthalField:
     harmonics: Harmonics
     settings: Settings = field(default_factory=Settings)
     _arrivals: dict[float, Harmonics] = field(default_factory=dict, repr=False)
-    _tables: dict[int, Table] = field(default_factory=dict, repr=False)
+    _tables: dict[int, tuple[Shapes, Table]] = field(default_factory=dict, repr=False)
 
     @property
     def power(self) -> float:
@@ -71,11 +73,14 @@ class AzimuthalField:
         return self._arrivals[reach]
 
     def _table(self, arrival: Harmonics) -> Table:
+        return self._shapes(arrival)[1]
+
+    def _shapes(self, arrival: Harmonics) -> tuple[Shapes, Table]:
         """One table an arrival: neighbouring places read the same polynomials, whoever asks."""
         if id(arrival) not in self._tables:
             shapes = Shapes.of(arrival.profile, arrival.charges)
             table = remembered(("table",), shapes, lambda: table_of(shapes.profile, arrival.profile.end))
-            self._tables[id(arrival)] = table.combined(shapes.numbers)
+            self._tables[id(arrival)] = shapes, table.combined(shapes.numbers)
         return self._tables[id(arrival)]
 
     def error(self, reach: float) -> float:
@@ -87,7 +92,10 @@ class AzimuthalField:
         if raster.shape == (1, 1) and raster.centre == (0.0, 0.0):
             return self._on_square(raster.pitch)[:, np.newaxis, np.newaxis]
         arrival = self.out_to(corner(raster))
-        images = smooth_images(self._table(arrival), arrival.profile, arrival.orders, raster)
+        shapes, table = self._shapes(arrival)
+        images = centred_images(table, shapes, arrival.orders, raster) if raster.centre == (0.0, 0.0) else None
+        if images is None:
+            images = smooth_images(table, arrival.profile, arrival.orders, raster)
         if images is not None:
             return images
         arrival = self.out_to(corner(raster, LONGEST))

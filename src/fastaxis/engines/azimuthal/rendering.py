@@ -1,21 +1,18 @@
-"""Harmonics on pixels: a table along the radius, the turns around, Stokes parameters, and the mean over each pixel."""
+"""Harmonics on pixels: a table along the radius, the turns around, and Stokes parameters."""
 
 from __future__ import annotations
 
 import math
-from dataclasses import dataclass, replace
-from functools import partial
+from dataclasses import dataclass
 
 import numpy as np
 from numpy.typing import NDArray
 
-from fastaxis.engines.azimuthal.blocks import SETTLED, Block, Images, blocks_along, collected, lines_across
-from fastaxis.engines.azimuthal.core import FREE, core_means, near_axis
-from fastaxis.engines.azimuthal.panels import Complexes, Profile, Reals
+from fastaxis.engines.azimuthal.panels import Complexes, Reals
 from fastaxis.engines.azimuthal.table import Table
 from fastaxis.light import Raster
 
-__all__ = ["Orders", "circular_field", "corner", "smooth_images", "stokes_of", "strips"]
+__all__ = ["Orders", "circular_field", "corner", "stokes_at", "stokes_of", "strips"]
 
 Orders = tuple[tuple[int, int], ...]
 
@@ -31,9 +28,6 @@ class _Side:
 
 WHOLE = slice(None)
 PLACES = 1 << 15  # at a time: half a megabyte a component
-NONE = slice(0, 0)
-CORE = 1 / 64  # of a pixel, where harmonics are asked how they go to the axis
-LEFT_OVER = 1e-11  # of the peak of the field: what pixels of a hundredth of the beam leave of a harmonic without a core
 
 
 def _sides(x: Reals) -> tuple[Reals, list[_Side]]:
@@ -115,86 +109,13 @@ def stokes_of(circular: Complexes) -> Reals:
     return np.stack([i_left + i_right, 2 * cross.real, 2 * cross.imag, i_right - i_left])
 
 
-def corner(raster: Raster, margin: float = 0.0) -> float:
-    """Radius [m] of the corner furthest from the axis, so many pixels beyond the raster."""
-    sides = zip(raster.centre, raster.shape[::-1], strict=True)
-    return math.hypot(*(abs(c) + (n / 2 + margin) * raster.pitch for c, n in sides))
-
-
-def smooth_images(table: Table, profile: Profile, orders: Orders, raster: Raster) -> Reals | None:
-    """Watts per pixel of S0 .. S3, shape (4, ny, nx); None where pictures are not smooth, as at a hard rim.
-
-    Where the light has a core, the pixels about it are none of the polynomials of the rest and are made apart.
-    """
-
-    def images(x: Reals, y: Reals) -> Reals:
-        return stokes_of(circular_field(table, orders, x, y))
-
-    x, y = raster.x, raster.y
-    peak = float((abs(profile.flat()) ** 2).sum(axis=0).max(initial=0.0))
-    down, across = (near_axis(raster) if _has_core(table, orders, raster.pitch, peak) else None) or (NONE, NONE)
-    columns = _blocks(images, (x, y), (across, down), raster.pitch, peak)
-    rows = _blocks(
-        lambda places, lines: images(lines, places).swapaxes(1, 2), (y, x), (down, across), raster.pitch, peak
-    )
-    if columns is None or rows is None:
-        return None
-    out = np.empty((4, *raster.shape))
-    # Half a turn changes no irradiance if it changes all harmonics alike.
-    half = len(y) // 2
-    if raster.centre != (0.0, 0.0) or len({l % 2 for _, l in orders}) > 1 or len(y) % 2:
-        collected(images, rows, columns, raster.pitch**2, out)
-    else:
-        collected(images, [b for b in rows if b.pixels.start >= half], columns, raster.pitch**2, out)
-        out[:, :half] = out[:, : half - 1 : -1, ::-1]
-    if across != NONE:
-        means = core_means(lambda r: _stokes_at(table, orders, r), x[across], y[down], raster.pitch, SETTLED * peak)
-        if means is None:
-            return None
-        out[:, down, across] = means * raster.pitch**2
-    return out
-
-
-def _stokes_at(table: Table, orders: Orders, places: Complexes) -> Reals:
+def stokes_at(table: Table, orders: Orders, places: Complexes) -> Reals:
     """S0 .. S3 at places x + i y [m], shape (4, places)."""
     dark = np.zeros((2, 1), dtype=complex)
     return stokes_of(sum((both[0] for both in _sums(table, orders, places, (1,)).values()), dark))
 
 
-def _has_core(table: Table, orders: Orders, pitch: float, peak: float) -> bool:
-    """Whether a harmonic with a charge l goes to the axis otherwise than as r^|l|, as directly behind a q-plate.
-
-    Travel makes every harmonic go like that; what is left of it at a small fraction of a pixel is of third order. Where
-    all charges are one, no irradiance depends on the side of the axis.
-    """
-    charges = np.array([abs(l) for _, l in orders])
-    if len({l for _, l in orders}) < 2:
-        return False
-    whole, half = table(np.array([1.0, 0.5]) * (CORE * pitch)).T
-    jump = abs(whole / 2.0**charges - half)[charges > 0]
-    return bool((jump > LEFT_OVER * math.sqrt(peak)).any())
-
-
-def _blocks(
-    look: Images, sides: tuple[Reals, Reals], near: tuple[slice, slice], pitch: float, peak: float
-) -> list[Block] | None:
-    """Blocks along one side; pixels near a core, on this and the other side, are looked at far from it on the other."""
-    (places, others), (here, there) = sides, near
-    all_over, far = lines_across(others), np.delete(others, there)
-    beside = lines_across(far) if len(far) else far
-    beside = beside[abs(beside) > FREE * pitch]
-    found: list[Block] = []
-    for first, last, lines in ((0, here.start, all_over), (here.start, here.stop, beside), (here.stop, None, all_over)):
-        some = places[first:last]
-        if not len(some):
-            continue
-        blocks = blocks_along(partial(_along, look, lines), some, pitch, peak)
-        if blocks is None:
-            return None
-        found += [replace(b, pixels=slice(b.pixels.start + first, b.pixels.stop + first)) for b in blocks]
-    return found
-
-
-def _along(look: Images, lines: Reals, places: Reals) -> Reals:
-    """Pictures on lines; without any line nothing has to be seen."""
-    return look(places, lines) if len(lines) else np.zeros((1, len(places)))
+def corner(raster: Raster, margin: float = 0.0) -> float:
+    """Radius [m] of the corner furthest from the axis, so many pixels beyond the raster."""
+    sides = zip(raster.centre, raster.shape[::-1], strict=True)
+    return math.hypot(*(abs(c) + (n / 2 + margin) * raster.pitch for c, n in sides))
