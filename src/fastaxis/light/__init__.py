@@ -4,6 +4,7 @@ from fastaxis.light.line import MONOCHROMATIC, Comb, GaussianLine, Line, Lorentz
 from fastaxis.light.making_states import elliptical, from_jones, from_stokes, helicity, linear
 from fastaxis.light.mixtures import UNPOLARIZED, StateMixture, partially_polarized
 from fastaxis.light.modes import FlatTop, Gaussian, HermiteGauss, LaguerreGauss, Mode, Moments, PlaneWave, SampledMode
+from fastaxis.light.mueller import muellers
 from fastaxis.light.raster import Raster
 from fastaxis.light.source import Component, Source, coherent_source, make_source
 from fastaxis.light.states import A, D, H, L, R, State, V
@@ -48,6 +49,7 @@ __all__ = [
     "helicity",
     "linear",
     "make_source",
+    "muellers",
     "partially_polarized",
     "stokes",
 ]

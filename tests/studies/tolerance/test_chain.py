@@ -2,17 +2,8 @@ import numpy as np
 import pytest
 
 import fastaxis as fa
-from fastaxis.light.stokes import stokes
-from fastaxis.studies.tolerance.chain import make_chain, muellers
+from fastaxis.studies.tolerance.chain import make_chain
 from fastaxis.units import deg, mm, nm
-
-
-def test_mueller_matrices_do_to_stokes_what_jones_matrices_do_to_fields():
-    numbers = np.random.default_rng(2)
-    jones = numbers.normal(size=(5, 2, 2)) + 1j * numbers.normal(size=(5, 2, 2))
-    field = numbers.normal(size=2) + 1j * numbers.normal(size=2)
-    expected = np.array([stokes(matrix @ field) for matrix in jones])
-    assert muellers(jones) @ stokes(field) == pytest.approx(expected, rel=1e-12)
 
 
 def bench(*parts):

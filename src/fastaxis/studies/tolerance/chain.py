@@ -16,7 +16,7 @@ from fastaxis.plan.binding import bound
 from fastaxis.studies.spanning import compressed, products
 from fastaxis.studies.tolerance.lawtable import law_tables, uniform_matrix
 
-__all__ = ["Chain", "Nothing", "make_chain", "muellers"]
+__all__ = ["Chain", "Nothing", "make_chain"]
 
 Complexes: TypeAlias = NDArray[np.complex128]
 Reals: TypeAlias = NDArray[np.float64]
@@ -176,19 +176,3 @@ def _multiplied(one: Complexes, other: Complexes) -> Complexes:
     rows = max(len(one), len(other))
     wide = [np.broadcast_to(table, (rows, table.shape[1])) for table in (one, other)]
     return compressed(products(*wide))
-
-
-# E^H sigma_k E is S_k, with S3 = 2 Im(Ex Ey*).
-SIGMA = np.array([[[1, 0], [0, 1]], [[1, 0], [0, -1]], [[0, 1], [1, 0]], [[0, 1j], [-1j, 0]]])
-
-
-def muellers(matrices: Complexes) -> Reals:
-    """Mueller matrices (rows, 4, 4) of Jones matrices (rows, 2, 2): M_ij = tr(sigma_i J sigma_j J^H) / 2.
-
-    >>> muellers(np.diag([1.0, -1.0])[None].astype(complex))[0].diagonal().tolist()
-    [1.0, 1.0, -1.0, -1.0]
-    """
-    turned = matrices[:, None] @ SIGMA @ matrices.conj().swapaxes(1, 2)[:, None]
-    # The trace of a product of two matrices is a product of their entries, one of them transposed.
-    flat = turned.swapaxes(2, 3).reshape(len(matrices), 4, 4)
-    return np.asarray(np.einsum("vjk,ik->vij", flat, SIGMA.reshape(4, 4), optimize=True).real / 2)

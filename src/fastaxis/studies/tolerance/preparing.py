@@ -12,9 +12,10 @@ from numpy.typing import NDArray
 from fastaxis.camera.exposing import sensor_at
 from fastaxis.engines.combining import combined, combines
 from fastaxis.engines.sharing import Relay
+from fastaxis.light import muellers
 from fastaxis.plan import make_plan
 from fastaxis.studies.spanning import Span, spanning, squares
-from fastaxis.studies.tolerance.chain import Chain, make_chain, muellers
+from fastaxis.studies.tolerance.chain import Chain, make_chain
 from fastaxis.studies.tolerance.condensing import condensed
 from fastaxis.studies.tolerance.reading import Reading, seen
 from fastaxis.studies.tolerance.working import Anew, Summed, Work
