@@ -10,7 +10,7 @@ from typing import Any
 import numpy as np
 from numpy.typing import NDArray
 
-from fastaxis.camera.recycled import empty
+from fastaxis.recycled import empty
 
 __all__ = ["mixed"]
 

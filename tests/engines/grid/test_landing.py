@@ -125,7 +125,7 @@ def test_faint_light_all_over_the_window_takes_no_waves_away():
     ahead = TravelLaw(0.0, 1.5, -1 / 1.5, 0.0, 1.5)
     near = GridLight((core + faint)[None].astype("complex64"), np.array([1, 0]), PITCH, 0.0, WAVELENGTH, ahead=ahead)
     field = FarField(near, CLEAN)
-    assert field.waves.amplitudes.shape[2] > 2.9 * field.orders[1]
+    assert field.waves.samples.shape[2] > 2.9 * field.orders[1]
     raster = Raster(200e-6, (20, 20))
     right = by_samples(field).stokes_on(raster)
     # Single precision: a hundred roundings of 6e-8.

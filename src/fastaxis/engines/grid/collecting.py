@@ -15,6 +15,7 @@ from fastaxis.engines.grid.kernel import Block
 from fastaxis.engines.grid.waves import FarRows
 from fastaxis.engines.grid.workers import WORKERS, strips, together
 from fastaxis.light import stokes
+from fastaxis.recycled import scratch
 
 __all__ = ["Collected", "stokes_from"]
 
@@ -86,7 +87,7 @@ def stokes_from(
 
 def _images(components: int, kind: np.dtype[Any], rows: tuple[Block, ...], columns: tuple[Block, ...]) -> Images:
     shape = (rows[-1].pixels.stop, columns[-1].pixels.stop)
-    return np.empty((4 if components == 2 else 1, *shape), dtype=np.empty(0, kind).real.dtype)
+    return scratch((4 if components == 2 else 1, *shape), np.empty(0, kind).real.dtype)
 
 
 def _polarized(images: Images, jones: NDArray[np.complex128] | None) -> Images:
@@ -125,7 +126,7 @@ def _collect(out: Images, samples: Rows, rows: list[Block], columns: list[Block]
     start, stop = columns[0].pixels.start, columns[-1].pixels.stop
     for group in _groups(rows):
         first, last = group[0].first, group[-1].last
-        across = np.empty((last - first, len(out), stop - start), dtype=out.dtype)
+        across = scratch((last - first, len(out), stop - start), out.dtype)
         _fill(across, samples, first, columns)
 
         def down(block: Block, first: int = first, across: Images = across) -> None:

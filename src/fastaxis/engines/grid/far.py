@@ -15,7 +15,7 @@ from fastaxis.engines.grid.edges import watch_frame
 from fastaxis.engines.grid.filled import beat, lit, marginals
 from fastaxis.engines.grid.guard import LINES, check, rim_of, steps_of
 from fastaxis.engines.grid.landing import Line, landing_length, lines
-from fastaxis.engines.grid.light import GridLight, curve, multiply_separable
+from fastaxis.engines.grid.light import GridLight, curve
 from fastaxis.engines.grid.reading import GridField
 from fastaxis.engines.grid.single import far_pitch, near_chirp, scale, travel_single
 from fastaxis.engines.grid.waves import Waves
@@ -104,10 +104,10 @@ class FarField:
 
     def _waves(self, rows: slice, columns: slice) -> Waves:
         near, travel = self.near, self._ahead
-        amplitudes = near.samples[:, rows, columns].copy()
         chirp = near_chirp(near, travel)
-        multiply_separable(amplitudes, chirp[columns], scale(near, travel) * chirp[rows])
-        return Waves(amplitudes, (rows.start or 0, columns.start or 0), near.count, mirrored=travel.b < 0)
+        factors = scale(near, travel) * chirp[rows], chirp[columns]
+        first = rows.start or 0, columns.start or 0
+        return Waves(near.samples[:, rows, columns], factors, first, near.count, mirrored=travel.b < 0)
 
     @cached_property
     def orders(self) -> tuple[int, int]:
@@ -164,7 +164,7 @@ class FarField:
 
     def _lines(self, raster: Raster, orders: tuple[int, int]) -> tuple[Line, Line]:
         count, pitch, _ = self.places
-        down, across = map(landing_length, orders, self.waves.amplitudes.shape[1:])
+        down, across = map(landing_length, orders, self.waves.samples.shape[1:])
         return lines(raster, count * pitch, (down, across), orders)
 
     def _too_many(self, rows: Line, columns: Line) -> bool:

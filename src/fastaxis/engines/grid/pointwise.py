@@ -16,6 +16,7 @@ from fastaxis.maths import NUMBERS, Pattern
 from fastaxis.plan import JonesStep
 from fastaxis.plan.merge import split_lens
 from fastaxis.plan.spread import closed
+from fastaxis.recycled import scratch
 
 __all__ = ["flipped", "passes_one_state", "past_axis", "past_matrix", "past_scalar"]
 
@@ -92,7 +93,7 @@ def past_axis(light: GridLight, law: AxisLaw, after: JonesStep | None = None) ->
     """
     samples = light.samples
     if light.jones is not None:
-        samples = np.empty((2, *samples.shape[1:]), dtype=samples.dtype)
+        samples = scratch((2, *samples.shape[1:]), samples.dtype)
     if _patterned(law):
         _past_pattern(samples, light, law)
         light = replace(light, samples=samples, jones=None, filled=None)

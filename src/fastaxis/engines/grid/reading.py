@@ -111,9 +111,9 @@ class GridField:
             return None
         waves, (down, across) = waves_of(light)
         order = beat(down, light.samples.dtype), beat(across, light.samples.dtype)
-        lengths = map(landing_length, order, waves.amplitudes.shape[1:])
+        lengths = map(landing_length, order, waves.samples.shape[1:])
         rows, columns = lines(raster, light.window, tuple(lengths), order)  # type: ignore[arg-type]  # of two
-        if rows.places.count * waves.amplitudes.shape[2] * waves.amplitudes[:, 0, 0].nbytes > ROOM:
+        if rows.places.count * waves.samples.shape[2] * waves.samples[:, 0, 0].nbytes > ROOM:
             return None
         samples = waves.rows_at(rows.places, columns.places)
         return np.asarray(stokes_from(samples, light.jones, rows.blocks, columns.blocks))

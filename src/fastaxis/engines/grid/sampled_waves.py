@@ -29,9 +29,10 @@ def waves_of(light: GridLight) -> tuple[Waves, tuple[Reals, Reals]]:
     factor = np.exp(-2j * np.pi * turns) / count
     factor[[0, -1]] /= 2
     spectrum = forward(light.samples.copy())
-    amplitudes: NDArray[Any] = np.ascontiguousarray(spectrum[:, -order[:, None] % count, -order % count])
-    amplitudes *= (factor[:, None] * factor).astype(kind)
-    powers = marginals(amplitudes)
-    rows, columns = (lit(line, kind) for line in powers)
-    waves = Waves(np.ascontiguousarray(amplitudes[:, rows, columns]), (rows.start, columns.start), count + 1)
-    return waves, powers
+    samples: NDArray[Any] = np.ascontiguousarray(spectrum[:, -order[:, None] % count, -order % count])
+    down, across = marginals(samples)
+    for line in (down, across):
+        line[[0, -1]] /= 4  # of the squares of what is shared
+    rows, columns = lit(down, kind), lit(across, kind)
+    waves = Waves(samples[:, rows, columns], (factor[rows], factor[columns]), (rows.start, columns.start), count + 1)
+    return waves, (down, across)

@@ -18,6 +18,7 @@ from fastaxis.light import SampledMode
 from fastaxis.light.modes.family import GaussFamily
 from fastaxis.plan import Branch
 from fastaxis.plan.sampling import Sampling
+from fastaxis.recycled import scratch
 
 __all__ = ["start"]
 
@@ -78,7 +79,7 @@ def _sum(shapes: Iterable[Samples], vectors: Sequence[NDArray[np.complex128]]) -
 
 
 def _shape(mode: Any, x: NDArray[np.float64], pitch: float, wavelength: float, kind: np.dtype[Any]) -> Samples:
-    shape: Samples = np.empty((x.size, x.size), dtype=kind)
+    shape: Samples = scratch((x.size, x.size), kind)
 
     def fill(strip: slice) -> None:
         shape[strip] = mode.amplitude(x[None, :], x[strip, None], wavelength)

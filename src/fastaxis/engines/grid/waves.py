@@ -10,6 +10,7 @@ from numpy.typing import NDArray
 from scipy import fft
 
 from fastaxis.engines.grid.workers import strips, together
+from fastaxis.recycled import scratch
 
 __all__ = ["FarRows", "Places", "Waves"]
 
@@ -81,13 +82,15 @@ class Waves:
 
     Parameters
     ----------
-    amplitudes : (components, rows, columns).
+    samples : (components, rows, columns): amplitudes but for two factors.
+    factors : of the amplitudes of each row and of each column; so no plane of amplitudes is ever written.
     first : j0 of the rows and of the columns.
     count : waves along a side, those left out included.
     mirrored : whether places count from the other end.
     """
 
-    amplitudes: Samples
+    samples: Samples
+    factors: tuple[Samples, Samples]
     first: tuple[int, int]
     count: int
     mirrored: bool = False
@@ -99,7 +102,7 @@ class Waves:
         """
         found = self.rows_at(rows, columns)
         down, across = (self._after(places, first) for places, first in zip((rows, columns), self.first, strict=True))
-        out = np.empty((len(self.amplitudes), rows.count, columns.count), dtype=found.dtype)
+        out = np.empty((len(self.samples), rows.count, columns.count), dtype=found.dtype)
 
         def fill(strip: slice) -> None:
             np.multiply(found.rows(strip.start, strip.stop), down[strip, None] * across, out=out[:, strip])
@@ -118,22 +121,26 @@ class Waves:
         if self.mirrored:
             rows, columns = rows.from_other_end, columns.from_other_end
         near = self._dropped(rows)
-        before, _ = self._turns(columns, self.first[1], near.shape[2])
-        return FarRows(near, before, columns, self.mirrored)
+        return FarRows(near, self._before(columns, axis=1), columns, self.mirrored)
 
     def _dropped(self, rows: Places) -> Samples:
         """Transforms of all columns, at the rows asked for."""
-        height, width = self.amplitudes.shape[1:]
-        before, _ = self._turns(rows, self.first[0], height)
-        near = np.empty((len(self.amplitudes), rows.count, width), dtype=self.amplitudes.dtype)
+        width = self.samples.shape[2]
+        before = self._before(rows, axis=0)
+        near = scratch((len(self.samples), rows.count, width), self.samples.dtype)
 
         def drop(strip: slice) -> None:
-            for part, some in zip(near, self.amplitudes[:, :, strip], strict=True):
+            for part, some in zip(near, self.samples[:, :, strip], strict=True):
                 turned = some * before[:, None]
                 part[:, strip] = fft.fft(turned, n=rows.length, axis=0, overwrite_x=True)[: rows.count]
 
         strips(drop, width, rows.length, times=TRANSFORM)
         return near
+
+    def _before(self, places: Places, axis: int) -> Samples:
+        """Factors of the waves along a side before their transform."""
+        turns, _ = self._turns(places, self.first[axis], self.samples.shape[axis + 1])
+        return np.asarray(turns * self.factors[axis], dtype=self.samples.dtype)
 
     def _turns(self, places: Places, first: int, waves: int) -> tuple[Samples, Samples]:
         """Factors of the waves before, and of the places after, a transform that counts both from 0.
@@ -145,23 +152,22 @@ class Waves:
         zero, lowest = 2 * places.first - (length - 1), 2 * first - (self.count - 1)
         before = np.mod(np.arange(waves) * zero, 2 * length) / (2 * length)
         after = np.mod(lowest * (zero + 2 * np.arange(places.count)), 4 * length) / (4 * length)
-        kind = self.amplitudes.dtype
+        kind = self.samples.dtype
         return np.exp(-2j * np.pi * before).astype(kind), np.exp(-2j * np.pi * after).astype(kind)
 
     def anywhere(self, rows: Reals, columns: Reals) -> Samples:
         """(components, rows, columns): the field at places given in windows from the middle."""
         down, across = (
-            self._matrix(-places if self.mirrored else places, first, waves)
-            for places, first, waves in zip((rows, columns), self.first, self.amplitudes.shape[1:], strict=True)
+            self._matrix(-places if self.mirrored else places, axis) for axis, places in enumerate((rows, columns))
         )
         found: Samples = (
-            (down @ self.amplitudes) @ across.T if len(down) <= len(across) else down @ (self.amplitudes @ across.T)
+            (down @ self.samples) @ across.T if len(down) <= len(across) else down @ (self.samples @ across.T)
         )
         return found
 
-    def _matrix(self, places: Reals, first: int, waves: int) -> Samples:
-        order = first + np.arange(waves) - (self.count - 1) / 2
-        return np.asarray(np.exp(-2j * np.pi * np.mod(np.outer(places, order), 1.0)))
+    def _matrix(self, places: Reals, axis: int) -> Samples:
+        order = self.first[axis] + np.arange(self.samples.shape[axis + 1]) - (self.count - 1) / 2
+        return np.asarray(np.exp(-2j * np.pi * np.mod(np.outer(places, order), 1.0)) * self.factors[axis])
 
     def profiles(self, lines: int) -> tuple[Reals, Reals]:
         """Power at each of ``count`` rows and columns of the window, from so many lines of waves only.
@@ -174,9 +180,9 @@ class Waves:
 
     def _profile(self, axis: int, lines: int) -> Reals:
         other = 3 - axis
-        stride = max(self.amplitudes.shape[other] // lines, 1)
-        some = self.amplitudes[:, :, ::stride] if axis == 1 else self.amplitudes[:, ::stride]
-        before, _ = self._turns(Places(0, self.count, self.count), self.first[axis - 1], some.shape[axis])
+        stride = max(self.samples.shape[other] // lines, 1)
+        some = self.samples[:, :, ::stride] if axis == 1 else self.samples[:, ::stride]
+        before = self._before(Places(0, self.count, self.count), axis - 1)
         spectrum = fft.fft(some * (before[:, None] if axis == 1 else before), n=self.count, axis=axis, overwrite_x=True)
         profile: Reals = np.sum(spectrum.real**2 + spectrum.imag**2, axis=(0, other), dtype=float)
         return profile[::-1] if self.mirrored else profile

@@ -1,4 +1,4 @@
-"""Memory for frames that earlier frames no longer need: new memory costs as long to get as frames take to fill it.
+"""Memory that earlier answers no longer need: new memory costs as long to get as frames take to fill it.
 
 The system clears new memory before it hands it out. A camera looked at again and again, while knobs are turned, asks
 for as much each time; so memory of frames that nobody holds any more is offered back to the system, which takes it when
@@ -15,11 +15,12 @@ from typing import Any
 import numpy as np
 from numpy.typing import DTypeLike, NDArray
 
-__all__ = ["empty"]
+__all__ = ["empty", "scratch"]
 
 PAGE = 1 << 21  # bytes of the system's large pages
 SMALLEST = 2 * PAGE  # below this much numpy's own memory is as fast
 KEPT = 1 << 30  # bytes offered back, in all
+SCRATCH = 1 << 26  # bytes of a plane between two steps that are worth keeping for the next question
 
 # Only where the system can be offered memory without losing it at once.
 OFFERED = getattr(mmap, "MADV_FREE", None)
@@ -52,6 +53,17 @@ def empty(shape: tuple[int, ...], dtype: DTypeLike = float) -> NDArray[Any]:
     held = _Held(memory, shape, kind)
     weakref.finalize(held, _give_back, memory).atexit = False
     return np.asarray(held)
+
+
+def scratch(shape: tuple[int, ...], dtype: DTypeLike = float) -> NDArray[Any]:
+    """As :func:`empty`, for planes that are gone with the answer; where they are so large that memory counts for more
+    than time, they leave nothing behind.
+
+    >>> scratch((3, 2), complex).dtype
+    dtype('complex128')
+    """
+    size = int(np.prod(shape)) * np.dtype(dtype).itemsize
+    return np.empty(shape, dtype=dtype) if size > SCRATCH else empty(shape, dtype)
 
 
 def _taken(size: int) -> mmap.mmap:

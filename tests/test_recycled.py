@@ -8,8 +8,8 @@ from collections import deque
 import numpy as np
 import pytest
 
-from fastaxis.camera import recycled
-from fastaxis.camera.recycled import PAGE, SMALLEST, empty
+from fastaxis import recycled
+from fastaxis.recycled import PAGE, SMALLEST, empty, scratch
 
 offered = pytest.mark.skipif(recycled.OFFERED is None, reason="this system takes memory back at once")
 BIG = (2 * SMALLEST // 8,)
@@ -93,3 +93,12 @@ def test_systems_that_take_memory_at_once_get_plain_arrays(monkeypatch):
 def test_sizes_are_whole_pages():
     odd = empty((SMALLEST // 8 + 1,))
     assert len(odd.base._memory) == SMALLEST + PAGE and isinstance(odd.base._memory.base.obj, mmap.mmap)
+
+
+@offered
+def test_large_planes_between_steps_leave_nothing_behind(monkeypatch):
+    monkeypatch.setattr(recycled, "SCRATCH", 2 * SMALLEST)
+    large, small = scratch((2 * SMALLEST // 8 + 1,)), scratch(BIG)
+    assert large.flags.owndata
+    del large, small
+    assert len(recycled._free) == 1
