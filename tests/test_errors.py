@@ -2,6 +2,7 @@
 
 import pickle
 import warnings
+from concurrent.futures import ThreadPoolExecutor
 
 import pytest
 
@@ -60,3 +61,14 @@ def test_a_caution_from_deep_inside_points_at_the_line_of_the_user():
     with pytest.warns(errors.SlipWarning, match="design") as caught:
         train.expose("out", [fa.H])
     assert caught[0].filename == __file__
+
+
+def test_cautions_of_one_thread_can_be_held_back_while_others_speak():
+    told = errors.SlipWarning("a rule", got="a slip", fix="a fix")
+    with errors.cautions_held() as held, ThreadPoolExecutor(1) as pool:
+        errors.caution(told)
+        with pytest.warns(errors.SlipWarning, match="a slip"):
+            pool.submit(errors.caution, told).result()
+    assert held == [told]
+    with pytest.warns(errors.SlipWarning, match="a slip"):
+        errors.caution(told)

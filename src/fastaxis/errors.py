@@ -7,6 +7,9 @@ Every class asks for all three parts, so none can be left out. ``str(error)`` is
 
 import sys
 import warnings
+from collections.abc import Iterator
+from contextlib import contextmanager
+from contextvars import ContextVar
 from pathlib import Path
 
 
@@ -83,9 +86,32 @@ class WiringWarning(FastaxisWarning):
 
 _PACKAGE = str(Path(__file__).parent)
 
+_HELD: ContextVar[list[FastaxisWarning] | None] = ContextVar("cautions held back", default=None)
+
+
+@contextmanager
+def cautions_held() -> Iterator[list[FastaxisWarning]]:
+    """Cautions of this thread are put on a list instead of being told; those of other threads are told as ever.
+
+    >>> with cautions_held() as held:
+    ...     caution(SlipWarning("a radius is half a diameter", got="radius = 4", fix="radius=2"))
+    >>> [warning.fix for warning in held]
+    ['radius=2']
+    """
+    held: list[FastaxisWarning] = []
+    token = _HELD.set(held)
+    try:
+        yield held
+    finally:
+        _HELD.reset(token)
+
 
 def caution(warning: FastaxisWarning) -> None:
     """Warn at the user's own line, however deep inside the package the finding was made."""
+    held = _HELD.get()
+    if held is not None:
+        held.append(warning)
+        return
     level = 2
     frame = sys._getframe(1)  # noqa: SLF001 - the documented way to find the caller
     while frame.f_back is not None and frame.f_code.co_filename.startswith(_PACKAGE):
