@@ -38,15 +38,38 @@ def test_an_interrupted_write_leaves_the_older_file_whole(figure, tmp_path, monk
     (path,) = save(figure, tmp_path / "bench", ["png"])
     before = path.read_bytes()
 
-    def stopped(unfinished, **_):
+    def stopped(picture, unfinished, **_):
         unfinished.write(b"half")
         raise KeyboardInterrupt
 
-    monkeypatch.setattr(figure, "savefig", stopped)
+    monkeypatch.setattr(Image.Image, "save", stopped)
     with pytest.raises(KeyboardInterrupt):
         save(figure, tmp_path / "bench", ["png"])
     assert path.read_bytes() == before
     assert list(tmp_path.iterdir()) == [path]
+
+
+def test_places_are_found_once_for_both_formats(figure, tmp_path, monkeypatch):
+    engine, runs = figure.get_layout_engine(), []
+    execute = engine.execute
+    monkeypatch.setattr(engine, "execute", lambda laid_out: (runs.append(laid_out.dpi), execute(laid_out)))
+    save(figure, tmp_path / "bench", dpi=120)
+    assert runs == [120]
+
+
+@pytest.mark.parametrize("kind", ["png", "pdf"])
+def test_a_figure_is_afterwards_what_it_was(figure, tmp_path, kind):
+    before = figure.get_layout_engine(), figure.canvas, figure.dpi
+    save(figure, tmp_path / "bench", [kind], dpi=120)
+    assert (figure.get_layout_engine(), figure.canvas, figure.dpi) == before
+
+
+def test_a_figure_with_fixed_places_stays_one(figure, tmp_path):
+    figure.set_layout_engine("none")
+    engine, place = figure.get_layout_engine(), figure.axes[0].get_position().bounds
+    save(figure, tmp_path / "bench")
+    assert figure.get_layout_engine() is engine
+    assert figure.axes[0].get_position().bounds == place
 
 
 def test_another_format_is_refused(figure, tmp_path):

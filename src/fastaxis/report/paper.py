@@ -15,6 +15,7 @@ from matplotlib.figure import Figure
 
 from fastaxis.conventions import stamp
 from fastaxis.files import write_whole
+from fastaxis.report.letters import FAMILIES
 from fastaxis.report.style import FOOT_SIZE, INK, PAPER, SOFT, rules
 
 __all__ = ["A4", "MARGIN", "Sheet", "blank", "number_pages", "save_pages"]
@@ -50,7 +51,7 @@ class Sheet:
         for line in wrapped(text, size, (self.width - MARGIN - x) if width is None else width, mono=mono):
             self.axes.text(
                 x, self.y, line, size=size, color=colour, va="top", weight="bold" if bold else "normal",
-                family="DejaVu Sans Mono" if mono else "DejaVu Sans",
+                family="DejaVu Sans Mono" if mono else FAMILIES,
             )  # fmt: skip
             self.y += line_height(size)
 

@@ -15,6 +15,7 @@ from matplotlib.figure import Figure
 from numpy.typing import NDArray
 
 from fastaxis.conventions import View, stamp
+from fastaxis.report.letters import FAMILIES, make_known
 
 __all__ = [
     "DARK", "INK", "LEFT", "LINEAR", "PAPER", "RIGHT", "SOFT", "WARN", "azimuth_map", "foot_height", "footer",
@@ -34,7 +35,7 @@ SIGNED_ANCHORS = ("#0d3b66", "#3f7cac", "#a9c6dd", "#f6f4ef", "#e9bf93", "#c26a2
 AZIMUTH_ANCHORS = ("#f3dc8c", "#6fa8a0", "#23395b", "#8c4a6b", "#f3dc8c")
 
 RULES: dict[Any, Any] = {
-    "font.family": "DejaVu Sans",
+    "font.family": FAMILIES,
     "font.size": 8.0,
     "axes.titlesize": 8.5,
     "axes.labelsize": 8.0,
@@ -64,6 +65,7 @@ P = ParamSpec("P")
 @contextmanager
 def rules() -> Iterator[None]:
     """Our rules in place of the caller's matplotlib settings, which are given back afterwards."""
+    make_known()
     with mpl.rc_context():
         mpl.rcdefaults()
         mpl.rcParams.update(RULES)
