@@ -8,9 +8,9 @@ from typing import TYPE_CHECKING, Any
 
 import numpy as np
 from numpy.typing import NDArray
-from scipy.constants import c, h
 
 from fastaxis.errors import ParameterError
+from fastaxis.light.line import SPEED_OF_LIGHT
 
 if TYPE_CHECKING:
     from fastaxis.camera.exposure import Exposure
@@ -19,6 +19,7 @@ if TYPE_CHECKING:
 __all__ = ["electrons_of", "fills_well_after", "photons_per_joule", "read_with", "signal_to_noise", "time_words"]
 
 TIMES = ((0.1, 1.0, "s"), (1e-4, 1e-3, "ms"), (1e-7, 1e-6, "us"), (0.0, 1e-9, "ns"))  # from, unit; exposures go by ms
+PLANCK = 6.62607015e-34  # [J s], exact by definition of the kilogram
 QUANTIZATION = 1 / 12  # counts squared, of rounding to whole counts
 
 
@@ -30,7 +31,7 @@ def photons_per_joule(wavelength: float) -> float:
     >>> f"{photons_per_joule(1.0):.8e}"
     '5.03411657e+24'
     """
-    return wavelength / (h * c)
+    return wavelength / (PLANCK * SPEED_OF_LIGHT)
 
 
 def electrons_of(power: Any, sensor: Sensor, *, wavelength: float, exposure_time: float) -> Any:
