@@ -7,11 +7,13 @@ from typing import Any
 from fastaxis.errors import ParameterError
 from fastaxis.testing.asked import at_least, positive
 from fastaxis.testing.failing import BenchError
+from fastaxis.testing.kinds import about_a_train
 from fastaxis.testing.words import watts
 
 __all__ = ["energy_closes"]
 
 
+@about_a_train
 def energy_closes(train: Any, *, absorbed: float = 0.0, within: float = 1e-6) -> None:
     """The power at all open ports and ends adds up to that of the lasers, less the share that parts absorb.
 

@@ -9,10 +9,13 @@ import numpy as np
 from fastaxis.errors import ParameterError
 from fastaxis.testing.asked import positive
 from fastaxis.testing.failing import Claim, hold
+from fastaxis.testing.kinds import about_a_train, an_array
+from fastaxis.train import Train
 
 __all__ = ["field_equal"]
 
 
+@about_a_train
 def field_equal(train: Any, port: str, expected: Any, *, x: Any, y: Any, within: float = 1e-3) -> None:
     """The field at a port equals an expected one, a phase common to all places being free.
 
@@ -31,8 +34,9 @@ def field_equal(train: Any, port: str, expected: Any, *, x: Any, y: Any, within:
         of finite numbers; a deviation that is not positive.
     """
     within = positive("field_equal", "within", within, fix="within=1e-3")
-    columns, rows = np.asarray(x, float), np.asarray(y, float)
-    wanted = _field(expected, port, columns, rows) if hasattr(expected, "elements") else np.asarray(expected, complex)
+    columns = an_array("field_equal", "x", x, float, fix="x=shots.x")
+    rows = an_array("field_equal", "y", y, float, fix="y=shots.y")
+    wanted = _wanted(expected, port, columns, rows)
     if wanted.shape != (2, rows.size, columns.size):
         raise ParameterError(
             "a field is (Ex, Ey) at all columns and rows",
@@ -63,6 +67,12 @@ def field_equal(train: Any, port: str, expected: Any, *, x: Any, y: Any, within:
             "train",
         ),
     )
+
+
+def _wanted(expected: Any, port: str, x: Any, y: Any) -> Any:
+    if isinstance(expected, Train):
+        return _field(expected, port, x, y)
+    return an_array("field_equal", "expected", expected, complex, fix="np.stack([ex, ey])")
 
 
 def _field(train: Any, port: str, x: Any, y: Any) -> Any:

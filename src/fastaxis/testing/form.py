@@ -8,6 +8,7 @@ import numpy as np
 
 from fastaxis.errors import ParameterError
 from fastaxis.testing.failing import BenchError
+from fastaxis.testing.kinds import about_a_train
 
 __all__ = ["form_equal"]
 
@@ -17,6 +18,7 @@ POINTS = 12
 SAME = 1e-9
 
 
+@about_a_train
 def form_equal(train: Any, target: str, expected: Any, *, behind: Any) -> None:
     """The derived frame behind an analyzer, relative to the envelope, equals an expression in the same letters.
 

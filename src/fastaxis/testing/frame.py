@@ -11,12 +11,14 @@ from fastaxis.camera.exposing import sensor_at
 from fastaxis.errors import ParameterError
 from fastaxis.testing.asked import positive
 from fastaxis.testing.failing import Claim, hold
+from fastaxis.testing.kinds import about_a_train, an_array
 
 __all__ = ["frame_matches", "likeness"]
 
 Reals = NDArray[np.float64]
 
 
+@about_a_train
 def frame_matches(
     train: Any,
     camera: str,
@@ -48,7 +50,7 @@ def frame_matches(
         camera or detector of that name.
     """
     within = positive("frame_matches", "within", within, fix="within=0.02")
-    wanted = np.asarray(recorded, float)
+    wanted = an_array("frame_matches", "recorded", recorded, float, fix='shots.frame("H")')
     shape = getattr(sensor_at(train, camera), "shape", (1, 1))
     if wanted.shape != tuple(shape):
         raise ParameterError(

@@ -11,12 +11,14 @@ from fastaxis.camera.settings import as_setting, no_analyzer
 from fastaxis.errors import ParameterError, WiringError
 from fastaxis.testing.asked import at_least, positive
 from fastaxis.testing.failing import Claim, hold
+from fastaxis.testing.kinds import about_a_train
 
 __all__ = ["visibility"]
 
 STEPS = 8  # over a turn of the phase; harmonics up to the sixth do not disturb the first
 
 
+@about_a_train
 def visibility(
     train: Any, target: str, expected: float, *, within: float = 0.01, behind: Any = None, knob: str | None = None
 ) -> None:
@@ -65,7 +67,7 @@ def visibility(
 
 
 def _check_knob(train: Any, knob: str) -> None:
-    part, _, parameter = knob.partition(".")
+    part, _, parameter = str(knob).partition(".")
     element = train.elements.get(part)
     known = {} if element is None else element.parameters()
     value = known.get(parameter)
@@ -91,7 +93,7 @@ def _of_paths(train: Any, target: str, behind: Any) -> tuple[float, str]:
 
 def _stepped(train: Any, target: str, behind: Any, knob: str) -> tuple[float, str]:
     weights = (no_analyzer() if behind is None else as_setting(behind)).weights
-    part, _, parameter = knob.partition(".")
+    part, _, parameter = str(knob).partition(".")
     start = train.elements[part].parameters()[parameter]
     turned = [train.with_changes({knob: start + 2 * np.pi * k / STEPS}) for k in range(STEPS)]
     powers = np.array([weights @ sum(light.total_stokes for light in one.field(target)) for one in turned])

@@ -7,12 +7,14 @@ from typing import Any
 
 from fastaxis.errors import ParameterError
 from fastaxis.testing.failing import BenchError
+from fastaxis.testing.kinds import about_a_train, texts
 
 __all__ = ["passes_inspection"]
 
 SEVERITIES = ("high", "medium", "low")
 
 
+@about_a_train
 def passes_inspection(train: Any, *, severity: str = "high", allowed: Iterable[str] = ()) -> None:
     """``train.inspect()`` finds nothing of a severity or above.
 
@@ -25,7 +27,7 @@ def passes_inspection(train: Any, *, severity: str = "high", allowed: Iterable[s
     Raises
     ------
     BenchError : something was found.
-    ParameterError : another severity.
+    ParameterError : another severity; names that are no list of texts.
     """
     if severity not in SEVERITIES:
         raise ParameterError(
@@ -33,7 +35,8 @@ def passes_inspection(train: Any, *, severity: str = "high", allowed: Iterable[s
             got=f"passes_inspection: {severity!r}",
             fix='severity="medium"',
         )
-    counted, known = SEVERITIES[: SEVERITIES.index(severity) + 1], set(allowed)
+    known = texts("passes_inspection", "allowed", allowed, fix='allowed=["qp"]')
+    counted = SEVERITIES[: SEVERITIES.index(severity) + 1]
     found = [
         finding
         for finding in train.inspect()

@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 import math
-from collections.abc import Sequence
+from collections.abc import Iterable, Sequence
 from typing import Any
 
 from fastaxis.analysis.lobes import Lobes, lobes
@@ -12,6 +12,7 @@ from fastaxis.errors import ParameterError
 from fastaxis.light import linear
 from fastaxis.testing.asked import a_place, an_angle, at_least, positive, real, slack, whole
 from fastaxis.testing.failing import Claim, hold
+from fastaxis.testing.kinds import about_a_train
 from fastaxis.testing.words import degrees
 
 __all__ = ["lobe_angle", "lobe_count", "turning"]
@@ -21,6 +22,7 @@ DEGREE = math.radians(1)
 TURNED = tuple(linear(math.radians(angle)) for angle in (0, 15, 30, 45, 60))
 
 
+@about_a_train
 def lobe_count(train: Any, camera: str, count: int, *, behind: Any, centre: tuple[float, float] = ON_AXIS) -> None:
     """The number of bright lobes about a centre; 0 for a round picture.
 
@@ -56,6 +58,7 @@ def lobe_count(train: Any, camera: str, count: int, *, behind: Any, centre: tupl
     )
 
 
+@about_a_train
 def lobe_angle(
     train: Any, camera: str, angle: float, *, behind: Any, within: float = DEGREE, centre: tuple[float, float] = ON_AXIS
 ) -> None:
@@ -95,6 +98,7 @@ def lobe_angle(
     hold(train, Claim(camera, f"a lobe at {degrees(angle)} within {degrees(within)}", told, misfit, "shots", (behind,)))
 
 
+@about_a_train
 def turning(
     train: Any,
     camera: str,
@@ -122,10 +126,10 @@ def turning(
     """
     rate = real("turning", "rate", rate, fix="+1")
     within, centre = positive("turning", "within", within, fix="within=0.05"), a_place("turning", centre)
-    if len(tuple(analyzers)) < 2:
+    if not isinstance(analyzers, Iterable) or len(tuple(analyzers)) < 2:
         raise ParameterError(
             "lobes turn from one analyzer to the next",
-            got=f"turning: {len(tuple(analyzers))} analyzers",
+            got=f"turning: analyzers = {analyzers!r:.60}",
             fix="analyzers=[fa.linear(0*deg), fa.linear(15*deg)]",
         )
 

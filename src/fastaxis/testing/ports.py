@@ -10,11 +10,13 @@ import numpy as np
 from fastaxis.camera.settings import as_setting, no_analyzer
 from fastaxis.testing.asked import at_least
 from fastaxis.testing.failing import Claim, hold
+from fastaxis.testing.kinds import about_a_train
 from fastaxis.testing.words import watts
 
 __all__ = ["port_dark", "port_power"]
 
 
+@about_a_train
 def port_dark(train: Any, port: str, *, db: float = 30.0, behind: Any = None) -> None:
     """The power at a port is at least this many decibels below that of all lasers together.
 
@@ -50,6 +52,7 @@ def port_dark(train: Any, port: str, *, db: float = 30.0, behind: Any = None) ->
     )
 
 
+@about_a_train
 def port_power(train: Any, port: str, power: float, *, within: float = 0.01, behind: Any = None) -> None:
     """The power at a port.
 

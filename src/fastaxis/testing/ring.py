@@ -8,11 +8,13 @@ from fastaxis.analysis.widths import ring_radius as radius_of
 from fastaxis.camera.settings import no_analyzer
 from fastaxis.testing.asked import a_place, at_least, positive
 from fastaxis.testing.failing import Claim, hold
+from fastaxis.testing.kinds import about_a_train
 from fastaxis.testing.words import microns
 
 __all__ = ["ring_radius"]
 
 
+@about_a_train
 def ring_radius(
     train: Any,
     camera: str,

@@ -10,10 +10,12 @@ from fastaxis.camera.settings import no_analyzer
 from fastaxis.errors import ParameterError
 from fastaxis.testing.asked import a_place, positive, real, whole
 from fastaxis.testing.failing import Claim, hold
+from fastaxis.testing.kinds import about_a_train
 
 __all__ = ["singular_index"]
 
 
+@about_a_train
 def singular_index(
     train: Any, camera: str, index: float, *, radius: float, centre: tuple[float, float] = (0.0, 0.0)
 ) -> None:

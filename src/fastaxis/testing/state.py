@@ -11,6 +11,7 @@ from fastaxis.errors import ParameterError
 from fastaxis.light.stokes import degree_of_polarization, ellipse
 from fastaxis.testing.asked import an_angle, slack
 from fastaxis.testing.failing import Claim, hold
+from fastaxis.testing.kinds import about_a_train
 from fastaxis.testing.words import degrees
 
 __all__ = ["state_at"]
@@ -21,6 +22,7 @@ QUARTER = math.pi / 4
 ROUNDINGS = 1e-12  # of 45*deg, with room to spare
 
 
+@about_a_train
 def state_at(
     train: Any,
     port: str,

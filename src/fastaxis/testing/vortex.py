@@ -14,6 +14,7 @@ from fastaxis.light import State
 from fastaxis.plan import make_plan
 from fastaxis.testing.asked import a_place, positive, real, whole
 from fastaxis.testing.failing import Claim, hold
+from fastaxis.testing.kinds import about_a_train
 
 __all__ = ["charge"]
 
@@ -21,6 +22,7 @@ POINTS = 48  # on the circle: charges up to 24
 DARK = 1e-12  # of the power on the circle; roundings of matrices leave 1e-32, of sums on a grid up to 1e-14
 
 
+@about_a_train
 def charge(
     train: Any,
     port: str,
@@ -54,7 +56,7 @@ def charge(
             f"a charge is told up to {POINTS // 2 - 1}, either way", got=f"charge: charge = {charge}", fix="+1"
         )
     radius, centre = positive("charge", "radius", radius, fix="radius=0.5*mm"), a_place("charge", centre)
-    across = np.conj(behind.jones)
+    across = np.conj(_state(behind).jones)
 
     def content(bench: Any) -> NDArray[np.float64]:
         circles = [_on_circle(one, radius, centre) for one in propagate(make_plan(bench, port))]
@@ -79,6 +81,14 @@ def charge(
     label = behind.label or "the analyzer"
     expected = f"charge {charge:+d} behind {label} with {100 * share:g} % of the power"
     hold(train, Claim(port, expected, told, misfit, "train"))
+
+
+def _state(behind: object) -> State:
+    if not isinstance(behind, State):
+        raise ParameterError(
+            "a charge is told behind a state", got=f"charge: behind = {behind!r:.60}", fix="behind=fa.R"
+        )
+    return behind
 
 
 def _check(share: float) -> None:
