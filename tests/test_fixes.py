@@ -122,7 +122,6 @@ SLIPS = [
     lambda: bench().expose("cam", fa.H, precision="half"),
     lambda: bench().expose("cam", fa.H).frame("X"),
     lambda: bench().expose("cam", fa.H).counts("H", exposure_time=1e-3),
-    lambda: bench().save("/nonexist/bench.json"),
     lambda: fa.Train.load("/nonexist/bench.json"),
     lambda: fa.Train.from_text(None),
     lambda: line(fa.Slit(width=20e-6)).expose("cam", fa.H, grid=fa.Grid(64, 6e-3)),

@@ -61,7 +61,7 @@ class FileFormatError(FastaxisError, ValueError):
 
 
 class MissingFileError(FastaxisError, FileNotFoundError):
-    """A file or folder is not where it was looked for."""
+    """A file is not where it was looked for."""
 
 
 class FastaxisWarning(UserWarning):

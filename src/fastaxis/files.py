@@ -28,16 +28,14 @@ def require(path: Path, fix: str) -> Path:
 def write_whole(path: Path, write: Callable[[IO[bytes]], object]) -> Path:
     """Write next to the goal and move it there at the end, so that a broken-off run leaves the old file alone.
 
+    A missing folder is made.
+
     Raises
     ------
-    MissingFileError : no such folder.
-    OSError : the folder lets nobody write; it names the goal.
+    OSError : the folder cannot be made or lets nobody write; it names the goal.
     """
-    if not path.parent.is_dir():
-        raise MissingFileError(
-            "files are written to a folder that exists", got=f"{path}: no folder {path.parent}", fix=f'"{path.name}"'
-        )
     try:
+        path.parent.mkdir(parents=True, exist_ok=True)
         handle, temporary = tempfile.mkstemp(dir=path.parent, prefix=f".{path.name}.")
     except OSError as error:
         raise OSError(error.errno, error.strerror, str(path)) from error

@@ -49,6 +49,15 @@ def test_what_could_not_be_read_is_said(found):
     assert "no draw could be read" in said
 
 
+def test_a_figure_of_merit_that_no_error_touches_is_said_to_stay():
+    train = fa.Train(wavelength=633 * nm, name="Saltpan").along(
+        fa.Laser(waist=0.4 * mm, power=1e-3, state=fa.H, name="laser"), fa.HalfWavePlate(fast=0 * deg, name="hwp")
+    )
+    study = train.tolerance({"hwp.fast": normal(1 * deg)}, {"through": power_at("hwp")}, draws=20)
+    said = [text.get_text() for page in draw_tolerance(study) for one in page.axes for text in one.texts]
+    assert "all draws give the same: none of the errors shows here" in said
+
+
 def test_saving(found, tmp_path):
     (pdf,) = found.save(tmp_path / "study.pdf")
     assert pdf.read_bytes().startswith(b"%PDF")

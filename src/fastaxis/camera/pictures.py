@@ -59,7 +59,6 @@ def save_pngs(shots: Exposure, folder: str | Path) -> tuple[Path, ...]:
     folder : made if it is not there.
     """
     folder = Path(folder)
-    folder.mkdir(parents=True, exist_ok=True)
     scale = _scale(shots)
     return tuple(_save_png(shots, k, scale, folder) for k in range(len(shots)))
 

@@ -22,7 +22,6 @@ def inspect(bench: BenchFile, options: Namespace) -> int:
     say(inspection.json() if options.json else inspection.text(notes=not options.brief))
     if options.out:
         folder = Path(options.out)
-        folder.mkdir(parents=True, exist_ok=True)
         for ending in ("txt", "json", "pdf", "png"):
             for path in inspection.save(folder / f"inspection.{ending}"):
                 if not options.json:

@@ -61,7 +61,6 @@ def _predict_one(train: Any, target: str, settings: Any, out: Path, options: Nam
     with progress(f"{target}: light", 5 + len(settings)) as move_on:
         shots = train.expose(target, settings, grid=options.grid, engine=options.engine).in_view(options.view)
         move_on(f"{target}: data")
-        out.mkdir(parents=True, exist_ok=True)
         save_bundle(shots, out / f"{target}.npz")
         save_tiff(shots, out / f"{target}.tif")
         for word, draw in _figures(shots, options).items():

@@ -92,7 +92,6 @@ def number_pages(sheets: Sequence[Sheet], title: str) -> tuple[Figure, ...]:
 
 def save_pages(figures: Sequence[Figure], path: Path) -> tuple[Path, ...]:
     """Write pages as one PDF, or as a PNG each ("sheet-1.png", "sheet-2.png")."""
-    path.parent.mkdir(parents=True, exist_ok=True)
     if path.suffix == ".pdf":
         return (write_whole(path, partial(_write_pdf, figures)),)
     return tuple(

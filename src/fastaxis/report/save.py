@@ -74,7 +74,6 @@ def _laid_out(figure: Figure, dpi: int) -> Iterator[None]:
 
 
 def _write(figure: Figure, path: Path, writer: Callable[[Figure, View, IO[bytes]], None], view: View) -> Path:
-    path.parent.mkdir(parents=True, exist_ok=True)
     return write_whole(path, partial(writer, figure, view))
 
 

@@ -7,6 +7,7 @@ from typing import Any, Protocol
 import numpy as np
 from matplotlib.axes import Axes
 from matplotlib.figure import Figure
+from numpy.typing import NDArray
 
 from fastaxis.camera.settings import no_analyzer
 from fastaxis.report.paper import MARGIN, Sheet, blank, number_pages
@@ -17,6 +18,9 @@ __all__ = ["draw_tolerance"]
 
 BARS = 10  # contributions shown; of more, the rest is one bar
 HIGH = 2.1  # [inch] of a row of plots
+ROUNDINGS = (
+    1e-12  # of a value; draws that no error touches differ by some 1e-16 in it, too little for a bar to stand on
+)
 FRAME = 2.1
 
 
@@ -103,8 +107,8 @@ def _bars(axes: Axes, ranking: Any) -> None:
 def _histogram(axes: Axes, study: Study, name: str) -> None:
     values = study.samples[name]
     read = values[np.isfinite(values)]
-    if not read.size:
-        axes.text(0.5, 0.5, "no draw could be read", ha="center", va="center", transform=axes.transAxes)
+    if words := _instead(read):
+        axes.text(0.5, 0.5, words, ha="center", va="center", transform=axes.transAxes)
         axes.set_axis_off()
         return
     limits = [limit for limit in study.limits.get(name, ()) if limit is not None]
@@ -119,6 +123,14 @@ def _histogram(axes: Axes, study: Study, name: str) -> None:
     axes.set_ylabel("draws")
     legend = "black: as declared; dashed: 5 % and 95 %" + ("; rust: limits" if limits else "")
     axes.set_title(legend, size=6.5, color=SOFT, loc="left")
+
+
+def _instead(values: NDArray[Any]) -> str:
+    """What is said in place of bars, where there would be none or all in one place."""
+    if not values.size:
+        return "no draw could be read"
+    alike = np.ptp(values) <= ROUNDINGS * np.abs(values).max()
+    return "all draws give the same: none of the errors shows here" if alike else ""
 
 
 def _scale(study: Study, name: str, values: Any) -> tuple[float, str]:
