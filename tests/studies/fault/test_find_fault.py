@@ -33,6 +33,32 @@ PLANTED = [
 ]
 
 
+@pytest.mark.parametrize(
+    ("target", "fix"),
+    [
+        ("space9", "near"),
+        ("nera", "near"),
+        ("metre", "meter"),
+        ("split", "near"),
+        ("split.reflected", "near"),
+        (3, "near"),
+    ],
+)
+def test_another_target_than_a_camera_or_detector_is_answered_with_one(target, fix):
+    train = fa.Train(wavelength=633 * nm, name="Saltpan").along(
+        fa.Laser(waist=0.3 * mm, power=2 * mW, state=fa.H, name="laser"),
+        fa.FreeSpace(100 * mm, name="space3"),
+        fa.BeamSplitter(reflectance=0.5, name="split"),
+        fa.Camera(pixel=50 * um, shape=(16, 16), name="near"),
+    )
+    train.along("split.reflected", fa.Detector(name="meter"))
+    with pytest.raises(
+        fa.ParameterError, match="cameras and detectors: near, meter; the frames belong to one"
+    ) as found:
+        train.find_fault(np.ones((1, 16, 16)), [fa.H], target=target)
+    assert found.value.fix == f'target="{fix}"'
+
+
 @pytest.mark.parametrize(("change", "words"), PLANTED)
 def test_the_planted_mistake_is_among_the_best(bench, change, words):
     shots = bench.with_changes(change).expose("cam", fa.SIX_STATES)

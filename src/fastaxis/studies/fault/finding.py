@@ -2,7 +2,8 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterable, Sequence
+from collections.abc import Iterable
+from difflib import get_close_matches
 from typing import Any
 
 import numpy as np
@@ -10,6 +11,7 @@ import numpy as np
 from fastaxis.camera.exposing import expose
 from fastaxis.camera.settings import as_settings
 from fastaxis.checks import at_least
+from fastaxis.elements import Camera, Detector
 from fastaxis.errors import ParameterError
 from fastaxis.studies.fault.centring import displaced
 from fastaxis.studies.fault.mistakes import met
@@ -47,8 +49,8 @@ def find_fault(
 
     Raises
     ------
-    ParameterError : no target named and not just one camera; frames of another number or shape, of no light, or with
-        something else than finite numbers; noise that is negative or no number.
+    ParameterError : no target named and not just one camera; a target that is no camera or detector; frames of another
+        number or shape, of no light, or with something else than finite numbers; noise that is negative or no number.
     """
     slack = _noise(noise)
     camera = _target(train, target)
@@ -99,11 +101,15 @@ def _recorded(frames: Any, shape: tuple[int, ...]) -> Any:
 
 
 def _target(train: Any, target: str | None) -> str:
-    known: Sequence[str] = train.cameras
-    if target is None and len(known) != 1:
+    if target is None and len(train.cameras) == 1:
+        return str(train.cameras[0])
+    known = [name for name, element in train.elements.items() if isinstance(element, Camera | Detector)]
+    if not isinstance(target, str) or target.partition(".")[0] not in known:
+        asked = "" if target is None else f"target = {target!r}; "
+        likely = (*get_close_matches(str(target), known, 1), *train.cameras, *known, "meter")[0]
         raise ParameterError(
             "the frames belong to one camera or detector",
-            got=f"find_fault: cameras {', '.join(known) or '(none)'}",
-            fix=f'target="{known[0] if known else "meter"}"',
+            got=f"find_fault: {asked}cameras and detectors: {', '.join(known) or '(none)'}",
+            fix=f'target="{likely}"',
         )
-    return target or known[0]
+    return target
