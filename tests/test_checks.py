@@ -104,6 +104,14 @@ def test_usual_lengths_pass_in_silence():
     assert isinstance(caution, SlipWarning)
 
 
+def test_an_exposure_of_many_seconds_may_lack_its_unit():
+    assert checks.long_exposure("cam", 1.0) == []
+    (caution,) = checks.long_exposure("cam", 20)
+    assert isinstance(caution, SlipWarning)
+    assert caution.rule == "exposure_time is in seconds and rarely beyond 1 s: its unit may be missing"
+    assert caution.fix == "exposure_time=20*ms"
+
+
 @pytest.mark.parametrize(("wavelength", "count"), [(500e-9, 0), (549e-9, 0), (551e-9, 1), (449e-9, 1)])
 def test_a_tenth_off_design(wavelength, count):
     assert len(checks.near_design("it", 500e-9, wavelength)) == count

@@ -21,6 +21,7 @@ __all__ = [
     "fraction",
     "half_integer",
     "length",
+    "long_exposure",
     "near_design",
     "number",
     "pattern",
@@ -289,17 +290,24 @@ def _cells(part: str, parameter: str, cells: Any, pixel: Any) -> Pattern:
     return Pattern(cells.astype(float), length(part, "pixel", pixel, most=0.01, fix="pixel=8*um"))
 
 
-def usual(part: str, parameter: str, value: Any, most: float, *, fix: str) -> list[FastaxisWarning]:
-    """A caution for a length that is possible but so large that its unit may be missing."""
+def usual(
+    part: str, parameter: str, value: Any, most: float, *, fix: str, unit: str = "metres"
+) -> list[FastaxisWarning]:
+    """A caution for a length or a time that is possible but so large that its unit may be missing."""
     if is_symbolic(value) or abs(value) <= most:
         return []
     return [
         SlipWarning(
-            f"{parameter} is in metres and rarely beyond {most:g} m: its unit may be missing",
+            f"{parameter} is in {unit} and rarely beyond {most:g} {unit[0]}: its unit may be missing",
             got=_got(part, parameter, value),
             fix=fix,
         )
     ]
+
+
+def long_exposure(part: str, time: float) -> list[FastaxisWarning]:
+    """A caution for an exposure of many seconds: with a laser on a camera 20 was meant in milliseconds."""
+    return usual(part, "exposure_time", time, 1.0, fix=f"exposure_time={time:g}*ms", unit="seconds")
 
 
 def whole_radians(part: str, parameter: str, value: Any, *, least: float = 0.0) -> list[FastaxisWarning]:

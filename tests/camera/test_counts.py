@@ -187,3 +187,24 @@ def test_a_detector_is_read_with_a_sensor_given():
     read = eval(refusal.value.fix, {"shots": shots, "fa": fa, "ms": ms})
     # 1 pW for 1 ms at 633 nm: 3187 photons, 0.6 of them
     assert read.electrons.sum() == pytest.approx(1912, abs=1)
+
+
+def test_many_seconds_on_a_camera_are_asked_about_once(recwarn):
+    """20 typed for 20*ms passes as seconds: the caution says so, at the first question to the train."""
+    train = fa.Train(wavelength=633e-9, name="Saltpan").along(
+        fa.Laser(waist=0.1e-3, power=1e-9, state=fa.H, name="laser"),
+        fa.Camera(pixel=50 * um, shape=(8, 8), sensor=SENSOR, exposure_time=20, name="cam"),
+    )
+    with pytest.warns(fa.SlipWarning, match="rarely beyond 1 s") as said:
+        shots = train.expose("cam", fa.H)
+    assert said[0].message.fix == "exposure_time=20*ms"
+    shots.electrons("H")
+    assert not recwarn.list
+    train.with_changes({"cam.exposure_time": 20 * ms}).expose("cam", fa.H)
+
+
+def test_many_seconds_given_with_the_question_are_asked_about_too():
+    shots = even(100.0)
+    with pytest.warns(fa.SlipWarning, match=r"cam: exposure_time = 2\.5; .*rarely beyond 1 s.*exposure_time=2\.5\*ms"):
+        shots.electrons("H", exposure_time=2.5)
+    shots.electrons("H", exposure_time=1.0)

@@ -9,7 +9,8 @@ from typing import TYPE_CHECKING, Any
 import numpy as np
 from numpy.typing import NDArray
 
-from fastaxis.errors import ParameterError
+from fastaxis import checks
+from fastaxis.errors import ParameterError, caution
 from fastaxis.light.line import SPEED_OF_LIGHT
 
 if TYPE_CHECKING:
@@ -71,6 +72,9 @@ def read_with(shots: Exposure, sensor: Sensor | None, exposure_time: float | Non
             got=f"{shots.target}: exposure_time = {time}",
             fix=f'shots.counts("{shots.labels[0]}", exposure_time=1*ms)',
         )
+    if exposure_time is not None:  # of one declared with the camera the train tells
+        for warning in checks.long_exposure(shots.target, float(time)):
+            caution(warning)
     return sensor, float(time)
 
 

@@ -8,7 +8,7 @@ from typing import Any, ClassVar
 from fastaxis import checks
 from fastaxis.elements.base import Element
 from fastaxis.elements.sensor import Sensor
-from fastaxis.errors import ParameterError
+from fastaxis.errors import FastaxisWarning, ParameterError
 from fastaxis.maths import Scalar, is_symbolic
 
 __all__ = ["ORIENTATIONS", "Camera"]
@@ -100,6 +100,9 @@ class Camera(Element):
                 fix="shape=(512, 512)",
             )
         return ny, nx
+
+    def cautions(self, wavelength: Scalar) -> list[FastaxisWarning]:
+        return [] if self.exposure_time is None else checks.long_exposure(self.label, self.exposure_time)
 
     @property
     def seen(self) -> tuple[int, int]:
