@@ -17,8 +17,8 @@ from fastaxis.units import mm, mW, nm, um
 SAMPLES, TURNS = 1024, 7
 
 
-def bench(*, centred=False):
-    """Two plates, two spaces each, and a third plate before the camera."""
+def bench(*last, centred=False):
+    """Two plates, two spaces each, and a third plate before the camera, perhaps with something behind it."""
     place = (0.0, 0.0) if centred else (0.2 * mm, -0.1 * mm)
     return fa.Train(wavelength=633 * nm, name="Saltpan").along(
         fa.Laser(waist=0.8 * mm, power=5 * mW, state=fa.H, name="laser"),
@@ -29,6 +29,7 @@ def bench(*, centred=False):
         fa.Lens(focal=500 * mm),
         fa.FreeSpace(300 * mm),
         fa.QuarterWavePlate(fast=0.1, name="late"),
+        *last,
         fa.Camera(pixel=10 * um, shape=(512, 512), name="cam"),
     )
 
@@ -50,11 +51,13 @@ def turned(train, knob, engine):
 def main():
     print(machine())
     rows = []
-    for engine, knob in (
-        ("grid", "laser.power"), ("grid", "middle.offset"), ("grid", "late.fast"),
-        ("azimuthal", "middle.offset"), ("azimuthal", "late.fast"),
+    polarizer = fa.Polarizer(axis=0.0, name="polarizer")
+    for engine, knob, *last in (
+        ("grid", "laser.power"), ("grid", "middle.offset"), ("grid", "late.fast"), ("grid", "polarizer.axis", polarizer),
+        ("grid", "cam.exposure_time"), ("azimuthal", "middle.offset"), ("azimuthal", "late.fast"),
     ):  # fmt: skip
-        (clock, busy), (kept_clock, kept_busy) = turned(bench(centred=engine == "azimuthal"), knob, engine)
+        train = bench(*last, centred=engine == "azimuthal")
+        (clock, busy), (kept_clock, kept_busy) = turned(train, knob, engine)
         times = [f"{value:.1f}" for value in (clock, kept_clock, busy, kept_busy)]
         rows.append((f"{engine}: {knob}", *times, f"{busy / kept_busy:.1f}"))
     head = ("knob turned", "fresh, ms", "remembered", "fresh, processor ms", "remembered", "ratio")

@@ -1,5 +1,6 @@
 """Small exposures with known Stokes images, and a bench whose light is known in closed form."""
 
+from contextlib import nullcontext
 from dataclasses import dataclass, field
 from types import SimpleNamespace
 
@@ -81,6 +82,11 @@ def bench():
 def light(monkeypatch):
     """Puts given fields in the place of the plan and the engines; returns the list they stand in."""
     fields = [Beam()]
-    parts = {"make_plan": lambda *_args, **_keys: Plan(), "propagate": lambda _plan: tuple(fields)}
+    parts = {
+        "make_plan": lambda *_args, **_keys: Plan(),
+        "large_arrays_once": nullcontext,
+        "remembered": lambda *_args, **_keys: None,
+        "propagate": lambda _plan: tuple(fields),
+    }
     monkeypatch.setattr("fastaxis.camera.exposing.late", lambda _module, name: parts[name])
     return fields

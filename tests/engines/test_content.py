@@ -6,7 +6,8 @@ from fractions import Fraction
 import numpy as np
 import pytest
 
-from fastaxis.engines.content import content_of
+from fastaxis.engines import content
+from fastaxis.engines.content import LARGE, content_of, large_arrays_once
 from fastaxis.laws import Disc, TravelLaw
 from fastaxis.light import Gaussian, H, SampledMode
 from fastaxis.maths import Pattern
@@ -54,3 +55,19 @@ class Own:
 def test_what_is_not_all_data_has_no_digest(value):
     assert content_of(value) is None
     assert content_of(1.0, (value,)) is None
+
+
+def test_a_large_array_is_digested_once_in_a_while(monkeypatch):
+    met, own = [], content._bytes
+    monkeypatch.setattr(content, "_bytes", lambda array: met.append(1) or own(array))
+    large = np.arange(LARGE / 8 + 1)
+    other, again = large + 1, large.copy()
+    outside = [content_of(one) for one in (large, other, again)]
+    met.clear()
+    with large_arrays_once():
+        within = [content_of(one) for one in (large, other, again, large, other)]
+        assert len(met) == 3
+    assert within == [*outside, *outside[:2]]
+    assert outside[0] == outside[2] != outside[1]
+    large[3] = 0.5
+    assert content_of(large) != outside[0]

@@ -58,6 +58,16 @@ def test_less_room_forgets_at_once(small):
     assert len(small) == 0
 
 
+def test_what_is_small_can_stay_where_room_is_made(small):
+    small.put("large", "L", 25)
+    small.put("small", "S", 10)
+    small.clear(over=10)
+    assert [name for name in ("large", "small") if name in small] == ["small"]
+    assert small.size == 10
+    small.clear()
+    assert (len(small), small.size) == (0, 0)
+
+
 def test_all_memories_together_keep_no_more_than_is_asked():
     fa.remember_light(up_to=1 << 20)
     assert sum(one.limit for one in MEMORIES) <= 1 << 20

@@ -23,7 +23,7 @@ from fastaxis.light.states import State
 from fastaxis.loader import late
 
 if TYPE_CHECKING:
-    from collections.abc import Iterable, Sequence
+    from collections.abc import Iterable, Iterator, Sequence
 
     Settings: TypeAlias = Setting | State | Iterable[Setting | State]
 
@@ -98,15 +98,29 @@ def expose(
         plans = [one.with_precision(precision) for one in plans]
     sensors = [sensor_at(train, name) for name in targets]  # refused before anything is propagated
     check_room(", ".join(targets), [sensor.shape for sensor in sensors if isinstance(sensor, Camera)])
-    shots = [_shot(train, *taken, analyzers) for taken in zip(targets, plans, _lights(plans), strict=True)]
+    with late("engines.content", "large_arrays_once")():
+        lights = _lights(plans, sensors)
+        shots = [_shot(train, *taken, analyzers) for taken in zip(targets, plans, lights, strict=True)]
     return shots[0] if isinstance(target, str) else tuple(shots)
 
 
-def _lights(plans: Sequence[Any]) -> Iterable[Any]:
-    if len(plans) == 1:
-        return (late("engines", "propagate")(plans[0]),)
-    shared: Iterable[Any] = late("engines.sharing", "Relay")().propagate(plans)
-    return shared
+def _lights(plans: Sequence[Any], sensors: Sequence[Camera | Detector]) -> Iterator[Any]:
+    """What sensors see of the light at the targets of plans: pictures of earlier questions, or the light itself."""
+    seen = [
+        late("engines.pictures", "remembered")(plan, _raster(sensor), alone=len(plans) == 1)
+        if isinstance(sensor, Camera)
+        else None
+        for plan, sensor in zip(plans, sensors, strict=True)
+    ]
+    followed = _followed([plan for plan, known in zip(plans, seen, strict=True) if known is None])
+    return (next(followed) if known is None else known for known in seen)
+
+
+def _followed(plans: Sequence[Any]) -> Iterator[Any]:
+    if len(plans) > 1:
+        yield from late("engines.sharing", "Relay")().propagate(plans)
+    else:
+        yield from map(late("engines", "propagate"), plans)
 
 
 def _shot(train: Any, target: str, plan: Any, fields: Sequence[Any], analyzers: tuple[Setting, ...]) -> Exposure:
@@ -174,10 +188,14 @@ def recorded(
 
 
 def _picture(fields: Sequence[Any], camera: Camera) -> tuple[NDArray[Any], NDArray[Any], NDArray[Any]]:
-    cx, cy = camera.centre
-    seen = Raster(camera.pixel, camera.seen, (float(cx), float(cy)))
+    seen = _raster(camera)
     stokes = reduce(np.add, (field.stokes_on(seen) for field in fields))
     return np.ascontiguousarray(camera.oriented(stokes)), *_shown_axes(camera, seen)
+
+
+def _raster(camera: Camera) -> Raster:
+    cx, cy = camera.centre
+    return Raster(camera.pixel, camera.seen, (float(cx), float(cy)))
 
 
 def _shown_axes(camera: Camera, seen: Raster) -> tuple[NDArray[Any], NDArray[Any]]:

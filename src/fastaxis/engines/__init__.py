@@ -2,13 +2,14 @@
 
 from __future__ import annotations
 
+from collections.abc import Sequence
 from importlib import import_module
 from typing import Any
 
 from fastaxis.engines.field import Guard, PlaneField
 from fastaxis.plan import Branch, Plan
 
-__all__ = ["Guard", "PlaneField", "propagate"]
+__all__ = ["Guard", "PlaneField", "arrived", "propagate"]
 
 
 def propagate(plan: Plan) -> tuple[PlaneField, ...]:
@@ -35,11 +36,16 @@ def propagate(plan: Plan) -> tuple[PlaneField, ...]:
     >>> round(field.power, 12)
     0.002
     """
-    found: list[PlaneField] = []
-    for group in plan.groups:
-        fields = [_run(branch.engine or plan.engine, branch) for branch in group]
-        found += fields if len(group) == 1 else import_module("fastaxis.engines.joined").joined(group, fields)
-    return tuple(found)
+    return tuple(field for group in plan.groups for field in arrived(plan.engine, group))
+
+
+def arrived(engine: str, group: Sequence[Branch]) -> Sequence[PlaneField]:
+    """The light of branches whose fields add up, by the engine of their plan or their own."""
+    fields = [_run(branch.engine or engine, branch) for branch in group]
+    if len(group) == 1:
+        return fields
+    joined: Sequence[PlaneField] = import_module("fastaxis.engines.joined").joined(group, fields)
+    return joined
 
 
 def _run(name: str, branch: Branch) -> PlaneField:

@@ -3,6 +3,9 @@
 from __future__ import annotations
 
 import hashlib
+from collections.abc import Iterator
+from contextlib import contextmanager
+from contextvars import ContextVar
 from dataclasses import fields, is_dataclass
 from enum import Enum
 from fractions import Fraction
@@ -10,7 +13,10 @@ from typing import Any
 
 import numpy as np
 
-__all__ = ["content_of"]
+__all__ = ["content_of", "large_arrays_once"]
+
+LARGE = 1 << 16  # bytes that take longer to digest than to look up
+_DIGESTED: ContextVar[dict[int, tuple[Any, bytes]] | None] = ContextVar("digests of large arrays", default=None)
 
 PLAIN = (int, float, complex, bool, str, bytes, type(None), Fraction)
 
@@ -27,6 +33,16 @@ def content_of(*values: Any, after: bytes = b"") -> bytes | None:
     """
     digest = hashlib.blake2b(after, digest_size=20)
     return digest.digest() if all(_fed(digest, value) for value in values) else None
+
+
+@contextmanager
+def large_arrays_once() -> Iterator[None]:
+    """Large arrays are digested once meanwhile, however often one is met; they must stay what they are."""
+    token = _DIGESTED.set({})
+    try:
+        yield
+    finally:
+        _DIGESTED.reset(token)
 
 
 def _fed(digest: Any, value: Any) -> bool:
@@ -55,5 +71,20 @@ def _fed_array(digest: Any, array: np.ndarray[Any, Any]) -> bool:
     if array.dtype.hasobject:
         return False
     digest.update(f"array {array.dtype.str} {array.shape} ".encode())
-    digest.update(np.ascontiguousarray(array).data.cast("B") if array.size else b"")
+    if array.size:
+        digest.update(_digest(array) if array.nbytes > LARGE else _bytes(array))
     return True
+
+
+def _digest(array: np.ndarray[Any, Any]) -> bytes:
+    known = _DIGESTED.get()
+    if known is not None and id(array) in known:
+        return known[id(array)][1]
+    found = hashlib.blake2b(_bytes(array), digest_size=20).digest()
+    if known is not None:
+        known[id(array)] = array, found  # held, so that no other array gets its number
+    return found
+
+
+def _bytes(array: np.ndarray[Any, Any]) -> memoryview:
+    return np.ascontiguousarray(array).data.cast("B")

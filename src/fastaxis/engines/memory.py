@@ -76,11 +76,11 @@ class Memory:
                 self._kept[key] = (answer, size)
                 self.size += size
 
-    def clear(self) -> None:
-        """Forget everything."""
+    def clear(self, *, over: int = 0) -> None:
+        """Forget everything of more than some bytes."""
         with self._lock:
-            self._kept.clear()
-            self.size = 0
+            for key in [key for key, (_, size) in self._kept.items() if size > over or not over]:
+                self.size -= self._kept.pop(key)[1]
 
     def _make_room(self, size: int) -> None:
         while self._kept and (self.size + size > self._limit or self._limit == 0):
@@ -93,7 +93,7 @@ class Memory:
 
 
 LIGHT = Memory(0.75)
-"""Light behind the first steps of plans, and what arrived behind a section."""
+"""Light behind the first steps of plans, what arrived behind a section, and what cameras saw."""
 
 
 def _unlock() -> None:
@@ -121,11 +121,14 @@ def remember_light(up_to: int) -> None:
     """How much light is kept between questions, so that a turned knob re-uses what did not change before it.
 
     A new question goes on from the last step up to which the source, the parts and the samples are those of an earlier
-    one. No answer depends on it.
+    one. Where all differ by uniform parts behind the last patterned one, by the laser's power or by analyzers alone,
+    the picture kept is turned by a Mueller matrix. No picture and no power depends on it but by roundings;
+    ``shots.guard`` may be that of the light before its last uniform parts.
 
     Parameters
     ----------
-    up_to : bytes in all, 256 MiB if never set; light of more than some fifth of it is not kept. 0 keeps none.
+    up_to : bytes in all, 256 MiB if never set; light or a picture of more than some fifth of it is not kept. 0 keeps
+        none.
 
     Raises
     ------

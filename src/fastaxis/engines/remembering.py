@@ -14,13 +14,15 @@ from fastaxis.engines.memory import LIGHT
 from fastaxis.laws import TravelLaw
 from fastaxis.plan import Branch
 
-__all__ = ["keys_of", "light_before"]
+__all__ = ["keys_of", "light_before", "size_of"]
 
 APART = {"steps", "sampling", "group", "length", "line", "path", "opening"}
 """Of a branch: what is looked at step by step, and what is only said about it or counts where arms meet."""
 
 PASSED = "passed"  # what stands for light that went through but was not kept
 MARK = 256  # bytes that a key and this take
+
+FEW = 4  # what takes this much less than the largest light kept may stay where room is needed
 
 
 def keys_of(engine: str, branch: Branch, end: int) -> dict[int, bytes]:
@@ -55,10 +57,9 @@ def light_before(engine: Any, branch: Branch, end: int) -> Any:
     ----------
     engine : a room with ``begun`` and ``continued``, as of sampled light.
     """
-    sampling, start = branch.sampling, branch.harmonic_steps
-    size = sampling.grid.samples**2 * (8 if sampling.precision == "single" else 16) if sampling else 0
-    if size > LIGHT.largest:
-        LIGHT.clear()  # light so large needs the room
+    start = branch.harmonic_steps
+    if size_of(branch) > LIGHT.largest:
+        LIGHT.clear(over=LIGHT.largest // FEW)  # light so large needs the room
         return engine.continued(engine.begun(branch), branch, start, end)
     keys = keys_of(engine.__name__, branch, end)
     known = {index: found for index, key in keys.items() if (found := LIGHT.get(key)) is not None}
@@ -72,6 +73,12 @@ def light_before(engine: Any, branch: Branch, end: int) -> Any:
         light, here = engine.continued(light, branch, here, common), common
         _keep(keys[common], light)
     return engine.continued(light, branch, here, end)
+
+
+def size_of(branch: Branch) -> int:
+    """Bytes of the samples of one component of a branch."""
+    sampling = branch.sampling
+    return sampling.grid.samples**2 * (8 if sampling.precision == "single" else 16) if sampling else 0
 
 
 def _keep(key: bytes, light: Any) -> None:

@@ -21,14 +21,14 @@ def without_last_plates(branch: Branch) -> tuple[Branch, JonesStep]:
     if branch.round_trip is not None or branch.network is not None:
         return branch, JonesStep()
     found: list[int] = []
+    product = JonesStep()
     for index in reversed(range(len(branch.steps))):
         law = branch.steps[index].law
         if isinstance(law, JonesStep):
             found.append(index)
+            product = law.then(product)
         elif not isinstance(law, ScalarLaw | TravelLaw | Flip | Turn):
             break
-    matrices = [branch.steps[index].law for index in reversed(found)]
-    product = reduce(lambda first, later: first.then(later), matrices, JonesStep())  # type: ignore[union-attr,arg-type]  # all of them matrices
     return reduce(_without, found, branch), product
 
 
