@@ -10,7 +10,7 @@ from numpy.typing import NDArray
 
 from fastaxis.engines import azimuthal, grid
 from fastaxis.engines.grid.guard import edge_watched
-from fastaxis.engines.grid.light import GridLight, axis, curve, multiply_separable
+from fastaxis.engines.grid.light import GridLight, axis, curve, inner, multiply_separable
 from fastaxis.plan import Branch
 
 if TYPE_CHECKING:
@@ -59,11 +59,12 @@ def _rest(branch: Branch) -> Branch:
 
 def _scalar(field: Complexes) -> tuple[Complexes, Complexes | None]:
     """One scalar field and a Jones vector where the state is the same everywhere; else the field as it is."""
-    powers = [float(np.vdot(part, part).real) for part in field]
+    parts = field[:1], field[1:]
+    powers = [inner(part, part).real for part in parts]
     main = int(np.argmax(powers))
     if powers[main] == 0:
         return field, None
-    share = complex(np.vdot(field[main], field[1 - main]) / powers[main])
+    share = inner(parts[main], parts[1 - main]) / powers[main]
     if abs(field[1 - main] - share * field[main]).max() > SAME_STATE * abs(field[main]).max():
         return field, None
     jones = np.empty(2, dtype=complex)
