@@ -75,12 +75,3 @@ def test_a_finer_integral_agrees(bell):
     section = Collins(bell, (1,), K, TravelLaw.free(0.1 * RAYLEIGH), before=0.0, behind=0.0)
     radii = np.linspace(0, 3, 11) * W
     assert abs(section.finer()(radii) - section(radii)).max() < 1e-13 * bell.peak
-
-
-def test_the_hardest_places_come_before_another_part(bell):
-    """Up to there a part has more and more fringes; behind, the panel is cut once more."""
-    section = Collins(bell, (1,), K, TravelLaw.free(0.02 * RAYLEIGH), before=0.0, behind=0.0)
-    radii = np.linspace(0.01, 3, 300) * W
-    for place in section.hardest(radii)[::3]:
-        load = section._phases(radii) / section.parts(radii)
-        assert load[place].max() > 0.99 * section.phase

@@ -10,13 +10,18 @@ which is a lens before and a lens behind the section and so only changes the mat
 
 from __future__ import annotations
 
+import math
 from dataclasses import dataclass, replace
-from typing import Any
+from functools import cached_property
+from itertools import pairwise
 
 import numpy as np
 
 from fastaxis.engines.azimuthal.bessel import bessel
+from fastaxis.engines.azimuthal.cutting import Cutting
+from fastaxis.engines.azimuthal.far import far_from, far_runs, far_sums
 from fastaxis.engines.azimuthal.panels import ORDER, Complexes, Profile, Reals
+from fastaxis.engines.azimuthal.products import product
 from fastaxis.engines.azimuthal.taper import Taper
 from fastaxis.engines.memory import Memory
 from fastaxis.laws import TravelLaw
@@ -24,8 +29,9 @@ from fastaxis.laws import TravelLaw
 __all__ = ["Collins", "turn"]
 
 BLOCK = 1 << 16  # kernel values at a time: half a megabyte stays in the cache of a core
-WHOLE = 0.4  # share of the phase of a part that an uncut panel may carry
-AT_RISK, NEARLY = 2, 9  # panels, places
+RADII = 192  # done at a time: their sines and cosines stay in the cache
+NEAR = 4  # times as far from the axis as kernels with small arguments for all nodes
+FEW = 12  # radii not worth a block of their own
 TURNS = (1, 1j, -1, -1j)
 
 KERNELS = Memory(0.25)
@@ -74,7 +80,7 @@ class Collins:
     taper: Taper | None = None
     phase: float = 40.0
 
-    @property
+    @cached_property
     def flat(self) -> TravelLaw:
         """The section between the two reference fronts, on which the fields are smooth."""
         return TravelLaw.lens(-self.before).then(self.section).then(TravelLaw.lens(self.behind))
@@ -93,63 +99,69 @@ class Collins:
 
     def __call__(self, r: Reals) -> Complexes:
         """The fields at radii r [m], relative to the front ``behind``; shape (functions, len(r))."""
-        rank = np.argsort(r, kind="stable")
         out = np.empty((len(self.charges), len(r)), dtype=complex)
-        for some in np.array_split(rank, max(1, min(len(r) // 64, 16))):
+        rank = np.argsort(r, kind="stable")
+        stages = self.cutting.stages(r[rank])
+        for some in np.split(rank, np.flatnonzero(np.diff(stages)) + 1):
             if len(some):
-                out[:, some] = self._block(r[some])
-        return out
-
-    def _block(self, r: Reals) -> Complexes:
+                out[:, some] = self._at_stage(r[some])
         flat, k = self.flat, self.wavenumber
-        nodes, weights, values = self.profile.refined(self.parts(float(r.max())))
+        turns = np.array([turn(charge, flat.b) for charge in self.charges])
+        return np.asarray(out * turns[:, np.newaxis] * (k / flat.b * np.exp(1j * k * flat.d / flat.b / 2 * r**2)))
+
+    def _at_stage(self, r: Reals) -> Complexes:
+        """The integrals at ascending radii of one stage, in groups that have large arguments in common."""
+        flat, k = self.flat, self.wavenumber
+        counts = self.cutting.parts(r[-1])
+        nodes, weights, values = self.profile.refined(counts)
         if self.taper:
             values = values * self.taper(nodes)
         values = values * (weights * nodes * np.exp(1j * k * flat.a / flat.b / 2 * nodes**2))
-        out = np.empty((len(self.charges), len(r)), dtype=complex)
+        borders, out = self.cutting.borders(counts), np.empty((len(self.charges), len(r)), dtype=complex)
         for order in {abs(charge) for charge in self.charges}:
             rows = [i for i, charge in enumerate(self.charges) if abs(charge) == order]
-            out[rows] = self._transform(order, nodes, values[rows], r)
-        for row, charge in enumerate(self.charges):
-            out[row] *= turn(charge, flat.b)
-        return np.asarray(out * (k / flat.b * np.exp(1j * k * flat.d / flat.b / 2 * r**2)))
+            for some in self._groups(r):
+                out[rows, some] = self._transform(order, borders, nodes, values[rows], r[some])
+        return out
 
-    def _transform(self, order: int, nodes: Reals, values: Complexes, r: Reals) -> Complexes:
-        """Sums over the nodes, some rows of the kernel at a time."""
-        scale = self.wavenumber / abs(self.flat.b)
+    def _groups(self, r: Reals) -> list[slice]:
+        """Few of the kernels to places near the axis have large arguments, and most of the others."""
+        near = int(np.searchsorted(r, NEAR * far_from(1) / (self.cutting.scale * self.profile.end)))
+        ends = [0, *((near,) if len(r) - near >= FEW else ()), len(r)]
+        return [
+            slice(start, min(start + RADII, stop)) for low, stop in pairwise(ends) for start in range(low, stop, RADII)
+        ]
+
+    def _transform(self, order: int, borders: Reals, nodes: Reals, values: Complexes, r: Reals) -> Complexes:
+        """Sums over the nodes: those of large arguments run by run, the others by a kernel."""
+        runs = far_runs(order, self.cutting.scale, r, borders)
+        parts = values.reshape(len(values), -1, ORDER)
+        total, near = np.zeros((len(values), len(r)), dtype=complex), np.ones(len(borders) - 1, dtype=bool)
+        for run in runs:
+            total += far_sums(order, self.cutting.scale, r, borders[run.start : run.stop + 1], parts[:, run])
+            near[run] = False
+        if near.any():
+            rest = parts[:, near].reshape(len(values), -1)
+            total += self._near_sums(order, nodes.reshape(-1, ORDER)[near].ravel(), rest, r)
+        return total
+
+    def _near_sums(self, order: int, nodes: Reals, values: Complexes, r: Reals) -> Complexes:
+        """Some rows of the kernel at a time."""
         # A real kernel times real and imaginary parts as columns: half the work of a complex product.
         columns = np.ascontiguousarray(values.T).view(float)
         step = max(1, BLOCK // len(nodes))
-        rows = [_kernel(order, scale, nodes, r[i : i + step]) @ columns for i in range(0, len(r), step)]
-        return np.asarray(np.ascontiguousarray(np.concatenate(rows)).view(complex).T)
+        rows = [
+            product(_kernel(order, self.cutting.scale, nodes, r[i : i + step]), columns) for i in range(0, len(r), step)
+        ]
+        return np.asarray(np.concatenate(rows).view(complex).T)
 
-    def _phases(self, reach: Reals) -> Reals:
-        """Kernel phase [rad] on each panel for some output radii, shape (radii, panels).
-
-        The outer end of a panel has the most fringes, and its parts are equally wide.
-        """
-        edges, flat = self.profile.edges, self.flat
-        ends = abs(flat.a) * edges[1:] + np.asarray(reach)[..., np.newaxis]
-        return np.asarray(self.wavenumber / abs(flat.b) * ends * np.diff(edges))
-
-    def parts(self, reach: float | Reals) -> np.ndarray[Any, np.dtype[np.int_]]:
-        """Into how many parts each panel is cut, for output radii up to ``reach``."""
-        phase = self._phases(np.asarray(reach, dtype=float))
-        # One part carries the panel's own polynomial too, so it may carry less of the kernel's phase.
-        parts = np.where(phase <= WHOLE * self.phase, 1, np.maximum(2, np.ceil(phase / self.phase)))
-        if self.taper:
-            parts = np.where(self.profile.edges[1:] > self.taper.start, np.maximum(parts, 4), parts)
-        return np.asarray(parts, dtype=int)
+    @cached_property
+    def cutting(self) -> Cutting:
+        """Into how many parts panels are cut."""
+        flat = self.flat
+        soft_from = self.taper.start if self.taper else math.inf
+        return Cutting(self.profile.edges, abs(flat.a), self.wavenumber / abs(flat.b), self.phase, soft_from)
 
     def hardest(self, r: Reals) -> list[int]:
-        """Which of some output radii the nodes carry worst: for each of the panels most at risk, its own.
-
-        Gauss-Legendre nodes err as the (2 ORDER)-th power of the phase that a part of a panel has. The very worst place
-        may be done in one block with further ones, which cut its panels finer; so some that are nearly as bad as well.
-        """
-        parts = self.parts(r)
-        load = self._phases(r) / np.where(parts == 1, WHOLE, parts)
-        light = abs(self.profile.values).max(axis=(0, 2)) + np.finfo(float).tiny
-        risk = np.log(light) + 2 * ORDER * np.log(load.max(axis=0))
-        worst = np.argsort(risk)[: -1 - AT_RISK : -1]
-        return [int(place) for panel in worst for place in np.argsort(load[:, panel])[: -1 - NEARLY : -4]]
+        """Which of some output radii are carried worst."""
+        return self.cutting.hardest(r, self.profile.values)

@@ -12,6 +12,7 @@ from fastaxis.engines.azimuthal.averaging import LONGEST
 from fastaxis.engines.azimuthal.harmonics import Harmonics
 from fastaxis.engines.azimuthal.panels import Complexes, Profile, Reals
 from fastaxis.engines.azimuthal.plane import AzimuthalField
+from fastaxis.engines.azimuthal.products import product, weighted
 from fastaxis.engines.azimuthal.rendering import corner
 from fastaxis.engines.azimuthal.resolving import Settings, resolved
 from fastaxis.errors import ParameterError
@@ -79,7 +80,7 @@ def _alike(lights: list[Harmonics]) -> bool:
 
 
 def _added(total: Harmonics, lights: list[Harmonics], matrices: list[Complexes]) -> Harmonics:
-    parts = [np.tensordot(matrix, light.profile.values, axes=1) for light, matrix in zip(lights, matrices, strict=True)]
+    parts = [weighted(matrix, light.profile.values) for light, matrix in zip(lights, matrices, strict=True)]
     return replace(total, profile=Profile(lights[0].profile.edges, sum(parts[1:], parts[0])), error=0.0)
 
 
@@ -91,7 +92,7 @@ def _resampled(total: Harmonics, lights: list[Harmonics], matrices: list[Complex
         for light, matrix in zip(lights, matrices, strict=True):
             bend = light.wavenumber * (light.curvature - total.curvature) / 2
             end = light.taper(r) if light.taper else 1.0
-            out += matrix @ (light.profile(r) * (np.exp(1j * bend * r**2) * end))
+            out += product(matrix, light.profile(r) * (np.exp(1j * bend * r**2) * end))
         return out
 
     profile, rest = resolved(values, shared_edges(lights), settings)

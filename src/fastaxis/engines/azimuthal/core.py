@@ -81,6 +81,6 @@ def _triangles(images: Images, normal: complex, away: float, corners: Reals, cou
     # 1j * 1 runs along y, and 1j * -1j along x.
     line = h * normal + abs(h) * np.sinh(t) * (1j * normal.conjugate())
     places: Complexes = np.multiply(line[..., np.newaxis], u, dtype=np.complex128)
-    along_rays = images(places.reshape(-1)).reshape(-1, *places.shape) @ (u * weights / 2)
+    along_rays = np.einsum("...n,n", images(places.reshape(-1)).reshape(-1, *places.shape), u * weights / 2)
     steps = h * abs(h) * np.cosh(t) * spans[..., np.newaxis] * weights / 2
     return np.asarray((along_rays * steps).sum(axis=(1, 3)))

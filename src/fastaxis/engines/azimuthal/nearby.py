@@ -15,13 +15,14 @@ from __future__ import annotations
 import math
 from dataclasses import dataclass, replace
 from functools import cached_property
+from weakref import WeakKeyDictionary
 
 import numpy as np
 from numpy.polynomial import Chebyshev, Polynomial
 from scipy.special import erf, gamma, rgamma
 
 from fastaxis.engines.azimuthal.collins import Collins, turn
-from fastaxis.engines.azimuthal.panels import Complexes, Reals
+from fastaxis.engines.azimuthal.panels import Complexes, Profile, Reals
 from fastaxis.engines.azimuthal.table import Table, table_of
 from fastaxis.engines.azimuthal.taper import Taper
 
@@ -34,6 +35,8 @@ INNER = 18.0  # t of the places near the axis; beyond, terms of the series fall 
 SMOOTH = 5.0  # largest t by which light at an angle may shift an image
 TERMS = 17  # of the Taylor series of the field about the axis
 MOST_CHARGE = 12  # the phase of a kernel of high order is no longer nearly linear within the window
+
+TABLES: WeakKeyDictionary[Profile, Table] = WeakKeyDictionary()
 
 
 def suits(section: Collins) -> bool:
@@ -83,9 +86,13 @@ class Nearby:
         """Radius [m] before the section up to whose image all of the light near the axis is summed."""
         return (INNER + 3 * (self.middle - MIDDLE) + max(abs(l) for l in self.section.charges)) / self.root
 
-    @cached_property
+    @property
     def table(self) -> Table:
-        return table_of(self.section.profile, self.section.profile.end)
+        """One for all fronts and windows that the same light is asked with."""
+        profile = self.section.profile
+        if profile not in TABLES:
+            TABLES[profile] = table_of(profile, profile.end)
+        return TABLES[profile]
 
     def __call__(self, r: Reals) -> Complexes:
         """The fields at radii r [m], relative to the front behind; shape (functions, len(r))."""
@@ -124,7 +131,7 @@ class Nearby:
         for row, charge in enumerate(section.charges):
             slow = _slow(abs(charge), x, sign)
             out[row] = (
-                ((fields[row] * slow) @ window)
+                np.einsum("rt,rt,t->r", fields[row], slow, window)
                 * turn(charge, flat.b)
                 * np.exp(1j * sign * (abs(charge) / 2 + 0.25) * math.pi)
             )

@@ -50,4 +50,4 @@ def _integrals(lights: list[Harmonics], pairs: list[tuple[int, int]], settings: 
         )
 
     profile, _ = resolved(products, shared_edges(lights), settings, peak=one.profile.peak * other.profile.peak)
-    return np.asarray(profile.flat() @ (2 * np.pi * profile.weights * profile.nodes))
+    return np.asarray((profile.flat() * (2 * np.pi * profile.weights * profile.nodes)).sum(axis=1))

@@ -5,11 +5,13 @@ from __future__ import annotations
 from collections.abc import Callable
 from dataclasses import dataclass
 from functools import cached_property, lru_cache
+from itertools import pairwise
 from typing import Any, TypeAlias
 
 import numpy as np
 from numpy.typing import NDArray
 
+from fastaxis.engines.azimuthal.products import multiplied, transformed, weighted
 from fastaxis.light.gauss import gauss_legendre
 
 __all__ = ["ORDER", "Complexes", "Profile", "Reals", "sampled"]
@@ -53,7 +55,7 @@ class Profile:
     @cached_property
     def coefficients(self) -> Complexes:
         """Legendre coefficients, shape (functions, panels, ORDER)."""
-        return np.asarray(self.values @ _TO_COEFFICIENTS.T)
+        return transformed(self.values, _TO_COEFFICIENTS.T)
 
     @property
     def start(self) -> float:
@@ -85,7 +87,7 @@ class Profile:
     def powers(self) -> Reals:
         """2 pi times the integral of |f|^2 r dr of each function, exact for the panels' polynomials."""
         weight = 2 * np.pi * self.weights * self.nodes
-        return np.asarray((abs(self.flat()) ** 2) @ weight)
+        return np.asarray((abs(self.flat()) ** 2 * weight).sum(axis=1))
 
     def __call__(self, r: Reals) -> Complexes:
         """Values at any radii [m], shape (functions, len(r)); zero outside the panels."""
@@ -96,19 +98,25 @@ class Profile:
 
     def _read(self, r: Reals, out: Complexes) -> None:
         panel = np.clip(np.searchsorted(self.edges, r, side="right") - 1, 0, len(self.edges) - 2)
+        order = np.argsort(panel, kind="stable") if (np.diff(panel) < 0).any() else None
+        places, panel = (r, panel) if order is None else (r[order], panel[order])
         low, high = self.edges[panel], self.edges[panel + 1]
-        basis = _legendre(np.clip((2 * r - low - high) / (high - low), -1, 1), self.degree)
+        basis = _legendre(np.clip((2 * places - low - high) / (high - low), -1, 1), self.degree)
         # Real polynomials times real and imaginary parts, the places on one panel together.
+        columns = self._columns
+        values = np.empty((len(self.values), len(r), 2))
+        cuts = [0, *(int(cut) for cut in np.flatnonzero(np.diff(panel)) + 1), len(r)]
+        for start, stop in pairwise(cuts):
+            if stop > start:
+                multiplied(basis[:, start:stop].T, columns[:, panel[start]], values[:, start:stop])
+        values[:, (places < self.start) | (places > self.end)] = 0
+        out[:, slice(None) if order is None else order] = values.view(complex)[..., 0]
+
+    @cached_property
+    def _columns(self) -> Reals:
+        """Real and imaginary parts of the coefficients, shape (functions, panels, degrees, 2)."""
         columns = np.ascontiguousarray(self.coefficients[:, :, : self.degree + 1]).view(float)
-        columns = columns.reshape(*columns.shape[:2], -1, 2)
-        order = np.argsort(panel, kind="stable")
-        for some in np.split(order, np.flatnonzero(np.diff(panel[order])) + 1):
-            if len(some):
-                rows = basis[:, some].T @ columns[:, panel[some[0]]]
-                out[:, some] = rows.view(complex)[:, :, 0]
-        outside = (r < self.start) | (r > self.end)
-        if outside.any():
-            out[:, outside] = 0
+        return columns.reshape(*columns.shape[:2], -1, 2)
 
     @cached_property
     def degree(self) -> int:
@@ -142,12 +150,12 @@ class Profile:
             half = np.diff(self.edges)[some, np.newaxis] / 2
             nodes.append((self.edges[some, np.newaxis] + half * (1 + place)).ravel())
             weights.append((half * weight).ravel())
-            values.append((self.coefficients[:, some] @ matrix.T).reshape(len(self.values), -1))
+            values.append(transformed(self.coefficients[:, some], matrix.T).reshape(len(self.values), -1))
         return np.concatenate(nodes), np.concatenate(weights), np.concatenate(values, axis=1)
 
     def combined(self, matrix: Complexes) -> Profile:
         """Linear combinations: row i of the matrix gives new function i."""
-        return Profile(self.edges, np.tensordot(matrix, self.values, axes=1))
+        return Profile(self.edges, weighted(matrix, self.values))
 
     def clipped(self, start: float, end: float) -> Profile:
         """The part between two radii, the panels cut exactly there."""
@@ -164,11 +172,15 @@ class Profile:
 
 def _legendre(place: Reals, degree: int) -> Reals:
     """P_0 .. P_degree at some places in [-1, 1], shape (degree + 1, places)."""
-    values = np.empty((degree + 1, len(place)))
+    values, before = np.empty((degree + 1, len(place))), np.empty(len(place))
     values[0] = 1
     values[1:2] = place
     for j in range(1, degree):
-        values[j + 1] = ((2 * j + 1) / (j + 1)) * place * values[j] - (j / (j + 1)) * values[j - 1]
+        np.multiply(values[j - 1], j / (2 * j + 1), out=before)
+        after = values[j + 1]
+        np.multiply(place, values[j], out=after)
+        after -= before
+        after *= (2 * j + 1) / (j + 1)
     return values
 
 

@@ -14,6 +14,7 @@ from fastaxis.engines.azimuthal.bucket import square_stokes
 from fastaxis.engines.azimuthal.cells import cell_images
 from fastaxis.engines.azimuthal.harmonics import LEFT, RIGHT, Harmonics
 from fastaxis.engines.azimuthal.panels import Profile, Reals
+from fastaxis.engines.azimuthal.products import weighted
 from fastaxis.engines.azimuthal.quarter import centred_images
 from fastaxis.engines.azimuthal.rendering import circular_field, corner, strips
 from fastaxis.engines.azimuthal.resolving import Settings
@@ -130,7 +131,7 @@ class AzimuthalField:
         for rows in strips(len(y), len(x)):
             circular = circular_field(table, arrival.orders, x, y[rows])
             circular *= across * down[rows, np.newaxis]
-            out[:, rows] = np.tensordot(TO_CIRCULAR.conj().T, circular, axes=1)
+            out[:, rows] = weighted(TO_CIRCULAR.conj().T, circular)
         return out
 
 
@@ -140,4 +141,4 @@ def _same_charge(harmonics: Harmonics) -> complex:
     weight: Reals = 2 * np.pi * profile.weights * profile.nodes
     values = dict(zip(harmonics.orders, profile.flat(), strict=True))
     pairs = [(values[LEFT, l], values[RIGHT, l]) for hand, l in values if hand == LEFT and (RIGHT, l) in values]
-    return complex(sum((left.conj() * right) @ weight for left, right in pairs))
+    return complex(sum((left.conj() * right * weight).sum() for left, right in pairs))

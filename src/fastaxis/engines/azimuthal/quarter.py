@@ -15,8 +15,9 @@ import numpy as np
 from fastaxis.engines.azimuthal.blocks import SETTLED, collected
 from fastaxis.engines.azimuthal.core import core_means, near_places
 from fastaxis.engines.azimuthal.panels import Reals
-from fastaxis.engines.azimuthal.smooth import NONE, blocks_of, has_core
+from fastaxis.engines.azimuthal.products import PRODUCT
 from fastaxis.engines.azimuthal.shapes import Shapes, remembered
+from fastaxis.engines.azimuthal.smooth import NONE, blocks_of, has_core
 from fastaxis.engines.azimuthal.table import Table
 from fastaxis.engines.azimuthal.waves import Part, Wave, parts_of, pictures, waves_of, weights_of
 from fastaxis.light import Raster
@@ -24,7 +25,7 @@ from fastaxis.light import Raster
 __all__ = ["centred_images"]
 
 MOST = 16  # pictures of a quarter: as much work as four of all pixels
-PLACES = 1 << 13  # nodes or pixels at a time: they stay in the cache
+PLACES = 1 << 13  # nodes at a time: they stay in the cache
 
 
 @dataclass(frozen=True, eq=False)
@@ -103,23 +104,22 @@ def _on_lines(table: Table, waves: Sequence[Wave], x: Reals, y: Reals) -> Reals:
 
 
 def _mixed(weights: Reals, waves: Sequence[Wave], means: Reals, shape: tuple[int, int]) -> Reals:
-    """The pictures mixed by (4, waves) numbers in each of the quarters."""
+    """The pictures mixed by (4, waves) numbers in each of the quarters; those alike are mixed once."""
     out = np.empty((4, *shape))
-    (ny, nx), (_, height, width) = shape, means.shape
-    signs = np.array([wave.mirrored for wave in waves]).T
-    # On an odd number of pixels the middle ones belong to both sides, to either of which they are the same.
+    (_, height, width), (ny, nx) = means.shape, shape
+    # On an odd number of pixels the middle ones are of both sides, and the same on either.
     right, left = slice(nx // 2, None), slice(width - 1, None, -1)
-    few = max(PLACES // width, 1)
+    alike: dict[bytes, list[tuple[slice, bool]]] = {}
+    for (x, y), side in {(0, 0): right, (1, 0): left, (0, 1): right, (1, 1): left}.items():
+        signs = np.array([wave.mirrored[0] ** x * wave.mirrored[1] ** y for wave in waves])
+        alike.setdefault((weights * signs).tobytes(), []).append((side, y == 0))
+    few = max(PRODUCT // (weights.size * width), 1)
     for start in range(0, height, few):
-        some = means[:, start : start + few]
-        up, down = ny // 2 + start, height - 1 - start
-        above, below = slice(up, up + some.shape[1]), _backwards(down, some.shape[1])
-        mirrors = {(1, 1): (above, right), (-1, 1): (above, left), (1, -1): (below, right), (-1, -1): (below, left)}
-        for (x, y), places in mirrors.items():
-            turned = weights * (signs[0] if x < 0 else 1) * (signs[1] if y < 0 else 1)
-            out[:, *places] = (turned @ some.reshape(len(some), -1)).reshape(4, -1, width)
+        stop = min(start + few, height)
+        above, below = slice(ny // 2 + start, ny // 2 + stop), slice(height - stop, height - start)
+        some = means[:, start:stop].reshape(len(means), -1)
+        for numbers, places in alike.items():
+            mixed = (np.frombuffer(numbers).reshape(weights.shape) @ some).reshape(4, stop - start, width)
+            for side, upper in places:
+                out[:, above if upper else below, side] = mixed if upper else mixed[:, ::-1]
     return out
-
-
-def _backwards(last: int, count: int) -> slice:
-    return slice(last, last - count if count <= last else None, -1)

@@ -9,6 +9,7 @@ import numpy as np
 from numpy.typing import NDArray
 
 from fastaxis.engines.azimuthal.panels import Complexes, Reals
+from fastaxis.engines.azimuthal.products import weighted
 from fastaxis.engines.azimuthal.table import Table
 from fastaxis.light import Raster
 
@@ -72,11 +73,11 @@ def _sums(table: Table, orders: Orders, places: Complexes, senses: tuple[int, ..
         some = [part for part in parts if part[1] % 2 == parity]
         column = {key: i for i, key in enumerate(sorted({(j, l * s) for _, l, j, _ in some for s in senses}))}
         waves = np.stack([shapes[j] * turns[l] if l else shapes[j] for j, l in column])
-        matrix = np.zeros((len(senses), 2, len(column)), dtype=complex)
+        matrix = np.zeros((len(senses) * 2, len(column)), dtype=complex)
         for hand, l, j, number in some:
             for i, sense in enumerate(senses):
-                matrix[i, hand, column[j, l * sense]] += number
-        sums[parity] = np.tensordot(matrix, waves, axes=1)
+                matrix[2 * i + hand, column[j, l * sense]] += number
+        sums[parity] = weighted(matrix, waves).reshape(len(senses), 2, *r.shape)
     return sums
 
 

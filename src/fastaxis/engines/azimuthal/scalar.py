@@ -47,8 +47,8 @@ class ScalarHarmonics:
             both[hand, charges.index(l)] = row
         hand = LEFT if np.linalg.norm(both[LEFT]) >= np.linalg.norm(both[RIGHT]) else RIGHT
         main, other = both[hand].ravel(), both[1 - hand].ravel()
-        power = np.vdot(main, main).real
-        share = np.vdot(main, other) / power if power else 0.0
+        power = (abs(main) ** 2).sum()
+        share = (main.conj() * other).sum() / power if power else 0.0
         if abs(other - share * main).max(initial=0.0) > SAME_STATE * light.profile.peak:
             return None
         state = TO_CIRCULAR.conj().T @ ([1, share] if hand == LEFT else [share, 1])

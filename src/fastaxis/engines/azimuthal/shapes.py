@@ -47,7 +47,7 @@ class Shapes:
         for i in np.argsort(-peaks, kind="stable"):
             l, row = abs(charges[i]), rows[i]
             for j, (order, shape) in enumerate(zip(orders, shapes, strict=True)):
-                number = np.vdot(shape, row) / np.vdot(shape, shape).real if order == l and shape.any() else 0
+                number = (shape.conj() * row).sum() / (abs(shape) ** 2).sum() if order == l and shape.any() else 0
                 if abs(row - number * shape).max() <= ALIKE * peaks[i]:
                     numbers[i, j] = number
                     break

@@ -1,4 +1,4 @@
-"""Pictures without edges: polynomials on blocks of pixels, and a core about the axis apart, to means over the pixels."""
+"""Means over pixels of pictures without edges: polynomials on blocks of pixels, and a core about the axis apart."""
 
 from __future__ import annotations
 

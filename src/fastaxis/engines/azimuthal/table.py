@@ -8,12 +8,13 @@ from dataclasses import dataclass, replace
 import numpy as np
 
 from fastaxis.engines.azimuthal.panels import Complexes, Profile, Reals
+from fastaxis.engines.azimuthal.products import transformed, weighted
 
 __all__ = ["Table", "table_of"]
 
 POINTS = 8  # a cell: polynomials of degree 7, so halving a cell gains a factor 256
 CHEBYSHEV: Reals = np.cos(np.pi * (np.arange(POINTS) + 0.5) / POINTS)
-TO_POWERS = np.linalg.inv(np.vander(CHEBYSHEV, increasing=True)).T
+TO_POWERS: Reals = np.asarray(np.linalg.inv(np.vander(CHEBYSHEV, increasing=True)).T, dtype=float)
 FINEST = 1 << 15
 PHASE = 0.36
 """Phase [rad] of the highest frequency that a cell carries: (PHASE/2)^8 / (2^7 8!) is SETTLED (DLMF 3.3.4)."""
@@ -57,7 +58,7 @@ class Table:
     def __call__(self, r: Reals) -> Complexes:
         """Functions at radii [m], shape (functions, *r.shape)."""
         shapes = self.shapes(r)
-        return shapes if self.numbers is None else np.tensordot(self.numbers, shapes, axes=1)
+        return shapes if self.numbers is None else weighted(self.numbers, shapes)
 
     def combined(self, matrix: Complexes) -> Table:
         """Linear combinations: row i of the matrix gives new function i."""
@@ -80,7 +81,7 @@ def _horner(rows: Complexes, t: Reals) -> Complexes:
 def _at(profile: Profile, start: float, reach: float, cells: int) -> Table:
     r = start + (np.arange(cells)[:, np.newaxis] + (1 + CHEBYSHEV) / 2) * ((reach - start) / cells)
     values = profile(r.ravel()).reshape(-1, cells, POINTS)
-    return Table(start, reach, values @ TO_POWERS)
+    return Table(start, reach, transformed(values, TO_POWERS))
 
 
 def table_of(profile: Profile, reach: float) -> Table:

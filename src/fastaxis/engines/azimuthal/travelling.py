@@ -193,7 +193,7 @@ def _foreseen(field: Harmonics, waist: _Waist, curvature: float, end: float, mos
     rim = abs(field.profile.values[:, -1, -4:]).max() > RIM * field.profile.peak
     near = end if rim else min(end, waist.reach)
     bend = field.wavenumber * abs(other - waist.curvature) / 2
-    slope = 1.5 * CARRIED * (1 + max(abs(l) for l in field.charges)) / waist.reach
+    slope = 1.7 * CARRIED * (1 + max(abs(l) for l in field.charges)) / waist.reach
     if rim:
         slope = max(slope, field.wavenumber * field.profile.end / abs(flat.b))
     whole = near * (slope + bend * near)

@@ -94,9 +94,9 @@ def pictures(table: Table, waves: Sequence[Wave], places: Complexes) -> Reals:
     r: Reals = np.abs(places)
     shapes = table.shapes(r)
     unit = places / np.where(r == 0, 1, r)
-    powers = {0: None, 1: unit}
-    for m in range(2, max((wave.turns for wave in waves), default=0) + 1):
-        powers[m] = powers[m - 1] * unit
+    powers = [np.ones_like(unit)]
+    for _ in range(max((wave.turns for wave in waves), default=0)):
+        powers.append(powers[-1] * unit)
     products: dict[tuple[int, int], Complexes | Reals] = {}
     out = np.empty((len(waves), *r.shape))
     for picture, wave in zip(out, waves, strict=True):
@@ -107,8 +107,5 @@ def pictures(table: Table, waves: Sequence[Wave], places: Complexes) -> Reals:
             products[pair] = one.real**2 + one.imag**2 if same else one.conj() * other
         product = products[pair].imag if wave.imaginary else products[pair].real
         power = powers[wave.turns]
-        if power is None:
-            picture[...] = product
-        else:
-            np.multiply(product, power.imag if wave.sine else power.real, out=picture)
+        np.multiply(product, power.imag if wave.sine else power.real, out=picture)
     return out
