@@ -7,7 +7,6 @@ with a corner on the axis, one for each side of it, and each is integrated along
 
 from __future__ import annotations
 
-import math
 from collections.abc import Callable
 
 import numpy as np
@@ -61,17 +60,18 @@ def _means(images: Images, x: Reals, y: Reals, pitch: float, count: int) -> Real
     return np.asarray((np.diff(standing, axis=2) + np.diff(lying, axis=1)) / pitch**2)
 
 
-def _triangles(images: Images, normal: complex, away: float, corners: Reals, count: int) -> Reals:
+def _triangles(images: Images, normal: complex, h: float, corners: Reals, count: int) -> Reals:
     """Integrals over the triangles between the axis and each stretch from corner to corner of a line.
 
-    With s along the line, h = ``away`` its distance and u along the ray that is h ds u du. In s = h sinh(t) a line that
+    With s along the line, h its distance and u along the ray that is h ds u du. In s = h sinh(t) a line that
     passes close to the axis turns about it slowly.
 
     Parameters
     ----------
     normal : 1 for a line across x, 1j for one across y.
     """
-    h = math.copysign(max(abs(away), CLOSEST * float(np.ptp(corners))), away)
+    if abs(h) <= CLOSEST * float(np.ptp(corners)):
+        return np.zeros((len(images(np.zeros(1, dtype=complex))), len(corners) - 1))
     ends = np.arcsinh(corners / abs(h))
     foot = np.clip(0.0, ends[:-1], ends[1:])
     starts, spans = np.stack([ends[:-1], foot]), np.stack([foot - ends[:-1], ends[1:] - foot])
