@@ -37,7 +37,9 @@ class _Plane:
         return max((float(abs(values).max()) for values in self.functions.values()), default=0.0)
 
     def harmonics(self, like: Harmonics) -> Harmonics:
-        return replace(like, orders=tuple(self.functions), profile=self._profile, curvature=self.curvature, error=0.0)
+        return replace(
+            like, orders=tuple(self.functions), profile=self._profile, curvature=self.curvature, estimates=()
+        )
 
     @property
     def _profile(self) -> Profile:

@@ -3,12 +3,13 @@
 from __future__ import annotations
 
 from collections.abc import Sequence
-from dataclasses import replace
-from functools import reduce
+from dataclasses import dataclass, replace
+from functools import cached_property, reduce
 
 import numpy as np
 
 from fastaxis.engines.azimuthal.averaging import LONGEST
+from fastaxis.engines.azimuthal.estimates import Known
 from fastaxis.engines.azimuthal.harmonics import Harmonics
 from fastaxis.engines.azimuthal.panels import Complexes, Profile, Reals
 from fastaxis.engines.azimuthal.plane import AzimuthalField
@@ -47,11 +48,26 @@ def combined(fields: Sequence[AzimuthalField], coefficients: Complexes) -> Azimu
     total = (
         _added(total, lights, matrices) if _alike(lights) else _resampled(total, lights, matrices, fields[0].settings)
     )
-    peak = max(total.profile.peak, 1e-300)
-    # Errors are shares of each field's own peak.
-    shares = [abs(c) * light.error * light.profile.peak for light, c in zip(lights, coefficients, strict=True)]
-    total = replace(total, error=total.error + float(sum(shares)) / peak)
+    estimates = (*total.estimates, _Weighed(tuple(lights), tuple(map(abs, coefficients)), total.profile.peak))
+    total = replace(total, estimates=estimates)
     return replace(fields[0], harmonics=total.without_dark(), _arrivals={}, _tables={})
+
+
+@dataclass(frozen=True, eq=False)
+class _Weighed:
+    """Errors of the fields in a sum with a peak of its own, each a share of that field's peak."""
+
+    lights: tuple[Harmonics, ...]
+    weights: tuple[float, ...]
+    peak: float
+
+    @cached_property
+    def error(self) -> float:
+        """As a share of the peak of the sum."""
+        own = (light.error * light.profile.peak for light in self.lights)
+        return float(sum(weight * error for weight, error in zip(self.weights, own, strict=True))) / max(
+            self.peak, 1e-300
+        )
 
 
 def combined_on(fields: Sequence[AzimuthalField], coefficients: Complexes, raster: Raster) -> AzimuthalField:
@@ -81,7 +97,7 @@ def _alike(lights: list[Harmonics]) -> bool:
 
 def _added(total: Harmonics, lights: list[Harmonics], matrices: list[Complexes]) -> Harmonics:
     parts = [weighted(matrix, light.profile.values) for light, matrix in zip(lights, matrices, strict=True)]
-    return replace(total, profile=Profile(lights[0].profile.edges, sum(parts[1:], parts[0])), error=0.0)
+    return replace(total, profile=Profile(lights[0].profile.edges, sum(parts[1:], parts[0])), estimates=())
 
 
 def _resampled(total: Harmonics, lights: list[Harmonics], matrices: list[Complexes], settings: Settings) -> Harmonics:
@@ -96,7 +112,7 @@ def _resampled(total: Harmonics, lights: list[Harmonics], matrices: list[Complex
         return out
 
     profile, rest = resolved(values, shared_edges(lights), settings)
-    return replace(total, profile=profile, taper=None, error=rest)
+    return replace(total, profile=profile, taper=None, estimates=(Known(rest),))
 
 
 def shared_edges(lights: list[Harmonics]) -> Reals:

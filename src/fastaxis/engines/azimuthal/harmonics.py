@@ -8,6 +8,7 @@ from functools import cached_property
 
 import numpy as np
 
+from fastaxis.engines.azimuthal.estimates import Estimate, total
 from fastaxis.engines.azimuthal.panels import Complexes, Profile
 from fastaxis.engines.azimuthal.taper import Taper
 from fastaxis.laws import TravelLaw
@@ -39,7 +40,7 @@ class Harmonics:
     section : ray matrix to be travelled still.
     taper : soft end, where the profile had to be cut.
     beyond : power [W] of L and R outside the cut: counted, but not followed further.
-    error : error of the functions to be expected, as a share of their peak.
+    estimates : of the errors of the functions, step by step.
     """
 
     orders: tuple[tuple[int, int], ...]
@@ -49,7 +50,12 @@ class Harmonics:
     section: TravelLaw = STRAIGHT
     taper: Taper | None = None
     beyond: tuple[float, float] = (0.0, 0.0)
-    error: float = 0.0
+    estimates: tuple[Estimate, ...] = ()
+
+    @property
+    def error(self) -> float:
+        """Error of the functions to be expected, as a share of their peak."""
+        return total(self.estimates)
 
     @property
     def charges(self) -> tuple[int, ...]:

@@ -5,6 +5,7 @@ from __future__ import annotations
 from dataclasses import replace
 
 from fastaxis.engines.azimuthal.applying import apply
+from fastaxis.engines.azimuthal.estimates import Known
 from fastaxis.engines.azimuthal.harmonics import Harmonics
 from fastaxis.engines.azimuthal.plane import AzimuthalField
 from fastaxis.engines.azimuthal.resolving import Settings
@@ -35,5 +36,5 @@ def _circulating(branch: Branch, settings: Settings) -> tuple[Harmonics, Steps]:
     """All trips together at the place that all of them pass, and the steps that lead out from there."""
     assert branch.round_trip is not None
     found = steady(branch.round_trip, settings)
-    light = replace(found.light, error=found.light.error + found.error)
+    light = replace(found.light, estimates=(*found.light.estimates, Known(found.error)))
     return light, branch.steps[len(branch.steps) - branch.last :]

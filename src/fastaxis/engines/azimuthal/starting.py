@@ -10,6 +10,7 @@ import numpy as np
 
 from fastaxis.engines.azimuthal.applying import TO_CIRCULAR
 from fastaxis.engines.azimuthal.carried import edges_for, gathered
+from fastaxis.engines.azimuthal.estimates import Known
 from fastaxis.engines.azimuthal.harmonics import LEFT, RIGHT, Harmonics
 from fastaxis.engines.azimuthal.panels import ORDER, Complexes, Profile, Reals
 from fastaxis.engines.azimuthal.resolving import Settings, extended, resolved
@@ -112,7 +113,7 @@ def started_with(terms: Sequence[Term], branch: Branch, settings: Settings) -> H
         profile=profile.combined(matrix),
         curvature=curvature,
         wavenumber=wavenumber,
-        error=rest,
+        estimates=(Known(rest),),
     ).without_dark()
 
 

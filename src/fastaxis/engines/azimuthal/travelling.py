@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import math
 from dataclasses import dataclass, replace
+from functools import cached_property
 
 import numpy as np
 
@@ -46,16 +47,22 @@ def images(field: Harmonics) -> bool:
 
 @dataclass(frozen=True, eq=False)
 class _Arrival:
-    """Shapes behind a section, relative to a front there; their soft end if cut; the error that arriving added."""
+    """Shapes behind a section, relative to a front there; their soft end if cut; what they left unsettled."""
 
     profile: Profile
     curvature: float
     taper: Taper | None
-    error: float
+    rest: float
+    section: Collins | Nearby
 
     @property
     def nbytes(self) -> int:
         return self.profile.values.nbytes
+
+    @cached_property
+    def error(self) -> float:
+        """What arriving added."""
+        return self.rest + share_of_error(self.section, self.profile)
 
 
 @dataclass(frozen=True)
@@ -152,7 +159,7 @@ def arrived(field: Harmonics, settings: Settings, *, start: float = 0.0, end: fl
         curvature=there.curvature,
         section=STRAIGHT,
         taper=there.taper,
-        error=field.error + there.error,
+        estimates=(*field.estimates, there),
     )
     return _balanced(field, behind) if end is None and start == 0 else replace(behind, beyond=(0.0, 0.0))
 
@@ -169,7 +176,7 @@ def _travelled(field: Harmonics, settings: Settings, start: float, end: float | 
         profile, rest = resolved(section, edges, settings)
         cut = False
     taper = Taper(TAPER * profile.end, profile.end) if cut else None
-    return _Arrival(profile, curvature, taper, max(rest, settings.settled) + share_of_error(section, profile))
+    return _Arrival(profile, curvature, taper, max(rest, settings.settled), section)
 
 
 def _balanced(before: Harmonics, behind: Harmonics) -> Harmonics:
