@@ -9,6 +9,7 @@ from fastaxis.conventions import View
 from fastaxis.light import H, V, linear
 from fastaxis.light.raster import Raster
 from fastaxis.report.frames import draw_frames, layout
+from fastaxis.report.save import save
 
 
 def pictures(figure):
@@ -61,6 +62,18 @@ def test_places_without_a_picture_stay_empty_and_the_axes_above_them_are_numbere
     axes = pictures(figure)
     assert len(axes) == 5
     assert [one.get_xlabel().endswith("x [mm]") for one in axes] == [False, False, True, True, True]
+
+
+@pytest.mark.parametrize("count", [1, 4, 6])
+def test_lines_of_text_above_each_other_are_an_eighth_of_a_line_apart_or_more(poincare_shots, tmp_path, count):
+    figure = draw_frames(poincare_shots([linear(k * np.pi / count) for k in range(count)]))
+    save(figure, tmp_path / "frames", ["png"], dpi=figure.dpi)
+    grid = [axes for axes in figure.axes if axes.images]
+    high = grid[0].title.get_window_extent()
+    assert figure._suptitle.get_window_extent().y0 - high.y1 > 0.125 * high.height
+    below = [axes for axes in grid if axes.title.get_window_extent().y1 < grid[0].get_window_extent().y0]
+    if below:
+        assert grid[0].xaxis.label.get_window_extent().y0 - below[0].title.get_window_extent().y1 > 0.125 * high.height
 
 
 def test_64_long_names_fit(poincare_shots, assert_nothing_collides):

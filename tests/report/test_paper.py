@@ -1,5 +1,6 @@
 """Sheets of A4: lines that fit, pages that are numbered, files that are whole and repeatable."""
 
+import numpy as np
 import pytest
 
 from fastaxis.conventions import stamp
@@ -31,6 +32,14 @@ def test_lines_are_broken_to_the_width():
     assert all(len(line) <= 20 for line in wrapped("word " * 40, 8, 20.5 * 0.54 * 8 / 72))
     assert len(wrapped("x" * 200, 8, 2, mono=True)) > len(wrapped("x" * 200, 8, 2))
     assert wrapped("", 8, 2) == [""]
+
+
+def test_a_number_keeps_its_unit():
+    for text in ("a clear radius of 2 w keeps all but 0.03 % of it", "seen from 12.5 mm away", "some 3 µW of it"):
+        for width in np.linspace(0.5, 3, 40):
+            lines = wrapped(text, 8, width)
+            assert " ".join(lines) == text
+            assert not any(line.endswith(("0.03", "12.5", "3")) for line in lines)
 
 
 def test_every_page_has_its_number_and_the_signs():

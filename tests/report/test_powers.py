@@ -27,4 +27,10 @@ def test_a_detector_gets_a_curve_of_power_in_a_readable_unit(readings):
 def test_the_words_all_settings_share_are_on_the_axis(readings):
     axes = draw_frames(readings).axes[0]
     assert axes.get_xlabel() == "analyzer setting: plate fast …, polarizer 0°"
-    assert axes.get_xticklabels()[1].get_text() == "8.4375°"
+
+
+def test_of_many_settings_those_with_short_names_are_named(readings):
+    """2.8125° apart, every third would be 8.4375°, every fourth is 11.25°."""
+    named = [label.get_text() for label in draw_frames(readings).axes[0].get_xticklabels()]
+    assert named[:3] == ["0°", "11.25°", "22.5°"]
+    assert len(named) == 16

@@ -57,3 +57,12 @@ def test_a_long_stamp_is_wrapped_within_a_narrow_figure():
     style.footer(figure)
     box = figure.texts[0].get_window_extent()
     assert box.x1 <= figure.bbox.x1
+
+
+@pytest.mark.parametrize("width", [3.2, 4.1, 5.1, 6.4])
+def test_a_stamp_is_broken_between_two_signs_never_within_one(width):
+    figure = style.new_figure(width, 3)
+    style.footer(figure)
+    *broken, last = figure.texts[0].get_text().split("\n")
+    assert all(line.endswith(";") for line in broken)
+    assert " ".join([*broken, last]) == stamp()

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import re
 import textwrap
 from collections.abc import Sequence
 from functools import partial
@@ -16,12 +17,13 @@ from matplotlib.figure import Figure
 from fastaxis.conventions import stamp
 from fastaxis.files import write_whole
 from fastaxis.report.letters import FAMILIES
-from fastaxis.report.style import FOOT_SIZE, INK, PAPER, SOFT, rules
+from fastaxis.report.style import FOOT_SIZE, HELD, INK, PAPER, SOFT, rules
 
 __all__ = ["A4", "MARGIN", "Sheet", "blank", "number_pages", "save_pages"]
 
 A4 = (8.27, 11.69)  # [inch], upright
 MARGIN = 0.6  # [inch]; printers leave out the outermost quarter inch
+NUMBER_AND_UNIT = re.compile(r"(?<=\d) (?=%|(?:[kmµunp]?[mW]|[mun]?s|deg)\b)")
 
 
 class Sheet:
@@ -67,9 +69,11 @@ def line_height(size: float) -> float:
 
 
 def wrapped(text: str, size: float, width: float, *, mono: bool = False) -> list[str]:
-    """Lines of a text that fit a width [inch]."""
+    """Lines of a text that fit a width [inch]; none ends between a number and its unit."""
     # A fixed-pitch glyph is 0.602 em wide, but on whole dots of a screen up to 0.7; running text needs 0.54 em.
-    return textwrap.wrap(text, max(8, int(width * 72 / ((0.7 if mono else 0.54) * size)))) or [""]
+    room = max(8, int(width * 72 / ((0.7 if mono else 0.54) * size)))
+    held = NUMBER_AND_UNIT.sub(HELD, text)
+    return [line.replace(HELD, " ") for line in textwrap.wrap(held, room)] or [""]
 
 
 def blank(*, landscape: bool = False) -> Sheet:

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from collections.abc import Sequence
 from typing import Any
 
 from matplotlib.figure import Figure
@@ -30,8 +31,8 @@ def draw_powers(shots: Shots, *, title: str | None = None) -> Figure:
     axes = figure.subplots()
     places = range(len(powers))
     axes.plot(places, [power * factor for power in powers], color=LEFT, lw=0.8, marker="o", ms=3.5)
-    every = -(-len(powers) // NAMED)
     labels, common = short_labels(shots.labels)
+    every = _step(labels)
     long = max(map(len, labels)) > 3
     turned: dict[str, Any] = {"rotation": 60, "ha": "right", "rotation_mode": "anchor"} if long else {}
     axes.set_xticks(places[::every], labels[::every], **turned)
@@ -41,3 +42,9 @@ def draw_powers(shots: Shots, *, title: str | None = None) -> Figure:
     axes.set_title(heading(shots, title), size=10)
     footer(figure, shots.view)
     return figure
+
+
+def _step(labels: Sequence[str]) -> int:
+    """Every how many settings are named: as many as fit, or up to half of them where that makes names shorter."""
+    least = -(-len(labels) // NAMED)
+    return min(range(least, 2 * least + 1), key=lambda step: max(map(len, labels[::step])))

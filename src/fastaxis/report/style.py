@@ -18,7 +18,7 @@ from fastaxis.conventions import View, stamp
 from fastaxis.report.letters import FAMILIES, make_known
 
 __all__ = [
-    "DARK", "INK", "LEFT", "LINEAR", "PAPER", "RIGHT", "SOFT", "WARN", "azimuth_map", "foot_height", "footer",
+    "DARK", "HELD", "INK", "LEFT", "LINEAR", "PAPER", "RIGHT", "SOFT", "WARN", "azimuth_map", "foot_height", "footer",
     "light_map", "new_figure", "outer_labels", "pale_map", "rules", "signed_map",
     "styled",
 ]  # fmt: skip
@@ -58,6 +58,7 @@ RULES: dict[Any, Any] = {
 }
 
 FOOT_SIZE = 5.5  # [pt]
+HELD = "\N{NO-BREAK SPACE}"
 
 P = ParamSpec("P")
 
@@ -143,7 +144,8 @@ def footer(figure: Figure, view: View = View.RECEIVER, *, note: str = "") -> Non
     figure.text(0.01, 0.03 / height, "\n".join(lines), size=FOOT_SIZE, color=SOFT, va="bottom", linespacing=1.15)
     engine = figure.get_layout_engine()
     if engine is not None:
-        engine.set(rect=(0, inches / height, 1, 1 - inches / height), h_pad=0.03, w_pad=0.03)  # type: ignore[call-arg]  # its stub lacks rect
+        rect = (0, inches / height, 1, 1 - inches / height)
+        engine.set(rect=rect, h_pad=0.03, w_pad=0.03)  # type: ignore[call-arg]  # its stub lacks rect
 
 
 def foot_height(width: float, view: View = View.RECEIVER, *, note: str = "") -> float:
@@ -154,4 +156,10 @@ def foot_height(width: float, view: View = View.RECEIVER, *, note: str = "") -> 
 def _foot_lines(width: float, view: View, note: str) -> list[str]:
     # A glyph of this font is about 0.6 em wide on average.
     room = int(width * 72 / (0.56 * FOOT_SIZE)) - 4
-    return [piece for text in (note, stamp(view)) if text for piece in textwrap.wrap(text, room)]
+    return [*textwrap.wrap(note, room), *_between_signs(stamp(view), room)]
+
+
+def _between_signs(signs: str, room: int) -> list[str]:
+    """Lines broken behind a semicolon only: "S3 = I_R" on one line and "- I_L" on the next would be misread."""
+    held = signs.replace(" ", HELD).replace(f";{HELD}", "; ")
+    return [line.replace(HELD, " ") for line in textwrap.wrap(held, room)]

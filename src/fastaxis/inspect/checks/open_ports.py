@@ -29,7 +29,7 @@ def open_ports(bench: Bench) -> Iterator[Finding]:
                 element=port,
                 rule="light that runs back to a laser may disturb it: an isolator or a small tilt keeps it out",
                 got=f"{got} back towards {fed[port]}",
-                fix=f'"{name}.{face}": put an isolator behind {fed[port].partition(".")[0]}',
+                fix=f"put an isolator behind {fed[port].partition('.')[0]}",
             )
         else:
             yield Finding(
