@@ -88,22 +88,23 @@ def far_sums(order: int, scale: float, r: Reals, borders: Reals, values: Complex
     powers = _powers(v, len(numbers)) * numbers[:, np.newaxis, np.newaxis]
     terms = powers[:, np.newaxis] * (values * np.sqrt(2 / (np.pi * scale * rho)))
     upper, lower = terms[..., HALF:], terms[..., HALF - 1 :: -1]
-    angles = np.multiply.outer(r, scale * half * NODES[HALF:])
+    angles = np.multiply.outer(scale * half * NODES[HALF:], r)
     bent = _phasors(scale * middles[0] * r - np.pi * (order / 2 + 0.25), 2 * scale * half * r, len(middles))
     cos, sin, stages = np.cos(angles), np.sin(angles), _powers(lowest / r, len(numbers))
     even, odd = upper + lower, lower - upper
-    total = np.einsum("rp,rpf->fr", bent.real, _matched(stages, (cos, sin), (even, odd)))
-    total += np.einsum("rp,rpf->fr", bent.imag, _matched(stages, (sin, cos), (odd, -even)))
-    return np.asarray(total / np.sqrt(r))
+    total = (bent.real[:, np.newaxis] * _matched((even, odd), (cos, sin), stages)).sum(axis=0)
+    total += (bent.imag[:, np.newaxis] * _matched((odd, -even), (sin, cos), stages)).sum(axis=0)
+    total /= np.sqrt(r)
+    return np.asarray(total[0::2] + 1j * total[1::2])
 
 
 def _phasors(first: Reals, step: Reals, count: int) -> Complexes:
-    """exp(i (first + n step)) for n < count, shape (len(first), count), by doubling from a few exponentials."""
-    out = np.empty((len(first), count), dtype=complex)
-    out[:, 0], known = np.exp(1j * first), 1
+    """exp(i (first + n step)) for n < count, shape (count, len(first)), by doubling from a few exponentials."""
+    out = np.empty((count, len(first)), dtype=complex)
+    out[0], known = np.exp(1j * first), 1
     while known < count:
         more = min(known, count - known)
-        np.multiply(out[:, :more], np.exp(1j * known * step)[:, np.newaxis], out=out[:, known : known + more])
+        np.multiply(out[:more], np.exp(1j * known * step), out=out[known : known + more])
         known += more
     return out
 
@@ -116,13 +117,16 @@ def _powers(base: Reals, count: int) -> Reals:
     return out
 
 
-def _matched(stages: Reals, waves: tuple[Reals, Reals], terms: tuple[Complexes, Complexes]) -> Complexes:
-    """Sums over powers n and nodes, shape (radii, parts, functions); the first of each pair is for even n."""
-    count, radii = stages.shape
-    functions, parts, nodes = terms[0].shape[1:]
-    left, right = np.empty((radii, count, nodes)), np.empty((count, nodes, parts, functions), dtype=complex)
+def _matched(terms: tuple[Complexes, Complexes], waves: tuple[Reals, Reals], stages: Reals) -> Reals:
+    """Sums over powers n and nodes; the first of each pair is for even n, the second for odd n.
+
+    Shape (parts, 2 functions, radii): a real and an imaginary part of each function.
+    """
+    (count, functions, parts, nodes), radii = terms[0].shape, stages.shape[1]
+    left, right = np.empty((parts, functions, 2, count, nodes)), np.empty((count, nodes, radii))
     for start in (0, 1):
-        left[:, start::2] = stages[start::2].T[..., np.newaxis] * waves[start][:, np.newaxis]
-        right[start::2] = terms[start][start::2].transpose(0, 3, 2, 1)
-    sums = product(left.reshape(radii, -1), right.view(float).reshape(count * nodes, -1))
-    return np.asarray(sums.view(complex).reshape(radii, parts, functions))
+        some = terms[start][start::2].transpose(2, 1, 0, 3)
+        left[:, :, 0, start::2], left[:, :, 1, start::2] = some.real, some.imag
+        np.multiply(stages[start::2, np.newaxis], waves[start], out=right[start::2])
+    sums = product(left.reshape(-1, count * nodes), right.reshape(count * nodes, radii))
+    return np.asarray(sums.reshape(parts, 2 * functions, radii))

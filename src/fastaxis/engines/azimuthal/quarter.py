@@ -21,6 +21,7 @@ from fastaxis.engines.azimuthal.smooth import NONE, blocks_of, has_core
 from fastaxis.engines.azimuthal.table import Table
 from fastaxis.engines.azimuthal.waves import Part, Wave, parts_of, pictures, waves_of, weights_of
 from fastaxis.light import Raster
+from fastaxis.recycled import empty
 
 __all__ = ["centred_images"]
 
@@ -105,7 +106,7 @@ def _on_lines(table: Table, waves: Sequence[Wave], x: Reals, y: Reals) -> Reals:
 
 def _mixed(weights: Reals, waves: Sequence[Wave], means: Reals, shape: tuple[int, int]) -> Reals:
     """The pictures mixed by (4, waves) numbers in each of the quarters; those alike are mixed once."""
-    out = np.empty((4, *shape))
+    out = empty((4, *shape))
     (_, height, width), (ny, nx) = means.shape, shape
     # On an odd number of pixels the middle ones are of both sides, and the same on either.
     right, left = slice(nx // 2, None), slice(width - 1, None, -1)

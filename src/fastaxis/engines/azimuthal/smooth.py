@@ -15,6 +15,7 @@ from fastaxis.engines.azimuthal.panels import Profile, Reals
 from fastaxis.engines.azimuthal.rendering import Orders, circular_field, stokes_at, stokes_of
 from fastaxis.engines.azimuthal.table import Table
 from fastaxis.light import Raster
+from fastaxis.recycled import empty
 
 __all__ = ["NONE", "blocks_of", "has_core", "smooth_images"]
 
@@ -44,7 +45,7 @@ def smooth_images(table: Table, profile: Profile, orders: Orders, raster: Raster
     )
     if columns is None or rows is None:
         return None
-    out = np.empty((4, *raster.shape))
+    out = empty((4, *raster.shape))
     # Half a turn changes no irradiance if it changes all harmonics alike.
     half = len(y) // 2
     if raster.centre != (0.0, 0.0) or len({l % 2 for _, l in orders}) > 1 or len(y) % 2:
