@@ -19,6 +19,7 @@ __all__ = ["propose", "sampling_for"]
 
 # Lengths with small prime factors, for the transform; smooth beams start at the first, rough ones at 1024.
 LENGTHS = (256, 320, 384, 512, 640, 768, 1024, 1280, 1536, 2048, 3072, 4096)
+LARGE = (6144, 8192, 12288, 16384)  # not taken unasked; named where nothing smaller will do
 ROUGH_START = 1024
 # Samples in the clear width of a stop: pictures then hold all but 1 % of the power, and powers, of second order in the
 # pitch, are right to 1e-3 even beside a dark line. Six leave 1 % in powers, two 6 %.
@@ -129,7 +130,7 @@ def propose(steps: Steps, spread: Spread, wavelength: float, *, most: int = LENG
         return _planes(steps, spread, ROUGH_START, window, wavelength)
     windows = _windows(steps, spread)
     rough = spread.infinite or _planes(steps, spread, 256, windows[-1], wavelength).planes[-1].spread.rough
-    for samples in LENGTHS:
+    for samples in LENGTHS + LARGE:
         if (rough and samples < ROUGH_START) or samples > most:
             continue
         tried = [_planes(steps, spread, samples, window, wavelength) for window in windows]
@@ -204,12 +205,12 @@ def _message(sampling: Sampling, steps: Steps, spread: Spread, wavelength: float
             "got": f"plane wave {where}",
             "fix": 'fa.Aperture(radius=2*mm, name="stop")',
         }
-    if worst.room <= worst.band or worst.spread.rough:
+    if worst.width_margin <= worst.pitch_margin:
         got = f"window {worst.window * 1e3:.3g} mm {where}"
         rule = f"the light there needs {2e3 * worst.spread.half_window:.3g} mm"
     else:
         needed = 1 / (2 * worst.spread.half_band(wavelength))
         got, rule = f"pitch {worst.pitch * 1e6:.3g} um {where}", f"the light there needs {needed * 1e6:.3g} um"
-    better = propose(steps, spread, wavelength).grid
+    better = propose(steps, spread, wavelength, most=LARGE[-1]).grid
     fix = f"grid=fa.Grid(samples={better.samples}, window={better.window:.4g})"
     return {"rule": rule, "got": got, "fix": fix}

@@ -39,6 +39,9 @@ class Plane:
     room : half window over the half window the beam needs; 1 or more is enough.
     band : highest frequency of the samples over the highest of the beam; 1 or more is enough.
     hop : how the light came here, if it travelled.
+    beside, leaning : for a beam further off the axis, or turned further, than it is wide or spreads: what is left
+        between its middle and the edge of window or band, over what it needs about its middle. Such a beam may be over
+        the edge as a whole, and in again at the other side, where no guard of that edge sees it.
     """
 
     samples: int
@@ -47,6 +50,8 @@ class Plane:
     room: float
     band: float
     hop: Hop | None = None
+    beside: float = math.inf
+    leaning: float = math.inf
 
     @property
     def pitch(self) -> float:
@@ -55,15 +60,36 @@ class Plane:
 
     @property
     def margin(self) -> float:
-        """The smaller of room and band; for light with slow tails only room can be asked for."""
-        return self.room if self.spread.rough else min(self.room, self.band)
+        """The smaller of what window and band leave; of light with slow tails the band holds the middle only."""
+        return min(self.width_margin, self.pitch_margin)
+
+    @property
+    def width_margin(self) -> float:
+        """What the window leaves."""
+        return min(self.room, self.beside)
+
+    @property
+    def pitch_margin(self) -> float:
+        """What the band leaves."""
+        return self.leaning if self.spread.rough else min(self.band, self.leaning)
 
 
 def _plane(samples: int, window: float, spread: Spread, wavelength: float, hop: Hop | None = None) -> Plane:
     needed, steepest = spread.half_window, spread.half_band(wavelength)
-    room = window / 2 / needed if needed else math.inf
-    band = samples / (2 * window) / steepest if steepest and window else math.inf
-    return Plane(samples, window, spread, room, band, hop)
+    half, highest = window / 2, samples / (2 * window) if window else math.inf
+    room = half / needed if needed else math.inf
+    band = highest / steepest if steepest else math.inf
+    off = 0.0 if spread.infinite else max(map(abs, spread.offset))
+    beside, leaning = _left(half, needed, off), _left(highest, steepest, spread.leaning / wavelength)
+    return Plane(samples, window, spread, room, band, hop, beside, leaning)
+
+
+def _left(edge: float, needed: float, middle: float) -> float:
+    """Space between a beam's middle and an edge over what it needs there, if it is further out than that."""
+    about = needed - middle
+    if about <= 0:  # a plane wave needs nothing but its middle
+        return math.inf if middle <= edge else 0.0
+    return (edge - middle) / about if about < middle else math.inf
 
 
 @dataclass(frozen=True)

@@ -58,8 +58,12 @@ class Spread:
 
     def half_band(self, wavelength: float) -> float:
         """Highest spatial frequency [1/m] with the mean curvature taken out."""
-        leaning = max(abs(t - self.curvature * x) for x, t in zip(self.offset, self.slope, strict=True))
-        return (leaning + self.radii * 2 * self.angle) / wavelength
+        return (self.leaning + self.radii * 2 * self.angle) / wavelength
+
+    @property
+    def leaning(self) -> float:
+        """Steepest angle [rad] of the beam's middle with the mean curvature taken out."""
+        return max(abs(t - self.curvature * x) for x, t in zip(self.offset, self.slope, strict=True))
 
     def through(self, travel: TravelLaw) -> Spread:
         """After an ABCD section."""

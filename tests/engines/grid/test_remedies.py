@@ -77,6 +77,16 @@ AT_ONCE = {
         bench(fa.FreeSpace(0.05), waist=0.2 * mm),
         fa.Grid(256, 3 * mm),
     ),
+    "wedge not far beyond the band": (
+        bench(fa.Wedge(x=35 * mrad), fa.FreeSpace(0.05), at=1.75 * mm),
+        bench(fa.FreeSpace(0.05)),
+        fa.Grid(512, 6 * mm),
+    ),
+    "lens further beside the axis": (
+        bench(fa.Lens(focal=0.02, centre=(0.7 * mm, 0.0)), fa.FreeSpace(0.01), waist=0.2 * mm, at=0.35 * mm),
+        bench(fa.Lens(focal=0.02), fa.FreeSpace(0.01), waist=0.2 * mm),
+        fa.Grid(512, 6 * mm),
+    ),
     "lens beside the axis": (
         bench(fa.Lens(focal=0.02, centre=(0.6 * mm, 0.0)), fa.FreeSpace(0.01), waist=0.2 * mm, at=0.3 * mm),
         bench(fa.Lens(focal=0.02), fa.FreeSpace(0.01), waist=0.2 * mm),
