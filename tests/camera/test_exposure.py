@@ -5,12 +5,10 @@ from dataclasses import replace
 import numpy as np
 import pytest
 
-from fastaxis.camera import load, no_analyzer, plate_then_polarizer, read_pictures
+from fastaxis.camera import load, read_pictures
 from fastaxis.camera.exposure import Exposure
 from fastaxis.conventions import View, stamp
-from fastaxis.errors import ParameterError
-from fastaxis.light import A, D, H, L, R, V, linear
-from fastaxis.units import deg
+from fastaxis.light import A, D, H, L, R, V
 
 EPS = np.finfo(float).eps
 
@@ -20,18 +18,6 @@ def test_frames_are_the_weighted_sums_of_the_stokes_images(shots):
     expected = [(s0 + s1) / 2, (s0 - s1) / 2, (s0 + s2) / 2, (s0 - s2) / 2, (s0 + s3) / 2, (s0 - s3) / 2]
     # Sums of four terms below the peak, and zero where a rounding would go below it.
     np.testing.assert_allclose(shots.frames, expected, atol=4 * EPS * s0.max())
-
-
-def test_a_frame_has_many_names(shots):
-    for same in ("R", 4, -2, np.int64(4), R, shots.settings[4]):
-        np.testing.assert_array_equal(shots.frame(same), shots.frames[4])
-
-
-def test_a_setting_that_was_not_exposed_can_still_be_asked_for(shots):
-    np.testing.assert_array_equal(shots.frame(no_analyzer()), shots.stokes[0])
-    turned = shots.frame(linear(22.5 * deg))
-    expected = (shots.stokes[0] + (shots.stokes[1] + shots.stokes[2]) / np.sqrt(2)) / 2
-    np.testing.assert_allclose(turned, expected, atol=8 * EPS * shots.stokes[0].max())
 
 
 def test_no_frame_is_negative_though_roundings_would_be(shots):
@@ -100,37 +86,6 @@ def test_a_detector_has_rows_without_lobes(shots):
         wavelength=633e-9,
     )
     assert (one.table()[0].power, one.table()[0].peak, one.table()[0].lobes) == (1.0, 1.0, 0)
-
-
-@pytest.mark.parametrize(
-    ("which", "message"),
-    [
-        ("Q", r"cam: no setting is called 'Q'; the settings exposed are: H, V, D, A, R, L \(fix: shots.frame\(\"H\"\)"),
-        (6, r"cam: frame 6; frames are counted from 0 to 5 \(fix: shots.frame\(5\)\)"),
-        (-7, "cam: frame -7; frames are counted from 0 to 5"),
-        (1.5, "cam: frame 1.5; a frame is asked for by label, index, state or setting"),
-        (True, "cam: frame True; a frame is asked for"),
-    ],
-)
-def test_a_frame_that_is_not_there_is_refused(shots, which, message):
-    with pytest.raises(ParameterError, match=message):
-        shots.frame(which)
-
-
-def test_a_label_that_two_settings_share_is_refused(shots):
-    both = (plate_then_polarizer(fast=0.1, label="plate"), plate_then_polarizer(fast=0.2, label="plate"))
-    twice = Exposure(stokes=shots.stokes, settings=both, x=shots.x, y=shots.y, pixel=1e-5, wavelength=633e-9)
-    with pytest.raises(
-        ParameterError, match=r"2 settings are called 'plate'; a label asked for belongs to one.*frame\(0"
-    ):
-        twice.frame("plate")
-
-
-def test_the_same_setting_twice_is_no_riddle(shots):
-    twice = Exposure(
-        stokes=shots.stokes, settings=shots.settings[:1] * 2, x=shots.x, y=shots.y, pixel=1e-5, wavelength=633e-9
-    )
-    np.testing.assert_array_equal(twice.frame("H"), shots.frame("H"))
 
 
 def test_the_axis_outside_the_sensor_leaves_the_table_without_lobes(shots):

@@ -11,16 +11,15 @@ import numpy as np
 from numpy.typing import NDArray
 
 from fastaxis.camera.arrival import Arrival
-from fastaxis.camera.counts import Counts, counts
+from fastaxis.camera.chosen import chosen
 from fastaxis.camera.mixing import mixed
 from fastaxis.camera.mounting import Mounting
-from fastaxis.camera.photons import electrons_of, fills_well_after, read_with
+from fastaxis.camera.reading import Reading
 from fastaxis.camera.room import check_frames
 from fastaxis.camera.rows import Row, row
-from fastaxis.camera.settings import Setting, as_setting, weight_matrix
+from fastaxis.camera.settings import Setting, weight_matrix
 from fastaxis.conventions import View, stamp
 from fastaxis.elements.sensor import Sensor
-from fastaxis.errors import ParameterError
 from fastaxis.light.states import State
 from fastaxis.loader import late
 
@@ -32,7 +31,7 @@ _S3_FLIP = np.array([1.0, 1.0, 1.0, -1.0])
 
 
 @dataclass(frozen=True, kw_only=True, eq=False)
-class Exposure:
+class Exposure(Reading):
     """What a camera or detector recorded; made by ``train.expose``.
 
     Parameters
@@ -116,6 +115,7 @@ class Exposure:
 
         Examples
         --------
+        >>> from fastaxis.camera.settings import as_setting
         >>> from fastaxis.light.states import H, V
         >>> shots = Exposure(stokes=np.array([3.0, 1.0, 0.0, 0.0]).reshape(4, 1, 1), settings=(as_setting(H),),
         ...                  x=np.zeros(1), y=np.zeros(1), pixel=None, wavelength=532e-9)
@@ -166,87 +166,6 @@ class Exposure:
         power = self.power(which)
         return power == 0 or power < self.dark_below
 
-    def electrons(
-        self,
-        which: int | str | Setting | State,
-        *,
-        exposure_time: float | None = None,
-        sensor: Sensor | None = None,
-    ) -> NDArray[np.float64]:
-        """Electrons a pixel collects on average behind this setting, shape (ny, nx); as if its well had no end.
-
-        quantum_efficiency * power * time * wavelength/(h c) + dark_current * time, the wavelength that of the train.
-
-        Parameters
-        ----------
-        which : as in :meth:`frame`.
-        exposure_time : [s]; that of the camera if left out.
-        sensor : another one than the camera's.
-
-        Raises
-        ------
-        ParameterError : no sensor or no exposure time, neither here nor with the camera.
-        """
-        sensor, time = read_with(self, sensor, exposure_time)
-        found: NDArray[np.float64] = electrons_of(
-            self.frame(which), sensor, wavelength=self.wavelength, exposure_time=time
-        )
-        return found
-
-    def counts(
-        self,
-        which: int | str | Setting | State,
-        *,
-        exposure_time: float | None = None,
-        seed: int = 0,
-        noise: bool = True,
-        sensor: Sensor | None = None,
-    ) -> Counts:
-        """The frame behind this setting as the camera reads it out: ``.counts``, ``.saturated``, ``.electrons``.
-
-        Electrons come as Poisson numbers, fill the well, gain normal read noise and are rounded to whole counts within
-        full scale.
-
-        Parameters
-        ----------
-        which : as in :meth:`frame`.
-        exposure_time : [s]; that of the camera if left out.
-        seed : of the noise, a stream of its own for each label; the same seed gives the same frame again.
-        noise : whether there is any; without, the mean is rounded.
-        sensor : another one than the camera's.
-
-        Raises
-        ------
-        ParameterError : no sensor or no exposure time, neither here nor with the camera; a seed below 0.
-
-        Examples
-        --------
-        >>> import fastaxis as fa
-        >>> from fastaxis.units import mm, ms, nm, nW, um
-        >>> sensor = fa.Sensor(full_well=10_500, quantum_efficiency=0.62, read_noise=2.4)
-        >>> train = fa.Train(wavelength=532*nm).along(
-        ...     fa.Laser(waist=0.3*mm, power=10*nW),
-        ...     fa.Camera(pixel=10*um, shape=(128, 128), sensor=sensor, exposure_time=0.5*ms, name="cam"))
-        >>> shots = train.expose("cam", [fa.H])
-        >>> print(shots.counts("H", seed=1))
-        cam H: 0.5 ms, brightest 2365 of 4095 counts, 55.8 % of the well, none saturated, signal to noise up to 76.5
-        >>> f"{shots.saturates_after / ms:.3f} ms"
-        '0.895 ms'
-        """
-        return counts(self, self._setting(which), exposure_time=exposure_time, seed=seed, noise=noise, sensor=sensor)
-
-    @property
-    def saturates_after(self) -> float:
-        """Exposure time [s] at which the brightest pixel of all settings is saturated; infinite in the dark.
-
-        Raises
-        ------
-        ParameterError : no sensor declared with the camera.
-        """
-        sensor, _ = read_with(self, None, 1.0)
-        peak = max(float(self.frame(k).max()) for k in range(len(self)))
-        return fills_well_after(peak, sensor, self.wavelength)
-
     @property
     def upright(self) -> Exposure:
         """The same light as an upright camera at the same place would have taken it: the beam's own frame."""
@@ -257,40 +176,7 @@ class Exposure:
         return replace(self, stokes=mounting.undone(self.stokes), x=x, y=y, orientation="upright")
 
     def _setting(self, which: int | str | Setting | State) -> Setting:
-        if isinstance(which, str):
-            return self._labelled(which)
-        if isinstance(which, Setting | State):
-            return as_setting(which)
-        if isinstance(which, bool) or not hasattr(which, "__index__"):
-            raise ParameterError(
-                "a frame is asked for by label, index, state or setting",
-                got=f"{self.target}: frame {which!r}",
-                fix=f'shots.frame("{self.labels[0]}")',
-            )
-        if not -len(self) <= which < len(self):
-            raise ParameterError(
-                f"frames are counted from 0 to {len(self) - 1}",
-                got=f"{self.target}: frame {which}",
-                fix=f"shots.frame({len(self) - 1})",
-            )
-        return self.settings[which]
-
-    def _labelled(self, label: str) -> Setting:
-        found = [setting for setting, name in zip(self.settings, self.labels, strict=True) if name == label]
-        if not found:
-            shown = ", ".join(self.labels[:8]) + (" ..." if len(self) > 8 else "")
-            raise ParameterError(
-                f"the settings exposed are: {shown}",
-                got=f"{self.target}: no setting is called '{label}'",
-                fix=f'shots.frame("{self.labels[0]}")',
-            )
-        if any(not np.array_equal(other.weights, found[0].weights) for other in found[1:]):
-            raise ParameterError(
-                "a label asked for belongs to one setting: give each its own label=",
-                got=f"{self.target}: {len(found)} settings are called '{label}'",
-                fix=f"shots.frame({self.labels.index(label)})",
-            )
-        return found[0]
+        return chosen(which, self.settings, self.labels, self.target)
 
     def in_view(self, view: View) -> Exposure:
         """The same exposure under another naming of circular light.
