@@ -58,6 +58,11 @@ class Nearby:
     section: Collins
     margin: float = 1.0
 
+    @property
+    def behind(self) -> float:
+        """Curvature 1/R [1/m] of the phase front behind that the field is relative to."""
+        return self.section.behind
+
     def finer(self) -> Nearby:
         """Wider windows, nodes closer together."""
         return Nearby(self.section.finer(), self.margin * 1.3)
@@ -142,13 +147,14 @@ class Nearby:
         section, flat, k = self.section, self.section.flat, self.section.wavenumber
         s = k / abs(flat.b) * r
         out = np.zeros((len(section.charges), len(r)), dtype=complex)
-        powers = np.arange(TERMS)
+        powers, further = np.arange(TERMS), 1 / (s * self._unit)
         for row, (charge, series) in enumerate(zip(section.charges, self._series, strict=True)):
             l = abs(charge)
             moments = 2.0 ** (powers + 1) * gamma((l + powers + 2) / 2) * rgamma((l - powers) / 2)
             total = np.zeros(len(r), dtype=complex)
-            for n in powers[::-1]:
-                total = total / (s * self._unit) + series[n] * moments[n]
+            for number in (series * moments)[::-1]:
+                total *= further
+                total += number
             out[row] = total / s**2 * turn(charge, flat.b)
         return np.asarray(out * (k / flat.b * np.exp(1j * k / 2 * flat.d / flat.b * r**2)))
 
@@ -190,11 +196,11 @@ def _window(t: Reals, middle: float) -> Reals:
 
 def _slow(order: int, x: Reals, sign: int) -> Complexes:
     """H_l(x) sqrt(pi x/2) without its exponential: Hankel's series sum of a_j (+-i/x)^j (DLMF 10.17.5)."""
-    term, total = 1.0, np.ones_like(x, dtype=complex)
-    inverse = -1j * sign / x
-    power = np.ones_like(x, dtype=complex)
+    terms = [1.0]
     for j in range(1, 2 * order + 10):
-        term *= (4 * order**2 - (2 * j - 1) ** 2) / (8 * j)
-        power = power * inverse
-        total += term * power
+        terms.append(terms[-1] * (4 * order**2 - (2 * j - 1) ** 2) / (8 * j))
+    inverse, total = -1j * sign / x, np.zeros_like(x, dtype=complex)
+    for term in reversed(terms):
+        total *= inverse
+        total += term
     return total

@@ -24,6 +24,7 @@ ROUNDING = 4 * np.finfo(float).eps
 
 MOST_LOOKED_AT = 256
 LOOKED_AT = (np.arange(6) + 0.5) / 6  # shares of a length
+INSIDE = 1 - math.exp(-2)  # share of the power inside of the 1/e^2 radius
 
 CARRIED = 16.0  # phase [rad] of a panel of 32 nodes with an envelope of its own: 2.5 fringes, less what that takes
 RIM = 1e-12  # of the peak: where a field ends in the dark
@@ -91,27 +92,27 @@ def _waist_behind(field: Harmonics) -> _Waist:
     return _Waist(radius, radius * field.profile.end / inside, curvature)
 
 
-def _front(field: Harmonics, waist: _Waist, settings: Settings, end: float) -> float:
-    """Curvature [1/m] of the front on which the light out to a radius [m] has the fewest fringes.
+def _section(field: Harmonics, waist: _Waist, settings: Settings, end: float | None) -> Collins | Nearby:
+    """The integral, relative to the front on which the light out to a radius [m] has the fewest fringes.
 
     The beam has its own. A singular axis and rims send out a tail whose front is that of a wave from the axis, d/b;
     far out only the tail is left, and on the front of the beam it would have k |difference| r^2/2 of fringes.
     """
-    if end <= waist.reach:
-        return waist.curvature
-    flat = TravelLaw.lens(-field.curvature).then(field.section)
-    axis = flat.d / flat.b
-    places = np.concatenate([LOOKED_AT * waist.radius, (1 - 0.03 * LOOKED_AT) * end])
-    sizes = abs(section_for(field, axis, settings)(places)).max(axis=0)
-    tail = sizes[len(LOOKED_AT) :].max() > settings.settled * sizes.max()
-    return axis if tail else waist.curvature
+    if end is not None and end > waist.reach:
+        flat = TravelLaw.lens(-field.curvature).then(field.section)
+        section = section_for(field, flat.d / flat.b, settings)
+        # The peak of a beam of this power and radius: a factor of a few changes no answer.
+        peak = math.sqrt(INSIDE * field.profile.powers().sum() / math.pi) / waist.radius
+        if abs(section((1 - 0.03 * LOOKED_AT) * end)).max() > settings.settled * peak:
+            return section
+    return section_for(field, waist.curvature, settings)
 
 
 def _radius(profile: Profile) -> float:
     """Radius [m] that holds 86 % of the power: the 1/e^2 radius of a Gaussian beam."""
     density = (abs(profile.flat()) ** 2).sum(axis=0) * profile.weights * profile.nodes
     share = np.cumsum(density) / density.sum()
-    return float(profile.nodes[np.searchsorted(share, 1 - math.exp(-2))])
+    return float(profile.nodes[np.searchsorted(share, INSIDE)])
 
 
 def section_for(field: Harmonics, curvature: float, settings: Settings) -> Collins | Nearby:
@@ -166,17 +167,16 @@ def arrived(field: Harmonics, settings: Settings, *, start: float = 0.0, end: fl
 
 def _travelled(field: Harmonics, settings: Settings, start: float, end: float | None) -> _Arrival:
     waist = _waist_behind(field)
-    curvature = waist.curvature if end is None else _front(field, waist, settings, end)
-    section = section_for(field, curvature, settings)
+    section = _section(field, waist, settings, end)
     if end is None:
         edges = _first_edges(start, max(4 * waist.radius, 2 * start))
         profile, rest, cut = extended(section, edges, settings)
     else:
-        edges = _first_edges(start, end) if start else _foreseen(field, waist, curvature, end, settings.most)
+        edges = _first_edges(start, end) if start else _foreseen(field, waist, section.behind, end, settings.most)
         profile, rest = resolved(section, edges, settings)
         cut = False
     taper = Taper(TAPER * profile.end, profile.end) if cut else None
-    return _Arrival(profile, curvature, taper, max(rest, settings.settled), section)
+    return _Arrival(profile, section.behind, taper, max(rest, settings.settled), section)
 
 
 def _balanced(before: Harmonics, behind: Harmonics) -> Harmonics:
