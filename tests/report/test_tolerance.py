@@ -1,3 +1,5 @@
+import re
+
 import numpy as np
 import pytest
 
@@ -47,6 +49,7 @@ def test_frames_are_on_one_scale(found):
 def test_what_could_not_be_read_is_said(found):
     said = [text.get_text() for page in draw_tolerance(found) for one in page.axes for text in one.texts]
     assert "no draw could be read" in said
+    assert any(re.fullmatch(r"(\d+) of \1 draws could not be read", words) for words in said)
 
 
 def test_a_figure_of_merit_that_no_error_touches_is_said_to_stay():

@@ -69,6 +69,9 @@ def _draw(sheet: Sheet, study: Study, name: str) -> None:
     sheet.write(name, size=10, bold=True)
     if name in study.surfaces:
         sheet.write(str(study.surfaces[name]), size=7, colour=SOFT)
+    unread = int(np.isnan(study.samples[name]).sum())
+    if unread:
+        sheet.write(f"{unread} of {len(study.samples[name])} draws could not be read", size=7, colour=SOFT)
     width = sheet.width - 2 * MARGIN
     _bars(_axes(sheet, MARGIN + 1.45, width / 2 - 1.6, HIGH), study.rankings[name])
     _histogram(_axes(sheet, MARGIN + width / 2 + 0.4, width / 2 - 0.4, HIGH), study, name)

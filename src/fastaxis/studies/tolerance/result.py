@@ -11,13 +11,13 @@ from typing import Any, TypeAlias
 import numpy as np
 from numpy.typing import NDArray
 
-from fastaxis.conventions import stamp
 from fastaxis.errors import FileFormatError, ParameterError
 from fastaxis.files import write_whole
 from fastaxis.loader import late
 from fastaxis.studies.tolerance.causes import Causes
 from fastaxis.studies.tolerance.slopes import Slope
 from fastaxis.studies.tolerance.surface import Surface
+from fastaxis.studies.tolerance.telling import told
 from fastaxis.studies.tolerance.yields import Yield, wilson
 
 __all__ = ["Contribution", "Range", "Tolerance"]
@@ -150,37 +150,10 @@ class Tolerance:
         return self.train.with_changes(self.causes.changes(self.offsets[row]))
 
     def text(self) -> str:
-        """Everything in words and tables."""
-        lines = [f"Tolerances of {self.train.name}: {len(self.values)} draws, seed {self.seed}"]
-        lines += [f"  {c.label}: {', '.join(map(str, c.errors))}" for c in self.causes.causes]
-        for name in self.merits:
-            lines += self._about(name)
-        if self.limits:
-            lines.append(f"within all limits: {self.yield_}, 95 % sure")
-        return "\n".join([*lines, stamp()])
+        """Everything in words and tables, in the units of the lab."""
+        return told(self)
 
     __str__ = text
-
-    def _about(self, name: str) -> list[str]:
-        unit, values = getattr(self.merits[name], "unit", ""), self.samples[name]
-        read = values[~np.isnan(values)]
-        spread = float(read.std()) if read.size else float("nan")
-        low, middle, high = (self.percentile(share, name) for share in (5, 50, 95))
-        lines = [
-            f"{name}: {self.nominal[name]:.6g} {unit} as declared".replace("  ", " "),
-            f"  drawn: 5 % {low:.6g}, 50 % {middle:.6g}, 95 % {high:.6g}; standard deviation {spread:.4g}",
-            f"  worst case: {self.worst[name].low:.6g} to {self.worst[name].high:.6g}",
-        ]
-        lines += [f"  {self.surfaces[name]}"] if name in self.surfaces else []
-        unread = len(values) - len(read)
-        lines += [f"  {unread} draws could not be read"] if unread else []
-        lines += [f"  {100 * one.share:5.1f} %  {one.cause} (alone {one.sigma:.3g})" for one in self.rankings[name]]
-        for parameter, slope in self.sensitivities[name].items():
-            known = "exact" if slope.exact else f"+- {slope.error:.1g}"
-            lines.append(f"  slope with {parameter}: {slope.value:.5g} per SI unit ({known})")
-        if name in self.limits:
-            lines.append(f"  within its limits: {self.yield_of(name)}")
-        return lines
 
     def figures(self) -> Any:
         """Contributions, histograms and frames as matplotlib figures of A4 size."""
