@@ -13,7 +13,7 @@ import fastaxis as fa
 from fastaxis.camera.exposure import DUST
 from fastaxis.engines import pictures
 from fastaxis.engines.azimuthal.plane import AzimuthalField
-from fastaxis.engines.grid import FarField, GridField
+from fastaxis.engines.grid import FarField, GridField, guard
 from fastaxis.engines.joined import JoinedField
 from fastaxis.engines.memory import LIGHT, UP_TO, forget_light
 from fastaxis.units import deg, mm, mrad, ms, mW, nm, um
@@ -221,24 +221,83 @@ def test_a_polarizer_turned_at_the_end_reads_no_pixel_again_while_enough_passes(
     assert_fresh(trains, grid=None)
 
 
-@quiet
-def test_crossed_polarizers_are_dark():
+def test_a_polarizer_turned_behind_harmonics_costs_what_it_did(read):
+    """Harmonics don't say in which state light is that goes round the picture, so it is followed; and not twice."""
+    train = bench(fa.Polarizer(axis=0, name="pol"), centre=(0, 0))
+    trains = [train.with_changes({"pol.axis": a}) for a in (0.0, 0.4, 0.8, 1.2)]
+    for one in trains:
+        asked(one, engine="azimuthal", grid=None)
+    assert len(read) == 4
+    assert_fresh(trains, engine="azimuthal", grid=None)
+
+
+@pytest.mark.parametrize("parts", [[], [fa.QPlate(q=0.5, retardance=360 * deg, centre=(2.2 * mm, 1 * mm))]])
+def test_crossed_polarizers_are_dark(read, parts):
     """Of evenly polarized light what is left is told by its one state; of other light it is followed."""
-    for parts in ([], [fa.QPlate(q=0.5, retardance=360 * deg)]):
-        train = fa.Train(wavelength=633 * nm).along(
-            fa.Laser(waist=0.5 * mm, state=fa.H), *parts, fa.Polarizer(axis=0, name="pol"), fa.FreeSpace(0.1),
-            fa.Camera(pixel=100 * um, shape=(16, 16), name="cam"),
-        )  # fmt: skip
-        for axis in (0.1, 0.2, 0.3, 90 * deg):
-            shots, _ = asked(train.with_changes({"pol.axis": axis}))
-        assert shots.total_power < DUST * shots.sent
-        assert shots.arrived < DUST * shots.sent
+    train = fa.Train(wavelength=633 * nm).along(
+        fa.Laser(waist=0.5 * mm, state=fa.H), *parts, fa.Polarizer(axis=0, name="pol"), fa.FreeSpace(0.1),
+        fa.Camera(pixel=100 * um, shape=(16, 16), name="cam"),
+    )  # fmt: skip
+    for axis in (0.1, 0.2, 0.3, 90 * deg):
+        shots, _ = asked(train.with_changes({"pol.axis": axis}))
+    assert len(read) == (3 if parts else 2)
+    assert shots.total_power < DUST * shots.sent
+    assert shots.arrived < DUST * shots.sent
+
+
+def test_a_small_picture_of_much_light_is_followed_where_polarizers_leave_little_of_it(read):
+    """The camera looks where the plate has turned the light across; most of the power is elsewhere."""
+    train = fa.Train(wavelength=633 * nm).along(
+        fa.Laser(waist=0.6 * mm, state=fa.H), fa.QPlate(q=1.5, centre=(0, 2.2 * mm)), fa.Polarizer(axis=0, name="pol"),
+        fa.Camera(pixel=20 * um, shape=(4, 4), name="cam"),
+    )  # fmt: skip
+    # Below the plate's own middle its axis stands at -135 deg: H comes out as V there, and tilted beside.
+    trains = [train.with_changes({"pol.axis": a}) for a in (1.2, 1.3, 1.4, 0.0)]
+    for one in trains:
+        asked(one)
+    assert len(read) == 3
+    assert_fresh(trains)
 
 
 @quiet
 def test_a_polarizer_before_a_stop_leaves_another_share_at_its_rim():
-    train = bench(fa.Polarizer(axis=0, name="pol"), fa.Aperture(radius=0.5 * mm, centre=(0.3 * mm, 0)))
-    assert_fresh([train.with_changes({"pol.axis": a}) for a in (0.0, 0.4, 0.8, 1.2)])
+    train = bench(fa.Polarizer(axis=0, name="pol"), fa.Aperture(radius=1.2 * mm, centre=(0.3 * mm, 0)))
+    assert_fresh([train.with_changes({"pol.axis": a}) for a in (0.0, 0.4, 0.8)], grid=None)
+
+
+def halves(retardance, axis):
+    """R comes out as it was or twisted; a quarter-wave plate and a polarizer at 90 deg or 0 pass one or the other."""
+    return fa.Train(wavelength=633 * nm).along(
+        fa.Laser(waist=0.6 * mm, state=fa.R), fa.QPlate(q=0.5, retardance=retardance), fa.FreeSpace(0.1),
+        fa.QuarterWavePlate(fast=45 * deg), fa.Polarizer(axis=axis), fa.Camera(pixel=100 * um, shape=(9, 9), name="cam"),
+    )  # fmt: skip
+
+
+def test_no_one_is_warned_of_light_that_a_polarizer_took_out():
+    trains = [halves(60 * deg, axis) for axis in (90 * deg, 90 * deg, 90 * deg, 0)]
+    assert [asked(one)[1] for one in trains] == [False, False, False, True]
+    assert_fresh(trains)
+
+
+def test_light_near_the_limits_that_a_polarizer_lets_out_is_told_of(monkeypatch):
+    monkeypatch.setattr(guard, "BAND_WARN", 6e-4)  # between all of the light, 2.4e-4, and its twisted part, 9.7e-4
+    trains = [halves(60 * deg, axis) for axis in (90 * deg, 90 * deg, 90 * deg, 0)]
+    assert [asked(one)[1] for one in trains] == [False, False, False, True]
+
+
+@quiet
+def test_light_handed_over_in_one_state_is_turned_in_it(read):
+    train = fa.Train(wavelength=633 * nm).along(
+        fa.Laser(waist=0.5 * mm, state=fa.D), fa.Aperture(radius=0.4 * mm), fa.FreeSpace(0.3),
+        fa.Wedge(x=0.2 * mrad), fa.Polarizer(axis=0, name="pol"),
+        fa.Camera(pixel=100 * um, shape=(16, 16), name="cam"),
+    )  # fmt: skip
+    trains = [train.with_changes({"pol.axis": a}) for a in (0.0, 0.4, 135 * deg)]
+    assert trains[0].plan("cam").engine == "handover"
+    for one in trains:
+        asked(one, grid=None)
+    assert len(read) == 2
+    assert_fresh(trains, grid=None)
 
 
 @quiet
@@ -250,7 +309,10 @@ def test_light_near_the_limits_of_its_samples_is_told_of_each_time():
 
 @quiet
 def test_light_refused_without_its_last_parts_is_followed(monkeypatch, read):
+    tried = []
+
     def refuse(*_):
+        tried.append(1)
         raise fa.SamplingError("a rule", got="some light", fix="a fix")
 
     train = bench()
@@ -258,7 +320,7 @@ def test_light_refused_without_its_last_parts_is_followed(monkeypatch, read):
     monkeypatch.setattr(pictures, "arrived", refuse)
     for _ in range(3):
         shots, _ = asked(train)
-    assert len(read) == 4
+    assert (len(tried), len(read)) == (1, 4)
     assert abs(shots.stokes - expected.stokes).max() <= 1e-13 * expected.stokes[0].max()
 
 
@@ -315,12 +377,19 @@ def test_two_sensors_are_remembered_as_well(read):
 
 
 @quiet
-def test_pictures_too_large_are_not_kept(read):
+def test_pictures_too_large_are_not_kept(read, monkeypatch):
+    monkeypatch.setattr(pictures, "arrived", lambda *_: pytest.fail("followed without its last parts"))
     fa.remember_light(up_to=64 * 24 * 20 * 4 * 8 // 16)
     for _ in range(3):
         asked(bench())
     assert len(read) == 3
-    assert not any(isinstance(answer, pictures.Kept) for answer, _ in LIGHT._kept.values())
+
+
+def test_what_is_kept_cannot_be_written_to():
+    for _ in range(2):
+        asked(bench())
+    (kept,) = [answer for answer, _ in LIGHT._kept.values() if isinstance(answer, pictures.Kept)]
+    assert not kept.images.flags.writeable
 
 
 @quiet
@@ -329,6 +398,17 @@ def test_a_small_picture_of_large_light_is_kept(read):
     for angle in (0.1, 0.2, 0.3, 0.4):
         asked(bench().with_changes({"late.fast": angle}), grid=fa.Grid(samples=256, window=12 * mm))
     assert len(read) == 2
+
+
+@quiet
+def test_large_light_on_its_way_to_two_sensors_goes_there_once(read):
+    fa.remember_light(up_to=16 * 64 * 64 * 16)
+    train = bench(fa.BeamSplitter(name="split")).along(
+        "split.reflected", fa.FreeSpace(0.3), fa.Camera(pixel=50 * um, shape=(16, 16), name="other")
+    )
+    for _ in range(3):
+        train.expose(["cam", "other"], [fa.H], grid=fa.Grid(samples=256, window=12 * mm))
+    assert len(read) == 6
 
 
 @quiet

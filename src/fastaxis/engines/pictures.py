@@ -34,7 +34,7 @@ Complexes = NDArray[np.complex128]
 SHAPED = {"grid", "handover", "azimuthal", "modes"}
 """Engines that work a picture out; the others know it at once."""
 
-SAID = {"steps", "group", "length", "path", "opening", "power", "engine"}
+SAID = {"steps", "group", "path", "opening", "power", "engine"}
 """Of a branch: what is looked at apart, scales the light, or is only said about it."""
 
 MET, UNFIT = "met", "unfit"  # asked for once; not to be kept
@@ -106,7 +106,7 @@ class Kept:
         most = float(np.linalg.norm(matrix, 2)) ** 2  # of the power of any light
         if _even(matrix):
             power = None if self.power is None else self.power * float(mueller[0, 0])
-        elif self.totals is None or self.told:
+        elif self.totals is None:
             return None
         else:
             power = float(mueller[0] @ self.totals)
@@ -192,7 +192,7 @@ class _Group:
 
     def worth(self, *, alone: bool) -> bool:
         """Whether following this light takes longer than remembering it, and pictures tell all of it."""
-        if self.power == 0 or not set(self.engines) & SHAPED:
+        if not set(self.engines) & SHAPED:
             return False
         # The azimuthal engine does not know the state of what is left outside of the circle it looks at.
         if self.engines == ["azimuthal"] and not _even(np.array(self.late.matrix)):
@@ -202,15 +202,10 @@ class _Group:
     @property
     def key(self) -> bytes | None:
         """What the picture depends on; None if that is not all data."""
-        alone = len(self.branches) == 1
         values: list[Any] = [self.raster, self.engines]
         for branch in self.branches:
             values += [getattr(branch, field.name) for field in fields(branch) if field.name not in SAID]
-            values += [
-                branch.power / self.power,
-                None if alone else branch.length,
-                *(step.law for step in branch.steps),
-            ]
+            values += [step.law for step in branch.steps]
         return content_of("picture", *values)
 
     def kept(self, key: bytes) -> Kept | None:
