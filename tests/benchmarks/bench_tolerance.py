@@ -10,8 +10,10 @@ from __future__ import annotations
 
 import os
 import platform
+import runpy
 import sys
 import time
+from pathlib import Path
 
 import numpy as np
 
@@ -19,6 +21,7 @@ import fastaxis as fa
 from fastaxis.studies.tolerance import measured, normal, power_at, ring_radius, uniform
 from fastaxis.units import deg, mm, mW, nm, um
 
+EXAMPLE = Path(__file__).parents[2] / "train_examples" / "teasel_bank_twelve_knobs.py"
 FEW = 12
 PLATES = (
     "hwp.fast", "hwp.retardance", "q1.fast", "q1.retardance", "qp.offset", "qp.retardance", "h2.fast", "q2.fast",
@@ -27,18 +30,8 @@ PLATES = (
 
 
 def shaped():
-    """A radial beam through an iris, plates and a polarizer onto a camera."""
-    return fa.Train(wavelength=532 * nm, name="Cinder Lane").along(
-        fa.Laser(waist=0.8 * mm, power=5 * mW, state=fa.H, name="laser"),
-        fa.HalfWavePlate(fast=10 * deg, name="hwp"),
-        fa.QuarterWavePlate(fast=20 * deg, name="q1"),
-        fa.QPlate(q=0.5, offset=4 * deg, retardance=170 * deg, name="qp"),
-        fa.HalfWavePlate(fast=3 * deg, name="h2"),
-        fa.QuarterWavePlate(fast=40 * deg, name="q2"),
-        fa.Polarizer(axis=0 * deg, extinction=1e3, name="pol"),
-        fa.FreeSpace(300 * mm, name="space"),
-        fa.Camera(pixel=60 * um, shape=(32, 32), name="cam"),
-    )
+    """Plates, a q-plate and a polarizer in front of a camera."""
+    return runpy.run_path(str(EXAMPLE))["train"]
 
 
 def polarimeter():

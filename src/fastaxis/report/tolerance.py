@@ -124,6 +124,7 @@ def _histogram(axes: Axes, study: Study, name: str) -> None:
         axes.axvline(limit * factor, color=RIGHT, lw=1.2)
     axes.set_xlabel(f"{name} [{unit}]" if unit else name)
     axes.set_ylabel("draws")
+    axes.locator_params(axis="x", nbins=5)  # numbers that differ in their fifth digit are long
     legend = "black: as declared; dashed: 5 % and 95 %" + ("; rust: limits" if limits else "")
     axes.set_title(legend, size=6.5, color=SOFT, loc="left")
 
