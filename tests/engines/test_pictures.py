@@ -15,6 +15,7 @@ from fastaxis.engines import pictures
 from fastaxis.engines.azimuthal.plane import AzimuthalField
 from fastaxis.engines.grid import FarField, GridField, guard
 from fastaxis.engines.joined import JoinedField
+from fastaxis.engines.kept_picture import Kept
 from fastaxis.engines.memory import LIGHT, UP_TO, forget_light
 from fastaxis.units import deg, mm, mrad, ms, mW, nm, um
 
@@ -388,7 +389,7 @@ def test_pictures_too_large_are_not_kept(read, monkeypatch):
 def test_what_is_kept_cannot_be_written_to():
     for _ in range(2):
         asked(bench())
-    (kept,) = [answer for answer, _ in LIGHT._kept.values() if isinstance(answer, pictures.Kept)]
+    (kept,) = [answer for answer, _ in LIGHT._kept.values() if isinstance(answer, Kept)]
     assert not kept.images.flags.writeable
 
 
