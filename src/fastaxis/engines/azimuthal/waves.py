@@ -20,6 +20,9 @@ from fastaxis.engines.azimuthal.table import Table
 __all__ = ["Part", "Wave", "parts_of", "pictures", "waves_of", "weights_of"]
 
 
+NOTHING = 1e-300  # [m]: on the axis there is no angle
+
+
 class Part(NamedTuple):
     """One term a g_j(r) exp(i l phi) of the field of a hand."""
 
@@ -93,7 +96,7 @@ def pictures(table: Table, waves: Sequence[Wave], places: Complexes) -> Reals:
     """The pictures at places x + i y [m], shape (waves, *places.shape)."""
     r: Reals = np.abs(places)
     shapes = table.shapes(r)
-    unit = places / np.where(r == 0, 1, r)
+    unit = places * (1 / np.maximum(r, NOTHING))
     powers = [np.ones_like(unit)]
     for _ in range(max((wave.turns for wave in waves), default=0)):
         powers.append(powers[-1] * unit)
