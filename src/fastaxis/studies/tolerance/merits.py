@@ -14,6 +14,7 @@ from fastaxis.analysis.lobes import lobes
 from fastaxis.analysis.widths import ring_radius as ring_of
 from fastaxis.camera.settings import as_setting, no_analyzer, weight_matrix
 from fastaxis.errors import ParameterError
+from fastaxis.studies.tolerance.coarse import coarse
 
 __all__ = [
     "Merit", "PictureMerit", "StokesMerit", "azimuth_error", "ellipticity_error", "extinction_ratio",
@@ -213,6 +214,7 @@ class PictureMerit:
         if self.reading == "ring radius":
             return ring_of(frame, x=x, y=y, centre=self.centre)
         if self.reading == "lobe angle":
+            frame, x, y = coarse(frame, x, y)
             found = lobes(frame, x=x, y=y, centre=self.centre)
             spacing = 2 * math.pi / max(self.count, 1)
             return (found.angle + spacing / 2) % spacing - spacing / 2 if found.count == self.count else math.nan
