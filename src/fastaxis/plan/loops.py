@@ -84,8 +84,15 @@ class Loops:
     def loops(self, without: Node | None = None) -> bool:
         """Whether light goes round, also if it does not go on from a place."""
         left = self.inside - {without}
-        while free := {node for node in left if left.isdisjoint(self._before(node))}:
-            left -= free
+        before = {node: len(left.intersection(self._before(node))) for node in left}
+        free = [node for node, count in before.items() if not count]
+        while free:
+            node = free.pop()
+            left.remove(node)
+            for ahead in left.intersection(self.graph.successors(node)):
+                before[ahead] -= 1
+                if not before[ahead]:
+                    free.append(ahead)
         return bool(left)
 
     def ways(self, start: Node, place: Node) -> Ways | None:

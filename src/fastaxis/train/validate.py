@@ -54,7 +54,8 @@ def _upstream(graph: Any, node: Node) -> set[str]:
 
 def _dark_parts(elements: Elements, graph: Any, lit: set[Node]) -> Iterator[WiringWarning]:
     """One warning for each camera or detector without light, and one for each other stretch without light."""
-    dark = [name for name in elements if not any(node[0] == name for node in lit)]
+    reached = {name for name, *_ in lit}
+    dark = [name for name in elements if name not in reached]
     told: set[str] = set()
     for name in sorted(dark, key=lambda n: not _is_detecting(elements[n])):
         if name in told or is_source(elements[name]):
