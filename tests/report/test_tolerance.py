@@ -52,6 +52,18 @@ def test_what_could_not_be_read_is_said(found):
     assert any(re.fullmatch(r"(\d+) of \1 draws could not be read", words) for words in said)
 
 
+def test_a_bar_alone_is_a_bar_and_stands_at_the_top():
+    train = fa.Train(wavelength=633 * nm, name="Saltpan").along(
+        fa.Laser(waist=0.4 * mm, power=1e-3, state=fa.H, name="laser"), fa.Polarizer(axis=45 * deg, name="pol")
+    )
+    study = train.tolerance({"pol.axis": normal(1 * deg)}, {"through": power_at("pol")}, draws=20)
+    (bars,) = [axes for page in draw_tolerance(study) for axes in page.axes if axes.get_xlabel().startswith("share")]
+    (bar,) = bars.patches
+    low, high = bars.get_ylim()
+    assert bar.get_height() < 0.2 * (high - low)
+    assert bar.get_y() > (low + high) / 2
+
+
 def test_a_figure_of_merit_that_no_error_touches_is_said_to_stay():
     train = fa.Train(wavelength=633 * nm, name="Saltpan").along(
         fa.Laser(waist=0.4 * mm, power=1e-3, state=fa.H, name="laser"), fa.HalfWavePlate(fast=0 * deg, name="hwp")

@@ -16,6 +16,7 @@ from fastaxis.report.style import INK, LEFT, RIGHT, SOFT, light_map, rules
 
 __all__ = ["draw_tolerance"]
 
+FEWEST = 5  # bars that there is room for; one alone would be as high as the plot
 BARS = 10  # contributions shown; of more, the rest is one bar
 HIGH = 2.1  # [inch] of a row of plots
 ROUNDINGS = (
@@ -102,6 +103,7 @@ def _bars(axes: Axes, ranking: Any) -> None:
     for place, share in enumerate(shares):
         axes.text(share, place, f" {share:.1f}", va="center", size=6)
     axes.set_xlim(0, 1.18 * max(*shares, 1e-9))
+    axes.set_ylim(len(shown) - max(len(shown), FEWEST) - 0.5, len(shown) - 0.5)
     axes.set_xlabel("share of the variance [%]")
     for side in ("top", "right"):
         axes.spines[side].set_visible(False)
