@@ -47,6 +47,12 @@ class Wave(NamedTuple):
         odd = -1 if self.turns % 2 else 1
         return (-odd, -1) if self.sine else (odd, 1)
 
+    @property
+    def swapped(self) -> tuple[Wave, int]:
+        """The picture whose value at x and y, times a sign, this one has where both change places: at pi/2 - phi."""
+        sign = (1, 1, -1, -1)[(self.turns + self.sine * (2 if self.turns % 2 == 0 else 0)) % 4]
+        return self._replace(sine=self.sine != bool(self.turns % 2)), sign
+
 
 def parts_of(table: Table, orders: Sequence[tuple[int, int]]) -> list[Part]:
     """The field, term by term."""
