@@ -8,8 +8,10 @@ from collections import deque
 import numpy as np
 import pytest
 
+import fastaxis as fa
 from fastaxis import recycled
-from fastaxis.recycled import PAGE, SMALLEST, empty, scratch
+from fastaxis.engines.memory import UP_TO
+from fastaxis.recycled import PAGE, SMALLEST, empty, keep, scratch
 
 offered = pytest.mark.skipif(recycled.OFFERED is None, reason="this system takes memory back at once")
 BIG = (2 * SMALLEST // 8,)
@@ -70,7 +72,7 @@ def test_few_frames_never_hold_the_memory_of_many():
 
 @offered
 def test_no_more_than_so_much_is_kept(monkeypatch):
-    monkeypatch.setattr(recycled, "KEPT", 5 * SMALLEST)
+    monkeypatch.setattr(recycled, "_kept", 5 * SMALLEST)
     arrays = [empty(BIG) for _ in range(4)]
     places = [place(array) for array in arrays]
     while arrays:
@@ -125,3 +127,26 @@ def test_advice_the_system_does_not_know_is_no_error(monkeypatch):
     array[:] = 1
     del array
     assert not recycled._free
+
+
+@offered
+def test_who_wants_nothing_remembered_gets_all_memory_back():
+    array = empty(BIG)
+    del array
+    try:
+        fa.remember_light(up_to=0)
+        assert not recycled._free
+        array = empty(BIG)
+        del array
+        assert not recycled._free
+    finally:
+        fa.remember_light(up_to=UP_TO)
+    assert recycled._kept == recycled.KEPT
+
+
+def test_so_much_is_held_and_no_more(monkeypatch):
+    monkeypatch.setattr(recycled, "_kept", recycled.KEPT)
+    arrays = [empty(BIG) for _ in range(3)]
+    arrays.clear()
+    keep(4 * SMALLEST)
+    assert len(recycled._free) == (2 if recycled.OFFERED else 0)

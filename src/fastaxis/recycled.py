@@ -16,17 +16,18 @@ from typing import Any
 import numpy as np
 from numpy.typing import DTypeLike, NDArray
 
-__all__ = ["empty", "scratch"]
+__all__ = ["empty", "keep", "scratch"]
 
 PAGE = 1 << 21  # bytes of the system's large pages
 SMALLEST = 2 * PAGE  # below this much numpy's own memory is as fast
-KEPT = 1 << 30  # bytes offered back, in all
+KEPT = 1 << 30  # bytes offered back in all, if not set otherwise
 SCRATCH = 1 << 26  # bytes of a plane between two steps that are worth keeping for the next question
 
 # Only where the system can be offered memory without losing it at once.
 OFFERED = getattr(mmap, "MADV_FREE", None)
 
 _free: deque[mmap.mmap] = deque()
+_kept = KEPT
 
 
 class _Held:
@@ -70,6 +71,13 @@ def scratch(shape: tuple[int, ...], dtype: DTypeLike = float) -> NDArray[Any]:
     return np.empty(shape, dtype=dtype) if size > SCRATCH else empty(shape, dtype)
 
 
+def keep(up_to: int) -> None:
+    """Hold so many bytes that nobody needs, at most; all others go for good."""
+    global _kept  # noqa: PLW0603 - one setting of the process, as its memory is one
+    _kept = up_to
+    _let_go()
+
+
 def _taken(size: int) -> mmap.mmap:
     """Memory of exactly this size, so that few frames never hold the memory of many."""
     for _ in range(len(_free)):
@@ -88,14 +96,20 @@ def _taken(size: int) -> mmap.mmap:
 
 
 def _give_back(memory: mmap.mmap) -> None:
-    """Offer memory to the system; what was longest unused goes for good beyond ``KEPT``.
+    """Offer memory to the system, unless it is too much to be kept.
 
     Called wherever the last array goes, in any thread and amid any work: a deque needs no lock. Where the system does
     not take the offer the memory goes at once.
     """
-    with suppress(OSError, IndexError):
-        if OFFERED is not None and len(memory) <= KEPT:
+    if OFFERED is not None and len(memory) <= _kept:
+        with suppress(OSError):
             memory.madvise(OFFERED)
             _free.append(memory)
-        while sum(map(len, list(_free))) > KEPT:
+    _let_go()
+
+
+def _let_go() -> None:
+    """What was longest unused goes for good."""
+    with suppress(IndexError):  # another thread was faster
+        while sum(map(len, list(_free))) > _kept:
             _free.popleft()

@@ -8,12 +8,16 @@ from collections import OrderedDict
 from collections.abc import Hashable
 from typing import Any
 
+from fastaxis import recycled
 from fastaxis.errors import ParameterError
 
 __all__ = ["LIGHT", "Memory", "forget_light", "remember_light"]
 
 UP_TO = 256 << 20
 """Bytes kept in all, if not set otherwise."""
+
+FRAMES = recycled.KEPT // UP_TO
+"""Memory of frames nobody holds, over that of light kept: frames of many settings are far larger than the light."""
 
 MEMORIES: list[Memory] = []
 
@@ -128,7 +132,8 @@ def remember_light(up_to: int) -> None:
     Parameters
     ----------
     up_to : bytes in all, 256 MiB if never set; light or a picture of more than some fifth of it is not kept. 0 keeps
-        none.
+        none. Memory of frames that nobody holds any more is used again for the next ones, up to four times as much; the
+        system may take it meanwhile.
 
     Raises
     ------
@@ -148,3 +153,4 @@ def remember_light(up_to: int) -> None:
         )
     for memory in MEMORIES:
         memory.share_in(up_to)
+    recycled.keep(FRAMES * up_to)
