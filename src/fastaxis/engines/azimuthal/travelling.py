@@ -9,6 +9,7 @@ from functools import cached_property
 import numpy as np
 
 from fastaxis.engines.azimuthal.collins import Collins
+from fastaxis.engines.azimuthal.foreseeing import INSIDE, Waist, foreseen, waist_behind
 from fastaxis.engines.azimuthal.harmonics import LEFT, STRAIGHT, Harmonics
 from fastaxis.engines.azimuthal.nearby import Nearby, suits
 from fastaxis.engines.azimuthal.panels import Profile, Reals
@@ -24,10 +25,6 @@ ROUNDING = 4 * np.finfo(float).eps
 
 MOST_LOOKED_AT = 256
 LOOKED_AT = (np.arange(6) + 0.5) / 6  # shares of a length
-INSIDE = 1 - math.exp(-2)  # share of the power inside of the 1/e^2 radius
-
-CARRIED = 16.0  # phase [rad] of a panel of 32 nodes with an envelope of its own: 2.5 fringes, less what that takes
-RIM = 1e-12  # of the peak: where a field ends in the dark
 
 TAPER = 0.7
 NEGLIGIBLE = 1e-12
@@ -66,33 +63,7 @@ class _Arrival:
         return self.rest + share_of_error(self.section, self.profile)
 
 
-@dataclass(frozen=True)
-class _Waist:
-    """A Gaussian beam about as wide as the light, behind the section: where to look and on which front.
-
-    Parameters
-    ----------
-    radius : that holds 86 % of the power [m].
-    reach : where it gets as dark as the light before the section is at its end [m].
-    curvature : of its front [1/m].
-    """
-
-    radius: float
-    reach: float
-    curvature: float
-
-
-def _waist_behind(field: Harmonics) -> _Waist:
-    flat, k = TravelLaw.lens(-field.curvature).then(field.section), field.wavenumber
-    inside = _radius(field.profile)
-    spread = (1 + max(abs(l) for l in field.charges)) * 2 / (k * inside)
-    radius = math.hypot(flat.a * inside, flat.b * spread)
-    # Re 1/q behind the section, for a flat waist in front of it.
-    curvature = (flat.a * flat.c * inside**2 + flat.b * flat.d * spread**2) / radius**2
-    return _Waist(radius, radius * field.profile.end / inside, curvature)
-
-
-def _section(field: Harmonics, waist: _Waist, settings: Settings, end: float | None) -> Collins | Nearby:
+def _section(field: Harmonics, waist: Waist, settings: Settings, end: float | None) -> Collins | Nearby:
     """The integral, relative to the front on which the light out to a radius [m] has the fewest fringes.
 
     The beam has its own. A singular axis and rims send out a tail whose front is that of a wave from the axis, d/b;
@@ -106,13 +77,6 @@ def _section(field: Harmonics, waist: _Waist, settings: Settings, end: float | N
         if abs(section((1 - 0.03 * LOOKED_AT) * end)).max() > settings.settled * peak:
             return section
     return section_for(field, waist.curvature, settings)
-
-
-def _radius(profile: Profile) -> float:
-    """Radius [m] that holds 86 % of the power: the 1/e^2 radius of a Gaussian beam."""
-    density = (abs(profile.flat()) ** 2).sum(axis=0) * profile.weights * profile.nodes
-    share = np.cumsum(density) / density.sum()
-    return float(profile.nodes[np.searchsorted(share, INSIDE)])
 
 
 def section_for(field: Harmonics, curvature: float, settings: Settings) -> Collins | Nearby:
@@ -166,13 +130,13 @@ def arrived(field: Harmonics, settings: Settings, *, start: float = 0.0, end: fl
 
 
 def _travelled(field: Harmonics, settings: Settings, start: float, end: float | None) -> _Arrival:
-    waist = _waist_behind(field)
+    waist = waist_behind(field)
     section = _section(field, waist, settings, end)
     if end is None:
         edges = _first_edges(start, max(4 * waist.radius, 2 * start))
         profile, rest, cut = extended(section, edges, settings)
     else:
-        edges = _first_edges(start, end) if start else _foreseen(field, waist, section.behind, end, settings.most)
+        edges = _first_edges(start, end) if start else foreseen(field, waist, section.behind, end, settings.most)
         profile, rest = resolved(section, edges, settings)
         cut = False
     taper = Taper(TAPER * profile.end, profile.end) if cut else None
@@ -185,31 +149,6 @@ def _balanced(before: Harmonics, behind: Harmonics) -> Harmonics:
         return behind
     missing = [max(b - a, 0.0) + c for b, a, c in zip(before.powers, behind.powers, before.beyond, strict=True)]
     return replace(behind, beyond=(missing[0], missing[1]))
-
-
-def _foreseen(field: Harmonics, waist: _Waist, curvature: float, end: float, most: int) -> Reals:
-    """Panels with about as many fringes each as they carry, so that few have to be halved.
-
-    On a front of its own a beam takes some panels for each charge that widens it. With the wave from a singular axis it
-    has fringes, whichever of both fronts it is on; and a lit rim sends out waves of k rim/b. Beyond the beam the tail
-    is smooth in log r.
-    """
-    flat = TravelLaw.lens(-field.curvature).then(field.section)
-    core = abs(field.profile(np.zeros(1))[np.array(field.charges) != 0]).max(initial=0.0)
-    other = flat.d / flat.b if core > RIM * field.profile.peak else curvature
-    rim = abs(field.profile.values[:, -1, -4:]).max() > RIM * field.profile.peak
-    near = end if rim else min(end, waist.reach)
-    bend = field.wavenumber * abs(other - waist.curvature) / 2
-    slope = 1.7 * CARRIED * (1 + max(abs(l) for l in field.charges)) / waist.reach
-    if rim:
-        slope = max(slope, field.wavenumber * field.profile.end / abs(flat.b))
-    whole = near * (slope + bend * near)
-    phase = np.linspace(0, whole, min(max(2, math.ceil(whole / CARRIED)), most) + 1)
-    inner = 2 * phase / (slope + np.sqrt(slope**2 + 4 * bend * phase))
-    inner[-1] = near
-    outer = near * (end / near) ** np.linspace(0, 1, max(1, math.ceil(math.log2(end / near))) + 1)
-    outer[-1] = end
-    return inner if near == end else np.concatenate([inner, outer[1:]])
 
 
 def _first_edges(start: float, end: float) -> Reals:

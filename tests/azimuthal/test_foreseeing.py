@@ -1,0 +1,37 @@
+"""What is foreseen of the light behind a section."""
+
+import numpy as np
+import pytest
+
+from fastaxis.elements import FreeSpace, QPlate
+from fastaxis.engines.azimuthal.foreseeing import foreseen, waist_behind
+from fastaxis.light import Gaussian, L
+from fastaxis.units import mm, nm
+
+W = 0.4 * mm
+
+
+@pytest.fixture
+def light(arrive):
+    """A ring of charge 1 with a section still to go."""
+    return arrive(Gaussian(waist=W), QPlate(q=0.5), FreeSpace(0.7), state=L).harmonics
+
+
+def test_the_waist_is_that_of_a_beam_that_spreads_twice_for_a_charge_of_one(light):
+    waist = waist_behind(light)
+    # The radius is that of the first node by which the share is reached: of 64, a few per cent.
+    assert waist.radius == pytest.approx(np.hypot(W, 2 * 0.7 * 632.8 * nm / np.pi / W), rel=0.05)
+    assert waist.reach > waist.radius
+
+
+@pytest.mark.parametrize("share", [0.3, 1.0, 4.0])
+def test_panels_end_where_the_light_is_asked_for(light, share):
+    waist = waist_behind(light)
+    edges = foreseen(light, waist, waist.curvature, share * waist.reach, 640)
+    assert (edges[0], edges[-1]) == (0.0, share * waist.reach)
+    assert (np.diff(edges) > 0).all()
+
+
+def test_no_more_panels_than_allowed(light):
+    waist = waist_behind(light)
+    assert len(foreseen(light, waist, waist.curvature, 0.9 * waist.reach, 3)) == 4
