@@ -3,6 +3,9 @@
 import gc
 import mmap
 import pickle
+import platform
+import subprocess
+import sys
 from collections import deque
 
 import numpy as np
@@ -150,3 +153,25 @@ def test_so_much_is_held_and_no_more(monkeypatch):
     arrays.clear()
     keep(4 * SMALLEST)
     assert len(recycled._free) == (2 if recycled.OFFERED else 0)
+
+
+COUNTED = """
+import resource
+import numpy as np
+import fastaxis.recycled
+def faults():
+    before = resource.getrusage(resource.RUSAGE_SELF).ru_minflt
+    for _ in range(20):
+        held = [np.ones(1 << 16) for _ in range(8)]
+        del held
+    return resource.getrusage(resource.RUSAGE_SELF).ru_minflt - before
+faults()
+print(faults())
+"""
+
+
+@pytest.mark.skipif(platform.libc_ver()[0] != "glibc", reason="of the GNU C library")
+def test_arrays_of_half_a_megabyte_take_no_new_pages():
+    count = int(subprocess.run([sys.executable, "-c", COUNTED], check=True, capture_output=True, text=True).stdout)
+    # 160 arrays of 128 pages each, if they were new; some that other work needs may be.
+    assert count < 1000

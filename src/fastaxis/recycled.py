@@ -23,6 +23,13 @@ SMALLEST = 2 * PAGE  # below this much numpy's own memory is as fast
 KEPT = 1 << 30  # bytes offered back in all, if not set otherwise
 SCRATCH = 1 << 26  # bytes of a plane between two steps that are worth keeping for the next question
 
+SMALL = 1 << 22  # bytes of arrays that engines take and give back all the time
+
+# The GNU C library gets memory beyond 128 kB from the system and gives it back at once, so that half of the time goes
+# into clearing pages, until a larger stretch has been given back: from then on it keeps what is smaller (mallopt(3),
+# M_MMAP_THRESHOLD). Large planes no longer come from it, so one is asked for and let go here. It is never written to.
+np.empty(SMALL, dtype=np.uint8)
+
 # Only where the system can be offered memory without losing it at once.
 OFFERED = getattr(mmap, "MADV_FREE", None)
 
