@@ -66,7 +66,9 @@ def _parted(steps: Steps) -> tuple[Steps, Steps]:
 def _from(sampling: Sampling, end: int, kept: int) -> Sampling:
     """The samples from behind step ``end`` on; what is left of the steps before acts there."""
     here, *rest = sampling.planes[end:]
-    return replace(sampling, planes=(replace(here, hop=None), *[replace(here, hop=None)] * kept, *rest))
+    single = [plane for plane in sampling.planes[: end + 1] if plane.hop and plane.hop.kernel == "single"]
+    turned = len(single) % 2 == 1
+    return replace(sampling, turned=turned, planes=(replace(here, hop=None), *[replace(here, hop=None)] * kept, *rest))
 
 
 def carried(term: Term, section: TravelLaw, wavelength: float) -> Term:

@@ -103,6 +103,8 @@ class Sampling:
     taper : whether a plane wave fades out smoothly at the window's edge, where an open stop does not bound it.
     chosen : "automatic" or "by hand".
     precision : "double", or "single" for half the memory and six digits.
+    turned : whether an odd number of single transforms lies between the source and where samples begin: windows there
+        grow as the pitch at the source shrinks.
     """
 
     grid: Grid
@@ -110,6 +112,7 @@ class Sampling:
     taper: bool = False
     chosen: str = "automatic"
     precision: str = "double"
+    turned: bool = False
 
     @property
     def worst(self) -> Plane:

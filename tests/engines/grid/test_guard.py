@@ -5,11 +5,13 @@ import pytest
 
 import fastaxis as fa
 from fastaxis.engines.grid.guard import check, edge_watched, phase_step, rim_of, rim_share, steps_of
-from fastaxis.engines.grid.light import GridLight, axis
+from fastaxis.engines.grid.light import GridLight, Rims, axis
 from fastaxis.errors import SamplingError, SamplingWarning
 from fastaxis.plan import Grid
+from fastaxis.plan.sampling import Sampling
 
 GRID = Grid(256, 25.6e-3)
+AUTOMATIC, BY_HAND = Sampling(GRID, ()), Sampling(GRID, (), chosen="by hand")
 
 
 def light(width, curvature=0.0, count=256, pitch=0.1e-3, **options):
@@ -26,7 +28,7 @@ def test_edge_power_is_the_share_in_the_outer_sixteenth():
 
 
 def test_the_largest_edge_power_on_the_way_is_kept():
-    assert edge_watched(light(1e-3, edge_power=0.1)).edge_power == 0.1
+    assert edge_watched(light(1e-3, rims=Rims(edge=0.1))).edge_power == 0.1
 
 
 def test_a_plane_wave_that_fills_the_window_is_exempt():
@@ -56,14 +58,14 @@ def test_both_figures_are_known_before_the_last_transform():
 
 
 def test_good_light_passes_silently():
-    assert check(light(1e-3), 0.1, ("cam",), GRID).edge_power == 0
+    assert check(light(1e-3), 0.1, ("cam",), AUTOMATIC).edge_power == 0
 
 
 def test_light_near_the_edge_is_warned_about_and_then_refused():
     with pytest.warns(SamplingWarning, match=r"lens: 5.00% of the power near the edge"):
-        check(light(1e-3, edge_power=0.05), 0.1, ("lens",), GRID)
+        check(light(1e-3, rims=Rims(edge=0.05)), 0.1, ("lens",), AUTOMATIC)
     with pytest.raises(SamplingError, match=r"30.00% cut off by the band limit.*samples=512, window=0.0512"):
-        check(light(1e-3, discarded=0.3), 0.1, ("lens",), GRID)
+        check(light(1e-3, rims=Rims(cut=0.3)), 0.1, ("lens",), AUTOMATIC)
 
 
 def test_a_grid_set_by_hand_is_told_when_it_is_coarse():
@@ -77,6 +79,6 @@ def test_a_grid_set_by_hand_is_told_when_it_is_coarse():
 
 
 def test_light_near_the_edge_is_said_earlier_where_the_grid_was_set_by_hand():
-    assert check(light(1e-3, edge_power=1e-3), 0.1, ("lens",), GRID).edge_power == 1e-3
+    assert check(light(1e-3, rims=Rims(edge=1e-3)), 0.1, ("lens",), AUTOMATIC).edge_power == 1e-3
     with pytest.warns(SamplingWarning, match="0.10% of the power near the edge"):
-        check(light(1e-3, edge_power=1e-3), 0.1, ("lens",), GRID, by_hand=True)
+        check(light(1e-3, rims=Rims(edge=1e-3)), 0.1, ("lens",), BY_HAND)

@@ -33,7 +33,8 @@ def run(branch: Branch) -> GridField | FarField:
 
 def begun(branch: Branch) -> GridLight:
     """The light of a branch at its source."""
-    return start(branch, cast("Sampling", branch.sampling))
+    sampling = cast("Sampling", branch.sampling)
+    return replace(start(branch, sampling), turned=sampling.turned)
 
 
 def continued(light: GridLight, branch: Branch, first: int, end: int) -> GridLight:
@@ -67,11 +68,10 @@ def _visits(laws: list[StepLaw], first: int) -> Iterator[tuple[int, StepLaw, Jon
 def finished(light: GridLight, branch: Branch) -> GridField | FarField:
     """Light at the target of a branch, looked over."""
     names, sampling = branch.steps[-1].names if branch.steps else (), cast("Sampling", branch.sampling)
-    by_hand = sampling.chosen == "by hand"
     if light.ahead:
-        return arriving(light, names, sampling.grid, by_hand=by_hand)
+        return arriving(light, names, sampling)
     light = light.filled_up()
-    return GridField(light, check(light, phase_step(light), names, sampling.grid, by_hand=by_hand), sampling.grid)
+    return GridField(light, check(light, phase_step(light), names, sampling), sampling.grid)
 
 
 def _past(light: GridLight, law: StepLaw, hop: Hop | None, after: JonesStep | None, *, last: bool) -> GridLight:

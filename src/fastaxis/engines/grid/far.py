@@ -22,6 +22,7 @@ from fastaxis.engines.grid.waves import Waves
 from fastaxis.laws import TravelLaw
 from fastaxis.light import Raster
 from fastaxis.plan import Grid
+from fastaxis.plan.sampling import Sampling
 
 __all__ = ["FarField", "arriving"]
 
@@ -178,19 +179,22 @@ class FarField:
         return Collected(samples, self.near.jones, 1, rows.blocks, columns.blocks)
 
 
-def arriving(near: GridLight, names: tuple[str, ...], grid: Grid, *, by_hand: bool) -> FarField:
+def arriving(near: GridLight, names: tuple[str, ...], sampling: Sampling) -> FarField:
     """Light that has a single transform ahead, looked over at its target.
 
     Warns
     -----
     SamplingWarning, and raises SamplingError, where the light comes close to the limits of its samples.
     """
-    unseen = FarField(near, Guard(0.0, 0.0, 0.0), grid)
+    unseen = FarField(near, Guard(0.0, 0.0, 0.0), sampling.grid)
     here = unseen.marginals if near.full == near.count else ()  # else there are dark samples all round
-    rims = () if near.periodic else [rim_of(*lines) for lines in (here, unseen.waves.profiles(LINES)) if lines]
-    seen = replace(near, edge_power=max(near.edge_power, *rims, 0.0))
-    guard = check(seen, steps_of(*unseen.marginals, near.full), names, grid, by_hand=by_hand)
-    done = FarField(seen, guard, grid)
+    seen = near
+    if not near.periodic:
+        seen = seen.met(edge=rim_of(*here)) if here else seen
+        there = replace(seen, turned=not near.turned).met(edge=rim_of(*unseen.waves.profiles(LINES)))
+        seen = replace(there, turned=near.turned)
+    guard = check(seen, steps_of(*unseen.marginals, near.full), names, sampling)
+    done = FarField(seen, guard, sampling.grid)
     # What looking it over has found is not worked out again.
     vars(done).update({name: vars(unseen)[name] for name in ("marginals", "waves")})
     return done

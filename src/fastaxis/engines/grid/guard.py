@@ -3,7 +3,6 @@
 from __future__ import annotations
 
 import math
-from dataclasses import replace
 from typing import Any
 
 import numpy as np
@@ -11,12 +10,13 @@ from numpy.typing import NDArray
 
 from fastaxis.engines.field import Guard
 from fastaxis.engines.grid.edges import beyond_share
-from fastaxis.engines.grid.light import GridLight, Samples
+from fastaxis.engines.grid.light import GridLight, Rims, Samples
 from fastaxis.engines.grid.workers import strips
 from fastaxis.errors import SamplingError, SamplingWarning, caution
 from fastaxis.plan import Grid
+from fastaxis.plan.sampling import Sampling
 
-__all__ = ["LINES", "check", "edge_watched", "phase_step", "rim_of", "rim_share", "steps_of"]
+__all__ = ["LINES", "check", "edge_watched", "limits", "phase_step", "rim_of", "rim_share", "steps_of"]
 
 Reals = NDArray[np.float64]
 
@@ -37,7 +37,7 @@ def edge_watched(light: GridLight) -> GridLight:
     """The light with the power near the edge of its window noted, if that is the most so far."""
     if light.periodic:
         return light
-    return replace(light, edge_power=max(light.edge_power, rim_share(light.samples)))
+    return light.met(edge=rim_share(light.samples))
 
 
 def rim_share(samples: Samples) -> float:
@@ -114,16 +114,22 @@ def steps_of(down: Reals, across: Reals, room: int) -> float:
     return float(steps[order[np.searchsorted(below, QUIET * below[-1])]]) if below[-1] else 0.0
 
 
-def check(light: GridLight, step: float, names: tuple[str, ...], grid: Grid, *, by_hand: bool = False) -> Guard:
+def limits(sampling: Sampling) -> tuple[float, float]:
+    """Shares of the power that are told of: near the edge of a window or cut off, and near the edge of a band.
+
+    The automatic grid keeps its own distance from both, and is looked at only for what no plan can foresee.
+    """
+    return (EDGE_WARN, BAND_WARN) if sampling.chosen == "by hand" else (WARN, math.inf)
+
+
+def check(light: GridLight, step: float, names: tuple[str, ...], sampling: Sampling) -> Guard:
     """The guard of finished light; warned about or refused where it is bad.
 
     Parameters
     ----------
     step : its steepest phase step [rad].
     names : parts of the last step.
-    grid : the samples at the source; twice as wide or twice as fine is the remedy named.
-    by_hand : whether the grid was set by hand. The automatic one keeps its own distance from the edges of window and
-        band, and is looked at only for what no plan can foresee.
+    sampling : its samples; at the source twice as wide or twice as fine is the remedy named.
 
     Warns
     -----
@@ -134,24 +140,39 @@ def check(light: GridLight, step: float, names: tuple[str, ...], grid: Grid, *, 
     ------
     SamplingError : more than 20 % near the edge of the window or cut off.
     """
-    worst = max(light.edge_power, light.discarded)
-    coarse = by_hand and light.band_power > BAND_WARN
-    if worst > (EDGE_WARN if by_hand else WARN) or coarse:
-        message = _message(light, names, grid, coarse=coarse)
+    worst, (edge, band) = max(light.edge_power, light.discarded), limits(sampling)
+    if worst > edge or light.band_power > band:
+        message = _message(light, names, sampling.grid, band)
         if worst > REFUSE:
             raise SamplingError(**message)
         caution(SamplingWarning(**message))
     return Guard(light.edge_power, step, light.discarded + beyond_share(light))
 
 
-def _message(light: GridLight, names: tuple[str, ...], grid: Grid, *, coarse: bool) -> dict[str, Any]:
-    where, wide = " ".join(names) or "source", max(light.edge_power, light.discarded) > EDGE_WARN
-    samples, window = grid.samples * 2 ** (coarse + wide), grid.window * 2**wide
+def _message(light: GridLight, names: tuple[str, ...], grid: Grid, band: float) -> dict[str, Any]:
     got = f"{light.edge_power:.2%} of the power near the edge of the window, {light.discarded:.2%} cut off by the band"
-    if coarse:
+    if light.band_power > band:
         got = f"{light.band_power:.1e} of the power near the highest frequency of the samples; {got}"
+    samples, window = _better(light, grid, band)
     return {
         "rule": "the samples must hold the light, with dark room around it and fine enough for its edges",
-        "got": f"{where}: {got} limit",
+        "got": f"{' '.join(names) or 'source'}: {got} limit",
         "fix": f"grid=fa.Grid(samples={samples}, window={window:.4g})",
     }
+
+
+def _better(light: GridLight, grid: Grid, band: float) -> tuple[int, float]:
+    """Samples and window [m] at the source, twice as wide or twice as fine as they are.
+
+    Behind an odd number of single transforms a window ends at the highest frequency of the source, and its pitch goes
+    with the source's window: what is too narrow there asks for finer samples here, what is too coarse for a wider
+    window.
+    """
+    narrow, coarse = zip(*(_over(rims, band) for rims in (light.rims, light.turned_rims)), strict=True)
+    wide, fine = narrow[0] or coarse[1], coarse[0] or narrow[1]
+    return grid.samples * 2 ** (wide + fine), grid.window * 2**wide
+
+
+def _over(rims: Rims, band: float) -> tuple[bool, bool]:
+    """Whether a window was too narrow, and whether its samples were too coarse."""
+    return max(rims.edge, rims.cut) > EDGE_WARN, rims.band > band

@@ -11,10 +11,25 @@ from numpy.typing import NDArray
 from fastaxis.engines.grid.workers import strips
 from fastaxis.laws import TravelLaw
 
-__all__ = ["GridLight", "Samples", "axis", "curve", "inner", "multiply_separable"]
+__all__ = ["GridLight", "Rims", "Samples", "axis", "curve", "inner", "multiply_separable"]
 
 Samples: TypeAlias = NDArray[Any]
 """Complex numbers of double or single precision."""
+
+
+@dataclass(frozen=True)
+class Rims:
+    """How close light came to the limits of its samples, as shares of its power.
+
+    Parameters
+    ----------
+    edge, band : the largest share met near the edge of the window, and near that of the band.
+    cut : removed by band limits.
+    """
+
+    edge: float = 0.0
+    band: float = 0.0
+    cut: float = 0.0
 
 
 @dataclass(frozen=True)
@@ -32,10 +47,11 @@ class GridLight:
     curvature : [1/m].
     wavelength : [m].
     periodic : whether a plane wave fills the window to its edge.
-    edge_power : largest share of the power met near the edge of the window.
-    discarded : share of the power removed by band limits.
+    rims : limits met on planes whose window and pitch grow with those at the source.
+    turned_rims : on planes behind an odd number of single transforms: there the window grows as the source's pitch
+        shrinks, and the pitch shrinks as the source's window grows.
+    turned : whether the light is on such a plane.
     beyond : light that edges scatter beyond the band of the samples, as a share of what the samples hold.
-    band_power : largest share of the power met near the edge of the band of the samples.
     filled : waves along a side that hold the light, if known from the travel it comes from; None if not.
     room : samples along a side of its window, if those kept are the middle of it and all others dark; None if all are.
     ahead : a last travel that is left to whoever looks at the light; None if there is none.
@@ -47,13 +63,34 @@ class GridLight:
     curvature: float
     wavelength: float
     periodic: bool = False
-    edge_power: float = 0.0
-    discarded: float = 0.0
+    rims: Rims = Rims()
+    turned_rims: Rims = Rims()
+    turned: bool = False
     beyond: float = 0.0
-    band_power: float = 0.0
     filled: int | None = None
     room: int | None = None
     ahead: TravelLaw | None = None
+
+    @property
+    def edge_power(self) -> float:
+        """Largest share of the power met near the edge of a window."""
+        return max(self.rims.edge, self.turned_rims.edge)
+
+    @property
+    def band_power(self) -> float:
+        """Largest share of the power met near the edge of a band."""
+        return max(self.rims.band, self.turned_rims.band)
+
+    @property
+    def discarded(self) -> float:
+        """Share of the power removed by band limits."""
+        return self.rims.cut + self.turned_rims.cut
+
+    def met(self, *, edge: float = 0.0, band: float = 0.0, cut: float = 0.0) -> GridLight:
+        """The same light with what it met on this plane noted."""
+        before = self.turned_rims if self.turned else self.rims
+        rims = Rims(max(before.edge, edge), max(before.band, band), before.cut + cut)
+        return replace(self, turned_rims=rims) if self.turned else replace(self, rims=rims)
 
     @property
     def count(self) -> int:

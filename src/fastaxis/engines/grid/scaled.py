@@ -31,14 +31,14 @@ def travel_scaled(light: GridLight, travel: TravelLaw, *, measured: bool = False
     """
     near, far = travel.a + travel.b * light.curvature, travel.c + travel.d * light.curvature
     distance = travel.b / near
-    samples, discarded, waves, band = light.samples, light.discarded, None, light.band_power
+    samples, cut, waves, band = light.samples, 0.0, None, 0.0
     if distance != 0:
         spectrum = forward(samples)
-        band = max(band, 0.0 if light.periodic else rim_share(np.fft.fftshift(spectrum, axes=(-2, -1))))
+        band = 0.0 if light.periodic else rim_share(np.fft.fftshift(spectrum, axes=(-2, -1)))
         frequency = np.asarray(np.fft.fftfreq(light.count, light.pitch), dtype=float)
         if not light.periodic:
             limit = band_limit(light.window, abs(distance), light.wavelength)
-            discarded += cut_band(spectrum, frequency, limit)
+            cut = cut_band(spectrum, frequency, limit)
         waves = filled(spectrum, frequency * light.window) if measured else None
         factor = np.exp(-1j * np.pi * light.wavelength * distance * frequency**2)
         multiply_separable(spectrum, factor, factor / near)
@@ -49,4 +49,4 @@ def travel_scaled(light: GridLight, travel: TravelLaw, *, measured: bool = False
         samples = np.ascontiguousarray(samples[:, ::-1, ::-1])
     pitch, curvature = light.pitch * abs(near), far / near
     light = replace(light, samples=samples, pitch=pitch, curvature=curvature, filled=waves)
-    return replace(light, discarded=discarded, band_power=band)
+    return light.met(band=band, cut=cut)

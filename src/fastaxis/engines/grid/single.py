@@ -56,4 +56,11 @@ def travel_single(light: GridLight, travel: TravelLaw, *, measured: bool = False
     multiply_separable(out, factor, scale(light, travel) * factor)
     if travel.b < 0:
         out = np.ascontiguousarray(out[:, ::-1, ::-1])
-    return replace(light, samples=out, pitch=far_pitch(light, travel), curvature=travel.d / travel.b, filled=wide)
+    return replace(
+        light,
+        samples=out,
+        pitch=far_pitch(light, travel),
+        curvature=travel.d / travel.b,
+        filled=wide,
+        turned=not light.turned,
+    )
