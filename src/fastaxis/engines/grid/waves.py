@@ -65,13 +65,13 @@ class FarRows:
     def rows(self, first: int, last: int) -> Samples:
         """(components, last - first, columns); rows beyond an end are those of the other end."""
         count = self.near.shape[1]
-        rows = np.arange(count - 1 - first, count - 1 - last, -1) if self.mirrored else np.arange(first, last)
-        if first >= 0 and last <= count and not self.mirrored:
-            samples = self.near[:, first:last] * self.before
-        else:
-            samples = self.near[:, rows % count] * self.before
+        if self.mirrored:
+            first, last = count - last, count - first
+        inside = first >= 0 and last <= count
+        near = self.near[:, first:last] if inside else self.near[:, np.arange(first, last) % count]
+        samples = near * self.before
         found = fft.fft(samples, n=self.columns.length, axis=2, overwrite_x=True)[:, :, : self.columns.count]
-        return found[:, :, ::-1] if self.mirrored else found
+        return found[:, ::-1, ::-1] if self.mirrored else found
 
 
 @dataclass(frozen=True, eq=False)
