@@ -59,7 +59,9 @@ def test_total_stokes_is_the_sum_over_the_plane():
     x = part.light.x
     images = stokes(part.at(x, x))
     np.testing.assert_allclose(
-        part.total_stokes, images.sum(axis=(1, 2)) * part.light.pitch**2, atol=1e-15 * part.power
+        part.total_stokes,
+        images.sum(axis=(1, 2)) * part.light.pitch**2 * (1 + part.light.beyond),
+        atol=1e-15 * part.power,
     )
 
 

@@ -40,12 +40,14 @@ class Arrival:
 def arrival(plan: Any, fields: Sequence[Any], room: int) -> Arrival:
     """The power of mutually incoherent fields in the plane of the target of a plan.
 
-    Of light that came by one way engines know it as they go. Where several arms meet it is an integral over the whole
-    plane, which takes as long as a picture: that is left until it is asked for. Fields with more samples than
-    ``room`` [bytes] are not kept so long, the plan is followed again.
+    Of light that came by one way engines know it as they go, but for pictures of light that was scattered in an unknown
+    state. Where several arms meet it is an integral over the whole plane, which takes as long as a picture: that is
+    left until it is asked for. Fields with more samples than ``room`` [bytes] are not kept so long, the plan is
+    followed again.
     """
     if not plan.joined:
-        return Arrival(_total(fields))
+        powers = [field.power for field in fields]
+        return Arrival((lambda: _again(plan)) if None in powers else float(sum(powers)))
     if not all(hasattr(field, "at") for field in fields):  # pictures of earlier light
         return Arrival(lambda: _again(plan))
     samples = sum(branch.sampling.grid.samples**2 for branch in plan.branches if branch.sampling)

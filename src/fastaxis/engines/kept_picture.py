@@ -59,7 +59,8 @@ class Kept:
     jones : of uniformly polarized light, else None.
     sent : power of the source it was made with [W].
     power : of all the light [W]; None if not known.
-    totals : its S0 .. S3; None where a part that passes one state better would change more than these.
+    totals : its S0 .. S3; None if not known.
+    scattered : whether edges or singular points scattered some of it beyond its samples, in which state is not known.
     guard : how well samples carried the light.
     strain : how close it came to being cautioned of, which begins at 1.
     told : cautions that the light gave rise to.
@@ -70,6 +71,7 @@ class Kept:
     sent: float
     power: float | None
     totals: NDArray[np.float64] | None
+    scattered: bool
     guard: Guard
     strain: float
     told: tuple[FastaxisWarning, ...]
@@ -95,6 +97,7 @@ class Kept:
             power = float(mueller[0] @ self.totals)
             if power < max(DIM, self.strain) * most * self.totals[0]:
                 return None
+            power = None if self.scattered else power
         images = _product(mueller, self.images)
         dim = images[0].max() < DIM * most * self.images[0].max()
         return None if dim else Picture(images, power, self.guard)

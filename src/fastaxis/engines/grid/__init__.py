@@ -14,6 +14,7 @@ from fastaxis.engines.grid.light import GridLight
 from fastaxis.engines.grid.pointwise import flipped, passes_one_state, past_axis, past_matrix, past_scalar
 from fastaxis.engines.grid.reading import GridField
 from fastaxis.engines.grid.scaled import travel_scaled
+from fastaxis.engines.grid.settling import settled
 from fastaxis.engines.grid.single import travel_single
 from fastaxis.engines.grid.source import start
 from fastaxis.engines.grid.turning import turned
@@ -48,6 +49,8 @@ def continued(light: GridLight, branch: Branch, first: int, end: int) -> GridLig
         hop = sampling.hop(index)
         if light.ahead and not isinstance(law, JonesStep | Flip):  # these commute with travel
             light = edge_watched(travel_single(replace(light.filled_up(), ahead=None), light.ahead))
+        if isinstance(law, TravelLaw | Flip | Turn):
+            light = settled(light)
         if isinstance(law, TravelLaw) and hop and hop.kernel == "single" and light.full <= KEPT:
             light = replace(light, ahead=law)
         else:
@@ -70,7 +73,7 @@ def finished(light: GridLight, branch: Branch) -> GridField | FarField:
     names, sampling = branch.steps[-1].names if branch.steps else (), cast("Sampling", branch.sampling)
     if light.ahead:
         return arriving(light, names, sampling)
-    light = light.filled_up()
+    light = replace(light.filled_up(), singular=None)
     return GridField(light, check(light, phase_step(light), names, sampling), sampling.grid)
 
 

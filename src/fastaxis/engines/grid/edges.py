@@ -15,7 +15,8 @@ WARN = 0.01  # of the power: about what a power meter beside the camera would sh
 
 def beyond_share(light: GridLight) -> float:
     """Share of all the power that edges scattered beyond the band."""
-    return light.beyond / (1 + light.beyond)
+    # Below 0, where a part took a singularity away: its samples then hold a little more than the light.
+    return max(light.beyond / (1 + light.beyond), 0.0)
 
 
 def watch_frame(light: GridLight, grid: Grid | None) -> None:
@@ -32,7 +33,7 @@ def watch_frame(light: GridLight, grid: Grid | None) -> None:
     caution(
         SamplingWarning(
             "light that edges scatter beyond the band of the samples is in powers, but in no picture",
-            got=f"a stop drawn on {grid.samples} samples: {missed:.1%} of the power behind it missing from the picture",
+            got=f"edges, singularities on {grid.samples} samples: {missed:.1%} of the power missing from the picture",
             fix=f"grid=fa.Grid(samples={samples}, window={grid.window:.4g})",
         )
     )

@@ -8,6 +8,7 @@ from typing import Any, TypeAlias
 import numpy as np
 from numpy.typing import NDArray
 
+from fastaxis.engines.grid.singular import Singular
 from fastaxis.engines.grid.workers import strips
 from fastaxis.laws import TravelLaw
 
@@ -51,10 +52,11 @@ class GridLight:
     turned_rims : on planes behind an odd number of single transforms: there the window grows as the source's pitch
         shrinks, and the pitch shrinks as the source's window grows.
     turned : whether the light is on such a plane.
-    beyond : light that edges scatter beyond the band of the samples, as a share of what the samples hold.
+    beyond : light that edges and singular points scatter beyond the band, as a share of what the samples hold.
     filled : waves along a side that hold the light, if known from the travel it comes from; None if not.
     room : samples along a side of its window, if those kept are the middle of it and all others dark; None if all are.
     ahead : a last travel that is left to whoever looks at the light; None if there is none.
+    singular : the samples about a singular axis, if parts with one lie in this plane; None if not.
     """
 
     samples: Samples
@@ -70,6 +72,7 @@ class GridLight:
     filled: int | None = None
     room: int | None = None
     ahead: TravelLaw | None = None
+    singular: Singular | None = None
 
     @property
     def edge_power(self) -> float:

@@ -10,6 +10,8 @@ import numpy as np
 from numpy.typing import NDArray
 
 from fastaxis.engines.grid.light import GridLight, inner, multiply_separable
+from fastaxis.engines.grid.settling import noted, settled, watched
+from fastaxis.engines.grid.singular import Turns
 from fastaxis.engines.grid.workers import strips
 from fastaxis.laws import AxisLaw, Flip, ScalarLaw, Stop
 from fastaxis.maths import NUMBERS, Pattern
@@ -35,9 +37,9 @@ def past_matrix(light: GridLight, law: JonesStep) -> GridLight:
         left, strengths, right = np.linalg.svd(matrix)
         samples = np.empty_like(light.samples[:1])
         _mix(samples, light.samples, right[:1])
-        return replace(light, samples=samples, jones=left[:, 0] * strengths[0])
+        return noted(replace(light, samples=samples, jones=left[:, 0] * strengths[0]), {0: right[:1]})
     _mix(light.samples, light.samples, matrix)
-    return light
+    return noted(light, {0: matrix})
 
 
 def passes_one_state(law: JonesStep) -> bool:
@@ -93,15 +95,17 @@ def past_axis(light: GridLight, law: AxisLaw, after: JonesStep | None = None) ->
     ----------
     after : a uniform matrix that follows, done in the same go.
     """
+    patterned = _patterned(law)
+    light = settled(light) if patterned else watched(light, law.centre, int(2 * law.order))
     samples = light.samples
     if light.jones is not None:
         samples = scratch((2, *samples.shape[1:]), samples.dtype)
-    if _patterned(law):
+    if patterned:
         _past_pattern(samples, light, law)
         light = replace(light, samples=samples, jones=None, filled=None)
         return past_matrix(light, after) if after else light
-    _past_turning(samples, light, law, np.eye(2) if after is None else np.array(after.matrix))
-    return replace(light, samples=samples, jones=None, filled=None)
+    turns = _past_turning(samples, light, law, np.eye(2) if after is None else np.array(after.matrix))
+    return noted(replace(light, samples=samples, jones=None, filled=None), turns)
 
 
 def _past_pattern(out: NDArray[Any], light: GridLight, law: AxisLaw) -> None:
@@ -118,13 +122,13 @@ def _past_pattern(out: NDArray[Any], light: GridLight, law: AxisLaw) -> None:
         np.multiply(a * jx + b * jy, light.samples[0], out=place, casting="same_kind")
 
 
-def _past_turning(out: NDArray[Any], light: GridLight, law: AxisLaw, later: NDArray[Any]) -> None:
+def _past_turning(out: NDArray[Any], light: GridLight, law: AxisLaw, later: NDArray[Any]) -> Turns:
     """An axis at q phi + angle: its matrix is M0 + M1 cos + M2 sin of twice that, asked for at three angles only."""
     level, cosine, sine = (np.array(law.with_axis(NUMBERS, c, s), dtype=complex) for c, s in ((0, 0), (1, 0), (0, 1)))
     parts = [later @ level, later @ (cosine - level), later @ (sine - level)]
     if light.jones is not None:
         parts = [part @ light.jones for part in parts]
-    parts = [part.astype(out.dtype) for part in parts]
+    whole, parts = parts, [part.astype(out.dtype) for part in parts]
     (x, y), start = _places(light, law.centre), NUMBERS.phasor(2 * law.angle)
     kind = out.real.dtype
 
@@ -134,6 +138,12 @@ def _past_turning(out: NDArray[Any], light: GridLight, law: AxisLaw, later: NDAr
         (_turned if light.jones is None else _spread)(out[:, strip], parts, *near)
 
     strips(turn, light.count, light.count)
+    level, cosine, sine = (part.reshape(2, -1) for part in whole)
+    turns = {0: level}
+    for hand in (1, -1):
+        charge = hand * int(2 * law.order)
+        turns[charge] = turns.get(charge, 0) + (cosine - hand * 1j * sine) * start**hand / 2
+    return turns
 
 
 def _spread(out: NDArray[Any], parts: list[NDArray[Any]], before: NDArray[Any], cosine: Reals, sine: Reals) -> None:
@@ -173,6 +183,8 @@ def past_scalar(light: GridLight, law: ScalarLaw) -> GridLight:
         rest, _ = split_lens(law, light.wavelength)
         light = past_scalar(light, rest)
         return replace(light, curvature=light.curvature - law.vergence)
+    if law != ScalarLaw(charge=law.charge, centre=law.centre):
+        light = settled(light)
     x, y = _places(light, law.centre)
     if any(isinstance(v, Pattern) for v in law.transmission.values):
         _multiply(light, law.transmission.value(NUMBERS, *np.broadcast_arrays(x, y)))
@@ -184,25 +196,33 @@ def past_scalar(light: GridLight, law: ScalarLaw) -> GridLight:
             for place, tilt in zip((x, y), law.tilt, strict=True)
         )
         multiply_separable(light.samples, across, down)
-    if law.charge or law.stop is not None:
-        work = partial(_shape, light, law, (x, y))
-        lost = sum(strips(work, light.count, light.count))
-        light = replace(light, beyond=_beyond(light, law.stop, lost))
-    return replace(light, periodic=light.periodic and law.stop is None, filled=None)
+    if law.stop is not None:
+        lost = sum(strips(partial(_stopped, light, law.stop, (x, y)), light.count, light.count))
+        light = replace(light, periodic=False, beyond=_beyond(light, law.stop, lost))
+    return replace(_spiralled(light, law, (x, y)) if law.charge else light, filled=None)
+
+
+def _spiralled(light: GridLight, law: ScalarLaw, places: tuple[Reals, Reals]) -> GridLight:
+    """Behind a spiral plate, in place. One of a broken charge is cut along a line, and singular all along it."""
+    charge, whole = int(law.charge), law.charge == int(law.charge)
+    light = watched(light, law.centre, charge) if whole else settled(light)
+    (x, y), samples = places, light.samples
+
+    def turn(strip: slice) -> None:
+        samples[:, strip] *= _turns(x, y[strip], law.charge).astype(samples.dtype, copy=False)
+
+    strips(turn, light.count, light.count)
+    return noted(light, {charge: np.eye(len(samples), dtype=complex)}) if whole else light
 
 
 def _multiply(light: GridLight, factor: Any) -> None:
     np.multiply(light.samples, factor, out=light.samples, casting="same_kind")
 
 
-def _shape(light: GridLight, law: ScalarLaw, places: tuple[Reals, Reals], strip: slice) -> float:
-    """Some rows behind a spiral and a stop, in place; squares that pass the stop and that the samples do not keep."""
+def _stopped(light: GridLight, stop: Stop, places: tuple[Reals, Reals], strip: slice) -> float:
+    """Some rows behind a stop, in place; squares that pass it and that the samples do not keep."""
     samples, x, y = light.samples[:, strip], places[0], places[1][strip]
-    if law.charge:
-        samples *= _turns(x, y, law.charge).astype(samples.dtype, copy=False)
-    if law.stop is None:
-        return 0.0
-    coverage = _coverage(law.stop.depth(x, y), light.pitch)
+    coverage = _coverage(stop.depth(x, y), light.pitch)
     rim = (coverage > 0) & (coverage < 1)
     part, field = coverage[rim], samples[:, rim].astype(np.complex128, copy=False)
     samples *= coverage.astype(samples.real.dtype, copy=False)
