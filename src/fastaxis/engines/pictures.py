@@ -152,15 +152,14 @@ def _kept(found: Sequence[Any], images: Images, branches: Sequence[Branch], told
     field, branch = found[0], branches[0]
     guard, joined = field.guard, len(branches) > 1
     light = None if joined else getattr(field, "carried", None)
-    kept = Kept(images, None, branch.power, None if joined else field.power, None, guard, 0.0, tuple(told))
+    kept = Kept(images, None, branch.power, None if joined else field.power, None, False, guard, 0.0, tuple(told))
     if light is None:
         return kept
     if light.jones is not None and light.jones.any():
         length = float(np.linalg.norm(light.jones))
         return replace(kept, images=images[:1].copy(), jones=light.jones / length)
-    # Light that edges scattered counts with the state of the rest, which another part before the edge would change.
-    totals = field.total_stokes if light.beyond == 0 else None
-    return replace(kept, totals=totals, strain=_strain(guard, light.band_power, branch.sampling))
+    strain, scattered = _strain(guard, light.band_power, branch.sampling), light.beyond != 0
+    return replace(kept, totals=field.total_stokes, scattered=scattered, strain=strain)
 
 
 def _strain(guard: Guard, band_power: float, sampling: Any) -> float:
