@@ -100,8 +100,11 @@ class GridSum:
     def _collected_by(self, raster: Raster) -> list[Collected]:
         far = [field for field in self.fields if isinstance(field, FarField)]
         down, across = (max((field.orders[axis] for field in far), default=0) for axis in (0, 1))
+        # All on as many places as the finest of them asks for.
+        filled = [field.light.filled for field in self.fields if isinstance(field, GridField)]
+        order = max(some for some in filled if some) if filled and all(filled) else None
         return [
-            field.collected_by(raster, (down, across)) if isinstance(field, FarField) else field.collected_by(raster)
+            field.collected_by(raster, (down, across) if isinstance(field, FarField) else order)  # type: ignore[arg-type]
             for field in self.fields
         ]
 

@@ -44,7 +44,7 @@ class GridField:
     light: GridLight
     guard: Guard
     grid: Grid | None = field(default=None, repr=False)
-    _read: dict[Raster, Collected] = field(default_factory=dict, repr=False, compare=False)
+    _read: dict[tuple[Raster, int | None], Collected] = field(default_factory=dict, repr=False, compare=False)
 
     @property
     def wavelength(self) -> float:
@@ -100,14 +100,14 @@ class GridField:
         """
         if raster.shape != (1, 1):
             watch_frame(self.light, self.grid)
-        known = self._read.get(raster)
+        known = next((read for (read_on, _), read in self._read.items() if read_on == raster), None)
         images = None if known else self._by_rows(raster)
         return images if images is not None else (known or self._collected_by(raster)).stokes()
 
     def _by_rows(self, raster: Raster) -> Reals | None:
         """Read from the waves of the samples, row by row; None where another way is better or that takes much room."""
         light = self.light
-        if light.count > KEPT or (light.filled and _parts(light, light.filled) == 1) or all(self._nearby(raster, 2)):
+        if not self._lands(raster) or (light.filled and _parts(light, light.filled) == 1):
             return None
         waves, (down, across) = waves_of(light)
         order = beat(down, light.samples.dtype), beat(across, light.samples.dtype)
@@ -118,18 +118,34 @@ class GridField:
         samples = waves.rows_at(rows.places, columns.places)
         return np.asarray(stokes_from(samples, light.jones, rows.blocks, columns.blocks))
 
+    def _lands(self, raster: Raster) -> bool:
+        """Whether waves are worth following to where a camera looks: few samples, and no camera much smaller."""
+        return self.light.count <= KEPT and not all(self._nearby(raster, 2))
+
     def _nearby(self, raster: Raster, parts: int) -> list[Nearby | None]:
         light = self.light
         return [nearby(places, raster.pitch, light.count, light.pitch, parts) for places in (raster.y, raster.x)]
 
-    def collected_by(self, raster: Raster) -> Collected:
-        """The light as pixels collect it; kept for the last raster, since sums of this field are read alike."""
-        found = self._read.get(raster)
+    def collected_by(self, raster: Raster, order: int | None = None) -> Collected:
+        """The light as pixels collect it; kept for the last raster, since sums of this field are read alike.
+
+        Parameters
+        ----------
+        order : highest of irradiance to be held, in cycles a window, if it is known for all fields of a sum.
+        """
+        found = self._read.get((raster, order))
         if found is None:
-            found = self._collected_by(raster)
+            found = self._landed(raster, order) if order and self._lands(raster) else self._collected_by(raster)
             self._read.clear()
-            self._read[raster] = found
+            self._read[raster, order] = found
         return found
+
+    def _landed(self, raster: Raster, order: int) -> Collected:
+        light, orders = self.light, (order, order)
+        length = landing_length(order, light.count + 1)
+        rows, columns = lines(raster, light.window, (length, length), orders)
+        samples = waves_of(light)[0].at(rows.places, columns.places)
+        return Collected(samples, light.jones, 1, rows.blocks, columns.blocks)
 
     def _collected_by(self, raster: Raster) -> Collected:
         light = self.light
