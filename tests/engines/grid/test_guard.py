@@ -82,3 +82,13 @@ def test_light_near_the_edge_is_said_earlier_where_the_grid_was_set_by_hand():
     assert check(light(1e-3, rims=Rims(edge=1e-3)), 0.1, ("lens",), AUTOMATIC).edge_power == 1e-3
     with pytest.warns(SamplingWarning, match="0.10% of the power near the edge"):
         check(light(1e-3, rims=Rims(edge=1e-3)), 0.1, ("lens",), BY_HAND)
+
+
+@pytest.mark.parametrize("count", [16, 32, 100])
+def test_the_rim_of_a_spectrum_is_that_of_its_waves_in_order(count):
+    spectrum = np.random.default_rng(count).normal(size=(2, count, count)) + 0.5j
+    shares = rim_share(spectrum, spectrum=True), rim_share(np.fft.fftshift(spectrum, axes=(1, 2)))
+    margin = int(np.ceil(count / 32))
+    inner = np.fft.fftshift(spectrum, axes=(1, 2))[:, margin:-margin, margin:-margin]
+    expected = 1 - (abs(inner) ** 2).sum() / (abs(spectrum) ** 2).sum()
+    assert shares == pytest.approx((expected, expected), rel=1e-12)

@@ -11,7 +11,7 @@ from numpy.typing import NDArray
 from fastaxis.engines.field import Guard
 from fastaxis.engines.grid.edges import beyond_share
 from fastaxis.engines.grid.light import GridLight, Rims, Samples
-from fastaxis.engines.grid.workers import strips
+from fastaxis.engines.grid.workers import strips, together
 from fastaxis.errors import SamplingError, SamplingWarning, caution
 from fastaxis.plan import Grid
 from fastaxis.plan.sampling import Sampling
@@ -29,6 +29,9 @@ WARN, REFUSE = 1e-2, 0.2
 # wrong by 1e-3 of their peak from 1.4e-4 near the edge of the window or 4e-6 near that of the band on, and right to
 # 1e-3 below 5e-5 and 8e-7: the field there is the root of the power.
 EDGE_WARN, BAND_WARN = 1e-4, 2e-6
+# Tails behind an axis or an edge reach to the edge of any band, and the plan knows how fine their samples must be. What
+# the plan can't know, as of patterns, is told of any grid from BAND on.
+BAND, BAND_KNOWN = 1e-3, 1e-2
 DIM = 1e-6  # of the brightest: where even all samples of a line together are no part of the last 1 %
 LINES = 128  # rows and columns looked at for phase steps: enough to meet a beam anywhere
 
@@ -40,22 +43,30 @@ def edge_watched(light: GridLight) -> GridLight:
     return light.met(edge=rim_share(light.samples))
 
 
-def rim_share(samples: Samples) -> float:
-    """Share of the power in the outermost samples, along all four sides."""
+def rim_share(samples: Samples, *, spectrum: bool = False) -> float:
+    """Share of the power in the outermost samples, along all four sides.
+
+    Parameters
+    ----------
+    spectrum : whether these are the waves of a transform, of which the shortest stand in the middle.
+    """
     count = samples.shape[-1]
     margin = math.ceil(count * FRAME / 2)
-    total, rim = np.sum(strips(lambda strip: _powers(samples, strip, margin), count, count), axis=0)
-    return float(rim / total) if total else 0.0
+    middle = slice(count // 2 - margin, count // 2 + margin)
+    rim = [middle] if spectrum else [slice(margin), slice(count - margin, count)]
+    total, outer = np.sum(strips(lambda strip: _powers(samples, strip, rim), count, count), axis=0)
+    return float(outer / total) if total else 0.0
 
 
-def _powers(samples: Samples, strip: slice, margin: int) -> tuple[float, float]:
-    """Sums of the squares in some rows, and of those of them that lie in the margin."""
-    count, rows = samples.shape[-1], samples[:, strip]
-    total = _squares(rows)
-    low, high = (min(max(row, strip.start), strip.stop) - strip.start for row in (margin, count - margin))
-    between = rows[:, low:high]
-    frame = (rows[:, :low], rows[:, high:], between[:, :, :margin], between[:, :, count - margin :])
-    return total, sum(map(_squares, frame))
+def _powers(samples: Samples, strip: slice, rim: list[slice]) -> tuple[float, float]:
+    """Sums of the squares in some rows, and of those of them that lie in the rim of either side."""
+    rows, outer = samples[:, strip], 0.0
+    for piece in rim:
+        low, high = (min(max(row, strip.start), strip.stop) - strip.start for row in (piece.start or 0, piece.stop))
+        whole = rows[:, low:high]
+        corners = (_squares(whole[:, :, other]) for other in rim)
+        outer += _squares(rows[:, :, piece]) + _squares(whole) - sum(corners)
+    return _squares(rows), outer
 
 
 def _squares(samples: Samples) -> float:
@@ -70,18 +81,21 @@ def phase_step(light: GridLight) -> float:
     common, so the jump by pi at a zero of the field, which no sampling removes, weighs next to nothing.
     """
     stride = max(light.count // LINES, 1)
-    products = []
-    for part in light.samples:
-        for lines in (part[::stride], part.T[::stride]):
-            product = lines[:, 1:] * lines[:, :-1].conj()
-            products.append(product.ravel())
-    return _quantile(np.concatenate(products))
+    lines = [some for part in light.samples for some in (part[::stride], part.T[::stride])]
+    weights, steps = map(np.concatenate, zip(*together(_steps, lines), strict=True))
+    seen = weights > DIM * weights.max(initial=0.0)
+    return _quantile(weights[seen], steps[seen])
 
 
-def _quantile(products: Samples) -> float:
+def _steps(lines: Samples) -> tuple[Reals, Reals]:
+    """(weight, phase step) of neighbours along some lines, but for those dim beside others."""
+    products = (lines[:, 1:] * lines[:, :-1].conj()).ravel()
     weights = abs(products)
     seen = weights > DIM * weights.max()
-    weights, steps = weights[seen], abs(np.angle(products[seen]))
+    return weights[seen], abs(np.angle(products[seen]))
+
+
+def _quantile(weights: Reals, steps: Reals) -> float:
     order = np.argsort(steps)
     below = np.cumsum(weights[order])
     return float(steps[order[np.searchsorted(below, QUIET * below[-1])]]) if steps.size else 0.0
@@ -119,7 +133,10 @@ def limits(sampling: Sampling) -> tuple[float, float]:
 
     The automatic grid keeps its own distance from both, and is looked at only for what no plan can foresee.
     """
-    return (EDGE_WARN, BAND_WARN) if sampling.chosen == "by hand" else (WARN, math.inf)
+    by_hand = sampling.chosen == "by hand"
+    if sampling.known and sampling.planes[-1].spread.rough:
+        return EDGE_WARN if by_hand else WARN, BAND_KNOWN
+    return (EDGE_WARN, BAND_WARN) if by_hand else (WARN, BAND)
 
 
 def check(light: GridLight, step: float, names: tuple[str, ...], sampling: Sampling) -> Guard:
@@ -142,27 +159,28 @@ def check(light: GridLight, step: float, names: tuple[str, ...], sampling: Sampl
     """
     worst, (edge, band) = max(light.edge_power, light.discarded), limits(sampling)
     if worst > edge or light.band_power > band:
-        message = _message(light, names, sampling.grid, band)
+        better, named = _better(light, sampling.grid, band), sampling.named
+        message = _message(light, names, _both(better, named), band)
         if worst > REFUSE:
             raise SamplingError(**message)
-        caution(SamplingWarning(**message))
+        if _both(better, named) != named:
+            caution(SamplingWarning(**message))
     return Guard(light.edge_power, step, light.discarded + beyond_share(light))
 
 
-def _message(light: GridLight, names: tuple[str, ...], grid: Grid, band: float) -> dict[str, Any]:
+def _message(light: GridLight, names: tuple[str, ...], better: Grid, band: float) -> dict[str, Any]:
     got = f"{light.edge_power:.2%} of the power near the edge of the window, {light.discarded:.2%} cut off by the band"
     if light.band_power > band:
         got = f"{light.band_power:.1e} of the power near the highest frequency of the samples; {got}"
-    samples, window = _better(light, grid, band)
     return {
         "rule": "the samples must hold the light, with dark room around it and fine enough for its edges",
         "got": f"{' '.join(names) or 'source'}: {got} limit",
-        "fix": f"grid=fa.Grid(samples={samples}, window={window:.4g})",
+        "fix": f"grid=fa.Grid(samples={better.samples}, window={better.window:.4g})",
     }
 
 
-def _better(light: GridLight, grid: Grid, band: float) -> tuple[int, float]:
-    """Samples and window [m] at the source, twice as wide or twice as fine as they are.
+def _better(light: GridLight, grid: Grid, band: float) -> Grid:
+    """Samples at the source, twice as wide or twice as fine as they are.
 
     Behind an odd number of single transforms a window ends at the highest frequency of the source, and its pitch goes
     with the source's window: what is too narrow there asks for finer samples here, what is too coarse for a wider
@@ -170,7 +188,17 @@ def _better(light: GridLight, grid: Grid, band: float) -> tuple[int, float]:
     """
     narrow, coarse = zip(*(_over(rims, band) for rims in (light.rims, light.turned_rims)), strict=True)
     wide, fine = narrow[0] or coarse[1], coarse[0] or narrow[1]
-    return grid.samples * 2 ** (wide + fine), grid.window * 2**wide
+    return Grid(grid.samples * 2 ** (wide + fine), grid.window * 2**wide)
+
+
+def _both(one: Grid, other: Grid | None) -> Grid:
+    """The grid as wide and as fine as each of two: one of them, if it is both."""
+    if other is None or (one.window >= other.window and one.pitch <= other.pitch):
+        return one
+    if other.window >= one.window and other.pitch <= one.pitch:
+        return other
+    window = max(one.window, other.window)
+    return Grid(2 * math.ceil(window / min(one.pitch, other.pitch) / 2), window)
 
 
 def _over(rims: Rims, band: float) -> tuple[bool, bool]:

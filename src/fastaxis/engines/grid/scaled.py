@@ -34,7 +34,7 @@ def travel_scaled(light: GridLight, travel: TravelLaw, *, measured: bool = False
     samples, cut, waves, band = light.samples, 0.0, None, 0.0
     if distance != 0:
         spectrum = forward(samples)
-        band = 0.0 if light.periodic else rim_share(np.fft.fftshift(spectrum, axes=(-2, -1)))
+        band = 0.0 if light.periodic else rim_share(spectrum, spectrum=True)
         frequency = np.asarray(np.fft.fftfreq(light.count, light.pitch), dtype=float)
         if not light.periodic:
             limit = band_limit(light.window, abs(distance), light.wavelength)
