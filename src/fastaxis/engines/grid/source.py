@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import math
 from collections.abc import Iterable, Sequence
+from dataclasses import replace
 from typing import Any
 
 import numpy as np
@@ -22,12 +23,16 @@ from fastaxis.recycled import scratch
 
 __all__ = ["start"]
 
-SUB = 8  # places per axis in a sample that the edge of a hard-edged mode crosses
+SUB = 16  # places per axis in a sample that the edge of a hard-edged mode crosses
 FADE = 0.125  # width of a plane wave's fading, as a share of the window
 
 
 def start(branch: Branch, sampling: Sampling) -> GridLight:
-    """The field where samples begin, scaled to the power of the branch; one scalar field if all terms share a state."""
+    """The field where samples begin, with the power of the branch; one scalar field if all terms share a state.
+
+    A sample that a hard edge crosses holds c of the amplitude and c^2 of the power. Light keeps its amplitude, which is
+    right in a focus to second order; what the samples lack in power the edge has scattered beyond them.
+    """
     room, pitch = sampling.planes[0].samples, sampling.planes[0].pitch
     dark = max(math.floor(room / 2 - _reach(branch) / pitch), 0) if branch.opening else 0
     x = axis(room - 2 * dark, pitch)
@@ -46,7 +51,9 @@ def start(branch: Branch, sampling: Sampling) -> GridLight:
     if sampling.taper:
         multiply_separable(samples, _fading(x, sampling.grid.window))
     periodic = infinite and not sampling.taper
-    return GridLight(samples, jones, pitch, curvature, branch.wavelength, periodic=periodic, room=room)
+    light = GridLight(samples, jones, pitch, curvature, branch.wavelength, periodic=periodic, room=room)
+    hard = any(term.mode.hard for term in terms) and not infinite
+    return replace(light, beyond=branch.power / light.power - 1) if hard and light.power else light
 
 
 def _reach(branch: Branch) -> float:
@@ -87,8 +94,8 @@ def _shape(mode: Any, x: NDArray[np.float64], pitch: float, wavelength: float, k
     strips(fill, *shape.shape)
     if mode.hard:
         _soften(shape, mode, x, pitch, wavelength)
-    if mode.hard or isinstance(mode, SampledMode):
-        # What edges and splines between foreign samples leave of unit power is the sampling's doing, not the beam's.
+    if isinstance(mode, SampledMode):
+        # What splines between foreign samples leave of unit power is the sampling's doing, not the beam's.
         shape /= np.sqrt(inner(shape[None], shape[None]).real * pitch**2)
     return shape
 
