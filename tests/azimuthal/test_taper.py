@@ -13,3 +13,13 @@ def test_one_before_zero_behind_and_smooth_between():
 
 def test_an_earlier_end():
     assert Taper(1.0, 2.0).earlier() == Taper(0.8, 1.6)
+
+
+def test_a_step_is_a_short_polynomial():
+    taper = Taper(1.0, 2.0)
+    middles = np.linspace(1, 2, 33)
+    places = np.polynomial.chebyshev.chebpts1(24)
+    series = np.polynomial.chebyshev.chebfit(places, taper(middles + taper.step / 2 * places[:, None]), 23)
+    assert taper.step == 1 / 16
+    # Degree 13, and some roundings.
+    assert abs(series[14:]).max() < 2e-15

@@ -12,14 +12,16 @@ from __future__ import annotations
 
 import math
 from dataclasses import dataclass, replace
-from functools import cached_property
+from functools import cached_property, partial
 from itertools import pairwise
 
 import numpy as np
 
 from fastaxis.engines.azimuthal.bessel import bessel
+from fastaxis.engines.azimuthal.condensing import condensed, enough, read, spanned
 from fastaxis.engines.azimuthal.cutting import Cutting
 from fastaxis.engines.azimuthal.far import far_from, far_runs, far_sums
+from fastaxis.engines.azimuthal.octaves import octave_sums, octaves_of
 from fastaxis.engines.azimuthal.panels import ORDER, Complexes, Profile, Reals
 from fastaxis.engines.azimuthal.products import product
 from fastaxis.engines.azimuthal.taper import Taper
@@ -31,6 +33,7 @@ __all__ = ["Collins", "turn"]
 BLOCK = 1 << 16  # kernel values at a time: half a megabyte stays in the cache of a core
 RADII = 192  # done at a time: their sines and cosines stay in the cache
 NEAR = 4  # times as far from the axis as kernels with small arguments for all nodes
+SPARED = 2  # times as few nodes and radii as there are, or they are not worth finding
 FEW = 12  # radii not worth a block of their own
 TURNS = (1, 1j, -1, -1j)
 
@@ -120,8 +123,25 @@ class Collins:
         borders, out = self.cutting.borders(counts), np.empty((len(self.charges), len(r)), dtype=complex)
         for order in {abs(charge) for charge in self.charges}:
             rows = [i for i, charge in enumerate(self.charges) if abs(charge) == order]
-            for some in self._groups(r):
-                out[rows, some] = self._transform(order, borders, nodes, values[rows], r[some])
+            scale, left = self.cutting.scale, len(r)
+            for some in octaves_of(order, scale, r, nodes):
+                near = partial(self._near_sums, order)
+                out[rows, some] = octave_sums(order, scale, r[some], nodes, values[rows], near)
+                left = some.start
+            if left:
+                out[rows, :left] = self._nearer(order, borders, nodes, values[rows], r[:left])
+        return out
+
+    def _nearer(self, order: int, borders: Reals, nodes: Reals, values: Complexes, r: Reals) -> Complexes:
+        """The sums at radii that no octave is full of: by few nodes and radii, if those will do."""
+        out, scale = np.empty((len(values), len(r)), dtype=complex), self.cutting.scale
+        ends, reach = (float(borders[0]), float(borders[-1])), (float(r[0]), float(r[-1]))
+        count, radii = enough(scale * reach[1] * (ends[1] - ends[0])), enough(scale * ends[1] * (reach[1] - reach[0]))
+        if SPARED * max(count, radii) <= len(r) and SPARED * count <= len(nodes):
+            fewer = condensed(nodes, values, *ends, count)
+            return read(self._near_sums(order, spanned(*ends, count), fewer, spanned(*reach, radii)), r, *reach)
+        for some in self._groups(r):
+            out[:, some] = self._transform(order, borders, nodes, values, r[some])
         return out
 
     def _groups(self, r: Reals) -> list[slice]:
@@ -159,8 +179,8 @@ class Collins:
     def cutting(self) -> Cutting:
         """Into how many parts panels are cut."""
         flat = self.flat
-        soft_from = self.taper.start if self.taper else math.inf
-        return Cutting(self.profile.edges, abs(flat.a), self.wavenumber / abs(flat.b), self.phase, soft_from)
+        soft = (self.taper.start, self.taper.step) if self.taper else (math.inf, math.inf)
+        return Cutting(self.profile.edges, abs(flat.a), self.wavenumber / abs(flat.b), self.phase, *soft)
 
     def hardest(self, r: Reals) -> list[int]:
         """Which of some output radii are carried worst."""

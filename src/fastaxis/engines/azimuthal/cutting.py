@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import math
 from dataclasses import dataclass
 from functools import cached_property
 from typing import TypeAlias
@@ -17,7 +18,6 @@ Counts: TypeAlias = NDArray[np.int_]
 
 WHOLE = 0.4  # share of the phase of a part that an uncut panel may carry
 STAGE = 1.5  # output radii are taken together where their phases differ by less: a third more nodes at most
-TAPERED = 4  # parts at least of a panel with a soft end
 ALIKE = 4 * float(np.finfo(float).eps)
 AT_RISK, NEARLY = 2, 9  # panels, places
 
@@ -33,13 +33,15 @@ class Cutting:
     scale : k/|b| [1/m^2].
     phase : kernel phase [rad] allowed for a part.
     soft_from : where a soft end begins [m].
+    softness : widest part there [m].
     """
 
     edges: Reals
     magnification: float
     scale: float
     phase: float
-    soft_from: float
+    soft_from: float = math.inf
+    softness: float = math.inf
 
     @cached_property
     def widths(self) -> Reals:
@@ -80,7 +82,8 @@ class Cutting:
         phase = self.phases(self._outermost(self.stages(np.asarray(reach, dtype=float))))
         # One part carries the panel's own polynomial too, so it may carry less of the kernel's phase.
         parts = np.where(phase <= WHOLE * self.phase, 1, np.maximum(2, np.ceil(phase / self.phase)))
-        parts = np.where(self.edges[1:] > self.soft_from, np.maximum(parts, TAPERED), parts).astype(int)
+        soft = np.where(self.edges[1:] > self.soft_from, np.ceil(self.widths / self.softness), 1)
+        parts = np.maximum(parts, soft).astype(int)
         starts = np.flatnonzero(np.append(True, abs(np.diff(self.widths)) > ALIKE * self.edges[-1]))
         most = np.maximum.reduceat(parts, starts, axis=-1)
         return np.repeat(most, np.diff(np.append(starts, len(self.widths))), axis=-1)

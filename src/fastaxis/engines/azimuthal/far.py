@@ -18,9 +18,9 @@ from scipy.special import hankel1e
 from fastaxis.engines.azimuthal.panels import NODES, ORDER, Complexes, Reals
 from fastaxis.engines.azimuthal.products import product
 
-__all__ = ["amplitudes", "far_from", "far_runs", "far_sums"]
+__all__ = ["amplitudes", "far_from", "far_runs", "far_sums", "phasors"]
 
-HIGHEST = 12  # order; beyond, x_0 is so large that little is left of a kernel behind it
+HIGHEST = 24  # order; beyond, x_0 is so large that little is left of a kernel behind it
 DEGREE = 17  # of the polynomials: from x_0 on, what is left of them is below 2e-16 for all of these orders
 FITTED = 24  # Chebyshev points
 LEAST = 1e-17  # of a term that counts
@@ -89,7 +89,7 @@ def far_sums(order: int, scale: float, r: Reals, borders: Reals, values: Complex
     terms = powers[:, np.newaxis] * (values * np.sqrt(2 / (np.pi * scale * rho)))
     upper, lower = terms[..., HALF:], terms[..., HALF - 1 :: -1]
     angles = np.multiply.outer(scale * half * NODES[HALF:], r)
-    bent = _phasors(scale * middles[0] * r - np.pi * (order / 2 + 0.25), 2 * scale * half * r, len(middles))
+    bent = phasors(scale * middles[0] * r - np.pi * (order / 2 + 0.25), 2 * scale * half * r, len(middles))
     cos, sin, stages = np.cos(angles), np.sin(angles), _powers(lowest / r, len(numbers))
     even, odd = upper + lower, lower - upper
     total = (bent.real[:, np.newaxis] * _matched((even, odd), (cos, sin), stages)).sum(axis=0)
@@ -98,7 +98,7 @@ def far_sums(order: int, scale: float, r: Reals, borders: Reals, values: Complex
     return np.asarray(total[0::2] + 1j * total[1::2])
 
 
-def _phasors(first: Reals, step: Reals, count: int) -> Complexes:
+def phasors(first: Reals, step: Reals, count: int) -> Complexes:
     """exp(i (first + n step)) for n < count, shape (count, len(first)), by doubling from a few exponentials."""
     out = np.empty((count, len(first)), dtype=complex)
     out[0], known = np.exp(1j * first), 1
