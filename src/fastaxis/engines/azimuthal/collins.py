@@ -133,16 +133,22 @@ class Collins:
         return out
 
     def _nearer(self, order: int, borders: Reals, nodes: Reals, values: Complexes, r: Reals) -> Complexes:
-        """The sums at radii that no octave is full of: by few nodes and radii, if those will do."""
-        out, scale = np.empty((len(values), len(r)), dtype=complex), self.cutting.scale
-        ends, reach = (float(borders[0]), float(borders[-1])), (float(r[0]), float(r[-1]))
-        count, radii = enough(scale * reach[1] * (ends[1] - ends[0])), enough(scale * ends[1] * (reach[1] - reach[0]))
-        if SPARED * max(count, radii) <= len(r) and SPARED * count <= len(nodes):
-            fewer = condensed(nodes, values, *ends, count)
-            return read(self._near_sums(order, spanned(*ends, count), fewer, spanned(*reach, radii)), r, *reach)
+        """The sums at radii that no octave is full of."""
+        if self._spares(nodes, r):
+            return self._near_sums(order, nodes, values, r)
+        out = np.empty((len(values), len(r)), dtype=complex)
         for some in self._groups(r):
             out[:, some] = self._transform(order, borders, nodes, values, r[some])
         return out
+
+    def _fewer(self, nodes: Reals, r: Reals) -> tuple[int, int]:
+        """How many nodes and radii carry the kernel between all of these."""
+        scale = self.cutting.scale
+        return enough(scale * r[-1] * (nodes[-1] - nodes[0])), enough(scale * nodes[-1] * (r[-1] - r[0]))
+
+    def _spares(self, nodes: Reals, r: Reals) -> bool:
+        count, radii = self._fewer(nodes, r)
+        return bool(SPARED * max(count, radii) <= len(r) and SPARED * count <= len(nodes))
 
     def _groups(self, r: Reals) -> list[slice]:
         """Few of the kernels to places near the axis have large arguments, and most of the others."""
@@ -166,6 +172,14 @@ class Collins:
         return total
 
     def _near_sums(self, order: int, nodes: Reals, values: Complexes, r: Reals) -> Complexes:
+        """By a kernel: that of few nodes and radii, if those will do."""
+        if not self._spares(nodes, r):
+            return self._kernel_sums(order, nodes, values, r)
+        (count, radii), ends, reach = self._fewer(nodes, r), (nodes[0], nodes[-1]), (r[0], r[-1])
+        fewer = condensed(nodes, values, *ends, count)
+        return read(self._kernel_sums(order, spanned(*ends, count), fewer, spanned(*reach, radii)), r, *reach)
+
+    def _kernel_sums(self, order: int, nodes: Reals, values: Complexes, r: Reals) -> Complexes:
         """Some rows of the kernel at a time."""
         # A real kernel times real and imaginary parts as columns: half the work of a complex product.
         columns = np.ascontiguousarray(values.T).view(float)
