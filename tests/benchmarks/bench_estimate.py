@@ -16,7 +16,6 @@ from test_estimate import FINE, draw
 
 from fastaxis.elements import Camera, Laser
 from fastaxis.engines.azimuthal import Settings, run
-from fastaxis.light import H
 from fastaxis.plan import make_plan
 from fastaxis.train import Train
 from fastaxis.units import mm, nm, um
@@ -27,9 +26,9 @@ SETTINGS = {"as they are": Settings(), "coarse kernels": Settings(phase=120.0), 
 
 def case(seed, settings):
     """(true error, estimate) as shares of the peak."""
-    mode, parts = draw(random.Random(seed))
+    mode, state, parts = draw(random.Random(seed))
     train = Train(wavelength=632.8 * nm).along(
-        Laser(power=1.0, name="laser", mode=mode, state=H), *parts, Camera(pixel=10 * um, shape=(64, 64), name="cam")
+        Laser(power=1.0, name="laser", mode=mode, state=state), *parts, Camera(pixel=10 * um, shape=(64, 64), name="cam")
     )
     branch = make_plan(train, "cam", engine="azimuthal").branches[0]
     ours, best = run(branch, settings), run(branch, FINE)

@@ -26,6 +26,10 @@ __all__ = ["started"]
 
 Radial = Callable[[Reals], Complexes]
 
+FALLEN = 1e-16
+"""Of the peak: where a Gaussian mode ends. A vortex put on it later darkens the focus and not what the cut does there:
+at charge 20 the peak is 1/300 of the one without. Two panels carry the bell out to here as well as to 1e-13."""
+
 
 def started(branch: Branch, settings: Settings) -> tuple[Harmonics, Steps]:
     """The harmonics where they begin, scaled to the power of the branch, and the steps left to do.
@@ -137,7 +141,7 @@ def _harmonics(mode: Any, wavelength: float) -> list[tuple[int, Radial]]:
 
 def _profile(modes: list[Any], radials: Radial, wavelength: float, settings: Settings) -> tuple[Profile, float]:
     if all(isinstance(mode, GaussFamily) for mode in modes):
-        return resolved(radials, edges_for(modes, wavelength, settings.dark), settings)
+        return resolved(radials, edges_for(modes, wavelength, FALLEN), settings)
     hard = [float(mode.radius) for mode in modes if mode.hard]
     if hard:
         # Panels break at each edge; beyond the last edge soft modes go on.
