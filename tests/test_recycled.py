@@ -147,6 +147,14 @@ def test_who_wants_nothing_remembered_gets_all_memory_back():
     assert recycled._kept == recycled.KEPT
 
 
+@offered
+def test_light_forgotten_takes_the_memory_of_frames_along():
+    array = empty(BIG)
+    del array
+    fa.forget_light()
+    assert not recycled._free
+
+
 def test_so_much_is_held_and_no_more(monkeypatch):
     monkeypatch.setattr(recycled, "_kept", recycled.KEPT)
     arrays = [empty(BIG) for _ in range(3)]

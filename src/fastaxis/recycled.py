@@ -16,7 +16,7 @@ from typing import Any
 import numpy as np
 from numpy.typing import DTypeLike, NDArray
 
-__all__ = ["empty", "keep", "scratch"]
+__all__ = ["empty", "give_up", "keep", "scratch"]
 
 PAGE = 1 << 21  # bytes of the system's large pages
 SMALLEST = 2 * PAGE  # below this much numpy's own memory is as fast
@@ -83,6 +83,11 @@ def keep(up_to: int) -> None:
     global _kept  # noqa: PLW0603 - one setting of the process, as its memory is one
     _kept = up_to
     _let_go()
+
+
+def give_up() -> None:
+    """Let all memory go that nobody needs."""
+    _free.clear()
 
 
 def _taken(size: int) -> mmap.mmap:

@@ -26,6 +26,7 @@ from scipy import fft
 from timing import both, machine, seconds, table
 
 import fastaxis as fa
+from fastaxis.engines.memory import MEMORIES
 from fastaxis.engines.grid.workers import WORKERS, together
 from fastaxis.units import deg, mm, mW, nm, um
 
@@ -55,7 +56,8 @@ def settings(count=72):
 
 def library(train, analyzers, samples=SAMPLES, **options):
     grid = fa.Grid(samples=samples, window=SAMPLES * PIXEL)
-    fa.forget_light()  # of the round before
+    for memory in MEMORIES:  # the light of the round before; the memory of its frames is used again
+        memory.clear()
     return train.expose("cam", analyzers, grid=grid, engine="grid", **options).frames
 
 

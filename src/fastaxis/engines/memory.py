@@ -110,7 +110,9 @@ if hasattr(os, "register_at_fork"):
 
 
 def forget_light() -> None:
-    """Free the memory of the light kept between questions; answers stay what they are.
+    """Free the memory of the light kept between questions, and that of frames that nobody holds any more.
+
+    Answers stay what they are.
 
     Examples
     --------
@@ -119,6 +121,7 @@ def forget_light() -> None:
     """
     for memory in MEMORIES:
         memory.clear()
+    recycled.give_up()
 
 
 def remember_light(up_to: int) -> None:

@@ -64,7 +64,11 @@ class Questions:
     def sweep(
         self, values: Mapping[str, Any], target: str, settings: Any, *, zipped: bool = False, **options: Any
     ) -> Any:
-        """Camera frames for many values of some parameters: {"hwp.fast": angles, "qp.retardance": values}."""
+        """Camera frames for many values of some parameters: {"hwp.fast": angles, "qp.retardance": values}.
+
+        Every combination of the values, or one of each at a time with ``zipped``. Options are ``grid``, ``engine`` and
+        ``progress``, as in :func:`fastaxis.studies.sweep`.
+        """
         return late("studies.sweep", "sweep")(self, values, target, settings, zipped=zipped, **options)
 
     def tolerance(
