@@ -57,10 +57,10 @@ def test_pixels_collect_the_sum(kind, raster):
 def test_total_stokes_is_the_sum_over_the_plane():
     (part,) = fields(PLATES["patterned"][0])[0]
     x = part.light.x
-    images = stokes(part.at(x, x))
+    kept = stokes(part.at(x, x)).sum(axis=(1, 2)) * part.light.pitch**2
     np.testing.assert_allclose(
         part.total_stokes,
-        images.sum(axis=(1, 2)) * part.light.pitch**2 * (1 + part.light.beyond),
+        kept + kept[0] * part.light.beyond * np.append(1, part.light.beyond_state),
         atol=1e-15 * part.power,
     )
 

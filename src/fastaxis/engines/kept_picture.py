@@ -60,7 +60,7 @@ class Kept:
     sent : power of the source it was made with [W].
     power : of all the light [W]; None if not known.
     totals : its S0 .. S3; None if not known.
-    scattered : whether edges or singular points scattered some of it beyond its samples, in which state is not known.
+    scattered : whether edges scattered some of it beyond its samples, in a state that is not known.
     guard : how well samples carried the light.
     strain : how close it came to being cautioned of, which begins at 1.
     told : cautions that the light gave rise to.

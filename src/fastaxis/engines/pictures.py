@@ -158,7 +158,8 @@ def _kept(found: Sequence[Any], images: Images, branches: Sequence[Branch], told
     if light.jones is not None and light.jones.any():
         length = float(np.linalg.norm(light.jones))
         return replace(kept, images=images[:1].copy(), jones=light.jones / length)
-    strain, scattered = _strain(guard, light.band_power, branch.sampling), light.beyond != 0
+    strain = _strain(guard, light.band_power, branch.sampling)
+    scattered = light.beyond != 0 and light.beyond_state is None
     return replace(kept, totals=field.total_stokes, scattered=scattered, strain=strain)
 
 

@@ -5,8 +5,10 @@ from dataclasses import replace
 import numpy as np
 import pytest
 
+from fastaxis.engines.field import Guard
 from fastaxis.engines.grid.light import GridLight, axis, inner
 from fastaxis.engines.grid.pointwise import past_axis, past_matrix, past_scalar
+from fastaxis.engines.grid.reading import GridField
 from fastaxis.engines.grid.settling import settled
 from fastaxis.laws import Amplitude, AxisLaw, Disc, ScalarLaw
 from fastaxis.maths import Pattern
@@ -87,6 +89,38 @@ def test_power_is_kept(charge, centre):
     again = settled(spiral(after, charge, (-0.2e-3, 0.0)))
     assert again.beyond > after.beyond
     assert again.power == pytest.approx(light().power, rel=1e-13)
+
+
+LATER = {
+    "nothing": None,
+    "half-wave plate": AxisLaw(*HALF_WAVE, 0.4),
+    "polarizer": AxisLaw(Amplitude(1.0), Amplitude(0.0), -0.7),
+    "weak polarizer": AxisLaw(Amplitude(0.8), Amplitude(0.3), 0.1),
+}
+
+
+@pytest.mark.parametrize("later", LATER)
+@pytest.mark.parametrize("centre", PLACES)
+def test_all_light_keeps_its_polarization(later, centre):
+    """What a detuned q-plate scatters to steep angles is of the hand it converts to, not as the rest; and it stays so
+    behind uniform parts, each of which lets as much of it pass as in the plane of the plate."""
+    detuned = AxisLaw(Amplitude(1.0, -0.4), Amplitude(1.0, 0.4), 0.2, 1.5, centre)
+    here = past_axis(light(np.array([1, 1j]) / np.sqrt(2)), detuned)
+    there = settled(replace(here, samples=here.samples.copy()))
+    assert not centre[0] <= PITCH or abs(there.beyond) > 1e-4
+    if LATER[later]:
+        here, there = (past_matrix(one, JonesStep.of(LATER[later])) for one in (here, there))
+    exact, found = (GridField(replace(one, singular=None), Guard()).total_stokes for one in (here, there))
+    assert found == pytest.approx(exact, rel=1e-12, abs=1e-13)
+
+
+def test_two_plates_one_after_the_other_count_the_light_of_both():
+    first = settled(plate(light(), 1.0))
+    both = settled(plate(first, 1.0, (0.2e-3, 0.0)))
+    assert both.power == pytest.approx(light().power, rel=1e-13)
+    assert both.beyond > 1.5 * first.beyond
+    stopped = past_scalar(replace(both, samples=both.samples.copy()), ScalarLaw(stop=Disc(0.6e-3)))
+    assert stopped.beyond_state is None
 
 
 @pytest.mark.parametrize("charge", [8, 12, 20])

@@ -50,7 +50,7 @@ class GridSum:
         lights = self._carried if len(ways) == 1 else [field.light for field in self.fields]
         light = _sum([one.filled_up() for one in lights], self.coefficients)
         # Each field fills as many waves as it needs; how many the sum fills is found anew.
-        light = replace(light, filled=None, beyond=self._beyond())
+        light = replace(light, filled=None, beyond=self._beyond(), beyond_state=None)
         return (FarField if light.ahead else GridField)(light, self.guard, self.fields[0].grid)
 
     @property

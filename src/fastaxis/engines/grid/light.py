@@ -12,7 +12,7 @@ from fastaxis.engines.grid.singular import Singular
 from fastaxis.engines.grid.workers import strips
 from fastaxis.laws import TravelLaw
 
-__all__ = ["GridLight", "Rims", "Samples", "axis", "curve", "inner", "multiply_separable"]
+__all__ = ["GridLight", "Rims", "Samples", "axis", "curve", "inner", "multiply_separable", "stokes_sum"]
 
 Samples: TypeAlias = NDArray[Any]
 """Complex numbers of double or single precision."""
@@ -53,6 +53,7 @@ class GridLight:
         shrinks, and the pitch shrinks as the source's window grows.
     turned : whether the light is on such a plane.
     beyond : light that edges and singular points scatter beyond the band, as a share of what the samples hold.
+    beyond_state : (3,) S1/S0, S2/S0 and S3/S0 of that light; None where it is taken to be polarized as the rest.
     filled : waves along a side that hold the light, if known from the travel it comes from; None if not.
     room : samples along a side of its window, if those kept are the middle of it and all others dark; None if all are.
     ahead : a last travel that is left to whoever looks at the light; None if there is none.
@@ -69,6 +70,7 @@ class GridLight:
     turned_rims: Rims = Rims()
     turned: bool = False
     beyond: float = 0.0
+    beyond_state: NDArray[np.float64] | None = None
     filled: int | None = None
     room: int | None = None
     ahead: TravelLaw | None = None
@@ -165,6 +167,13 @@ def inner(one: Samples, other: Samples) -> complex:
         return complex(np.einsum("kij,kij->", one[:, strip].conj(), other[:, strip], dtype=complex))
 
     return complex(sum(strips(add, *one.shape[-2:])))
+
+
+def stokes_sum(samples: Samples) -> NDArray[np.float64]:
+    """S0 .. S3 of (Ex, Ey) added up over all samples, (4,)."""
+    ex, ey = samples[:1], samples[1:]
+    px, py, cross = inner(ex, ex).real, inner(ey, ey).real, 2 * inner(ex, ey)
+    return np.array([px + py, px - py, cross.real, -cross.imag])
 
 
 def multiply_separable(samples: Samples, across: NDArray[Any], down: NDArray[Any] | None = None) -> None:

@@ -14,6 +14,7 @@ from fastaxis.engines.grid.settling import noted, settled, watched
 from fastaxis.engines.grid.singular import Turns
 from fastaxis.engines.grid.workers import strips
 from fastaxis.laws import AxisLaw, Flip, ScalarLaw, Stop
+from fastaxis.light.mueller import muellers
 from fastaxis.maths import NUMBERS, Pattern
 from fastaxis.plan import JonesStep
 from fastaxis.plan.merge import split_lens
@@ -33,6 +34,22 @@ def past_matrix(light: GridLight, law: JonesStep) -> GridLight:
     matrix = np.array(law.matrix, dtype=complex)
     if light.jones is not None:
         return replace(light, jones=matrix @ light.jones)
+    return _past_matrix(light, law, matrix) if light.beyond_state is None else _scattered_too(light, law, matrix)
+
+
+def _scattered_too(light: GridLight, law: JonesStep, matrix: NDArray[np.complex128]) -> GridLight:
+    """The same with light beyond the band that is polarized otherwise: its share of the rest changes."""
+    (mueller,) = muellers(matrix[np.newaxis])
+    turned = mueller @ np.append(1, light.beyond_state)  # type: ignore[arg-type]  # asked by who calls
+    even = np.ptp(np.linalg.svd(matrix, compute_uv=False)) <= RANK_ONE * mueller[0, 0]
+    before = 1.0 if even else light.power / (1 + light.beyond)
+    after = _past_matrix(replace(light, beyond=0.0), law, matrix)
+    kept = mueller[0, 0] if even else after.power
+    state = turned[1:] / turned[0] if after.jones is None and turned[0] else None
+    return replace(after, beyond=light.beyond * turned[0] * before / kept if kept else 0.0, beyond_state=state)
+
+
+def _past_matrix(light: GridLight, law: JonesStep, matrix: NDArray[np.complex128]) -> GridLight:
     if passes_one_state(law):
         left, strengths, right = np.linalg.svd(matrix)
         samples = np.empty_like(light.samples[:1])
@@ -97,6 +114,7 @@ def past_axis(light: GridLight, law: AxisLaw, after: JonesStep | None = None) ->
     """
     patterned = _patterned(law)
     light = settled(light) if patterned else watched(light, law.centre, int(2 * law.order))
+    light = replace(light, beyond_state=None)
     samples = light.samples
     if light.jones is not None:
         samples = scratch((2, *samples.shape[1:]), samples.dtype)
@@ -198,7 +216,7 @@ def past_scalar(light: GridLight, law: ScalarLaw) -> GridLight:
         multiply_separable(light.samples, across, down)
     if law.stop is not None:
         lost = sum(strips(partial(_stopped, light, law.stop, (x, y)), light.count, light.count))
-        light = replace(light, periodic=False, beyond=_beyond(light, law.stop, lost))
+        light = replace(light, periodic=False, beyond=_beyond(light, law.stop, lost), beyond_state=None)
     return replace(_spiralled(light, law, (x, y)) if law.charge else light, filled=None)
 
 

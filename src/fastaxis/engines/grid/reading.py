@@ -16,7 +16,7 @@ from fastaxis.engines.grid.filled import beat, filled
 from fastaxis.engines.grid.interpolant import value_matrix
 from fastaxis.engines.grid.kernel import blocks, reach_for
 from fastaxis.engines.grid.landing import KEPT, landing_length, lines
-from fastaxis.engines.grid.light import GridLight, Samples, curve, inner
+from fastaxis.engines.grid.light import GridLight, Samples, curve, inner, stokes_sum
 from fastaxis.engines.grid.nearby import Nearby, nearby
 from fastaxis.engines.grid.sampled_waves import waves_of
 from fastaxis.engines.grid.transforms import forward
@@ -69,12 +69,13 @@ class GridField:
     @property
     def total_stokes(self) -> Reals:
         """S0 .. S3 of all the light [W], shape (4,); what edges scattered counts with the polarization of the rest."""
-        light, area = self.light, self.light.pitch**2 * (1 + self.light.beyond)
+        light, area = self.light, self.light.pitch**2
         if light.jones is not None:
-            return np.asarray(inner(light.samples, light.samples).real * area * stokes(light.jones))
-        ex, ey = light.samples[:1], light.samples[1:]
-        px, py, cross = inner(ex, ex).real, inner(ey, ey).real, 2 * inner(ex, ey)
-        return np.array([px + py, px - py, cross.real, -cross.imag]) * area
+            whole = inner(light.samples, light.samples).real * area * (1 + light.beyond)
+            return np.asarray(whole * stokes(light.jones))
+        kept = stokes_sum(light.samples) * area
+        scattered = kept if light.beyond_state is None else kept[0] * np.append(1, light.beyond_state)
+        return np.asarray(kept + light.beyond * scattered)
 
     def at(self, x: Reals, y: Reals) -> Complexes:
         """(Ex, Ey) [sqrt(W)/m] at columns x and rows y [m], shape (2, ny, nx)."""

@@ -6,9 +6,10 @@ import math
 from dataclasses import replace
 
 import numpy as np
+from numpy.typing import NDArray
 
 from fastaxis.engines.grid.lattice_sums import reach
-from fastaxis.engines.grid.light import GridLight, inner
+from fastaxis.engines.grid.light import GridLight, Samples, inner, stokes_sum
 from fastaxis.engines.grid.singular import Singular, Turns
 
 __all__ = ["noted", "settled", "watched"]
@@ -53,12 +54,30 @@ def settled(light: GridLight) -> GridLight:
     block = light.samples[(slice(None), *known.places(light.count))]
     if not block.any():
         return light
-    before = _squares(block)
+    before = _sums(block)
     block[...] = known.values(light.count)
-    lost = before - _squares(block)
+    return _scattering(light, before - _sums(block))
+
+
+def _sums(samples: Samples) -> NDArray[np.float64]:
+    """S0 .. S3 of some samples; of one component S0 alone."""
+    wide = samples.astype(np.complex128, copy=False)
+    return stokes_sum(wide) if len(wide) == 2 else np.array([inner(wide, wide).real])
+
+
+def _scattering(light: GridLight, lost: NDArray[np.float64]) -> GridLight:
+    """The light with what its samples have just lost, S0 or S0 .. S3, counted beyond their band."""
     kept = inner(light.samples, light.samples).real
-    return replace(light, beyond=(light.beyond * (kept + lost) + lost) / kept if kept else light.beyond)
+    if not kept:
+        return light
+    beyond = lost + light.beyond * (kept + lost[0]) * _state(light) if light.beyond else lost
+    state = beyond[1:] / beyond[0] if len(beyond) == 4 and beyond[0] else None
+    return replace(light, beyond=float(beyond[0] / kept), beyond_state=state)
 
 
-def _squares(samples: np.ndarray) -> float:
-    return float(np.sum(abs(samples.astype(np.complex128, copy=False)) ** 2))
+def _state(light: GridLight) -> NDArray[np.float64]:
+    """(1, S1/S0 ...) of light beyond the band."""
+    if light.beyond_state is not None:
+        return np.append(1, light.beyond_state)
+    sums = _sums(light.samples)
+    return np.asarray(sums / sums[0])

@@ -77,7 +77,7 @@ def _summed(arm: Any, number: complex, modes: Sequence[Any], numbers: Complexes,
         samples, jones = number * light.components() + total.at(x, x) * (chirp * chirp[:, np.newaxis]), None
     samples = samples.astype(light.samples.dtype, copy=False)
     filled = None if light.filled is None else max(light.filled, band)
-    sum_of_all = replace(light, samples=samples, jones=jones, filled=filled, beyond=0.0)
+    sum_of_all = replace(light, samples=samples, jones=jones, filled=filled, beyond=0.0, beyond_state=None)
     # What edges scatter is the same light, as a share of more or of less.
     ours = abs(number) ** 2 * light.power * light.beyond / (1 + light.beyond)
     lost = ours / sum_of_all.power if ours else 0.0
