@@ -35,3 +35,16 @@ def test_panels_end_where_the_light_is_asked_for(light, share):
 def test_no_more_panels_than_allowed(light):
     waist = waist_behind(light)
     assert len(foreseen(light, waist, waist.curvature, 0.9 * waist.reach, 3)) == 4
+
+
+def test_what_is_followed_into_the_dark_widens_no_panels(light):
+    nodes, end = light.profile.nodes, light.profile.end
+    waist = waist_behind(light)
+    lit = waist.reach / waist.radius * nodes[np.searchsorted(_share(light), 1 - np.exp(-2))]
+    assert 0.85 * end < lit < 0.95 * end
+    assert abs(light.profile(np.array([lit]))).max() >= 1e-13 * light.profile.peak
+
+
+def _share(light):
+    density = (abs(light.profile.flat()) ** 2).sum(axis=0) * light.profile.weights * light.profile.nodes
+    return np.cumsum(density) / density.sum()

@@ -15,6 +15,7 @@ __all__ = ["INSIDE", "Waist", "foreseen", "waist_behind"]
 
 INSIDE = 1 - math.exp(-2)  # share of the power inside of the 1/e^2 radius
 CARRIED = 16.0  # phase [rad] of a panel of 32 nodes with an envelope of its own: 2.5 fringes, less what that takes
+DARK = 1e-13  # of the peak, which is what panels settle to
 RIM = 1e-12  # of the peak: where a field ends in the dark
 
 
@@ -25,7 +26,7 @@ class Waist:
     Parameters
     ----------
     radius : that holds 86 % of the power [m].
-    reach : where it gets as dark as the light before the section is at its end [m].
+    reach : where it gets dark as the light before the section does [m].
     curvature : of its front [1/m].
     """
 
@@ -42,7 +43,7 @@ def waist_behind(field: Harmonics) -> Waist:
     radius = math.hypot(flat.a * inside, flat.b * spread)
     # Re 1/q behind the section, for a flat waist in front of it.
     curvature = (flat.a * flat.c * inside**2 + flat.b * flat.d * spread**2) / radius**2
-    return Waist(radius, radius * field.profile.end / inside, curvature)
+    return Waist(radius, radius * _lit(field.profile) / inside, curvature)
 
 
 def _radius(profile: Profile) -> float:
@@ -50,6 +51,12 @@ def _radius(profile: Profile) -> float:
     density = (abs(profile.flat()) ** 2).sum(axis=0) * profile.weights * profile.nodes
     share = np.cumsum(density) / density.sum()
     return float(profile.nodes[np.searchsorted(share, INSIDE)])
+
+
+def _lit(profile: Profile) -> float:
+    """Radius [m] up to which the light counts, whatever is followed beyond."""
+    level = abs(profile.flat()).max(axis=0)
+    return float(profile.nodes[np.flatnonzero(level >= DARK * profile.peak)[-1]])
 
 
 def foreseen(field: Harmonics, waist: Waist, curvature: float, end: float, most: int) -> Reals:
