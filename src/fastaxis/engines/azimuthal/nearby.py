@@ -34,6 +34,7 @@ STEP = 0.19  # below pi/(MIDDLE + EDGE): the chirp at the end of the window stil
 INNER = 18.0  # t of the places near the axis; beyond, terms of the series fall by 1/400 each
 SMOOTH = 5.0  # largest t by which light at an angle may shift an image
 TERMS = 17  # of the Taylor series of the field about the axis
+LEAST = 1e-17  # of a term of Hankel's series that counts
 MOST_CHARGE = 12  # the phase of a kernel of high order is no longer nearly linear within the window
 
 TABLES: WeakKeyDictionary[Profile, Table] = WeakKeyDictionary()
@@ -196,9 +197,11 @@ def _window(t: Reals, middle: float) -> Reals:
 
 def _slow(order: int, x: Reals, sign: int) -> Complexes:
     """H_l(x) sqrt(pi x/2) without its exponential: Hankel's series sum of a_j (+-i/x)^j (DLMF 10.17.5)."""
-    terms = [1.0]
+    terms, nearest = [1.0], float(x.min())
     for j in range(1, 2 * order + 10):
         terms.append(terms[-1] * (4 * order**2 - (2 * j - 1) ** 2) / (8 * j))
+        if abs(terms[-1]) < LEAST * nearest**j:
+            break
     inverse, total = -1j * sign / x, np.zeros_like(x, dtype=complex)
     for term in reversed(terms):
         total *= inverse
