@@ -1,5 +1,7 @@
 """What is foreseen of the light behind a section."""
 
+from dataclasses import replace
+
 import numpy as np
 import pytest
 
@@ -48,3 +50,13 @@ def test_what_is_followed_into_the_dark_widens_no_panels(light):
 def _share(light):
     density = (abs(light.profile.flat()) ** 2).sum(axis=0) * light.profile.weights * light.profile.nodes
     return np.cumsum(density) / density.sum()
+
+
+def test_a_soft_end_is_no_rim(arrive):
+    cut = arrive(Gaussian(waist=W), QPlate(q=0.5), FreeSpace(0.2), QPlate(q=0.5), FreeSpace(0.2), state=L).harmonics
+    waist = waist_behind(cut)
+    assert cut.taper
+    soft, hard = (
+        foreseen(light, waist, waist.curvature, waist.reach, 640) for light in (cut, replace(cut, taper=None))
+    )
+    assert 2 * len(soft) < len(hard)

@@ -69,7 +69,7 @@ def foreseen(field: Harmonics, waist: Waist, curvature: float, end: float, most:
     flat = TravelLaw.lens(-field.curvature).then(field.section)
     core = abs(field.profile(np.zeros(1))[np.array(field.charges) != 0]).max(initial=0.0)
     other = flat.d / flat.b if core > RIM * field.profile.peak else curvature
-    rim = abs(field.profile.values[:, -1, -4:]).max() > RIM * field.profile.peak
+    rim = field.taper is None and abs(field.profile.values[:, -1, -4:]).max() > RIM * field.profile.peak
     near = end if rim else min(end, waist.reach)
     bend = field.wavenumber * abs(other - waist.curvature) / 2
     slope = 1.7 * CARRIED * (1 + max(abs(l) for l in field.charges)) / waist.reach

@@ -31,7 +31,7 @@ class Settings:
     settled: float = 1e-13
     dark: float = 1e-13
     most: int = 640
-    tail: int = 160
+    tail: int = 200
     furthest: float = 6.0
     phase: float = 40.0
 

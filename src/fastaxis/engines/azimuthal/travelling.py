@@ -133,7 +133,8 @@ def _travelled(field: Harmonics, settings: Settings, start: float, end: float | 
     waist = waist_behind(field)
     section = _section(field, waist, settings, end)
     if end is None:
-        edges = _first_edges(start, max(4 * waist.radius, 2 * start))
+        first = max(4 * waist.radius, 2 * start)
+        edges = _first_edges(start, first) if start else foreseen(field, waist, section.behind, first, settings.most)
         profile, rest, cut = extended(section, edges, settings)
     else:
         edges = _first_edges(start, end) if start else foreseen(field, waist, section.behind, end, settings.most)
