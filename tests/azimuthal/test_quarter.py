@@ -1,5 +1,7 @@
 """A centred camera made on a quarter of its pixels, against the way that serves any camera."""
 
+import math
+
 import numpy as np
 import pytest
 
@@ -10,10 +12,11 @@ from fastaxis.engines.azimuthal.rendering import corner
 from fastaxis.engines.azimuthal.smooth import smooth_images
 from fastaxis.engines.memory import forget_light
 from fastaxis.light import Gaussian, HermiteGauss, LaguerreGauss, Raster, elliptical
-from fastaxis.units import mm, um
+from fastaxis.units import mm, nm, um
 
 BEAM = Gaussian(waist=0.3 * mm)
 STATE = elliptical(0.3, 0.4)
+BEAM_BEHIND = 0.3 * mm * math.hypot(1, 0.1 * 632.8 * nm / (math.pi * (0.3 * mm) ** 2))
 TRAINS = {
     "no turn": (BEAM, [FreeSpace(0.2)]),
     "one charge": (BEAM, [SpiralPlate(charge=3), FreeSpace(0.4)]),
@@ -80,3 +83,13 @@ def test_the_whole_camera_adds_up_to_the_power(arrive):
     images = arrive(BEAM, HalfWavePlate(fast=0.2), FreeSpace(0.2), state=STATE).stokes_on(Raster(40 * um, (100, 100)))
     assert images[0].sum() == pytest.approx(1.0, rel=1e-9)
     assert images[0].shape == (100, 100)
+
+
+@pytest.mark.parametrize("pitch", [1 * mm, 5 * mm, 20 * mm])
+@pytest.mark.parametrize("shape", [(2, 2), (3, 3), (1, 2), (2, 3)])
+def test_pixels_wider_than_the_light_hold_all_of_it(arrive, pitch, shape):
+    images = arrive(BEAM, FreeSpace(0.1)).stokes_on(Raster(pitch, shape))
+    ny, nx = shape
+    middle = images[0][(ny - 1) // 2 : ny // 2 + 1, (nx - 1) // 2 : nx // 2 + 1]
+    exact = [math.erf(math.sqrt(2) * (pitch / 2 if n % 2 else pitch) / BEAM_BEHIND) for n in shape]
+    assert middle.sum() == pytest.approx(exact[0] * exact[1], rel=1e-10)

@@ -98,10 +98,15 @@ def blocks_along(line: Callable[[Reals], Reals], places: Reals, pitch: float, pe
     return [found[a] for a in sorted(found)]
 
 
-def lines_across(places: Reals) -> Reals:
-    """A few of the places, from the nearest to the axis to the farthest."""
+def lines_across(places: Reals, pitch: float = 0.0) -> Reals:
+    """A few of the places, from the nearest to the axis to the farthest: of pixels so wide, to their own edges.
+
+    A picture may lie between the axis and the middle of the nearest pixel, if that is wider than the light.
+    """
     distances = abs(places)
     near, far = places[distances.argmin()], places[distances.argmax()]
+    near -= np.sign(near) * min(abs(near), pitch / 2)
+    far += np.sign(far) * pitch / 2
     return np.unique(near + LINES * (far - near))
 
 

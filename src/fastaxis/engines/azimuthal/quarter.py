@@ -17,7 +17,7 @@ from fastaxis.engines.azimuthal.core import core_means, near_places
 from fastaxis.engines.azimuthal.panels import Reals
 from fastaxis.engines.azimuthal.products import PRODUCT
 from fastaxis.engines.azimuthal.shapes import Shapes, remembered
-from fastaxis.engines.azimuthal.smooth import NONE, blocks_of, has_core
+from fastaxis.engines.azimuthal.smooth import NONE, blocks_of, has_core, hides
 from fastaxis.engines.azimuthal.table import Table
 from fastaxis.engines.azimuthal.waves import Part, Wave, parts_of, pictures, waves_of, weights_of
 from fastaxis.light import Raster
@@ -54,7 +54,7 @@ def centred_images(table: Table, shapes: Shapes, orders: Sequence[tuple[int, int
     """
     parts = parts_of(table, orders)
     waves = waves_of(parts)
-    if not waves or len(waves) > MOST:
+    if not waves or len(waves) > MOST or hides(table, raster):
         return None
     key = ("quarter", raster.pitch, raster.shape, waves)
     quarter = remembered(key, shapes, lambda: _Quarter(_means(table, parts, waves, raster)))

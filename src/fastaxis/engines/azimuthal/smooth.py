@@ -17,10 +17,12 @@ from fastaxis.engines.azimuthal.table import Table
 from fastaxis.light import Raster
 from fastaxis.recycled import empty
 
-__all__ = ["NONE", "blocks_of", "has_core", "smooth_images"]
+__all__ = ["NONE", "blocks_of", "has_core", "hides", "smooth_images"]
 
 NONE = slice(0, 0)
 CORE = 1 / 64  # of a pixel, where harmonics are asked how they go to the axis
+WIDE = 16  # panels a pixel: 48 nodes are three a panel, and a panel that is lit has a lit third
+CLOSE = 1e-9  # of half a pixel: a border on the axis is rounded
 LEFT_OVER = 1e-11  # of the peak of the field: several roundings of the table
 
 
@@ -29,6 +31,8 @@ def smooth_images(table: Table, profile: Profile, orders: Orders, raster: Raster
 
     Where the light has a core, the pixels about it are none of the polynomials of the rest and are made apart.
     """
+    if hides(table, raster):
+        return None
 
     def images(x: Reals, y: Reals) -> Reals:
         return stokes_of(circular_field(table, orders, x, y))
@@ -61,6 +65,15 @@ def smooth_images(table: Table, profile: Profile, orders: Orders, raster: Raster
     return out
 
 
+def hides(table: Table, raster: Raster) -> bool:
+    """Whether pixels are so wide that the nodes a block is looked at with may miss all the light on a panel.
+
+    Nodes are close together at the borders of pixels, so that an axis in between hides nothing.
+    """
+    inside = any(abs(places).min() < raster.pitch / 2 * (1 - CLOSE) for places in (raster.x, raster.y))
+    return bool(inside and raster.pitch > WIDE * np.diff(table.edges).min())
+
+
 def has_core(table: Table, charges: Sequence[int], pitch: float, peak: float) -> bool:
     """Whether a function with a charge l goes to the axis otherwise than as r^|l|, as directly behind a q-plate.
 
@@ -83,8 +96,8 @@ def blocks_of(
 ) -> list[Block] | None:
     """Blocks along one side; pixels near a core, on this and the other side, are looked at far from it on the other."""
     (places, others), (here, there) = sides, near
-    all_over, far = lines_across(others), np.delete(others, there)
-    beside = lines_across(far) if len(far) else far
+    all_over, far = lines_across(others, pitch), np.delete(others, there)
+    beside = lines_across(far, pitch) if len(far) else far
     beside = beside[abs(beside) > FREE * pitch]
     found: list[Block] = []
     for first, last, lines in ((0, here.start, all_over), (here.start, here.stop, beside), (here.stop, None, all_over)):
