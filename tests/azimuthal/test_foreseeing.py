@@ -5,7 +5,7 @@ from dataclasses import replace
 import numpy as np
 import pytest
 
-from fastaxis.elements import FreeSpace, QPlate
+from fastaxis.elements import FreeSpace, Obstacle, QPlate
 from fastaxis.engines.azimuthal.foreseeing import foreseen, waist_behind
 from fastaxis.light import Gaussian, L
 from fastaxis.units import mm, nm
@@ -60,3 +60,14 @@ def test_a_soft_end_is_no_rim(arrive):
         foreseen(light, waist, waist.curvature, waist.reach, 640) for light in (cut, replace(cut, taper=None))
     )
     assert 2 * len(soft) < len(hard)
+
+
+def test_the_rim_of_an_obstacle_is_one_though_the_end_is_soft(arrive):
+    parts = [QPlate(q=0.5), FreeSpace(0.2), Obstacle(radius=0.3 * mm), FreeSpace(0.02)]
+    behind = arrive(Gaussian(waist=W), *parts, state=L).harmonics
+    assert behind.taper
+    waist = waist_behind(behind)
+    edges = foreseen(behind, waist, waist.curvature, 1 * mm, 640)
+    # Waves of k rim/b along the radius, 2.5 fringes a panel.
+    fringes = 1 * mm * 0.3 * mm / 0.02 / (632.8 * nm)
+    assert len(edges) - 1 > fringes / 2.6

@@ -59,6 +59,14 @@ def _lit(profile: Profile) -> float:
     return float(profile.nodes[np.flatnonzero(level >= DARK * profile.peak)[-1]])
 
 
+def _rim(field: Harmonics) -> float:
+    """Radius [m] of the outermost rim that is lit: of a hole, or of an obstacle; 0 if there is none."""
+    profile, level = field.profile, RIM * field.profile.peak
+    if field.taper is None and abs(profile.values[:, -1, -4:]).max() > level:
+        return profile.end
+    return profile.start if abs(profile.values[:, 0, :4]).max() > level else 0.0
+
+
 def foreseen(field: Harmonics, waist: Waist, curvature: float, end: float, most: int) -> Reals:
     """Panels with about as many fringes each as they carry, so that few have to be halved.
 
@@ -69,12 +77,12 @@ def foreseen(field: Harmonics, waist: Waist, curvature: float, end: float, most:
     flat = TravelLaw.lens(-field.curvature).then(field.section)
     core = abs(field.profile(np.zeros(1))[np.array(field.charges) != 0]).max(initial=0.0)
     other = flat.d / flat.b if core > RIM * field.profile.peak else curvature
-    rim = field.taper is None and abs(field.profile.values[:, -1, -4:]).max() > RIM * field.profile.peak
+    rim = _rim(field)
     near = end if rim else min(end, waist.reach)
     bend = field.wavenumber * abs(other - waist.curvature) / 2
     slope = 1.7 * CARRIED * (1 + max(abs(l) for l in field.charges)) / waist.reach
     if rim:
-        slope = max(slope, field.wavenumber * field.profile.end / abs(flat.b))
+        slope = max(slope, field.wavenumber * rim / abs(flat.b))
     whole = near * (slope + bend * near)
     phase = np.linspace(0, whole, min(max(2, math.ceil(whole / CARRIED)), most) + 1)
     inner = 2 * phase / (slope + np.sqrt(slope**2 + 4 * bend * phase))
