@@ -14,7 +14,7 @@ from fastaxis.plan.cavity import RoundTrip
 from fastaxis.plan.last_plates import without_last_plates
 from fastaxis.units import mm, nm
 
-GRID = fa.Grid(96, 9 * mm)
+GRID = fa.Grid(320, 9 * mm)
 CENTRE = (0.1 * mm, -0.2 * mm)
 angles = st.floats(-1.5, 1.5)
 plates = st.one_of(

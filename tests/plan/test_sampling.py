@@ -25,7 +25,7 @@ def bench(*parts, tilt=0.0, centre=0.0):
     return fa.Train(wavelength=WAVELENGTH).along(laser, *parts, fa.Wedge(x=tilt), fa.FreeSpace(50 * mm), camera)
 
 
-SHAPED = {"smooth": [], "singular": [fa.SpiralPlate(charge=1)], "edged": [fa.Aperture(radius=0.8 * mm)]}
+SHAPED = {"smooth": [], "singular": [fa.SpiralPlate(charge=1)], "edged": [fa.Aperture(radius=1 * mm)]}
 
 
 @pytest.mark.parametrize("tilt", [28 * mrad, 40 * mrad, 60 * mrad, 100 * mrad])

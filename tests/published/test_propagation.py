@@ -105,6 +105,7 @@ def test_on_the_axis_behind_a_round_hole(arrive, fresnel_number, expected):
     assert irradiance(field, ORIGIN)[0] == pytest.approx(expected, abs=EDGE)
 
 
+@coarse
 @pytest.mark.parametrize("distance", [1.0, 3.0])
 def test_poisson_spot(arrive, distance):
     """Behind a round obstacle the irradiance on the axis is 1 at every distance. Born & Wolf, chapter 8.
@@ -223,6 +224,7 @@ def test_band_limit():
     assert band_limit(padded, 0.323479, WAVELENGTH) == pytest.approx(1 / (2 * 10 * um), rel=1e-5)
 
 
+@coarse
 def test_the_kernel_changes_at_the_critical_distance():
     """window^2/(samples wavelength). D. G. Voelz and M. C. Roggemann, Appl. Opt. 48, 6132 (2009)."""
     grid = Grid(1024, 10.24 * mm)

@@ -13,7 +13,7 @@ from fastaxis.light import Beam, Term
 from fastaxis.light.modes.family import GaussFamily
 from fastaxis.plan.fuse import as_matrix
 from fastaxis.plan.plan import Branch, Plan
-from fastaxis.plan.sampling import Sampling
+from fastaxis.plan.sampling import Sampling, turned_at
 from fastaxis.plan.steps import Step, Steps
 
 __all__ = ["advance", "carried"]
@@ -66,8 +66,7 @@ def _parted(steps: Steps) -> tuple[Steps, Steps]:
 def _from(sampling: Sampling, end: int, kept: int) -> Sampling:
     """The samples from behind step ``end`` on; what is left of the steps before acts there."""
     here, *rest = sampling.planes[end:]
-    single = [plane for plane in sampling.planes[: end + 1] if plane.hop and plane.hop.kernel == "single"]
-    turned = len(single) % 2 == 1
+    turned = turned_at(sampling.planes, end)
     return replace(sampling, turned=turned, planes=(replace(here, hop=None), *[replace(here, hop=None)] * kept, *rest))
 
 

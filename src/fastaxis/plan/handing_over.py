@@ -8,6 +8,7 @@ from dataclasses import replace
 from fastaxis.laws import AxisLaw, ScalarLaw, TravelLaw
 from fastaxis.light import Source
 from fastaxis.plan.covariant import covariance_reason
+from fastaxis.plan.fineness import needs
 from fastaxis.plan.grid import Grid
 from fastaxis.plan.sampling import Sampling, follow
 from fastaxis.plan.steps import StepLaw, Steps
@@ -61,4 +62,6 @@ def roomier(sampling: Sampling, steps: Steps, wavelength: float) -> Sampling:
     grid = Grid(sampling.grid.samples, sampling.grid.window * min(spare, ROOMIER))
     planes = follow(steps, here.spread, grid, wavelength)
     least = min(min(plane.room, plane.band) for plane in planes)
-    return replace(sampling, grid=grid, planes=planes) if least >= 1 else sampling
+    wider = replace(sampling, grid=grid, planes=planes)
+    fine = all(planes[need.step + 1].pitch <= need.pitch for need in needs(steps, planes, wavelength))
+    return wider if least >= 1 and fine else sampling

@@ -166,16 +166,16 @@ def make_plan(
     if first:
         name, reason = "handover", f"{reason}, but up to there all is round about the axis"
     if name in {"grid", "handover"}:
-        plan = replace(plan, branches=tuple(_sampled(branch, grid, first) for branch in plan.branches))
+        plan = replace(plan, branches=tuple(_sampled(b, grid, first, seen=not bucket) for b in plan.branches))
     return advance(replace(plan, engine=name, reason=reason))
 
 
-def _sampled(branch: Branch, grid: Grid | None, first: int = 0) -> Branch:
-    """A branch with samples for its steps behind the first ones, which harmonics do."""
+def _sampled(branch: Branch, grid: Grid | None, first: int = 0, *, seen: bool) -> Branch:
+    """A branch with samples for its steps behind the first ones, which harmonics do; for a picture or a power."""
     spread, rest = of_beam(branch.beam, branch.wavelength), branch.steps[first:]
     for step in branch.steps[:first]:
         spread = spread.past(step.law, branch.wavelength)
-    sampling = sampling_for(rest, spread, branch.wavelength, grid)
+    sampling = sampling_for(rest, spread, branch.wavelength, grid, seen=seen)
     if first and grid is None:
         sampling = roomier(sampling, rest, branch.wavelength)
     return replace(branch, sampling=sampling, harmonic_steps=first)
@@ -191,7 +191,7 @@ def _joined(plan: Plan, grid: Grid | None, *, bucket: bool, asked: str) -> Plan:
         free = asked == "auto" and grid is None and any(branch.engine == "grid" for branch in chosen)
         for branch in chosen:
             kept = closed((branch,)) if free else None
-            branches += kept or (_sampled(branch, grid) if branch.engine == "grid" else branch,)
+            branches += kept or (_sampled(branch, grid, seen=not bucket) if branch.engine == "grid" else branch,)
     return advance(replace(plan, branches=tuple(branches), engine="joined", reason="light comes by several paths"))
 
 

@@ -5,30 +5,23 @@ from __future__ import annotations
 import math
 from collections.abc import Iterator
 from dataclasses import replace
+from functools import partial
 from itertools import takewhile
-from typing import Any
 
-from fastaxis.errors import ParameterError, SamplingError, SamplingWarning, caution
+from fastaxis.errors import ParameterError
 from fastaxis.laws import AxisLaw, CircularLaw, ScalarLaw, TravelLaw
+from fastaxis.plan.fineness import known_tails, needs
 from fastaxis.plan.grid import Grid
-from fastaxis.plan.sampling import Plane, Sampling, follow
+from fastaxis.plan.judging import RIM, cut, judged
+from fastaxis.plan.refining import LARGE, LENGTHS, Asked, refined
+from fastaxis.plan.sampling import Sampling, follow
 from fastaxis.plan.spread import ROUGH_RADII, Spread, clear_width, closed, reach
 from fastaxis.plan.steps import JonesStep, Steps
 
 __all__ = ["propose", "sampling_for"]
 
-# Lengths with small prime factors, for the transform; smooth beams start at the first, rough ones at 1024.
-LENGTHS = (256, 320, 384, 512, 640, 768, 1024, 1280, 1536, 2048, 3072, 4096)
-LARGE = (6144, 8192, 12288, 16384)  # not taken unasked; named where nothing smaller will do
+FINEST = 2048  # samples taken unasked where only the pitch at an axis or an edge asks for more
 ROUGH_START = 1024
-# Samples in the clear width of a stop: pictures then hold all but 1 % of the power, and powers, of second order in the
-# pitch, are right to 1e-3 even beside a dark line. Six leave 1 % in powers, two 6 %.
-RIM, WARN_RIM, REFUSE_RIM = 1 / (6 * 0.01), 6, 2
-# Margins are in units of a window that holds the beam to its last digit. At 0.55 of it a Gaussian field has fallen
-# to exp(-(3.3)^2) = 2e-5 at the edge; at 0.3, to 4 %: the answer would be a different beam.
-WARN, REFUSE = 0.55, 0.3
-# A rough beam's window holds three radii; one radius is where its edge itself lies.
-WARN_ROUGH, REFUSE_ROUGH = 0.45, 0.334
 
 
 def _planes(steps: Steps, spread: Spread, samples: int, window: float, wavelength: float) -> Sampling:
@@ -109,18 +102,10 @@ def _first_reach(steps: Steps) -> float:
 def _fits(sampling: Sampling, steps: Steps) -> float:
     """The margin of a sampling: room and band at every plane, and stops both held and drawn finely enough."""
     margin = min(min(plane.margin, plane.band) for plane in sampling.planes)
-    for plane, law in _cut(sampling, steps):
-        held = plane.window / 2 / (max(map(abs, law.centre)) + 3 * reach(law.stop))
-        margin = min(margin, held, clear_width(law.stop) / (RIM * plane.pitch))
+    for _, plane, stop, off in cut(sampling, steps):
+        held = plane.window / 2 / (off + 3 * reach(stop))
+        margin = min(margin, held, clear_width(stop) / (RIM * plane.pitch))
     return margin
-
-
-def _cut(sampling: Sampling, steps: Steps) -> Iterator[tuple[Plane, Any]]:
-    """The stops of some width that cut the light, each with its plane."""
-    for plane, step in zip(sampling.planes[1:], steps, strict=False):
-        law = step.law
-        if isinstance(law, ScalarLaw) and law.stop is not None and plane.spread.rough and reach(law.stop):
-            yield plane, law
 
 
 def propose(steps: Steps, spread: Spread, wavelength: float, *, most: int = LENGTHS[-1]) -> Sampling:
@@ -144,8 +129,26 @@ def propose(steps: Steps, spread: Spread, wavelength: float, *, most: int = LENG
     return best
 
 
-def sampling_for(steps: Steps, spread: Spread, wavelength: float, grid: Grid | None) -> Sampling:
+def _fine(sampling: Sampling, steps: Steps, spread: Spread, wavelength: float) -> Sampling:
+    """A proposed sampling with finer samples if an axis or an edge asks for them; as fine as FINEST if for more."""
+    again, is_open = partial(_planes, steps, spread, wavelength=wavelength), _open(steps, spread)
+
+    def asked(found: Sampling) -> Iterator[Asked]:
+        return (Asked(need.step, need.pitch) for need in needs(steps, found.planes, wavelength))
+
+    most = max(FINEST, sampling.grid.samples)
+    better = refined(sampling, again, asked, most, fits=lambda found: _fits(found, steps) >= 1)
+    if better is None:
+        better = again(most, _open_window(steps, spread, most, wavelength) if is_open else sampling.grid.window)
+    return better if better.worst.margin >= min(sampling.worst.margin, 1.0) else sampling
+
+
+def sampling_for(steps: Steps, spread: Spread, wavelength: float, grid: Grid | None, *, seen: bool = True) -> Sampling:
     """The sampling to use: as set by hand, or the automatic one; checked either way.
+
+    Parameters
+    ----------
+    seen : whether the light makes a picture; its power asks for less.
 
     Raises
     ------
@@ -154,7 +157,8 @@ def sampling_for(steps: Steps, spread: Spread, wavelength: float, grid: Grid | N
 
     Warns
     -----
-    SamplingWarning : the grid is tight; errors of about 1e-4 of the peak may show.
+    SamplingWarning : the grid is tight, or too coarse at a singular axis or an edge; errors of 1e-4 to 1e-3 of the peak
+        may show.
     """
     if grid is not None and not isinstance(grid, Grid):
         raise ParameterError(
@@ -162,55 +166,14 @@ def sampling_for(steps: Steps, spread: Spread, wavelength: float, grid: Grid | N
         )
     if grid is None:
         sampling = propose(steps, spread, wavelength)
+        sampling = _fine(sampling, steps, spread, wavelength) if seen else sampling
     else:
         sampling = replace(_planes(steps, spread, grid.samples, grid.window, wavelength), chosen="by hand")
-    _check_stops(sampling, steps)
-    worst = sampling.worst
-    rough = worst.spread.rough
-    if worst.margin >= (WARN_ROUGH if rough else WARN):
-        return sampling
-    message = _message(sampling, steps, spread, wavelength)
-    if worst.margin < (REFUSE_ROUGH if rough else REFUSE):
-        raise SamplingError(**message)
-    caution(SamplingWarning(**message))
-    return sampling
-
-
-def _check_stops(sampling: Sampling, steps: Steps) -> None:
-    """A SamplingError or a warning for a stop that is drawn on too few samples."""
-    drawn = [(clear_width(law.stop) / plane.pitch, plane, law) for plane, law in _cut(sampling, steps)]
-    if not drawn or min(drawn, key=lambda one: one[0])[0] >= WARN_RIM:
-        return
-    fineness, plane, law = min(drawn, key=lambda one: one[0])
-    where = next(", ".join(step.names) for step in steps if step.law is law)
-    grid = sampling.grid
-    samples = 2 * math.ceil(grid.samples * RIM / fineness / 2)
-    message = {
-        "rule": f"the stop there needs {clear_width(law.stop) / RIM * 1e6:.3g} um, for a power right to 1e-3",
-        "got": f"pitch {plane.pitch * 1e6:.3g} um at {where}",
-        "fix": f"grid=fa.Grid(samples={samples}, window={grid.window:.4g})",
-    }
-    if fineness < REFUSE_RIM:
-        raise SamplingError(**message)
-    caution(SamplingWarning(**message))
-
-
-def _message(sampling: Sampling, steps: Steps, spread: Spread, wavelength: float) -> dict[str, str]:
-    worst = sampling.worst
-    index = sampling.planes.index(worst)
-    where = "at the source" if index == 0 else f"after {', '.join(steps[index - 1].names)}"
-    if worst.window == 0:
-        return {
-            "rule": "a plane wave has no finite focus; a stop gives it one",
-            "got": f"plane wave {where}",
-            "fix": 'fa.Aperture(radius=2*mm, name="stop")',
-        }
-    if worst.width_margin <= worst.pitch_margin:
-        got = f"window {worst.window * 1e3:.3g} mm {where}"
-        rule = f"the light there needs {2e3 * worst.spread.half_window:.3g} mm"
-    else:
-        needed = 1 / (2 * worst.spread.half_band(wavelength))
-        got, rule = f"pitch {worst.pitch * 1e6:.3g} um {where}", f"the light there needs {needed * 1e6:.3g} um"
-    better = propose(steps, spread, wavelength, most=LARGE[-1]).grid
-    fix = f"grid=fa.Grid(samples={better.samples}, window={better.window:.4g})"
-    return {"rule": rule, "got": got, "fix": fix}
+    return judged(
+        replace(sampling, known=known_tails(steps, spread)),
+        steps,
+        wavelength,
+        anew=partial(propose, steps, spread, wavelength, most=LARGE[-1]),
+        again=partial(_planes, steps, spread, wavelength=wavelength),
+        seen=seen,
+    )

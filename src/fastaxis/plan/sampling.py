@@ -11,7 +11,7 @@ from fastaxis.plan.grid import Grid
 from fastaxis.plan.spread import Spread
 from fastaxis.plan.steps import Steps
 
-__all__ = ["Hop", "Plane", "Sampling", "follow"]
+__all__ = ["Hop", "Plane", "Sampling", "follow", "turned_at"]
 
 
 @dataclass(frozen=True)
@@ -105,6 +105,9 @@ class Sampling:
     precision : "double", or "single" for half the memory and six digits.
     turned : whether an odd number of single transforms lies between the source and where samples begin: windows there
         grow as the pitch at the source shrinks.
+    known : whether axes and edges are all that keeps the light from falling off fast, so that what they ask of the
+        pitch tells whether it is fine enough.
+    named : the grid that was named when the plan was cautioned of; None if it was not.
     """
 
     grid: Grid
@@ -113,6 +116,8 @@ class Sampling:
     chosen: str = "automatic"
     precision: str = "double"
     turned: bool = False
+    known: bool = False
+    named: Grid | None = None
 
     @property
     def worst(self) -> Plane:
@@ -122,6 +127,12 @@ class Sampling:
     def hop(self, index: int) -> Hop | None:
         """How step ``index`` travels."""
         return self.planes[index + 1].hop
+
+
+def turned_at(planes: tuple[Plane, ...], index: int) -> bool:
+    """Whether an odd number of single transforms leads to a plane, so that window and band have changed places."""
+    singles = [plane for plane in planes[: index + 1] if plane.hop and plane.hop.kernel == "single"]
+    return len(singles) % 2 == 1
 
 
 def _hops(here: Plane, travel: TravelLaw, wavelength: float) -> Iterator[Plane]:

@@ -74,7 +74,9 @@ def test_a_grid_set_by_hand_is_told_when_it_is_coarse():
         fa.Laser(waist=0.65e-3), fa.SpiralPlate(charge=1), fa.FreeSpace(10e-3),
         fa.Camera(pixel=30e-6, shape=(96, 96), name="cam"),
     )  # fmt: skip
-    with pytest.warns(SamplingWarning, match=r"highest frequency.*Grid\(samples=768, window=0.0133\)"):
+    with pytest.warns(
+        SamplingWarning, match=r"34.6 um at spiral1; a picture 10 mm.*Grid\(samples=2048, window=0.0133\)"
+    ):
         train.expose("cam", fa.H, grid=fa.Grid(samples=384, window=13.3e-3), engine="grid")
 
 

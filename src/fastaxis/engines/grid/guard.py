@@ -158,7 +158,7 @@ def check(light: GridLight, step: float, names: tuple[str, ...], sampling: Sampl
     SamplingError : more than 20 % near the edge of the window or cut off.
     """
     worst, (edge, band) = max(light.edge_power, light.discarded), limits(sampling)
-    if worst > edge or light.band_power > band:
+    if worst > edge or light.band_power > band or _pattern(light) > 1:
         better, named = _better(light, sampling.grid, band), sampling.named
         message = _message(light, names, _both(better, named), band)
         if worst > REFUSE:
@@ -169,12 +169,19 @@ def check(light: GridLight, step: float, names: tuple[str, ...], sampling: Sampl
 
 
 def _message(light: GridLight, names: tuple[str, ...], better: Grid, band: float) -> dict[str, Any]:
+    where = " ".join(names) or "source"
+    if _pattern(light) > 1:
+        return {
+            "rule": "from sample to sample a pattern turns light by less than half a wave",
+            "got": f"{where}: a pattern before it is {_pattern(light)} times too fine for its samples",
+            "fix": f"grid=fa.Grid(samples={better.samples}, window={better.window:.4g})",
+        }
     got = f"{light.edge_power:.2%} of the power near the edge of the window, {light.discarded:.2%} cut off by the band"
     if light.band_power > band:
         got = f"{light.band_power:.1e} of the power near the highest frequency of the samples; {got}"
     return {
         "rule": "the samples must hold the light, with dark room around it and fine enough for its edges",
-        "got": f"{' '.join(names) or 'source'}: {got} limit",
+        "got": f"{where}: {got} limit",
         "fix": f"grid=fa.Grid(samples={better.samples}, window={better.window:.4g})",
     }
 
@@ -187,8 +194,13 @@ def _better(light: GridLight, grid: Grid, band: float) -> Grid:
     window.
     """
     narrow, coarse = zip(*(_over(rims, band) for rims in (light.rims, light.turned_rims)), strict=True)
-    wide, fine = narrow[0] or coarse[1], coarse[0] or narrow[1]
-    return Grid(grid.samples * 2 ** (wide + fine), grid.window * 2**wide)
+    wide = max(2 ** (narrow[0] or coarse[1]), light.turned_rims.pattern)
+    fine = max(2 ** (coarse[0] or narrow[1]), light.rims.pattern)
+    return Grid(grid.samples * wide * fine, grid.window * wide)
+
+
+def _pattern(light: GridLight) -> int:
+    return max(light.rims.pattern, light.turned_rims.pattern)
 
 
 def _both(one: Grid, other: Grid | None) -> Grid:

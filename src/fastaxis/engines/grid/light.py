@@ -26,11 +26,13 @@ class Rims:
     ----------
     edge, band : the largest share met near the edge of the window, and near that of the band.
     cut : removed by band limits.
+    pattern : how many times as fine samples must be for the patterns put on them, which is no share.
     """
 
     edge: float = 0.0
     band: float = 0.0
     cut: float = 0.0
+    pattern: int = 1
 
 
 @dataclass(frozen=True)
@@ -91,10 +93,10 @@ class GridLight:
         """Share of the power removed by band limits."""
         return self.rims.cut + self.turned_rims.cut
 
-    def met(self, *, edge: float = 0.0, band: float = 0.0, cut: float = 0.0) -> GridLight:
+    def met(self, *, edge: float = 0.0, band: float = 0.0, cut: float = 0.0, pattern: int = 1) -> GridLight:
         """The same light with what it met on this plane noted."""
         before = self.turned_rims if self.turned else self.rims
-        rims = Rims(max(before.edge, edge), max(before.band, band), before.cut + cut)
+        rims = Rims(max(before.edge, edge), max(before.band, band), before.cut + cut, max(before.pattern, pattern))
         return replace(self, turned_rims=rims) if self.turned else replace(self, rims=rims)
 
     @property
