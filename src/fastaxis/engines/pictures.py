@@ -159,7 +159,7 @@ def _kept(found: Sequence[Any], images: Images, branches: Sequence[Branch], told
         length = float(np.linalg.norm(light.jones))
         return replace(kept, images=images[:1].copy(), jones=light.jones / length)
     strain = _strain(guard, light.band_power, branch.sampling)
-    scattered = light.beyond != 0 and light.beyond_state is None
+    scattered = light.beyond != 0
     return replace(kept, totals=field.total_stokes, scattered=scattered, strain=strain)
 
 

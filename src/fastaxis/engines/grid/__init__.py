@@ -15,7 +15,7 @@ from fastaxis.engines.grid.patterns import finer_wanted
 from fastaxis.engines.grid.pointwise import flipped, passes_one_state, past_axis, past_matrix, past_scalar
 from fastaxis.engines.grid.reading import GridField
 from fastaxis.engines.grid.scaled import travel_scaled
-from fastaxis.engines.grid.settling import settled
+from fastaxis.engines.grid.settling import leaves, settled
 from fastaxis.engines.grid.single import travel_single
 from fastaxis.engines.grid.source import start
 from fastaxis.engines.grid.turning import turned
@@ -45,13 +45,15 @@ def continued(light: GridLight, branch: Branch, first: int, end: int) -> GridLig
     A single transform is put off until something asks for the samples behind it; what looks at the light may not.
     """
     steps, sampling = branch.steps, cast("Sampling", branch.sampling)
-    last = max((i for i, step in enumerate(steps) if isinstance(step.law, TravelLaw)), default=0)
+    last = max((i for i, step in enumerate(steps) if isinstance(step.law, TravelLaw | Turn)), default=-1)
     for index, law, after in _visits([as_matrix(step) or step.law for step in steps[:end]], first):
         hop = sampling.hop(index)
         if light.ahead and not isinstance(law, JonesStep | Flip):  # these commute with travel
             light = edge_watched(travel_single(replace(light.filled_up(), ahead=None), light.ahead))
-        if isinstance(law, TravelLaw | Flip | Turn):
+        if isinstance(law, TravelLaw | Turn):
             light = settled(light)
+        elif index > last and leaves(light, law):
+            light = replace(light, singular=None)  # it goes no further, and in its plane point values are right
         if isinstance(law, TravelLaw) and hop and hop.kernel == "single" and light.full <= KEPT:
             light = replace(light, ahead=law)
         else:
@@ -84,7 +86,7 @@ def _past(light: GridLight, law: StepLaw, hop: Hop | None, after: JonesStep | No
     if isinstance(law, ScalarLaw):
         return past_scalar(light.met(pattern=finer_wanted(light, law)), law)
     if isinstance(law, Flip):
-        return flipped(light, law)
+        return flipped(settled(light), law)
     if isinstance(law, Turn):
         return edge_watched(turned(light.filled_up(), law))
     if isinstance(law, AxisLaw):

@@ -5,7 +5,7 @@ from __future__ import annotations
 from collections.abc import Sequence
 from dataclasses import dataclass, replace
 from functools import cached_property
-from typing import TypeVar
+from typing import Any, TypeVar
 
 import numpy as np
 from numpy.typing import NDArray
@@ -50,7 +50,7 @@ class GridSum:
         lights = self._carried if len(ways) == 1 else [field.light for field in self.fields]
         light = _sum([one.filled_up() for one in lights], self.coefficients)
         # Each field fills as many waves as it needs; how many the sum fills is found anew.
-        light = replace(light, filled=None, beyond=self._beyond(), beyond_state=None)
+        light = replace(light, filled=None, beyond=self._beyond(), steep=_steep(light, lights, self.coefficients))
         return (FarField if light.ahead else GridField)(light, self.guard, self.fields[0].grid)
 
     @property
@@ -129,6 +129,23 @@ def _sum(lights: Sequence[Sampled], coefficients: Complexes) -> Sampled:
         if all(np.array_equal(first.samples, light.samples) for light in lights):
             return replace(first, jones=_total(vectors, coefficients))
     return replace(first, samples=_total([_components(light) for light in lights], coefficients), jones=None)
+
+
+def _steep(whole: GridLight, lights: Sequence[GridLight], coefficients: Complexes) -> Any:
+    """What singular points scattered of a sum: the sum of what they scattered, where that is of the same samples."""
+    if whole.samples is lights[0].samples:
+        return lights[0].steep
+    parts = [
+        light.steep_past(light.jones[:, None]) if whole.jones is None and light.jones is not None else light.steep
+        for light in lights
+    ]
+    if len({tuple(one.shape for one, _ in part) for part in parts}) == 1:
+        return tuple(
+            tuple(_total([pair[which] for pair in pairs], coefficients) for which in (0, 1))
+            for pairs in zip(*parts, strict=True)
+        )
+    each = zip(coefficients, parts, strict=True)
+    return tuple((number * one, number * other) for number, part in each for one, other in part)
 
 
 def _components(light: GridLight | Collected) -> Complexes:

@@ -4,7 +4,7 @@ from __future__ import annotations
 
 import math
 
-from fastaxis.engines.grid.light import GridLight
+from fastaxis.engines.grid.light import GridLight, inner
 from fastaxis.errors import SamplingWarning, caution
 from fastaxis.plan import Grid
 
@@ -15,8 +15,12 @@ WARN = 0.01  # of the power: about what a power meter beside the camera would sh
 
 def beyond_share(light: GridLight) -> float:
     """Share of all the power that edges scattered beyond the band."""
+    beyond = light.beyond
+    if light.steep:
+        kept = inner(light.samples, light.samples).real * light.pitch**2
+        beyond += light.steep_power / kept if kept else 0.0
     # Below 0, where a part took a singularity away: its samples then hold a little more than the light.
-    return max(light.beyond / (1 + light.beyond), 0.0)
+    return max(beyond / (1 + beyond), 0.0)
 
 
 def watch_frame(light: GridLight, grid: Grid | None) -> None:

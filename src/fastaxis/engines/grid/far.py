@@ -66,7 +66,7 @@ class FarField:
     def power(self) -> float:
         """Power [W]: in the window, and scattered by edges beyond the band of the samples; no travel changes it."""
         near, (down, _) = self.near, self.marginals
-        total = float(down.sum()) * near.pitch**2 * (1 + near.beyond)
+        total = float(down.sum()) * near.pitch**2 * (1 + near.beyond) + near.steep_power
         return total if near.jones is None else total * float(np.vdot(near.jones, near.jones).real)
 
     @property

@@ -54,8 +54,8 @@ class GridLight:
     turned_rims : on planes behind an odd number of single transforms: there the window grows as the source's pitch
         shrinks, and the pitch shrinks as the source's window grows.
     turned : whether the light is on such a plane.
-    beyond : light that edges and singular points scatter beyond the band, as a share of what the samples hold.
-    beyond_state : (3,) S1/S0, S2/S0 and S3/S0 of that light; None where it is taken to be polarized as the rest.
+    beyond : light that edges scatter beyond the band of the samples, as a share of what the samples hold.
+    steep : light that singular points scatter beyond it: samples times pitch about each point, with it and without it.
     filled : waves along a side that hold the light, if known from the travel it comes from; None if not.
     room : samples along a side of its window, if those kept are the middle of it and all others dark; None if all are.
     ahead : a last travel that is left to whoever looks at the light; None if there is none.
@@ -72,7 +72,7 @@ class GridLight:
     turned_rims: Rims = Rims()
     turned: bool = False
     beyond: float = 0.0
-    beyond_state: NDArray[np.float64] | None = None
+    steep: tuple[tuple[Samples, Samples], ...] = ()
     filled: int | None = None
     room: int | None = None
     ahead: TravelLaw | None = None
@@ -129,9 +129,21 @@ class GridLight:
 
     @property
     def power(self) -> float:
-        """Power [W]: of the samples, and of what edges scattered beyond their band."""
-        total = inner(self.samples, self.samples).real * self.pitch**2 * (1 + self.beyond)
+        """Power [W]: of the samples, and of what was scattered beyond their band."""
+        total = inner(self.samples, self.samples).real * self.pitch**2 * (1 + self.beyond) + self.steep_power
         return total if self.jones is None else total * float(np.vdot(self.jones, self.jones).real)
+
+    @property
+    def steep_power(self) -> float:
+        """Power [W] scattered by singular points, before the Jones vector."""
+        return sum((inner(one, one) - inner(other, other)).real for one, other in self.steep)
+
+    def steep_past(self, matrix: NDArray[np.complex128]) -> tuple[tuple[Samples, Samples], ...]:
+        """What singular points scattered, behind a matrix of the components."""
+        return tuple(
+            (np.einsum("ij,jyx->iyx", matrix, one), np.einsum("ij,jyx->iyx", matrix, other))
+            for one, other in self.steep
+        )
 
     def components(self) -> Samples:
         """(Ex, Ey) samples, curvature still apart."""

@@ -10,11 +10,10 @@ import numpy as np
 from numpy.typing import NDArray
 
 from fastaxis.engines.grid.light import GridLight, inner, multiply_separable
-from fastaxis.engines.grid.settling import noted, settled, watched
+from fastaxis.engines.grid.settling import leaves, noted, settled, watched
 from fastaxis.engines.grid.singular import Turns
 from fastaxis.engines.grid.workers import strips
 from fastaxis.laws import AxisLaw, Flip, ScalarLaw, Stop
-from fastaxis.light.mueller import muellers
 from fastaxis.maths import NUMBERS, Pattern
 from fastaxis.plan import JonesStep
 from fastaxis.plan.merge import split_lens
@@ -34,29 +33,14 @@ def past_matrix(light: GridLight, law: JonesStep) -> GridLight:
     matrix = np.array(law.matrix, dtype=complex)
     if light.jones is not None:
         return replace(light, jones=matrix @ light.jones)
-    return _past_matrix(light, law, matrix) if light.beyond_state is None else _scattered_too(light, law, matrix)
-
-
-def _scattered_too(light: GridLight, law: JonesStep, matrix: NDArray[np.complex128]) -> GridLight:
-    """The same with light beyond the band that is polarized otherwise: its share of the rest changes."""
-    (mueller,) = muellers(matrix[np.newaxis])
-    turned = mueller @ np.append(1, light.beyond_state)  # type: ignore[arg-type]  # asked by who calls
-    even = np.ptp(np.linalg.svd(matrix, compute_uv=False)) <= RANK_ONE * mueller[0, 0]
-    before = 1.0 if even else light.power / (1 + light.beyond)
-    after = _past_matrix(replace(light, beyond=0.0), law, matrix)
-    kept = mueller[0, 0] if even else after.power
-    state = turned[1:] / turned[0] if after.jones is None and turned[0] else None
-    return replace(after, beyond=light.beyond * turned[0] * before / kept if kept else 0.0, beyond_state=state)
-
-
-def _past_matrix(light: GridLight, law: JonesStep, matrix: NDArray[np.complex128]) -> GridLight:
     if passes_one_state(law):
         left, strengths, right = np.linalg.svd(matrix)
         samples = np.empty_like(light.samples[:1])
         _mix(samples, light.samples, right[:1])
-        return noted(replace(light, samples=samples, jones=left[:, 0] * strengths[0]), {0: right[:1]})
+        one = replace(light, samples=samples, jones=left[:, 0] * strengths[0], steep=light.steep_past(right[:1]))
+        return noted(one, {0: right[:1]})
     _mix(light.samples, light.samples, matrix)
-    return noted(light, {0: matrix})
+    return noted(replace(light, steep=light.steep_past(matrix)), {0: matrix})
 
 
 def passes_one_state(law: JonesStep) -> bool:
@@ -114,16 +98,25 @@ def past_axis(light: GridLight, law: AxisLaw, after: JonesStep | None = None) ->
     """
     patterned = _patterned(law)
     light = settled(light) if patterned else watched(light, law.centre, int(2 * law.order))
-    light = replace(light, beyond_state=None)
-    samples = light.samples
+    samples, steep = light.samples, _steep_past(light, law)
     if light.jones is not None:
         samples = scratch((2, *samples.shape[1:]), samples.dtype)
     if patterned:
         _past_pattern(samples, light, law)
-        light = replace(light, samples=samples, jones=None, filled=None)
+        light = replace(light, samples=samples, jones=None, filled=None, steep=steep)
         return past_matrix(light, after) if after else light
     turns = _past_turning(samples, light, law, np.eye(2) if after is None else np.array(after.matrix))
-    return noted(replace(light, samples=samples, jones=None, filled=None), turns)
+    light = replace(light, samples=samples, jones=None, filled=None, steep=steep)
+    return noted(replace(light, steep=light.steep_past(np.array(after.matrix))) if after else light, turns)
+
+
+def _steep_past(light: GridLight, law: AxisLaw) -> tuple[tuple[NDArray[Any], NDArray[Any]], ...]:
+    """Light beyond the band behind a plate, met where phi = 0: it has gone to all sides, and that loses no power."""
+    if not light.steep:
+        return ()
+    place = np.zeros((1, 1))
+    matrix = np.array([[np.ravel(one)[0] for one in row] for row in law.linear(NUMBERS, place, place, place)])
+    return light.steep_past(matrix if light.jones is None else (matrix @ light.jones)[:, np.newaxis])
 
 
 def _past_pattern(out: NDArray[Any], light: GridLight, law: AxisLaw) -> None:
@@ -201,13 +194,13 @@ def past_scalar(light: GridLight, law: ScalarLaw) -> GridLight:
         rest, _ = split_lens(law, light.wavelength)
         light = past_scalar(light, rest)
         return replace(light, curvature=light.curvature - law.vergence)
-    if law != ScalarLaw(charge=law.charge, centre=law.centre):
+    if leaves(light, law):
         light = settled(light)
     x, y = _places(light, law.centre)
     if any(isinstance(v, Pattern) for v in law.transmission.values):
-        _multiply(light, law.transmission.value(NUMBERS, *np.broadcast_arrays(x, y)))
+        light = _multiply(light, law.transmission.value(NUMBERS, *np.broadcast_arrays(x, y)))
     elif law.transmission.values != (1.0, 0.0):
-        _multiply(light, law.transmission.value(NUMBERS))
+        light = _multiply(light, law.transmission.value(NUMBERS))
     if law.tilt != (0.0, 0.0):
         across, down = (
             np.exp(2j * np.pi / light.wavelength * tilt * place.ravel())
@@ -216,7 +209,9 @@ def past_scalar(light: GridLight, law: ScalarLaw) -> GridLight:
         multiply_separable(light.samples, across, down)
     if law.stop is not None:
         lost = sum(strips(partial(_stopped, light, law.stop, (x, y)), light.count, light.count))
-        light = replace(light, periodic=False, beyond=_beyond(light, law.stop, lost), beyond_state=None)
+        light = replace(
+            light, periodic=False, beyond=_beyond(light, law.stop, lost), steep=() if closed(law.stop) else light.steep
+        )
     return replace(_spiralled(light, law, (x, y)) if law.charge else light, filled=None)
 
 
@@ -233,8 +228,10 @@ def _spiralled(light: GridLight, law: ScalarLaw, places: tuple[Reals, Reals]) ->
     return noted(light, {charge: np.eye(len(samples), dtype=complex)}) if whole else light
 
 
-def _multiply(light: GridLight, factor: Any) -> None:
+def _multiply(light: GridLight, factor: Any) -> GridLight:
     np.multiply(light.samples, factor, out=light.samples, casting="same_kind")
+    size = np.sqrt(np.mean(abs(np.asarray(factor)) ** 2))  # of light gone to all sides
+    return replace(light, steep=light.steep_past(size * np.eye(len(light.samples)))) if light.steep else light
 
 
 def _stopped(light: GridLight, stop: Stop, places: tuple[Reals, Reals], strip: slice) -> float:

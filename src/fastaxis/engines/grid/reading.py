@@ -71,11 +71,10 @@ class GridField:
         """S0 .. S3 of all the light [W], shape (4,); what edges scattered counts with the polarization of the rest."""
         light, area = self.light, self.light.pitch**2
         if light.jones is not None:
-            whole = inner(light.samples, light.samples).real * area * (1 + light.beyond)
+            whole = inner(light.samples, light.samples).real * area * (1 + light.beyond) + light.steep_power
             return np.asarray(whole * stokes(light.jones))
-        kept = stokes_sum(light.samples) * area
-        scattered = kept if light.beyond_state is None else kept[0] * np.append(1, light.beyond_state)
-        return np.asarray(kept + light.beyond * scattered)
+        steep = sum(stokes_sum(one) - stokes_sum(other) for one, other in light.steep)
+        return np.asarray(stokes_sum(light.samples) * area * (1 + light.beyond) + steep)
 
     def at(self, x: Reals, y: Reals) -> Complexes:
         """(Ex, Ey) [sqrt(W)/m] at columns x and rows y [m], shape (2, ny, nx)."""

@@ -6,13 +6,15 @@ import math
 from dataclasses import replace
 
 import numpy as np
-from numpy.typing import NDArray
 
 from fastaxis.engines.grid.lattice_sums import reach
-from fastaxis.engines.grid.light import GridLight, Samples, inner, stokes_sum
+from fastaxis.engines.grid.light import GridLight
 from fastaxis.engines.grid.singular import Singular, Turns
+from fastaxis.laws import AxisLaw, ScalarLaw
+from fastaxis.plan import JonesStep
+from fastaxis.plan.steps import StepLaw
 
-__all__ = ["noted", "settled", "watched"]
+__all__ = ["leaves", "noted", "settled", "watched"]
 
 ROOM = 2.0  # reaches of the first part that its block holds: parts in contact add their charges
 
@@ -36,6 +38,15 @@ def watched(light: GridLight, centre: tuple[float, float], charge: int) -> GridL
     return replace(light, singular=replace(known, before=light.samples[block].copy()))
 
 
+def leaves(light: GridLight, law: StepLaw) -> bool:
+    """Whether a part needs samples done with a singular axis: any but uniform ones and those about that axis."""
+    if light.singular is None or isinstance(law, JonesStep):
+        return False
+    if isinstance(law, ScalarLaw):
+        return law != ScalarLaw(charge=int(law.charge), centre=light.singular.centre)
+    return not isinstance(law, AxisLaw) or law.centre != light.singular.centre
+
+
 def noted(light: GridLight, turns: Turns) -> GridLight:
     """The light with one more part noted that has just changed the samples; uniform if its only charge is 0."""
     return replace(light, singular=light.singular.then(turns)) if light.singular else light
@@ -54,30 +65,6 @@ def settled(light: GridLight) -> GridLight:
     block = light.samples[(slice(None), *known.places(light.count))]
     if not block.any():
         return light
-    before = _sums(block)
+    before = block.copy()
     block[...] = known.values(light.count)
-    return _scattering(light, before - _sums(block))
-
-
-def _sums(samples: Samples) -> NDArray[np.float64]:
-    """S0 .. S3 of some samples; of one component S0 alone."""
-    wide = samples.astype(np.complex128, copy=False)
-    return stokes_sum(wide) if len(wide) == 2 else np.array([inner(wide, wide).real])
-
-
-def _scattering(light: GridLight, lost: NDArray[np.float64]) -> GridLight:
-    """The light with what its samples have just lost, S0 or S0 .. S3, counted beyond their band."""
-    kept = inner(light.samples, light.samples).real
-    if not kept:
-        return light
-    beyond = lost + light.beyond * (kept + lost[0]) * _state(light) if light.beyond else lost
-    state = beyond[1:] / beyond[0] if len(beyond) == 4 and beyond[0] else None
-    return replace(light, beyond=float(beyond[0] / kept), beyond_state=state)
-
-
-def _state(light: GridLight) -> NDArray[np.float64]:
-    """(1, S1/S0 ...) of light beyond the band."""
-    if light.beyond_state is not None:
-        return np.append(1, light.beyond_state)
-    sums = _sums(light.samples)
-    return np.asarray(sums / sums[0])
+    return replace(light, steep=(*light.steep, (before * light.pitch, block * light.pitch)))

@@ -76,8 +76,10 @@ def _summed(arm: Any, number: complex, modes: Sequence[Any], numbers: Complexes,
         chirp = np.exp(-1j * math.pi * light.curvature / light.wavelength * x**2)
         samples, jones = number * light.components() + total.at(x, x) * (chirp * chirp[:, np.newaxis]), None
     samples = samples.astype(light.samples.dtype, copy=False)
+    spread = light.jones is not None and jones is None
+    steep = light.steep_past(number * (light.jones[:, np.newaxis] if spread else np.eye(len(light.samples))))
     filled = None if light.filled is None else max(light.filled, band)
-    sum_of_all = replace(light, samples=samples, jones=jones, filled=filled, beyond=0.0, beyond_state=None)
+    sum_of_all = replace(light, samples=samples, jones=jones, filled=filled, beyond=0.0, steep=steep)
     # What edges scatter is the same light, as a share of more or of less.
     ours = abs(number) ** 2 * light.power * light.beyond / (1 + light.beyond)
     lost = ours / sum_of_all.power if ours else 0.0
