@@ -1,3 +1,7 @@
+import gc
+import weakref
+from dataclasses import replace
+
 import numpy as np
 import pytest
 
@@ -84,3 +88,14 @@ def test_strips_are_the_whole(arrive, monkeypatch, rows, shift):
     assert abs(whole - each).max() < 1e-12 * abs(whole).max()
     monkeypatch.setattr(rendering, "PLACES", 10)
     assert abs(field.at(x, y) - whole).max() < 1e-14 * abs(whole).max()
+
+
+def test_threads_that_ask_at_once_read_tables_of_their_own_light(arrive):
+    """A table goes by the identity of its light, which therefore has to live as long."""
+    field = arrive(Gaussian(waist=0.3 * mm), FreeSpace(0.2))
+    lost = replace(field.out_to(1 * mm))
+    field._table(lost)
+    light = weakref.ref(lost)
+    del lost
+    gc.collect()
+    assert light() is not None

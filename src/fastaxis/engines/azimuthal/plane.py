@@ -44,7 +44,7 @@ class AzimuthalField:
     harmonics: Harmonics
     settings: Settings = field(default_factory=Settings)
     _arrivals: dict[float, Harmonics] = field(default_factory=dict, repr=False)
-    _tables: dict[int, tuple[Shapes, Table]] = field(default_factory=dict, repr=False)
+    _tables: dict[int, tuple[Harmonics, Shapes, Table]] = field(default_factory=dict, repr=False)
 
     @property
     def power(self) -> float:
@@ -70,19 +70,21 @@ class AzimuthalField:
         known = [far for far in self._arrivals if reach <= far <= 2 * reach]
         if known:
             return self._arrivals[min(known)]
-        self._arrivals[reach] = arrived(self.harmonics, self.settings, end=reach)
-        return self._arrivals[reach]
+        return self._arrivals.setdefault(reach, arrived(self.harmonics, self.settings, end=reach))
 
     def _table(self, arrival: Harmonics) -> Table:
         return self._shapes(arrival)[1]
 
     def _shapes(self, arrival: Harmonics) -> tuple[Shapes, Table]:
-        """One table an arrival: neighbouring places read the same polynomials, whoever asks."""
+        """One table an arrival: neighbouring places read the same polynomials, whoever asks.
+
+        The arrival is held as well: were it freed, as when two threads asked at once, another one might get its id.
+        """
         if id(arrival) not in self._tables:
             shapes = Shapes.of(arrival.profile, arrival.charges)
             table = remembered(("table",), shapes, lambda: table_of(shapes.profile, arrival.profile.end))
-            self._tables[id(arrival)] = shapes, table.combined(shapes.numbers)
-        return self._tables[id(arrival)]
+            self._tables[id(arrival)] = arrival, shapes, table.combined(shapes.numbers)
+        return self._tables[id(arrival)][1:]
 
     def error(self, reach: float) -> float:
         """Expected error of the field out to a radius [m], as a share of its peak there."""
