@@ -31,11 +31,15 @@ WAIST, WAVELENGTH, FOCAL = 0.8 * mm, 532 * nm, 500 * mm
 PIXEL = 3.45 * um
 
 
-def bench(pixels, *, plates=1, knob=20 * deg):
+def bench(pixels, *, plates=1, knob=20 * deg, retardance=np.pi):
     """Laser, eight parts (three spaces, a lens, a tuned q-plate, three uniform plates), camera in the focus."""
-    more = [part for i in range(plates - 1) for part in (QPlate(q=0.5, offset=0.1 * i), FreeSpace(200 * mm))]
+    more = [
+        part
+        for i in range(plates - 1)
+        for part in (QPlate(q=0.5, offset=0.1 * i, retardance=retardance), FreeSpace(200 * mm))
+    ]
     parts = [
-        HalfWavePlate(fast=knob), FreeSpace(100 * mm), QPlate(q=0.5), *more, FreeSpace(200 * mm),
+        HalfWavePlate(fast=knob), FreeSpace(100 * mm), QPlate(q=0.5, retardance=retardance), *more, FreeSpace(200 * mm),
         QuarterWavePlate(fast=30 * deg), Lens(focal=FOCAL), FreeSpace(FOCAL), Retarder(fast=0.2, retardance=0.4),
     ]  # fmt: skip
     laser = Laser(mode=Gaussian(waist=WAIST, waist_at=100 * mm), power=5e-3, state=H, name="laser")
@@ -143,6 +147,7 @@ def growth_table(console):
     table = Table(
         "pixels",
         "q-plates",
+        "retardance",
         "nodes before the last section",
         "harmonics",
         "cold, ms",
@@ -150,14 +155,17 @@ def growth_table(console):
         "estimate",
         title="growth",
     )
-    for pixels, plates in ((128, 1), (256, 1), (512, 1), (1024, 1), (2048, 1), (512, 2), (512, 3)):
-        train = bench(pixels, plates=plates)
+    tuned = ((128, 1), (256, 1), (512, 1), (1024, 1), (2048, 1), (512, 2), (512, 3), (512, 4), (512, 5))
+    detuned = ((512, 2), (512, 3), (512, 4))
+    for pixels, plates, retardance in (*((*one, np.pi) for one in tuned), *((*one, 2.4) for one in detuned)):
+        train = bench(pixels, plates=plates, retardance=retardance)
         cold, _ = median(lambda t=train: (forget_light(), frame(t, "azimuthal")), 3)
         again, (field, _) = median(lambda t=train: frame(t, "azimuthal"), 3)
         light = field.harmonics
         row = (
             pixels,
             plates,
+            f"{retardance:.3g}",
             len(light.profile.nodes),
             len(light.orders),
             f"{cold * 1e3:.1f}",
