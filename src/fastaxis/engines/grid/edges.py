@@ -11,13 +11,16 @@ from fastaxis.plan import Grid
 __all__ = ["beyond_share", "watch_frame"]
 
 WARN = 0.01  # of the power: about what a power meter beside the camera would show
+ROWS = 8
 
 
 def beyond_share(light: GridLight) -> float:
     """Share of all the power that edges scattered beyond the band."""
     beyond = light.beyond
     if light.steep:
-        kept = inner(light.samples, light.samples).real * light.pitch**2
+        # Every eighth row tells the size of a share, in an eighth of the time.
+        rows = light.samples[:, ROWS // 2 :: ROWS]
+        kept = inner(rows, rows).real * ROWS * light.pitch**2
         beyond += light.steep_power / kept if kept else 0.0
     # Below 0, where a part took a singularity away: its samples then hold a little more than the light.
     return max(beyond / (1 + beyond), 0.0)
