@@ -1,8 +1,8 @@
 """Sums with Bessel kernels at many radii of many nodes: by octaves, each of them a few Fourier transforms.
 
 Of large arguments J_l(k r rho) is exp(i k r rho) times a few powers of 1/r times as many of 1/rho, so that sums of them
-are sums of waves (N. Beckman, M. O'Neil, arXiv:2211.09736, 2022). In an octave of r most arguments are large; those to
-the nodes next to the axis are not, and are left to Bessel functions one by one.
+are sums of waves (Beckman and O'Neil, 2022, from memory). In an octave of r most arguments are large; those to the
+nodes next to the axis are not, and are left to Bessel functions one by one.
 """
 
 from __future__ import annotations
