@@ -28,7 +28,9 @@ def case(seed, settings):
     """(true error, estimate) as shares of the peak."""
     mode, state, parts = draw(random.Random(seed))
     train = Train(wavelength=632.8 * nm).along(
-        Laser(power=1.0, name="laser", mode=mode, state=state), *parts, Camera(pixel=10 * um, shape=(64, 64), name="cam")
+        Laser(power=1.0, name="laser", mode=mode, state=state),
+        *parts,
+        Camera(pixel=10 * um, shape=(64, 64), name="cam"),
     )
     branch = make_plan(train, "cam", engine="azimuthal").branches[0]
     ours, best = run(branch, settings), run(branch, FINE)

@@ -43,17 +43,16 @@ def images(plan):
 
 @pytest.mark.parametrize("name", PARTS)
 def test_agrees_with_samples_all_the_way(name):
-    """Samples err by the square of their pitch at a plate's axis, and by what their window cuts off."""
+    """What both lack is the tail outside of 20 mm: 1e-4 of the power behind a plate or a rim."""
     bench = train(*PARTS[name])
     plan = make_plan(bench, "cam")
     assert plan.engine == "handover"
     ours = images(plan)
-    coarse, fine = (images(make_plan(bench, "cam", grid=fa.Grid(n, 10 * mm))) for n in (512, 1024))
+    coarse, fine = (images(make_plan(bench, "cam", grid=fa.Grid(n, 20 * mm))) for n in (1024, 2048))
     own_error = abs(coarse - fine).max()
-    # The error of the coarser one, and what both lack: the tail outside 10 mm, 4e-4 of the power behind a plate.
-    assert abs(ours - fine).max() < own_error + 6e-4 * fine[0].max()
-    if name != "spiral":
-        # Its tail sits in the lens as well; the others gain from samples that begin where the light is smooth.
+    assert abs(ours - fine).max() < own_error + 2e-4 * fine[0].max()
+    if name == "q-plates":
+        # Samples all the way cut the tail of the first plate at the second one's window; harmonics follow it.
         alone = images(make_plan(bench, "cam", engine="grid"))
         assert abs(ours - fine).max() < abs(alone - fine).max() / 3
 

@@ -269,7 +269,7 @@ def test_a_polarizer_before_a_stop_leaves_another_share_at_its_rim():
 def halves(retardance, axis):
     """R comes out as it was or twisted; a quarter-wave plate and a polarizer at 90 deg or 0 pass one or the other."""
     return fa.Train(wavelength=633 * nm).along(
-        fa.Laser(waist=0.6 * mm, state=fa.R), fa.QPlate(q=0.5, retardance=retardance), fa.FreeSpace(0.1),
+        fa.Laser(waist=0.6 * mm, state=fa.R), fa.QPlate(q=0.5, retardance=retardance), fa.FreeSpace(2.0),
         fa.QuarterWavePlate(fast=45 * deg), fa.Polarizer(axis=axis), fa.Camera(pixel=100 * um, shape=(9, 9), name="cam"),
     )  # fmt: skip
 
@@ -281,7 +281,7 @@ def test_no_one_is_warned_of_light_that_a_polarizer_took_out():
 
 
 def test_light_near_the_limits_that_a_polarizer_lets_out_is_told_of(monkeypatch):
-    monkeypatch.setattr(guard, "BAND_WARN", 6e-4)  # between all of the light, 2.4e-4, and its twisted part, 9.7e-4
+    monkeypatch.setattr(guard, "EDGE_WARN", 4e-4)  # between all of the light, 1.6e-4, and its twisted part, 6.3e-4
     trains = [halves(60 * deg, axis) for axis in (90 * deg, 90 * deg, 90 * deg, 0)]
     assert [asked(one)[1] for one in trains] == [False, False, False, True]
 

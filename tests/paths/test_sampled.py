@@ -19,7 +19,7 @@ WEDGE = fa.Wedge(x=1 * mrad, y=-0.5 * mrad)
 OTHERS = {
     "tilted": [WEDGE, fa.FreeSpace(0.2)],
     "turned": [fa.HalfWavePlate(fast=20 * deg), WEDGE],
-    "round": [fa.QuarterWavePlate(fast=20 * deg), fa.Lens(focal=3.0)],
+    "round": [fa.QuarterWavePlate(fast=20 * deg), fa.Lens(focal=5.0)],
 }
 
 

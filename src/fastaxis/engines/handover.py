@@ -34,7 +34,7 @@ def begun(branch: Branch) -> GridLight:
     """The light of a branch on samples, behind the steps that harmonics do."""
     sampling = cast("Sampling", branch.sampling)
     first = replace(branch, steps=branch.steps[: branch.harmonic_steps], sampling=None)
-    x, curvature = axis(sampling.grid.samples, sampling.grid.pitch), sampling.planes[0].spread.curvature
+    x, curvature = axis(sampling.grid.samples, sampling.grid.pitch), sampling.planes[0].kept
     samples, jones = _scalar(azimuthal.run(first).at(x, x))
     multiply_separable(samples, curve(x, -curvature, branch.wavelength))
     kind = np.complex64 if sampling.precision == "single" else np.complex128

@@ -6,7 +6,7 @@ import math
 from collections.abc import Iterator
 from dataclasses import dataclass
 
-from fastaxis.laws import TravelLaw
+from fastaxis.laws import ScalarLaw, TravelLaw
 from fastaxis.plan.grid import Grid
 from fastaxis.plan.spread import Spread
 from fastaxis.plan.steps import Steps
@@ -39,6 +39,7 @@ class Plane:
     room : half window over the half window the beam needs; 1 or more is enough.
     band : highest frequency of the samples over the highest of the beam; 1 or more is enough.
     hop : how the light came here, if it travelled.
+    kept : curvature [1/m] that the samples keep apart: with it they hold all of the light.
     beside, leaning : for a beam further off the axis, or turned further, than it is wide or spreads: what is left
         between its middle and the edge of window or band, over what it needs about its middle. Such a beam may be over
         the edge as a whole, and in again at the other side, where no guard of that edge sees it.
@@ -50,6 +51,7 @@ class Plane:
     room: float
     band: float
     hop: Hop | None = None
+    kept: float = 0.0
     beside: float = math.inf
     leaning: float = math.inf
 
@@ -74,14 +76,16 @@ class Plane:
         return self.leaning if self.spread.rough else min(self.band, self.leaning)
 
 
-def _plane(samples: int, window: float, spread: Spread, wavelength: float, hop: Hop | None = None) -> Plane:
+def _plane(  # noqa: PLR0917 - what a plane is made of, in its order
+    samples: int, window: float, spread: Spread, wavelength: float, kept: float, hop: Hop | None = None
+) -> Plane:
     needed, steepest = spread.half_window, spread.half_band(wavelength)
     half, highest = window / 2, samples / (2 * window) if window else math.inf
     room = half / needed if needed else math.inf
     band = highest / steepest if steepest else math.inf
     off = 0.0 if spread.infinite else max(map(abs, spread.offset))
     beside, leaning = _left(half, needed, off), _left(highest, steepest, spread.leaning / wavelength)
-    return Plane(samples, window, spread, room, band, hop, beside, leaning)
+    return Plane(samples, window, spread, room, band, hop, kept, beside, leaning)
 
 
 def _left(edge: float, needed: float, middle: float) -> float:
@@ -138,17 +142,22 @@ def turned_at(planes: tuple[Plane, ...], index: int) -> bool:
 def _hops(here: Plane, travel: TravelLaw, wavelength: float) -> Iterator[Plane]:
     """The plane after a travel, by each kernel that can be used.
 
-    Scaled: the window is magnified by A' = A + B curvature. Single: its side becomes wavelength |B| / pitch.
+    Scaled: the window is magnified by A' = A + B curvature. Single: its side becomes wavelength |B| / pitch. With the
+    mean curvature taken out a beam turns least from sample to sample. Of light with slow tails that is true of its
+    middle only; behind a single transform the tails fill the window, and against another curvature than the one kept
+    apart they would turn by more than samples show.
     """
     spread = here.spread
-    near = travel.a + travel.b * spread.curvature
+    curvature = here.kept if spread.rough else spread.curvature
+    near, far = travel.a + travel.b * curvature, travel.c + travel.d * curvature
     after = spread.through(travel)
     if near != 0:
-        hop = Hop("scaled", spread.curvature)
-        yield _plane(here.samples, abs(near) * here.window, after, wavelength, hop)
+        hop = Hop("scaled", curvature)
+        yield _plane(here.samples, abs(near) * here.window, after, wavelength, far / near, hop)
     if travel.b != 0 and not spread.infinite:
-        hop = Hop("single", spread.curvature)
-        yield _plane(here.samples, wavelength * abs(travel.b) / here.pitch, after, wavelength, hop)
+        hop = Hop("single", curvature)
+        window = wavelength * abs(travel.b) / here.pitch
+        yield _plane(here.samples, window, after, wavelength, travel.d / travel.b, hop)
 
 
 def _best(planes: list[Plane]) -> Plane:
@@ -164,7 +173,7 @@ def _best(planes: list[Plane]) -> Plane:
 
 def follow(steps: Steps, spread: Spread, grid: Grid, wavelength: float) -> tuple[Plane, ...]:
     """The planes a grid at the source leads to, one for the source and one after each step."""
-    planes = [_plane(grid.samples, grid.window, spread, wavelength)]
+    planes = [_plane(grid.samples, grid.window, spread, wavelength, spread.curvature)]
     for step in steps:
         here = planes[-1]
         if isinstance(step.law, TravelLaw):
@@ -174,5 +183,7 @@ def follow(steps: Steps, spread: Spread, grid: Grid, wavelength: float) -> tuple
                 break
             planes.append(_best(ahead))
         else:
-            planes.append(_plane(here.samples, here.window, here.spread.past(step.law, wavelength), wavelength))
+            kept = here.kept - (step.law.vergence if isinstance(step.law, ScalarLaw) else 0.0)
+            spread = here.spread.past(step.law, wavelength)
+            planes.append(_plane(here.samples, here.window, spread, wavelength, kept))
     return tuple(planes)

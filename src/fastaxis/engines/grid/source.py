@@ -37,7 +37,7 @@ def start(branch: Branch, sampling: Sampling) -> GridLight:
     dark = max(math.floor(room / 2 - _reach(branch) / pitch), 0) if branch.opening else 0
     x = axis(room - 2 * dark, pitch)
     terms, scale = branch.beam.terms, branch.beam.scale(branch.wavelength) * np.sqrt(branch.power)
-    curvature = sampling.planes[0].spread.curvature
+    curvature = sampling.planes[0].kept
     kind = np.dtype(np.complex64 if sampling.precision == "single" else np.complex128)
     shapes = (_shape(term.mode, x, pitch, branch.wavelength, kind) for term in terms)
     numbers = [scale * term.number for term in terms]
