@@ -157,7 +157,9 @@ def _hops(here: Plane, travel: TravelLaw, wavelength: float) -> Iterator[Plane]:
     if travel.b != 0 and not spread.infinite:
         hop = Hop("single", curvature)
         window = wavelength * abs(travel.b) / here.pitch
-        yield _plane(here.samples, window, after, wavelength, travel.d / travel.b, hop)
+        # A smooth beam may be referred to its own curvature before a part makes it rough.
+        kept = travel.d / travel.b if after.rough else after.curvature
+        yield _plane(here.samples, window, after, wavelength, kept, hop)
 
 
 def _best(planes: list[Plane]) -> Plane:

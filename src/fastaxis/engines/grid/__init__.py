@@ -50,6 +50,7 @@ def continued(light: GridLight, branch: Branch, first: int, end: int) -> GridLig
         hop = sampling.hop(index)
         if light.ahead and not isinstance(law, JonesStep | Flip):  # these commute with travel
             light = edge_watched(travel_single(replace(light.filled_up(), ahead=None), light.ahead))
+            light = light.referred(sampling.planes[index].kept)
         if isinstance(law, TravelLaw | Turn):
             light = settled(light)
         elif index > last and leaves(light, law):
@@ -58,6 +59,8 @@ def continued(light: GridLight, branch: Branch, first: int, end: int) -> GridLig
             light = replace(light, ahead=law)
         else:
             light = _past(light, law, hop, after, last=index == last)
+            if hop and hop.kernel == "single" and index < last:
+                light = light.referred(sampling.planes[index + 1].kept)
     return light
 
 
