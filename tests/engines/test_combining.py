@@ -65,6 +65,23 @@ def test_total_stokes_is_the_sum_over_the_plane():
     )
 
 
+def test_total_power_of_light_with_dark_samples_left_out_is_that_of_one_state():
+    """Behind a turned half-wave plate J = cos(2a) J(0) + sin(2a) J(45 deg): the same power for each a."""
+    train = fa.Train(wavelength=633 * nm).along(
+        fa.Laser(waist=0.8 * mm, power=1e-3, name="laser"),
+        fa.HalfWavePlate(fast=0.0, name="hwp"),
+        fa.FreeSpace(distance=0.1),
+        fa.SpiralPlate(charge=8, centre=(0.1 * mm, 0.0)),
+        fa.FreeSpace(distance=3.0),
+        fa.Camera(pixel=50e-6, shape=(8, 8), name="cam"),
+    )
+    turned = [train.with_changes({"hwp.fast": angle}).field("cam", engine="grid") for angle in (0.0, np.pi / 4)]
+    near = turned[0][0].carried
+    assert near.full > near.count and near.steep_power > 1e-3 * near.power  # else this tests nothing
+    (total,) = combined("grid", turned, np.array([0.6, 0.8]))
+    assert total.power == pytest.approx(1e-3, rel=1e-13)
+
+
 def test_the_guard_is_the_worst():
     parts = fields(*PLATES["one state, several shapes"])
     (total,) = combined("grid", parts, NUMBERS)

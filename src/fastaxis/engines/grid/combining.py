@@ -48,7 +48,8 @@ class GridSum:
         """The sum as sampled light; before the last travel, where all have the same ahead of them."""
         ways = {(light.full, light.pitch, light.curvature, light.ahead) for light in self._carried}
         lights = self._carried if len(ways) == 1 else [field.light for field in self.fields]
-        light = _sum([one.filled_up() for one in lights], self.coefficients)
+        lights = [one.filled_up() for one in lights]
+        light = _sum(lights, self.coefficients)
         # Each field fills as many waves as it needs; how many the sum fills is found anew.
         light = replace(light, filled=None, beyond=self._beyond(), steep=_steep(light, lights, self.coefficients))
         return (FarField if light.ahead else GridField)(light, self.guard, self.fields[0].grid)
