@@ -9,7 +9,7 @@ from fastaxis.engines.field import Guard
 from fastaxis.engines.grid.light import GridLight, axis, inner
 from fastaxis.engines.grid.pointwise import past_axis, past_matrix, past_scalar
 from fastaxis.engines.grid.reading import GridField
-from fastaxis.engines.grid.settling import settled
+from fastaxis.engines.grid.settling import leaves, settled
 from fastaxis.laws import Amplitude, AxisLaw, Disc, ScalarLaw
 from fastaxis.maths import Pattern
 from fastaxis.plan import JonesStep
@@ -151,6 +151,7 @@ def test_other_parts_in_the_plane_leave_first():
         assert close(here, there)
     pattern = AxisLaw(*HALF_WAVE, Pattern(lambda x, y: x * 1e3))
     assert close(past_axis(spiral(light(), 4), pattern), past_axis(settled(spiral(light(), 4)), pattern))
+    assert leaves(spiral(light(), 4), pattern)
     lens = past_scalar(spiral(light(), 4), ScalarLaw(vergence=2.0))
     assert lens.curvature == -2.0 and close(settled(lens), settled(spiral(light(), 4)))
 

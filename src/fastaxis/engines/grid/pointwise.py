@@ -10,7 +10,7 @@ import numpy as np
 from numpy.typing import NDArray
 
 from fastaxis.engines.grid.light import GridLight, inner, multiply_separable
-from fastaxis.engines.grid.settling import leaves, noted, settled, watched
+from fastaxis.engines.grid.settling import leaves, noted, patterned, settled, watched
 from fastaxis.engines.grid.singular import Turns
 from fastaxis.engines.grid.workers import strips
 from fastaxis.laws import AxisLaw, Flip, ScalarLaw, Stop
@@ -96,12 +96,12 @@ def past_axis(light: GridLight, law: AxisLaw, after: JonesStep | None = None) ->
     ----------
     after : a uniform matrix that follows, done in the same go.
     """
-    patterned = _patterned(law)
-    light = settled(light) if patterned else watched(light, law.centre, int(2 * law.order))
+    cells = patterned(law)
+    light = settled(light) if cells else watched(light, law.centre, int(2 * law.order))
     samples, steep = light.samples, _steep_past(light, law)
     if light.jones is not None:
         samples = scratch((2, *samples.shape[1:]), samples.dtype)
-    if patterned:
+    if cells:
         _past_pattern(samples, light, law)
         light = replace(light, samples=samples, jones=None, filled=None, steep=steep)
         return past_matrix(light, after) if after else light
@@ -177,10 +177,6 @@ def _turned(out: NDArray[Any], parts: list[NDArray[Any]], before: NDArray[Any], 
         a += b
         made.append(a)
     out[0], out[1] = made
-
-
-def _patterned(law: AxisLaw) -> bool:
-    return any(isinstance(v, Pattern) for v in (law.angle, *law.along.values, *law.across.values))
 
 
 def past_scalar(light: GridLight, law: ScalarLaw) -> GridLight:

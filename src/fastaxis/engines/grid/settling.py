@@ -11,10 +11,11 @@ from fastaxis.engines.grid.lattice_sums import reach
 from fastaxis.engines.grid.light import GridLight
 from fastaxis.engines.grid.singular import Singular, Turns
 from fastaxis.laws import AxisLaw, ScalarLaw
+from fastaxis.maths import Pattern
 from fastaxis.plan import JonesStep
 from fastaxis.plan.steps import StepLaw
 
-__all__ = ["leaves", "noted", "settled", "watched"]
+__all__ = ["leaves", "noted", "patterned", "settled", "watched"]
 
 ROOM = 2.0  # reaches of the first part that its block holds: parts in contact add their charges
 
@@ -44,7 +45,12 @@ def leaves(light: GridLight, law: StepLaw) -> bool:
         return False
     if isinstance(law, ScalarLaw):
         return law != ScalarLaw(charge=int(law.charge), centre=light.singular.centre)
-    return not isinstance(law, AxisLaw) or law.centre != light.singular.centre
+    return not isinstance(law, AxisLaw) or patterned(law) or law.centre != light.singular.centre
+
+
+def patterned(law: AxisLaw) -> bool:
+    """Whether a part changes from place to place by other than its angle about an axis."""
+    return any(isinstance(value, Pattern) for value in law.values)
 
 
 def noted(light: GridLight, turns: Turns) -> GridLight:
