@@ -2,7 +2,7 @@
 
 import random
 from concurrent.futures import ThreadPoolExecutor
-from dataclasses import fields
+from dataclasses import fields, replace
 
 import numpy as np
 import pytest
@@ -11,7 +11,9 @@ import fastaxis as fa
 from fastaxis.engines import grid, propagate
 from fastaxis.engines.memory import LIGHT, UP_TO, forget_light
 from fastaxis.engines.remembering import APART, keys_of
+from fastaxis.laws import TravelLaw, Turn
 from fastaxis.plan import Branch
+from fastaxis.plan.steps import Step
 from fastaxis.units import deg, mm, nm, um
 
 GRID = fa.Grid(samples=64, window=6 * mm)
@@ -127,6 +129,17 @@ def test_light_handed_over_is_remembered_as_well():
     forget_light()
     fresh = train.with_changes({"late.offset": 0.3}).expose("cam", [fa.H]).stokes
     assert abs(known[-1] - fresh).max() <= 1e-13 * fresh.max()
+
+
+def test_light_before_a_last_turn_is_not_light_at_the_target():
+    """Samples about a singular axis are made ready to be sheared; at the target point values are right."""
+    branch = bench().plan("cam", engine="grid", grid=GRID).branches[0]
+    sampling = replace(branch.sampling, planes=(*branch.sampling.planes, branch.sampling.planes[-1]))
+    turned = replace(branch, steps=(*branch.steps, Step(("turner",), Turn(0.3))), sampling=sampling)
+    end = len(branch.steps)
+    last = max(i for i, step in enumerate(branch.steps) if isinstance(step.law, TravelLaw))
+    straight, before = keys_of("grid", branch, end), keys_of("grid", turned, end)
+    assert [straight[i] == before[i] for i in range(end + 1)] == [i <= last for i in range(end + 1)]
 
 
 def test_warnings_are_given_again():

@@ -11,7 +11,7 @@ from typing import Any
 
 from fastaxis.engines.content import content_of
 from fastaxis.engines.memory import LIGHT
-from fastaxis.laws import TravelLaw
+from fastaxis.laws import TravelLaw, Turn
 from fastaxis.plan import Branch
 
 __all__ = ["keys_of", "light_before", "size_of"]
@@ -28,8 +28,8 @@ FEW = 4  # what takes this much less than the largest light kept may stay where 
 def keys_of(engine: str, branch: Branch, end: int) -> dict[int, bytes]:
     """What the light before each step depends on, for the first steps that are all data; {} for light without samples.
 
-    That is the light it begins with, every step before with its samples, and whether a travel is the last one, for
-    behind it light is looked at more closely.
+    That is the light it begins with, every step before with its samples, and whether a travel or a turn is the last
+    one, for behind it light is looked at more closely, and singular points are left as they are.
     """
     sampling, first = branch.sampling, branch.harmonic_steps
     if sampling is None:
@@ -37,7 +37,7 @@ def keys_of(engine: str, branch: Branch, end: int) -> dict[int, bytes]:
     rest = [getattr(branch, f.name) for f in fields(branch) if f.name not in APART]
     samples = [getattr(sampling, f.name) for f in fields(sampling) if f.name != "planes"]
     laws = [step.law for step in branch.steps]
-    last = max((i for i, law in enumerate(laws) if isinstance(law, TravelLaw)), default=0)
+    last = max((i for i, law in enumerate(laws) if isinstance(law, TravelLaw | Turn)), default=0)
     key = content_of(engine, rest, samples, sampling.planes[0], laws[:first])
     keys = {}
     for index in range(first, end + 1):
