@@ -112,6 +112,17 @@ def test_behind_a_relay_the_distance_is_that_from_the_image():
         make_plan(bench(*parts, distance=103 * mm), "cam", engine="grid", grid=grid)
 
 
+@pytest.mark.parametrize("charge", [1, 2, 4, 8])
+def test_automatic_grids_hold_what_an_axis_in_a_focus_scatters(charge):
+    """The plate in the middle of a relay: in the focus, w = 0.08 mm, and a whole Fourier transform before the camera."""
+    first, second = ([fa.FreeSpace(0.2), fa.Lens(focal=0.2, name=name)] for name in ("first", "second"))
+    plate = fa.SpiralPlate(charge=charge)
+    train = bench(*first, fa.FreeSpace(0.2), plate, *second, distance=200 * mm, pixel=30 * um)
+    images, said = told(train)
+    assert not said
+    assert wrong(images, train) < VISIBLE
+
+
 def test_an_edge_in_the_dark_asks_for_nothing():
     make_plan(bench(fa.Aperture(radius=2 * mm), distance=5 * mm), "cam", engine="grid", grid=Grid(256, 6 * mm))
 

@@ -10,7 +10,7 @@ from itertools import takewhile
 
 from fastaxis.errors import ParameterError
 from fastaxis.laws import AxisLaw, CircularLaw, ScalarLaw, TravelLaw
-from fastaxis.plan.fineness import known_tails, needs
+from fastaxis.plan.fineness import held, known_tails, needs
 from fastaxis.plan.grid import Grid
 from fastaxis.plan.judging import RIM, cut, judged
 from fastaxis.plan.refining import LARGE, LENGTHS, Asked, refined
@@ -134,7 +134,8 @@ def _fine(sampling: Sampling, steps: Steps, spread: Spread, wavelength: float) -
     again, is_open = partial(_planes, steps, spread, wavelength=wavelength), _open(steps, spread)
 
     def asked(found: Sampling) -> Iterator[Asked]:
-        return (Asked(need.step, need.pitch) for need in needs(steps, found.planes, wavelength))
+        yield from (Asked(need.step, need.pitch) for need in needs(steps, found.planes, wavelength))
+        yield from (Asked(step, pitch) for step, pitch in held(steps, found.planes, wavelength))
 
     most = max(FINEST, sampling.grid.samples)
     better = refined(sampling, again, asked, most, fits=lambda found: _fits(found, steps) >= 1)
