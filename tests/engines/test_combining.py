@@ -60,7 +60,7 @@ def test_total_stokes_is_the_sum_over_the_plane():
     kept = stokes(part.at(x, x)).sum(axis=(1, 2)) * part.light.pitch**2
     np.testing.assert_allclose(
         part.total_stokes,
-        kept + sum(stokes(one) - stokes(other) for one, other in part.light.steep).sum(axis=(1, 2)),
+        kept + sum(stokes(one.whole) - stokes(one.kept) for one in part.light.steep).sum(axis=(1, 2)),
         atol=1e-15 * part.power,
     )
 
@@ -80,6 +80,17 @@ def test_total_power_of_light_with_dark_samples_left_out_is_that_of_one_state():
     assert near.full > near.count and near.steep_power > 1e-3 * near.power  # else this tests nothing
     (total,) = combined("grid", turned, np.array([0.6, 0.8]))
     assert total.power == pytest.approx(1e-3, rel=1e-13)
+
+
+def test_light_beyond_the_band_adds_where_it_is_of_the_same_samples_only():
+    """Behind one plate amplitudes add, behind plates at two places powers do."""
+    places = [(0.1 * mm, 0.0), (0.1 * mm, 0.0), (-0.4 * mm, 0.2 * mm)]
+    parts = [one for (one,) in fields(*[fa.SpiralPlate(charge=4, centre=centre) for centre in places])]
+    one, same, apart = (part.carried.steep_power for part in parts)
+    assert one == same != apart
+    for chosen, expected in (((0, 1), 4 * one), ((0, 2), one + apart)):
+        (total,) = combined("grid", [(parts[i],) for i in chosen], np.array([1.0, 1.0]))
+        assert total.whole.carried.steep_power == pytest.approx(expected, rel=1e-12)
 
 
 def test_the_guard_is_the_worst():

@@ -177,3 +177,27 @@ def test_a_large_camera_takes_memory_for_each_pixel_not_for_each_pair():
     assert len(fine.places) > len(middles)  # fringes of three pixels
     # Twice the reach of 17 places, and those that a pixel of up to two of them adds.
     assert fine.matrix.nnz <= 38 * len(middles)
+
+
+def with_mirrored_plates(other, charge=4):
+    """Two arms with a spiral plate each, and a mirror more behind one of them."""
+    train = fa.Train(wavelength=633 * nm).along(
+        fa.Laser(waist=0.8 * mm, power=1e-3, name="laser"),
+        fa.BeamSplitter(name="split"),
+        fa.FreeSpace(distance=0.3, name="short"),
+        fa.SpiralPlate(charge=charge, centre=(0.1 * mm, 0.05 * mm), name="one"),
+        fa.BeamSplitter(name="join"),
+        fa.FreeSpace(distance=0.1, name="ahead"),
+        fa.Detector(name="along"),
+    )
+    train.along("split.reflected", fa.FreeSpace(distance=0.3, name="long"), fa.SpiralPlate(charge=-charge, **other))
+    train.along("other", "join.side")
+    train.along("join.reflected", fa.FreeSpace(distance=0.1, name="aside"), fa.Detector(name="across"))
+    return [train.power(port, engine="grid") / 1e-3 for port in ("along", "across")]
+
+
+def test_light_that_axes_scatter_beyond_the_samples_leaves_dark_ports_dark():
+    """Else its 2e-3 of the power would go to both ports alike; arms cancel to what the pitch leaves, 1e-6."""
+    same = with_mirrored_plates({"centre": (-0.1 * mm, 0.05 * mm), "name": "other"})
+    assert min(same) < 1e-5
+    assert sum(same) == pytest.approx(1, abs=1e-7)

@@ -6,7 +6,7 @@ from collections.abc import Iterator
 from dataclasses import replace
 from typing import cast
 
-from fastaxis.engines.grid.combining import combined
+from fastaxis.engines.grid.combining import combined, steep_added
 from fastaxis.engines.grid.far import FarField, arriving
 from fastaxis.engines.grid.guard import check, edge_watched, phase_step
 from fastaxis.engines.grid.landing import KEPT
@@ -25,7 +25,7 @@ from fastaxis.plan.fuse import as_matrix
 from fastaxis.plan.sampling import Hop, Sampling
 from fastaxis.plan.steps import StepLaw
 
-__all__ = ["FarField", "GridField", "begun", "combined", "continued", "finished", "run"]
+__all__ = ["FarField", "GridField", "begun", "combined", "continued", "finished", "run", "steep_added"]
 
 
 def run(branch: Branch) -> GridField | FarField:

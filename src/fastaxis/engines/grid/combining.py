@@ -14,12 +14,12 @@ from fastaxis.engines.field import Guard
 from fastaxis.engines.grid.collecting import Collected
 from fastaxis.engines.grid.edges import watch_frame
 from fastaxis.engines.grid.far import FarField
-from fastaxis.engines.grid.light import GridLight
+from fastaxis.engines.grid.light import GridLight, Steep, stokes_sum
 from fastaxis.engines.grid.reading import GridField
 from fastaxis.errors import SamplingError
 from fastaxis.light import Raster
 
-__all__ = ["GridSum", "combined"]
+__all__ = ["GridSum", "combined", "steep_added"]
 
 Complexes = NDArray[np.complex128]
 Sampled = TypeVar("Sampled", GridLight, Collected)
@@ -132,7 +132,7 @@ def _sum(lights: Sequence[Sampled], coefficients: Complexes) -> Sampled:
     return replace(first, samples=_total([_components(light) for light in lights], coefficients), jones=None)
 
 
-def _steep(whole: GridLight, lights: Sequence[GridLight], coefficients: Complexes) -> Any:
+def _steep(whole: GridLight, lights: Sequence[GridLight], coefficients: Complexes) -> tuple[Steep, ...]:
     """What singular points scattered of a sum: the sum of what they scattered, where that is of the same samples."""
     if whole.samples is lights[0].samples:
         return lights[0].steep
@@ -140,13 +140,42 @@ def _steep(whole: GridLight, lights: Sequence[GridLight], coefficients: Complexe
         light.steep_past(light.jones[:, None]) if whole.jones is None and light.jones is not None else light.steep
         for light in lights
     ]
-    if len({tuple(one.shape for one, _ in part) for part in parts}) == 1:
-        return tuple(
-            tuple(_total([pair[which] for pair in pairs], coefficients) for which in (0, 1))
-            for pairs in zip(*parts, strict=True)
-        )
-    each = zip(coefficients, parts, strict=True)
-    return tuple((number * one, number * other) for number, part in each for one, other in part)
+    return _same_added(parts, coefficients)
+
+
+def _same_added(parts: Sequence[tuple[Steep, ...]], coefficients: Complexes) -> tuple[Steep, ...]:
+    """What singular points scattered of each light, times a number, added up where it is of the same samples."""
+    found: dict[Any, Steep] = {}
+    for number, part in zip(coefficients, parts, strict=True):
+        for order, one in enumerate(part):
+            key, before = (order, one.samples), found.get((order, one.samples))
+            whole, kept = number * one.whole, number * one.kept
+            found[key] = (
+                one._replace(whole=before.whole + whole, kept=before.kept + kept)
+                if before
+                else one._replace(whole=whole, kept=kept)
+            )
+    return tuple(found.values())
+
+
+def steep_added(fields: Sequence[GridField | FarField], mixtures: Complexes) -> NDArray[np.float64]:
+    """S0 .. S3 [W] that interference adds to what singular points scattered, in sums of fields whose powers add.
+
+    Parameters
+    ----------
+    mixtures : rows of numbers, one a field; each row makes a coherent sum.
+    """
+    lights = [field.carried for field in fields]
+    parts = [one.steep if one.jones is None else one.steep_past(one.jones[:, None]) for one in lights]
+    added = np.zeros(4)
+    for numbers in mixtures:
+        added += _steep_stokes(_same_added(parts, numbers))
+        added -= sum(abs(number) ** 2 * _steep_stokes(part) for number, part in zip(numbers, parts, strict=True))
+    return added
+
+
+def _steep_stokes(steep: tuple[Steep, ...]) -> NDArray[np.float64]:
+    return sum((stokes_sum(one.whole) - stokes_sum(one.kept) for one in steep), start=np.zeros(4))
 
 
 def _components(light: GridLight | Collected) -> Complexes:

@@ -2,8 +2,9 @@
 
 from __future__ import annotations
 
+from collections.abc import Callable
 from dataclasses import dataclass, replace
-from typing import Any, TypeAlias
+from typing import Any, NamedTuple, TypeAlias
 
 import numpy as np
 from numpy.typing import NDArray
@@ -12,7 +13,7 @@ from fastaxis.engines.grid.singular import Singular
 from fastaxis.engines.grid.workers import strips
 from fastaxis.laws import TravelLaw
 
-__all__ = ["GridLight", "Rims", "Samples", "axis", "curve", "inner", "multiply_separable", "stokes_sum"]
+__all__ = ["GridLight", "Rims", "Samples", "Steep", "axis", "curve", "inner", "multiply_separable", "stokes_sum"]
 
 Samples: TypeAlias = NDArray[Any]
 """Complex numbers of double or single precision."""
@@ -35,6 +36,30 @@ class Rims:
     pattern: int = 1
 
 
+class Steep(NamedTuple):
+    """Light that a singular point scatters beyond the band, as samples times pitch about it.
+
+    Parameters
+    ----------
+    whole, kept : with that light and without it.
+    place : x + iy of the point in its plane [m], as mirrors and turns have moved it since.
+    pitch : of the samples there [m].
+    turned : by how much less than the light these samples are turned [rad]: no quarter of a turn moves any to another.
+    """
+
+    whole: Samples
+    kept: Samples
+    place: complex
+    pitch: float
+    turned: float = 0.0
+
+    @property
+    def samples(self) -> tuple[Any, ...]:
+        """What two of them have in common that are of the same samples."""
+        place = round(self.place.real / self.pitch, 6), round(self.place.imag / self.pitch, 6)
+        return self.whole.shape[1:], place, round(self.turned, 9), float(f"{self.pitch:.9g}")
+
+
 @dataclass(frozen=True)
 class GridLight:
     """Samples of a field whose mean phase curvature is kept apart.
@@ -55,7 +80,7 @@ class GridLight:
         shrinks, and the pitch shrinks as the source's window grows.
     turned : whether the light is on such a plane.
     beyond : light that edges scatter beyond the band of the samples, as a share of what the samples hold.
-    steep : light that singular points scatter beyond it: samples times pitch about each point, with it and without it.
+    steep : light that singular points scatter beyond it.
     filled : waves along a side that hold the light, if known from the travel it comes from; None if not.
     room : samples along a side of its window, if those kept are the middle of it and all others dark; None if all are.
     ahead : a last travel that is left to whoever looks at the light; None if there is none.
@@ -72,7 +97,7 @@ class GridLight:
     turned_rims: Rims = Rims()
     turned: bool = False
     beyond: float = 0.0
-    steep: tuple[tuple[Samples, Samples], ...] = ()
+    steep: tuple[Steep, ...] = ()
     filled: int | None = None
     room: int | None = None
     ahead: TravelLaw | None = None
@@ -136,14 +161,35 @@ class GridLight:
     @property
     def steep_power(self) -> float:
         """Power [W] scattered by singular points, before the Jones vector."""
-        return sum((inner(one, one) - inner(other, other)).real for one, other in self.steep)
+        return sum((inner(one.whole, one.whole) - inner(one.kept, one.kept)).real for one in self.steep)
 
-    def steep_past(self, matrix: NDArray[np.complex128]) -> tuple[tuple[Samples, Samples], ...]:
+    def steep_past(self, matrix: NDArray[np.complex128]) -> tuple[Steep, ...]:
         """What singular points scattered, behind a matrix of the components."""
         return tuple(
-            (np.einsum("ij,jyx->iyx", matrix, one), np.einsum("ij,jyx->iyx", matrix, other))
-            for one, other in self.steep
+            one._replace(
+                whole=np.einsum("ij,jyx->iyx", matrix, one.whole), kept=np.einsum("ij,jyx->iyx", matrix, one.kept)
+            )
+            for one in self.steep
         )
+
+    def moved(self, move: Callable[[Samples], Samples], place: Callable[[complex], complex]) -> GridLight:
+        """The light with its samples in another order, and what singular points scattered likewise.
+
+        Parameters
+        ----------
+        move : the order of rows and columns.
+        place : where a place x + iy goes.
+        """
+        steep = tuple(
+            one._replace(
+                whole=np.ascontiguousarray(move(one.whole)),
+                kept=np.ascontiguousarray(move(one.kept)),
+                place=place(one.place),
+                turned=one.turned * (place(1j) / place(1)).imag,
+            )
+            for one in self.steep
+        )
+        return replace(self, samples=np.ascontiguousarray(move(self.samples)), steep=steep)
 
     def components(self) -> Samples:
         """(Ex, Ey) samples, curvature still apart."""

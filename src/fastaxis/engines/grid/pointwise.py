@@ -9,7 +9,7 @@ from typing import Any
 import numpy as np
 from numpy.typing import NDArray
 
-from fastaxis.engines.grid.light import GridLight, inner, multiply_separable
+from fastaxis.engines.grid.light import GridLight, Steep, inner, multiply_separable
 from fastaxis.engines.grid.settling import leaves, noted, patterned, settled, watched
 from fastaxis.engines.grid.singular import Turns
 from fastaxis.engines.grid.workers import strips
@@ -110,7 +110,7 @@ def past_axis(light: GridLight, law: AxisLaw, after: JonesStep | None = None) ->
     return noted(replace(light, steep=light.steep_past(np.array(after.matrix))) if after else light, turns)
 
 
-def _steep_past(light: GridLight, law: AxisLaw) -> tuple[tuple[NDArray[Any], NDArray[Any]], ...]:
+def _steep_past(light: GridLight, law: AxisLaw) -> tuple[Steep, ...]:
     """Light beyond the band behind a plate, met where phi = 0: it has gone to all sides, and that loses no power."""
     if not light.steep:
         return ()
@@ -258,5 +258,6 @@ def _coverage(depth: Any, pitch: float) -> Reals:
 
 def flipped(light: GridLight, law: Flip) -> GridLight:
     """Places reversed along x or y: the order of columns or rows, exactly."""
-    samples = light.samples[:, :, ::-1] if law.axis == "x" else light.samples[:, ::-1]
-    return replace(light, samples=np.ascontiguousarray(samples))
+    if law.axis == "x":
+        return light.moved(lambda samples: samples[:, :, ::-1], lambda place: -place.conjugate())
+    return light.moved(lambda samples: samples[:, ::-1], lambda place: place.conjugate())

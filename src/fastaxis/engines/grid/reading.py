@@ -73,7 +73,7 @@ class GridField:
         if light.jones is not None:
             whole = inner(light.samples, light.samples).real * area * (1 + light.beyond) + light.steep_power
             return np.asarray(whole * stokes(light.jones))
-        steep = sum(stokes_sum(one) - stokes_sum(other) for one, other in light.steep)
+        steep = sum(stokes_sum(one.whole) - stokes_sum(one.kept) for one in light.steep)
         return np.asarray(stokes_sum(light.samples) * area * (1 + light.beyond) + steep)
 
     def at(self, x: Reals, y: Reals) -> Complexes:

@@ -8,7 +8,7 @@ from dataclasses import replace
 import numpy as np
 
 from fastaxis.engines.grid.lattice_sums import reach
-from fastaxis.engines.grid.light import GridLight
+from fastaxis.engines.grid.light import GridLight, Steep
 from fastaxis.engines.grid.singular import Singular, Turns
 from fastaxis.laws import AxisLaw, ScalarLaw
 from fastaxis.maths import Pattern
@@ -71,6 +71,8 @@ def settled(light: GridLight) -> GridLight:
     block = light.samples[(slice(None), *known.places(light.count))]
     if not block.any():
         return light
-    before = block.copy()
+    around = light.samples[(slice(None), *known.around(light.count))]
+    before = around.copy()
     block[...] = known.values(light.count)
-    return replace(light, steep=(*light.steep, (before * light.pitch, block * light.pitch)))
+    steep = Steep(before * light.pitch, around * light.pitch, complex(*known.centre), light.pitch)
+    return replace(light, steep=(*light.steep, steep))

@@ -16,6 +16,9 @@ Turns: TypeAlias = dict[int, NDArray[np.complex128]]
 """Matrices by m: the components behind a part are sum_m matrix_m exp(i m phi) times those before it."""
 
 
+ON_AXIS = 1e-6  # pitches: more than rounding of a place, less than any light shows
+
+
 @dataclass(frozen=True, eq=False)
 class Singular:
     """What parts with one singular axis, in one plane, did to the samples about it.
@@ -50,8 +53,23 @@ class Singular:
 
     def places(self, count: int) -> tuple[slice, slice]:
         """(rows, columns) of the block in a plane of so many samples along a side."""
-        ends = ((middle - self.half, middle + self.half + 1) for middle in self.middle)
-        column, row = (slice(*(min(max(end, 0), count) for end in both)) for both in ends)
+        return self._within(count, (0.0, 0.0))
+
+    def around(self, count: int) -> tuple[slice, slice]:
+        """(rows, columns) of the block, and those beside it by which they lie evenly about an axis between samples.
+
+        Mirrored, they are those about the mirrored axis.
+        """
+        return self._within(count, self.offset)
+
+    def _within(self, count: int, offset: tuple[float, float]) -> tuple[slice, slice]:
+        column, row = (
+            slice(
+                min(max(middle - self.half - (off > ON_AXIS), 0), count),
+                min(max(middle + self.half + 1 + (off < -ON_AXIS), 0), count),
+            )
+            for middle, off in zip(self.middle, offset, strict=True)
+        )
         return row, column
 
     def values(self, count: int) -> NDArray[np.complex128]:

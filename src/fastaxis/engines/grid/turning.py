@@ -30,12 +30,16 @@ def turned(light: GridLight, law: Turn) -> GridLight:
     quarters = round(law.angle / QUARTER)
     rest = law.angle - quarters * QUARTER
     # Rows run along +y, so the turn from x towards y goes from the last axis to the one before.
-    samples = np.ascontiguousarray(np.rot90(light.samples, quarters, axes=(2, 1)))
+    light = light.moved(
+        lambda samples: np.rot90(samples, quarters, axes=(2, 1)), lambda place: place * 1j ** (quarters % 4)
+    )
+    samples = light.samples
     if abs(rest) > WHOLE * max(1.0, abs(law.angle)):
         across = math.tan(rest / 2)
         for axis, slope in ((2, across), (1, -math.sin(rest)), (2, across)):
             samples = _sheared(samples, slope, axis)
-    return replace(light, samples=samples)
+    steep = tuple(one._replace(turned=one.turned + rest) for one in light.steep)
+    return replace(light, samples=samples, steep=steep)
 
 
 def _sheared(samples: Samples, slope: float, axis: int) -> Samples:

@@ -6,6 +6,7 @@ import math
 from collections.abc import Sequence
 from importlib import import_module
 from itertools import combinations
+from typing import Any
 
 import numpy as np
 from numpy.typing import NDArray
@@ -50,7 +51,15 @@ def total_of_sums(arms: Sequence[PlaneField], mixtures: Complexes, extent: Exten
     added, rows = np.zeros(4), max(1, BLOCK // len(x))
     for first in range(0, len(x), rows):
         added += _added(arms, mixtures, shares, x, x[first : first + rows])
-    return np.asarray(alone + added * pitch**2)
+    return np.asarray(alone + added * pitch**2 + _beyond(arms, mixtures, engines))
+
+
+def _beyond(arms: Sequence[PlaneField], mixtures: Complexes, engines: Sequence[str]) -> Any:
+    """What is beyond the band of all samples interferes as well, and is in no field: dark ports would be too bright."""
+    sampled = [place for place, engine in enumerate(engines) if engine == "grid"]
+    if len(sampled) < 2:
+        return 0.0
+    return import_module("fastaxis.engines.grid").steep_added([arms[i] for i in sampled], mixtures[:, sampled])
 
 
 def _by_pairs(arms: Sequence[PlaneField], mixtures: Complexes, reach: float) -> Reals:
