@@ -1,6 +1,9 @@
 """Whether the azimuthal engine's estimate of its own error is honest: random trains against much finer runs.
 
 Run: python tests/benchmarks/bench_estimate.py [cases]
+
+About one case in a few hundred (a high charge behind an obstacle, followed out to 80 mm) takes minutes in the finer
+run; there is none among the first hundred from ``FIRST`` on.
 """
 
 import random
@@ -20,6 +23,7 @@ from fastaxis.plan import make_plan
 from fastaxis.train import Train
 from fastaxis.units import mm, nm, um
 
+FIRST = 3000  # seed
 RADII = np.linspace(0, 1.2, 41) * mm
 SETTINGS = {"as they are": Settings(), "coarse kernels": Settings(phase=120.0), "few panels": Settings(most=12)}
 
@@ -44,7 +48,7 @@ def main():
     rows = []
     for name, settings in SETTINGS.items():
         begin = time.perf_counter()
-        true, estimate = np.array([case(seed, settings) for seed in range(1000, 1000 + count)]).T
+        true, estimate = np.array([case(seed, settings) for seed in range(FIRST, FIRST + count)]).T
         rows.append(
             (
                 name,
