@@ -78,8 +78,8 @@ def of_modes(where):
 
 def of_vortices(where):
     sections, rays, reach = PLACES[where]
-    ring = lambda charge, r: vortex(charge, WAIST, WAVELENGTH, rays, r)  # noqa: E731
-    spot = lambda r: laguerre(0, 0, WAIST, WAVELENGTH, rays, r)  # noqa: E731
+    ring = lambda charge, r: vortex(charge, WAIST, WAVELENGTH, rays, r)  # noqa: E731 - a formula
+    spot = lambda r: laguerre(0, 0, WAIST, WAVELENGTH, rays, r)  # noqa: E731 - a formula
     for charge in (1, 2, 4, 5, 12, 20):
 
         def twisted(r, charge=charge):
@@ -100,7 +100,7 @@ def of_vortices(where):
 def of_holes():
     lit, (_, _, reach) = PlaneWave(area=np.pi * RADIUS**2), PLACES["near"]
     sections, _, _ = PLACES["focus"]
-    pattern = lambda r: np.outer(AT_H, airy(RADIUS, FOCAL, WAVELENGTH, r))  # noqa: E731
+    pattern = lambda r: np.outer(AT_H, airy(RADIUS, FOCAL, WAVELENGTH, r))  # noqa: E731 - a formula
     yield Case(
         "hole, evenly lit",
         "focus",
@@ -112,7 +112,7 @@ def of_holes():
     )
     for zones in (1, 2):
         z = RADIUS**2 / WAVELENGTH / zones
-        fresnel = lambda r, z=z: np.outer(AT_H, lommel(RADIUS, z, WAVELENGTH, r))  # noqa: E731
+        fresnel = lambda r, z=z: np.outer(AT_H, lommel(RADIUS, z, WAVELENGTH, r))  # noqa: E731 - a formula
         yield Case(
             "hole, evenly lit",
             f"{zones} zones",
@@ -125,7 +125,7 @@ def of_holes():
     hole = 0.4 * mm
     for where in PLACES:
         sections, rays, _ = PLACES[where]
-        cut = lambda r, rays=rays: np.outer(AT_H, on_axis_behind_hole(hole, WAIST, WAVELENGTH, rays))  # noqa: E731
+        cut = lambda r, rays=rays: np.outer(AT_H, on_axis_behind_hole(hole, WAIST, WAVELENGTH, rays))  # noqa: E731 - a formula
         share, parts = -np.expm1(-2 * (hole / WAIST) ** 2), [Aperture(radius=hole), *sections]
         yield Case(
             "hole in a Gaussian", f"{where}, axis", "elementary", Gaussian(waist=WAIST), parts, cut, 0.0, H, share

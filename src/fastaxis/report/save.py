@@ -81,9 +81,9 @@ def _write(figure: Figure, path: Path, writer: Callable[[Figure, View, IO[bytes]
 
 def _png(figure: Figure, view: View, file: IO[bytes]) -> None:
     canvas = FigureCanvasAgg(figure)
-    canvas.draw()  # type: ignore[no-untyped-call]
+    canvas.draw()  # type: ignore[no-untyped-call]  # matplotlib has no type for it
     # Paper is opaque: three colours are packed in less time than four channels.
-    dots = np.asarray(canvas.buffer_rgba())  # type: ignore[no-untyped-call]
+    dots = np.asarray(canvas.buffer_rgba())  # type: ignore[no-untyped-call]  # matplotlib has no type for it
     words = PngInfo()
     words.add_text("Software", "fastaxis")
     words.add_text("Description", stamp(view))
@@ -97,7 +97,7 @@ def _pdf(figure: Figure, view: View, file: IO[bytes]) -> None:
     # Without a date the same bench writes the same bytes.
     metadata = {"Creator": "fastaxis", "Subject": stamp(view), "CreationDate": None}
     try:
-        FigureCanvasPdf(figure).print_pdf(file, metadata=metadata)  # type: ignore[no-untyped-call]
+        FigureCanvasPdf(figure).print_pdf(file, metadata=metadata)  # type: ignore[no-untyped-call]  # matplotlib has no type for it
     finally:
         figure.dpi = resolution  # a PDF is drawn at 72
 

@@ -105,7 +105,9 @@ class GridSum:
         filled = [field.light.filled for field in self.fields if isinstance(field, GridField)]
         order = max(some for some in filled if some) if filled and all(filled) else None
         return [
-            field.collected_by(raster, (down, across) if isinstance(field, FarField) else order)  # type: ignore[arg-type]
+            field.collected_by(raster, (down, across))
+            if isinstance(field, FarField)
+            else field.collected_by(raster, order)
             for field in self.fields
         ]
 

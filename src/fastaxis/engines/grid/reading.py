@@ -112,7 +112,7 @@ class GridField:
         waves, (down, across) = waves_of(light)
         order = beat(down, light.samples.dtype), beat(across, light.samples.dtype)
         lengths = map(landing_length, order, waves.samples.shape[1:])
-        rows, columns = lines(raster, light.window, tuple(lengths), order)  # type: ignore[arg-type]  # of two
+        rows, columns = lines(raster, light.window, tuple(lengths), order)  # type: ignore[arg-type]  # a tuple of map has no length for mypy; there are two
         if rows.places.count * waves.samples.shape[2] * waves.samples[:, 0, 0].nbytes > ROOM:
             return None
         samples = waves.rows_at(rows.places, columns.places)

@@ -5,8 +5,8 @@ from __future__ import annotations
 from pathlib import Path
 
 import matplotlib as mpl
-from fontTools.subset import Options, Subsetter, load_font, parse_unicodes  # type: ignore[import-untyped]
-from fontTools.ttLib import TTFont  # type: ignore[import-untyped]
+from fontTools.subset import Options, Subsetter, load_font, parse_unicodes
+from fontTools.ttLib import TTFont
 
 from fastaxis.report.letters import FACES, FAMILY, FOLDER
 
