@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 import math
-from collections.abc import Iterator
+from collections.abc import Callable, Iterator
 from dataclasses import replace
 from functools import partial
 from itertools import takewhile
@@ -13,7 +13,7 @@ from fastaxis.laws import AxisLaw, CircularLaw, ScalarLaw, TravelLaw
 from fastaxis.plan.fineness import held, known_tails, needs
 from fastaxis.plan.grid import Grid
 from fastaxis.plan.judging import RIM, cut, judged
-from fastaxis.plan.refining import LARGE, LENGTHS, Asked, refined
+from fastaxis.plan.refining import LARGE, LENGTHS, SLACK, Asked, refined
 from fastaxis.plan.sampling import Sampling, follow
 from fastaxis.plan.spread import ROUGH_RADII, Spread, clear_width, closed, reach
 from fastaxis.plan.steps import JonesStep, Steps
@@ -139,9 +139,33 @@ def _fine(sampling: Sampling, steps: Steps, spread: Spread, wavelength: float) -
 
     most = max(FINEST, sampling.grid.samples)
     better = refined(sampling, again, asked, most, fits=lambda found: _fits(found, steps) >= 1)
+    if better is None and not is_open:
+        better = _searched(sampling, steps, spread, wavelength, asked=asked, most=most)
     if better is None:
         better = again(most, _open_window(steps, spread, most, wavelength) if is_open else sampling.grid.window)
     return better if better.worst.margin >= min(sampling.worst.margin, 1.0) else sampling
+
+
+def _searched(
+    sampling: Sampling,
+    steps: Steps,
+    spread: Spread,
+    wavelength: float,
+    *,
+    asked: Callable[[Sampling], Iterator[Asked]],
+    most: int,
+) -> Sampling | None:
+    """The fewest samples, on any window, that hold the light and are as fine as all steps ask for; None if too many.
+
+    Behind a single transform a wider window makes the pitch smaller, so that the smallest window is far from the best.
+    """
+    for samples in LENGTHS:
+        if sampling.grid.samples <= samples <= most:
+            for window in _windows(steps, spread):
+                found = _planes(steps, spread, samples, window, wavelength)
+                if _fits(found, steps) >= 1 and all(one.over(found) <= SLACK for one in asked(found)):
+                    return found
+    return None
 
 
 def sampling_for(steps: Steps, spread: Spread, wavelength: float, grid: Grid | None, *, seen: bool = True) -> Sampling:
